@@ -1,0 +1,52 @@
+package downlink
+
+import (
+	"time"
+
+	"slantwise/orbit/unit"
+)
+
+// Budget is a link budget at one instant. A number that does not exist is NaN in
+// here (and empty or null in files): OffBoresight of a tumbling spacecraft, Eb/N0
+// without a data rate, margins without a required Eb/N0.
+type Budget struct {
+	Time         time.Time // zero for a stated geometry
+	Azimuth      unit.Angle
+	Elevation    unit.Angle
+	Range        unit.Length
+	OffBoresight unit.Angle
+
+	Terms            []Term     // adds up exactly to ReceivedPower
+	ReceivedPower    unit.Level // at the input of the first amplifier
+	PowerFluxDensity float64    // dB(W/m²), whole carrier in free space at the site
+	SystemNoise      unit.Temperature
+	NoiseParts       []NoisePart // adds up to SystemNoise; empty with a measured G/T
+	GOverT           unit.DB     // dB/K
+	CN0              unit.DB     // dBHz
+	EbN0             unit.DB     // dB
+	RequiredEbN0     unit.DB     // dB, the code's own
+	Margin           unit.DB     // EbN0 - implementation loss - RequiredEbN0
+	MarginOver       unit.DB     // Margin - required margin
+	DataRate         unit.BitRate
+	AchievableRate   unit.BitRate // at the required margin, 0 where the link is unusable
+	AchievableLimit  RateLimit
+	Usable           bool // false where the antenna points outside its main lobe
+}
+
+// NoisePart is one contributor to the system noise, referred to the input of the
+// first amplifier.
+type NoisePart struct {
+	Name        string
+	Temperature unit.Temperature
+	Source      string
+}
+
+// RateLimit says what holds the achievable rate.
+type RateLimit int
+
+// Limits of the achievable rate.
+const (
+	LimitPower       RateLimit = iota // the power received
+	LimitBandwidth                    // the allotted bandwidth
+	LimitTransmitter                  // the transmitter's highest rate
+)

@@ -1,0 +1,44 @@
+package downlink
+
+import (
+	"time"
+
+	"slantwise/orbit/unit"
+)
+
+// Profile holds the budget along a pass, one column a quantity, all of the length
+// of Seconds. NaN marks a number that does not exist.
+type Profile struct {
+	Start   time.Time // Seconds counts from here, the AOS
+	Seconds []float64 // rising; the last is LOS
+
+	AzimuthDeg, ElevationDeg, ApparentElevationDeg []float64
+	RangeKm, RangeRateKmS                          []float64
+	OffBoresightDeg                                []float64
+	DopplerHz                                      []float64
+
+	Terms      []TermInfo
+	TermValues [][]float64 // by term, then by sample
+
+	ReceivedPowerDBm, FluxDensityDBWM2 []float64
+	SystemNoiseK, GOverTDBK            []float64
+	CN0DBHz, EbN0DB                    []float64
+	MarginDB, MarginOverDB             []float64
+	AchievableRateBps                  []float64
+	AchievableLimit                    []RateLimit
+	Usable                             []bool
+	DataRate                           unit.BitRate // of the chosen mode
+	RequiredMarginDB                   float64
+
+	Volume Volume
+}
+
+// Volume is what a pass brings down, in bytes, and while what.
+type Volume struct {
+	AchievableBytes float64    // the integral of the achievable rate
+	ModeBytes       float64    // the chosen mode while its margin holds
+	Closes          []Interval // when the margin is at least what is required
+}
+
+// Interval is a span of time.
+type Interval struct{ From, To time.Time }
