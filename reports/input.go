@@ -1,0 +1,99 @@
+package reports
+
+import (
+	"context"
+	"time"
+
+	"slantwise/downlink"
+	"slantwise/orbit"
+	"slantwise/orbit/unit"
+	"slantwise/station"
+	"slantwise/station/pass"
+)
+
+// Report is what a whole report is made from.
+type Report struct {
+	Title    string    // what the report is about, as the scenario's name
+	From, To time.Time // the window that was searched
+	Horizon  station.ElevationKind
+	Notes    []Note // hold for every pass; shown on the index and on each page
+
+	// Keys names the passes in the order of the index. Load returns pass i in full;
+	// workers call it at the same time, each i once, and drop the pass when its page
+	// is written, so that thousands of passes need not be held at once.
+	Keys []Key
+	Load func(ctx context.Context, i int) (*Pass, error)
+}
+
+// Key is what a page's file name is made from.
+type Key struct {
+	Spacecraft, Station string
+	Link                string // transmitter, antenna; empty where a pass has one page alone
+	AOS                 time.Time
+}
+
+// Pass is one pass of one spacecraft over one station, with the radio link on it
+// where there is one.
+type Pass struct {
+	Spacecraft string
+	Site       *station.Site
+	Horizon    []Direction // the least elevation that sees the sky, azimuth rising; empty: a bare horizon
+	Elements   Elements
+	Pass       pass.Pass
+
+	// Profile holds the samples, from AOS to LOS. Without a radio only the columns of
+	// geometry are filled and the others are nil.
+	Profile *downlink.Profile
+	Radio   *Radio // nil without a transmitter or antenna
+	Notes   []Note // hold for this pass
+}
+
+// Direction is a point of the sky.
+type Direction struct{ AzimuthDeg, ElevationDeg float64 }
+
+// Elements tells which element set a pass was computed from.
+type Elements struct {
+	Name          string
+	CatalogNumber int
+	Epoch         time.Time
+	Age           time.Duration // at AOS, negative when the epoch lies after it
+	Source        orbit.Source
+}
+
+// Radio is the link of a pass.
+type Radio struct {
+	Transmitter, Antenna, Mode string
+	Frequency                  unit.Frequency
+	ModeText                   string // modulation and coding in words; may be empty
+
+	Least, Greatest Moment // of Profile.MarginDB; NaN without a margin
+
+	// Volume so far at each sample, in bytes; the last is the pass's.
+	AchievableBytes, ModeBytes []float64
+
+	AOS, Culmination, LeastMargin downlink.Budget
+}
+
+// Moment is a value and when it is reached.
+type Moment struct {
+	Value float64
+	Time  time.Time
+}
+
+// NoteKind sorts the notes of a report.
+type NoteKind int
+
+// Kinds of notes.
+const (
+	Warning    NoteKind = iota // something that may make the answer wrong
+	Assumption                 // what was taken as given or simplified
+	Default                    // a key that was left out, and what was taken for it
+)
+
+// Note is a sentence that belongs to an answer.
+type Note struct {
+	Kind   NoteKind
+	About  string // what it is about, as "station Skerry Point"; may be empty
+	Text   string
+	Source string // where it comes from: a standard, a key of the scenario; may be empty
+}
