@@ -16,21 +16,23 @@ type Budget struct {
 	Range        unit.Length
 	OffBoresight unit.Angle
 
-	Terms            []Term     // adds up exactly to ReceivedPower
-	ReceivedPower    unit.Level // at the input of the first amplifier
-	PowerFluxDensity float64    // dB(W/m²), whole carrier in free space at the site
+	Terms            []Term  // adds up to ReceivedPowerDBm, bit for bit in this order
+	ReceivedPowerDBm float64 // at the input of the first amplifier; NaN where the station's gain is not known
+	PowerFluxDensity float64 // dB(W/m²), whole carrier in free space at the site
 	SystemNoise      unit.Temperature
-	NoiseParts       []NoisePart // adds up to SystemNoise; empty with a measured G/T
-	GOverT           unit.DB     // dB/K
-	CN0              unit.DB     // dBHz
-	EbN0             unit.DB     // dB
-	RequiredEbN0     unit.DB     // dB, the code's own
-	Margin           unit.DB     // EbN0 - implementation loss - RequiredEbN0
-	MarginOver       unit.DB     // Margin - required margin
-	DataRate         unit.BitRate
+	NoiseParts       []NoisePart  // adds up to SystemNoise; with a measured G/T one part, the implied noise
+	GOverT           unit.DB      // dB/K, the gain after pointing, feed and extra losses left out
+	CN0              unit.DB      // dBHz
+	EbN0             unit.DB      // dB
+	RequiredEbN0     unit.DB      // dB, the code's own
+	Margin           unit.DB      // EbN0 - implementation loss - RequiredEbN0
+	MarginOver       unit.DB      // Margin - required margin
+	DataRate         unit.BitRate // information bits of the chosen mode
 	AchievableRate   unit.BitRate // at the required margin, 0 where the link is unusable
 	AchievableLimit  RateLimit
 	Usable           bool // false where the antenna points outside its main lobe
+
+	Cautions []string // what is doubtful at this geometry alone
 }
 
 // NoisePart is one contributor to the system noise, referred to the input of the
@@ -49,4 +51,6 @@ const (
 	LimitPower       RateLimit = iota // the power received
 	LimitBandwidth                    // the allotted bandwidth
 	LimitTransmitter                  // the transmitter's highest rate
+	LimitUnusable                     // nothing gets through: the antenna points outside its main lobe
+	LimitUnknown                      // no mode, or none with a known threshold: there is no achievable rate
 )

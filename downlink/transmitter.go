@@ -1,0 +1,58 @@
+package downlink
+
+import (
+	"slantwise/downlink/modem"
+	"slantwise/orbit/unit"
+	"slantwise/station"
+)
+
+// Transmitter is a spacecraft's transmitter with its antenna. Radiated power is
+// known from Power, LineLoss and Pattern, or from EIRP as stated.
+type Transmitter struct {
+	Name      string
+	Frequency unit.Frequency // of the carrier, greater than 0
+
+	Power    unit.Level // at the transmitter's output
+	LineLoss unit.DB    // from there to the antenna, 0 or greater
+	Pattern  Pattern
+	EIRP     *unit.Level // toward the station, in place of the three above; nil: from them
+
+	Attitude            Attitude
+	AttitudeProbability float64 // of a tumbling spacecraft, in (0, 1): the gain exceeded with it counts; 0: DefaultAttitudeProbability
+
+	Polarization *station.Polarization // nil: left out
+	Modes        []modem.Mode          // may be empty: then there is a carrier and no data
+
+	ImplementationLoss unit.DB // of modulator and demodulator together, 0 or greater
+	RequiredMargin     unit.DB
+	ExtraLosses        []Loss // each a term of its own
+
+	AllottedBandwidth unit.Frequency // caps the achievable rate; 0: not given
+	HighestRate       unit.BitRate   // information bits; caps the achievable rate; 0: not given
+}
+
+// Loss is a named loss on the spacecraft's side, a term of its own.
+type Loss struct {
+	Name string
+	Loss unit.DB // 0 or greater
+}
+
+// DefaultAttitudeProbability is the probability whose exceeded gain stands for a
+// tumbling spacecraft where the scenario gives none.
+const DefaultAttitudeProbability = 0.9
+
+// Attitude tells how the transmit antenna's boresight is held.
+type Attitude int
+
+// Attitudes.
+const (
+	AttitudeUnstated Attitude = iota // enough for an isotropic pattern, a stated EIRP or a stated geometry
+	AttitudeNadir                    // boresight at the Earth's centre
+	AttitudeStation                  // boresight at the station
+	AttitudeTumbling                 // every direction equally likely
+)
+
+// String returns the attitude as the scenario writes it.
+func (a Attitude) String() string {
+	return [...]string{"unstated", "nadir", "station", "tumbling"}[a]
+}
