@@ -22,13 +22,14 @@ const (
 func (c Cut) String() string { return [...]string{"", "aos", "los", "both"}[c&CutBoth] }
 
 // Pass is the uninterrupted time that a spacecraft stands above a site's horizon
-// mask and minimum elevation.
+// mask and minimum elevation. Angles are geometric, in whatever kind AOS and LOS
+// were decided.
 type Pass struct {
 	AOS, Culmination, LOS                      time.Time // UTC, to 1 ms
 	MaxElevation                               unit.Angle
 	AOSAzimuth, CulminationAzimuth, LOSAzimuth unit.Angle
 	AOSElevation, LOSElevation                 unit.Angle
-	MinRange                                   unit.Length
+	MinRange                                   unit.Length // the least in the whole pass, not the one at culmination
 	Cut                                        Cut
 }
 
