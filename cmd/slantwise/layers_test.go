@@ -29,6 +29,7 @@ var layers = []struct {
 	{"slantwise/downlink/contacts", 8},
 	{"slantwise/reports", 9},
 	{"slantwise/cmd/internal/atomicfile", 9},
+	{"slantwise/cmd/internal/nearest", 9},
 	{"slantwise/cmd/internal/scenario", 10},
 	{"slantwise/cmd/internal/web", 11},
 	{"slantwise/cmd/internal/cli", 12},

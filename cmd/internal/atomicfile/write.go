@@ -31,6 +31,8 @@ func write(path string, perm os.FileMode, fn func(io.Writer) error) (err error) 
 	if err != nil {
 		return err
 	}
+	pending.add(f.Name())
+	defer pending.drop(f.Name())
 	done := false
 	// Also when fn panics: a half-written file must not stay.
 	defer func() {

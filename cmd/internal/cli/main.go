@@ -7,9 +7,11 @@ import (
 	"fmt"
 	"io"
 	"os/signal"
+	"strings"
 	"syscall"
+	"time"
 
-	"github.com/spf13/cobra"
+	"slantwise/cmd/internal/atomicfile"
 )
 
 // Exit codes, promised in the help text.
@@ -19,50 +21,55 @@ const (
 	ExitInput   = 2 // the input is wrong
 )
 
-// InputError marks an error of what the user gave: exit code 2.
-type InputError struct{ Err error }
-
-// Error returns the text of the error inside.
-func (e *InputError) Error() string { return e.Err.Error() }
-
-// Unwrap returns the error inside.
-func (e *InputError) Unwrap() error { return e.Err }
-
-// Env is what a command may touch of the world.
-type Env struct {
-	In       io.Reader
-	Out, Err io.Writer
-	Scenario string // value of --scenario; empty: slantwise.yaml here, else the embedded demo
-}
-
 // Main runs the program and returns its exit code.
 func Main(args []string, in io.Reader, out, errOut io.Writer) int {
 	ctx, stop := signal.NotifyContext(context.Background(), syscall.SIGINT, syscall.SIGTERM)
 	defer stop()
-	env := &Env{In: in, Out: out, Err: errOut}
+	// A second interrupt then has its usual effect and ends the process.
+	context.AfterFunc(ctx, stop)
+	// A reader that has gone (| head) then shows as an error of the write, which is
+	// met in exitCode, so that temporary files are removed on the way out.
+	signal.Ignore(syscall.SIGPIPE)
+	return run(ctx, args, newEnv(in, out, errOut))
+}
+
+// patience is how long an interrupted command may take to tidy up.
+const patience = 500 * time.Millisecond
+
+// run executes the command line and returns the exit code. An interrupted command
+// that does not return within patience is left behind.
+func run(ctx context.Context, args []string, env *Env) int {
 	root := newRoot(env)
 	root.SetArgs(args)
-	err := root.ExecuteContext(ctx)
-	if err == nil {
+	done := make(chan error, 1)
+	go func() { done <- root.ExecuteContext(ctx) }()
+	var err error
+	select {
+	case err = <-done:
+	case <-ctx.Done():
+		select {
+		case err = <-done:
+		case <-time.After(patience):
+			err = ctx.Err()
+		}
+	}
+	if ctx.Err() != nil && err != nil {
+		atomicfile.RemovePending()
+		fmt.Fprintln(env.Err, "slantwise: interrupted; nothing half-written was left behind")
+		return ExitFailure
+	}
+	return exitCode(env, err)
+}
+
+// exitCode tells the user of the error, if there is one, and returns the exit code.
+func exitCode(env *Env, err error) int {
+	if err == nil || errors.Is(err, syscall.EPIPE) { // the reader had enough
 		return ExitAnswer
 	}
-	fmt.Fprintln(errOut, "slantwise: "+err.Error())
+	fmt.Fprintln(env.Err, "slantwise: "+strings.TrimRight(err.Error(), "\n"))
 	var ie *InputError
-	if errors.As(err, &ie) {
+	if errors.As(err, &ie) || !env.started {
 		return ExitInput
 	}
 	return ExitFailure
-}
-
-func newRoot(env *Env) *cobra.Command {
-	root := &cobra.Command{
-		Use:           "slantwise",
-		Short:         "Satellite passes, link budgets and pass reports for ground stations",
-		SilenceUsage:  true,
-		SilenceErrors: true,
-	}
-	root.SetOut(env.Out)
-	root.SetErr(env.Err)
-	root.PersistentFlags().StringVar(&env.Scenario, "scenario", "", "scenario `FILE` (default slantwise.yaml here, else the embedded demo)")
-	return root
 }

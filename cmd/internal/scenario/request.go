@@ -1,0 +1,20 @@
+package scenario
+
+import "github.com/spf13/pflag"
+
+// Need says what a command will use of the scenario.
+type Need int
+
+// Needs.
+const (
+	NeedOrbits Need = iota // window and element sets must be there
+	NeedRadio              // a stated geometry: element files stay unread, a window is optional
+)
+
+// Request says which scenario to read.
+type Request struct {
+	Path    string                 // empty: DefaultFile in the working folder, else the embedded demo
+	Environ []string               // as os.Environ gives it; SLANTWISE_… replace scalars outside lists
+	Flags   map[string]*pflag.Flag // flags that replace scalars, by key path ("window.length_h"); only changed ones count
+	Need    Need
+}

@@ -1,0 +1,70 @@
+package scenario
+
+import (
+	"time"
+
+	"slantwise/downlink"
+	"slantwise/orbit"
+	"slantwise/orbit/elements"
+	"slantwise/station"
+)
+
+// DefaultFile is the scenario file that is read where none is named and it is there.
+const DefaultFile = "slantwise.yaml"
+
+// Scenario is a checked scenario: every value in range, every name found.
+type Scenario struct {
+	Label string // the file as it was named, or "embedded demo"
+	Demo  bool   // the embedded demo was read
+
+	Window  Window
+	Earth   orbit.EarthOrientation
+	Horizon station.ElevationKind // which elevation decides AOS and LOS
+
+	Choice     elements.Choice
+	Sets       []orbit.Elements // every element set of the element files, in their order
+	Spacecraft []Spacecraft     // in the order of the file
+	Stations   []Station        // in the order of the file
+
+	Assumptions []Note // every default taken
+	Warnings    []Note // what may make an answer wrong: old elements, …
+}
+
+// Window is the span of time that a scenario is about.
+type Window struct{ Start, End time.Time } // UTC, End after Start; both zero where a stated geometry needs none
+
+// Length returns End - Start.
+func (w Window) Length() time.Duration { return w.End.Sub(w.Start) }
+
+// Spacecraft is a spacecraft with its orbit and transmitters.
+type Spacecraft struct {
+	Name         string
+	Elements     elements.Chosen        // for the middle of the window; zero where the element files stayed unread
+	Candidates   []orbit.Elements       // all sets of the object, in the order of the files
+	Choice       elements.Choice        // how Elements was chosen
+	Transmitters []downlink.Transmitter // may be empty: passes and pointing only
+}
+
+// ElementsAt returns the element set to be used at t by the scenario's choice, with
+// its age at t.
+func (s *Spacecraft) ElementsAt(t time.Time) elements.Chosen {
+	if chosen := elements.Choose(s.Candidates, s.Choice, t); len(chosen) > 0 {
+		return chosen[0]
+	}
+	return elements.Chosen{}
+}
+
+// Station is a site with its antennas.
+type Station struct {
+	Site     station.Site
+	Antennas []station.Antenna // may be empty: passes and pointing only
+}
+
+// Note is a sentence that belongs to every answer from the scenario.
+type Note struct {
+	About string // what it is about, "station Skerry Point"
+	Text  string
+}
+
+// String returns "about: text".
+func (n Note) String() string { return n.About + ": " + n.Text }
