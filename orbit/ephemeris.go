@@ -49,3 +49,19 @@ func (e *Ephemeris) StateAt(s float64) State { panic("orbit: not built yet") }
 func (e *Ephemeris) At(t time.Time) (State, error) {
 	return State{}, errors.New("orbit: not built yet")
 }
+
+// Rebuild makes e the ephemeris of another element set or span and uses its memory
+// again, for runs over many satellites. Nobody else may use e meanwhile; after an
+// error it holds nothing until it is rebuilt.
+func (e *Ephemeris) Rebuild(el Elements, from, to time.Time, earth EarthOrientation) error {
+	return errors.New("orbit: not built yet")
+}
+
+// Truncated returns why the span ends before the instant asked for, or nil.
+func (e *Ephemeris) Truncated() *PropagationError { return nil }
+
+// Step returns the seconds between two knots.
+func (e *Ephemeris) Step() float64 { return 0 }
+
+// LightAt returns how much of the Sun the spacecraft sees at s in [0, Span()].
+func (e *Ephemeris) LightAt(s float64) Light { panic("orbit: not built yet") }
