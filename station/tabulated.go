@@ -82,3 +82,76 @@ func sortedOnce(v []float64) []float64 {
 	slices.Sort(v)
 	return slices.Compact(v)
 }
+
+// AtFrequency returns the quantity over elevation alone, at frequency f.
+func (t *Tabulated) AtFrequency(f unit.Frequency) *Tabulated {
+	if t.flat || len(t.frequencies) == 1 {
+		return t
+	}
+	i, j, w := bracket(t.frequencies, f.Megahertz())
+	row := make([]float64, len(t.elevations))
+	for k := range row {
+		row[k] = mix(t.values[i][k], t.values[j][k], w)
+	}
+	return &Tabulated{elevations: t.elevations, frequencies: []float64{f.Megahertz()}, values: [][]float64{row}}
+}
+
+// Value returns the quantity at an elevation, of the first frequency of a table that
+// holds several (AtFrequency picks another).
+func (t *Tabulated) Value(elevation unit.Angle) float64 {
+	row := t.values[0]
+	if len(row) == 1 {
+		return row[0]
+	}
+	i, j, w := bracket(t.elevations, elevation.Degrees())
+	return mix(row[i], row[j], w)
+}
+
+// IsConstant tells whether the quantity is one figure for every elevation and
+// frequency.
+func (t *Tabulated) IsConstant() bool { return t.flat }
+
+// Span returns the first and the last elevation of the table.
+func (t *Tabulated) Span() (low, high unit.Angle) {
+	n := len(t.elevations)
+	return unit.Angle(t.elevations[0]) * unit.Degree, unit.Angle(t.elevations[n-1]) * unit.Degree
+}
+
+// HoldsFrequency tells whether f lies within the table, which a table without
+// frequencies always does.
+func (t *Tabulated) HoldsFrequency(f unit.Frequency) bool {
+	n := len(t.frequencies)
+	if t.flat || n == 1 && t.frequencies[0] == 0 {
+		return true
+	}
+	return f.Megahertz() >= t.frequencies[0] && f.Megahertz() <= t.frequencies[n-1]
+}
+
+// bounds returns the least and the greatest value of the table.
+func (t *Tabulated) bounds() (least, greatest float64) {
+	least, greatest = math.Inf(1), math.Inf(-1)
+	for _, row := range t.values {
+		least, greatest = min(least, slices.Min(row)), max(greatest, slices.Max(row))
+	}
+	return least, greatest
+}
+
+// bracket finds the nodes i and j around x and how far x lies from i to j; beyond
+// the ends it stays on the end.
+func bracket(nodes []float64, x float64) (i, j int, w float64) {
+	last := len(nodes) - 1
+	switch {
+	case x <= nodes[0]:
+		return 0, 0, 0
+	case x >= nodes[last]:
+		return last, last, 0
+	}
+	for nodes[j] <= x { // tables are short: a scan beats a search
+		j++
+	}
+	i = j - 1
+	return i, j, (x - nodes[i]) / (nodes[j] - nodes[i])
+}
+
+// mix returns a at w = 0 and b at w = 1, exactly.
+func mix(a, b, w float64) float64 { return a*(1-w) + b*w }

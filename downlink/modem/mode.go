@@ -12,6 +12,7 @@ type Mode struct {
 	SymbolRate   unit.Frequency // symbols a second; 0 where DataRate is given
 	RequiredEbN0 *unit.DB       // replaces the catalogue's threshold; nil: the catalogue's
 	CodeRate     float64        // (0, 1], for a coding that the catalogue lacks; 0: the catalogue's
+	ErrorRate    float64        // picks among the catalogue's rows for the code; 0: the code's first
 	RollOff      *float64       // of the pulse shaping, [0, 1], for the bandwidth; nil: DefaultRollOff
 }
 
