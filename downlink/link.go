@@ -2,7 +2,8 @@ package downlink
 
 import (
 	"errors"
-	"time"
+	"fmt"
+	"math"
 
 	"slantwise/downlink/modem"
 	"slantwise/orbit"
@@ -13,10 +14,11 @@ import (
 // LinkSpec is what a link is made of.
 type LinkSpec struct {
 	Transmitter Transmitter
-	Mode        *modem.Mode      // nil: a carrier without data
-	Frame       *station.Frame   // of the site; nil for a stated geometry without one
-	Antenna     *station.Antenna // of the station
-	PathModels  []PathModel      // their terms follow the free-space loss and the polarisation mismatch
+	Mode        *modem.Mode         // nil: a carrier without data
+	Frame       *station.Frame      // of the site; nil for a stated geometry without one
+	Refraction  *station.Refraction // for the apparent elevation of profiles; nil: it stays NaN
+	Antenna     *station.Antenna    // of the station
+	PathModels  []PathModel         // their terms follow the free-space loss and the polarisation mismatch
 	NoiseModels []NoiseModel
 }
 
@@ -24,12 +26,109 @@ type LinkSpec struct {
 // of budgets. It is immutable and safe for use by many goroutines.
 type Link struct {
 	spec  LinkSpec
+	mode  *modem.Resolved // nil without a mode
 	terms []TermInfo
 	notes []Note
+
+	base       []float64 // the value of each term that is the same everywhere
+	slots      slots
+	pathCounts []int   // how many terms each path model has
+	eirpTerms  int     // that many first terms make the EIRP toward the station
+	waveNumber float64 // 4π/λ, 1/m
+
+	pattern   *Pattern           // whose gain depends on the angle; nil: it is in base
+	gain      *station.Tabulated // dBi; nil: not known
+	gainLoss  float64            // dB, surface and blockage, that belong to the gain
+	beamwidth unit.Angle         // 0: not known
+	noise     noisePlan
+	caps      rateCaps
 }
 
+// slots are the places of the terms that change with the geometry; -1: there is no
+// such term, or it does not change.
+type slots struct{ transmitGain, freeSpace, path, stationGain, pointing int }
+
 // NewLink checks the spec and prepares the link. It returns all faults at once.
-func NewLink(spec LinkSpec) (*Link, error) { return nil, errors.New("downlink: not built yet") }
+func NewLink(spec LinkSpec) (*Link, error) {
+	l := &Link{spec: spec}
+	if err := l.check(); err != nil {
+		return nil, err
+	}
+	f := spec.Transmitter.Frequency
+	l.waveNumber = 4 * math.Pi * f.Hertz() / unit.SpeedOfLight
+	if g, ok := spec.Antenna.GainAt(f); ok {
+		l.gain = g
+	}
+	l.beamwidth, _ = spec.Antenna.BeamwidthAt(f)
+	l.buildTerms()
+	l.buildNoise()
+	l.buildCaps()
+	l.writeNotes()
+	return l, nil
+}
+
+func (l *Link) check() error {
+	t, a := &l.spec.Transmitter, l.spec.Antenna
+	var faults []error
+	if err := t.Validate(); err != nil {
+		faults = append(faults, fmt.Errorf("transmitter %q: %w", t.Name, err))
+	}
+	if a == nil {
+		return errors.Join(append(faults, errors.New("the link has no station antenna"))...)
+	}
+	if err := a.Validate(); err != nil {
+		faults = append(faults, fmt.Errorf("antenna %q: %w", a.Name, err))
+	} else if err := checkFrequency(a, t.Frequency); err != nil {
+		faults = append(faults, err)
+	}
+	if l.spec.Mode != nil {
+		r, err := l.spec.Mode.Resolve()
+		if err != nil {
+			faults = append(faults, fmt.Errorf("mode %q: %w", l.spec.Mode.Name, err))
+		}
+		l.mode = &r
+	}
+	return errors.Join(faults...)
+}
+
+// BandError says that an antenna does not take a frequency.
+type BandError struct {
+	Antenna   string
+	Frequency unit.Frequency
+	Bands     []station.Band
+}
+
+// Error names the antenna, the frequency and the bands.
+func (e *BandError) Error() string {
+	s := fmt.Sprintf("antenna %q: %g MHz lies outside its bands", e.Antenna, e.Frequency.Megahertz())
+	for i, b := range e.Bands {
+		if i > 0 {
+			s += ","
+		}
+		s += fmt.Sprintf(" %g to %g MHz", b.Low.Megahertz(), b.High.Megahertz())
+	}
+	return s + "; choose another antenna or transmitter"
+}
+
+func checkFrequency(a *station.Antenna, f unit.Frequency) error {
+	taken := len(a.Bands) == 0
+	for _, b := range a.Bands {
+		taken = taken || b.Holds(f)
+	}
+	if !taken {
+		return &BandError{a.Name, f, a.Bands}
+	}
+	tables := []*station.Tabulated{a.Gain, a.GOverT}
+	if a.Noise != nil {
+		tables = append(tables, a.Noise.AntennaTemperature, a.Noise.SystemTemperature)
+	}
+	for _, t := range tables {
+		if t != nil && !t.HoldsFrequency(f) {
+			return fmt.Errorf("antenna %q: a measured table does not reach %g MHz; a figure is not continued beyond its table", a.Name, f.Megahertz())
+		}
+	}
+	return nil
+}
 
 // Terms lists the terms of every budget of the link, in their order.
 func (l *Link) Terms() []TermInfo { return l.terms }
@@ -37,31 +136,26 @@ func (l *Link) Terms() []TermInfo { return l.terms }
 // Notes lists what was assumed, what was taken by default, and warnings.
 func (l *Link) Notes() []Note { return l.notes }
 
-// Mode returns the mode that the link was made for, nil without one.
-func (l *Link) Mode() *modem.Mode { return l.spec.Mode }
+// Mode returns the mode that the link was made for with what the catalogue adds to
+// it, nil without one.
+func (l *Link) Mode() *modem.Resolved { return l.mode }
 
-// GeometryOf returns the geometry of a spacecraft's state; it needs a Frame.
-func (l *Link) GeometryOf(s orbit.State) Geometry { return Geometry{} }
+// Frequency returns the carrier's frequency.
+func (l *Link) Frequency() unit.Frequency { return l.spec.Transmitter.Frequency }
 
-// StatedGeometry returns the geometry of a stated range and elevation, where the
-// azimuth is not known and no element set is needed. offBoresight nil: worked out
-// from the attitude over a sphere.
-func (l *Link) StatedGeometry(slant unit.Length, elevation unit.Angle, offBoresight *unit.Angle) (Geometry, error) {
-	return Geometry{}, errors.New("downlink: not built yet")
+// RequiredMargin returns the margin that the transmitter's budget must keep.
+func (l *Link) RequiredMargin() unit.DB { return l.spec.Transmitter.RequiredMargin }
+
+// Doppler returns the shift of the received carrier, -f ṙ/c: first order, in Hz.
+func (l *Link) Doppler(rangeRate unit.Speed) unit.Frequency {
+	return unit.Frequency(-l.Frequency().Hertz() * float64(rangeRate) / unit.SpeedOfLight)
 }
 
-// At returns the budget at a geometry.
-func (l *Link) At(g Geometry) (*Budget, error) { return nil, errors.New("downlink: not built yet") }
-
-// Track gives Earth-fixed states over a span of seconds; *orbit.Ephemeris is one.
-type Track interface {
-	Seconds(t time.Time) float64
-	Span() float64
-	StateAt(s float64) orbit.State
-}
-
-// Profile returns the budget along a pass from aos to los, a sample every step and
-// one at los.
-func (l *Link) Profile(track Track, aos, los time.Time, step time.Duration) (*Profile, error) {
-	return nil, errors.New("downlink: not built yet")
+// GeometryOf returns the geometry of a spacecraft's state and how fast the range
+// grows. The link needs a Frame.
+func (l *Link) GeometryOf(s orbit.State) (Geometry, unit.Speed) {
+	look := l.spec.Frame.Look(s)
+	g := Geometry{Azimuth: look.Azimuth, Elevation: look.Elevation, Range: look.Range}
+	g.OffBoresight = l.offBoresight(s.Position)
+	return g, look.RangeRate
 }

@@ -1,6 +1,12 @@
 package downlink
 
-import "slantwise/orbit/unit"
+import (
+	"errors"
+	"fmt"
+	"math"
+
+	"slantwise/orbit/unit"
+)
 
 // PatternKind is the form of a transmit antenna's pattern.
 type PatternKind int
@@ -26,4 +32,109 @@ type Pattern struct {
 type PatternPoint struct {
 	OffBoresight unit.Angle // [0°, 180°]
 	Gain         unit.DB    // dBi
+}
+
+// String returns the form as the scenario writes it.
+func (k PatternKind) String() string {
+	return [...]string{"isotropic", "cosine_power", "table"}[k]
+}
+
+// GainAt returns the gain in dBi at an angle off boresight in [0, π]. Where a pattern
+// radiates nothing (a cosine power beyond 90° without back lobe) or a table does not
+// reach, the error is a *unit.RangeError.
+func (p *Pattern) GainAt(off unit.Angle) (unit.DB, error) {
+	g, ok := p.gain(off.Radians())
+	if ok {
+		return g, nil
+	}
+	e := &unit.RangeError{Quantity: "off-boresight angle", Value: off.Degrees(), Unit: "deg"}
+	switch {
+	case p.Kind == CosinePower:
+		e.Allowed, e.Next = "less than 90 deg", "beyond it this pattern radiates nothing; give its back lobe"
+	default:
+		e.Allowed = fmt.Sprintf("0 to %g deg, where the pattern's table ends", p.Table[len(p.Table)-1].OffBoresight.Degrees())
+		e.Next = "give the table up to the angle"
+	}
+	return 0, e
+}
+
+// gain is GainAt for the inner loop; ok is false where there is none.
+func (p *Pattern) gain(off float64) (g unit.DB, ok bool) {
+	switch p.Kind {
+	case Isotropic:
+		return p.PeakGain, true
+	case CosinePower:
+		switch {
+		case off < math.Pi/2:
+			return p.PeakGain + unit.DB(10*p.Exponent*math.Log10(math.Cos(off))), true
+		case p.BackLobe != nil:
+			return *p.BackLobe, true
+		}
+		return 0, false
+	}
+	return p.interpolate(off)
+}
+
+func (p *Pattern) interpolate(off float64) (unit.DB, bool) {
+	last := p.Table[len(p.Table)-1]
+	if off >= last.OffBoresight.Radians() {
+		// A table up to 180 deg must not miss π by a rounding.
+		return last.Gain, off-last.OffBoresight.Radians() < 1e-9
+	}
+	i := 1
+	for p.Table[i].OffBoresight.Radians() <= off {
+		i++
+	}
+	a, b := p.Table[i-1], p.Table[i]
+	w := (off - a.OffBoresight.Radians()) / (b.OffBoresight - a.OffBoresight).Radians()
+	return unit.DB(float64(a.Gain)*(1-w) + float64(b.Gain)*w), true
+}
+
+// WholeSphere tells whether the pattern is known in every direction.
+func (p *Pattern) WholeSphere() bool {
+	switch p.Kind {
+	case CosinePower:
+		return p.BackLobe != nil
+	case GainTable:
+		return p.Table[len(p.Table)-1].OffBoresight >= 180*unit.Degree-1e-9
+	}
+	return true
+}
+
+// Validate returns every fault of the pattern.
+func (p *Pattern) Validate() error {
+	var faults []error
+	gain := func(what string, g unit.DB) {
+		if !(g >= -200 && g <= 100) {
+			faults = append(faults, &unit.RangeError{Quantity: what, Value: float64(g), Unit: "dBi", Allowed: "-200 to 100 dBi"})
+		}
+	}
+	if p.Kind != GainTable {
+		gain("peak gain", p.PeakGain)
+	}
+	if p.Kind == CosinePower && !(p.Exponent >= 0 && p.Exponent <= 1000) {
+		faults = append(faults, &unit.RangeError{Quantity: "exponent", Value: p.Exponent, Allowed: "0 to 1000"})
+	}
+	if p.BackLobe != nil {
+		gain("back lobe", *p.BackLobe)
+	}
+	if p.Kind != GainTable {
+		return errors.Join(faults...)
+	}
+	if len(p.Table) < 2 {
+		faults = append(faults, errors.New("the pattern's table needs two points at least, the first at 0 deg"))
+	}
+	for i, q := range p.Table {
+		gain(fmt.Sprintf("point %d of the pattern", i+1), q.Gain)
+		off := q.OffBoresight.Degrees()
+		switch {
+		case i == 0 && off != 0:
+			faults = append(faults, fmt.Errorf("the pattern's table begins at %g deg; begin it at 0 deg", off))
+		case !(off >= 0 && off <= 180+1e-9):
+			faults = append(faults, &unit.RangeError{Quantity: fmt.Sprintf("point %d of the pattern", i+1), Value: off, Unit: "deg", Allowed: "0 to 180 deg"})
+		case i > 0 && !(q.OffBoresight > p.Table[i-1].OffBoresight):
+			faults = append(faults, fmt.Errorf("point %d of the pattern: %g deg does not rise over %g deg; sort the points by angle, each once", i+1, off, p.Table[i-1].OffBoresight.Degrees()))
+		}
+	}
+	return errors.Join(faults...)
 }

@@ -1,0 +1,96 @@
+package downlink
+
+import (
+	"errors"
+	"fmt"
+	"math"
+
+	"slantwise/orbit/unit"
+	"slantwise/station"
+)
+
+var errNoAzimuth = errors.New("a fixed antenna's pointing loss needs the azimuth of the spacecraft; give it, or a boresight in the zenith")
+
+// At returns the budget at a geometry. Range must be greater than 0 and elevation
+// known. The error says which term has no value there.
+func (l *Link) At(g Geometry) (*Budget, error) {
+	if !(g.Range > 0) || math.IsInf(float64(g.Range), 1) {
+		return nil, &unit.RangeError{Quantity: "range", Value: g.Range.Kilometres(), Unit: "km", Allowed: "greater than 0 km and finite"}
+	}
+	if !(math.Abs(g.Elevation.Degrees()) <= 90) {
+		return nil, &unit.RangeError{Quantity: "elevation", Value: g.Elevation.Degrees(), Unit: "deg", Allowed: "-90 to 90 deg"}
+	}
+	s := l.newScratch()
+	if err := l.evaluate(&g, s); err != nil {
+		return nil, err
+	}
+	r := &s.result
+	b := &Budget{
+		Time: g.Time, Azimuth: g.Azimuth, Elevation: g.Elevation, Range: g.Range, OffBoresight: g.OffBoresight,
+		ReceivedPowerDBm: r.receivedDBm, PowerFluxDensity: r.fluxDBWM2,
+		SystemNoise: unit.Temperature(r.systemK), GOverT: unit.DB(r.gOverT), CN0: unit.DB(r.cn0),
+		EbN0: unit.DB(r.ebn0), RequiredEbN0: unit.DB(math.NaN()), Margin: unit.DB(r.margin), MarginOver: unit.DB(r.marginOver),
+		DataRate: l.dataRate(), AchievableRate: unit.BitRate(r.achievableBps), AchievableLimit: r.limit,
+		Usable: r.usable,
+	}
+	if l.mode != nil {
+		b.RequiredEbN0 = l.mode.Required
+	}
+	b.Terms = make([]Term, len(l.terms))
+	for i := range l.terms {
+		b.Terms[i] = Term{l.terms[i], s.terms[i]}
+	}
+	b.NoiseParts = make([]NoisePart, len(l.noise.parts))
+	for i, p := range l.noise.parts {
+		b.NoiseParts[i] = NoisePart{p.Name, unit.Temperature(s.noise[i]), p.Source}
+	}
+	b.Cautions = l.cautions(&g, r)
+	return b, nil
+}
+
+func (l *Link) noTransmitGain(g *Geometry) error {
+	t := &l.spec.Transmitter
+	if math.IsNaN(g.OffBoresight.Radians()) {
+		return fmt.Errorf("transmitter %q: its attitude is left out, and its gain depends on it; give the attitude", t.Name)
+	}
+	_, err := l.pattern.GainAt(g.OffBoresight)
+	return fmt.Errorf("transmitter %q: %w", t.Name, err)
+}
+
+// cautions says what is doubtful at a geometry.
+func (l *Link) cautions(g *Geometry, r *result) []string {
+	var out []string
+	say := func(format string, args ...any) { out = append(out, fmt.Sprintf(format, args...)) }
+	if g.Elevation < 0 {
+		say("the spacecraft stands below the horizontal, at %.2f deg: the ground may be in the way", g.Elevation.Degrees())
+	}
+	switch w := l.beamwidth; {
+	case !r.usable:
+		say("the spacecraft stands %.3g deg off the beam's axis, outside the main lobe (%.3g deg): the link counts as unusable", r.pointing.Degrees(), w.Degrees())
+	case w > 0 && r.pointing > w/2:
+		say("the spacecraft stands %.3g deg off the beam's axis, beyond the half-power point: the pointing loss may be up to 4.3 dB more", r.pointing.Degrees())
+	}
+	for _, t := range l.tables() {
+		low, high := t.table.Span()
+		if t.table.IsConstant() || g.Elevation >= low && g.Elevation <= high {
+			continue
+		}
+		say("the table of the %s runs from %g to %g deg: at %.2f deg the value at its end is held", t.name, low.Degrees(), high.Degrees(), g.Elevation.Degrees())
+	}
+	return out
+}
+
+type namedTable struct {
+	name  string
+	table *station.Tabulated
+}
+
+// tables lists what the link reads from a table over elevation.
+func (l *Link) tables() []namedTable {
+	name := [...]string{"antenna temperature", "system noise temperature", "measured G/T", "measured G/T"}[l.noise.kind]
+	out := []namedTable{{name, l.noise.first}}
+	if l.gain != nil {
+		out = append(out, namedTable{"measured gain", l.gain})
+	}
+	return out
+}

@@ -1,0 +1,26 @@
+package downlink
+
+import (
+	"math"
+
+	"slantwise/orbit/unit"
+)
+
+// FreeSpaceLoss returns 20 log10(4π d/λ) dB, the free-space basic transmission loss
+// of Rec. ITU-R P.525 with the exact speed of light; d and f greater than 0, else it
+// is NaN.
+func FreeSpaceLoss(d unit.Length, f unit.Frequency) unit.DB {
+	if !(d > 0 && f > 0) {
+		return unit.DB(math.NaN())
+	}
+	return unit.DB(20 * math.Log10(4*math.Pi*d.Metres()*f.Hertz()/unit.SpeedOfLight))
+}
+
+// SpreadingLoss returns 10 log10(4π d²) dB(m²): what turns an EIRP in dBW into a
+// power flux density in dB(W/m²); d greater than 0, else it is NaN.
+func SpreadingLoss(d unit.Length) unit.DB {
+	if !(d > 0) {
+		return unit.DB(math.NaN())
+	}
+	return unit.DB(10*math.Log10(4*math.Pi) + 20*math.Log10(d.Metres()))
+}

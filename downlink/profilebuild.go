@@ -1,0 +1,122 @@
+package downlink
+
+import (
+	"errors"
+	"fmt"
+	"math"
+	"time"
+
+	"slantwise/orbit"
+	"slantwise/orbit/unit"
+)
+
+// Track gives Earth-fixed states over a span of seconds; *orbit.Ephemeris is one.
+type Track interface {
+	Seconds(t time.Time) float64 // the argument for an instant
+	Span() float64               // the last valid argument; the first is 0
+	StateAt(s float64) orbit.State
+}
+
+// MostSamples is how many samples a profile may have.
+const MostSamples = 10_000_000
+
+// Profile returns the budget along a pass from aos to los, a sample every step and
+// one at los. aos must not be after los, the track must hold both, and step must be
+// at least a millisecond. An error of one sample is the profile's error, with the
+// instant in it.
+func (l *Link) Profile(track Track, aos, los time.Time, step time.Duration) (*Profile, error) {
+	p, err := l.prepareProfile(track, aos, los, step)
+	if err != nil {
+		return nil, err
+	}
+	s := l.newScratch()
+	first := track.Seconds(aos)
+	for i, sec := range p.Seconds {
+		state := track.StateAt(min(first+sec, track.Span()))
+		if err := l.sample(p, i, state, s); err != nil {
+			return nil, fmt.Errorf("at %s: %w", aos.Add(time.Duration(sec*float64(time.Second))).UTC().Format("2006-01-02T15:04:05.000Z"), err)
+		}
+	}
+	p.Volume = p.volume()
+	return p, nil
+}
+
+func (l *Link) prepareProfile(track Track, aos, los time.Time, step time.Duration) (*Profile, error) {
+	if l.spec.Frame == nil {
+		return nil, errors.New("a profile needs the site of the station; the link was made without one")
+	}
+	if step < time.Millisecond {
+		return nil, fmt.Errorf("step: %v is not allowed; it must be at least 1ms", step)
+	}
+	// An instant holds whole nanoseconds, the span may end between two.
+	if track.Seconds(aos) < 0 || track.Seconds(los) > track.Span()+1e-9 || los.Before(aos) {
+		return nil, fmt.Errorf("pass: %s to %s does not lie within the track", aos.UTC().Format(time.RFC3339Nano), los.UTC().Format(time.RFC3339Nano))
+	}
+	whole := int64(los.Sub(aos) / step)
+	if whole > MostSamples {
+		return nil, fmt.Errorf("step: %v gives %d samples, more than %d; take a longer step", step, whole, MostSamples)
+	}
+	n := int(whole) + 1
+	if los.Sub(aos)%step != 0 {
+		n++
+	}
+	p := newProfile(l, n)
+	p.Start = aos
+	for i := range p.Seconds {
+		p.Seconds[i] = (time.Duration(i) * step).Seconds()
+	}
+	p.Seconds[n-1] = los.Sub(aos).Seconds()
+	return p, nil
+}
+
+// newProfile lays out the columns in one piece of memory.
+func newProfile(l *Link, n int) *Profile {
+	p := &Profile{Terms: l.terms, TermValues: make([][]float64, len(l.terms)),
+		AchievableLimit: make([]RateLimit, n), Usable: make([]bool, n),
+		DataRate: l.dataRate(), RequiredMarginDB: float64(l.spec.Transmitter.RequiredMargin)}
+	columns := []*[]float64{&p.Seconds, &p.AzimuthDeg, &p.ElevationDeg, &p.ApparentElevationDeg, &p.RangeKm, &p.RangeRateKmS,
+		&p.OffBoresightDeg, &p.DopplerHz, &p.ReceivedPowerDBm, &p.FluxDensityDBWM2, &p.SystemNoiseK, &p.GOverTDBK,
+		&p.CN0DBHz, &p.EbN0DB, &p.MarginDB, &p.MarginOverDB, &p.AchievableRateBps}
+	for i := range p.TermValues {
+		columns = append(columns, &p.TermValues[i])
+	}
+	all := make([]float64, n*len(columns))
+	for i, c := range columns {
+		*c = all[i*n : (i+1)*n : (i+1)*n]
+	}
+	return p
+}
+
+// sample evaluates one state into row i.
+func (l *Link) sample(p *Profile, i int, state orbit.State, s *scratch) error {
+	g, rate := l.GeometryOf(state)
+	if err := l.evaluate(&g, s); err != nil {
+		return err
+	}
+	p.AzimuthDeg[i], p.ElevationDeg[i] = g.Azimuth.Degrees(), g.Elevation.Degrees()
+	p.ApparentElevationDeg[i] = l.apparentDeg(g.Elevation)
+	p.RangeKm[i], p.RangeRateKmS[i] = g.Range.Kilometres(), rate.KilometresPerSecond()
+	p.OffBoresightDeg[i] = g.OffBoresight.Degrees()
+	p.DopplerHz[i] = l.Doppler(rate).Hertz()
+	for t, v := range s.terms {
+		p.TermValues[t][i] = v
+	}
+	r := &s.result
+	p.ReceivedPowerDBm[i], p.FluxDensityDBWM2[i] = r.receivedDBm, r.fluxDBWM2
+	p.SystemNoiseK[i], p.GOverTDBK[i] = r.systemK, r.gOverT
+	p.CN0DBHz[i], p.EbN0DB[i] = r.cn0, r.ebn0
+	p.MarginDB[i], p.MarginOverDB[i] = r.margin, r.marginOver
+	p.AchievableRateBps[i], p.AchievableLimit[i], p.Usable[i] = r.achievableBps, r.limit, r.usable
+	return nil
+}
+
+func (l *Link) apparentDeg(geometric unit.Angle) float64 {
+	if l.spec.Refraction == nil {
+		return math.NaN()
+	}
+	apparent, ok := l.spec.Refraction.Apparent(geometric)
+	if !ok {
+		return math.NaN()
+	}
+	return apparent.Degrees()
+}
