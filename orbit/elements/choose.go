@@ -1,10 +1,13 @@
 package elements
 
 import (
-	"errors"
+	"fmt"
+	"strconv"
+	"strings"
 	"time"
 
 	"slantwise/orbit"
+	"slantwise/orbit/unit"
 )
 
 // Choice says which of several sets of one object is used.
@@ -16,9 +19,24 @@ const (
 	Nearest               // the epoch nearest to the time asked for
 )
 
+var choiceNames = [...]string{"newest", "nearest"}
+
+// String returns "newest" or "nearest".
+func (c Choice) String() string {
+	if c < 0 || int(c) >= len(choiceNames) {
+		return fmt.Sprintf("Choice(%d)", int(c))
+	}
+	return choiceNames[c]
+}
+
 // ParseChoice reads "newest" or "nearest".
 func ParseChoice(s string) (Choice, error) {
-	return 0, errors.New("elements: not built yet")
+	for i, n := range choiceNames {
+		if s == n {
+			return Choice(i), nil
+		}
+	}
+	return 0, fmt.Errorf("%q is not allowed; it must be %s%s", s, strings.Join(choiceNames[:], " or "), suggestion(s, choiceNames[:]))
 }
 
 // Chosen is the set that is used for one object.
@@ -31,28 +49,72 @@ type Chosen struct {
 
 // Choose picks one set for each object, in the order in which the objects first
 // occur. Sets belong to one object when they have the same catalogue number; sets
-// numbered 0, when they have the same name.
-func Choose(sets []orbit.Elements, how Choice, at time.Time) []Chosen { return nil }
-
-// Match returns all sets of the object that ref names: by catalogue number (plain
-// or Alpha-5), by the exact name, or by the name in any case, in this order. The
-// error is a *NotFoundError or an *AmbiguousError.
-func Match(sets []orbit.Elements, ref string) ([]orbit.Elements, error) {
-	return nil, errors.New("elements: not built yet")
+// numbered 0, when they have the same name. Of two sets with the same epoch (or
+// equally near ones) the one with the later epoch, then the one that stands later,
+// is taken.
+func Choose(sets []orbit.Elements, how Choice, at time.Time) []Chosen {
+	index := map[string]int{}
+	var out []Chosen
+	for i := range sets {
+		key := objectKey(&sets[i])
+		j, known := index[key]
+		if !known {
+			index[key] = len(out)
+			out = append(out, Chosen{Elements: sets[i], Among: 1})
+			continue
+		}
+		out[j].Among++
+		if !how.prefers(out[j].Epoch, sets[i].Epoch, at) {
+			out[j].Elements = sets[i]
+		}
+	}
+	for i := range out {
+		out[i].Age = out[i].Elements.Age(at)
+		out[i].Caution = caution(&out[i].Elements, at)
+	}
+	return out
 }
 
-// NotFoundError says that no set answers to a reference.
-type NotFoundError struct {
-	Ref     string
-	Nearest []string // names most alike, best first; may be empty
-	Count   int      // how many objects there were
+// objectKey tells objects apart; many sets made by hand are numbered 0.
+func objectKey(el *orbit.Elements) string {
+	if el.CatalogNumber == 0 {
+		return "0 " + el.Name
+	}
+	return strconv.Itoa(el.CatalogNumber)
 }
 
-// AmbiguousError says that a name stands for several objects.
-type AmbiguousError struct {
-	Ref        string
-	Candidates []string // "name (catalogue number)"
+// prefers tells whether the set with the first epoch stays, against the second.
+func (c Choice) prefers(first, second, at time.Time) bool {
+	if c == Nearest {
+		a, b := first.Sub(at).Abs(), second.Sub(at).Abs()
+		if a != b {
+			return a < b
+		}
+	}
+	return first.After(second)
 }
 
-func (e *NotFoundError) Error() string  { return "elements: not built yet" }
-func (e *AmbiguousError) Error() string { return "elements: not built yet" }
+// An element set of a low orbit is good for about three days, since drag is not
+// known better (common practice).
+const (
+	relied     = 3 * 24 * time.Hour
+	lowPerigee = 1000 * unit.Kilometre
+)
+
+// caution warns of a set of a low orbit that is used too far from its epoch.
+func caution(el *orbit.Elements, at time.Time) string {
+	age := el.Age(at)
+	if age.Abs() <= relied {
+		return ""
+	}
+	facts, err := el.Facts()
+	if err != nil || facts.Perigee >= lowPerigee {
+		return "" // what is wrong with the orbit is told where it is flown
+	}
+	days, when := age.Hours()/24, "old"
+	if days < 0 {
+		days, when = -days, "ahead"
+	}
+	return fmt.Sprintf("the element set of %s is %.1f days %s at %s; under 1000 km of perigee (here %.0f km) 3 days are relied on by common practice: fetch a newer set",
+		Label(*el), days, when, at.UTC().Format("2006-01-02T15:04:05Z"), facts.Perigee.Kilometres())
+}

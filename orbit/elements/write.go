@@ -2,7 +2,9 @@ package elements
 
 import (
 	"errors"
+	"fmt"
 	"io"
+	"strings"
 	"time"
 
 	"slantwise/orbit"
@@ -22,18 +24,42 @@ func Write(w io.Writer, sets []orbit.Elements, f Format, h Header) ([]Warning, e
 	return WriteOMM(w, sets, f, h)
 }
 
-// WriteTLE writes the sets as canonical two-line element sets, with a name line
-// before those that have a name. A set that holds more digits than a TLE does is
-// rounded, and a warning names the fields. Nothing is written, and the error names
-// the sets, when one cannot be a TLE at all: a catalogue number above 339,999, an
-// epoch outside 1957 to 2056.
-func WriteTLE(w io.Writer, sets []orbit.Elements) ([]Warning, error) {
-	return nil, errors.New("elements: not built yet")
+// WriteError says why a set cannot be written in a format.
+type WriteError struct {
+	Object  string // name and catalogue number
+	Format  Format
+	Problem string
+	Next    string // may be empty
 }
 
-// WriteOMM writes the sets as OMM in one of the four OMM formats. Numbers are
-// written with the fewest digits that give the same value back, epochs to the
-// microsecond or, where need be, the nanosecond.
-func WriteOMM(w io.Writer, sets []orbit.Elements, f Format, h Header) ([]Warning, error) {
-	return nil, errors.New("elements: not built yet")
+// Error returns "object cannot be written as format: problem; next".
+func (e *WriteError) Error() string {
+	s := fmt.Sprintf("%s cannot be written as %s: %s", e.Object, e.Format, e.Problem)
+	if e.Next != "" {
+		s += "; " + e.Next
+	}
+	return s
+}
+
+// writable checks what holds for every format: valid elements, and texts that a
+// reader takes back as they are.
+func writable(el orbit.Elements, f Format) error {
+	fail := func(problem string) error {
+		return &WriteError{Object: Label(el), Format: f, Problem: problem}
+	}
+	var errs []error
+	if err := el.Validate(); err != nil {
+		errs = append(errs, fail(strings.ReplaceAll(err.Error(), "\n", "; ")))
+	}
+	for _, t := range []struct{ what, text string }{
+		{"name", el.Name}, {"international designator", el.InternationalDesignator}, {"classification", el.Classification},
+	} {
+		if r, found := unseen(t.text); found {
+			errs = append(errs, fail(fmt.Sprintf("the %s holds the invisible character U+%04X", t.what, r)))
+		}
+		if t.text != strings.Trim(t.text, " ") {
+			errs = append(errs, fail(fmt.Sprintf("the %s %q begins or ends with a blank", t.what, t.text)))
+		}
+	}
+	return errors.Join(errs...)
 }
