@@ -42,7 +42,7 @@ Results go to stdout, words for people to stderr. Exit codes:
 	root.SetFlagErrorFunc(flagError)
 	root.SuggestionsMinimumDistance = 2
 	addScenarioFlags(root, env)
-	root.AddCommand()
+	root.AddCommand(newCheck(env))
 	markStart(root, env)
 	return root
 }

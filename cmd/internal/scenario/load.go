@@ -1,9 +1,79 @@
 package scenario
 
-import "errors"
+import (
+	"errors"
+
+	"slantwise/cmd/internal/scenario/tree"
+	"slantwise/orbit/elements"
+	"slantwise/station"
+)
 
 // Load reads and checks the scenario of a request. All faults come at once, joined
-// with errors.Join.
+// with errors.Join; most are *Fault.
 func Load(req Request) (*Scenario, error) {
-	return nil, errors.New("scenario: not built yet")
+	src, err := find(req.Path)
+	if err != nil {
+		return nil, err
+	}
+	return load(src, req)
+}
+
+func load(src *source, req Request) (*Scenario, error) {
+	root, err := tree.Parse(src.text, src.format)
+	if err != nil {
+		f := &Fault{Place: src.label, Problem: err.Error()}
+		var se *tree.SyntaxError
+		if errors.As(err, &se) {
+			f.Line = se.Line
+		}
+		return nil, f
+	}
+	r := &reader{place: src.label, src: src, need: req.Need}
+	r.override(root, req.Flags)
+	s := r.scenario(root)
+	if err := r.faults.err(); err != nil {
+		return nil, err
+	}
+	s.Label, s.Demo = src.label, src.files != nil
+	s.Assumptions, s.Warnings = r.assumptions, r.warnings
+	return s, nil
+}
+
+var topKeys = []string{"window", "earth", "element_files", "element_choice", "horizon", "spacecraft", "stations", "sizing"}
+
+// scenario reads everything; the value is of use only where no fault was noted.
+func (r *reader) scenario(root *tree.Node) *Scenario {
+	o := r.object(root, "", topKeys)
+	o.about = "scenario"
+	s := &Scenario{Window: r.window(o), Earth: r.earth(o)}
+	s.Choice = r.choice(o)
+	s.Horizon = elevationKind(o, "horizon", "AOS and LOS are decided by")
+	s.Sets = r.elementFiles(o)
+	s.Spacecraft = r.spacecraft(o, s)
+	s.Stations = r.stations(o)
+	r.sizing(o, s)
+	return s
+}
+
+func (r *reader) choice(o object) elements.Choice {
+	word, given := o.word("element_choice", "newest", "nearest")
+	if !o.has("element_choice") && r.need == NeedOrbits {
+		o.assume("element_choice left out: of several element sets of one object the newest is used")
+	}
+	if given && word == "nearest" {
+		return elements.Nearest
+	}
+	return elements.Newest
+}
+
+// elevationKind reads geometric or apparent, the first where the key is left out.
+func elevationKind(o object, key, what string) station.ElevationKind {
+	word, _ := o.word(key, "geometric", "apparent")
+	if !o.has(key) {
+		o.assume("%s left out: %s geometric elevation, without refraction", key, what)
+	}
+	if word == "apparent" {
+		return station.Apparent
+	}
+	return station.Geometric
 }

@@ -1,0 +1,124 @@
+package scenario
+
+import (
+	"fmt"
+	"time"
+
+	"slantwise/cmd/internal/scenario/tree"
+	"slantwise/orbit"
+	"slantwise/orbit/elements"
+)
+
+var spacecraftKeys = []string{"name", "element_set", "transmitters"}
+
+// spacecraft reads the spacecraft, or takes every object of the element files where
+// the key is left out.
+func (r *reader) spacecraft(top object, s *Scenario) []Spacecraft {
+	middle := s.Window.Start.Add(s.Window.Length() / 2)
+	if !top.has("spacecraft") {
+		return r.everyObject(top, s, middle)
+	}
+	items := top.objects("spacecraft", "spacecraft", maxSpacecraft, spacecraftKeys)
+	called := names("spacecraft", items)
+	out := make([]Spacecraft, len(items))
+	for i, o := range items {
+		o.about = "spacecraft " + called[i]
+		out[i] = Spacecraft{Name: called[i], Choice: s.Choice, Transmitters: r.transmitters(o)}
+		if r.need != NeedOrbits {
+			o.elementSetName()
+			continue
+		}
+		out[i].Candidates = o.candidates(called[i], s.Sets)
+		if len(out[i].Candidates) > 0 {
+			out[i].Elements = out[i].ElementsAt(middle)
+			o.tellAge(out[i].Elements)
+		}
+	}
+	return out
+}
+
+// elementSetName reads element_set, which may stand without quotes.
+func (o object) elementSetName() (string, *tree.Node) {
+	n := o.get("element_set")
+	if n == nil {
+		return "", nil
+	}
+	ref, _ := o.textAt(n, "element_set", true)
+	return ref, n
+}
+
+// candidates finds the element sets of a spacecraft. Where element_set is left out,
+// its name is looked for.
+func (o object) candidates(name string, sets []orbit.Elements) []orbit.Elements {
+	ref, at := o.elementSetName()
+	if at == nil {
+		ref, at = name, o.node
+	}
+	if ref == "" || len(sets) == 0 {
+		return nil
+	}
+	found, err := elements.Match(sets, ref)
+	switch {
+	case err != nil && o.has("element_set"):
+		o.fault(at, "element_set", "%s", "", err)
+	case err != nil:
+		o.fault(at, "element_set", "the key is missing, and by the spacecraft's name: %s", "give the catalogue number, or the name in the element file", err)
+	case !o.has("element_set"):
+		o.assume("element_set left out: the element set %s is used, by the name", elements.Label(found[0]))
+	}
+	return found
+}
+
+// tellAge says which element set is used where there was a choice, and warns of an
+// old one.
+func (o object) tellAge(c elements.Chosen) {
+	if c.Among > 1 {
+		o.assume("of %d element sets the one with epoch %s is used", c.Among, c.Epoch.Format(time.RFC3339))
+	}
+	if c.Caution != "" {
+		o.warn("%s", c.Caution)
+	}
+}
+
+// everyObject makes a spacecraft without transmitter of each object found.
+func (r *reader) everyObject(top object, s *Scenario, middle time.Time) []Spacecraft {
+	if r.need != NeedOrbits {
+		top.missing("spacecraft", "at least one spacecraft with a transmitter")
+		return nil
+	}
+	if len(s.Sets) == 0 {
+		return nil // there is a fault for the element files already
+	}
+	chosen := elements.Choose(s.Sets, s.Choice, middle)
+	top.assume("spacecraft left out: all %d objects of the element files, without transmitter", len(chosen))
+	byObject := map[string][]orbit.Elements{}
+	for _, el := range s.Sets {
+		byObject[objectKey(el)] = append(byObject[objectKey(el)], el)
+	}
+	out := make([]Spacecraft, len(chosen))
+	count := map[string]int{}
+	for i, c := range chosen {
+		name := c.Name
+		if name == "" {
+			name = fmt.Sprintf("%05d", c.CatalogNumber)
+		}
+		count[name]++
+		if count[name] == 2 {
+			top.warn("several objects are named %s; what names one of them means the first", quote(name))
+		}
+		out[i] = Spacecraft{Name: name, Elements: c, Candidates: byObject[objectKey(c.Elements)], Choice: s.Choice}
+		named := top
+		named.about = "spacecraft " + name
+		named.tellAge(c)
+	}
+	return out
+}
+
+// objectKey is the same for all sets of one object: the catalogue number, or the
+// name where that is 0.
+func objectKey(el orbit.Elements) string {
+	if el.CatalogNumber != 0 {
+		return fmt.Sprint(el.CatalogNumber)
+	}
+	return "name " + el.Name
+}

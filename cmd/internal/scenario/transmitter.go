@@ -1,0 +1,131 @@
+package scenario
+
+import (
+	"slantwise/downlink"
+	"slantwise/orbit/unit"
+)
+
+var transmitterKeys = []string{
+	"name", "frequency_mhz", "power_w", "power_dbm", "power_dbw", "eirp_dbw", "line_loss_db", "antenna",
+	"attitude", "attitude_probability", "polarization", "axial_ratio_db", "polarization_tilt_deg", "modes",
+	"implementation_loss_db", "required_margin_db", "extra_losses", "allotted_bandwidth_mhz", "highest_data_rate_bps",
+}
+
+// Ranges of radio keys; the far ends keep every sum of decibels finite.
+var (
+	frequencyMHz = above(0, 1e6, "MHz")
+	gainDBi      = span{low: -200, high: 200, unit: "dBi"}
+	lossDB       = span{low: 0, high: 100, unit: "dB", next: "a loss is a positive number"}
+	marginDB     = span{low: -100, high: 100, unit: "dB"}
+	bitsASecond  = above(0, 1e15, "bit/s")
+	fraction     = span{low: 0, high: 1, lowOpen: true}
+)
+
+func (r *reader) transmitters(owner object) []downlink.Transmitter {
+	items := owner.objects("transmitters", "transmitters", maxParts, transmitterKeys)
+	called := names("transmitter", items)
+	var out []downlink.Transmitter
+	for i, o := range items {
+		o.about = owner.about + ", transmitter " + called[i]
+		out = append(out, r.transmitter(o, called[i]))
+	}
+	return out
+}
+
+func (r *reader) transmitter(o object, name string) downlink.Transmitter {
+	t := downlink.Transmitter{Name: name}
+	t.Frequency = unit.Frequency(o.required("frequency_mhz", frequencyMHz, "the carrier's frequency")) * unit.Megahertz
+	o.radiatedPower(&t)
+	o.attitude(&t, r.need)
+	t.Polarization = o.polarization()
+	t.Modes = o.modes()
+	t.ImplementationLoss = unit.DB(o.zeroLeftOut("implementation_loss_db", lossDB))
+	t.RequiredMargin = unit.DB(o.zeroLeftOut("required_margin_db", marginDB))
+	for _, l := range o.losses(false) {
+		t.ExtraLosses = append(t.ExtraLosses, downlink.Loss{Name: l.Name, Loss: l.Loss})
+	}
+	t.AllottedBandwidth = unit.Frequency(o.numberOr("allotted_bandwidth_mhz", above(0, 1e6, "MHz"), 0)) * unit.Megahertz
+	t.HighestRate = unit.BitRate(o.numberOr("highest_data_rate_bps", bitsASecond, 0))
+	return t
+}
+
+// required returns the number of a key that must be there, or 0 with a fault.
+func (o object) required(key string, in span, what string) float64 {
+	if !o.has(key) {
+		o.missing(key, what+", "+in.allowed())
+		return 0
+	}
+	return o.numberOr(key, in, 0)
+}
+
+// zeroLeftOut returns the number of a key; where it is left out it is 0, and that is
+// noted.
+func (o object) zeroLeftOut(key string, in span) float64 {
+	if o.node != nil && !o.has(key) {
+		o.assume("%s left out: 0 %s", key, in.unit)
+	}
+	return o.numberOr(key, in, 0)
+}
+
+// radiatedPower reads power, line loss and antenna, or the EIRP in their place.
+func (o object) radiatedPower(t *downlink.Transmitter) {
+	which, given := o.exclusive("power_w", "power_dbm", "power_dbw", "eirp_dbw")
+	if !given {
+		o.missing("power_w", "one of power_w, power_dbm, power_dbw, eirp_dbw")
+		return
+	}
+	if which == "eirp_dbw" {
+		if v, ok := o.number(which, span{low: -200, high: 200, unit: "dBW"}); ok {
+			level := unit.LevelDBW(v)
+			t.EIRP = &level
+		}
+		o.useless("beside eirp_dbw, which holds power, line loss and antenna gain", "line_loss_db", "antenna")
+		return
+	}
+	t.Power = o.power(which)
+	t.LineLoss = unit.DB(o.zeroLeftOut("line_loss_db", lossDB))
+	t.Pattern = o.pattern()
+}
+
+func (o object) power(key string) unit.Level {
+	switch key {
+	case "power_w":
+		if v, ok := o.number(key, above(0, 1e9, "W")); ok {
+			level, err := unit.LevelWatts(v)
+			o.addAll(o.get(key), key, err)
+			return level
+		}
+	case "power_dbm":
+		return unit.LevelDBm(o.numberOr(key, span{low: -170, high: 120, unit: "dBm"}, 0))
+	case "power_dbw":
+		return unit.LevelDBW(o.numberOr(key, span{low: -200, high: 90, unit: "dBW"}, 0))
+	}
+	return unit.Level{}
+}
+
+// attitude reads how the antenna is held. It must be there where the pattern has a
+// direction and the spacecraft is flown.
+func (o object) attitude(t *downlink.Transmitter, n Need) {
+	word, given := o.word("attitude", "nadir", "station", "tumbling")
+	if given {
+		t.Attitude = map[string]downlink.Attitude{
+			"nadir": downlink.AttitudeNadir, "station": downlink.AttitudeStation, "tumbling": downlink.AttitudeTumbling,
+		}[word]
+	}
+	directed := t.EIRP == nil && t.Pattern.Kind != downlink.Isotropic
+	if !o.has("attitude") && directed && n == NeedOrbits {
+		o.missing("attitude", "nadir, station or tumbling, since the antenna's gain depends on the direction")
+	}
+	if o.has("attitude") && t.Attitude != downlink.AttitudeTumbling {
+		o.useless("unless attitude is tumbling", "attitude_probability")
+		return
+	}
+	if t.Attitude != downlink.AttitudeTumbling {
+		o.useless("without attitude: tumbling", "attitude_probability")
+		return
+	}
+	if !o.has("attitude_probability") {
+		o.assume("attitude_probability left out: the gain exceeded with probability %g counts", downlink.DefaultAttitudeProbability)
+	}
+	t.AttitudeProbability = o.numberOr("attitude_probability", span{low: 0, high: 1, lowOpen: true, highOpen: true}, downlink.DefaultAttitudeProbability)
+}
