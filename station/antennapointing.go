@@ -7,7 +7,7 @@ import (
 )
 
 // PointingLoss returns 12 (e/w)² dB, the loss of a beam of half-power width w at e off
-// its axis. Against a uniform circular aperture it is within 0.03 dB up to e = w/2
+// its axis. Against a uniform circular aperture it is within 0.04 dB up to e = w/2
 // and 4.3 dB short at e = w (TestPointingLoss); beyond InMainLobe it is no gain to
 // count on.
 //

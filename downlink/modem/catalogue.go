@@ -4,6 +4,7 @@ import (
 	_ "embed" // the tables below
 	"encoding/csv"
 	"fmt"
+	"math"
 	"slices"
 	"strconv"
 	"strings"
@@ -90,7 +91,7 @@ func readEntries(text string) ([]Entry, error) {
 		var errRate, errCode error
 		e.ErrorRate, errRate = strconv.ParseFloat(r[4], 64)
 		e.CodeRate, errCode = fraction(r[2])
-		if errNeed != nil || errRate != nil || errCode != nil || !(e.ErrorRate > 0) || !(e.CodeRate > 0 && e.CodeRate <= 1) {
+		if errNeed != nil || errRate != nil || errCode != nil || !(math.Abs(need) <= 100) || !(e.ErrorRate > 0 && e.ErrorRate < 1) || !(e.CodeRate > 0 && e.CodeRate <= 1) {
 			return nil, fmt.Errorf("row %d (%s): code rate %q, Eb/N0 %q or error rate %q is no number in range", i+3, r[0], r[2], r[3], r[4])
 		}
 		out = append(out, e)
