@@ -21,7 +21,9 @@ func readCSV(text string, rep *report) []record {
 	for i := range header {
 		header[i] = strings.Trim(header[i], " ")
 	}
-	checkHeads(header, rep)
+	if !checkHeads(header, rep) {
+		return nil
+	}
 	r.ReuseRecord = true
 	var records []record
 	for {
@@ -46,7 +48,8 @@ func readCSV(text string, rep *report) []record {
 	}
 }
 
-func checkHeads(header []string, rep *report) {
+func checkHeads(header []string, rep *report) bool {
+	before := rep.faults.Total
 	seen := map[string]bool{}
 	for _, h := range header {
 		if h == "" {
@@ -56,6 +59,7 @@ func checkHeads(header []string, rep *report) {
 		}
 		seen[h] = true
 	}
+	return rep.faults.Total == before
 }
 
 func csvFault(err error) Fault {

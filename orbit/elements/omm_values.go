@@ -114,7 +114,7 @@ func (d *draft) readSemiMajorAxis() {
 		gm = d.value("GM", math.SmallestNonzeroFloat64, math.MaxFloat64, "greater than 0 km**3/s**2")
 	}
 	e, ok := d.given["SEMI_MAJOR_AXIS"]
-	if !ok {
+	if _, both := d.given["MEAN_MOTION"]; both || !ok {
 		return
 	}
 	a := d.value("SEMI_MAJOR_AXIS", math.SmallestNonzeroFloat64, math.MaxFloat64, "greater than 0 km")

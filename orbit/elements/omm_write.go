@@ -18,14 +18,18 @@ import (
 // are in use). Numbers are written with the fewest digits that give the same value
 // back, epochs to the microsecond or, where need be, the nanosecond; a name or
 // designator that is not known, as UNKNOWN. Nothing is written when a set is not
-// valid; the error holds a *WriteError for each. At present no warnings arise.
-func WriteOMM(w io.Writer, sets []orbit.Elements, f Format, h Header) ([]Warning, error) {
+// valid; the error holds a *WriteError for each. An OMM holds all that Elements does,
+// so that nothing is rounded.
+func WriteOMM(w io.Writer, sets []orbit.Elements, f Format, h Header) error {
 	var errs []error
 	for i := range sets {
 		errs = append(errs, writable(sets[i], f))
 	}
 	if err := errors.Join(errs...); err != nil {
-		return nil, err
+		return err
+	}
+	if h.Created.IsZero() && (f == OMMKVN || f == OMMXML) {
+		return fmt.Errorf("writing %s: the time of creation is not given; the message must have one", f)
 	}
 	var out bytes.Buffer
 	var err error
@@ -39,15 +43,15 @@ func WriteOMM(w io.Writer, sets []orbit.Elements, f Format, h Header) ([]Warning
 	case OMMCSV:
 		err = writeCSV(&out, sets)
 	default:
-		return nil, fmt.Errorf("%s is no OMM format; give one of omm-kvn, omm-xml, omm-json, omm-csv", f)
+		return fmt.Errorf("%s is no OMM format; give one of omm-kvn, omm-xml, omm-json, omm-csv", f)
 	}
 	if err != nil {
-		return nil, fmt.Errorf("writing %s: %w", f, err)
+		return fmt.Errorf("writing %s: %w", f, err)
 	}
 	if _, err := w.Write(out.Bytes()); err != nil {
-		return nil, fmt.Errorf("writing %s: %w", f, err)
+		return fmt.Errorf("writing %s: %w", f, err)
 	}
-	return nil, nil
+	return nil
 }
 
 func writeKVN(out *bytes.Buffer, sets []orbit.Elements, h Header) {

@@ -52,12 +52,21 @@ func readXML(text string, rep *report) []record {
 		}
 		if err != nil {
 			r.syntax(err)
-			return r.records
+			return r.finished()
 		}
 		if !r.token(token) {
-			return r.records
+			return r.finished()
 		}
 	}
+}
+
+// finished returns the records whose end was read; of the one in which reading
+// stopped, nothing can be said.
+func (r *xmlReader) finished() []record {
+	if r.inside {
+		return r.records[:len(r.records)-1]
+	}
+	return r.records
 }
 
 // token takes one token; false ends the reading after a fault.

@@ -37,9 +37,9 @@ func Read(r io.Reader, name string) ([]orbit.Elements, []Warning, error) {
 	}
 	sets := parse(text, rep)
 	if err := rep.err(); err != nil {
-		return nil, rep.warnings, err
+		return nil, rep.said(), err
 	}
-	return sets, rep.warnings, nil
+	return sets, rep.said(), nil
 }
 
 // ReadFile reads the element sets of a file; see Read.

@@ -1,6 +1,7 @@
 package elements
 
 import (
+	"cmp"
 	"fmt"
 	"slices"
 	"strings"
@@ -13,6 +14,7 @@ type report struct {
 	file     string
 	faults   Faults
 	warnings []Warning
+	dropped  int   // warnings beyond maxWarnings
 	passed   tally // keywords of an OMM that SGP4 does not use
 	unknown  tally // keywords that no OMM has
 	assumed  tally // keywords that were not given and have an only possible value
@@ -26,15 +28,35 @@ func (r *report) fault(f Fault) {
 	}
 }
 
+// maxWarnings is how many warnings of one text are kept; what is odd in one set is
+// often odd in all of them.
+const maxWarnings = 50
+
 func (r *report) warn(line int, text string) {
+	if len(r.warnings) == maxWarnings {
+		r.dropped++
+		return
+	}
 	r.warnings = append(r.warnings, Warning{File: r.file, Line: line, Text: text})
 }
 
-// err returns what was collected as an error, nil when nothing was wrong.
+// said returns the warnings, and how many more there were.
+func (r *report) said() []Warning {
+	if r.dropped == 0 {
+		return r.warnings
+	}
+	return append(r.warnings, Warning{File: r.file, Text: fmt.Sprintf("and %d more warnings", r.dropped)})
+}
+
+// err returns what was collected as an error in the order of the text, nil when
+// nothing was wrong.
 func (r *report) err() error {
 	if r.faults.Total == 0 {
 		return nil
 	}
+	slices.SortStableFunc(r.faults.List, func(a, b *Fault) int {
+		return cmp.Or(cmp.Compare(a.Line, b.Line), cmp.Compare(a.Column, b.Column))
+	})
 	return &r.faults
 }
 

@@ -2,7 +2,6 @@ package elements
 
 import (
 	"fmt"
-	"math/bits"
 	"regexp"
 	"strconv"
 	"strings"
@@ -54,13 +53,13 @@ var decimalField = regexp.MustCompile(`^[+-]?([0-9]+\.[0-9]*|\.[0-9]+)$`)
 
 // decimal reads a number with a decimal point and blanks in front of it.
 func (f *tleFields) decimal(a, b int, field string, n need) float64 {
-	s := strings.TrimLeft(f.l.cols(a, b), " ")
+	s := strings.Trim(f.l.cols(a, b), " ")
 	if s == "" {
 		f.blank(a, b, field, n)
 		return 0
 	}
 	if !decimalField.MatchString(s) {
-		f.fault(a, b, field, "must be a number with a decimal point, blanks only in front", nextFetch)
+		f.fault(a, b, field, "must be a number with a decimal point", nextFetch)
 		return 0
 	}
 	v, err := strconv.ParseFloat(s, 64)
@@ -137,7 +136,7 @@ func (f *tleFields) exponential(a, b int, field string) float64 {
 // dayOfYear reads columns 21 to 32: whole days from 1, and the part of a day.
 func (f *tleFields) dayOfYear() (whole int, fraction time.Duration, ok bool) {
 	const a, b = 21, 32
-	s := strings.TrimLeft(f.l.cols(a, b), " ")
+	s := strings.Trim(f.l.cols(a, b), " ")
 	days, part, _ := strings.Cut(s, ".")
 	whole, err := digitsOnly(days)
 	if err == nil && part != "" {
@@ -147,31 +146,16 @@ func (f *tleFields) dayOfYear() (whole int, fraction time.Duration, ok bool) {
 		f.fault(a, b, "epoch day", "must be the day of the year with its fraction, as 069.50000000", nextFetch)
 		return 0, 0, false
 	}
-	fraction, exact := partOfDay(part)
-	if !exact {
-		f.rep.warn(f.l.number, fmt.Sprintf("%s, epoch day %q: rounded to the nanosecond", f.which, s))
-	}
-	return whole, fraction, true
+	return whole, partOfDay(part), true
 }
 
-// partOfDay turns the digits behind the decimal point of a day into a duration; at
-// most ten digits occur in the columns of a TLE.
-func partOfDay(digits string) (d time.Duration, exact bool) {
-	if digits == "" {
-		return 0, true
+// partOfDay turns the digits behind the decimal point of a day into a duration. At
+// most ten digits fit the columns, and 1e-10 day is 8640 ns exactly.
+func partOfDay(digits string) time.Duration {
+	d, scale := time.Duration(0), 24*time.Hour
+	for _, c := range []byte(digits) {
+		scale /= 10
+		d += time.Duration(c-'0') * scale
 	}
-	n, err := strconv.ParseUint(digits, 10, 64)
-	if err != nil {
-		return 0, false
-	}
-	scale := uint64(1)
-	for range digits {
-		scale *= 10
-	}
-	hi, lo := bits.Mul64(n, uint64(24*time.Hour))
-	quotient, rest := bits.Div64(hi, lo, scale)
-	if 2*rest >= scale {
-		quotient++
-	}
-	return time.Duration(quotient), rest == 0
+	return d
 }

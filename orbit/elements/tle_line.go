@@ -48,7 +48,7 @@ func (l tleLine) sound(rep *report) bool {
 	}
 	if n > tleColumns {
 		rep.fault(Fault{Line: l.number, Column: l.indent + tleColumns + 1, Text: l.text[tleColumns:],
-			Problem: fmt.Sprintf("text after column %d, where an element line ends", tleColumns), Next: "take it off, or " + nextFetch})
+			Problem: fmt.Sprintf("text after column %d, where an element line ends", tleColumns), Next: "take it off"})
 		return false
 	}
 	l.verify(rep)

@@ -21,7 +21,7 @@ func Write(w io.Writer, sets []orbit.Elements, f Format, h Header) ([]Warning, e
 	if f == TLE {
 		return WriteTLE(w, sets)
 	}
-	return WriteOMM(w, sets, f, h)
+	return nil, WriteOMM(w, sets, f, h)
 }
 
 // WriteError says why a set cannot be written in a format.
