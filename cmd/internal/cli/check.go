@@ -1,21 +1,119 @@
 package cli
 
 import (
-	"context"
+	"errors"
+	"fmt"
+	"io"
+	"slices"
 
 	"github.com/spf13/cobra"
+
+	"slantwise/cmd/internal/scenario"
+	"slantwise/orbit"
 )
 
 func newCheck(env *Env) *cobra.Command {
-	return &cobra.Command{Use: "check", RunE: func(cmd *cobra.Command, _ []string) error { return runCheck(cmd.Context(), env) }}
+	var f format
+	cmd := &cobra.Command{
+		Use:   "check",
+		Short: "Find all faults of a scenario and list every default taken",
+		Long: `Read the scenario with all its files, fly each spacecraft over the window, and tell
+all faults at once; where there are none, list the element sets that are used with
+their age, warnings, and every default that was taken.`,
+		Example: `  slantwise check
+  slantwise check --scenario plans/summer.yaml --format json`,
+		Args: noArgs,
+		RunE: func(*cobra.Command, []string) error { return runCheck(env, f) },
+	}
+	addFormat(cmd.Flags(), &f)
+	return cmd
 }
-func runCheck(ctx context.Context, env *Env) error {
-	s, err := env.load(needOrbits)
+
+func runCheck(env *Env, f format) error {
+	s, err := env.read(needOrbits)
 	if err != nil {
 		return err
 	}
-	for _, a := range s.Assumptions {
-		env.note("%s", a)
+	if err := fly(s); err != nil {
+		return &InputError{Err: err}
 	}
-	return nil
+	switch f {
+	case formatCSV:
+		return checkCSV(env.Out, s)
+	case formatJSON:
+		return writeJSON(env.Out, checkResult(s))
+	}
+	return checkTable(env, s)
+}
+
+// fly propagates every spacecraft over the window, so that an orbit that decays in
+// it is found here.
+func fly(s *scenario.Scenario) error {
+	var faults []error
+	for _, c := range s.Spacecraft {
+		if _, err := orbit.NewEphemeris(c.Elements.Elements, s.Window.Start, s.Window.End, s.Earth); err != nil {
+			faults = append(faults, fmt.Errorf("spacecraft %s: %w", c.Name, err))
+		}
+	}
+	return errors.Join(faults...)
+}
+
+func checkTable(env *Env, s *scenario.Scenario) error {
+	width := env.outWidth()
+	var craft, stations, notes [][]string
+	for _, c := range s.Spacecraft {
+		craft = append(craft, []string{
+			c.Name, c.Elements.Name, fmt.Sprintf("%05d", c.Elements.CatalogNumber), utc(c.Elements.Epoch),
+			fixed(c.Elements.Age.Hours()/24, 2), fmt.Sprint(c.Elements.Among), fmt.Sprint(len(c.Transmitters)),
+		})
+	}
+	for _, st := range s.Stations {
+		stations = append(stations, []string{
+			st.Site.Name, fixed(st.Site.Latitude.Degrees(), 4), fixed(st.Site.Longitude.Degrees(), 4),
+			fixed(st.Site.Altitude.Metres(), 0), fmt.Sprint(len(st.Antennas)),
+		})
+	}
+	for _, n := range checkNotes(s) {
+		notes = append(notes, n[:])
+	}
+	if _, err := fmt.Fprintf(env.Out, "%s: no faults\nwindow %s to %s (%s h), %s elevation decides AOS and LOS\n\n",
+		printable(s.Label), utc(s.Window.Start), utc(s.Window.End), fixed(s.Window.Length().Hours(), 2), s.Horizon); err != nil {
+		return err
+	}
+	return errors.Join(
+		writeTable(env.Out, width, []column{textColumn("spacecraft"), textColumn("element set"), numberColumn("number"),
+			textColumn("epoch UTC"), numberColumn("age d"), numberColumn("sets"), numberColumn("transmitters")}, craft),
+		newLine(env.Out),
+		writeTable(env.Out, width, []column{textColumn("station"), numberColumn("latitude deg"), numberColumn("longitude deg"),
+			numberColumn("altitude m"), numberColumn("antennas")}, stations),
+		newLine(env.Out),
+		writeTable(env.Out, width, []column{textColumn("kind"), textColumn("about"), textColumn("note")}, notes),
+	)
+}
+
+func newLine(w io.Writer) error {
+	_, err := io.WriteString(w, "\n")
+	return err
+}
+
+// checkNotes lists warnings, then defaults: kind, about, text.
+func checkNotes(s *scenario.Scenario) [][3]string {
+	var out [][3]string
+	for _, n := range s.Warnings {
+		out = append(out, [3]string{"warning", n.About, n.Text})
+	}
+	for _, n := range s.Assumptions {
+		out = append(out, [3]string{"default", n.About, n.Text})
+	}
+	return out
+}
+
+func checkCSV(w io.Writer, s *scenario.Scenario) error {
+	return writeCSV(w, []string{"kind", "about", "text"}, func(yield func([]string) bool) {
+		for _, n := range checkNotes(s) {
+			if !yield(slices.Clone(n[:])) {
+				return
+			}
+		}
+	})
 }

@@ -30,7 +30,6 @@ func inputErrorf(format string, args ...any) error {
 type Env struct {
 	In       io.Reader
 	Out, Err io.Writer
-	Environ  []string         // as os.Environ gives it
 	Now      func() time.Time // the clock
 	Scenario string           // value of --scenario; empty: slantwise.yaml here, else the embedded demo
 
@@ -39,7 +38,7 @@ type Env struct {
 }
 
 func newEnv(in io.Reader, out, errOut io.Writer) *Env {
-	return &Env{In: in, Out: out, Err: errOut, Environ: os.Environ(), Now: time.Now}
+	return &Env{In: in, Out: out, Err: errOut, Now: time.Now}
 }
 
 // need says what of the scenario a command uses.
@@ -56,15 +55,24 @@ const (
 // where none was named, and what it warns of. Faults come all at once, as an
 // *InputError.
 func (e *Env) load(n need) (*scenario.Scenario, error) {
-	s, err := scenario.Load(scenario.Request{Path: e.Scenario, Environ: e.Environ, Flags: e.overrides, Need: n})
+	s, err := e.read(n)
+	if err != nil {
+		return nil, err
+	}
+	for _, w := range s.Warnings {
+		e.note("warning: %s", printable(w.String()))
+	}
+	return s, nil
+}
+
+// read is load without the warnings, for a command that tells them itself.
+func (e *Env) read(n need) (*scenario.Scenario, error) {
+	s, err := scenario.Load(scenario.Request{Path: e.Scenario, Flags: e.overrides, Need: n})
 	if err != nil {
 		return nil, &InputError{Err: err}
 	}
 	if s.Demo {
 		e.note("no --scenario and no %s here: this is the embedded demo (slantwise new writes a scenario to start from)", scenario.DefaultFile)
-	}
-	for _, w := range s.Warnings {
-		e.note("warning: %s", w)
 	}
 	return s, nil
 }

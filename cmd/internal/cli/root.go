@@ -42,7 +42,10 @@ Results go to stdout, words for people to stderr. Exit codes:
 	root.SetFlagErrorFunc(flagError)
 	root.SuggestionsMinimumDistance = 2
 	addScenarioFlags(root, env)
-	root.AddCommand(newCheck(env))
+	root.AddCommand(
+		newCheck(env),
+		newNew(env),
+	)
 	markStart(root, env)
 	return root
 }

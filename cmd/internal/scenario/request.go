@@ -11,10 +11,10 @@ const (
 	NeedRadio              // a stated geometry: element files stay unread, a window is optional
 )
 
-// Request says which scenario to read.
+// Request says which scenario to read. Variables SLANTWISE_… of the environment
+// replace scalars outside lists, too; flags go before them.
 type Request struct {
-	Path    string                 // empty: DefaultFile in the working folder, else the embedded demo
-	Environ []string               // as os.Environ gives it; SLANTWISE_… replace scalars outside lists
-	Flags   map[string]*pflag.Flag // flags that replace scalars, by key path ("window.length_h"); only changed ones count
-	Need    Need
+	Path  string                 // empty: DefaultFile in the working folder, else the embedded demo
+	Flags map[string]*pflag.Flag // flags that replace scalars, by key path ("window.length_h"); only changed ones count
+	Need  Need
 }

@@ -1,0 +1,82 @@
+package cli
+
+import (
+	"errors"
+	"fmt"
+	"io"
+	"io/fs"
+	"os"
+	"path/filepath"
+	"strings"
+
+	"github.com/spf13/cobra"
+
+	"slantwise/cmd/internal/atomicfile"
+	"slantwise/cmd/internal/scenario"
+)
+
+func newNew(env *Env) *cobra.Command {
+	return &cobra.Command{
+		Use:   "new [FILE]",
+		Short: "Write a commented scenario to start from",
+		Long: `Write a commented scenario to start from into FILE (slantwise.yaml where none is
+named), and a small file of element sets beside it. A file that is there is never
+replaced.`,
+		Example: `  slantwise new
+  slantwise new plans/summer.yaml`,
+		Args: func(cmd *cobra.Command, args []string) error {
+			if len(args) > 1 {
+				return inputErrorf("new takes one FILE, not %d; see slantwise new --help", len(args))
+			}
+			return nil
+		},
+		RunE: func(_ *cobra.Command, args []string) error {
+			file := scenario.DefaultFile
+			if len(args) == 1 {
+				file = args[0]
+			}
+			return runNew(env, file)
+		},
+	}
+}
+
+func runNew(env *Env, file string) error {
+	ext := filepath.Ext(file)
+	if ext != ".yaml" && ext != ".yml" {
+		return inputErrorf("%s: new writes YAML; let the name end in .yaml", file)
+	}
+	elementFile := strings.TrimSuffix(file, ext) + ".tle"
+	scenarioText, elementText, err := scenario.Start(filepath.Base(elementFile))
+	if err != nil {
+		return err
+	}
+	for _, path := range []string{file, elementFile} {
+		if _, err := os.Lstat(path); err == nil {
+			return taken(path)
+		}
+	}
+	if err := createText(elementFile, elementText); err != nil {
+		return err
+	}
+	if err := createText(file, scenarioText); err != nil {
+		os.Remove(elementFile) // it was made just now and is of no use alone
+		return err
+	}
+	_, err = fmt.Fprintf(env.Out, "wrote %s and %s; next: slantwise check --scenario %s\n", file, elementFile, file)
+	return err
+}
+
+func createText(path, text string) error {
+	err := atomicfile.Create(path, 0o644, func(w io.Writer) error {
+		_, err := io.WriteString(w, text)
+		return err
+	})
+	if errors.Is(err, fs.ErrExist) {
+		return taken(path)
+	}
+	return err
+}
+
+func taken(path string) error {
+	return inputErrorf("%s: there is such a file already, and it is left as it is; name another FILE", path)
+}
