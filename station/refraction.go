@@ -161,3 +161,10 @@ func (r *Refraction) hidden(quantity string, v, least unit.Angle) error {
 		Next:    "no ray arrives from below the horizon",
 	}
 }
+
+// Steepest returns the greatest derivative of geometric by apparent elevation, that
+// at the horizon; from there it falls to 1 at the zenith.
+func (r *Refraction) Steepest() float64 {
+	_, slope := r.at(r.horizon)
+	return 1 - slope
+}

@@ -1,9 +1,7 @@
 package pass
 
 import (
-	"context"
-	"errors"
-	"iter"
+	"fmt"
 	"time"
 
 	"slantwise/orbit"
@@ -13,50 +11,52 @@ import (
 // Window is the time that passes are sought in, both ends included, UTC.
 type Window struct{ From, To time.Time }
 
+func (w Window) check() error {
+	if !w.To.After(w.From) {
+		return fmt.Errorf("window: its end %s is not after its start %s; give an end after the start", stamp(w.To), stamp(w.From))
+	}
+	return nil
+}
+
+func stamp(t time.Time) string { return t.UTC().Format("2006-01-02T15:04:05.000Z") }
+
 // Search returns the passes of one spacecraft over one site, by rising AOS; empty,
 // not nil, when there is none. decides says in which kind of elevation the site's
 // minimum elevation is compared; a mask is always compared in its own kind.
 //
+// Times are right to 1 ms for the motion that the ephemeris gives. Nothing that lasts
+// a millisecond is missed, and nothing invented; what is shorter is left out.
+//
 // The window is narrowed to the ephemeris: where that ends early (a decayed orbit),
-// the pass under way is cut there, and the ephemeris tells why.
+// the pass under way is cut there, and the ephemeris tells why. The error is that of
+// a site or window that is not valid, or a *orbit.SpanError when the ephemeris lies
+// wholly outside the window.
 func Search(e *orbit.Ephemeris, s *station.Site, w Window, decides station.ElevationKind) ([]Pass, error) {
-	return nil, errors.New("pass: the search is not built yet")
+	k, err := newSkyline(s, decides)
+	if err != nil {
+		return nil, err
+	}
+	var f finder
+	if err := f.aimAt(e, w); err != nil {
+		return nil, err
+	}
+	passes := []Pass{}
+	for _, r := range f.find(k, nil) {
+		passes = append(passes, r.pass())
+	}
+	return passes, nil
 }
 
-// Job is a search over many spacecraft and sites.
-type Job struct {
-	Spacecraft int // how many
-	// Ephemeris returns the ephemeris of spacecraft i, [0, Spacecraft). It is called
-	// once for each, from the workers, and what it returns is dropped after use, so
-	// that few ephemerides are in memory at a time. An error ends the job.
-	Ephemeris func(i int) (*orbit.Ephemeris, error)
-	Sites     []*station.Site
-	Window    Window
-	Decides   station.ElevationKind
-	Workers   int            // 0: as many as the machine runs at once
-	Progress  func(done int) // spacecraft done; may be nil; never called by two goroutines at a time
-}
-
-// Found is a pass with the indices of its spacecraft and site in the job.
-type Found struct {
-	Spacecraft, Site int
-	Pass
-}
-
-// List holds the passes of a job compactly, ordered by AOS, then spacecraft, then
-// site, whatever the number of workers.
-type List struct{}
-
-// Len returns the number of passes.
-func (l *List) Len() int { return 0 }
-
-// At returns pass i, [0, Len()).
-func (l *List) At(i int) Found { panic("pass: the search is not built yet") }
-
-// All yields the passes in order.
-func (l *List) All() iter.Seq[Found] { return func(func(Found) bool) {} }
-
-// SearchAll runs the job. It stops with the context's error when ctx ends.
-func SearchAll(ctx context.Context, j Job) (*List, error) {
-	return nil, errors.New("pass: the search is not built yet")
+// aimAt prepares the finder for an ephemeris.
+func (f *finder) aimAt(e *orbit.Ephemeris, w Window) error {
+	if err := w.check(); err != nil {
+		return err
+	}
+	from, to := max(e.Seconds(w.From), 0), min(e.Seconds(w.To), e.Span())
+	if !(to > from) {
+		return &orbit.SpanError{Time: w.From, From: e.Reference(), To: e.Time(e.Span())}
+	}
+	f.clock = newClock(e.Reference())
+	f.track.reset(e, from, to)
+	return nil
 }

@@ -1,0 +1,129 @@
+package pass
+
+import "math"
+
+// aim is where a spacecraft stands in a site's sky at one instant, with its rates.
+type aim struct {
+	t        float64 // s
+	el, az   float64 // rad, az in [0, 2π)
+	del, daz float64 // rad/s
+	rho      float64 // m
+	above    float64 // el - skyline, rad
+}
+
+// aim returns the aim at an instant. In the zenith itself the azimuth is north, with
+// no rate; nothing is concluded from them there.
+func (s *scene) aim(k *skyline, t float64) aim {
+	l := s.frame.Look(s.motion.StateAt(t))
+	p := aim{
+		t: t, el: l.Elevation.Radians(), az: l.Azimuth.Radians(),
+		del: float64(l.ElevationRate), daz: float64(l.AzimuthRate), rho: l.Range.Metres(),
+	}
+	p.above = p.el - k.at(p.az)
+	return p
+}
+
+// sweep bounds what happens in the sky between two aims.
+type sweep struct {
+	elLow, elHigh   float64 // rad
+	delLow, delHigh float64 // rad/s
+	dazLow, dazHigh float64 // rad/s
+	az, width       float64 // azimuths from az clockwise by width, rad
+	doubt           float64 // how far the rates may be off, rad/s (rateDoubt)
+}
+
+// sweep derives the bounds from the ends. With d the unit vector to the spacecraft,
+// |d'| <= ω = v/ρ, and the components of the angular acceleration along elevation E
+// and azimuth A are
+//
+//	E'' + A'² sin E cos E,  A'' cos E - 2 A' E' sin E,
+//
+// both at most (a + 2 v ω)/ρ, by the second derivative of ρ d.
+func (s *scene) sweep(a, b *aim, st *stretch) sweep {
+	h := b.t - a.t
+	near := s.nearest(a.rho, b.rho, h, st)
+	w := st.speed / near
+	alpha := (st.acc + 2*st.speed*w) / near
+	r := sweep{elLow: math.Min(a.el, b.el) - w*h/2, elHigh: math.Max(a.el, b.el) + w*h/2}
+	steepest := math.Max(math.Abs(r.elLow), math.Abs(r.elHigh))
+	if steepest > 89.5*math.Pi/180 { // about the zenith nothing is said of azimuth
+		r.delLow, r.delHigh = -w, w
+		r.dazLow, r.dazHigh = math.Inf(-1), math.Inf(1)
+		r.width = math.Inf(1)
+		return r
+	}
+	sin, cos := math.Sincos(steepest)
+	r.doubt = rateDoubt / near / cos
+	ddel := alpha + w*w*sin/cos
+	ddaz := (alpha + 2*w*w*sin/cos) / cos
+	r.delLow, r.delHigh = around(a.del, b.del, ddel*h/2, w)
+	r.dazLow, r.dazHigh = around(a.daz, b.daz, ddaz*h/2, w/cos)
+	r.elLow = math.Max(r.elLow, math.Min(a.el, b.el)-ddel*h*h/8)
+	r.elHigh = math.Min(r.elHigh, math.Max(a.el, b.el)+ddel*h*h/8)
+	if fastest := math.Max(-r.dazLow, r.dazHigh); fastest*h >= math.Pi {
+		r.width = math.Inf(1)
+		return r
+	}
+	// From a to b by the short way, and as far beyond both as the bow allows.
+	way := math.Remainder(b.az-a.az, 2*math.Pi)
+	bow := ddaz * h * h / 8
+	r.az, r.width = a.az+math.Min(way, 0)-bow, math.Abs(way)+2*bow
+	return r
+}
+
+// around bounds a rate between its values at the ends of a stretch: it departs from
+// the nearer one by at most swing, and never exceeds most.
+func around(a, b, swing, most float64) (low, high float64) {
+	return math.Max(-most, math.Min(a, b)-swing), math.Min(most, math.Max(a, b)+swing)
+}
+
+// unveil appends the crossings of the skyline between two aims to s.out: each piece
+// is shown to lie wholly over or under the skyline, or to cross it in one direction
+// alone, or is divided, down to resolution.
+func (s *scene) unveil(k *skyline, a, b *aim, st *stretch) {
+	h := b.t - a.t
+	same := (a.above >= 0) == (b.above >= 0)
+	w := s.sweep(a, b, st)
+	line := k.over(w.az, w.width)
+	if w.elLow > line.high || w.elHigh < line.low {
+		return
+	}
+	if h < resolution || oneWay(&w, line) {
+		if !same {
+			s.out = append(s.out, s.edge(k, a, b))
+		}
+		return
+	}
+	m := s.aim(k, a.t+h/2)
+	s.unveil(k, a, &m, st)
+	s.unveil(k, &m, b, st)
+}
+
+// oneWay tells whether el - skyline rises or falls throughout: its rate is
+// E' - slope A' with both factors in their bounds.
+func oneWay(w *sweep, line span) bool {
+	p, q := line.slopeLow*w.dazLow, line.slopeLow*w.dazHigh
+	r, t := line.slopeHigh*w.dazLow, line.slopeHigh*w.dazHigh
+	low, high := math.Min(math.Min(p, q), math.Min(r, t)), math.Max(math.Max(p, q), math.Max(r, t))
+	doubt := w.doubt * (1 + math.Max(math.Abs(line.slopeLow), math.Abs(line.slopeHigh)))
+	// Where a bound is infinite these are no numbers, and both comparisons are false.
+	return w.delLow-high > doubt || w.delHigh-low < -doubt
+}
+
+// edge returns the only crossing between two aims on different sides of the skyline.
+// It uses no slopes, since the skyline has corners.
+func (s *scene) edge(k *skyline, a, b *aim) float64 {
+	z := bracket{a: a.t, fa: a.above, b: b.t, fb: b.above}
+	for range 100 {
+		if z.b-z.a < 1e-6 {
+			break
+		}
+		t := z.guess()
+		m := s.aim(k, t)
+		if math.Abs(m.above) < 1e-12 {
+			return t
+		}
+		z.put(t, m.above)
+	}
+	return (z.a + z.b) / 2
+}
