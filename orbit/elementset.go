@@ -40,8 +40,3 @@ type Source struct {
 // Age returns how long before t the elements' epoch lies; negative when the epoch
 // lies after t.
 func (e *Elements) Age(t time.Time) time.Duration { return t.Sub(e.Epoch) }
-
-// Validate returns nil, or one *ElementError for each field outside its range,
-// joined. What it accepts may still describe no orbit: a perigee below the ground
-// is found by Facts and NewEphemeris.
-func (e *Elements) Validate() error { return nil }

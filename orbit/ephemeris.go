@@ -1,24 +1,42 @@
 package orbit
 
 import (
-	"errors"
+	"fmt"
+	"math"
 	"time"
 )
 
 // Ephemeris gives the Earth-fixed state of one object at any instant of its span.
-// It is immutable and safe for use by many goroutines.
+// It is immutable (but for Rebuild) and safe for use by many goroutines.
 //
 // Inside, seconds since Reference are the argument: a float64 holds them to 1e-10 s
-// over a week.
+// over a week. Positions agree with SGP4's own to 0.3 m, velocities to 1 mm/s
+// (TestInterpolationError).
 type Ephemeris struct {
 	elements  Elements
 	reference time.Time
 	end       float64
+	truncated *PropagationError
+
+	first float64 // of the knot at index reach, in seconds after reference; at most 0
+	step  float64
+	rate  float64 // 1/step
+	last  int     // the greatest interval
+	knots []knot  // reach knots before the first interval and after the last
 }
 
 // NewEphemeris propagates the elements over [from, to] and keeps the knots.
+//
+// It fails with what Elements.Validate returns, with a *unit.RangeError for a span
+// that is reversed or too far from the epoch, and with a *PropagationError where
+// SGP4 has no state at from, or none somewhere between the epoch and from. Where it
+// fails later, the span ends just before: see Truncated.
 func NewEphemeris(el Elements, from, to time.Time, earth EarthOrientation) (*Ephemeris, error) {
-	return nil, errors.New("orbit: not built yet")
+	e := &Ephemeris{}
+	if err := e.Rebuild(el, from, to, earth); err != nil {
+		return nil, err
+	}
+	return e, nil
 }
 
 // Elements returns the set that the ephemeris was propagated from.
@@ -32,36 +50,56 @@ func (e *Ephemeris) Seconds(t time.Time) float64 { return t.Sub(e.reference).Sec
 
 // Time returns the instant s seconds after Reference, rounded to the nanosecond.
 func (e *Ephemeris) Time(s float64) time.Time {
-	return e.reference.Add(time.Duration(s * float64(time.Second)))
+	return e.reference.Add(time.Duration(math.Round(s * float64(time.Second))))
 }
 
 // Span returns the last valid argument of PositionAt and StateAt; the first is 0.
 func (e *Ephemeris) Span() float64 { return e.end }
 
+// Step returns the seconds between two knots.
+func (e *Ephemeris) Step() float64 { return e.step }
+
+// Truncated returns why the span ends before the instant asked for, or nil.
+func (e *Ephemeris) Truncated() *PropagationError { return e.truncated }
+
 // PositionAt returns the Earth-fixed position in m at s in [0, Span()]; s outside
 // is a programming error and panics.
-func (e *Ephemeris) PositionAt(s float64) Vec3 { panic("orbit: not built yet") }
+func (e *Ephemeris) PositionAt(s float64) Vec3 {
+	i, u := e.locate(s)
+	return between(&e.knots[i], &e.knots[i+1], u)
+}
 
-// StateAt returns position and velocity at s in [0, Span()].
-func (e *Ephemeris) StateAt(s float64) State { panic("orbit: not built yet") }
+// StateAt returns position and velocity at s in [0, Span()]; s outside is a
+// programming error and panics.
+func (e *Ephemeris) StateAt(s float64) State {
+	i, u := e.locate(s)
+	return State{
+		Position: between(&e.knots[i], &e.knots[i+1], u),
+		Velocity: velocityBetween(e.knots[i+1-velocityReach:i+1+velocityReach], u),
+	}
+}
 
 // At returns the state at t, or a *SpanError when t lies outside the span.
 func (e *Ephemeris) At(t time.Time) (State, error) {
-	return State{}, errors.New("orbit: not built yet")
+	s := e.Seconds(t)
+	if !(s >= 0 && s <= e.end) {
+		return State{}, &SpanError{Time: t, From: e.reference, To: e.Time(e.end)}
+	}
+	return e.StateAt(s), nil
 }
 
-// Rebuild makes e the ephemeris of another element set or span and uses its memory
-// again, for runs over many satellites. Nobody else may use e meanwhile; after an
-// error it holds nothing until it is rebuilt.
-func (e *Ephemeris) Rebuild(el Elements, from, to time.Time, earth EarthOrientation) error {
-	return errors.New("orbit: not built yet")
+// locate returns the index of the knot before s and the fraction of the way to the
+// next.
+func (e *Ephemeris) locate(s float64) (int, float64) {
+	if !(s >= 0 && s <= e.end) {
+		e.outside(s)
+	}
+	x := (s - e.first) * e.rate
+	i := min(int(x), e.last)
+	return i + reach, x - float64(i)
 }
 
-// Truncated returns why the span ends before the instant asked for, or nil.
-func (e *Ephemeris) Truncated() *PropagationError { return nil }
-
-// Step returns the seconds between two knots.
-func (e *Ephemeris) Step() float64 { return 0 }
-
-// LightAt returns how much of the Sun the spacecraft sees at s in [0, Span()].
-func (e *Ephemeris) LightAt(s float64) Light { panic("orbit: not built yet") }
+// outside is kept out of locate so that locate stays small enough to be inlined.
+func (e *Ephemeris) outside(s float64) {
+	panic(fmt.Sprintf("orbit: %g s is outside the ephemeris' span of 0 to %g s", s, e.end))
+}

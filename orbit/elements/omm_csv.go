@@ -10,6 +10,7 @@ import (
 // readCSV reads a header row of keywords and a set a row.
 func readCSV(text string, rep *report) []record {
 	r := csv.NewReader(strings.NewReader(text))
+	r.Comment = '#'
 	r.TrimLeadingSpace = true
 	header, err := r.Read()
 	if err != nil {

@@ -1,0 +1,129 @@
+package orbit
+
+import (
+	"math"
+	"slices"
+	"time"
+
+	"slantwise/orbit/unit"
+)
+
+// farthestFromEpoch bounds the time from the epoch to either end of a span.
+const farthestFromEpoch = 10 * 365.25 * 24 * time.Hour
+
+// Rebuild makes e the ephemeris of another element set or span and uses its memory
+// again, for runs over many satellites. Nobody else may use e meanwhile; after an
+// error it holds nothing until it is rebuilt. Errors are those of NewEphemeris.
+func (e *Ephemeris) Rebuild(el Elements, from, to time.Time, earth EarthOrientation) error {
+	*e = Ephemeris{elements: el, reference: from.UTC(), knots: e.knots[:0]}
+	if err := checkSpan(&el, from, to); err != nil {
+		return err
+	}
+	p, err := newPropagator(&el)
+	if err != nil {
+		return err
+	}
+	sinceEpoch := from.Sub(el.Epoch).Seconds()
+	b := builder{
+		e: e, p: p, rot: newRotation(from, earth),
+		sinceEpoch: sinceEpoch, start: int(math.Floor(sinceEpoch)), step: knotStep(&el),
+	}
+	if err := b.approach(); err != nil {
+		return err
+	}
+	e.end = to.Sub(from).Seconds()
+	e.first = float64(b.start) - sinceEpoch
+	e.step = float64(b.step)
+	e.rate = 1 / e.step
+	e.last = max(0, int(math.Ceil((e.end-e.first)/e.step))-1)
+	return b.fill()
+}
+
+func checkSpan(el *Elements, from, to time.Time) error {
+	if to.Before(from) {
+		return &unit.RangeError{Quantity: "length of the span", Value: to.Sub(from).Seconds(), Unit: "s",
+			Allowed: "0 or more", Next: "give the earlier instant first"}
+	}
+	for _, t := range [2]time.Time{from, to} {
+		if d := t.Sub(el.Epoch); d > farthestFromEpoch || d < -farthestFromEpoch {
+			return &unit.RangeError{Quantity: "time from the epoch of " + objectName(el.Name, el.CatalogNumber),
+				Value: math.Round(d.Hours() / 24), Unit: "days", Allowed: "within ±3652 days",
+				Next: "take an element set of the time asked for"}
+		}
+	}
+	return nil
+}
+
+// builder fills the knots of an ephemeris.
+type builder struct {
+	e          *Ephemeris
+	p          *propagator
+	rot        rotation
+	sinceEpoch float64 // s, of the reference
+	start      int     // whole seconds after the epoch of the first knot
+	step       int
+}
+
+// approach makes sure that the orbit still exists at the first knot: equations that
+// have passed through a decay can give states again that look sound.
+func (b *builder) approach() error {
+	const samples = 64
+	good := 0
+	for i := range samples + 1 {
+		k := b.start * i / samples
+		p, v := b.p.raw(k)
+		if b.p.check(k, p, v) != 0 {
+			return b.p.failure(b.p.firstBad(good, k))
+		}
+		good = k
+	}
+	return nil
+}
+
+// fill computes all knots and their differences. Where the orbit ends inside the
+// span, the knots go on past its end as long as the equations give numbers, since
+// the differences need them.
+func (b *builder) fill() error {
+	e := b.e
+	count := e.last + 2 + 2*reach
+	e.knots = slices.Grow(e.knots, count)[:count]
+	w := watch{p: b.p, good: b.start, end: b.sinceEpoch + e.end}
+	for i := 0; i < len(e.knots); i++ {
+		k := b.start + (i-reach)*b.step
+		p, v := b.p.raw(k)
+		if i >= reach && w.ends(k, p, v) {
+			if err := b.shorten(w.bad, float64(w.bad-1)); err != nil {
+				return err
+			}
+		}
+		if !b.p.smooth(k, p, v) {
+			if err := b.shorten(w.firstBad(k), float64(b.start+(i-1-2*reach)*b.step)); err != nil {
+				return err
+			}
+			break
+		}
+		st := b.rot.earthFixed(float64(k)-b.sinceEpoch, p, v)
+		e.knots[i].p, e.knots[i].v = st.Position, st.Velocity
+	}
+	for i := reach; i <= e.last+1+reach; i++ {
+		differentiate(e.knots, i)
+	}
+	return nil
+}
+
+// shorten ends the span at a time in seconds after the epoch because of a failure
+// at bad, the first reason given being kept.
+func (b *builder) shorten(bad int, end float64) error {
+	e := b.e
+	if e.truncated == nil {
+		e.truncated = b.p.failure(bad)
+	}
+	e.end = end - b.sinceEpoch
+	if e.end < 0 {
+		e.knots = e.knots[:0]
+		return e.truncated
+	}
+	e.last = max(0, int(math.Ceil((e.end-e.first)/e.step))-1)
+	e.knots = e.knots[:e.last+2+2*reach]
+	return nil
+}
