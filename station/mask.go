@@ -2,6 +2,7 @@ package station
 
 import (
 	"fmt"
+	"math"
 	"sort"
 
 	"slantwise/orbit/unit"
@@ -49,21 +50,23 @@ func NewMask(points []MaskPoint, kind ElevationKind) (*Mask, error) {
 }
 
 func (p MaskPoint) check() error {
-	const rounding = 1e-12 // of degrees taken to radians and back
-	if az := p.Azimuth.Degrees(); !(az >= 0 && az < 360) {
+	if az := given(p.Azimuth); !(az >= 0 && az < 360) {
 		return &unit.RangeError{Quantity: "azimuth", Value: az, Unit: "deg",
 			Allowed: "at least 0 and less than 360 deg", Next: "count clockwise from true north; the mask closes by itself"}
 	}
-	if el := p.Elevation.Degrees(); !(el >= -10-rounding && el < 90) {
+	if el := given(p.Elevation); !(el >= -10 && el < 90) {
 		return &unit.RangeError{Quantity: "elevation", Value: el, Unit: "deg",
 			Allowed: "at least -10 and less than 90 deg", Next: "give the elevation of the skyline"}
 	}
 	return nil
 }
 
-// degrees prints an angle as it was given: nine significant digits drop the rounding
-// of degrees taken to radians and back.
+// degrees prints an angle as it was given.
 func degrees(a unit.Angle) string { return fmt.Sprintf("%.9g", a.Degrees()) }
+
+// given returns an angle in degrees as it was given: without the rounding of degrees
+// taken to radians and back.
+func given(a unit.Angle) float64 { return math.Round(a.Degrees()*1e9) / 1e9 }
 
 // Kind tells which elevation the mask was made in.
 func (m *Mask) Kind() ElevationKind { return m.kind }

@@ -15,17 +15,17 @@ func seaHorizon(h float64) float64 {
 		return 0
 	}
 	// By the half angle, since the arc cosine loses the digits of small heights.
-	return -2 * math.Asin(math.Sqrt(-growth(0, h)/2))
+	return -2 * math.Asin(math.Sqrt(-growth(-h, h)/2))
 }
 
-// growth returns (r+x) n(x) / ((r+h) n(h)) - 1, heights x and h in km.
-func growth(x, h float64) float64 {
+// growth returns (r+x) n(x) / ((r+h) n(h)) - 1 for x = h + rise, in km.
+func growth(rise, h float64) float64 {
 	n := 1 + refractionA*math.Exp(-refractionB*h)
-	dn := (n - 1) * math.Expm1(-refractionB*(x-h))
-	return ((x-h)*(n+dn) + (refractionRadius+h)*dn) / ((refractionRadius + h) * n)
+	dn := (n - 1) * math.Expm1(-refractionB*rise)
+	return (rise*(n+dn) + (refractionRadius+h)*dn) / ((refractionRadius + h) * n)
 }
 
-// growthRate is the derivative of growth by x, in 1/km.
+// growthRate is the derivative of growth at the height x, in 1/km.
 func growthRate(x, h float64) float64 {
 	nx, nh := refractionA*math.Exp(-refractionB*x), refractionA*math.Exp(-refractionB*h)
 	return (1 + nx - (refractionRadius+x)*refractionB*nx) / ((refractionRadius + h) * (1 + nh))
@@ -46,7 +46,7 @@ func bendingIntegral(h, theta float64) float64 {
 		depth := math.Min(sin*sin/(2*cos*cos*growthRate(h, h)), refractionRadius/2)
 		return ray{h, sin, cos}.bending(h-depth, h, top)
 	}
-	low := lowestPoint(h, sin*sin/(1+cos))
+	low := math.Min(h, lowestPoint(h, sin*sin/(1+cos)))
 	level := ray{low, 0, 1}
 	return level.bending(low, low, h) + level.bending(low, low, top)
 }
@@ -56,7 +56,7 @@ func bendingIntegral(h, theta float64) float64 {
 func lowestPoint(h, versine float64) float64 {
 	x := h
 	for range 20 {
-		step := (growth(x, h) + versine) / growthRate(x, h)
+		step := (growth(x-h, h) + versine) / growthRate(x, h)
 		x -= step
 		if math.Abs(step) < 1e-12 {
 			break
@@ -70,23 +70,27 @@ func lowestPoint(h, versine float64) float64 {
 // 1/s: that takes the singularity away.
 func (y ray) bending(base, from, to float64) float64 {
 	lo, hi := math.Sqrt(from-base), math.Sqrt(to-base)
+	under := base - y.height // 0 for a level ray, whose growth must not be a difference
+	if !(hi > lo) {
+		return 0
+	}
 	const panels = 4
 	width := (hi - lo) / panels
 	sum := 0.0
 	for p := range panels {
 		mid := lo + (float64(p)+0.5)*width
 		for i, node := range gaussNodes {
-			sum += gaussWeights[i] * (y.rate(base, mid-node*width/2) + y.rate(base, mid+node*width/2))
+			sum += gaussWeights[i] * (y.rate(under, mid-node*width/2) + y.rate(under, mid+node*width/2))
 		}
 	}
 	return sum * width / 2
 }
 
-// rate is the integrand in s, in rad.
-func (y ray) rate(base, s float64) float64 {
-	x := base + s*s
-	q := growth(x, y.height)
-	n1 := refractionA * math.Exp(-refractionB*x)
+// rate is the integrand in s, in rad, at under + s² km over the ray's reference.
+func (y ray) rate(under, s float64) float64 {
+	rise := under + s*s
+	q := growth(rise, y.height)
+	n1 := refractionA * math.Exp(-refractionB*(y.height+rise))
 	// tan² φ = (sin² θ + 2q + q²) / cos² θ.
 	tan := math.Sqrt(y.sin*y.sin+q*(2+q)) / y.cos
 	return 2 * s * refractionB * n1 / ((1 + n1) * tan)

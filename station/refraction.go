@@ -156,7 +156,7 @@ func GeometricElevation(apparent unit.Angle, heightAboveSea unit.Length) (unit.A
 
 func (r *Refraction) hidden(quantity string, v, least unit.Angle) error {
 	return &unit.RangeError{
-		Quantity: quantity, Value: v.Degrees(), Unit: "deg",
+		Quantity: quantity, Value: given(v), Unit: "deg",
 		Allowed: "from the sea horizon, " + strconv.FormatFloat(least.Degrees(), 'f', 3, 64) + " deg, to 90 deg",
 		Next:    "no ray arrives from below the horizon",
 	}

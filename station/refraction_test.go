@@ -5,6 +5,8 @@ import (
 	"math"
 	"testing"
 
+	"pgregory.net/rapid"
+
 	"slantwise/orbit/unit"
 )
 
@@ -94,14 +96,14 @@ func TestBendingAgainstAngleIntegral(t *testing.T) {
 		theta := c.deg * math.Pi / 180
 		const steps = 20000
 		// Upwards the ray ends level with its top height's elevation, not at the zenith.
-		cosTop := math.Cos(theta) / (1 + growth(c.h+refractionTop, c.h))
+		cosTop := math.Cos(theta) / (1 + growth(refractionTop, c.h))
 		width := (math.Acos(cosTop) - theta) / steps
 		sum, x := 0.0, c.h
 		for i := range steps {
 			phi := theta + (float64(i)+0.5)*width
 			want := math.Cos(theta)/math.Cos(phi) - 1
 			for range 8 {
-				x -= (growth(x, c.h) - want) / growthRate(x, c.h)
+				x -= (growth(x-c.h, c.h) - want) / growthRate(x, c.h)
 			}
 			n1 := refractionA * math.Exp(-refractionB*x)
 			rn := (refractionRadius + x) * refractionB * n1
@@ -109,6 +111,28 @@ func TestBendingAgainstAngleIntegral(t *testing.T) {
 		}
 		if got := bendingIntegral(c.h, theta); math.Abs(got-sum) > 1e-6*sum {
 			t.Errorf("h %g km, %g deg: %.9g rad, by angle %.9g", c.h, c.deg, got, sum)
+		}
+	}
+}
+
+// Stations at any height must have a smooth table: rays that leave all but level are
+// where the integral is hardest.
+func TestRefractionIsFinite(t *testing.T) {
+	rapid.Check(t, func(t *rapid.T) {
+		h := rapid.Float64Range(-500, 9000).Draw(t, "h")
+		r, err := NewRefraction(unit.Length(h))
+		if err != nil {
+			t.Fatal(err)
+		}
+		for i, b := range r.bending {
+			if !(b >= 0 && b < 0.05) || i > 0 && b > r.bending[i-1] {
+				t.Fatalf("h %g m: bending %g rad at node %d, %g before", h, b, i, r.bending[max(i-1, 0)])
+			}
+		}
+	})
+	for _, theta := range []float64{0, 1e-17, -1e-17, 1e-12, -1e-12, -4e-10, 1e-8, -1e-8} {
+		if got, want := bendingIntegral(0.5, theta), bendingIntegral(0.5, 0); math.Abs(got-want) > 1e-7 {
+			t.Errorf("at %g rad: %g, level %g", theta, got, want)
 		}
 	}
 }

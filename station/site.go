@@ -84,15 +84,14 @@ func (s *Site) Validate() error {
 		name, unit, allowed, next string
 		v, lo, hi                 float64
 	}{
-		{"latitude", "deg", "-90 to 90 deg", "give degrees north of the equator, negative in the south", s.Latitude.Degrees(), -90, 90},
-		{"longitude", "deg", "-180 to 180 deg", "give degrees east of Greenwich; west is negative", s.Longitude.Degrees(), -180, 180},
+		{"latitude", "deg", "-90 to 90 deg", "give degrees north of the equator, negative in the south", given(s.Latitude), -90, 90},
+		{"longitude", "deg", "-180 to 180 deg", "give degrees east of Greenwich; west is negative", given(s.Longitude), -180, 180},
 		{"altitude", "m", "-500 to 9000 m", "give metres above the WGS-84 ellipsoid", s.Altitude.Metres(), -500, 9000},
 		{"geoid height", "m", "-120 to 120 m", "give metres of the geoid above the WGS-84 ellipsoid", s.GeoidHeight.Metres(), -120, 120},
-		{"minimum elevation", "deg", "at least -5 and less than 90 deg", "give degrees above the horizon", s.MinimumElevation.Degrees(), -5, math.Nextafter(90, 0)},
+		{"minimum elevation", "deg", "at least -5 and less than 90 deg", "give degrees above the horizon", given(s.MinimumElevation), -5, math.Nextafter(90, 0)},
 		{"merge gap", "s", "0 or more", "give seconds", s.MergeGap.Seconds(), 0, math.MaxFloat64},
 	} {
-		const rounding = 1e-12 // of degrees taken to radians and back
-		if !(q.v >= q.lo-rounding && q.v <= q.hi+rounding) {
+		if !(q.v >= q.lo && q.v <= q.hi) {
 			err := &unit.RangeError{Quantity: q.name, Value: q.v, Unit: q.unit, Allowed: q.allowed, Next: q.next}
 			return fmt.Errorf("station %q: %w", s.Name, err)
 		}

@@ -82,8 +82,7 @@ func (l *List) Len() int { return len(l.order) }
 // At returns pass i, [0, Len()).
 func (l *List) At(i int) Found {
 	p := l.order[i]
-	r := &l.records[p.craft][p.index]
-	return Found{Spacecraft: int(r.craft), Site: int(r.site), Pass: r.pass()}
+	return l.records[p.craft][p.index].found()
 }
 
 // All yields the passes in order.

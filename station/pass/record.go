@@ -34,6 +34,11 @@ func (r *record) pass() Pass {
 	}
 }
 
+// found unpacks the record with its indices.
+func (r *record) found() Found {
+	return Found{Spacecraft: int(r.craft), Site: int(r.site), Pass: r.pass()}
+}
+
 func instant(ms int64) time.Time { return time.UnixMilli(ms).UTC() }
 
 // clock turns seconds of the ephemeris into milliseconds since 1970.

@@ -4,6 +4,7 @@ import (
 	"context"
 	"fmt"
 	"runtime"
+	"slices"
 	"sync"
 	"sync/atomic"
 
@@ -25,8 +26,11 @@ type Job struct {
 	Sites     []*station.Site
 	Window    Window
 	Decides   station.ElevationKind
-	Workers   int            // 0: as many as the machine runs at once
-	Progress  func(done int) // spacecraft done; may be nil; never called by two goroutines at a time
+	// Keep tells whether a pass belongs into the list; nil keeps all. It is called from
+	// the workers while the ephemeris is at hand.
+	Keep     func(e *orbit.Ephemeris, f *Found) bool
+	Workers  int            // 0: as many as the machine runs at once
+	Progress func(done int) // spacecraft done; may be nil; never called by two goroutines at a time
 }
 
 // SearchAll runs the job. The list is the same for any number of workers. It stops
@@ -116,6 +120,23 @@ func (w *worker) spacecraft(i int) ([]record, error) {
 		for n := first; n < len(w.records); n++ {
 			w.records[n].craft, w.records[n].site = uint32(i), uint32(site)
 		}
+		w.records = w.kept(e, w.records, first)
 	}
-	return append(make([]record, 0, len(w.records)), w.records...), nil
+	return slices.Clone(w.records), nil
+}
+
+// kept drops from first on what the job does not keep.
+func (w *worker) kept(e *orbit.Ephemeris, records []record, first int) []record {
+	if w.job.Keep == nil {
+		return records
+	}
+	n := first
+	for i := first; i < len(records); i++ {
+		f := records[i].found()
+		if w.job.Keep(e, &f) {
+			records[n] = records[i]
+			n++
+		}
+	}
+	return records[:n]
 }

@@ -82,7 +82,7 @@ func (k *skyline) setMask(m *station.Mask) error {
 
 func (k *skyline) hidden(what string, v unit.Angle) error {
 	return fmt.Errorf("station %q: %w", k.site.Name, &unit.RangeError{
-		Quantity: what, Value: v.Degrees(), Unit: "deg",
+		Quantity: what, Value: math.Round(v.Degrees()*1e9) / 1e9, Unit: "deg",
 		Allowed: fmt.Sprintf("at least %.3f deg as apparent elevation, the sea horizon from %.0f m", k.refraction.Horizon().Degrees(), k.site.HeightAboveSea().Metres()),
 		Next:    "raise it, or give it as geometric elevation",
 	})
