@@ -2,6 +2,8 @@ module slantwise
 
 go 1.26.0
 
+ignore ./reports/chartscript/node_modules
+
 require (
 	github.com/agnivade/levenshtein v1.2.2
 	github.com/chromedp/cdproto v0.159.0

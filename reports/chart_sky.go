@@ -1,0 +1,99 @@
+package reports
+
+import (
+	"github.com/go-echarts/go-echarts/v2/charts"
+	"github.com/go-echarts/go-echarts/v2/opts"
+)
+
+const skyCaption = "Track on the sky as seen from the station: north is up, east is to the right, the zenith in the middle, the horizon at the rim; elevation in degrees."
+
+// drawSky returns the sky track: azimuth clockwise from north, elevation from the
+// rim inwards, with the horizon mask where the station has one.
+func drawSky(p *Pass, fr *frame) drawing {
+	f := p.Profile
+	line := charts.NewLine()
+	line.SetGlobalOptions(described(skyText(p)), charts.WithAnimation(false),
+		charts.WithPolarOps(opts.Polar{}),
+		charts.WithAngleAxisOps(opts.AngleAxis{
+			PolarAxisBase: opts.PolarAxisBase{Type: "value", StartAngle: 90, Max: 360, Interval: 30},
+			Clockwise:     opts.Bool(true),
+		}),
+		charts.WithRadiusAxisOps(opts.RadiusAxis{
+			PolarAxisBase: opts.PolarAxisBase{Type: "value", Max: 90, Interval: 30},
+			Inverse:       opts.Bool(true),
+		}),
+		charts.WithLegendOpts(opts.Legend{Show: opts.Bool(len(p.Horizon) > 0)}),
+	)
+	track := skySeries("track", solid, f.ElevationDeg, f.AzimuthDeg, fr.samples)
+	line.MultiSeries = append(line.MultiSeries, track)
+	if len(p.Horizon) > 0 {
+		line.MultiSeries = append(line.MultiSeries, maskSeries(p.Horizon))
+	}
+	line.MultiSeries = append(line.MultiSeries, eventMarks(p))
+	line.Validate()
+	m := plain(line.JSON())
+	// The binding leaves out a minimum of 0, and the axes must not choose their own.
+	m["radiusAxis"] = map[string]any{"type": "value", "min": 0, "max": 90, "interval": 30, "inverse": true}
+	m["angleAxis"] = map[string]any{"type": "value", "min": 0, "max": 360, "interval": 30, "startAngle": 90, "clockwise": true}
+	m["legend"] = map[string]any{"show": len(p.Horizon) > 0, "data": []string{"track", "horizon mask"}}
+	return drawing{
+		ID: "sky", Kind: "sky", Option: m,
+		Reads: []reading{{Series: 0, Label: "elevation", Unit: "deg", Decimals: 1}, {Series: 0, Label: "azimuth", Unit: "deg", Decimals: 1}},
+	}
+}
+
+func skySeries(name, dash string, elevation, azimuth []float64, samples []int) charts.SingleSeries {
+	dst := []byte{'['}
+	for k, i := range samples {
+		dst = comma(dst, k)
+		dst = append(dst, '[')
+		dst = appendJSONNumber(dst, elevation[i], 2)
+		dst = append(dst, ',')
+		dst = appendJSONNumber(dst, azimuth[i], 2)
+		dst = append(dst, ']')
+	}
+	s := lineSeries(series{name: name, dash: dash}, append(dst, ']'))
+	s.CoordSystem = "polar"
+	return s
+}
+
+// maskSeries closes the mask around the whole circle.
+func maskSeries(horizon []Direction) charts.SingleSeries {
+	n := len(horizon)
+	el, az, all := make([]float64, n+1), make([]float64, n+1), make([]int, n+1)
+	for i := range all {
+		d := horizon[i%n]
+		el[i], az[i], all[i] = max(d.ElevationDeg, 0), d.AzimuthDeg, i
+	}
+	s := skySeries("horizon mask", dashed, el, az, all)
+	s.AreaStyle = &opts.AreaStyle{Origin: "start", Opacity: opts.Float(0.25)}
+	return s
+}
+
+// eventMarks puts a symbol of its own on AOS, culmination and LOS.
+func eventMarks(p *Pass) charts.SingleSeries {
+	symbols := [...]string{"triangle", "circle", "rect"}
+	data := make([]any, 0, len(symbols))
+	for i, e := range events(p) {
+		data = append(data, map[string]any{
+			"name":   e.name + " " + clock(e.at),
+			"value":  []number{{e.elevationDeg, 2}, {e.azimuthDeg, 2}},
+			"symbol": symbols[i],
+		})
+	}
+	return charts.SingleSeries{
+		Name: "events", Type: "scatter", CoordSystem: "polar", Data: data, SymbolSize: 11,
+		Label: &opts.Label{Show: opts.Bool(true), Position: "right", Formatter: "{b}"},
+	}
+}
+
+// skyText describes the track in words.
+func skyText(p *Pass) string {
+	ev := events(p)
+	text := skyCaption + " The track"
+	for i, e := range ev {
+		text += []string{" begins in the ", ", culminates in the ", " and ends in the "}[i] +
+			compass(e.azimuthDeg) + " at azimuth " + fixed(e.azimuthDeg, 0) + " deg, elevation " + fixed(e.elevationDeg, 1) + " deg"
+	}
+	return text + "."
+}

@@ -1,0 +1,123 @@
+package reports
+
+import (
+	"encoding/json"
+	"math"
+	"time"
+
+	"github.com/go-echarts/go-echarts/v2/charts"
+	"github.com/go-echarts/go-echarts/v2/opts"
+)
+
+// timeFigure is what a chart over time is made from.
+type timeFigure struct {
+	id, title string
+	caption   string
+	unit      string // of the left axis
+	quantity  string
+	series    []series
+	right     string // name with unit of the second axis; empty: none
+	below     []axisSpan
+	fromZero  bool
+}
+
+// axisSpan is a span of the time axis to be marked, in its seconds.
+type axisSpan struct{ from, to float64 }
+
+// frame is what the time charts of one pass share.
+type frame struct {
+	x       []float64 // seconds since base, by sample
+	samples []int
+	axis    timeAxis
+	base    time.Time
+}
+
+func newFrame(p *Pass) *frame {
+	f := p.Profile
+	base := midnight(f.Start)
+	start := f.Start.Sub(base).Seconds()
+	fr := &frame{x: make([]float64, len(f.Seconds)), samples: thinned(p, chartPoints), base: base}
+	for i, s := range f.Seconds {
+		fr.x[i] = start + s
+	}
+	fr.axis = timeAxis{
+		From: math.Round(fr.x[0]*1000) / 1000,
+		To:   math.Round(fr.x[len(fr.x)-1]*1000) / 1000,
+		Date: base.Format("2006-01-02"),
+	}
+	fr.axis.Step = clockStep(fr.axis.To - fr.axis.From)
+	return fr
+}
+
+// clockStep returns the least round step of a clock that makes at most eight labels.
+func clockStep(length float64) float64 {
+	for _, s := range []float64{1, 2, 5, 10, 20, 30, 60, 120, 300, 600, 1200, 1800, 3600, 7200, 10800, 21600, 43200} {
+		if length <= 8*s {
+			return s
+		}
+	}
+	return 86400 * math.Ceil(length/(8*86400))
+}
+
+// draw returns the chart of a figure.
+func (fr *frame) draw(fig *timeFigure) drawing {
+	line := charts.NewLine()
+	line.SetGlobalOptions(described(fig.caption), charts.WithAnimation(false),
+		charts.WithXAxisOpts(opts.XAxis{
+			Type: "value", Name: "UTC on " + fr.axis.Date,
+			Min: fr.axis.From, Max: fr.axis.To, MinInterval: fr.axis.Step, MaxInterval: fr.axis.Step,
+		}),
+		charts.WithYAxisOpts(opts.YAxis{Type: "value", Name: axisName(fig.quantity, fig.unit), Scale: opts.Bool(!fig.fromZero)}),
+		charts.WithLegendOpts(opts.Legend{Show: opts.Bool(len(fig.series) > 1)}),
+	)
+	if fig.right != "" {
+		line.ExtendYAxis(opts.YAxis{Type: "value", Name: fig.right, Scale: opts.Bool(true), Position: "right"})
+	}
+	d := drawing{ID: fig.id, Kind: "time", Axis: &fr.axis}
+	for k, s := range fig.series {
+		one := lineSeries(s, points(fr.x, s, fr.samples))
+		if k == 0 && len(fig.below) > 0 {
+			one.MarkAreas = markBelow(fig.below)
+		}
+		line.MultiSeries = append(line.MultiSeries, one)
+		unit := fig.unit
+		if s.right {
+			unit = "km"
+		}
+		if !s.still {
+			d.Reads = append(d.Reads, reading{Series: k, Label: s.name, Unit: unit, Decimals: s.decimals})
+		}
+	}
+	line.Validate()
+	d.Option = plain(line.JSON())
+	return d
+}
+
+// markBelow marks spans; the page's script hatches them, so that they show without
+// colour.
+func markBelow(spans []axisSpan) *opts.MarkAreas {
+	areas := &opts.MarkAreas{}
+	for _, s := range spans {
+		areas.Data = append(areas.Data, []opts.MarkAreaData{{XAxis: json.Number(axisNumber(s.from))}, {XAxis: json.Number(axisNumber(s.to))}})
+	}
+	return areas
+}
+
+func axisNumber(v float64) string { return string(appendFixed(nil, v, 3)) }
+
+// notClosing returns the spans of the pass in which the margin is under what is
+// required: what the intervals of closing leave.
+func (fr *frame) notClosing(p *Pass) []axisSpan {
+	var spans []axisSpan
+	at := fr.axis.From
+	for _, c := range p.Profile.Volume.Closes {
+		if from := c.From.Sub(fr.base).Seconds(); from > at {
+			spans = append(spans, axisSpan{at, from})
+		}
+		at = c.To.Sub(fr.base).Seconds()
+	}
+	if at < fr.axis.To {
+		spans = append(spans, axisSpan{at, fr.axis.To})
+	}
+	return spans
+}

@@ -1,0 +1,38 @@
+package reports
+
+import (
+	"errors"
+	"fmt"
+)
+
+// checkPass refuses a pass that cannot be drawn: a programming error of the caller,
+// which is better told than met as a panic half-way through a report.
+func checkPass(p *Pass) error {
+	if p == nil || p.Site == nil || p.Profile == nil {
+		return errors.New("a pass needs a site and a profile")
+	}
+	f := p.Profile
+	n := len(f.Seconds)
+	if n < 2 {
+		return fmt.Errorf("the profile has %d samples; it needs two at least, AOS and LOS", n)
+	}
+	for _, c := range []column{
+		{name: "azimuth", values: f.AzimuthDeg}, {name: "elevation", values: f.ElevationDeg}, {name: "range", values: f.RangeKm},
+	} {
+		if len(c.values) != n {
+			return fmt.Errorf("the profile has %d values of %s for %d samples", len(c.values), c.name, n)
+		}
+	}
+	if len(f.TermValues) != len(f.Terms) {
+		return fmt.Errorf("the profile has %d columns for %d terms", len(f.TermValues), len(f.Terms))
+	}
+	if p.Radio == nil {
+		return nil
+	}
+	for _, c := range []column{{name: "received power", values: f.ReceivedPowerDBm}, {name: "margin", values: f.MarginDB}} {
+		if len(c.values) != n {
+			return fmt.Errorf("the profile has %d values of %s for %d samples", len(c.values), c.name, n)
+		}
+	}
+	return nil
+}

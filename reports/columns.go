@@ -1,0 +1,77 @@
+package reports
+
+import (
+	"strings"
+
+	"slantwise/downlink"
+)
+
+// column is one quantity along a pass. The names and the order of the columns are
+// what a reader of the CSV and JSON files relies on: add, do not rename.
+type column struct {
+	name     string // with its unit
+	decimals int
+	values   []float64
+}
+
+// columns lists all samples of a pass; columns that a pass without a radio does not
+// have are left out.
+func columns(p *Pass) []column {
+	f := p.Profile
+	list := []column{
+		{"azimuth_deg", 4, f.AzimuthDeg},
+		{"elevation_deg", 4, f.ElevationDeg},
+		{"apparent_elevation_deg", 4, f.ApparentElevationDeg},
+		{"range_km", 4, f.RangeKm},
+		{"range_rate_km_s", 6, f.RangeRateKmS},
+	}
+	if p.Radio != nil {
+		list = append(list, column{"doppler_hz", 1, f.DopplerHz}, column{"off_boresight_deg", 3, f.OffBoresightDeg})
+		list = append(list, termColumns(f)...)
+		list = append(list,
+			column{"received_power_dbm", 3, f.ReceivedPowerDBm},
+			column{"power_flux_density_dbw_m2", 3, f.FluxDensityDBWM2},
+			column{"system_noise_k", 2, f.SystemNoiseK},
+			column{"g_over_t_db_k", 3, f.GOverTDBK},
+			column{"c_n0_dbhz", 3, f.CN0DBHz},
+			column{"eb_n0_db", 3, f.EbN0DB},
+			column{"margin_db", 3, f.MarginDB},
+			column{"margin_over_required_db", 3, f.MarginOverDB},
+			column{"achievable_rate_bps", 0, f.AchievableRateBps},
+			column{"achievable_bytes", 0, p.Radio.AchievableBytes},
+			column{"mode_bytes", 0, p.Radio.ModeBytes},
+		)
+	}
+	kept := list[:0]
+	for _, c := range list {
+		if len(c.values) == len(f.Seconds) {
+			kept = append(kept, c)
+		}
+	}
+	return kept
+}
+
+// termColumns gives each term of the budget a column named after it and its unit;
+// a loss stays a positive number.
+func termColumns(f *downlink.Profile) []column {
+	list := make([]column, 0, len(f.Terms))
+	for i, t := range f.Terms {
+		name := "term_" + strings.ReplaceAll(slug(t.Name+" "+t.Unit), "-", "_")
+		list = append(list, column{name, 3, f.TermValues[i]})
+	}
+	return list
+}
+
+var limitNames = [...]string{
+	downlink.LimitPower:       "power",
+	downlink.LimitBandwidth:   "bandwidth",
+	downlink.LimitTransmitter: "transmitter",
+}
+
+// limitName says in a word what holds the achievable rate.
+func limitName(l downlink.RateLimit) string {
+	if l < 0 || int(l) >= len(limitNames) {
+		return ""
+	}
+	return limitNames[l]
+}

@@ -1,0 +1,183 @@
+package reports
+
+import (
+	"bytes"
+	"html/template"
+	"slices"
+	"strconv"
+)
+
+// indexView is what the template of the index shows.
+type indexView struct {
+	pageView
+	Heading               string
+	From, To, Horizon     string
+	Rows                  []rowView
+	Spacecraft, Stations  []string
+	Count                 stateCounts
+	Best                  []rowView
+	HasRadio              bool
+	Chart                 bool
+	Warnings              []Note
+	Assumptions, Defaults []Note
+	CSV, JSON             template.URL
+}
+
+// stateCounts says how many passes there are of each kind.
+type stateCounts struct{ All, Throughout, Partly, Never, Without int }
+
+// rowView is a line of the index; the second of each pair is what the page's script
+// sorts by.
+type rowView struct {
+	Page, Spacecraft, Station, Link, Mode string
+	UTC, LOS, Local                       string
+	AOSSort                               int64
+	Duration, Elevation, Closed           string
+	DurationSort, ClosedSort              string
+	Least, Greatest                       string
+	LeastSort, GreatestSort               string
+	ModeVolume, Achievable                string
+	ModeSort, AchievableSort              string
+	Verdict                               verdict
+	Cut                                   string
+	Share                                 string // width of the bar beside the volume, percent
+}
+
+// bestCount is how many passes the index names first.
+const bestCount = 5
+
+func indexPage(w *writer, rows []row) ([]byte, error) {
+	r := w.report
+	v := &indexView{
+		pageView: w.page("", r.Title+": passes and downlinks"),
+		Heading:  r.Title, From: dayClock(r.From), To: dayClock(r.To), Horizon: kindOfElevation(r.Horizon),
+		Spacecraft: distinct(rows, func(r *row) string { return r.spacecraft }),
+		Stations:   distinct(rows, func(r *row) string { return r.station }),
+		CSV:        indexCSVFile, JSON: indexJSONFile, Chart: len(rows) > 0,
+	}
+	v.addRows(rows)
+	for _, n := range r.Notes {
+		switch n.Kind {
+		case Warning:
+			v.Warnings = append(v.Warnings, n)
+		case Assumption:
+			v.Assumptions = append(v.Assumptions, n)
+		case Default:
+			v.Defaults = append(v.Defaults, n)
+		}
+	}
+	if v.Chart {
+		data, err := marshalDrawings(map[string]any{"drawings": []drawing{drawOverview(r, rows)}, "offsets": nil})
+		if err != nil {
+			return nil, err
+		}
+		v.Data = dataElement(data)
+	}
+	if w.options.OneFile {
+		if err := v.inline(rows); err != nil {
+			return nil, err
+		}
+	}
+	var out bytes.Buffer
+	err := pageTemplates.ExecuteTemplate(&out, "index.html", v)
+	return out.Bytes(), err
+}
+
+// inline puts the index's files into it.
+func (v *indexView) inline(rows []row) error {
+	c, err := indexCSV(rows)
+	if err != nil {
+		return err
+	}
+	j, err := indexJSON(rows)
+	v.CSV, v.JSON = dataAddress("text/csv", c), dataAddress("application/json", j)
+	return err
+}
+
+func (v *indexView) addRows(rows []row) {
+	greatest := 0.0
+	for i := range rows {
+		if b := rows[i].modeBytes; finite(b) {
+			greatest = max(greatest, b)
+		}
+	}
+	for i := range rows {
+		v.Rows = append(v.Rows, newRowView(&rows[i], greatest))
+		v.Count.All++
+		switch rows[i].verdict.state {
+		case closesThrough:
+			v.Count.Throughout++
+		case closesPartly:
+			v.Count.Partly++
+		case neverCloses:
+			v.Count.Never++
+		default:
+			v.Count.Without++
+		}
+	}
+	v.HasRadio = v.Count.Without < v.Count.All
+	for _, i := range bestRows(rows) {
+		v.Best = append(v.Best, v.Rows[i])
+	}
+}
+
+// bestRows returns the passes that bring most in the chosen mode, best first.
+func bestRows(rows []row) []int {
+	var order []int
+	for i := range rows {
+		if rows[i].modeBytes > 0 {
+			order = append(order, i)
+		}
+	}
+	slices.SortStableFunc(order, func(a, b int) int {
+		switch x, y := rows[a].modeBytes, rows[b].modeBytes; {
+		case x > y:
+			return -1
+		case x < y:
+			return 1
+		}
+		return 0
+	})
+	return order[:min(bestCount, len(order))]
+}
+
+func newRowView(r *row, greatest float64) rowView {
+	v := rowView{
+		Page: passFolder + "/" + r.page + ".html", Spacecraft: r.spacecraft, Station: r.station, Link: r.link, Mode: r.mode,
+		UTC: dayClock(r.aos), LOS: clock(r.los), Local: localText(r.aos, r.zone), AOSSort: r.aos.UnixMilli(),
+		Duration: span(r.los.Sub(r.aos)), DurationSort: sortKey(r.los.Sub(r.aos).Seconds(), 3),
+		Elevation: fixed(r.maxElevationDeg, 1),
+		Closed:    r.verdict.Closed(), ClosedSort: sortKey(r.closedSeconds(), 3),
+		Least: fixed(r.least, 1), LeastSort: sortKey(r.least, 3),
+		Greatest: fixed(r.greatest, 1), GreatestSort: sortKey(r.greatest, 3),
+		ModeVolume: withUnit(r.modeBytes, byteScales), ModeSort: sortKey(r.modeBytes, 0),
+		Achievable: withUnit(r.achievableBytes, byteScales), AchievableSort: sortKey(r.achievableBytes, 0),
+		Verdict: r.verdict,
+		Cut:     map[string]string{"aos": "begins before the window", "los": "ends after the window", "both": "lasts beyond the window"}[r.cut],
+	}
+	if greatest > 0 && r.modeBytes > 0 {
+		v.Share = string(appendFixed(nil, 100*r.modeBytes/greatest, 1))
+	}
+	return v
+}
+
+// sortKey writes a number for the page's script; empty sorts last.
+func sortKey(v float64, decimals int) string {
+	if !finite(v) {
+		return ""
+	}
+	return strconv.FormatFloat(v, 'f', decimals, 64)
+}
+
+func distinct(rows []row, of func(*row) string) []string {
+	var list []string
+	seen := map[string]bool{}
+	for i := range rows {
+		if s := of(&rows[i]); !seen[s] {
+			seen[s] = true
+			list = append(list, s)
+		}
+	}
+	slices.Sort(list)
+	return list
+}

@@ -1,0 +1,371 @@
+// Draws the charts of a report page, moves one cursor through all of them, and
+// sorts and filters the index. Everything it adds has a plain form in the page.
+(function () {
+  'use strict';
+
+  var page = document.documentElement;
+  var holder = document.getElementById('drawings');
+  var data = holder ? JSON.parse(holder.textContent) : { drawings: [], offsets: null };
+  var charts = []; // {spec, box, chart, hair}
+
+  function two(n) { return (n < 10 ? '0' : '') + n; }
+
+  // clock writes seconds since midnight as a time of the day.
+  function clock(s, withSeconds) {
+    var t = ((Math.round(s) % 86400) + 86400) % 86400;
+    var text = two(Math.floor(t / 3600)) + ':' + two(Math.floor(t / 60) % 60);
+    return withSeconds ? text + ':' + two(t % 60) : text;
+  }
+
+  // day writes the date that lies a number of seconds after midnight of a date.
+  function day(date, s) {
+    return new Date(Date.parse(date + 'T00:00:00Z') + Math.floor(s / 86400) * 86400000).toISOString().slice(5, 10);
+  }
+
+  function number(v, decimals) {
+    if (v === null || v === undefined || typeof v !== 'number') { return '–'; }
+    return v.toFixed(decimals).replace('-', '−');
+  }
+
+  function tone(name) { return getComputedStyle(page).getPropertyValue(name).trim(); }
+
+  function palette() {
+    return {
+      ink: tone('--ink'), soft: tone('--soft'), rule: tone('--rule'), paper: tone('--paper'),
+      lines: [tone('--line-1'), tone('--line-2')], hatch: tone('--hatch')
+    };
+  }
+
+  // hatching marks an area without colour.
+  function hatching(colour) {
+    var c = document.createElement('canvas');
+    c.width = c.height = 8;
+    var g = c.getContext('2d');
+    g.strokeStyle = colour;
+    g.lineWidth = 1;
+    [[-2, 2], [-2, 10], [6, 10]].forEach(function (p) {
+      g.beginPath(); g.moveTo(p[0], p[1]); g.lineTo(p[0] + 12, p[1] - 12); g.stroke();
+    });
+    return { image: c, repeat: 'repeat' };
+  }
+
+  function styled(axis, p) {
+    axis.axisLine = { show: true, lineStyle: { color: p.soft } };
+    axis.axisTick = { show: true, lineStyle: { color: p.soft } };
+    axis.splitLine = { lineStyle: { color: p.rule } };
+    axis.axisLabel = axis.axisLabel || {};
+    axis.axisLabel.color = p.ink;
+    axis.axisLabel.fontSize = 11;
+    return axis;
+  }
+
+  function timeLabels(axis, spec) {
+    var length = spec.axis.to - spec.axis.from;
+    axis.interval = spec.axis.step;
+    axis.axisLabel = {
+      hideOverlap: true, showMinLabel: false, showMaxLabel: false,
+      formatter: function (s) {
+        if (length > 86400) { return clock(s) === '00:00' ? day(spec.axis.date, s) : clock(s); }
+        return clock(s, spec.axis.step < 60);
+      }
+    };
+    axis.nameLocation = 'middle';
+    axis.nameGap = 26;
+  }
+
+  function heading(text, side, p) {
+    var t = { text: text, top: 0, padding: 0, textStyle: { fontSize: 12, fontWeight: 'normal', color: p.ink } };
+    t[side] = 0;
+    return t;
+  }
+
+  function forTime(o, spec, p) {
+    var legend = o.legend && o.legend.show;
+    o.title = o.yAxis.map(function (y, k) { return heading(y.name, k ? 'right' : 'left', p); });
+    o.yAxis.forEach(function (y) {
+      y.name = '';
+      y.axisLabel = { formatter: function (v) { return String(v).replace('-', '−'); } };
+      styled(y, p);
+    });
+    if (o.yAxis[1]) { o.yAxis[1].splitLine = { show: false }; }
+    timeLabels(o.xAxis[0], spec);
+    styled(o.xAxis[0], p);
+    o.xAxis[0].splitLine = { show: false };
+    o.xAxis[0].axisLine.onZero = false;
+    o.legend = { show: legend, left: 0, top: 18, padding: 0, itemWidth: 34, itemGap: 16, textStyle: { color: p.ink, fontSize: 12 } };
+    o.grid = { left: 50, right: o.yAxis[1] ? 50 : 14, top: legend ? 46 : 26, bottom: 44 };
+    o.series.forEach(function (s) {
+      if (s.markArea) { s.markArea.silent = true; s.markArea.itemStyle = { color: hatching(p.hatch) }; }
+      s.silent = true;
+    });
+  }
+
+  function forSky(o, spec, p) {
+    styled(o.angleAxis, p);
+    styled(o.radiusAxis, p);
+    o.angleAxis.axisLabel.formatter = function (a) {
+      return { 0: 'N', 90: 'E', 180: 'S', 270: 'W' }[a] || (a === 360 ? '' : a + '°');
+    };
+    o.radiusAxis.axisLabel.formatter = function (e) { return e === 0 ? '' : e + '°'; };
+    o.radiusAxis.axisLine.show = false;
+    o.radiusAxis.axisTick.show = false;
+    o.radiusAxis.axisLabel.color = p.soft;
+    o.polar = { center: ['50%', '54%'], radius: '76%' };
+    o.legend.left = 0;
+    o.legend.top = 0;
+    o.legend.padding = 0;
+    o.legend.itemWidth = 34;
+    o.legend.textStyle = { color: p.ink, fontSize: 12 };
+    o.series.forEach(function (s) {
+      s.silent = true;
+      if (s.areaStyle) { s.areaStyle.color = p.soft; s.areaStyle.opacity = 0.18; s.lineStyle.width = 1; }
+      if (s.type === 'scatter') {
+        s.itemStyle = { color: p.lines[0], borderColor: p.paper, borderWidth: 1 };
+        s.label.color = p.ink;
+        s.label.fontSize = 11;
+        s.label.textBorderColor = p.paper;
+        s.label.textBorderWidth = 3;
+        s.labelLayout = { moveOverlap: 'shiftY' };
+      }
+    });
+  }
+
+  function forOverview(o, spec, p) {
+    timeLabels(o.xAxis[0], spec);
+    styled(o.xAxis[0], p);
+    styled(o.yAxis[0], p);
+    o.yAxis[0].splitLine = { show: true, lineStyle: { color: p.rule } };
+    o.yAxis[0].axisLabel.width = window.innerWidth < 600 ? 84 : 160;
+    o.yAxis[0].axisLabel.overflow = 'truncate';
+    o.legend = { show: true, left: 0, top: 0, padding: 0, textStyle: { color: p.ink, fontSize: 12 } };
+    o.grid = { left: window.innerWidth < 600 ? 94 : 170, right: 14, top: window.innerWidth < 600 ? 58 : 34, bottom: 44 };
+    o.tooltip = {
+      show: true, trigger: 'item', renderMode: 'richText', confine: true,
+      formatter: function (q) { return spec.names[q.value[2]]; }
+    };
+    o.series.forEach(function (s, k) {
+      s.itemStyle = { color: p.lines[k % 2], borderWidth: 1.5 };
+      if (s.symbol.indexOf('empty') === 0) { s.itemStyle.borderColor = p.lines[k % 2]; }
+    });
+  }
+
+  function finished(spec, p) {
+    var o = JSON.parse(JSON.stringify(spec.option));
+    o.color = p.lines;
+    o.backgroundColor = 'transparent';
+    o.textStyle = { fontFamily: getComputedStyle(document.body).fontFamily, color: p.ink };
+    if (o.xAxis) { o.xAxis[0].nameTextStyle = { color: p.ink, fontSize: 12 }; }
+    ({ time: forTime, sky: forSky, overview: forOverview })[spec.kind](o, spec, p);
+    return o;
+  }
+
+  // draw sets up all charts; size fixes their width on paper.
+  function draw(size) {
+    var p = palette();
+    charts.forEach(function (c) {
+      if (c.chart) { c.chart.dispose(); }
+      var opts = { renderer: c.spec.names && c.spec.names.length > 1500 ? 'canvas' : 'svg' };
+      if (size) {
+        opts.width = c.spec.kind === 'overview' ? size.wide : size.width;
+        opts.height = c.spec.kind === 'sky' ? size.sky : c.spec.kind === 'overview' ? c.box.clientHeight : size.height;
+      }
+      c.chart = window.echarts.init(c.box, null, opts);
+      c.chart.setOption(finished(c.spec, p));
+      c.box.appendChild(c.hair);
+      if (c.spec.links) {
+        c.chart.on('click', function (q) { window.location.href = c.spec.links[q.value[2]]; });
+      }
+    });
+    place();
+  }
+
+  // The cursor: one sample, shown in every chart and read out in words.
+  var at = -1;
+  var samples = [];
+
+  function local(s) {
+    var o = null;
+    (data.offsets || []).forEach(function (z) { if (z.from <= s) { o = z; } });
+    return o ? ', ' + clock(s + o.seconds, true) + ' ' + o.name : '';
+  }
+
+  function place() {
+    if (at < 0) { return; }
+    charts.forEach(function (c) {
+      var q;
+      if (c.spec.kind === 'time') {
+        q = c.chart.convertToPixel({ xAxisIndex: 0 }, samples[at]);
+        c.hair.style.left = q + 'px';
+      } else if (c.spec.kind === 'sky') {
+        q = c.chart.convertToPixel({ seriesIndex: 0 }, c.spec.option.series[0].data[at]);
+        c.hair.style.left = q[0] + 'px';
+        c.hair.style.top = q[1] + 'px';
+      }
+    });
+  }
+
+  function move(index) {
+    at = Math.max(0, Math.min(samples.length - 1, index));
+    place();
+    var slider = document.getElementById('cursor-slider');
+    var out = document.getElementById('cursor-reading');
+    slider.value = at;
+    out.textContent = '';
+    var time = clock(samples[at], true) + ' UTC' + local(samples[at]);
+    var words = [time];
+    add(out, 'b', time);
+    charts.forEach(function (c) {
+      (c.spec.reads || []).forEach(function (r, k) {
+        if (c.spec.kind === 'sky' && k === 0) { return; } // the elevation has a chart of its own
+        var v = c.spec.option.series[r.series].data[at][1];
+        var text = r.label + ' ' + number(v, r.decimals) + ' ' + r.unit;
+        words.push(text);
+        add(out, 'span', text);
+      });
+    });
+    slider.setAttribute('aria-valuetext', words.join('; '));
+  }
+
+  function add(parent, tag, text) {
+    var e = document.createElement(tag);
+    e.textContent = text;
+    parent.appendChild(e);
+    parent.appendChild(document.createTextNode(' '));
+  }
+
+  function nearest(s) {
+    var low = 0, high = samples.length - 1;
+    while (high - low > 1) {
+      var mid = (low + high) >> 1;
+      if (samples[mid] <= s) { low = mid; } else { high = mid; }
+    }
+    return s - samples[low] < samples[high] - s ? low : high;
+  }
+
+  function cursor() {
+    var first = charts.filter(function (c) { return c.spec.kind === 'time'; })[0];
+    if (!first) { return; }
+    samples = first.spec.option.series[0].data.map(function (q) { return q[0]; });
+    var heights = charts.filter(function (c) { return c.spec.id === 'height'; })[0].spec.option.series[0].data;
+    var top = 0;
+    heights.forEach(function (q, i) { if (q[1] > heights[top][1]) { top = i; } });
+    var slider = document.getElementById('cursor-slider');
+    slider.max = samples.length - 1;
+    slider.addEventListener('input', function () { move(Number(slider.value)); });
+    document.getElementById('cursor').hidden = false;
+    charts.forEach(function (c) {
+      if (c.spec.kind !== 'time') { return; }
+      c.box.addEventListener('pointermove', function (e) {
+        var box = c.box.getBoundingClientRect();
+        var s = c.chart.convertFromPixel({ xAxisIndex: 0 }, e.clientX - box.left);
+        if (isFinite(s)) { move(nearest(s)); }
+      });
+    });
+    move(top);
+  }
+
+  function watch() {
+    var dark = window.matchMedia('(prefers-color-scheme: dark)');
+    dark.addEventListener('change', function () { draw(); });
+    var width = window.innerWidth;
+    window.addEventListener('resize', function () {
+      if (page.classList.contains('printing') || width === window.innerWidth) { return; }
+      width = window.innerWidth;
+      window.requestAnimationFrame(function () { draw(); });
+    });
+    window.addEventListener('beforeprint', function () {
+      page.classList.add('printing');
+      draw({ width: 336, height: 190, sky: 300, wide: 690 });
+    });
+    window.addEventListener('afterprint', function () {
+      page.classList.remove('printing');
+      draw();
+    });
+  }
+
+  function start() {
+    if (!window.echarts) {
+      document.querySelectorAll('.figure details').forEach(function (d) { d.open = true; });
+      return;
+    }
+    var missing = document.getElementById('missing');
+    if (missing) { missing.hidden = true; }
+    page.classList.add('drawn');
+    data.drawings.forEach(function (spec) {
+      var box = document.getElementById(spec.id);
+      var hair = document.createElement('i');
+      hair.className = 'hair ' + spec.kind;
+      if (spec.kind === 'overview') {
+        box.style.height = (spec.option.yAxis[0].data.length * 28 + (window.innerWidth < 600 ? 104 : 84)) + 'px';
+      }
+      charts.push({ spec: spec, box: box, hair: hair, chart: null });
+    });
+    draw();
+    cursor();
+    watch();
+  }
+
+  // The index: columns sort, rows filter.
+  function sorting(table) {
+    var heads = table.tHead.rows[0].cells;
+    Array.prototype.forEach.call(heads, function (th, column) {
+      var button = document.createElement('button');
+      button.type = 'button';
+      button.textContent = th.textContent;
+      th.textContent = '';
+      th.appendChild(button);
+      button.addEventListener('click', function () {
+        var up = th.getAttribute('aria-sort') !== 'ascending';
+        Array.prototype.forEach.call(heads, function (h) { h.removeAttribute('aria-sort'); });
+        th.setAttribute('aria-sort', up ? 'ascending' : 'descending');
+        sort(table, column, th.dataset.sort === 'number', up ? 1 : -1);
+      });
+    });
+  }
+
+  function sort(table, column, numeric, sign) {
+    var body = table.tBodies[0];
+    var rows = Array.prototype.map.call(body.rows, function (tr, i) {
+      var cell = tr.cells[column];
+      var key = cell.dataset.v === undefined ? cell.textContent : cell.dataset.v;
+      return { tr: tr, i: i, key: numeric ? (key === '' || isNaN(Number(key)) ? null : Number(key)) : key };
+    });
+    rows.sort(function (a, b) {
+      if (a.key === null || b.key === null) { return (a.key === null) - (b.key === null) || a.i - b.i; }
+      return (a.key < b.key ? -sign : a.key > b.key ? sign : a.i - b.i);
+    });
+    var list = document.createDocumentFragment();
+    rows.forEach(function (r) { list.appendChild(r.tr); });
+    body.appendChild(list);
+  }
+
+  function filtering(table) {
+    var form = document.getElementById('filters');
+    var craft = document.getElementById('filter-spacecraft');
+    var station = document.getElementById('filter-station');
+    var link = document.getElementById('filter-link');
+    var least = document.getElementById('filter-elevation');
+    function apply() {
+      var shown = 0;
+      Array.prototype.forEach.call(table.tBodies[0].rows, function (tr) {
+        var state = tr.dataset.link;
+        var closes = state === 'throughout' || state === 'partly';
+        var keep = (!craft.value || tr.cells[1].textContent === craft.value) &&
+          (!station.value || tr.cells[2].textContent === station.value) &&
+          (!link || !link.value || link.value === state || (link.value === 'some' && closes)) &&
+          (Number(tr.cells[4].textContent) >= Number(least.value || 0));
+        tr.hidden = !keep;
+        shown += keep ? 1 : 0;
+      });
+      document.getElementById('shown').textContent = shown + ' of ' + table.tBodies[0].rows.length + ' passes';
+    }
+    form.hidden = false;
+    form.addEventListener('input', apply);
+    form.addEventListener('submit', function (e) { e.preventDefault(); });
+    apply();
+  }
+
+  start();
+  var table = document.getElementById('pass-table');
+  if (table) { sorting(table); filtering(table); }
+})();

@@ -1,0 +1,176 @@
+package reports
+
+import (
+	"bytes"
+	"html/template"
+)
+
+// passView is what the template of a pass page shows.
+type passView struct {
+	pageView
+	Previous, Next         string // file names beside this page; empty at the ends of the list
+	Spacecraft, Station    string
+	Begin, End             string // UTC
+	BeginISO, EndISO       string
+	EndClock               string
+	Local                  string
+	Duration, CutText      string
+	Highest, HighestToward string
+	Verdict                verdict
+	Link                   *linkView
+	Element                elementView
+	Events                 []eventView
+	HasZone                bool
+	Warnings               []Note
+	Figures                []figureView
+	Budget, Noise          budgetView
+	Assumptions, Defaults  []Note
+	CSV, JSON              template.URL
+	Stem                   string
+}
+
+// linkView is the answer about the radio link.
+type linkView struct {
+	Transmitter, Antenna, Mode, ModeText, Frequency string
+	Closes                                          []string
+	Of                                              string
+	Least, Greatest, Required                       string
+	HasMargin                                       bool
+	Strongest                                       string
+	ModeVolume, AchievableVolume                    string
+	ModeRate                                        string
+}
+
+type elementView struct{ Name, Epoch, Age, From string }
+
+type eventView struct {
+	Name, UTC, Local, Azimuth, Toward, Elevation, Range, Power, Margin string
+}
+
+// passPage renders the page of a pass.
+func passPage(w *writer, i int, p *Pass) ([]byte, error) {
+	v := newPassView(p)
+	v.pageView = w.page("../", v.Spacecraft+" over "+v.Station+", "+v.Begin+" UTC")
+	v.Stem = w.names[i]
+	if i > 0 {
+		v.Previous = w.names[i-1]
+	}
+	if i+1 < len(w.names) {
+		v.Next = w.names[i+1]
+	}
+	v.addNotes(w.report.Notes)
+	v.addNotes(p.Notes)
+	fr := newFrame(p)
+	drawings, views := figures(p, fr)
+	v.Figures = views
+	data, err := marshalDrawings(map[string]any{
+		"drawings": drawings,
+		"offsets":  offsets(p.Pass.AOS, p.Pass.LOS, p.Site.TimeZone, fr.base),
+	})
+	if err != nil {
+		return nil, err
+	}
+	v.Data = dataElement(data)
+	v.CSV, v.JSON = template.URL(v.Stem+".csv"), template.URL(v.Stem+".json")
+	if w.options.OneFile {
+		if v.CSV, v.JSON, err = inlineFiles(p); err != nil {
+			return nil, err
+		}
+	}
+	var out bytes.Buffer
+	out.Grow(len(data) + 64<<10)
+	err = pageTemplates.ExecuteTemplate(&out, "pass.html", v)
+	return out.Bytes(), err
+}
+
+// inlineFiles returns the pass's CSV and JSON as addresses that hold them.
+func inlineFiles(p *Pass) (csv, js template.URL, err error) {
+	j, err := passJSON(p)
+	if err != nil {
+		return "", "", err
+	}
+	return dataAddress("text/csv", samplesCSV(p)), dataAddress("application/json", j), nil
+}
+
+func newPassView(p *Pass) *passView {
+	q := &p.Pass
+	v := &passView{
+		Spacecraft: p.Spacecraft, Station: p.Site.Name,
+		Begin: dayClock(q.AOS), End: dayClock(q.LOS), EndClock: clock(q.LOS),
+		BeginISO: utcText(q.AOS), EndISO: utcText(q.LOS),
+		Duration: span(q.Duration()),
+		Highest:  fixed(q.MaxElevation.Degrees(), 1), HighestToward: direction(q.CulminationAzimuth.Degrees()),
+		Verdict: verdictOf(p),
+		HasZone: p.Site.TimeZone != nil,
+		Element: elementView{p.Elements.Name, dayClock(p.Elements.Epoch), age(p.Elements.Age), p.Elements.Source.File},
+	}
+	if v.Begin[:10] != v.End[:10] {
+		v.EndClock = v.End
+	}
+	if v.HasZone {
+		v.Local = localText(q.AOS, p.Site.TimeZone) + " to " + localText(q.LOS, p.Site.TimeZone)
+	}
+	v.CutText = map[string]string{
+		"aos":  "Already up when the window opens: the pass began earlier than shown.",
+		"los":  "Still up when the window closes: the pass lasts longer than shown.",
+		"both": "Up during the whole window: the pass begins earlier and ends later than shown.",
+	}[q.Cut.String()]
+	for _, e := range events(p) {
+		v.Events = append(v.Events, eventLine(p, e))
+	}
+	if p.Radio != nil {
+		v.Link = newLinkView(p)
+		v.Budget, v.Noise = budgetTable(p), noiseTable(p)
+	}
+	return v
+}
+
+func newLinkView(p *Pass) *linkView {
+	r, f := p.Radio, p.Profile
+	l := &linkView{
+		Transmitter: r.Transmitter, Antenna: r.Antenna, Mode: r.Mode, ModeText: r.ModeText,
+		Frequency: withUnit(r.Frequency.Hertz(), freqScales), Of: span(p.Pass.Duration()),
+		Least: fixed(r.Least.Value, 1), Greatest: fixed(r.Greatest.Value, 1), Required: fixed(f.RequiredMarginDB, 1),
+		HasMargin:        finite(r.Greatest.Value),
+		ModeRate:         withUnit(f.DataRate.BitsPerSecond(), rateScales),
+		ModeVolume:       withUnit(f.Volume.ModeBytes, byteScales),
+		AchievableVolume: withUnit(f.Volume.AchievableBytes, byteScales),
+		Strongest:        fixed(greatestOf(f.ReceivedPowerDBm), 1),
+	}
+	for _, c := range f.Volume.Closes {
+		l.Closes = append(l.Closes, clock(c.From)+" to "+clock(c.To))
+	}
+	return l
+}
+
+func eventLine(p *Pass, e event) eventView {
+	f := p.Profile
+	v := eventView{
+		Name: e.name, UTC: clock(e.at), Local: localText(e.at, p.Site.TimeZone),
+		Azimuth: fixed(e.azimuthDeg, 1), Toward: compass(e.azimuthDeg), Elevation: fixed(e.elevationDeg, 1),
+		Range: fixed(f.RangeKm[e.sample], 0),
+	}
+	if p.Radio != nil {
+		v.Power, v.Margin = fixed(f.ReceivedPowerDBm[e.sample], 1), fixed(f.MarginDB[e.sample], 1)
+	}
+	return v
+}
+
+// direction writes an azimuth with its point of the compass.
+func direction(azimuthDeg float64) string {
+	return fixed(azimuthDeg, 0) + "° (" + compass(azimuthDeg) + ")"
+}
+
+// addNotes sorts notes onto the page.
+func (v *passView) addNotes(notes []Note) {
+	for _, n := range notes {
+		switch n.Kind {
+		case Warning:
+			v.Warnings = append(v.Warnings, n)
+		case Assumption:
+			v.Assumptions = append(v.Assumptions, n)
+		case Default:
+			v.Defaults = append(v.Defaults, n)
+		}
+	}
+}

@@ -1,0 +1,134 @@
+package reports
+
+import (
+	"bytes"
+	"encoding/csv"
+	"encoding/json"
+	"math"
+	"time"
+)
+
+// row is what the index keeps of a pass once its page is written.
+type row struct {
+	page                       string
+	spacecraft, station, link  string
+	mode                       string
+	zone                       *time.Location
+	aos, culmination, los      time.Time
+	maxElevationDeg            float64
+	cut                        string
+	verdict                    verdict
+	least, greatest, required  float64
+	modeBytes, achievableBytes float64
+}
+
+func newRow(page string, p *Pass) row {
+	q := &p.Pass
+	none := math.NaN()
+	r := row{
+		page: page, spacecraft: p.Spacecraft, station: p.Site.Name, zone: p.Site.TimeZone,
+		aos: q.AOS, culmination: q.Culmination, los: q.LOS,
+		maxElevationDeg: q.MaxElevation.Degrees(), cut: q.Cut.String(), verdict: verdictOf(p),
+		least: none, greatest: none, required: none, modeBytes: none, achievableBytes: none,
+	}
+	if p.Radio != nil {
+		r.link, r.mode = p.Radio.Transmitter+" to "+p.Radio.Antenna, p.Radio.Mode
+		r.least, r.greatest, r.required = p.Radio.Least.Value, p.Radio.Greatest.Value, p.Profile.RequiredMarginDB
+		r.modeBytes, r.achievableBytes = p.Profile.Volume.ModeBytes, p.Profile.Volume.AchievableBytes
+	}
+	return r
+}
+
+// field is a column of the index's files: a text or a number.
+type field struct {
+	name   string
+	text   func(*row) string
+	number func(*row) number
+}
+
+// indexFields names the columns of passes.csv and the fields of passes.json. They
+// get added, not renamed.
+var indexFields = []field{
+	{name: "spacecraft", text: func(r *row) string { return r.spacecraft }},
+	{name: "station", text: func(r *row) string { return r.station }},
+	{name: "link", text: func(r *row) string { return r.link }},
+	{name: "mode", text: func(r *row) string { return r.mode }},
+	{name: "aos_utc", text: func(r *row) string { return utcText(r.aos) }},
+	{name: "culmination_utc", text: func(r *row) string { return utcText(r.culmination) }},
+	{name: "los_utc", text: func(r *row) string { return utcText(r.los) }},
+	{name: "cut", text: func(r *row) string { return r.cut }},
+	{name: "duration_s", number: func(r *row) number { return number{r.los.Sub(r.aos).Seconds(), 3} }},
+	{name: "max_elevation_deg", number: func(r *row) number { return number{r.maxElevationDeg, 4} }},
+	{name: "link_state", text: func(r *row) string { return r.verdict.Key() }},
+	{name: "closes_s", number: func(r *row) number { return number{r.closedSeconds(), 3} }},
+	{name: "least_margin_db", number: func(r *row) number { return number{r.least, 3} }},
+	{name: "greatest_margin_db", number: func(r *row) number { return number{r.greatest, 3} }},
+	{name: "required_margin_db", number: func(r *row) number { return number{r.required, 3} }},
+	{name: "mode_bytes", number: func(r *row) number { return number{r.modeBytes, 0} }},
+	{name: "achievable_bytes", number: func(r *row) number { return number{r.achievableBytes, 0} }},
+	{name: "page", text: func(r *row) string { return passFolder + "/" + r.page + ".html" }},
+}
+
+func (r *row) closedSeconds() float64 {
+	if r.verdict.state > neverCloses {
+		return math.NaN()
+	}
+	return r.verdict.closed.Seconds()
+}
+
+// indexCSV returns the table of the index.
+func indexCSV(rows []row) ([]byte, error) {
+	var out bytes.Buffer
+	w := csv.NewWriter(&out)
+	record := make([]string, len(indexFields))
+	for k, f := range indexFields {
+		record[k] = f.name
+	}
+	err := w.Write(record)
+	for i := range rows {
+		for k, f := range indexFields {
+			switch {
+			case f.text != nil:
+				record[k] = f.text(&rows[i])
+			case finite(f.number(&rows[i]).v):
+				n := f.number(&rows[i])
+				record[k] = string(appendFixed(nil, n.v, n.decimals))
+			default:
+				record[k] = ""
+			}
+		}
+		if err == nil {
+			err = w.Write(record)
+		}
+	}
+	w.Flush()
+	if err == nil {
+		err = w.Error()
+	}
+	return out.Bytes(), err
+}
+
+// indexJSON returns the same as JSON, an object a pass, fields in the CSV's order.
+func indexJSON(rows []row) ([]byte, error) {
+	dst := []byte(`{"passes":[`)
+	for i := range rows {
+		dst = append(comma(dst, i), '\n')
+		for k, f := range indexFields {
+			dst = append(dst, []byte{'{', ','}[min(k, 1)])
+			dst = append(append(append(dst, '"'), f.name...), `":`...)
+			var v any
+			if f.text != nil {
+				v = f.text(&rows[i])
+			} else {
+				v = f.number(&rows[i])
+			}
+			one, err := json.Marshal(v)
+			if err != nil {
+				return nil, err
+			}
+			dst = append(dst, one...)
+		}
+		dst = append(dst, '}')
+	}
+	return append(dst, "\n]}\n"...), nil
+}

@@ -1,0 +1,87 @@
+package reports
+
+import (
+	"encoding/json"
+	"math"
+	"time"
+)
+
+// sampleTime returns the instant of a sample, to the millisecond.
+func sampleTime(start time.Time, seconds float64) time.Time {
+	return start.UTC().Add(time.Duration(math.Round(seconds*1000)) * time.Millisecond)
+}
+
+// samplesCSV returns every sample of a pass: a header row, then a row a sample.
+func samplesCSV(p *Pass) []byte {
+	cols := columns(p)
+	f := p.Profile
+	dst := make([]byte, 0, (len(f.Seconds)+1)*(26+9*len(cols)))
+	dst = append(dst, "utc"...)
+	for _, c := range cols {
+		dst = append(append(dst, ','), c.name...)
+	}
+	words := p.Radio != nil && len(f.AchievableLimit) == len(f.Seconds) && len(f.Usable) == len(f.Seconds)
+	if words {
+		dst = append(dst, ",achievable_limit,usable"...)
+	}
+	dst = append(dst, '\n')
+	for i, s := range f.Seconds {
+		dst = sampleTime(f.Start, s).AppendFormat(dst, utcLayout)
+		for k := range cols {
+			dst = append(dst, ',')
+			if v := cols[k].values[i]; finite(v) {
+				dst = appendFixed(dst, v, cols[k].decimals)
+			}
+		}
+		if words {
+			dst = append(append(dst, ','), limitName(f.AchievableLimit[i])...)
+			dst = append(append(dst, ','), yesNo(f.Usable[i])...)
+		}
+		dst = append(dst, '\n')
+	}
+	return dst
+}
+
+func yesNo(b bool) string {
+	if b {
+		return "yes"
+	}
+	return "no"
+}
+
+// passJSON returns the summary, the budgets and every sample of a pass, the samples
+// as one array a column.
+func passJSON(p *Pass) ([]byte, error) {
+	head, err := json.Marshal(passHead(p))
+	if err != nil {
+		return nil, err
+	}
+	cols := columns(p)
+	f := p.Profile
+	dst := make([]byte, 0, len(head)+len(f.Seconds)*(28+9*len(cols)))
+	dst = append(dst, head[:len(head)-1]...) // the closing brace comes after the samples
+	dst = append(dst, `,"samples":{"utc":[`...)
+	for i, s := range f.Seconds {
+		dst = comma(dst, i)
+		dst = append(dst, '"')
+		dst = sampleTime(f.Start, s).AppendFormat(dst, utcLayout)
+		dst = append(dst, '"')
+	}
+	dst = append(dst, ']')
+	for _, c := range cols {
+		dst = append(append(append(dst, ",\n\""...), c.name...), `":[`...)
+		for i, v := range c.values {
+			dst = comma(dst, i)
+			dst = appendJSONNumber(dst, v, c.decimals)
+		}
+		dst = append(dst, ']')
+	}
+	return append(dst, "}}\n"...), nil
+}
+
+func comma(dst []byte, i int) []byte {
+	if i > 0 {
+		return append(dst, ',')
+	}
+	return dst
+}

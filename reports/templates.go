@@ -1,0 +1,91 @@
+package reports
+
+import (
+	"embed"
+	"encoding/base64"
+	"html/template"
+	"math"
+	"strings"
+)
+
+//go:embed pages/*.html
+var templateFiles embed.FS
+
+var pageTemplates = template.Must(template.ParseFS(templateFiles, "pages/*.html"))
+
+// pageView is what every page has.
+type pageView struct {
+	Title   string
+	Root    string // the way to the folder of index.html, "" or "../"
+	Policy  string
+	Style   template.HTML
+	Scripts template.HTML
+	Data    template.HTML
+	Public  string // the address that the chart script comes from; empty when it is with the page
+	OneFile bool
+}
+
+// page fills in what every page has; root is the way to the index.
+func (w *writer) page(root, title string) pageView {
+	v := pageView{Title: title, Root: root, OneFile: w.options.OneFile}
+	chart := chartScript().code
+	var scripts strings.Builder
+	var sources []string
+	switch {
+	case chart == "":
+		v.Public = publicScript
+		scripts.WriteString(`<script src="` + publicScript + `" integrity="` + publicHash + `" crossorigin="anonymous"></script>`)
+		sources = append(sources, publicOrigin)
+	case w.options.OneFile:
+		scripts.WriteString("<script>" + w.inlineChart + "</script>")
+		sources = append(sources, w.chartHash)
+	default:
+		scripts.WriteString(`<script src="` + root + chartFile + `"></script>`)
+	}
+	if w.options.OneFile {
+		v.Style = template.HTML("<style>" + styleSheet + "</style>")
+		scripts.WriteString("\n<script>" + pageScript + "</script>")
+		sources = append(sources, w.pageHash)
+	} else {
+		v.Style = template.HTML(`<link rel="stylesheet" href="` + root + styleFile + `">`)
+		scripts.WriteString("\n" + `<script src="` + root + scriptFile + `"></script>`)
+		sources = append(sources, "'self'")
+	}
+	v.Scripts = template.HTML(scripts.String())
+	v.Policy = policy(sources)
+	return v
+}
+
+// policy lets a page run its own scripts and ask for nothing else. Styles may be
+// inline, since the charts place their parts with them.
+func policy(scripts []string) string {
+	return "default-src 'none'; script-src " + strings.Join(scripts, " ") +
+		"; style-src 'self' 'unsafe-inline'; img-src data:; base-uri 'none'; form-action 'none'"
+}
+
+// inlineSafe makes a script fit to stand inside a page: the only thing that could
+// end the element early is its own end tag.
+func inlineSafe(code string) string {
+	return strings.NewReplacer("</script", `<\/script`, "<!--", `<\!--`).Replace(code)
+}
+
+// dataElement holds JSON in the page; the JSON escapes markup itself.
+func dataElement(data []byte) template.HTML {
+	return template.HTML(`<script type="application/json" id="drawings">` + string(data) + `</script>`)
+}
+
+// dataAddress returns an address that holds the content itself.
+func dataAddress(kind string, content []byte) template.URL {
+	return template.URL("data:" + kind + ";charset=utf-8;base64," + base64.StdEncoding.EncodeToString(content))
+}
+
+// greatestOf returns the greatest value that exists, NaN for none.
+func greatestOf(values []float64) float64 {
+	best := math.NaN()
+	for _, v := range values {
+		if finite(v) && !(v <= best) {
+			best = v
+		}
+	}
+	return best
+}

@@ -1,0 +1,140 @@
+package reports
+
+import (
+	"context"
+	"fmt"
+	"runtime"
+	"sync"
+
+	"golang.org/x/sync/errgroup"
+)
+
+// Names of what stands in a report folder.
+const (
+	indexFile     = "index.html"
+	indexCSVFile  = "passes.csv"
+	indexJSONFile = "passes.json"
+	passFolder    = "passes"
+	chartFile     = "chart.js"
+	licenceFile   = "chart-licence.txt"
+	scriptFile    = "page.js"
+	styleFile     = "page.css"
+	contentsFile  = "contents.txt"
+)
+
+// Options say how a report is written.
+type Options struct {
+	OneFile  bool                  // each page holds everything inside, to be mailed
+	Workers  int                   // 0: as many as the machine runs at once
+	Progress func(done, total int) // passes written; may be nil; never called by two goroutines at a time
+}
+
+// writer carries what all pages of a report share.
+type writer struct {
+	report  *Report
+	options Options
+	names   []string // of the pass pages, without ending
+	put     func(name string, content []byte) error
+
+	inlineChart, chartHash, pageHash string
+}
+
+func newWriter(r *Report, o Options, put func(string, []byte) error) *writer {
+	w := &writer{report: r, options: o, names: pageNames(r.Keys), put: put, pageHash: contentHash(pageScript)}
+	if o.OneFile {
+		w.inlineChart = inlineSafe(chartScript().code)
+		w.chartHash = contentHash(w.inlineChart)
+	}
+	return w
+}
+
+// write renders all pages and files of the report; the order in which they come out
+// is not fixed, their content is.
+func (w *writer) write(ctx context.Context) error {
+	rows := make([]row, len(w.names))
+	workers := w.options.Workers
+	if workers <= 0 {
+		workers = runtime.GOMAXPROCS(0)
+	}
+	group, working := errgroup.WithContext(ctx)
+	group.SetLimit(workers)
+	var counting sync.Mutex
+	done := 0
+	for i := range w.names {
+		group.Go(func() error {
+			if err := working.Err(); err != nil {
+				return err
+			}
+			if err := w.pass(working, i, &rows[i]); err != nil {
+				return err
+			}
+			if w.options.Progress != nil {
+				counting.Lock()
+				done++
+				w.options.Progress(done, len(w.names))
+				counting.Unlock()
+			}
+			return nil
+		})
+	}
+	if err := group.Wait(); err != nil {
+		return err
+	}
+	return w.shared(rows)
+}
+
+// pass loads one pass and writes its page and files.
+func (w *writer) pass(ctx context.Context, i int, r *row) error {
+	p, err := w.report.Load(ctx, i)
+	if err != nil {
+		return err
+	}
+	if err := checkPass(p); err != nil {
+		k := w.report.Keys[i]
+		return fmt.Errorf("report: pass of %s over %s at %s: %w", k.Spacecraft, k.Station, utcText(k.AOS), err)
+	}
+	*r = newRow(w.names[i], p)
+	page, err := passPage(w, i, p)
+	if err != nil {
+		return err
+	}
+	stem := passFolder + "/" + w.names[i]
+	if err := w.put(stem+".html", page); err != nil || w.options.OneFile {
+		return err
+	}
+	if err := w.put(stem+".csv", samplesCSV(p)); err != nil {
+		return err
+	}
+	js, err := passJSON(p)
+	if err != nil {
+		return err
+	}
+	return w.put(stem+".json", js)
+}
+
+// shared writes the index and what the pages have in common.
+func (w *writer) shared(rows []row) error {
+	index, err := indexPage(w, rows)
+	if err != nil {
+		return err
+	}
+	files := map[string][]byte{indexFile: index}
+	if !w.options.OneFile {
+		if files[indexCSVFile], err = indexCSV(rows); err != nil {
+			return err
+		}
+		if files[indexJSONFile], err = indexJSON(rows); err != nil {
+			return err
+		}
+		files[styleFile], files[scriptFile] = []byte(styleSheet), []byte(pageScript)
+		if chart := chartScript(); chart.code != "" {
+			files[chartFile], files[licenceFile] = []byte(chart.code), []byte(chart.licence)
+		}
+	}
+	for name, content := range files {
+		if err := w.put(name, content); err != nil {
+			return err
+		}
+	}
+	return nil
+}
