@@ -10,8 +10,9 @@ import (
 
 // budgetView is a table with a column for each instant.
 type budgetView struct {
-	Heads []string
-	Parts []budgetPart
+	Corner string // heading of the first column
+	Heads  []string
+	Parts  []budgetPart
 }
 
 // budgetPart is a group of lines under a heading.
@@ -31,7 +32,7 @@ type budgetRow struct {
 // margin and the rate.
 func budgetTable(p *Pass) budgetView {
 	all := budgetsOf(p.Radio)
-	view := budgetView{}
+	view := budgetView{Corner: "term"}
 	for _, b := range all {
 		view.Heads = append(view.Heads, b.name)
 	}
@@ -62,7 +63,7 @@ func geometryRows(site *station.Site, all []namedBudget) []budgetRow {
 	}
 	rows := []budgetRow{{Name: "time", Unit: "UTC", Cells: cells(all, func(b *downlink.Budget) string { return clock(b.Time) })}}
 	if zone := site.TimeZone; zone != nil {
-		rows = append(rows, budgetRow{Name: "time at the station", Cells: cells(all, func(b *downlink.Budget) string { return localText(b.Time, zone) })})
+		rows = append(rows, localRow(zone, all[0].budget.Time, all[1].budget.Time, all[2].budget.Time))
 	}
 	return append(rows,
 		budgetRow{Name: "azimuth", Unit: "deg", Cells: deg(func(b *downlink.Budget) unit.Angle { return b.Azimuth })},
@@ -158,7 +159,7 @@ func noiseTable(p *Pass) budgetView {
 	}
 	rows = append(rows, budgetRow{Name: "system noise", Unit: "K", Source: "sum, at the input of the first amplifier", Result: true,
 		Cells: value(all, 1, func(b *downlink.Budget) float64 { return b.SystemNoise.Kelvins() })})
-	view := budgetView{Parts: []budgetPart{{Rows: rows}}}
+	view := budgetView{Corner: "part", Parts: []budgetPart{{Rows: rows}}}
 	for _, b := range all {
 		view.Heads = append(view.Heads, b.name)
 	}

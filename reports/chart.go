@@ -51,8 +51,9 @@ type series struct {
 	values   []float64 // in the unit of the axis times divisor
 	divisor  float64
 	decimals int
-	right    bool // on the second y axis
-	still    bool // a constant: nothing to read at the cursor
+	right    bool   // on the second y axis
+	still    bool   // a constant: nothing to read at the cursor
+	short    string // at the cursor; empty: name
 }
 
 // marshalDrawings returns the drawings as JSON that may stand in a page: markup in
@@ -80,8 +81,8 @@ func points(x []float64, s series, samples []int) json.RawMessage {
 func lineSeries(s series, data json.RawMessage) charts.SingleSeries {
 	one := charts.SingleSeries{
 		Name: s.name, Type: "line", Data: data,
-		ShowSymbol: opts.Bool(false),
-		LineStyle:  &opts.LineStyle{Type: s.dash, Width: 2},
+		Symbol:    "none", // in the legend too, where the dash tells the lines apart
+		LineStyle: &opts.LineStyle{Type: s.dash, Width: 2},
 	}
 	if s.right {
 		one.YAxisIndex = 1

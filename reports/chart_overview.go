@@ -18,7 +18,7 @@ var overviewKinds = []struct {
 	{"closes throughout", "circle", []state{closesThrough}},
 	{"closes in part", "diamond", []state{closesPartly}},
 	{"does not close", "emptyCircle", []state{neverCloses}},
-	{"no radio", "emptyTriangle", []state{noMargin, noRadio}},
+	{"no data link", "emptyTriangle", []state{noMargin, noRadio}},
 }
 
 // drawOverview returns the chart of the index.

@@ -76,15 +76,31 @@ func eventMarks(p *Pass) charts.SingleSeries {
 	data := make([]any, 0, len(symbols))
 	for i, e := range events(p) {
 		data = append(data, map[string]any{
-			"name":   e.name + " " + clock(e.at),
+			"name":   e.name + "\n" + clock(e.at),
 			"value":  []number{{e.elevationDeg, 2}, {e.azimuthDeg, 2}},
 			"symbol": symbols[i],
+			"label":  map[string]any{"position": labelSide(e, i == 1)},
 		})
 	}
 	return charts.SingleSeries{
 		Name: "events", Type: "scatter", CoordSystem: "polar", Data: data, SymbolSize: 11,
-		Label: &opts.Label{Show: opts.Bool(true), Position: "right", Formatter: "{b}"},
+		Label: &opts.Label{Show: opts.Bool(true), Formatter: "{b}"},
 	}
+}
+
+// labelSide keeps the labels apart: those of AOS and LOS outwards, that of the
+// culmination inwards.
+func labelSide(e event, inwards bool) string {
+	if inwards {
+		if e.azimuthDeg > 90 && e.azimuthDeg < 270 {
+			return "top"
+		}
+		return "bottom"
+	}
+	if e.azimuthDeg < 180 {
+		return "right"
+	}
+	return "left"
 }
 
 // skyText describes the track in words.

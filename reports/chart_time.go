@@ -1,6 +1,7 @@
 package reports
 
 import (
+	"cmp"
 	"encoding/json"
 	"math"
 	"time"
@@ -71,7 +72,7 @@ func (fr *frame) draw(fig *timeFigure) drawing {
 		charts.WithLegendOpts(opts.Legend{Show: opts.Bool(len(fig.series) > 1)}),
 	)
 	if fig.right != "" {
-		line.ExtendYAxis(opts.YAxis{Type: "value", Name: fig.right, Scale: opts.Bool(true), Position: "right"})
+		line.ExtendYAxis(opts.YAxis{Type: "value", Name: fig.right, Scale: opts.Bool(true), Position: "right", AlignTicks: opts.Bool(true)})
 	}
 	d := drawing{ID: fig.id, Kind: "time", Axis: &fr.axis}
 	for k, s := range fig.series {
@@ -85,7 +86,7 @@ func (fr *frame) draw(fig *timeFigure) drawing {
 			unit = "km"
 		}
 		if !s.still {
-			d.Reads = append(d.Reads, reading{Series: k, Label: s.name, Unit: unit, Decimals: s.decimals})
+			d.Reads = append(d.Reads, reading{Series: k, Label: cmp.Or(s.short, s.name), Unit: unit, Decimals: s.decimals})
 		}
 	}
 	line.Validate()

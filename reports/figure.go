@@ -2,6 +2,7 @@ package reports
 
 import (
 	"html/template"
+	"slices"
 	"time"
 )
 
@@ -20,9 +21,11 @@ func figures(p *Pass, fr *frame) ([]drawing, []figureView) {
 		drawings = append(drawings, fr.draw(&fig))
 		views = append(views, figureView{fig.id, fig.title, fig.caption, fig.table(p, rows)})
 	}
-	drawings = append(drawings, drawSky(p, fr))
+	// The sky is twice as high as the others: with an odd one after it the columns end
+	// level.
+	last := max(len(views)-1, 0)
 	sky := figureView{"sky", "Track on the sky", skyText(p), skyTable(p, rows)}
-	return drawings, append(views, sky)
+	return slices.Insert(drawings, last, drawSky(p, fr)), slices.Insert(views, last, sky)
 }
 
 // table holds the numbers of the chart, thinned.

@@ -41,7 +41,7 @@ func powerFigure(p *Pass) timeFigure {
 	return timeFigure{
 		id: "power", title: "Received power", quantity: "received power", unit: "dBm",
 		caption: "Received power at the input of the first amplifier, whole carrier, in dBm over UTC.",
-		series:  []series{{name: "received power", dash: solid, values: p.Profile.ReceivedPowerDBm, divisor: 1, decimals: 2}},
+		series:  []series{{name: "received power", short: "power", dash: solid, values: p.Profile.ReceivedPowerDBm, divisor: 1, decimals: 2}},
 	}
 }
 
@@ -67,7 +67,7 @@ func rateFigure(p *Pass) timeFigure {
 		id: "rate", title: "Achievable rate", quantity: "information rate", unit: sc.unit, fromZero: true,
 		caption: "Highest information rate that the link carries with the required margin, in " + sc.unit + " over UTC" + limitText(f) +
 			". Dashed: the rate of mode " + p.Radio.Mode + ".",
-		series: []series{{name: "achievable", dash: solid, values: f.AchievableRateBps, divisor: sc.divisor}},
+		series: []series{{name: "achievable", short: "best rate", dash: solid, values: f.AchievableRateBps, divisor: sc.divisor}},
 	}
 	if rate > 0 {
 		fig.series = append(fig.series, series{name: "mode " + p.Radio.Mode, dash: dashed, values: constant(rate, len(f.Seconds)), divisor: sc.divisor, still: true})
@@ -114,7 +114,7 @@ func dopplerFigure(p *Pass) timeFigure {
 		id: "doppler", title: "Doppler shift", quantity: "Doppler shift", unit: sc.unit,
 		caption: "Doppler shift of the carrier of " + withUnit(p.Radio.Frequency.Hertz(), freqScales) + " in " + sc.unit +
 			" over UTC; positive while the spacecraft approaches.",
-		series: []series{{name: "Doppler shift", dash: solid, values: f.DopplerHz, divisor: sc.divisor}},
+		series: []series{{name: "Doppler shift", short: "Doppler", dash: solid, values: f.DopplerHz, divisor: sc.divisor}},
 	}
 	setDecimals(fig.series)
 	return fig
@@ -128,8 +128,8 @@ func volumeFigure(p *Pass) timeFigure {
 		caption: "Information bytes since AOS in " + sc.unit + " over UTC: at the achievable rate (solid) and in mode " + r.Mode +
 			" while its margin is at least what is required (dashed).",
 		series: []series{
-			{name: "achievable rate", dash: solid, values: r.AchievableBytes, divisor: sc.divisor},
-			{name: "mode " + r.Mode, dash: dashed, values: r.ModeBytes, divisor: sc.divisor},
+			{name: "achievable rate", short: "volume at best rate", dash: solid, values: r.AchievableBytes, divisor: sc.divisor},
+			{name: "mode " + r.Mode, short: "volume in mode", dash: dashed, values: r.ModeBytes, divisor: sc.divisor},
 		},
 	}
 	setDecimals(fig.series)

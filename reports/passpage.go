@@ -19,7 +19,7 @@ type passView struct {
 	Verdict                verdict
 	Link                   *linkView
 	Element                elementView
-	Events                 []eventView
+	Events                 budgetView
 	HasZone                bool
 	Warnings               []Note
 	Figures                []figureView
@@ -42,10 +42,6 @@ type linkView struct {
 }
 
 type elementView struct{ Name, Epoch, Age, From string }
-
-type eventView struct {
-	Name, UTC, Local, Azimuth, Toward, Elevation, Range, Power, Margin string
-}
 
 // passPage renders the page of a pass.
 func passPage(w *writer, i int, p *Pass) ([]byte, error) {
@@ -115,9 +111,7 @@ func newPassView(p *Pass) *passView {
 		"los":  "Still up when the window closes: the pass lasts longer than shown.",
 		"both": "Up during the whole window: the pass begins earlier and ends later than shown.",
 	}[q.Cut.String()]
-	for _, e := range events(p) {
-		v.Events = append(v.Events, eventLine(p, e))
-	}
+	v.Events = eventTable(p)
 	if p.Radio != nil {
 		v.Link = newLinkView(p)
 		v.Budget, v.Noise = budgetTable(p), noiseTable(p)
@@ -141,19 +135,6 @@ func newLinkView(p *Pass) *linkView {
 		l.Closes = append(l.Closes, clock(c.From)+" to "+clock(c.To))
 	}
 	return l
-}
-
-func eventLine(p *Pass, e event) eventView {
-	f := p.Profile
-	v := eventView{
-		Name: e.name, UTC: clock(e.at), Local: localText(e.at, p.Site.TimeZone),
-		Azimuth: fixed(e.azimuthDeg, 1), Toward: compass(e.azimuthDeg), Elevation: fixed(e.elevationDeg, 1),
-		Range: fixed(f.RangeKm[e.sample], 0),
-	}
-	if p.Radio != nil {
-		v.Power, v.Margin = fixed(f.ReceivedPowerDBm[e.sample], 1), fixed(f.MarginDB[e.sample], 1)
-	}
-	return v
 }
 
 // direction writes an azimuth with its point of the compass.

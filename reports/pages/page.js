@@ -61,7 +61,6 @@
 
   function timeLabels(axis, spec) {
     var length = spec.axis.to - spec.axis.from;
-    axis.interval = spec.axis.step;
     axis.axisLabel = {
       hideOverlap: true, showMinLabel: false, showMaxLabel: false,
       formatter: function (s) {
@@ -71,10 +70,11 @@
     };
     axis.nameLocation = 'middle';
     axis.nameGap = 26;
+    if (length > 86400) { axis.name += ', month-day at midnight'; }
   }
 
   function heading(text, side, p) {
-    var t = { text: text, top: 0, padding: 0, textStyle: { fontSize: 12, fontWeight: 'normal', color: p.ink } };
+    var t = { text: text, top: 2, padding: 0, textStyle: { fontSize: 12, fontWeight: 'normal', color: p.ink } };
     t[side] = 0;
     return t;
   }
@@ -92,8 +92,8 @@
     styled(o.xAxis[0], p);
     o.xAxis[0].splitLine = { show: false };
     o.xAxis[0].axisLine.onZero = false;
-    o.legend = { show: legend, left: 0, top: 18, padding: 0, itemWidth: 34, itemGap: 16, textStyle: { color: p.ink, fontSize: 12 } };
-    o.grid = { left: 50, right: o.yAxis[1] ? 50 : 14, top: legend ? 46 : 26, bottom: 44 };
+    o.legend = { show: legend, left: 0, top: 21, padding: 0, itemWidth: 34, itemGap: 16, itemStyle: { opacity: 0 }, textStyle: { color: p.ink, fontSize: 12 } };
+    o.grid = { left: 50, right: o.yAxis[1] ? 50 : 22, top: legend ? 48 : 28, bottom: 44 };
     o.series.forEach(function (s) {
       if (s.markArea) { s.markArea.silent = true; s.markArea.itemStyle = { color: hatching(p.hatch) }; }
       s.silent = true;
@@ -110,11 +110,12 @@
     o.radiusAxis.axisLine.show = false;
     o.radiusAxis.axisTick.show = false;
     o.radiusAxis.axisLabel.color = p.soft;
-    o.polar = { center: ['50%', '54%'], radius: '76%' };
+    o.polar = { center: ['50%', '54%'], radius: '74%' };
     o.legend.left = 0;
-    o.legend.top = 0;
+    o.legend.top = 2;
     o.legend.padding = 0;
     o.legend.itemWidth = 34;
+    o.legend.itemStyle = { opacity: 0 };
     o.legend.textStyle = { color: p.ink, fontSize: 12 };
     o.series.forEach(function (s) {
       s.silent = true;
@@ -125,7 +126,8 @@
         s.label.fontSize = 11;
         s.label.textBorderColor = p.paper;
         s.label.textBorderWidth = 3;
-        s.labelLayout = { moveOverlap: 'shiftY' };
+        s.label.lineHeight = 14;
+        s.itemStyle.opacity = 1;
       }
     });
   }
@@ -137,8 +139,8 @@
     o.yAxis[0].splitLine = { show: true, lineStyle: { color: p.rule } };
     o.yAxis[0].axisLabel.width = window.innerWidth < 600 ? 84 : 160;
     o.yAxis[0].axisLabel.overflow = 'truncate';
-    o.legend = { show: true, left: 0, top: 0, padding: 0, textStyle: { color: p.ink, fontSize: 12 } };
-    o.grid = { left: window.innerWidth < 600 ? 94 : 170, right: 14, top: window.innerWidth < 600 ? 58 : 34, bottom: 44 };
+    o.legend = { show: true, left: 0, top: 2, padding: 0, itemWidth: 12, itemHeight: 11, itemGap: 16, textStyle: { color: p.ink, fontSize: 12 } };
+    o.grid = { left: window.innerWidth < 600 ? 94 : 170, right: 14, top: window.innerWidth < 600 ? 62 : 36, bottom: 44 };
     o.tooltip = {
       show: true, trigger: 'item', renderMode: 'richText', confine: true,
       formatter: function (q) { return spec.names[q.value[2]]; }
@@ -196,6 +198,7 @@
       if (c.spec.kind === 'time') {
         q = c.chart.convertToPixel({ xAxisIndex: 0 }, samples[at]);
         c.hair.style.left = q + 'px';
+        c.hair.style.top = c.spec.option.series.length > 1 ? '48px' : '28px';
       } else if (c.spec.kind === 'sky') {
         q = c.chart.convertToPixel({ seriesIndex: 0 }, c.spec.option.series[0].data[at]);
         c.hair.style.left = q[0] + 'px';
@@ -275,7 +278,7 @@
     });
     window.addEventListener('beforeprint', function () {
       page.classList.add('printing');
-      draw({ width: 336, height: 190, sky: 300, wide: 690 });
+      draw({ width: 336, height: 190, sky: 380, wide: 690 });
     });
     window.addEventListener('afterprint', function () {
       page.classList.remove('printing');
@@ -296,7 +299,7 @@
       var hair = document.createElement('i');
       hair.className = 'hair ' + spec.kind;
       if (spec.kind === 'overview') {
-        box.style.height = (spec.option.yAxis[0].data.length * 28 + (window.innerWidth < 600 ? 104 : 84)) + 'px';
+        box.style.height = (spec.option.yAxis[0].data.length * 28 + (window.innerWidth < 600 ? 112 : 90)) + 'px';
       }
       charts.push({ spec: spec, box: box, hair: hair, chart: null });
     });

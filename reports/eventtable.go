@@ -1,0 +1,54 @@
+package reports
+
+import "time"
+
+// eventTable lays AOS, culmination and LOS side by side.
+func eventTable(p *Pass) budgetView {
+	f, ev := p.Profile, events(p)
+	view := budgetView{Corner: "event"}
+	line := func(name, unit string, write func(event) string) budgetRow {
+		r := budgetRow{Name: name, Unit: unit}
+		for _, e := range ev {
+			r.Cells = append(r.Cells, write(e))
+		}
+		return r
+	}
+	for _, e := range ev {
+		view.Heads = append(view.Heads, e.name)
+	}
+	rows := []budgetRow{line("time", "UTC", func(e event) string { return clock(e.at) })}
+	if zone := p.Site.TimeZone; zone != nil {
+		rows = append(rows, localRow(zone, ev[0].at, ev[1].at, ev[2].at))
+	}
+	rows = append(rows,
+		line("azimuth", "deg", func(e event) string { return fixed(e.azimuthDeg, 1) + " " + compass(e.azimuthDeg) }),
+		line("elevation, geometric", "deg", func(e event) string { return fixed(e.elevationDeg, 1) }),
+		line("slant range", "km", func(e event) string { return fixed(f.RangeKm[e.sample], 0) }),
+	)
+	if p.Radio != nil {
+		rows = append(rows,
+			line("received power", "dBm", func(e event) string { return fixed(f.ReceivedPowerDBm[e.sample], 1) }),
+			line("margin", "dB", func(e event) string { return fixed(f.MarginDB[e.sample], 1) }))
+	}
+	view.Parts = []budgetPart{{Rows: rows}}
+	return view
+}
+
+// localRow writes instants in the station's zone, whose name is the unit where one
+// name serves all.
+func localRow(zone *time.Location, at ...time.Time) budgetRow {
+	r := budgetRow{Name: "time at the station", Unit: at[0].In(zone).Format("MST")}
+	for _, t := range at {
+		if t.In(zone).Format("MST") != r.Unit {
+			r.Unit = ""
+		}
+	}
+	for _, t := range at {
+		text := localText(t, zone)
+		if r.Unit != "" {
+			text = text[:len(text)-len(r.Unit)-1]
+		}
+		r.Cells = append(r.Cells, text)
+	}
+	return r
+}
