@@ -112,7 +112,7 @@ func signed(v float64) string {
 func powerRows(all []namedBudget) []budgetRow {
 	return []budgetRow{
 		{Name: "received power", Unit: "dBm", Source: "sum of the terms, at the input of the first amplifier", Result: true,
-			Cells: value(all, 2, func(b *downlink.Budget) float64 { return b.ReceivedPower.DBm() })},
+			Cells: value(all, 2, func(b *downlink.Budget) float64 { return b.ReceivedPowerDBm })},
 		{Name: "power flux density", Unit: "dB(W/m²)", Source: "whole carrier in free space at the site",
 			Cells: value(all, 2, func(b *downlink.Budget) float64 { return b.PowerFluxDensity })},
 	}
@@ -139,8 +139,7 @@ func dataRows(p *Pass, all []namedBudget) []budgetRow {
 	}
 }
 
-// noiseTable lays the parts of the system noise side by side; no parts where the
-// station's G/T was measured.
+// noiseTable lays the parts of the system noise side by side.
 func noiseTable(p *Pass) budgetView {
 	all := budgetsOf(p.Radio)
 	var rows []budgetRow
@@ -153,9 +152,6 @@ func noiseTable(p *Pass) budgetView {
 			seen[n.Name] = true
 			rows = append(rows, budgetRow{Name: n.Name, Unit: "K", Source: n.Source, Cells: value(all, 1, func(b *downlink.Budget) float64 { return partOf(b, n.Name) })})
 		}
-	}
-	if rows == nil {
-		return budgetView{}
 	}
 	rows = append(rows, budgetRow{Name: "system noise", Unit: "K", Source: "sum, at the input of the first amplifier", Result: true,
 		Cells: value(all, 1, func(b *downlink.Budget) float64 { return b.SystemNoise.Kelvins() })})

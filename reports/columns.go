@@ -62,16 +62,10 @@ func termColumns(f *downlink.Profile) []column {
 	return list
 }
 
-var limitNames = [...]string{
-	downlink.LimitPower:       "power",
-	downlink.LimitBandwidth:   "bandwidth",
-	downlink.LimitTransmitter: "transmitter",
-}
-
-// limitName says in a word what holds the achievable rate.
+// limitName says in a word what holds the achievable rate; empty where there is none.
 func limitName(l downlink.RateLimit) string {
-	if l < 0 || int(l) >= len(limitNames) {
+	if l == downlink.LimitUnknown {
 		return ""
 	}
-	return limitNames[l]
+	return l.String()
 }

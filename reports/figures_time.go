@@ -92,7 +92,7 @@ func limitText(f *downlink.Profile) string {
 	case transmitter:
 		return "; held down in part by the transmitter's highest rate"
 	}
-	return "; the power received decides throughout"
+	return ""
 }
 
 func heightFigure(p *Pass) timeFigure {

@@ -122,7 +122,7 @@ func fillRadio(p *Pass, s shape) {
 		}
 		f.OffBoresightDeg = append(f.OffBoresightDeg, b.OffBoresight.Degrees())
 		f.DopplerHz = append(f.DopplerHz, -f.RangeRateKmS[i]/299792.458*8180e6)
-		f.ReceivedPowerDBm = append(f.ReceivedPowerDBm, b.ReceivedPower.DBm())
+		f.ReceivedPowerDBm = append(f.ReceivedPowerDBm, b.ReceivedPowerDBm)
 		f.FluxDensityDBWM2 = append(f.FluxDensityDBWM2, b.PowerFluxDensity)
 		f.SystemNoiseK = append(f.SystemNoiseK, b.SystemNoise.Kelvins())
 		f.GOverTDBK = append(f.GOverTDBK, float64(b.GOverT))
@@ -182,7 +182,7 @@ func fixtureBudget(f *downlink.Profile, s shape, i int) downlink.Budget {
 		sum += float64(fixtureTerms[k].Sign) * v
 	}
 	sky := 30 + 400/f.ElevationDeg[i]
-	b.ReceivedPower, b.PowerFluxDensity = unit.LevelDBm(sum), sum-150
+	b.ReceivedPowerDBm, b.PowerFluxDensity = sum, sum-150
 	b.NoiseParts = []downlink.NoisePart{
 		{Name: "antenna", Temperature: unit.Temperature(sky), Source: "scenario, clear sky and spill-over in it"},
 		{Name: "feed loss", Temperature: 25.5, Source: "0.4 dB at 290 K"},

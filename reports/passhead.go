@@ -157,7 +157,7 @@ type partJSON struct {
 func budgetHead(at string, b *downlink.Budget) budgetJSON {
 	j := budgetJSON{
 		At: at, UTC: utcText(b.Time), Terms: []termJSON{}, NoiseParts: []partJSON{},
-		ReceivedPower: number{b.ReceivedPower.DBm(), 3}, FluxDensity: number{b.PowerFluxDensity, 3},
+		ReceivedPower: number{b.ReceivedPowerDBm, 3}, FluxDensity: number{b.PowerFluxDensity, 3},
 		SystemNoiseK: number{b.SystemNoise.Kelvins(), 2}, GOverT: number{float64(b.GOverT), 3},
 		CN0: number{float64(b.CN0), 3}, EbN0: number{float64(b.EbN0), 3}, RequiredEbN0: number{float64(b.RequiredEbN0), 3},
 		Margin: number{float64(b.Margin), 3}, MarginOver: number{float64(b.MarginOver), 3},

@@ -24,6 +24,7 @@ type passView struct {
 	Warnings               []Note
 	Figures                []figureView
 	Budget, Noise          budgetView
+	Doubts                 []Note // of single budgets
 	Assumptions, Defaults  []Note
 	CSV, JSON              template.URL
 	Stem                   string
@@ -36,7 +37,7 @@ type linkView struct {
 	Of                                              string
 	Least, Greatest, Required                       string
 	HasMargin                                       bool
-	Strongest                                       string
+	Strongest                                       string // empty: not known
 	ModeVolume, AchievableVolume                    string
 	ModeRate                                        string
 }
@@ -115,6 +116,11 @@ func newPassView(p *Pass) *passView {
 	if p.Radio != nil {
 		v.Link = newLinkView(p)
 		v.Budget, v.Noise = budgetTable(p), noiseTable(p)
+		for _, b := range budgetsOf(p.Radio) {
+			for _, c := range b.budget.Cautions {
+				v.Doubts = append(v.Doubts, Note{About: "at " + b.name, Text: c})
+			}
+		}
 	}
 	return v
 }
@@ -129,7 +135,9 @@ func newLinkView(p *Pass) *linkView {
 		ModeRate:         withUnit(f.DataRate.BitsPerSecond(), rateScales),
 		ModeVolume:       withUnit(f.Volume.ModeBytes, byteScales),
 		AchievableVolume: withUnit(f.Volume.AchievableBytes, byteScales),
-		Strongest:        fixed(greatestOf(f.ReceivedPowerDBm), 1),
+	}
+	if s := greatestOf(f.ReceivedPowerDBm); finite(s) {
+		l.Strongest = fixed(s, 1)
 	}
 	for _, c := range f.Volume.Closes {
 		l.Closes = append(l.Closes, clock(c.From)+" to "+clock(c.To))
