@@ -10,6 +10,7 @@ import (
 // scratch is the working space of one evaluation after the other: a goroutine has
 // its own.
 type scratch struct {
+	geometry     Geometry // here, as a model could keep it and so it would be allocated for each sample
 	terms, noise []float64
 	result       result
 }
@@ -28,9 +29,10 @@ type result struct {
 	pointing                          unit.Angle // off the beam's axis, all errors together
 }
 
-// evaluate is the one evaluator behind Budget and Profile.
-func (l *Link) evaluate(g *Geometry, s *scratch) error {
-	r := &s.result
+// evaluate is the one evaluator behind Budget and Profile; the geometry is the
+// scratch's.
+func (l *Link) evaluate(s *scratch) error {
+	g, r := &s.geometry, &s.result
 	if err := l.fillTerms(g, s); err != nil {
 		return err
 	}

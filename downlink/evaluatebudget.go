@@ -21,7 +21,8 @@ func (l *Link) At(g Geometry) (*Budget, error) {
 		return nil, &unit.RangeError{Quantity: "elevation", Value: g.Elevation.Degrees(), Unit: "deg", Allowed: "-90 to 90 deg"}
 	}
 	s := l.newScratch()
-	if err := l.evaluate(&g, s); err != nil {
+	s.geometry = g
+	if err := l.evaluate(s); err != nil {
 		return nil, err
 	}
 	r := &s.result

@@ -89,8 +89,10 @@ func newProfile(l *Link, n int) *Profile {
 
 // sample evaluates one state into row i.
 func (l *Link) sample(p *Profile, i int, state orbit.State, s *scratch) error {
-	g, rate := l.GeometryOf(state)
-	if err := l.evaluate(&g, s); err != nil {
+	g := &s.geometry
+	var rate unit.Speed
+	*g, rate = l.GeometryOf(state)
+	if err := l.evaluate(s); err != nil {
 		return err
 	}
 	p.AzimuthDeg[i], p.ElevationDeg[i] = g.Azimuth.Degrees(), g.Elevation.Degrees()
