@@ -12,8 +12,12 @@ import (
 type scratch struct {
 	geometry     Geometry // here, as a model could keep it and so it would be allocated for each sample
 	terms, noise []float64
+	rangeDB      float64 // 20 log10 of the range in m
 	result       result
 }
+
+// sphereDB is 10 log10(4π), the spreading loss at 1 m in dB(m²).
+var sphereDB = 10 * math.Log10(4*math.Pi)
 
 func (l *Link) newScratch() *scratch {
 	return &scratch{terms: make([]float64, len(l.terms)), noise: make([]float64, len(l.noise.parts))}
@@ -44,7 +48,7 @@ func (l *Link) evaluate(s *scratch) error {
 		// The conversion keeps a fused multiply-add from changing the sum.
 		received += float64(float64(l.terms[i].Sign) * s.terms[i])
 	}
-	r.fluxDBWM2 = radiated - 30 - float64(SpreadingLoss(g.Range))
+	r.fluxDBWM2 = radiated - 30 - sphereDB - s.rangeDB
 	if err := l.noiseAndRatio(g, s, received); err != nil {
 		return err
 	}
@@ -63,7 +67,8 @@ func (l *Link) fillTerms(g *Geometry, s *scratch) error {
 		}
 		v[l.slots.transmitGain] = float64(gain)
 	}
-	v[l.slots.freeSpace] = 20 * math.Log10(l.waveNumber*g.Range.Metres())
+	s.rangeDB = 20 * math.Log10(g.Range.Metres())
+	v[l.slots.freeSpace] = l.waveNumberDB + s.rangeDB
 	at := l.slots.path
 	for i, m := range l.spec.PathModels {
 		n := l.pathCounts[i]

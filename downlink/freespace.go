@@ -22,5 +22,5 @@ func SpreadingLoss(d unit.Length) unit.DB {
 	if !(d > 0) {
 		return unit.DB(math.NaN())
 	}
-	return unit.DB(10*math.Log10(4*math.Pi) + 20*math.Log10(d.Metres()))
+	return unit.DB(sphereDB + 20*math.Log10(d.Metres()))
 }

@@ -3,7 +3,6 @@ package downlink
 import (
 	"errors"
 	"fmt"
-	"math"
 
 	"slantwise/downlink/modem"
 	"slantwise/orbit"
@@ -30,11 +29,11 @@ type Link struct {
 	terms []TermInfo
 	notes []Note
 
-	base       []float64 // the value of each term that is the same everywhere
-	slots      slots
-	pathCounts []int   // how many terms each path model has
-	eirpTerms  int     // that many first terms make the EIRP toward the station
-	waveNumber float64 // 4π/λ, 1/m
+	base         []float64 // the value of each term that is the same everywhere
+	slots        slots
+	pathCounts   []int   // how many terms each path model has
+	eirpTerms    int     // that many first terms make the EIRP toward the station
+	waveNumberDB float64 // 20 log10(4π/λ), the free-space loss at 1 m
 
 	pattern   *Pattern           // whose gain depends on the angle; nil: it is in base
 	gain      *station.Tabulated // dBi; nil: not known
@@ -55,7 +54,7 @@ func NewLink(spec LinkSpec) (*Link, error) {
 		return nil, err
 	}
 	f := spec.Transmitter.Frequency
-	l.waveNumber = 4 * math.Pi * f.Hertz() / unit.SpeedOfLight
+	l.waveNumberDB = float64(FreeSpaceLoss(unit.Metre, f))
 	if g, ok := spec.Antenna.GainAt(f); ok {
 		l.gain = g
 	}

@@ -36,7 +36,7 @@ func (l *Link) achievable(cn0 float64, usable bool) (float64, RateLimit) {
 	case !usable:
 		return 0, LimitUnusable
 	}
-	rate, limit := math.Pow(10, (cn0-l.caps.needDB)/10), LimitPower
+	rate, limit := math.Exp((cn0-l.caps.needDB)*(math.Ln10/10)), LimitPower // faster than Pow
 	if l.caps.bandwidth < rate {
 		rate, limit = l.caps.bandwidth, LimitBandwidth
 	}

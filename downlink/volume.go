@@ -12,21 +12,37 @@ import (
 // from the last usable sample to the next.
 func (p *Profile) volume() Volume {
 	var v Volume
-	bits := 0.0
-	for i := 1; i < len(p.Seconds); i++ {
-		dt := p.Seconds[i] - p.Seconds[i-1]
-		bits += dt * (p.AchievableRateBps[i-1] + p.AchievableRateBps[i]) / 2
-		from, to, ok := p.closing(i)
-		if !ok {
-			continue
+	bits, seconds, begun := 0.0, 0.0, math.NaN()
+	end := func(at float64) {
+		if at > begun { // never where nothing has begun
+			seconds += at - begun
+			v.Closes = append(v.Closes, Interval{p.at(begun), p.at(at)})
 		}
-		v.Closes = p.appendInterval(v.Closes, p.Seconds[i-1]+from*dt, p.Seconds[i-1]+to*dt)
+		begun = math.NaN()
 	}
+	for i := 1; i < len(p.Seconds); i++ {
+		a, b := p.Seconds[i-1], p.Seconds[i]
+		bits += (b - a) * (p.AchievableRateBps[i-1] + p.AchievableRateBps[i]) / 2
+		before, after := p.MarginOverDB[i-1], p.MarginOverDB[i]
+		usable := p.Usable[i-1] && p.Usable[i]
+		switch {
+		case usable && before >= 0 && after >= 0:
+			if math.IsNaN(begun) {
+				begun = a
+			}
+		case usable && before >= 0 && after < 0:
+			if math.IsNaN(begun) {
+				begun = a
+			}
+			end(a + (b-a)*before/(before-after))
+		case usable && before < 0 && after >= 0:
+			begun = a + (b-a)*before/(before-after)
+		default: // NaN too: without a data rate nothing closes
+			end(a)
+		}
+	}
+	end(p.Seconds[len(p.Seconds)-1])
 	v.AchievableBytes = bits / 8
-	seconds := 0.0
-	for _, c := range v.Closes {
-		seconds += c.To.Sub(c.From).Seconds()
-	}
 	v.ModeBytes = float64(p.DataRate) * seconds / 8
 	if p.DataRate == 0 {
 		v.ModeBytes = math.NaN()
@@ -34,33 +50,7 @@ func (p *Profile) volume() Volume {
 	return v
 }
 
-// closing returns the part of the step before sample i, from 0 to 1, over which the
-// link closes; ok is false when it is none of it.
-func (p *Profile) closing(i int) (from, to float64, ok bool) {
-	if !p.Usable[i-1] || !p.Usable[i] {
-		return 0, 0, false
-	}
-	a, b := p.MarginOverDB[i-1], p.MarginOverDB[i]
-	switch {
-	case a >= 0 && b >= 0:
-		return 0, 1, true
-	case a >= 0 && b < 0:
-		return 0, a / (a - b), true
-	case a < 0 && b >= 0:
-		return a / (a - b), 1, true
-	}
-	return 0, 0, false // NaN too: without a data rate nothing closes
-}
-
-// appendInterval adds a span, joined to the one before where they touch.
-func (p *Profile) appendInterval(list []Interval, from, to float64) []Interval {
-	at := func(s float64) time.Time { return p.Start.Add(time.Duration(math.Round(s * 1e9))) }
-	if n := len(list); n > 0 && list[n-1].To.Equal(at(from)) {
-		list[n-1].To = at(to)
-		return list
-	}
-	if !at(to).After(at(from)) {
-		return list
-	}
-	return append(list, Interval{at(from), at(to)})
+// at returns the instant s seconds after the start, to the nanosecond.
+func (p *Profile) at(s float64) time.Time {
+	return p.Start.Add(time.Duration(math.Round(s * 1e9)))
 }
