@@ -6,6 +6,7 @@ import (
 	"fmt"
 	"math"
 	"os"
+	"slices"
 	"strconv"
 	"strings"
 	"testing"
@@ -44,7 +45,8 @@ func writtenTLE(t *testing.T, sets []orbit.Elements) string {
 
 // mended returns the verification file with right checksums: three of its sets were
 // changed by hand to provoke errors, and five of their lines have the checksum of
-// before.
+// before. Of the three, 33334 is left out: its mean motion of 0.00001 rev/day is no
+// orbit that SGP4 knows (TestImpossibleMotion).
 func mended(t *testing.T) string {
 	t.Helper()
 	raw, err := os.ReadFile("testdata/verification.tle")
@@ -52,12 +54,13 @@ func mended(t *testing.T) string {
 		t.Fatal(err)
 	}
 	lines := strings.Split(strings.TrimRight(string(raw), "\n"), "\n")
-	for i, l := range lines {
-		if l[0] != '#' {
-			lines[i] = fmt.Sprintf("%s%d", l[:68], checksum(l))
+	var kept []string
+	for _, l := range lines {
+		if l[0] != '#' && !strings.Contains(l, " 33334") {
+			kept = append(kept, fmt.Sprintf("%s%d", l[:68], checksum(l)))
 		}
 	}
-	return strings.Join(lines, "\n") + "\n"
+	return strings.Join(kept, "\n") + "\n"
 }
 
 func TestVerificationChecksums(t *testing.T) {
@@ -78,13 +81,13 @@ func TestVerificationChecksums(t *testing.T) {
 	}
 }
 
-// TestVerificationRoundTrip writes the 33 published sets and compares the text with
+// TestVerificationRoundTrip writes the published sets that are possible and compares the text with
 // what was read; the two lines that are not canonical are stated.
 func TestVerificationRoundTrip(t *testing.T) {
 	text := mended(t)
 	sets := mustRead(t, text)
-	if len(sets) != 33 {
-		t.Fatalf("%d sets, want 33", len(sets))
+	if len(sets) != 32 {
+		t.Fatalf("%d sets, want 32", len(sets))
 	}
 	text = strings.NewReplacer(
 		// A blank ephemeris type becomes 0, which adds nothing to the checksum.
@@ -92,9 +95,8 @@ func TestVerificationRoundTrip(t *testing.T) {
 		// A B* of zero is written +0 (as in the other sets), one minus less.
 		"00000-0  00000-0 0  6847", "00000-0  00000+0 0  6846",
 	).Replace(text)
-	want := text[strings.Index(text, "\n1 ")+1:]
-	if got := writtenTLE(t, sets); got != want {
-		t.Errorf("written text differs\n got\n%s\nwant\n%s", got, want)
+	if got := writtenTLE(t, sets); got != text {
+		t.Errorf("written text differs\n got\n%s\nwant\n%s", got, text)
 	}
 }
 
@@ -112,7 +114,7 @@ func TestAgainstReferenceLibrary(t *testing.T) {
 	if err != nil {
 		t.Fatal(err)
 	}
-	rows = rows[1:]
+	rows = slices.DeleteFunc(rows[1:], func(row []string) bool { return row[0] == "33334" })
 	if len(rows) != len(sets) {
 		t.Fatalf("%d rows for %d sets", len(rows), len(sets))
 	}

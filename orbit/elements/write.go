@@ -4,6 +4,7 @@ import (
 	"errors"
 	"fmt"
 	"io"
+	"slices"
 	"strings"
 	"time"
 
@@ -51,8 +52,14 @@ func writable(el orbit.Elements, f Format) error {
 	if err := el.Validate(); err != nil {
 		errs = append(errs, fail(strings.ReplaceAll(err.Error(), "\n", "; ")))
 	}
+	if el.ElementSetNo < 0 || el.RevolutionAtEpoch < 0 {
+		errs = append(errs, fail("the element set number or the revolution number is negative"))
+	}
+	if !slices.Contains([]string{"", "U", "C", "S"}, el.Classification) {
+		errs = append(errs, fail(fmt.Sprintf("the classification %q is not U, C, S or empty", el.Classification)))
+	}
 	for _, t := range []struct{ what, text string }{
-		{"name", el.Name}, {"international designator", el.InternationalDesignator}, {"classification", el.Classification},
+		{"name", el.Name}, {"international designator", el.InternationalDesignator},
 	} {
 		if r, found := unseen(t.text); found {
 			errs = append(errs, fail(fmt.Sprintf("the %s holds the invisible character U+%04X", t.what, r)))
