@@ -27,6 +27,9 @@ var versionLine = regexp.MustCompile(`^\s*CCSDS_([A-Z]+)_VERS\s*=`)
 // the first line that can only belong to one of them.
 func detect(text string) textKind {
 	first := strings.TrimLeft(text, " \t\r\n")
+	if named(first) {
+		return kindTLE
+	}
 	switch first[0] {
 	case '<':
 		return kindXML
@@ -45,6 +48,15 @@ func detect(text string) textKind {
 		header = false
 	}
 	return kindUnknown
+}
+
+// named tells whether the text begins with any line and a line 1 below it: then the
+// first line is a name, whatever it looks like. A comma tells a CSV row from a line 1.
+func named(text string) bool {
+	_, rest, _ := strings.Cut(text, "\n")
+	second, _, _ := strings.Cut(strings.TrimLeft(rest, " \t\r\n"), "\n")
+	second = strings.TrimRight(second, " \t\r")
+	return tleKind(second) == lineOne && dataLine.MatchString(second) && !strings.Contains(second, ",")
 }
 
 func lineKind(line string, header bool) textKind {

@@ -18,6 +18,11 @@ func nearest(s string, candidates []string, n int) []string {
 	var found []scored
 	want := strings.ToLower(s)
 	for _, c := range candidates {
+		// The distance is at least the difference of the lengths; what this rules out
+		// need not be computed, which matters when a text of megabytes stands for a name.
+		if long, short := max(len(want), len(c)), min(len(want), len(c)); 2*short < long {
+			continue
+		}
 		d := levenshtein.ComputeDistance(want, strings.ToLower(c))
 		if 2*d <= max(len(want), len(c)) {
 			found = append(found, scored{c, d})

@@ -10,7 +10,6 @@ import (
 // readCSV reads a header row of keywords and a set a row.
 func readCSV(text string, rep *report) []record {
 	r := csv.NewReader(strings.NewReader(text))
-	r.Comment = '#'
 	r.TrimLeadingSpace = true
 	header, err := r.Read()
 	if err != nil {

@@ -70,42 +70,6 @@ func (r *report) valid(el *orbit.Elements, line int) bool {
 	return true
 }
 
-// tally counts keywords; a file of thousands of sets gets one warning, not one a set.
-type tally struct {
-	order []string
-	line  map[string]int // where a keyword occurred first
-}
-
-func (t *tally) add(key string, line int) {
-	if _, known := t.line[key]; known {
-		return
-	}
-	if t.line == nil {
-		t.line = map[string]int{}
-	}
-	t.order = append(t.order, key)
-	t.line[key] = line
-}
-
-// warnOfKeywords turns the tallies into warnings.
-func (r *report) warnOfKeywords() {
-	if len(r.passed.order) > 0 {
-		r.warn(r.passed.line[r.passed.order[0]], "passed over, since SGP4 does not use it: "+strings.Join(r.passed.order, ", "))
-	}
-	if len(r.unknown.order) > 0 {
-		said := slices.Clone(r.unknown.order)
-		for i, key := range said {
-			if near := nearest(key, keywordNames(), 1); len(near) > 0 {
-				said[i] += fmt.Sprintf(" (%s?)", near[0])
-			}
-		}
-		r.warn(r.unknown.line[r.unknown.order[0]], "no keyword of an OMM, passed over: "+strings.Join(said, ", "))
-	}
-	if len(r.assumed.order) > 0 {
-		r.warn(0, "not given, assumed: "+strings.Join(r.assumed.order, ", "))
-	}
-}
-
 // Label names a set for people: its name and catalogue number.
 func Label(el orbit.Elements) string {
 	number := fmt.Sprintf("%05d", el.CatalogNumber)
