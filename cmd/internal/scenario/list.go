@@ -16,7 +16,7 @@ func (o object) items(key, of string, most int) []*tree.Node {
 	case n.Kind != tree.List:
 		o.fault(n, key, "%s is not allowed; it must be a list of %s", "", show(n), of)
 	case len(n.Items) == 0:
-		o.fault(n, key, "the list is empty", "give at least one of %s or remove the key", of)
+		o.fault(n, key, "the list is empty", "give %s or remove the key", of)
 	case len(n.Items) > most:
 		o.fault(n, key, "the list has %d items; it may have at most %d", "", len(n.Items), most)
 	default:

@@ -47,7 +47,12 @@ func (s span) allowed() string {
 	return low + figure(s.low) + " and " + high + figure(s.high) + unit
 }
 
-func figure(v float64) string { return strconv.FormatFloat(v, 'g', -1, 64) }
+func figure(v float64) string {
+	if math.Abs(v) < 1e9 {
+		return strconv.FormatFloat(v, 'f', -1, 64)
+	}
+	return strconv.FormatFloat(v, 'g', -1, 64)
+}
 
 var plainNumber = regexp.MustCompile(`^[-+]?([0-9]+(_[0-9]+)*(\.([0-9]+(_[0-9]+)*)?)?|\.[0-9]+)([eE][-+]?[0-9]+)?$`)
 
@@ -109,7 +114,7 @@ func (o object) notNumber(n *tree.Node, name string, in span) {
 	text := strings.TrimSpace(n.Text)
 	next := "give the number alone"
 	switch bare := strings.ToLower(strings.Trim(text, "+-.")); {
-	case bare == "nan" || bare == "inf" || bare == "infinity":
+	case bare == "nan" || bare == "inf" || bare == "infinity" || plainNumber.MatchString(text) && math.IsInf(parsePlain(text), 0):
 		next = "only finite numbers are"
 	case strings.ContainsAny(text, "−–—‐‑‒﹣－"):
 		next = "it holds a dash that is no minus sign, " + dashName(text) + ": write the plain -"

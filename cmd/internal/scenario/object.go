@@ -24,13 +24,14 @@ type reader struct {
 type object struct {
 	r     *reader
 	node  *tree.Node
-	path  string // key path with a dot at its end; empty at the top
-	about string // what the group is, "station Skerry Point", for notes
+	path  string          // key path with a dot at its end; empty at the top
+	about string          // what the group is, "station Skerry Point", for notes
+	meant map[string]bool // known keys that an unknown one was probably meant to be
 }
 
 // object checks that node is a group of known keys, each once.
 func (r *reader) object(node *tree.Node, path string, known []string) object {
-	o := object{r: r, node: node}
+	o := object{r: r, node: node, meant: map[string]bool{}}
 	if path != "" {
 		o.path = path + "."
 	}
@@ -58,11 +59,15 @@ func (r *reader) object(node *tree.Node, path string, known []string) object {
 
 func (o object) unknown(e tree.Entry, known []string) {
 	at := &tree.Node{Line: e.Line}
-	if near := nearest.Names(e.Key, known, 1); len(near) > 0 {
+	switch near := nearest.Names(e.Key, known, 1); {
+	case len(near) > 0:
+		o.meant[near[0]] = true
 		o.fault(at, e.Key, "the key is not known", "did you mean %s?", near[0])
-		return
+	case len(known) == 0:
+		o.fault(at, e.Key, "the key is not known", "no key is taken here yet, remove it")
+	default:
+		o.fault(at, e.Key, "the key is not known", "it must be one of %s", list(known))
 	}
-	o.fault(at, e.Key, "the key is not known", "it must be one of %s", list(known))
 }
 
 // fault adds a fault at a key of the group. The arguments fill problem and next
@@ -139,7 +144,7 @@ func (o object) present(keys ...string) []string {
 
 // missing adds a fault for a key that must be there.
 func (o object) missing(key, must string) {
-	if o.node != nil { // otherwise there is a fault for the group already
+	if o.node != nil && !o.meant[key] { // otherwise there is a fault already
 		o.fault(o.node, key, "the key is missing", "give %s", must)
 	}
 }

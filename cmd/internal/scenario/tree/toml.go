@@ -4,6 +4,7 @@ import (
 	"errors"
 	"fmt"
 	"sort"
+	"strings"
 
 	"github.com/pelletier/go-toml/v2"
 	"github.com/pelletier/go-toml/v2/unstable"
@@ -14,7 +15,7 @@ func parseTOML(text []byte) (*Node, error) {
 	// keys that stand twice, tables that are defined again.
 	var whole map[string]any
 	if err := toml.Unmarshal(text, &whole); err != nil {
-		out := &SyntaxError{Text: "this is not TOML: " + err.Error()}
+		out := &SyntaxError{Text: "this is not TOML: " + strings.TrimPrefix(err.Error(), "toml: ")}
 		var de *toml.DecodeError
 		if errors.As(err, &de) {
 			out.Line, _ = de.Position()
