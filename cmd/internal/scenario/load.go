@@ -28,6 +28,11 @@ func load(src *source, req Request) (*Scenario, error) {
 		}
 		return nil, f
 	}
+	return build(root, src, req)
+}
+
+// build turns the tree of a scenario into domain values.
+func build(root *tree.Node, src *source, req Request) (*Scenario, error) {
 	r := &reader{place: src.label, src: src, need: req.Need}
 	r.override(root, req.Flags)
 	s := r.scenario(root)

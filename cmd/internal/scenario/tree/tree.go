@@ -79,7 +79,7 @@ const (
 // an endless number of values.
 const (
 	maxDepth = 64
-	maxNodes = 2_000_000
+	maxNodes = 1_000_000
 )
 
 // Parse reads a text. Its top must be a group of keys. The error is a *SyntaxError.

@@ -1,0 +1,151 @@
+package scenario_test
+
+import (
+	"reflect"
+	"testing"
+	"time"
+
+	"slantwise/cmd/internal/scenario"
+	"slantwise/downlink"
+	"slantwise/orbit/elements"
+	"slantwise/orbit/unit"
+	"slantwise/station"
+)
+
+func loadGood(t *testing.T, file string) *scenario.Scenario {
+	t.Helper()
+	s, err := scenario.Load(scenario.Request{Path: file})
+	if err != nil {
+		t.Fatal(err)
+	}
+	return s
+}
+
+// TestEverything holds the values to those that stand in the file.
+func TestEverything(t *testing.T) {
+	s := loadGood(t, "testdata/good/everything.yaml")
+	craft, site := s.Spacecraft[0], s.Stations[0].Site
+	x, uhf := craft.Transmitters[0], s.Spacecraft[1].Transmitters[0]
+	dish, measured, single, roof := s.Stations[0].Antennas[0], s.Stations[0].Antennas[1], s.Stations[0].Antennas[2], s.Stations[0].Antennas[3]
+	back, eirp := unit.DB(-12), unit.LevelDBW(-6)
+	for _, tt := range []struct {
+		what      string
+		got, want any
+	}{
+		{"start", s.Window.Start, time.Date(2026, 9, 15, 0, 0, 0, 0, time.UTC)},
+		{"length", s.Window.Length(), 12*time.Hour + 30*time.Minute},
+		{"UT1-UTC", s.Earth.UT1MinusUTC, -125 * time.Millisecond},
+		{"polar motion y", s.Earth.PolarMotionY, 0.5 * unit.Arcsecond},
+		{"choice", s.Choice, elements.Nearest},
+		{"horizon", s.Horizon, station.Apparent},
+		{"sets", len(s.Sets), 4},
+		{"catalogue number without quotes", craft.Elements.CatalogNumber, 99001},
+		{"set by name", s.Spacecraft[1].Elements.CatalogNumber, 99002},
+		{"frequency", x.Frequency, 8180 * unit.Megahertz},
+		{"back lobe", x.Pattern, downlink.Pattern{Kind: downlink.CosinePower, PeakGain: 6, Exponent: 2, BackLobe: &back}},
+		{"attitude", x.Attitude, downlink.AttitudeNadir},
+		{"underscores", x.Modes[1].SymbolRate, unit.Frequency(1e6)},
+		{"own threshold", *x.Modes[1].RequiredEbN0, unit.DB(4.5)},
+		{"roll-off", *x.Modes[0].RollOff, 0.5},
+		{"highest rate", x.HighestRate, unit.BitRate(1.2e7)},
+		{"allotted bandwidth", x.AllottedBandwidth, 60 * unit.Megahertz},
+		{"extra loss", x.ExtraLosses, []downlink.Loss{{Name: "spacecraft pointing", Loss: 0.5}}},
+		{"EIRP", *craft.Transmitters[1].EIRP, eirp},
+		{"tilt", *craft.Transmitters[1].Polarization.Tilt, 45 * unit.Degree},
+		{"power", uhf.Power, unit.LevelDBm(30)},
+		{"table", uhf.Pattern.Table[1], downlink.PatternPoint{OffBoresight: 90 * unit.Degree, Gain: -1}},
+		{"probability", uhf.AttitudeProbability, 0.5},
+		{"vertical", *uhf.Polarization.Tilt, 90 * unit.Degree},
+		{"latitude", site.Latitude, 58.4 * unit.Degree},
+		{"longitude", site.Longitude, -6.1 * unit.Degree},
+		{"geoid", site.GeoidHeight, 55.5 * unit.Metre},
+		{"zone", site.TimeZone.String(), "Europe/London"},
+		{"merge gap", site.MergeGap, 7500 * time.Millisecond},
+		{"mask kind", site.Mask.Kind(), station.Apparent},
+		{"mask", site.Mask.Points()[1], station.MaskPoint{Azimuth: 90 * unit.Degree, Elevation: 6.5 * unit.Degree}},
+		{"mask file", len(s.Stations[1].Site.Mask.Points()), 2},
+		{"no antennas", len(s.Stations[1].Antennas), 0},
+		{"surface", dish.SurfaceRMS, 0.5 * unit.Millimetre},
+		{"beamwidth factor", dish.BeamwidthFactor, 65 * unit.Degree},
+		{"band", dish.Bands[1], station.Band{Low: 8025 * unit.Megahertz, High: 8400 * unit.Megahertz}},
+		{"dissipative", dish.ExtraLosses, []station.Loss{{Name: "radome", Loss: 0.25, Dissipative: true}}},
+		{"passive stage", dish.Noise.Chain[1], station.Stage{Name: "cable", Gain: -6}},
+		{"measurement", *measured.Measurement, station.Measurement{Date: "2026-02-14", Weather: "clear"}},
+		{"G/T elevation", *single.GOverTElevation, 30 * unit.Degree},
+		{"boresight", roof.Boresight, station.Direction{Azimuth: 10 * unit.Degree, Elevation: 90 * unit.Degree}},
+	} {
+		if !reflect.DeepEqual(tt.got, tt.want) {
+			t.Errorf("%s: got %v, want %v", tt.what, tt.got, tt.want)
+		}
+	}
+}
+
+// TestNotationsAgree reads the same scenario as YAML, TOML and JSON.
+func TestNotationsAgree(t *testing.T) {
+	want := loadGood(t, "testdata/good/everything.yaml")
+	for _, file := range []string{"testdata/good/everything.toml", "testdata/good/everything.json"} {
+		got := loadGood(t, file)
+		got.Label = want.Label
+		if !reflect.DeepEqual(got, want) {
+			t.Errorf("%s differs from everything.yaml:\n got %+v\nwant %+v", file, got, want)
+		}
+	}
+}
+
+// TestSpacecraftLeftOut takes every element set, names unchanged, no transmitter.
+func TestSpacecraftLeftOut(t *testing.T) {
+	s := loadGood(t, "testdata/good/no-spacecraft.yaml")
+	var names []string
+	for _, c := range s.Spacecraft {
+		names = append(names, c.Name)
+		if len(c.Transmitters) != 0 || c.Elements.CatalogNumber == 0 {
+			t.Errorf("%s: got %d transmitters and catalogue number %d", c.Name, len(c.Transmitters), c.Elements.CatalogNumber)
+		}
+	}
+	if want := []string{"Wagtail 1", "Pipit 2", "Dunlin 1", "Fulmar 1"}; !reflect.DeepEqual(names, want) {
+		t.Errorf("names %q, want %q", names, want)
+	}
+}
+
+// TestStatedGeometry needs no element file, window, element set or attitude.
+func TestStatedGeometry(t *testing.T) {
+	s, err := scenario.Load(scenario.Request{Path: "testdata/good/stated-geometry.yaml", Need: scenario.NeedRadio})
+	if err != nil {
+		t.Fatal(err)
+	}
+	if got := s.Spacecraft[0].Transmitters[0].Attitude; got != downlink.AttitudeUnstated {
+		t.Errorf("attitude %v, want unstated", got)
+	}
+	if _, err := scenario.Load(scenario.Request{Path: "testdata/good/stated-geometry.yaml"}); err == nil {
+		t.Error("the same file was accepted for orbits, without element files")
+	}
+}
+
+func TestDemo(t *testing.T) {
+	t.Chdir(t.TempDir())
+	s, err := scenario.Load(scenario.Request{})
+	if err != nil {
+		t.Fatal(err)
+	}
+	if !s.Demo || len(s.Warnings) != 0 {
+		t.Errorf("demo %v with warnings %v, want the demo without warnings", s.Demo, s.Warnings)
+	}
+}
+
+func TestStart(t *testing.T) {
+	const awkward = "o'clock: #1.tle"
+	text, sets, err := scenario.Start(awkward)
+	if err != nil {
+		t.Fatal(err)
+	}
+	t.Chdir(t.TempDir())
+	writeFile(t, scenario.DefaultFile, text)
+	writeFile(t, awkward, sets)
+	s, err := scenario.Load(scenario.Request{})
+	if err != nil {
+		t.Fatal(err)
+	}
+	if s.Demo || s.Label != scenario.DefaultFile || len(s.Warnings) != 0 {
+		t.Errorf("read %q (demo %v) with warnings %v", s.Label, s.Demo, s.Warnings)
+	}
+}
