@@ -25,7 +25,7 @@ their age, warnings, and every default that was taken.`,
 		Args: noArgs,
 		RunE: func(*cobra.Command, []string) error { return runCheck(env, f) },
 	}
-	addFormat(cmd.Flags(), &f)
+	addFormat(cmd, &f)
 	return cmd
 }
 

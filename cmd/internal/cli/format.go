@@ -3,7 +3,7 @@ package cli
 import (
 	"fmt"
 
-	"github.com/spf13/pflag"
+	"github.com/spf13/cobra"
 )
 
 // format is how a result is written.
@@ -33,7 +33,11 @@ func (f *format) Set(s string) error {
 }
 
 // addFormat adds the flag --format, table by default.
-func addFormat(fs *pflag.FlagSet, f *format) {
+func addFormat(cmd *cobra.Command, f *format) {
 	*f = formatTable
-	fs.Var(f, "format", "table, csv or json")
+	cmd.Flags().Var(f, "format", "table, csv or json")
+	words := []string{string(formatTable), string(formatCSV), string(formatJSON)}
+	if err := cmd.RegisterFlagCompletionFunc("format", cobra.FixedCompletions(words, cobra.ShellCompDirectiveNoFileComp)); err != nil {
+		panic(err) // the flag was added just now
+	}
 }
