@@ -44,6 +44,7 @@ Results go to stdout, words for people to stderr. Exit codes:
 	addScenarioFlags(root, env)
 	root.AddCommand(
 		newCheck(env),
+		newElements(env),
 		newNew(env),
 	)
 	markStart(root, env)
