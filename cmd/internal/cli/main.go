@@ -41,8 +41,17 @@ const patience = 500 * time.Millisecond
 func run(ctx context.Context, args []string, env *Env) int {
 	root := newRoot(env)
 	root.SetArgs(args)
+	help := &watchedWriter{to: env.Out}
+	root.SetOut(help)
 	done := make(chan error, 1)
-	go func() { done <- root.ExecuteContext(ctx) }()
+	go func() {
+		err := root.ExecuteContext(ctx)
+		if help.err != nil {
+			env.started = true // the command line was right; what failed is the writing
+			err = help.err
+		}
+		done <- err
+	}()
 	var err error
 	select {
 	case err = <-done:
@@ -72,4 +81,20 @@ func exitCode(env *Env, err error) int {
 		return ExitInput
 	}
 	return ExitFailure
+}
+
+// watchedWriter keeps the first error of a writer; help and version are written by
+// code that drops it.
+type watchedWriter struct {
+	to  io.Writer
+	err error
+}
+
+// Write passes p on.
+func (w *watchedWriter) Write(p []byte) (int, error) {
+	n, err := w.to.Write(p)
+	if err != nil && w.err == nil {
+		w.err = fmt.Errorf("write the help: %w", err)
+	}
+	return n, err
 }

@@ -36,6 +36,10 @@ func parseYAML(text []byte) (*Node, error) {
 
 var yamlLine = regexp.MustCompile(`^line (\d+): `)
 
+// countsFromZero are the errors of the library's parser, which count lines from 0;
+// those of its scanner count from 1.
+var countsFromZero = regexp.MustCompile(`^did not find expected (key|node content|'-' indicator|',' or '[\]}]'|<document start>)`)
+
 // yamlError brings the library's error into a *SyntaxError.
 func yamlError(err error) error {
 	text := strings.TrimPrefix(err.Error(), "yaml: ")
@@ -43,6 +47,9 @@ func yamlError(err error) error {
 	if m := yamlLine.FindStringSubmatch(text); m != nil {
 		out.Line, _ = strconv.Atoi(m[1]) // digits by the pattern; 0 where they are too many
 		text = text[len(m[0]):]
+		if countsFromZero.MatchString(text) {
+			out.Line++
+		}
 	}
 	out.Text = "this is not YAML: " + text
 	return out
