@@ -35,3 +35,36 @@ func (k *bracket) put(t, f float64) {
 	}
 	k.kept = 1
 }
+
+// secant narrows down the zero of a smooth, nearly linear function between two points
+// of different sign: by the secant through the last two points, or by halving where
+// that leads out of the bracket.
+type secant struct {
+	lo, hi float64 // s, the bracket
+	low    bool    // the function is negative at lo
+	t0, t1 float64 // s, the last two points
+	f0, f1 float64 // their values
+}
+
+func newSecant(a, fa, b, fb float64) secant {
+	return secant{lo: a, hi: b, low: fa < 0, t0: a, f0: fa, t1: b, f1: fb}
+}
+
+// next returns the next point to try, inside the bracket.
+func (k *secant) next() float64 {
+	t := k.t1 - k.f1*(k.t1-k.t0)/(k.f1-k.f0)
+	if !(t >= k.lo && t <= k.hi) {
+		return (k.lo + k.hi) / 2
+	}
+	return t
+}
+
+// put tells the value at the point that was tried.
+func (k *secant) put(t, f float64) {
+	if (f < 0) == k.low {
+		k.lo = t
+	} else {
+		k.hi = t
+	}
+	k.t0, k.f0, k.t1, k.f1 = k.t1, k.f1, t, f
+}

@@ -1,35 +1,32 @@
 package pass
 
-import (
-	"math"
+import "math"
 
-	"slantwise/orbit"
-)
-
-// arc is an uninterrupted time above the skyline, in s.
-type arc struct{ from, to float64 }
+// arc is an uninterrupted time above the skyline, from sight to sight.
+type arc struct{ from, to sight }
 
 // finder finds passes; it owns the memory that it uses again from site to site.
 type finder struct {
-	track   track
-	clock   clock
-	arcs    []arc
-	risings []float64
+	track track
+	clock clock
+	arcs  []arc
+	scene scene
 }
 
 // find appends the passes over one site to records, by rising AOS.
 func (f *finder) find(k *skyline, records []record) []record {
-	s := &scene{track: &f.track, frame: k.frame, ground: k.frame.Origin.Norm(), out: f.risings[:0]}
+	s := &f.scene
+	s.track, s.frame, s.ground = &f.track, k.frame, k.frame.Origin.Norm()
+	s.out = s.out[:0]
 	above := s.level(math.Sin(k.low))
-	f.arcs = pair(f.arcs[:0], above, s.out, f.track.from, f.track.to)
+	start, end := s.see(&s.nodes[0]), s.see(&s.nodes[len(s.nodes)-1])
+	f.arcs = pair(f.arcs[:0], above, s.out, &start, &end)
 	if !k.level() {
 		f.arcs = s.cutBySkyline(k, f.arcs)
 	}
-	f.risings = s.out
-	arcs := f.joined(k)
-	for _, a := range arcs {
-		r, ok := s.contact(a, f.clock)
-		if ok {
+	f.join(k)
+	for i := range f.arcs {
+		if r, ok := s.contact(&f.arcs[i], k, f.clock); ok {
 			records = append(records, r)
 		}
 	}
@@ -37,16 +34,16 @@ func (f *finder) find(k *skyline, records []record) []record {
 }
 
 // pair makes arcs of crossings.
-func pair(arcs []arc, above bool, crossings []float64, from, to float64) []arc {
-	start := from
-	for _, t := range crossings {
+func pair(arcs []arc, above bool, crossings []sight, start, end *sight) []arc {
+	from := start
+	for i := range crossings {
 		if above {
-			arcs = append(arcs, arc{start, t})
+			arcs = append(arcs, arc{*from, crossings[i]})
 		}
-		above, start = !above, t
+		above, from = !above, &crossings[i]
 	}
 	if above {
-		arcs = append(arcs, arc{start, to})
+		arcs = append(arcs, arc{*from, *end})
 	}
 	return arcs
 }
@@ -55,26 +52,24 @@ func pair(arcs []arc, above bool, crossings []float64, from, to float64) []arc {
 // its higher parts.
 func (s *scene) cutBySkyline(k *skyline, arcs []arc) []arc {
 	var cut []arc
-	for _, whole := range arcs {
+	for n := range arcs {
+		whole := &arcs[n]
 		s.out = s.out[:0]
-		a := s.aim(k, whole.from)
+		a := s.aim(k, whole.from.t)
 		above := a.above >= 0
-		i := s.stretchAt(whole.from)
-		for a.t < whole.to {
-			b := s.aim(k, math.Min(s.nodes[i+1].t, whole.to))
+		for i := s.stretchAt(whole.from.t); a.t < whole.to.t; i++ {
+			b := s.aim(k, min(s.nodes[i+1].t, whole.to.t))
 			s.unveil(k, &a, &b, &s.stretches[i])
 			a = b
-			i++
 		}
-		cut = pair(cut, above, s.out, whole.from, whole.to)
+		cut = pair(cut, above, s.out, &whole.from, &whole.to)
 	}
 	return cut
 }
 
 // stretchAt returns the index of the stretch that holds t.
 func (k *track) stretchAt(t float64) int {
-	step := k.nodes[1].t - k.nodes[0].t
-	i := min(max(int((t-k.from)/step), 0), len(k.stretches)-1)
+	i := min(max(int((t-k.from)*k.rate), 0), len(k.stretches)-1)
 	for i > 0 && k.nodes[i].t > t {
 		i--
 	}
@@ -84,59 +79,65 @@ func (k *track) stretchAt(t float64) int {
 	return i
 }
 
-// joined merges arcs whose gap, in the milliseconds that are printed, is at most the
+// join merges arcs whose gap, in the milliseconds that are printed, is at most the
 // site's merge gap.
-func (f *finder) joined(k *skyline) []arc {
+func (f *finder) join(k *skyline) {
 	gap := k.site.MergeGap.Milliseconds()
 	if gap <= 0 || len(f.arcs) == 0 {
-		return f.arcs
+		return
 	}
 	last := 0
 	for _, a := range f.arcs[1:] {
-		if f.clock.at(a.from)-f.clock.at(f.arcs[last].to) <= gap {
+		if f.clock.at(a.from.t)-f.clock.at(f.arcs[last].to.t) <= gap {
 			f.arcs[last].to = a.to
 			continue
 		}
 		last++
 		f.arcs[last] = a
 	}
-	return f.arcs[:last+1]
+	f.arcs = f.arcs[:last+1]
 }
 
 // contact describes an arc; ok is false when it is shorter than a millisecond, so
 // that its ends fall on one printed instant.
-func (s *scene) contact(a arc, c clock) (r record, ok bool) {
-	r.aos, r.los = c.at(a.from), c.at(a.to)
+func (s *scene) contact(a *arc, k *skyline, c clock) (r record, ok bool) {
+	r.aos, r.los = c.at(a.from.t), c.at(a.to.t)
 	if r.los <= r.aos {
 		return r, false
 	}
-	top, near := s.extremes(a)
-	r.culmination = min(max(c.at(top), r.aos), r.los)
-	r.minRange = near
-	var el float64
-	r.aosAzimuth, el = compass(s.direction(a.from))
-	r.aosElevation = float32(el)
-	r.losAz, el = compass(s.direction(a.to))
-	r.losElevation = float32(el)
-	r.culmAzimuth, r.maxElevation = compass(s.direction(top))
-	if a.from == s.from {
+	if a.from.t == s.from {
 		r.cut |= CutAOS
 	}
-	if a.to == s.to {
+	if a.to.t == s.to {
 		r.cut |= CutLOS
 	}
+	top, near := s.extremes(a)
+	r.culmination = min(max(c.at(top.t), r.aos), r.los)
+	r.maxElevation = math.Asin(min(1, top.sine()))
+	r.minRange = near
+	r.aosAzimuth, r.culmAzimuth, r.losAzimuth = s.azimuth(&a.from), s.azimuth(&top), s.azimuth(&a.to)
+	r.aosElevation, r.losElevation = s.elevation(&a.from, k), s.elevation(&a.to, k)
 	return r, true
 }
 
-// compass returns azimuth and elevation of an offset by east, north and up, in rad.
-func compass(d orbit.Vec3) (az float32, el float64) {
-	a := math.Atan2(d.X, d.Y)
+// azimuth returns the azimuth in rad, in [0, 2π).
+func (s *scene) azimuth(p *sight) float32 {
+	a := math.Atan2(p.d.Dot(s.frame.East), p.d.Dot(s.frame.North))
 	if a < 0 {
 		a += 2 * math.Pi
 	}
-	az = float32(a)
+	az := float32(a)
 	if az >= 2*math.Pi { // rounded up to a full turn
 		az = 0
 	}
-	return az, math.Atan2(d.Z, math.Hypot(d.X, d.Y))
+	return az
+}
+
+// elevation returns the elevation of an end of an arc in rad; over a level horizon
+// it is known, but for the ends that the window cuts.
+func (s *scene) elevation(p *sight, k *skyline) float32 {
+	if k.level() && p.t != s.from && p.t != s.to {
+		return float32(k.low)
+	}
+	return float32(math.Asin(max(-1, min(1, p.sine()))))
 }

@@ -13,11 +13,10 @@ type kepler struct {
 	span                      float64 // s
 }
 
-func (k kepler) Span() float64                   { return k.span }
-func (k kepler) Step() float64                   { return 60 }
-func (k kepler) PositionAt(s float64) orbit.Vec3 { return k.StateAt(s).Position }
+func (k kepler) Span() float64 { return k.span }
+func (k kepler) Step() float64 { return 60 }
 
-func (k kepler) StateAt(s float64) orbit.State {
+func (k kepler) TrackAt(s float64) (position, derivative orbit.Vec3) {
 	n := math.Sqrt(gravity / (k.a * k.a * k.a))
 	m := math.Remainder(k.m0+n*s, 2*math.Pi)
 	ea := m
@@ -45,8 +44,5 @@ func (k kepler) StateAt(s float64) orbit.State {
 	// The node moves backwards in the Earth-fixed frame.
 	sinN, cosN := math.Sincos(k.node - rotation*s)
 	p := orbit.Vec3{X: cosN*x - sinN*y, Y: sinN*x + cosN*y, Z: z}
-	return orbit.State{
-		Position: p,
-		Velocity: orbit.Vec3{X: cosN*vx - sinN*vy + rotation*p.Y, Y: sinN*vx + cosN*vy - rotation*p.X, Z: vz},
-	}
+	return p, orbit.Vec3{X: cosN*vx - sinN*vy + rotation*p.Y, Y: sinN*vx + cosN*vy - rotation*p.X, Z: vz}
 }

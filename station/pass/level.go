@@ -1,16 +1,14 @@
 package pass
 
-import "math"
-
 // resolution is the time under which the search no longer divides: what happens
 // twice within it is not told apart. Half the millisecond that times are given to.
 const resolution = 5e-4
 
-// rateDoubt is the most that a rate of u or ρ from SGP4's velocity differs from the
-// derivative of its position, in m/s: 0.25 was measured on the lowest perigees.
-const rateDoubt = 1.0
+// rateDoubt is how far a rate may be from the derivative of what it belongs to by
+// rounding, in m/s.
+const rateDoubt = 1e-3
 
-// level appends to s.out the instants at which the elevation crosses the level with
+// level leaves in s.out the instants at which the elevation crosses the level with
 // sine c, rising and falling in turn, and tells whether it stands above at the start
 // of the window.
 //
@@ -19,29 +17,34 @@ const rateDoubt = 1.0
 // monotone, which leaves at most two crossings, or was divided; down to resolution.
 func (s *scene) level(c float64) (above bool) {
 	first := s.see(&s.nodes[0])
+	at, last := 0, first
 	s.candidates(c, func(i int) {
-		a, b := s.see(&s.nodes[i]), s.see(&s.nodes[i+1])
-		s.resolve(c, &a, &b, &s.stretches[i])
+		if at != i {
+			last = s.see(&s.nodes[i])
+		}
+		next := s.see(&s.nodes[i+1])
+		n, m := &s.nodes[i], &s.nodes[i+1]
+		s.resolve(c, &last, &next, n.acc.Dot(s.frame.Up), m.acc.Dot(s.frame.Up), &s.stretches[i])
+		at, last = i+1, next
 	})
 	return first.over(c) >= 0
 }
 
-// candidates calls do for the stretches that may hold a point above the level: the
-// others stay below the horizontal plane (or, for a level below that, under it by
-// enough), since u is within bulge of its chord.
+// candidates calls do, by rising i, for the stretches that may hold a point above the
+// level: the others stay below the horizontal plane (or, for a level below that,
+// under it by enough), since u is within bulge of its chord.
 func (s *scene) candidates(c float64, do func(i int)) {
-	up, o := s.frame.Up, s.frame.Origin
-	base := o.Dot(up)
-	far := 0.0
+	up := s.frame.Up
+	floor := s.frame.Origin.Dot(up)
 	if c < 0 {
-		far = s.farthest()
+		floor += c * s.farthest()
 	}
-	floor := base + c*far // c >= 0: the plane itself
-	x, y, z, bulge := s.x, s.y, s.z, s.bulge
-	before := x[0]*up.X + y[0]*up.Y + z[0]*up.Z
-	for i := range bulge {
-		u := x[i+1]*up.X + y[i+1]*up.Y + z[i+1]*up.Z
-		if math.Max(before, u)+bulge[i] >= floor {
+	bulge := s.bulge
+	x, y, z := s.x[:len(bulge)+1], s.y[:len(bulge)+1], s.z[:len(bulge)+1]
+	before := x[0]*up.X + y[0]*up.Y + z[0]*up.Z - floor
+	for i, b := range bulge {
+		u := x[i+1]*up.X + y[i+1]*up.Y + z[i+1]*up.Z - floor
+		if before+b >= 0 || u+b >= 0 {
 			do(i)
 		}
 		before = u
@@ -52,23 +55,24 @@ func (s *scene) candidates(c float64, do func(i int)) {
 func (s *scene) farthest() float64 {
 	far := 0.0
 	for i := range s.stretches {
-		far = math.Max(far, s.nodes[i].radius+s.stretches[i].speed*(s.nodes[i+1].t-s.nodes[i].t))
+		far = max(far, s.nodes[i].radius+s.stretches[i].speed*(s.nodes[i+1].t-s.nodes[i].t))
 	}
 	return far + s.ground
 }
 
-// resolve finds the crossings between two sights.
-func (s *scene) resolve(c float64, a, b *sight, st *stretch) {
+// resolve finds the crossings between two sights, where u has the second derivatives
+// ddua and ddub.
+func (s *scene) resolve(c float64, a, b *sight, ddua, ddub float64, st *stretch) {
 	h := b.t - a.t
 	fa, fb := a.over(c), b.over(c)
-	lo, hi := s.bend(c, a, b, st)
+	lo, hi := s.bend(c, a, b, ddua, ddub, st)
 	switch {
 	case fa >= 0 && fb >= 0:
-		if hi <= 0 || math.Min(fa, fb) > hi*h*h/8 {
+		if hi <= 0 || min(fa, fb) > hi*h*h/8 {
 			return
 		}
 	case fa < 0 && fb < 0:
-		if lo >= 0 || math.Max(fa, fb) < lo*h*h/8 {
+		if lo >= 0 || max(fa, fb) < lo*h*h/8 {
 			return
 		}
 		if hi < 0 {
@@ -76,21 +80,22 @@ func (s *scene) resolve(c float64, a, b *sight, st *stretch) {
 			return
 		}
 	default:
-		if hi < 0 || lo > 0 || monotone(a.rate(c), b.rate(c), math.Max(hi, -lo)*h/2) {
-			s.out = append(s.out, s.root(c, *a, *b))
+		if hi < 0 || lo > 0 || monotone(a.rate(c), b.rate(c), max(hi, -lo)*h/2) || h < resolution {
+			s.root(c, a, b)
 			return
 		}
 	}
 	if h < resolution {
-		if (fa < 0) != (fb < 0) {
-			s.out = append(s.out, s.root(c, *a, *b))
-		}
 		return
 	}
-	n := newNode(a.t+h/2, s.motion.StateAt(a.t+h/2))
+	var n node
+	n.t = a.t + h/2
+	n.pos, n.vel = s.motion.TrackAt(n.t)
+	n.derive()
 	m := s.see(&n)
-	s.resolve(c, a, &m, st)
-	s.resolve(c, &m, b, st)
+	ddum := n.acc.Dot(s.frame.Up)
+	s.resolve(c, a, &m, ddua, ddum, st)
+	s.resolve(c, &m, b, ddum, ddub, st)
 }
 
 // bend bounds the second derivative of u - c ρ between two sights:
@@ -99,12 +104,15 @@ func (s *scene) resolve(c float64, a, b *sight, st *stretch) {
 //
 // u” is within jerk h/2 of its value at the nearer end, give or take the forces that
 // node.acc leaves out.
-func (s *scene) bend(c float64, a, b *sight, st *stretch) (lo, hi float64) {
+func (s *scene) bend(c float64, a, b *sight, ddua, ddub float64, st *stretch) (lo, hi float64) {
 	h := b.t - a.t
 	doubt := st.jerk*h/2 + (excess-1)*st.acc
-	lo, hi = math.Min(a.ddu, b.ddu)-doubt, math.Max(a.ddu, b.ddu)+doubt
+	lo, hi = min(ddua, ddub)-doubt, max(ddua, ddub)+doubt
+	if c == 0 {
+		return lo, hi
+	}
 	most := st.speed*st.speed/s.nearest(a.rho, b.rho, h, st) + st.acc
-	if c >= 0 {
+	if c > 0 {
 		return lo - c*most, hi + c*st.acc
 	}
 	return lo + c*st.acc, hi - c*most
@@ -113,7 +121,8 @@ func (s *scene) bend(c float64, a, b *sight, st *stretch) (lo, hi float64) {
 // monotone tells whether a function whose slopes at the ends are given, and change
 // by at most swing from the nearer end, rises or falls throughout.
 func monotone(a, b, swing float64) bool {
-	return a > swing+rateDoubt && b > swing+rateDoubt || a < -swing-rateDoubt && b < -swing-rateDoubt
+	swing += rateDoubt
+	return a > swing && b > swing || a < -swing && b < -swing
 }
 
 // summit finds the crossings of a concave stretch with both ends below the level:
@@ -129,10 +138,10 @@ func (s *scene) summit(c float64, a, b sight) {
 		// Under both tangents, and so under the point where they meet.
 		at := h / 2
 		if ra > rb {
-			at = math.Min(math.Max((b.over(c)-a.over(c)-rb*h)/(ra-rb), 0), h)
+			at = min(max((b.over(c)-a.over(c)-rb*h)/(ra-rb), 0), h)
 		}
-		doubt := rateDoubt * math.Min(at, h-at)
-		if top := math.Min(a.over(c)+ra*at, b.over(c)-rb*(h-at)); top+doubt < 0 {
+		doubt := rateDoubt * min(at, h-at)
+		if top := min(a.over(c)+ra*at, b.over(c)-rb*(h-at)); top+doubt < 0 {
 			return
 		}
 		next := h * ra / (ra - rb)
@@ -141,7 +150,8 @@ func (s *scene) summit(c float64, a, b sight) {
 		}
 		m := s.look(a.t + next)
 		if m.over(c) >= 0 {
-			s.out = append(s.out, s.root(c, left, m), s.root(c, m, right))
+			s.root(c, &left, &m)
+			s.root(c, &m, &right)
 			return
 		}
 		if m.rate(c) > 0 {
@@ -150,61 +160,4 @@ func (s *scene) summit(c float64, a, b sight) {
 			b = m
 		}
 	}
-}
-
-// root returns the only crossing between two sights on different sides of the level,
-// to some microseconds: a start from the cubic through both ends, then Newton's method
-// inside the bracket.
-func (s *scene) root(c float64, a, b sight) float64 {
-	t := a.t + cubicRoot(a.over(c), b.over(c), a.rate(c), b.rate(c), b.t-a.t)
-	falling := a.over(c) >= 0
-	for range 60 {
-		m := s.look(t)
-		f := m.over(c)
-		if (f >= 0) == falling {
-			a = m
-		} else {
-			b = m
-		}
-		step := -f / m.rate(c)
-		next := t + step
-		if !(next >= a.t && next <= b.t) { // no rate, or out of the bracket
-			next = (a.t + b.t) / 2
-			step = next - t
-		}
-		t = next
-		// Newton's next step would be the square of this one, or a ten-thousandth of it
-		// where the velocity is not quite the position's derivative.
-		if math.Abs(step) < 2e-5 || b.t-a.t < 1e-6 {
-			break
-		}
-	}
-	return t
-}
-
-// cubicRoot returns where in [0, h] the cubic with the given values and slopes at the
-// ends, of different sign, is zero; roughly, as a start.
-func cubicRoot(fa, fb, da, db, h float64) float64 {
-	da, db = da*h, db*h
-	c2, c3 := 3*(fb-fa)-2*da-db, 2*(fa-fb)+da+db
-	lo, hi := 0.0, 1.0
-	x := fa / (fa - fb)
-	for range 6 {
-		f := fa + x*(da+x*(c2+x*c3))
-		if (f >= 0) == (fa >= 0) {
-			lo = x
-		} else {
-			hi = x
-		}
-		next := x - f/(da+x*(2*c2+3*c3*x))
-		if !(next > lo && next < hi) {
-			next = (lo + hi) / 2
-		}
-		if math.Abs(next-x) < 1e-4 {
-			x = next
-			break
-		}
-		x = next
-	}
-	return x * h
 }

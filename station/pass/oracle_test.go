@@ -26,10 +26,19 @@ func newOracle(m motion, site *station.Site, decides station.ElevationKind) *ora
 	return &oracle{m: m, site: site, frame: site.Frame(), decides: decides, refract: r}
 }
 
+// times is a time above the horizon, in s.
+type times struct{ from, to float64 }
+
+// direction returns azimuth, elevation and range.
+func (o *oracle) direction(t float64) (az, el unit.Angle, d unit.Length) {
+	p, _ := o.m.TrackAt(t)
+	return o.frame.Direction(p)
+}
+
 // clear returns how far, in rad, the spacecraft stands over the horizon: the least of
 // the differences to the mask and to the minimum elevation, each in its own kind.
 func (o *oracle) clear(t float64) float64 {
-	az, el, _ := o.frame.Direction(o.m.PositionAt(t))
+	az, el, _ := o.direction(t)
 	in := func(kind station.ElevationKind) unit.Angle {
 		if kind == station.Geometric {
 			return el
@@ -47,7 +56,7 @@ func (o *oracle) clear(t float64) float64 {
 	return d.Radians()
 }
 
-func (o *oracle) arcs(from, to, step float64) []arc {
+func (o *oracle) arcs(from, to, step float64) []times {
 	var toggles []float64
 	before, fb := from, o.clear(from)
 	above := fb >= 0
@@ -68,14 +77,24 @@ func (o *oracle) arcs(from, to, step float64) []arc {
 		}
 		before, fb = t, f
 	}
-	return pair(nil, above, toggles, from, to)
+	var found []times
+	for _, t := range toggles {
+		if above {
+			found = append(found, times{from, t})
+		}
+		above, from = !above, t
+	}
+	if above {
+		found = append(found, times{from, to})
+	}
+	return found
 }
 
 // culmination returns the greatest elevation in rad over an arc, on a grid.
-func (o *oracle) culmination(a arc, step float64) (top, el float64) {
+func (o *oracle) culmination(a times, step float64) (top, el float64) {
 	el = math.Inf(-1)
 	for t := a.from; ; t = math.Min(t+step, a.to) {
-		_, e, _ := o.frame.Direction(o.m.PositionAt(t))
+		_, e, _ := o.direction(t)
 		if e.Radians() > el {
 			top, el = t, e.Radians()
 		}
@@ -86,10 +105,10 @@ func (o *oracle) culmination(a arc, step float64) (top, el float64) {
 }
 
 // nearest returns the least range in m over an arc, on a grid.
-func (o *oracle) nearest(a arc, step float64) float64 {
+func (o *oracle) nearest(a times, step float64) float64 {
 	near := math.Inf(1)
 	for t := a.from; ; t = math.Min(t+step, a.to) {
-		_, _, d := o.frame.Direction(o.m.PositionAt(t))
+		_, _, d := o.direction(t)
 		near = math.Min(near, d.Metres())
 		if t >= a.to {
 			return near

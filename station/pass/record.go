@@ -10,13 +10,13 @@ import (
 // record is a pass as it is kept in a list of millions: without pointers, so that the
 // collector does not look into it, and in 80 bytes.
 type record struct {
-	aos, culmination, los          int64   // ms since 1970, UTC
-	maxElevation                   float64 // rad, as the angles below
-	aosAzimuth, culmAzimuth, losAz float32 // 1e-5 deg of rounding at most
-	aosElevation, losElevation     float32
-	minRange                       float64 // m
-	craft, site                    uint32
-	cut                            Cut
+	aos, culmination, los               int64   // ms since 1970, UTC
+	maxElevation                        float64 // rad, as the angles below
+	aosAzimuth, culmAzimuth, losAzimuth float32 // 1e-5 deg of rounding at most
+	aosElevation, losElevation          float32
+	minRange                            float64 // m
+	craft, site                         uint32
+	cut                                 Cut
 }
 
 // pass unpacks the record.
@@ -26,7 +26,7 @@ func (r *record) pass() Pass {
 		MaxElevation:       unit.Angle(r.maxElevation),
 		AOSAzimuth:         unit.Angle(r.aosAzimuth),
 		CulminationAzimuth: unit.Angle(r.culmAzimuth),
-		LOSAzimuth:         unit.Angle(r.losAz),
+		LOSAzimuth:         unit.Angle(r.losAzimuth),
 		AOSElevation:       unit.Angle(r.aosElevation),
 		LOSElevation:       unit.Angle(r.losElevation),
 		MinRange:           unit.Length(r.minRange),

@@ -15,6 +15,15 @@ func testSite() *station.Site {
 	return &station.Site{Name: "Test Hill", Latitude: 55 * unit.Degree, Longitude: -4 * unit.Degree, Altitude: 100}
 }
 
+func mustSkyline(t *testing.T, s *station.Site) *skyline {
+	t.Helper()
+	k, err := newSkyline(s, station.Geometric)
+	if err != nil {
+		t.Fatal(err)
+	}
+	return k
+}
+
 // low is a low polar orbit over two days.
 func low() kepler {
 	return kepler{a: 6928e3, e: 0.001, inc: 97.6 * math.Pi / 180, node: 1, span: 2 * 86400}
@@ -24,12 +33,12 @@ func low() kepler {
 // just over it, nothing. The scan that finds the true maximum is the oracle's.
 func TestGrazingPasses(t *testing.T) {
 	k, s := low(), testSite()
-	_, _, arcs := arcsOf(t, k, s, station.Geometric, 0, k.span)
+	_, arcs := arcsOf(t, k, s, station.Geometric, 0, k.span)
 	o := newOracle(k, s, station.Geometric)
 	tried := 0
 	for _, a := range arcs {
 		top, _ := o.culmination(a, 1)
-		peak := arc{top - 2, top + 2}
+		peak := times{top - 2, top + 2}
 		top, el := o.culmination(peak, 1e-3)
 		if el > 80*math.Pi/180 { // a pass through the zenith is steeper than the steps here
 			continue
@@ -38,7 +47,7 @@ func TestGrazingPasses(t *testing.T) {
 		for _, under := range []float64{1e-3, 1e-5, 1e-7, 1e-9} { // rad
 			s := testSite()
 			s.MinimumElevation = unit.Angle(el - under)
-			_, _, got := arcsOf(t, k, s, station.Geometric, a.from-100, a.to+100)
+			_, got := arcsOf(t, k, s, station.Geometric, a.from-100, a.to+100)
 			if len(got) != 1 || !(got[0].from < top && top < got[0].to) {
 				t.Fatalf("culmination %.7f deg at %.3f s, horizon %g rad under it: got %v", unit.Angle(el).Degrees(), top, under, got)
 			}
@@ -47,7 +56,7 @@ func TestGrazingPasses(t *testing.T) {
 				t.Errorf("horizon %g rad under: got %v, by bisection %v", under, got, want)
 			}
 			s.MinimumElevation = unit.Angle(el + under)
-			if _, _, got := arcsOf(t, k, s, station.Geometric, a.from-100, a.to+100); len(got) != 0 {
+			if _, got := arcsOf(t, k, s, station.Geometric, a.from-100, a.to+100); len(got) != 0 {
 				t.Errorf("horizon %g rad over the culmination: invented %v", under, got)
 			}
 		}
@@ -62,11 +71,11 @@ func TestGrazingPasses(t *testing.T) {
 func TestAlwaysUp(t *testing.T) {
 	k := kepler{a: 42164172, e: 0.0003, inc: 0.05 * math.Pi / 180, m0: 0.1, span: 4 * 86400}
 	s := testSite()
-	f, sc, arcs := arcsOf(t, k, s, station.Geometric, 0, k.span)
-	if len(arcs) != 1 || arcs[0] != (arc{0, k.span}) {
+	f, arcs := arcsOf(t, k, s, station.Geometric, 0, k.span)
+	if len(arcs) != 1 || arcs[0] != (times{0, k.span}) {
 		t.Fatalf("got %v", arcs)
 	}
-	r, ok := sc.contact(arcs[0], f.clock)
+	r, ok := f.scene.contact(&f.arcs[0], mustSkyline(t, s), f.clock)
 	if !ok || r.cut != CutBoth {
 		t.Fatalf("got %+v, %v", r, ok)
 	}
@@ -79,32 +88,32 @@ func TestAlwaysUp(t *testing.T) {
 // Windows that begin and end within a pass cut it there, to the millisecond.
 func TestCutByTheWindow(t *testing.T) {
 	k, s := low(), testSite()
-	_, _, arcs := arcsOf(t, k, s, station.Geometric, 0, k.span)
+	_, arcs := arcsOf(t, k, s, station.Geometric, 0, k.span)
 	a := arcs[2]
 	third := (a.to - a.from) / 3
 	for _, c := range []struct {
 		name     string
 		from, to float64
 		cut      Cut
-		want     arc
+		want     times
 	}{
 		{"before to after", a.from - 10, a.to + 10, CutNone, a},
-		{"from within", a.from + third, a.to + 10, CutAOS, arc{a.from + third, a.to}},
-		{"to within", a.from - 10, a.to - third, CutLOS, arc{a.from, a.to - third}},
-		{"all within", a.from + third, a.to - third, CutBoth, arc{a.from + third, a.to - third}},
-		{"a second", a.from + third, a.from + third + 1, CutBoth, arc{a.from + third, a.from + third + 1}},
+		{"from within", a.from + third, a.to + 10, CutAOS, times{a.from + third, a.to}},
+		{"to within", a.from - 10, a.to - third, CutLOS, times{a.from, a.to - third}},
+		{"all within", a.from + third, a.to - third, CutBoth, times{a.from + third, a.to - third}},
+		{"a second", a.from + third, a.from + third + 1, CutBoth, times{a.from + third, a.from + third + 1}},
 	} {
-		f, sc, got := arcsOf(t, k, s, station.Geometric, c.from, c.to)
+		f, got := arcsOf(t, k, s, station.Geometric, c.from, c.to)
 		if len(got) != 1 || math.Abs(got[0].from-c.want.from) > 1e-4 || math.Abs(got[0].to-c.want.to) > 1e-4 {
 			t.Errorf("%s: got %v, want %v", c.name, got, c.want)
 			continue
 		}
-		r, _ := sc.contact(got[0], f.clock)
+		r, _ := f.scene.contact(&f.arcs[0], mustSkyline(t, s), f.clock)
 		if r.cut != c.cut {
 			t.Errorf("%s: cut %q, want %q", c.name, r.cut, c.cut)
 		}
 	}
-	if _, _, got := arcsOf(t, k, s, station.Geometric, a.to+1, a.to+60); len(got) != 0 {
+	if _, got := arcsOf(t, k, s, station.Geometric, a.to+1, a.to+60); len(got) != 0 {
 		t.Errorf("after LOS: got %v", got)
 	}
 }
@@ -112,9 +121,9 @@ func TestCutByTheWindow(t *testing.T) {
 // A mast of a degree in the way splits a pass, unless the merge gap spans it.
 func TestMergeGap(t *testing.T) {
 	k, s := low(), testSite()
-	_, sc, arcs := arcsOf(t, k, s, station.Geometric, 0, k.span)
+	f, arcs := arcsOf(t, k, s, station.Geometric, 0, k.span)
 	a := arcs[1]
-	r, _ := sc.contact(a, newClock(time.Unix(0, 0)))
+	r, _ := f.scene.contact(&f.arcs[1], mustSkyline(t, s), f.clock)
 	mast := float64(r.culmAzimuth) * 180 / math.Pi
 	p := func(az, el float64) station.MaskPoint {
 		return station.MaskPoint{Azimuth: unit.Angle(az) * unit.Degree, Elevation: unit.Angle(el) * unit.Degree}
@@ -124,7 +133,7 @@ func TestMergeGap(t *testing.T) {
 		t.Fatal(err)
 	}
 	s.Mask = m
-	_, _, split := arcsOf(t, k, s, station.Geometric, a.from-10, a.to+10)
+	_, split := arcsOf(t, k, s, station.Geometric, a.from-10, a.to+10)
 	if len(split) != 2 {
 		t.Fatalf("the mast at %.1f deg leaves %v of %v", mast, split, a)
 	}
@@ -137,19 +146,14 @@ func TestMergeGap(t *testing.T) {
 		{time.Duration(gap*1e9) - 2*time.Millisecond, 2},
 	} {
 		s.MergeGap = c.gap
-		f, sc, _ := arcsOf(t, k, s, station.Geometric, a.from-10, a.to+10)
-		sky, err := newSkyline(s, station.Geometric)
-		if err != nil {
-			t.Fatal(err)
-		}
-		got := f.find(sky, nil)
+		f, _ := arcsOf(t, k, s, station.Geometric, a.from-10, a.to+10)
+		got := f.find(mustSkyline(t, s), nil)
 		if len(got) != c.want {
 			t.Errorf("gap of %.3f s, merge gap %v: %d passes, want %d", gap, c.gap, len(got), c.want)
 		}
 		if c.want == 1 {
-			top, _ := sc.extremes(a)
-			if got[0].culmination != f.clock.at(top) {
-				t.Errorf("the culmination behind the mast at %.3f s is not kept: %d ms", top, got[0].culmination)
+			if got[0].culmination != r.culmination {
+				t.Errorf("the culmination behind the mast at %d ms is not kept: %d ms", r.culmination, got[0].culmination)
 			}
 		}
 	}
@@ -158,12 +162,15 @@ func TestMergeGap(t *testing.T) {
 // What lasts under a millisecond prints as one instant and is no pass.
 func TestUnderAMillisecond(t *testing.T) {
 	k, s := low(), testSite()
-	_, sc, arcs := arcsOf(t, k, s, station.Geometric, 0, k.span)
-	c := newClock(time.Unix(0, 0))
-	if _, ok := sc.contact(arc{arcs[0].from, arcs[0].from + 1e-5}, clock{ms: c.ms, rest: 0.5 - math.Mod(arcs[0].from*1000, 1)}); ok {
+	f, _ := arcsOf(t, k, s, station.Geometric, 0, k.span)
+	a, sky := f.arcs[0], mustSkyline(t, s)
+	a.to = f.scene.look(a.from.t + 1e-5)
+	c := clock{rest: 0.25 - math.Mod(a.from.t*1000, 1)}
+	if _, ok := f.scene.contact(&a, sky, c); ok {
 		t.Error("10 µs made a pass")
 	}
-	if _, ok := sc.contact(arc{arcs[0].from, arcs[0].from + 2e-3}, c); !ok {
+	a.to = f.scene.look(a.from.t + 2e-3)
+	if _, ok := f.scene.contact(&a, sky, c); !ok {
 		t.Error("2 ms made no pass")
 	}
 }

@@ -7,19 +7,19 @@ import (
 	"slantwise/station"
 )
 
-// sight is what a site sees at one instant: the height over its horizontal plane and
-// the range, with their rates. The elevation is over a level when
+// sight is what a site sees at one instant: where the spacecraft is, and its height
+// over the horizontal plane and its range, with their rates. The elevation is over a
+// level when
 //
 //	u - c ρ >= 0,  c the sine of that level,
 //
 // and this function is as smooth as the motion, which the angle itself is not near
 // the zenith.
 type sight struct {
-	t       float64 // s
-	u, du   float64 // m, m/s
-	rho, dr float64 // m, m/s
-	ddu     float64 // m/s²
-	speed   float64 // m/s, relative to the Earth
+	t       float64    // s
+	d       orbit.Vec3 // offset from the site, m, Earth-fixed axes
+	u, du   float64    // m, m/s
+	rho, dr float64    // m, m/s
 }
 
 // over returns u - c ρ.
@@ -40,40 +40,37 @@ type scene struct {
 	*track
 	frame  station.Frame
 	ground float64 // radius of the site, m
-	out    []float64
+	out    []sight // crossings found so far
+}
+
+func (s *scene) set(p *sight, t float64, pos, vel *orbit.Vec3) {
+	f := &s.frame
+	x, y, z := pos.X-f.Origin.X, pos.Y-f.Origin.Y, pos.Z-f.Origin.Z
+	p.t = t
+	p.d = orbit.Vec3{X: x, Y: y, Z: z}
+	p.u = x*f.Up.X + y*f.Up.Y + z*f.Up.Z
+	p.du = vel.X*f.Up.X + vel.Y*f.Up.Y + vel.Z*f.Up.Z
+	p.rho = math.Sqrt(x*x + y*y + z*z)
+	p.dr = (x*vel.X + y*vel.Y + z*vel.Z) / p.rho
 }
 
 // see returns the sight at a node.
-func (s *scene) see(n *node) sight {
-	d, f := n.pos.Sub(s.frame.Origin), &s.frame
-	rho := d.Norm()
-	return sight{
-		t: n.t, u: d.Dot(f.Up), du: n.vel.Dot(f.Up), ddu: n.acc.Dot(f.Up),
-		rho: rho, dr: d.Dot(n.vel) / rho, speed: n.speed,
-	}
+func (s *scene) see(n *node) (p sight) {
+	s.set(&p, n.t, &n.pos, &n.vel)
+	return p
 }
 
-// look returns the sight at an instant, without speed and acceleration.
-func (s *scene) look(t float64) sight {
-	st := s.motion.StateAt(t)
-	d, f := st.Position.Sub(s.frame.Origin), &s.frame
-	rho := d.Norm()
-	return sight{t: t, u: d.Dot(f.Up), du: st.Velocity.Dot(f.Up), rho: rho, dr: d.Dot(st.Velocity) / rho}
+// look returns the sight at an instant.
+func (s *scene) look(t float64) (p sight) {
+	pos, vel := s.motion.TrackAt(t)
+	s.set(&p, t, &pos, &vel)
+	return p
 }
-
-// direction returns the offset from the site by east, north and up, in m.
-func (s *scene) direction(t float64) orbit.Vec3 {
-	d, f := s.motion.PositionAt(t).Sub(s.frame.Origin), &s.frame
-	return orbit.Vec3{X: d.Dot(f.East), Y: d.Dot(f.North), Z: d.Dot(f.Up)}
-}
-
-// sineAt returns the sine of the elevation from the position alone.
-func (s *scene) sineAt(t float64) float64 { return s.frame.SinElevation(s.motion.PositionAt(t)) }
 
 // nearest returns a lower bound of the range within a stretch, in m: the range
 // changes by at most speed times half the time from the nearer end, and no site is
 // nearer than the difference of the radii. It is never less than a metre: a
 // spacecraft does not fly through a station.
 func (s *scene) nearest(a, b float64, h float64, st *stretch) float64 {
-	return math.Max(1, math.Max(math.Min(a, b)-st.speed*h/2, st.low-s.ground))
+	return max(1, min(a, b)-st.speed*h/2, st.low-s.ground)
 }

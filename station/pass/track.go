@@ -2,6 +2,7 @@ package pass
 
 import (
 	"math"
+	"slices"
 
 	"slantwise/orbit"
 )
@@ -9,8 +10,7 @@ import (
 // motion is what the search needs of an ephemeris; the tests fly exact two-body
 // orbits through it.
 type motion interface {
-	PositionAt(s float64) orbit.Vec3
-	StateAt(s float64) orbit.State
+	TrackAt(s float64) (position, derivative orbit.Vec3)
 	Span() float64
 	Step() float64
 }
@@ -34,6 +34,7 @@ type stretch struct {
 type track struct {
 	motion    motion
 	from, to  float64
+	rate      float64 // nodes a second
 	nodes     []node
 	stretches []stretch
 	x, y, z   []float64 // positions of the nodes
@@ -63,41 +64,42 @@ const (
 // reset prepares the track for a motion over [from, to], reusing its memory.
 func (k *track) reset(m motion, from, to float64) {
 	k.motion, k.from, k.to = m, from, to
-	step := math.Min(math.Max(shortStep, m.Step()), longStep)
+	step := min(max(shortStep, m.Step()), longStep)
+	k.rate = 1 / step
 	n := max(1, int(math.Ceil((to-from)/step-1e-9)))
-	k.nodes = k.nodes[:0]
-	k.stretches = k.stretches[:0]
-	k.x, k.y, k.z, k.bulge = k.x[:0], k.y[:0], k.z[:0], k.bulge[:0]
-	for i := range n + 1 {
-		t := from + float64(i)*step
+	k.nodes = slices.Grow(k.nodes[:0], n+1)[:n+1]
+	k.stretches = slices.Grow(k.stretches[:0], n)[:n]
+	k.x, k.y, k.z = k.x[:0], k.y[:0], k.z[:0]
+	k.bulge = k.bulge[:0]
+	for i := range k.nodes {
+		p := &k.nodes[i]
+		p.t = from + float64(i)*step
 		if i == n {
-			t = to
+			p.t = to
 		}
-		p := newNode(t, m.StateAt(t))
-		k.nodes = append(k.nodes, p)
+		p.pos, p.vel = m.TrackAt(p.t)
+		p.derive()
 		k.x, k.y, k.z = append(k.x, p.pos.X), append(k.y, p.pos.Y), append(k.z, p.pos.Z)
 		if i > 0 {
-			s := bound(&k.nodes[i-1], &p)
-			k.stretches = append(k.stretches, s)
-			k.bulge = append(k.bulge, s.bulge)
+			k.stretches[i-1].bound(&k.nodes[i-1], p)
+			k.bulge = append(k.bulge, k.stretches[i-1].bulge)
 		}
 	}
 }
 
-// newNode adds the acceleration of two-body gravity in the rotating frame; bound
-// allows for what that leaves out.
-func newNode(t float64, s orbit.State) node {
-	p, v := s.Position, s.Velocity
-	r := p.Norm()
-	k := -gravity / (r * r * r)
+// derive adds the radius, the speed and the acceleration of two-body gravity in the
+// rotating frame; bound allows for what that leaves out.
+func (n *node) derive() {
+	p, v := &n.pos, &n.vel
+	r2 := p.X*p.X + p.Y*p.Y + p.Z*p.Z
+	n.radius = math.Sqrt(r2)
+	n.speed = math.Sqrt(v.X*v.X + v.Y*v.Y + v.Z*v.Z)
+	k := -gravity / (r2 * n.radius)
 	const w = rotation
-	return node{
-		t: t, pos: p, vel: v, radius: r, speed: v.Norm(),
-		acc: orbit.Vec3{
-			X: k*p.X + w*(2*v.Y+w*p.X),
-			Y: k*p.Y + w*(-2*v.X+w*p.Y),
-			Z: k * p.Z,
-		},
+	n.acc = orbit.Vec3{
+		X: k*p.X + w*(2*v.Y+w*p.X),
+		Y: k*p.Y + w*(-2*v.X+w*p.Y),
+		Z: k * p.Z,
 	}
 }
 
@@ -105,22 +107,20 @@ func newNode(t float64, s orbit.State) node {
 // from what always holds: no gravity is stronger than that at minRadius, and speed
 // changes by no more than acceleration times half the stretch, counted from the
 // nearer end.
-func bound(a, b *node) stretch {
+func (st *stretch) bound(a, b *node) {
 	h := b.t - a.t
-	low := math.Max(minRadius, math.Min(a.radius, b.radius)-pull(minRadius)*h*h/8)
-	low = math.Max(low, math.Min(a.radius, b.radius)-pull(low)*h*h/8)
+	low := max(minRadius, min(a.radius, b.radius)-pull(minRadius)*h*h/8)
+	low = max(low, min(a.radius, b.radius)-pull(low)*h*h/8)
 	g := pull(low)
-	fast := math.Max(a.speed, b.speed)
-	high := math.Max(a.radius, b.radius) + fast*h/2 + g*h*h/8
+	fast := max(a.speed, b.speed)
+	high := max(a.radius, b.radius) + fast*h/2 + g*h*h/8
 	const w = rotation
 	// The speed grows by acc h/2, acc by 2 w times that: solved for acc.
 	acc := (g + 2*w*fast + w*w*high) / (1 - w*h)
 	speed := fast + acc*h/2
-	return stretch{
-		acc: acc, speed: speed, low: low,
-		jerk:  2*g/low*speed + 2*w*acc + w*w*speed,
-		bulge: acc * h * h / 8,
-	}
+	st.acc, st.speed, st.low = acc, speed, low
+	st.jerk = 2*g/low*speed + 2*w*acc + w*w*speed
+	st.bulge = acc * h * h / 8
 }
 
 // pull is the bound of gravity at a radius in m, in m/s².

@@ -1,6 +1,10 @@
 package pass
 
-import "math"
+import (
+	"math"
+
+	"slantwise/orbit"
+)
 
 // aim is where a spacecraft stands in a site's sky at one instant, with its rates.
 type aim struct {
@@ -14,7 +18,8 @@ type aim struct {
 // aim returns the aim at an instant. In the zenith itself the azimuth is north, with
 // no rate; nothing is concluded from them there.
 func (s *scene) aim(k *skyline, t float64) aim {
-	l := s.frame.Look(s.motion.StateAt(t))
+	pos, vel := s.motion.TrackAt(t)
+	l := s.frame.Look(orbit.State{Position: pos, Velocity: vel})
 	p := aim{
 		t: t, el: l.Elevation.Radians(), az: l.Azimuth.Radians(),
 		del: float64(l.ElevationRate), daz: float64(l.AzimuthRate), rho: l.Range.Metres(),
@@ -44,8 +49,8 @@ func (s *scene) sweep(a, b *aim, st *stretch) sweep {
 	near := s.nearest(a.rho, b.rho, h, st)
 	w := st.speed / near
 	alpha := (st.acc + 2*st.speed*w) / near
-	r := sweep{elLow: math.Min(a.el, b.el) - w*h/2, elHigh: math.Max(a.el, b.el) + w*h/2}
-	steepest := math.Max(math.Abs(r.elLow), math.Abs(r.elHigh))
+	r := sweep{elLow: min(a.el, b.el) - w*h/2, elHigh: max(a.el, b.el) + w*h/2}
+	steepest := max(math.Abs(r.elLow), math.Abs(r.elHigh))
 	if steepest > 89.5*math.Pi/180 { // about the zenith nothing is said of azimuth
 		r.delLow, r.delHigh = -w, w
 		r.dazLow, r.dazHigh = math.Inf(-1), math.Inf(1)
@@ -58,23 +63,23 @@ func (s *scene) sweep(a, b *aim, st *stretch) sweep {
 	ddaz := (alpha + 2*w*w*sin/cos) / cos
 	r.delLow, r.delHigh = around(a.del, b.del, ddel*h/2, w)
 	r.dazLow, r.dazHigh = around(a.daz, b.daz, ddaz*h/2, w/cos)
-	r.elLow = math.Max(r.elLow, math.Min(a.el, b.el)-ddel*h*h/8)
-	r.elHigh = math.Min(r.elHigh, math.Max(a.el, b.el)+ddel*h*h/8)
-	if fastest := math.Max(-r.dazLow, r.dazHigh); fastest*h >= math.Pi {
+	r.elLow = max(r.elLow, min(a.el, b.el)-ddel*h*h/8)
+	r.elHigh = min(r.elHigh, max(a.el, b.el)+ddel*h*h/8)
+	if fastest := max(-r.dazLow, r.dazHigh); fastest*h >= math.Pi {
 		r.width = math.Inf(1)
 		return r
 	}
 	// From a to b by the short way, and as far beyond both as the bow allows.
 	way := math.Remainder(b.az-a.az, 2*math.Pi)
 	bow := ddaz * h * h / 8
-	r.az, r.width = a.az+math.Min(way, 0)-bow, math.Abs(way)+2*bow
+	r.az, r.width = a.az+min(way, 0)-bow, math.Abs(way)+2*bow
 	return r
 }
 
 // around bounds a rate between its values at the ends of a stretch: it departs from
 // the nearer one by at most swing, and never exceeds most.
 func around(a, b, swing, most float64) (low, high float64) {
-	return math.Max(-most, math.Min(a, b)-swing), math.Min(most, math.Max(a, b)+swing)
+	return max(-most, min(a, b)-swing), min(most, max(a, b)+swing)
 }
 
 // unveil appends the crossings of the skyline between two aims to s.out: each piece
@@ -90,7 +95,7 @@ func (s *scene) unveil(k *skyline, a, b *aim, st *stretch) {
 	}
 	if h < resolution || oneWay(&w, line) {
 		if !same {
-			s.out = append(s.out, s.edge(k, a, b))
+			s.out = append(s.out, s.look(s.edge(k, a, b)))
 		}
 		return
 	}
@@ -104,8 +109,8 @@ func (s *scene) unveil(k *skyline, a, b *aim, st *stretch) {
 func oneWay(w *sweep, line span) bool {
 	p, q := line.slopeLow*w.dazLow, line.slopeLow*w.dazHigh
 	r, t := line.slopeHigh*w.dazLow, line.slopeHigh*w.dazHigh
-	low, high := math.Min(math.Min(p, q), math.Min(r, t)), math.Max(math.Max(p, q), math.Max(r, t))
-	doubt := w.doubt * (1 + math.Max(math.Abs(line.slopeLow), math.Abs(line.slopeHigh)))
+	low, high := min(min(p, q), min(r, t)), max(max(p, q), max(r, t))
+	doubt := w.doubt * (1 + max(math.Abs(line.slopeLow), math.Abs(line.slopeHigh)))
 	// Where a bound is infinite these are no numbers, and both comparisons are false.
 	return w.delLow-high > doubt || w.delHigh-low < -doubt
 }
