@@ -15,6 +15,9 @@ var dashes = map[rune]string{
 // oddCharacter describes a character that has no place in an element line or a
 // number; empty for plain printable ASCII.
 func oddCharacter(r rune) (problem, next string) {
+	if r >= ' ' && r <= '~' {
+		return "", ""
+	}
 	if name, ok := dashes[r]; ok {
 		return fmt.Sprintf("the %s (U+%04X) stands where only the ASCII minus is read", name, r), `write "-"`
 	}
@@ -23,10 +26,8 @@ func oddCharacter(r rune) (problem, next string) {
 		return "a tab stands where blanks must", "replace it by blanks, so that the columns line up"
 	case r == '\u00a0':
 		return "a no-break space (U+00A0) stands where a blank must", "replace it by a blank"
-	case r < ' ' || r > '~':
-		return fmt.Sprintf("the character U+%04X has no place here; only printable ASCII is read", r), nextFetch
 	}
-	return "", ""
+	return fmt.Sprintf("the character U+%04X has no place here; only printable ASCII is read", r), nextFetch
 }
 
 // sound checks characters, length and checksum; only a line with the right
