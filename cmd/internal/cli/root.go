@@ -46,6 +46,7 @@ Results go to stdout, words for people to stderr. Exit codes:
 		newCheck(env),
 		newElements(env),
 		newNew(env),
+		newBudget(env),
 	)
 	markStart(root, env)
 	return root

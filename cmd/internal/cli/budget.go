@@ -1,0 +1,147 @@
+package cli
+
+import (
+	"time"
+
+	"github.com/spf13/cobra"
+
+	"slantwise/orbit/unit"
+)
+
+// budgetOptions is what the command line says.
+type budgetOptions struct {
+	who    linkNames
+	at     time.Time // one instant
+	pass   time.Time // the pass under way then, or the next
+	step   time.Duration
+	stated statedOptions
+	format format
+}
+
+// linkNames chooses a link of the scenario; an empty name picks the only one.
+type linkNames struct{ spacecraft, station, transmitter, antenna, mode string }
+
+// statedOptions is a geometry given by hand; nil: not given.
+type statedOptions struct {
+	rangeKm, elevationDeg, azimuthDeg, offBoresightDeg *float64
+}
+
+func (o *statedOptions) given() bool {
+	return o.rangeKm != nil || o.elevationDeg != nil || o.azimuthDeg != nil || o.offBoresightDeg != nil
+}
+
+func newBudget(env *Env) *cobra.Command {
+	var o budgetOptions
+	cmd := &cobra.Command{
+		Use:   "budget",
+		Short: "The link budget at an instant, along a pass, or for a stated geometry",
+		Long: `Give the link budget of one transmitter, antenna and mode, term by term: every term
+with its value, the sum so far and where it comes from, then the noise, then C/N0,
+Eb/N0, margin and the achievable rate, then what was assumed.
+
+  --at UTC                        at one instant, whether a pass is under way or not
+  --range-km R --elevation-deg E  for a stated geometry; no element set is needed
+  neither                         every --step of a pass: the first of the window, or
+                                  with --pass UTC the one under way then or the next
+
+What the scenario holds several of must be named.`,
+		Example: `  slantwise budget --spacecraft "Wagtail 1" --station "Skerry Point" --mode fast
+  slantwise budget --spacecraft "Wagtail 1" --station "Skerry Point" --mode safe --at 2026-09-15T10:02:00Z
+  slantwise budget --spacecraft "Wagtail 1" --station "Skerry Point" --mode safe --range-km 1200 --elevation-deg 20 --format json`,
+		Args: noArgs,
+	}
+	fs := cmd.Flags()
+	addLinkNames(cmd, &o.who)
+	addTime(fs, &o.at, "at", "one instant")
+	addTime(fs, &o.pass, "pass", "the pass under way then, or the next one of the window")
+	addDuration(fs, &o.step, "step", 10*time.Second, "between two samples of a pass")
+	rangeKm := fs.Float64("range-km", 0, "stated slant range in `KM`, with --elevation-deg")
+	elevation := fs.Float64("elevation-deg", 0, "stated elevation in `DEG`, with --range-km")
+	azimuth := fs.Float64("azimuth-deg", 0, "stated azimuth in `DEG`, which a fixed antenna needs")
+	off := fs.Float64("off-boresight-deg", 0, "stated angle in `DEG` off the transmit antenna's boresight (left out: from the attitude over a sphere)")
+	addFormat(fs, &o.format)
+	cmd.RunE = func(cmd *cobra.Command, _ []string) error {
+		for name, f := range map[string]struct{ value, into **float64 }{
+			"range-km": {&rangeKm, &o.stated.rangeKm}, "elevation-deg": {&elevation, &o.stated.elevationDeg},
+			"azimuth-deg": {&azimuth, &o.stated.azimuthDeg}, "off-boresight-deg": {&off, &o.stated.offBoresightDeg},
+		} {
+			if cmd.Flags().Changed(name) {
+				*f.into = *f.value
+			}
+		}
+		return runBudget(env, &o)
+	}
+	return cmd
+}
+
+// addLinkNames adds the flags that choose a link.
+func addLinkNames(cmd *cobra.Command, n *linkNames) {
+	fs := cmd.Flags()
+	fs.StringVar(&n.spacecraft, "spacecraft", "", "`NAME` of the spacecraft")
+	fs.StringVar(&n.station, "station", "", "`NAME` of the station")
+	fs.StringVar(&n.transmitter, "transmitter", "", "`NAME` of the spacecraft's transmitter")
+	fs.StringVar(&n.antenna, "antenna", "", "`NAME` of the station's antenna")
+	fs.StringVar(&n.mode, "mode", "", "`NAME` of the transmitter's mode")
+}
+
+func runBudget(env *Env, o *budgetOptions) error {
+	if err := o.check(); err != nil {
+		return err
+	}
+	need := needOrbits
+	if o.stated.given() {
+		need = needRadio
+	}
+	s, err := env.load(need)
+	if err != nil {
+		return err
+	}
+	c, err := chooseLink(s, o.who)
+	if err != nil {
+		return err
+	}
+	var r *budgetResult
+	switch {
+	case o.stated.given():
+		r, err = statedBudget(c, &o.stated)
+	case !o.at.IsZero():
+		r, err = budgetAt(s, c, o.at)
+	default:
+		r, err = budgetOfPass(s, c, o.pass, o.step)
+	}
+	if err != nil {
+		return err
+	}
+	if len(r.samples) == 0 {
+		env.note("there is no such pass in the window %s to %s", utc(s.Window.Start), utc(s.Window.End))
+	}
+	switch o.format {
+	case formatCSV:
+		return writeBudgetCSV(env.Out, r)
+	case formatJSON:
+		return writeJSON(env.Out, budgetOut(r))
+	}
+	return writeBudgetTable(env, r)
+}
+
+// check refuses flags that contradict each other.
+func (o *budgetOptions) check() error {
+	switch st := &o.stated; {
+	case st.given() && (!o.at.IsZero() || !o.pass.IsZero()):
+		return inputErrorf("--at and --pass go with a flown orbit, --range-km and its like with a stated geometry; give one of the two")
+	case st.given() && (st.rangeKm == nil || st.elevationDeg == nil):
+		return inputErrorf("a stated geometry needs --range-km and --elevation-deg, both")
+	case !o.at.IsZero() && !o.pass.IsZero():
+		return inputErrorf("--at asks for one instant, --pass for a whole pass; give one of the two")
+	}
+	return nil
+}
+
+// angleOf returns a flag's degrees, nil where it was not given.
+func angleOf(deg *float64) *unit.Angle {
+	if deg == nil {
+		return nil
+	}
+	a := unit.Angle(*deg) * unit.Degree
+	return &a
+}

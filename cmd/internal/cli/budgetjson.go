@@ -1,0 +1,165 @@
+package cli
+
+import (
+	"math"
+	"strconv"
+
+	"slantwise/downlink"
+)
+
+// nano is a number of a budget: nine decimals, no more than it has, or null. Terms
+// are rounded before they are summed, so that what is printed adds exactly.
+type nano float64
+
+// rounded keeps nine decimals.
+func rounded(v float64) float64 { return math.Round(v*1e9) / 1e9 }
+
+// MarshalJSON writes the number, or null.
+func (n nano) MarshalJSON() ([]byte, error) {
+	v := rounded(float64(n))
+	if math.IsNaN(v) || math.IsInf(v, 0) {
+		return []byte("null"), nil
+	}
+	return strconv.AppendFloat(nil, v, 'f', -1, 64), nil
+}
+
+type budgetJSON struct {
+	Spacecraft   string           `json:"spacecraft"`
+	Station      string           `json:"station"`
+	Transmitter  string           `json:"transmitter"`
+	FrequencyMHz nano             `json:"frequency_mhz"`
+	Antenna      string           `json:"antenna"`
+	Mode         *string          `json:"mode"`
+	Elements     *budgetElements  `json:"elements"`
+	Pass         *budgetPass      `json:"pass"`
+	Samples      []budgetSample   `json:"samples"`
+	Assumptions  []budgetNoteJSON `json:"assumptions"`
+}
+
+type budgetElements struct {
+	CatalogNumber int    `json:"catalog_number"`
+	EpochUTC      string `json:"epoch_utc"`
+	AgeDays       number `json:"age_days"`
+}
+
+type budgetPass struct {
+	AOSUTC          string           `json:"aos_utc"`
+	CulminationUTC  string           `json:"culmination_utc"`
+	LOSUTC          string           `json:"los_utc"`
+	MaxElevationDeg number           `json:"max_elevation_deg"`
+	Closes          []budgetInterval `json:"closes"`
+	ModeBytes       number           `json:"mode_bytes"`
+	AchievableBytes number           `json:"achievable_bytes"`
+}
+
+type budgetInterval struct {
+	FromUTC string `json:"from_utc"`
+	ToUTC   string `json:"to_utc"`
+}
+
+type budgetNoteJSON struct {
+	Kind string `json:"kind"`
+	Text string `json:"text"`
+}
+
+type budgetTerm struct {
+	Name  string `json:"name"`
+	Sign  int    `json:"sign"`
+	Value nano   `json:"value"`
+	Unit  string `json:"unit"`
+	From  string `json:"from"`
+}
+
+type budgetNoise struct {
+	Name        string `json:"name"`
+	Temperature nano   `json:"temperature_k"`
+	From        string `json:"from"`
+}
+
+type budgetSample struct {
+	UTC              *string       `json:"utc"`
+	AzimuthDeg       nano          `json:"azimuth_deg"`
+	ElevationDeg     nano          `json:"elevation_deg"`
+	RangeKm          nano          `json:"range_km"`
+	OffBoresightDeg  nano          `json:"off_boresight_deg"`
+	Terms            []budgetTerm  `json:"terms"`
+	ReceivedPowerDBm nano          `json:"received_power_dbm"`
+	FluxDensity      nano          `json:"power_flux_density_dbw_m2"`
+	Noise            []budgetNoise `json:"noise"`
+	SystemNoiseK     nano          `json:"system_noise_k"`
+	GOverT           nano          `json:"g_over_t_db_k"`
+	CN0              nano          `json:"c_n0_dbhz"`
+	EbN0             nano          `json:"eb_n0_db"`
+	RequiredEbN0     nano          `json:"required_eb_n0_db"`
+	Margin           nano          `json:"margin_db"`
+	MarginOver       nano          `json:"margin_over_required_db"`
+	DataRate         nano          `json:"data_rate_bps"`
+	AchievableRate   nano          `json:"achievable_rate_bps"`
+	AchievableLimit  string        `json:"achievable_rate_limit"`
+	Usable           bool          `json:"usable"`
+	Cautions         []string      `json:"cautions"`
+}
+
+// budgetOut makes the JSON result.
+func budgetOut(r *budgetResult) budgetJSON {
+	out := budgetJSON{
+		Spacecraft: r.spacecraft.Name, Station: r.station.Site.Name, Transmitter: r.transmitter.Name,
+		FrequencyMHz: nano(r.transmitter.Frequency.Megahertz()), Antenna: r.antenna.Name,
+		Samples: []budgetSample{}, Assumptions: []budgetNoteJSON{},
+	}
+	if r.mode != nil {
+		out.Mode = &r.mode.Name
+	}
+	if e := r.elements; e != nil {
+		out.Elements = &budgetElements{e.CatalogNumber, utc(e.Epoch), num(e.Age.Hours()/24, 4)}
+	}
+	if p := r.pass; p != nil {
+		out.Pass = &budgetPass{utc(p.AOS), utc(p.Culmination), utc(p.LOS), num(p.MaxElevation.Degrees(), 4), []budgetInterval{},
+			num(r.volume.ModeBytes, 0), num(r.volume.AchievableBytes, 0)}
+		for _, c := range r.volume.Closes {
+			out.Pass.Closes = append(out.Pass.Closes, budgetInterval{utc(c.From), utc(c.To)})
+		}
+	}
+	for _, b := range r.samples {
+		out.Samples = append(out.Samples, sampleOut(b))
+	}
+	for _, n := range r.notes {
+		out.Assumptions = append(out.Assumptions, budgetNoteJSON{n.Kind.String(), n.Text})
+	}
+	return out
+}
+
+func sampleOut(b *downlink.Budget) budgetSample {
+	s := budgetSample{
+		AzimuthDeg: nano(b.Azimuth.Degrees()), ElevationDeg: nano(b.Elevation.Degrees()), RangeKm: nano(b.Range.Kilometres()), OffBoresightDeg: nano(b.OffBoresight.Degrees()),
+		Terms: []budgetTerm{}, ReceivedPowerDBm: nano(printedSum(b)), FluxDensity: nano(b.PowerFluxDensity),
+		Noise: []budgetNoise{}, SystemNoiseK: nano(b.SystemNoise.Kelvins()), GOverT: nano(b.GOverT), CN0: nano(b.CN0),
+		EbN0: nano(b.EbN0), RequiredEbN0: nano(b.RequiredEbN0), Margin: nano(b.Margin), MarginOver: nano(b.MarginOver),
+		DataRate: nano(ifAny(float64(b.DataRate))), AchievableRate: nano(b.AchievableRate), AchievableLimit: b.AchievableLimit.String(),
+		Usable: b.Usable, Cautions: append([]string{}, b.Cautions...),
+	}
+	if !b.Time.IsZero() {
+		t := utc(b.Time)
+		s.UTC = &t
+	}
+	for _, t := range b.Terms {
+		s.Terms = append(s.Terms, budgetTerm{t.Name, t.Sign, nano(t.Value), t.Unit, t.Source})
+	}
+	for _, p := range b.NoiseParts {
+		s.Noise = append(s.Noise, budgetNoise{p.Name, nano(p.Temperature), p.Source})
+	}
+	return s
+}
+
+// printedSum is the received power as the sum of the terms as they are printed; NaN
+// where there is no received power.
+func printedSum(b *downlink.Budget) float64 {
+	if math.IsNaN(b.ReceivedPowerDBm) {
+		return math.NaN()
+	}
+	sum := 0.0
+	for _, t := range b.Terms {
+		sum += float64(t.Sign) * rounded(t.Value)
+	}
+	return sum
+}

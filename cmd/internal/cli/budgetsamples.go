@@ -1,0 +1,136 @@
+package cli
+
+import (
+	"fmt"
+	"time"
+
+	"slantwise/cmd/internal/scenario"
+	"slantwise/downlink"
+	"slantwise/orbit"
+	"slantwise/orbit/elements"
+	"slantwise/orbit/unit"
+	"slantwise/station/pass"
+)
+
+// budgetResult is what the command shows, in whatever format.
+type budgetResult struct {
+	*chosenLink
+	elements *elements.Chosen // nil for a stated geometry
+	pass     *pass.Pass       // nil for one instant or a stated geometry
+	volume   *downlink.Volume // of the pass
+	samples  []*downlink.Budget
+	notes    []downlink.Note
+}
+
+func newBudgetResult(c *chosenLink) *budgetResult {
+	return &budgetResult{chosenLink: c, notes: c.link.Notes()}
+}
+
+func (r *budgetResult) warn(format string, args ...any) {
+	r.notes = append(r.notes, downlink.Note{Kind: downlink.Warning, Text: fmt.Sprintf(format, args...)})
+}
+
+// statedBudget is the budget of a geometry given by hand.
+func statedBudget(c *chosenLink, o *statedOptions) (*budgetResult, error) {
+	r := newBudgetResult(c)
+	g, err := c.link.StatedGeometry(unit.Length(*o.rangeKm)*unit.Kilometre, unit.Angle(*o.elevationDeg)*unit.Degree, angleOf(o.azimuthDeg), angleOf(o.offBoresightDeg))
+	if err != nil {
+		return nil, &InputError{Err: err}
+	}
+	if o.offBoresightDeg == nil && c.transmitter.Attitude == downlink.AttitudeNadir {
+		r.notes = append(r.notes, downlink.Note{Kind: downlink.Assumption, Text: "off-boresight angle left out: worked out from range and elevation over a sphere through the site"})
+	}
+	return r, r.add(g)
+}
+
+// add evaluates the budget at a geometry.
+func (r *budgetResult) add(g downlink.Geometry) error {
+	b, err := r.link.At(g)
+	if err != nil {
+		return &InputError{Err: err}
+	}
+	r.samples = append(r.samples, b)
+	return nil
+}
+
+// budgetAt is the budget at one instant.
+func budgetAt(s *scenario.Scenario, c *chosenLink, at time.Time) (*budgetResult, error) {
+	r := newBudgetResult(c)
+	chosen := c.spacecraft.ElementsAt(at)
+	r.setElements(chosen, at)
+	eph, err := orbit.NewEphemeris(chosen.Elements, at, at.Add(time.Second), s.Earth)
+	if err != nil {
+		return nil, &InputError{Err: fmt.Errorf("spacecraft %s: %w", c.spacecraft.Name, err)}
+	}
+	g, _ := c.link.GeometryOf(eph.StateAt(0))
+	g.Time = at
+	return r, r.add(g)
+}
+
+// mostBudgets is how many budgets a pass may have: each holds all its terms.
+const mostBudgets = 200_000
+
+// budgetOfPass is the budget along a pass: the one under way at the instant or the
+// next, the first of the window for the zero time. Without one there are no samples.
+func budgetOfPass(s *scenario.Scenario, c *chosenLink, at time.Time, step time.Duration) (*budgetResult, error) {
+	r := newBudgetResult(c)
+	eph, err := orbit.NewEphemeris(c.spacecraft.Elements.Elements, s.Window.Start, s.Window.End, s.Earth)
+	if err != nil {
+		return nil, &InputError{Err: fmt.Errorf("spacecraft %s: %w", c.spacecraft.Name, err)}
+	}
+	found, err := pass.Search(eph, &c.station.Site, pass.Window{From: s.Window.Start, To: s.Window.End}, s.Horizon)
+	if err != nil {
+		return nil, &InputError{Err: err}
+	}
+	for i := range found {
+		if !found[i].LOS.Before(at) {
+			r.pass = &found[i]
+			break
+		}
+	}
+	if r.pass == nil {
+		return r, nil
+	}
+	r.setElements(c.spacecraft.Elements, r.pass.AOS)
+	return r, r.fly(eph, step)
+}
+
+func (r *budgetResult) fly(eph *orbit.Ephemeris, step time.Duration) error {
+	p := r.pass
+	if n := p.Duration() / step; n > mostBudgets {
+		return inputErrorf("--step: %v gives %d budgets for the pass from %s to %s, more than %d; take a longer step", step, n, utc(p.AOS), utc(p.LOS), mostBudgets)
+	}
+	profile, err := r.link.Profile(eph, p.AOS, p.LOS, volumeStep(p.Duration()))
+	if err != nil {
+		return &InputError{Err: err}
+	}
+	r.volume = &profile.Volume
+	for t := p.AOS; t.Before(p.LOS); t = t.Add(step) {
+		if err := r.addAt(eph, t); err != nil {
+			return err
+		}
+	}
+	return r.addAt(eph, p.LOS)
+}
+
+func (r *budgetResult) addAt(eph *orbit.Ephemeris, t time.Time) error {
+	g, _ := r.link.GeometryOf(eph.StateAt(min(eph.Seconds(t), eph.Span())))
+	g.Time = t
+	return r.add(g)
+}
+
+// volumeStep is the step of the volume's integral, whatever step is shown: a second,
+// or more where a pass of days would need too many.
+func volumeStep(pass time.Duration) time.Duration {
+	const most = 100_000
+	return max(time.Second, pass/most).Round(time.Millisecond)
+}
+
+// setElements keeps the element set, its age told at an instant.
+func (r *budgetResult) setElements(c elements.Chosen, at time.Time) {
+	c.Age = c.Elements.Age(at)
+	r.elements = &c
+	if c.Caution != "" {
+		r.warn("elements: %s", c.Caution)
+	}
+}
