@@ -18,7 +18,7 @@ func (l *Link) At(g Geometry) (*Budget, error) {
 		return nil, &unit.RangeError{Quantity: "range", Value: g.Range.Kilometres(), Unit: "km", Allowed: "greater than 0 km and finite"}
 	}
 	if !(math.Abs(g.Elevation.Degrees()) <= 90) {
-		return nil, &unit.RangeError{Quantity: "elevation", Value: g.Elevation.Degrees(), Unit: "deg", Allowed: "-90 to 90 deg"}
+		return nil, &unit.RangeError{Quantity: "elevation", Value: asGiven(g.Elevation), Unit: "deg", Allowed: "-90 to 90 deg"}
 	}
 	s := l.newScratch()
 	s.geometry = g

@@ -33,13 +33,13 @@ func (l *Link) StatedGeometry(slant unit.Length, elevation unit.Angle, azimuth, 
 		return Geometry{}, &unit.RangeError{Quantity: "range", Value: slant.Kilometres(), Unit: "km", Allowed: "greater than 0 and at most 1e9 km"}
 	}
 	if !(elevation >= -90*unit.Degree && elevation <= 90*unit.Degree) {
-		return Geometry{}, &unit.RangeError{Quantity: "elevation", Value: elevation.Degrees(), Unit: "deg", Allowed: "-90 to 90 deg"}
+		return Geometry{}, &unit.RangeError{Quantity: "elevation", Value: asGiven(elevation), Unit: "deg", Allowed: "-90 to 90 deg"}
 	}
 	g := Geometry{Azimuth: unit.Angle(math.NaN()), Elevation: elevation, Range: slant}
 	if azimuth != nil {
 		g.Azimuth = *azimuth
 		if !(*azimuth >= -360*unit.Degree && *azimuth <= 360*unit.Degree) {
-			return Geometry{}, &unit.RangeError{Quantity: "azimuth", Value: azimuth.Degrees(), Unit: "deg", Allowed: "-360 to 360 deg"}
+			return Geometry{}, &unit.RangeError{Quantity: "azimuth", Value: asGiven(*azimuth), Unit: "deg", Allowed: "-360 to 360 deg"}
 		}
 	}
 	tumbling := l.spec.Transmitter.Attitude == AttitudeTumbling
@@ -47,7 +47,7 @@ func (l *Link) StatedGeometry(slant unit.Length, elevation unit.Angle, azimuth, 
 	case offBoresight != nil && tumbling:
 		return Geometry{}, errors.New("a tumbling spacecraft has no off-boresight angle; leave the angle out")
 	case offBoresight != nil && !(*offBoresight >= 0 && *offBoresight <= 180*unit.Degree):
-		return Geometry{}, &unit.RangeError{Quantity: "off-boresight angle", Value: offBoresight.Degrees(), Unit: "deg", Allowed: "0 to 180 deg"}
+		return Geometry{}, &unit.RangeError{Quantity: "off-boresight angle", Value: asGiven(*offBoresight), Unit: "deg", Allowed: "0 to 180 deg"}
 	case offBoresight != nil:
 		g.OffBoresight = *offBoresight
 	case tumbling:
@@ -82,3 +82,7 @@ func (l *Link) offBoresight(position orbit.Vec3) unit.Angle {
 	}
 	return unit.Angle(math.NaN())
 }
+
+// asGiven returns the degrees of an angle as someone may have written them: the way
+// to radians and back leaves digits behind.
+func asGiven(a unit.Angle) float64 { return math.Round(a.Degrees()*1e9) / 1e9 }

@@ -59,7 +59,7 @@ What the scenario holds several of must be named.`,
 	elevation := fs.Float64("elevation-deg", 0, "stated elevation in `DEG`, with --range-km")
 	azimuth := fs.Float64("azimuth-deg", 0, "stated azimuth in `DEG`, which a fixed antenna needs")
 	off := fs.Float64("off-boresight-deg", 0, "stated angle in `DEG` off the transmit antenna's boresight (left out: from the attitude over a sphere)")
-	addFormat(fs, &o.format)
+	addFormat(cmd, &o.format)
 	cmd.RunE = func(cmd *cobra.Command, _ []string) error {
 		for name, f := range map[string]struct{ value, into **float64 }{
 			"range-km": {&rangeKm, &o.stated.rangeKm}, "elevation-deg": {&elevation, &o.stated.elevationDeg},
