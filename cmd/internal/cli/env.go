@@ -59,11 +59,19 @@ func (e *Env) load(n need) (*scenario.Scenario, error) {
 	if err != nil {
 		return nil, err
 	}
-	for _, w := range s.Warnings {
+	for i, w := range s.Warnings {
+		if i == warningLimit {
+			e.note("warning: and %d more; slantwise check lists them all", len(s.Warnings)-i)
+			break
+		}
 		e.note("warning: %s", printable(w.String()))
 	}
 	return s, nil
 }
+
+// warningLimit is how many warnings a command tells; a thousand old element sets
+// must not push the answer off the screen.
+const warningLimit = 10
 
 // read is load without the warnings, for a command that tells them itself.
 func (e *Env) read(n need) (*scenario.Scenario, error) {

@@ -48,6 +48,7 @@ Results go to stdout, words for people to stderr. Exit codes:
 		newNew(env),
 		newBudget(env),
 	)
+	refuseUnknownTopics(root)
 	markStart(root, env)
 	return root
 }
@@ -59,12 +60,36 @@ func addScenarioFlags(root *cobra.Command, env *Env) {
 	env.overrides = map[string]*pflag.Flag{}
 	for _, o := range []struct{ flag, key, usage string }{
 		{"window-start", "window.start_utc", "start of the window, `UTC`, in place of the scenario's"},
+		{"window-end", "window.end_utc", "end of the window, `UTC`, in place of the scenario's"},
 		{"window-length-h", "window.length_h", "length of the window in `HOURS`, in place of the scenario's"},
 		{"element-choice", "element_choice", "`newest` or nearest, in place of the scenario's"},
 		{"horizon", "horizon", "`geometric` or apparent elevation decides AOS and LOS, in place of the scenario's"},
 	} {
 		fs.String(o.flag, "", o.usage)
 		env.overrides[o.key] = fs.Lookup(o.flag)
+	}
+}
+
+// refuseUnknownTopics makes the library's own commands refuse words that they do not
+// know, which they answer with their help.
+func refuseUnknownTopics(root *cobra.Command) {
+	root.InitDefaultCompletionCmd()
+	root.InitDefaultHelpCmd()
+	for _, c := range root.Commands() {
+		switch c.Name() {
+		case "completion":
+			c.Args = noArgs
+			c.RunE = func(cmd *cobra.Command, _ []string) error { return cmd.Help() }
+			c.Example = "  slantwise completion bash > /etc/bash_completion.d/slantwise"
+		case "help":
+			c.Args = func(cmd *cobra.Command, args []string) error {
+				found, rest, err := root.Find(args)
+				if err != nil || len(rest) > 0 && found.HasSubCommands() {
+					return noArgs(root, args)
+				}
+				return nil
+			}
+		}
 	}
 }
 

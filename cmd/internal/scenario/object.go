@@ -2,6 +2,7 @@ package scenario
 
 import (
 	"fmt"
+	"regexp"
 	"slices"
 	"strings"
 
@@ -46,7 +47,7 @@ func (r *reader) object(node *tree.Node, path string, known []string) object {
 	seen := map[string]int{}
 	for _, e := range node.Entries {
 		if first := seen[e.Key]; first > 0 {
-			o.fault(&tree.Node{Line: e.Line}, e.Key, "the key stands twice, first in line %d", "remove one of the two", first)
+			o.fault(&tree.Node{Line: e.Line}, safeKey(e.Key), "the key stands twice, first in line %d", "remove one of the two", first)
 			continue
 		}
 		seen[e.Key] = max(e.Line, 1)
@@ -57,8 +58,19 @@ func (r *reader) object(node *tree.Node, path string, known []string) object {
 	return o
 }
 
+var plainKey = regexp.MustCompile(`^[A-Za-z0-9_-]{1,60}$`)
+
+// safeKey quotes a key that could look like something else in a message.
+func safeKey(key string) string {
+	if plainKey.MatchString(key) {
+		return key
+	}
+	return quote(key)
+}
+
 func (o object) unknown(e tree.Entry, known []string) {
 	at := &tree.Node{Line: e.Line}
+	e.Key = safeKey(e.Key)
 	switch near := nearest.Names(e.Key, known, 1); {
 	case len(near) > 0:
 		o.meant[near[0]] = true

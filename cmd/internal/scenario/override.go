@@ -113,7 +113,9 @@ func set(n *tree.Node, key string, value *tree.Node) {
 	last := parts[len(parts)-1]
 	kept := n.Entries[:0]
 	for _, e := range n.Entries {
-		if e.Key != last && e.Key != alternatives[key] {
+		// An alternative in the file gives way; one from outside it stands and is told.
+		replaced := e.Key == last || e.Key == alternatives[key] && e.Value.Origin == ""
+		if !replaced {
 			kept = append(kept, e)
 		}
 	}

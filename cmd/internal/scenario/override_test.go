@@ -73,6 +73,7 @@ func TestWrongOverrides(t *testing.T) {
 		{"SLANTWISE_WINDOW_LENGTH", "6", "", "environment SLANTWISE_WINDOW_LENGTH: the variable is not known; did you mean SLANTWISE_WINDOW_LENGTH_H?"},
 		{"SLANTWISE_COLOUR", "no", "", "environment SLANTWISE_COLOUR: the variable is not known; unset it; variables set scalars outside lists, as SLANTWISE_WINDOW_LENGTH_H does"},
 		{"SLANTWISE_WINDOW_LENGTH_H", "long", "", `environment SLANTWISE_WINDOW_LENGTH_H: window.length_h: "long" is not allowed; it must be a number, greater than 0 and at most 87672 h; give the number alone`},
+		{"SLANTWISE_WINDOW_END_UTC", "2026-09-16T00:00:00Z", "6", "environment SLANTWISE_WINDOW_END_UTC: window.end_utc: it stands beside length_h, which says the same in another way; keep one of length_h, end_utc"},
 		{"SLANTWISE_HORIZON", "NaN", "", `environment SLANTWISE_HORIZON: horizon: "NaN" is not allowed; it must be one of geometric, apparent`},
 		{"SLANTWISE_WINDOW_LENGTH_H", "6", "-1", `flag --window-length-h: window.length_h: "-1" is not allowed; it must be greater than 0 and at most 87672 h`},
 	} {
