@@ -15,28 +15,37 @@ const farthestFromEpoch = 10 * 365.25 * 24 * time.Hour
 // again, for runs over many satellites. Nobody else may use e meanwhile; after an
 // error it holds nothing until it is rebuilt. Errors are those of NewEphemeris.
 func (e *Ephemeris) Rebuild(el Elements, from, to time.Time, earth EarthOrientation) error {
-	*e = Ephemeris{elements: el, reference: from.UTC(), knots: e.knots[:0]}
-	if err := checkSpan(&el, from, to); err != nil {
-		return err
-	}
+	*e = Ephemeris{elements: el, reference: from.UTC(), knots: e.knots[:0], sun: SunTrack{knots: e.sun.knots}}
 	p, err := newPropagator(&el)
 	if err != nil {
 		return err
 	}
+	if err := checkSpan(&el, from, to); err != nil {
+		return err
+	}
 	sinceEpoch := from.Sub(el.Epoch).Seconds()
+	length := to.Sub(from).Seconds()
+	_, axis := el.recovered()
+	jump := axis * wgs72RadiusKm * 1000 / 60 * p.mean.kink(sinceEpoch/60, (sinceEpoch+length)/60)
 	b := builder{
 		e: e, p: p, rot: newRotation(from, earth),
-		sinceEpoch: sinceEpoch, start: int(math.Floor(sinceEpoch)), step: knotStep(&el),
+		sinceEpoch: sinceEpoch, start: int(math.Floor(sinceEpoch)),
+		step: int(min(knotStep(&el), kinkStep(jump))),
 	}
 	if err := b.approach(); err != nil {
 		return err
 	}
-	e.end = to.Sub(from).Seconds()
-	e.first = float64(b.start) - sinceEpoch
-	e.step = float64(b.step)
-	e.rate = 1 / e.step
-	e.last = max(0, int(math.Ceil((e.end-e.first)/e.step))-1)
-	return b.fill()
+	e.sun.prepare(from, to, b.rot)
+	for range finestHalvings + 1 {
+		if err := b.fill(length); err != nil {
+			return err
+		}
+		if b.close() {
+			break
+		}
+		b.step = max(1, b.step/2)
+	}
+	return nil
 }
 
 func checkSpan(el *Elements, from, to time.Time) error {
@@ -80,11 +89,15 @@ func (b *builder) approach() error {
 	return nil
 }
 
-// fill computes all knots and their differences. Where the orbit ends inside the
+// fill computes the knots and their differences for a span of so many seconds. Where the orbit ends inside the
 // span, the knots go on past its end as long as the equations give numbers, since
 // the differences need them.
-func (b *builder) fill() error {
+func (b *builder) fill(end float64) error {
 	e := b.e
+	e.end, e.truncated = end, nil
+	e.first, e.step = float64(b.start)-b.sinceEpoch, float64(b.step)
+	e.rate = 1 / e.step
+	e.last = e.intervalOf(end)
 	count := e.last + 2 + 2*reach
 	e.knots = slices.Grow(e.knots, count)[:count]
 	w := watch{p: b.p, good: b.start, end: b.sinceEpoch + e.end}
@@ -123,7 +136,52 @@ func (b *builder) shorten(bad int, end float64) error {
 		e.knots = e.knots[:0]
 		return e.truncated
 	}
-	e.last = max(0, int(math.Ceil((e.end-e.first)/e.step))-1)
+	e.last = e.intervalOf(e.end)
 	e.knots = e.knots[:e.last+2+2*reach]
 	return nil
+}
+
+// intervalOf returns the number of the interval between knots that ends at s or
+// holds it.
+func (e *Ephemeris) intervalOf(s float64) int {
+	return max(0, int(math.Ceil((s-e.first)/e.step))-1)
+}
+
+const (
+	// closeEnough is the difference in m from SGP4, midway between knots, above which
+	// the step is halved.
+	closeEnough = 0.1
+	// finestHalvings bounds that. An orbit that needs more is within hours of its end,
+	// where SGP4 itself has kinks (it holds a vanishing eccentricity at 1e-6).
+	finestHalvings = 3
+)
+
+// close compares the interpolation with SGP4 midway between some knots of the first
+// and the last revolution. The step suits orbits that drag does not tear at; where
+// it does, it is worst at that end of the span that is farther from the epoch.
+func (b *builder) close() bool {
+	const samples = 8
+	e := b.e
+	motion, _ := e.elements.recovered()
+	stride := max(1, int(2*math.Pi/motion*60/e.step)/samples)
+	for i := range samples {
+		if !b.closeIn(i*stride) || !b.closeIn(e.last-i*stride) {
+			return false
+		}
+	}
+	return true
+}
+
+// closeIn compares in the middle of an interval, if the span has such an interval
+// and reaches to its middle.
+func (b *builder) closeIn(interval int) bool {
+	e := b.e
+	k := b.start + interval*b.step + b.step/2
+	s := float64(k) - b.sinceEpoch
+	if interval < 0 || interval > e.last || s < 0 || s > e.end {
+		return true
+	}
+	p, v := b.p.raw(k)
+	st := b.rot.earthFixed(s, p, v)
+	return e.PositionAt(s).Sub(st.Position).Norm() <= closeEnough
 }

@@ -92,6 +92,16 @@ func (r *rotation) earthFixed(s float64, p, v Vec3) State {
 	return st
 }
 
+// fixed turns a TEME position at s seconds after the reference.
+func (r *rotation) fixed(s float64, p Vec3) Vec3 {
+	sin, cos := math.Sincos(r.angle(s))
+	v := Vec3{cos*p.X + sin*p.Y, cos*p.Y - sin*p.X, p.Z}
+	if r.polar {
+		v = r.toPole(v)
+	}
+	return v
+}
+
 // toPole turns a vector from the pseudo Earth-fixed frame, whose pole is the
 // rotation pole, into the frame of the reference pole.
 func (r *rotation) toPole(v Vec3) Vec3 {

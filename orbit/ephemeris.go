@@ -23,6 +23,7 @@ type Ephemeris struct {
 	rate  float64 // 1/step
 	last  int     // the greatest interval
 	knots []knot  // reach knots before the first interval and after the last
+	sun   SunTrack
 }
 
 // NewEphemeris propagates the elements over [from, to] and keeps the knots.
@@ -78,6 +79,12 @@ func (e *Ephemeris) StateAt(s float64) State {
 		Velocity: velocityBetween(e.knots[i+1-velocityReach:i+1+velocityReach], u),
 	}
 }
+
+// SunAt returns the Earth-fixed position of the Sun in m at s in [0, Span()].
+func (e *Ephemeris) SunAt(s float64) Vec3 { return e.sun.PositionAt(s) }
+
+// LightAt returns how much of the Sun the spacecraft sees at s in [0, Span()].
+func (e *Ephemeris) LightAt(s float64) Light { return LightAt(e.PositionAt(s), e.SunAt(s)) }
 
 // At returns the state at t, or a *SpanError when t lies outside the span.
 func (e *Ephemeris) At(t time.Time) (State, error) {

@@ -1,7 +1,7 @@
 package orbit
 
 import (
-	"errors"
+	"math"
 	"time"
 
 	"slantwise/orbit/unit"
@@ -24,9 +24,9 @@ func (k Kind) String() string {
 	return "near-Earth"
 }
 
-// Facts are what the mean elements say of an orbit at the epoch. Heights are above
-// the equatorial radius of WGS-72, 6378.135 km, from the recovered (Brouwer) mean
-// motion, as SGP4 itself takes them.
+// Facts are what the mean elements say of an orbit at the epoch, by the recovered
+// (Brouwer) mean motion as SGP4 takes it. Heights are above the equatorial radius of
+// WGS-72, 6378.135 km; that of a perigee under the ground is negative.
 type Facts struct {
 	SemiMajorAxis   unit.Length
 	Perigee, Apogee unit.Length // heights
@@ -34,15 +34,23 @@ type Facts struct {
 	Kind            Kind
 }
 
-// Facts returns the orbit's facts. It fails where the elements are not valid.
+// Facts returns the orbit's facts. It fails where Validate does.
 func (e *Elements) Facts() (Facts, error) {
-	return Facts{}, errors.New("orbit: not built yet")
-}
-
-// NextAscendingNode returns the first instant after t at which the orbit crosses
-// the equator northwards, to the millisecond. It fails with a *PropagationError
-// where SGP4 does, and with an *ElementError where the orbit lies in the equator's
-// plane and has no node.
-func (e *Elements) NextAscendingNode(t time.Time) (time.Time, error) {
-	return time.Time{}, errors.New("orbit: not built yet")
+	if err := e.Validate(); err != nil {
+		return Facts{}, err
+	}
+	motion, axis := e.recovered()
+	height := func(ratio float64) unit.Length {
+		return unit.Length((axis*ratio - 1) * wgs72RadiusKm * 1000)
+	}
+	f := Facts{
+		SemiMajorAxis: unit.Length(axis * wgs72RadiusKm * 1000),
+		Perigee:       height(1 - e.Eccentricity),
+		Apogee:        height(1 + e.Eccentricity),
+		Period:        time.Duration(math.Min(2*math.Pi/motion*60e9, math.MaxInt64)),
+	}
+	if isDeep(motion) {
+		f.Kind = DeepSpace
+	}
+	return f, nil
 }

@@ -33,10 +33,10 @@ func between(a, b *knot, u float64) Vec3 {
 // velocityPoints is the number of knots that a velocity is interpolated from.
 const velocityPoints = 2 * velocityReach
 
-const velocityReach = 5
+const velocityReach = reach
 
 // velocityBetween returns the velocity at the fraction u in [0, 1] of the way from
-// the middle knots of the ten given, by the polynomial of Lagrange.
+// the middle knots of the twelve given, by the polynomial of Lagrange.
 func velocityBetween(knots []knot, u float64) Vec3 {
 	x := u + (velocityReach - 1) // in steps from the first knot
 	var left [velocityPoints]float64
@@ -67,24 +67,28 @@ var lagrange = func() (w [velocityPoints]float64) {
 }()
 
 // knotStep returns the whole seconds between knots for an element set. Two things
-// bound it: the harmonics that the flattening of the Earth adds to the orbital
-// motion, and, on eccentric orbits, the nearest complex time at which the two-body
-// orbit passes through the Earth's centre; high-order polynomials in time converge
-// within that distance only. The factors were chosen by measurement
+// bound it: the angular speed at the perigee, since the flattening of the Earth adds
+// harmonics of it, and, on eccentric orbits, the nearest complex time at which the
+// two-body orbit passes through the Earth's centre, since polynomials in time
+// converge within that distance only. The factors were chosen by measurement
 // (TestInterpolationError).
-func knotStep(el *Elements) int {
+func knotStep(el *Elements) float64 {
 	const (
-		harmonic  = 0.34
-		singular  = 0.10
-		leastStep = 5
+		turn      = 0.36  // rad at the perigee
+		reached   = 0.112 // of the distance to the singularity
+		leastStep = 4
 		mostStep  = 3600
 	)
 	motion, _ := el.recovered()
-	n := motion / 60 // rad/s
-	step := harmonic / n
-	if e := el.Eccentricity; e > 1e-6 {
-		distance := (math.Acosh(1/e) - math.Sqrt(1-e*e)) / n
-		step = min(step, singular*distance)
+	n, e := motion/60, el.Eccentricity // rad/s
+	step := turn / (n * (1 + e) * (1 + e) / math.Pow(1-e*e, 1.5))
+	if e > 0 {
+		step = min(step, reached*(math.Acosh(1/e)-math.Sqrt(1-e*e))/n)
 	}
-	return int(max(leastStep, min(mostStep, step)))
+	return max(leastStep, min(mostStep, step))
 }
+
+// kinkStep returns the greatest step in s that keeps the interpolation within 0.25 m
+// of a kink in which the speed changes by jump m/s, but no less than 2 s. A kink
+// costs 0.16 of the jump times the step (measured).
+func kinkStep(jump float64) float64 { return max(2, 0.25/(0.16*jump)) }

@@ -2,7 +2,6 @@ package orbit
 
 import (
 	"math"
-	"reflect"
 
 	satellite "github.com/joshuaferrara/go-satellite"
 )
@@ -13,7 +12,6 @@ type propagator struct {
 	elements Elements
 	terms    []term
 	mean     eccentricityLaw
-	farthest float64 // radius in m above which the state can only be divergence
 }
 
 // term is one element set of the two-line grid with its weight.
@@ -39,11 +37,12 @@ func newPropagator(el *Elements) (*propagator, error) {
 	if !(motion > 0) || math.IsInf(axis, 0) {
 		return nil, &PropagationError{Name: el.Name, CatalogNumber: el.CatalogNumber, Time: el.Epoch, Epoch: el.Epoch, Reason: BadOrbit}
 	}
-	p := &propagator{elements: *el, farthest: 2.5 * axis * wgs72RadiusKm * 1000}
+	p := &propagator{elements: *el}
 	for _, g := range onGrid(el, el.BStar*dragScale(el.perigeeKm()), isDeep(motion)) {
-		p.terms = append(p.terms, newTerm(g))
+		t := newTerm(g)
+		p.terms = append(p.terms, t)
+		p.mean.add(newEccentricityLaw(&t.sat), g.weight)
 	}
-	p.mean = newEccentricityLaw(&p.terms[0].sat)
 	return p, nil
 }
 
@@ -114,15 +113,14 @@ func carry(p, v Vec3, dt float64) (Vec3, Vec3) {
 // computes an error code but loses it in a copy, so it is found again from the
 // state and from the mean eccentricity.
 func (p *propagator) check(k int, position, velocity Vec3) Reason {
-	r := position.Norm()
 	switch {
 	case position == (Vec3{}):
 		return Diverged // the library's answer to a negative semi-latus rectum
 	case !finite(position) || !finite(velocity):
 		return NotANumber
-	case !p.mean.holds(float64(k)/60) || r > p.farthest:
+	case !p.mean.holds(float64(k) / 60):
 		return Diverged
-	case r < wgs72RadiusKm*1000:
+	case position.Norm() < wgs72RadiusKm*1000:
 		return Decayed
 	}
 	return 0
@@ -137,44 +135,4 @@ func (p *propagator) smooth(k int, position, velocity Vec3) bool {
 func finite(v Vec3) bool {
 	s := v.X + v.Y + v.Z
 	return !math.IsNaN(s) && !math.IsInf(s, 0)
-}
-
-// eccentricityLaw is SGP4's mean eccentricity as a function of time. The theory
-// stops where it leaves [-0.001, 1); the library goes on.
-type eccentricityLaw struct {
-	e0, rate          float64 // at the epoch; per minute, drag and third bodies
-	swing, sinAtEpoch float64 // of the term that goes with the mean anomaly
-	m0, mdot          float64 // mean anomaly, rad and rad/min
-	omg, xm, eta, dm0 float64 // drag terms of the mean anomaly
-}
-
-// newEccentricityLaw reads the coefficients that the library prepared; their names
-// are those of AIAA 2006-6753.
-func newEccentricityLaw(sat *satellite.Satellite) eccentricityLaw {
-	v := reflect.ValueOf(sat).Elem()
-	f := func(name string) float64 { return v.FieldByName(name).Float() }
-	l := eccentricityLaw{
-		e0:   f("ecco"),
-		rate: f("dedt") - f("bstar")*f("cc4"),
-		m0:   f("mo"), mdot: f("mdot"),
-	}
-	if f("isimp") != 1 {
-		l.swing, l.sinAtEpoch = f("bstar")*f("cc5"), f("sinmao")
-		l.omg, l.xm, l.eta, l.dm0 = f("omgcof"), f("xmcof"), f("eta"), f("delmo")
-	}
-	return l
-}
-
-// holds tells whether the mean eccentricity stays in the range of the theory at t
-// minutes after the epoch.
-func (l *eccentricityLaw) holds(t float64) bool {
-	e := l.e0 + l.rate*t
-	if reach := 2 * math.Abs(l.swing); e-reach >= -0.001 && e+reach < 1 {
-		return true
-	}
-	m := l.m0 + l.mdot*t
-	c := 1 + l.eta*math.Cos(m)
-	m += l.omg*t + l.xm*(c*c*c-l.dm0)
-	e -= l.swing * (math.Sin(m) - l.sinAtEpoch)
-	return e >= -0.001 && e < 1
 }
