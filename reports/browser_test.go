@@ -16,8 +16,25 @@ import (
 	"github.com/chromedp/chromedp"
 )
 
-// browser starts a headless Chromium with an empty profile. Where there is none the
-// test is skipped, but not on the machine that decides about a change.
+// The browser of all tests, started by the first that needs it.
+var shared struct {
+	start sync.Once
+	ctx   context.Context
+	stop  []func()
+	err   error
+}
+
+func TestMain(m *testing.M) {
+	code := m.Run()
+	for i := len(shared.stop) - 1; i >= 0; i-- {
+		shared.stop[i]()
+	}
+	os.Exit(code)
+}
+
+// browser returns a tab of its own in a headless Chromium with an empty profile.
+// Where there is none the test is skipped, but not on the machine that decides about
+// a change.
 func browser(t *testing.T) context.Context {
 	t.Helper()
 	path, err := exec.LookPath("chromium")
@@ -27,20 +44,36 @@ func browser(t *testing.T) context.Context {
 		}
 		t.Skip("no chromium here")
 	}
-	alloc, stop := chromedp.NewExecAllocator(context.Background(),
-		chromedp.ExecPath(path), chromedp.NoFirstRun, chromedp.NoSandbox, chromedp.Headless, chromedp.DisableGPU,
-		chromedp.Flag("disable-quic", true), chromedp.Flag("disable-background-networking", true),
-		chromedp.Flag("disable-component-update", true), chromedp.Flag("disable-sync", true),
-		chromedp.UserDataDir(t.TempDir()))
-	t.Cleanup(stop)
-	ctx, end := chromedp.NewContext(alloc)
+	shared.start.Do(func() { startBrowser(path) })
+	if shared.err != nil {
+		t.Fatal("starting chromium:", shared.err)
+	}
+	ctx, end := chromedp.NewContext(shared.ctx)
 	t.Cleanup(end)
 	if err := chromedp.Do(ctx); err != nil {
-		t.Fatal("starting chromium:", err)
+		t.Fatal("opening a tab:", err)
 	}
 	ctx, over := context.WithTimeout(ctx, 50*time.Second)
 	t.Cleanup(over)
 	return ctx
+}
+
+func startBrowser(path string) {
+	profile, err := os.MkdirTemp("", "profile")
+	if err != nil {
+		shared.err = err
+		return
+	}
+	alloc, stop := chromedp.NewExecAllocator(context.Background(),
+		chromedp.ExecPath(path), chromedp.NoFirstRun, chromedp.NoSandbox, chromedp.Headless, chromedp.DisableGPU,
+		chromedp.Flag("disable-quic", true), chromedp.Flag("disable-background-networking", true),
+		chromedp.Flag("disable-component-update", true), chromedp.Flag("disable-sync", true),
+		chromedp.Flag("host-resolver-rules", "MAP * ~NOTFOUND"), // nothing may leave the machine
+		chromedp.UserDataDir(profile))
+	ctx, end := chromedp.NewContext(alloc)
+	shared.ctx = ctx
+	shared.stop = []func(){func() { os.RemoveAll(profile) }, stop, end}
+	shared.err = chromedp.Do(ctx)
 }
 
 // observed is what a page said and asked for.

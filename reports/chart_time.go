@@ -4,6 +4,7 @@ import (
 	"cmp"
 	"encoding/json"
 	"math"
+	"slices"
 	"time"
 
 	"github.com/go-echarts/go-echarts/v2/charts"
@@ -48,6 +49,12 @@ func newFrame(p *Pass) *frame {
 	}
 	fr.axis.Step = clockStep(fr.axis.To - fr.axis.From)
 	return fr
+}
+
+// position returns where a sample stands among those that are drawn.
+func (fr *frame) position(sample int) int {
+	i, _ := slices.BinarySearch(fr.samples, sample)
+	return i
 }
 
 // clockStep returns the least round step of a clock that makes at most eight labels.

@@ -151,7 +151,7 @@ func fill(ctx context.Context, dir string, r *Report, o Options) ([]string, erro
 		listing.Unlock()
 		return nil
 	}
-	if err := newWriter(r, o, put).write(ctx); err != nil {
+	if err := newWriter(r, o, chartScript(), put).write(ctx); err != nil {
 		return nil, err
 	}
 	slices.Sort(names)

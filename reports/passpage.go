@@ -63,6 +63,7 @@ func passPage(w *writer, i int, p *Pass) ([]byte, error) {
 	data, err := marshalDrawings(map[string]any{
 		"drawings": drawings,
 		"offsets":  offsets(p.Pass.AOS, p.Pass.LOS, p.Site.TimeZone, fr.base),
+		"start":    fr.position(nearestSample(p.Profile, p.Pass.Culmination)),
 	})
 	if err != nil {
 		return nil, err

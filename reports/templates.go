@@ -28,11 +28,10 @@ type pageView struct {
 // page fills in what every page has; root is the way to the index.
 func (w *writer) page(root, title string) pageView {
 	v := pageView{Title: title, Root: root, OneFile: w.options.OneFile}
-	chart := chartScript().code
 	var scripts strings.Builder
 	var sources []string
 	switch {
-	case chart == "":
+	case w.chart.code == "":
 		v.Public = publicScript
 		scripts.WriteString(`<script src="` + publicScript + `" integrity="` + publicHash + `" crossorigin="anonymous"></script>`)
 		sources = append(sources, publicOrigin)

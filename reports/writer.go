@@ -36,13 +36,14 @@ type writer struct {
 	names   []string // of the pass pages, without ending
 	put     func(name string, content []byte) error
 
+	chart                            script
 	inlineChart, chartHash, pageHash string
 }
 
-func newWriter(r *Report, o Options, put func(string, []byte) error) *writer {
-	w := &writer{report: r, options: o, names: pageNames(r.Keys), put: put, pageHash: contentHash(pageScript)}
+func newWriter(r *Report, o Options, chart script, put func(string, []byte) error) *writer {
+	w := &writer{report: r, options: o, names: pageNames(r.Keys), put: put, chart: chart, pageHash: contentHash(pageScript)}
 	if o.OneFile {
-		w.inlineChart = inlineSafe(chartScript().code)
+		w.inlineChart = inlineSafe(chart.code)
 		w.chartHash = contentHash(w.inlineChart)
 	}
 	return w
@@ -127,8 +128,8 @@ func (w *writer) shared(rows []row) error {
 			return err
 		}
 		files[styleFile], files[scriptFile] = []byte(styleSheet), []byte(pageScript)
-		if chart := chartScript(); chart.code != "" {
-			files[chartFile], files[licenceFile] = []byte(chart.code), []byte(chart.licence)
+		if w.chart.code != "" {
+			files[chartFile], files[licenceFile] = []byte(w.chart.code), []byte(w.chart.licence)
 		}
 	}
 	for name, content := range files {

@@ -249,9 +249,6 @@
     var first = charts.filter(function (c) { return c.spec.kind === 'time'; })[0];
     if (!first) { return; }
     samples = first.spec.option.series[0].data.map(function (q) { return q[0]; });
-    var heights = charts.filter(function (c) { return c.spec.id === 'height'; })[0].spec.option.series[0].data;
-    var top = 0;
-    heights.forEach(function (q, i) { if (q[1] > heights[top][1]) { top = i; } });
     var slider = document.getElementById('cursor-slider');
     slider.max = samples.length - 1;
     slider.addEventListener('input', function () { move(Number(slider.value)); });
@@ -264,7 +261,7 @@
         if (isFinite(s)) { move(nearest(s)); }
       });
     });
-    move(top);
+    move(data.start);
   }
 
   function watch() {

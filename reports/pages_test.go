@@ -1,0 +1,257 @@
+package reports
+
+import (
+	"bytes"
+	"context"
+	"os"
+	"path/filepath"
+	"regexp"
+	"strings"
+	"testing"
+	"time"
+
+	"github.com/chromedp/cdproto/page"
+	"github.com/chromedp/chromedp"
+	"github.com/chromedp/chromedp/kb"
+)
+
+// The file of the first pass of goldenReport.
+const firstPage = "passes/wagtail-1-skerry-point-20260310t104231z.html"
+
+// onDisk writes a report for the browser and returns the address of its folder. The
+// chart script must have been brought: a page must be drawn without any network.
+func onDisk(t *testing.T, r *Report, o Options) string {
+	t.Helper()
+	if chartScript().code == "" {
+		if os.Getenv("CI") == "true" {
+			t.Fatal("the chart script was not brought; run go generate ./... first")
+		}
+		t.Skip("the chart script was not brought; run go generate ./...")
+	}
+	return toDisk(t, r, o, chartScript())
+}
+
+func toDisk(t *testing.T, r *Report, o Options, chart script) string {
+	t.Helper()
+	dir := t.TempDir()
+	for name, content := range rendered(t, r, o, chart) {
+		path := filepath.Join(dir, filepath.FromSlash(name))
+		if err := os.MkdirAll(filepath.Dir(path), 0o755); err != nil {
+			t.Fatal(err)
+		}
+		if err := os.WriteFile(path, content, 0o600); err != nil {
+			t.Fatal(err)
+		}
+	}
+	return "file://" + filepath.ToSlash(dir) + "/"
+}
+
+// quiet fails when a page said anything or asked for something that is no file.
+func (o *observed) quiet(t *testing.T) {
+	t.Helper()
+	o.mutex.Lock()
+	defer o.mutex.Unlock()
+	for _, s := range o.said {
+		t.Errorf("the page said: %s", s)
+	}
+	if len(o.asked) == 0 {
+		t.Error("no request was seen, not even that for the page")
+	}
+	for _, a := range o.asked {
+		if !strings.HasPrefix(a, "file://") && !strings.HasPrefix(a, "data:") {
+			t.Errorf("the page asked for %s", a)
+		}
+	}
+}
+
+// emptyDrawings counts the charts of a page with no line or symbol in them.
+const emptyDrawings = `[...document.querySelectorAll('.drawing')].filter(d => d.querySelectorAll('svg path').length < 3).length`
+
+func TestPagesDrawAtAnyWidth(t *testing.T) {
+	ctx := browser(t)
+	o := observe(t, ctx)
+	root := onDisk(t, goldenReport(), Options{})
+	pages := map[string]int{
+		"index.html": 1, firstPage: 7, "passes/wagtail-1-high-plateau-20260310t121731z.html": 2,
+	}
+	for _, s := range []screen{{375, "light"}, {768, "dark"}, {1440, "light"}} {
+		for name, charts := range pages {
+			show(t, ctx, root+name, s)
+			if got := ask[int](t, ctx, `document.querySelectorAll('.drawing svg').length`); got != charts {
+				t.Errorf("%s at %d px: %d charts, want %d", name, s.width, got, charts)
+			}
+			if got := ask[int](t, ctx, emptyDrawings); got != 0 {
+				t.Errorf("%s at %d px: %d charts are empty", name, s.width, got)
+			}
+			if got := ask[int64](t, ctx, `document.documentElement.scrollWidth`); got > s.width {
+				t.Errorf("%s at %d px: the page is %d px wide", name, s.width, got)
+			}
+			if ask[bool](t, ctx, `document.getElementById('missing').checkVisibility()`) {
+				t.Errorf("%s at %d px: it says that the drawings are missing", name, s.width)
+			}
+		}
+	}
+	o.quiet(t)
+}
+
+func TestCursorGoesThroughAllCharts(t *testing.T) {
+	ctx := browser(t)
+	show(t, ctx, onDisk(t, goldenReport(), Options{})+firstPage, screen{1440, "light"})
+	const hairs = `[...document.querySelectorAll('.hair')].map(h => Math.round(parseFloat(h.style.left)))`
+	before := ask[[]int](t, ctx, hairs)
+	words := ask[string](t, ctx, `document.getElementById('cursor-reading').textContent`)
+	for _, want := range []string{"10:43:16 UTC, 10:43:16 WET", "dBm", "margin", "Mbit/s", "km", "kHz", "azimuth", "MB"} {
+		if !strings.Contains(words, want) {
+			t.Errorf("the reading at the culmination lacks %q: %s", want, words)
+		}
+	}
+	if err := chromedp.Do(ctx, chromedp.Focus(chromedp.ID("cursor-slider")), chromedp.KeyEvent(kb.Home)); err != nil {
+		t.Fatal(err)
+	}
+	if got := ask[string](t, ctx, `document.activeElement.id`); got != "cursor-slider" {
+		t.Fatalf("the focus is on %q", got)
+	}
+	after := ask[[]int](t, ctx, hairs)
+	for i := range before {
+		if before[i] == after[i] {
+			t.Errorf("the cursor of chart %d stayed at %d px", i, after[i])
+		}
+	}
+	if got := ask[string](t, ctx, `document.getElementById('cursor-slider').getAttribute('aria-valuetext')`); !strings.HasPrefix(got, "10:42:31 UTC") {
+		t.Errorf("the slider reads %q at AOS", got)
+	}
+}
+
+func TestIndexSortsAndFilters(t *testing.T) {
+	ctx := browser(t)
+	o := observe(t, ctx)
+	show(t, ctx, onDisk(t, fixtureReport(24), Options{})+"index.html", screen{1440, "light"})
+	const firstCell = `document.querySelector('#pass-table tbody tr').cells[%d].textContent`
+	press := func(column string) {
+		ask[bool](t, ctx, `(() => { document.querySelectorAll('#pass-table thead button')[`+column+`].click(); return true })()`)
+	}
+	press("4") // highest, rising then falling
+	low := ask[float64](t, ctx, strings.Replace("Number("+firstCell+")", "%d", "4", 1))
+	press("4")
+	high := ask[float64](t, ctx, strings.Replace("Number("+firstCell+")", "%d", "4", 1))
+	if !(low < high) {
+		t.Errorf("sorted by height the first row has %v, the other way round %v", low, high)
+	}
+	press("6") // least margin: what does not exist comes last
+	if got := ask[string](t, ctx, strings.Replace(firstCell, "%d", "6", 1)); got == "–" {
+		t.Error("a pass without a margin is sorted first")
+	}
+	set := func(id, value string) {
+		ask[bool](t, ctx, `(() => { const e = document.getElementById('`+id+`'); e.value = '`+value+`'; e.dispatchEvent(new Event('input', {bubbles: true})); return true })()`)
+	}
+	set("filter-spacecraft", "Wagtail 2")
+	if got := ask[int](t, ctx, `[...document.querySelectorAll('#pass-table tbody tr')].filter(r => r.checkVisibility()).length`); got != 8 {
+		t.Errorf("%d rows of Wagtail 2 are shown, want 8 of 24", got)
+	}
+	if got := ask[string](t, ctx, `document.getElementById('shown').textContent`); got != "8 of 24 passes" {
+		t.Errorf("the index says %q", got)
+	}
+	o.quiet(t)
+}
+
+func TestOneFileStandsAlone(t *testing.T) {
+	ctx := browser(t)
+	o := observe(t, ctx)
+	root := onDisk(t, goldenReport(), Options{OneFile: true})
+	content, err := os.ReadFile(strings.TrimPrefix(root, "file://") + firstPage)
+	if err != nil {
+		t.Fatal(err)
+	}
+	alone := filepath.Join(t.TempDir(), "mailed.html")
+	if err := os.WriteFile(alone, content, 0o600); err != nil {
+		t.Fatal(err)
+	}
+	show(t, ctx, "file://"+alone, screen{1440, "dark"})
+	if got := ask[int](t, ctx, emptyDrawings); got != 0 {
+		t.Errorf("%d charts are empty", got)
+	}
+	o.quiet(t)
+}
+
+func TestNamesShowAsTextInTheBrowser(t *testing.T) {
+	ctx := browser(t)
+	o := observe(t, ctx)
+	r := nastyReport()
+	root := onDisk(t, r, Options{})
+	show(t, ctx, root+"index.html", screen{1440, "light"})
+	if got := ask[string](t, ctx, `document.querySelector('#pass-table tbody tr').cells[1].textContent`); got != nasty[0] {
+		t.Errorf("the index shows %q, want %q", got, nasty[0])
+	}
+	show(t, ctx, root+"passes/"+pageNames(r.Keys)[0]+".html", screen{1440, "light"})
+	if got := ask[string](t, ctx, `document.querySelector('h1').textContent`); got != nasty[0]+" over "+nasty[1] {
+		t.Errorf("the page's heading is %q", got)
+	}
+	if got := ask[int](t, ctx, emptyDrawings); got != 0 {
+		t.Errorf("%d charts are empty", got)
+	}
+	o.quiet(t)
+}
+
+// Where the public script cannot be had, the page says so and opens its tables.
+func TestPageSaysWhatIsMissing(t *testing.T) {
+	ctx := browser(t)
+	show(t, ctx, toDisk(t, goldenReport(), Options{}, script{})+firstPage, screen{1440, "light"})
+	if !ask[bool](t, ctx, `document.getElementById('missing').checkVisibility()`) {
+		t.Error("nothing says that the drawings are missing")
+	}
+	if got := ask[int](t, ctx, `document.querySelectorAll('.figure details[open] table').length`); got != 7 {
+		t.Errorf("%d tables are open, want 7", got)
+	}
+}
+
+var pdfPage = regexp.MustCompile(`/Type\s*/Page[^s]`)
+
+func TestPrintsOnA4(t *testing.T) {
+	ctx := browser(t)
+	root := onDisk(t, goldenReport(), Options{})
+	for name, want := range map[string]int{"index.html": 2, firstPage: 4} {
+		show(t, ctx, root+name, screen{1440, "dark"})
+		yes := true
+		pdf, err := chromedp.Run(ctx, chromedp.PrintToPDF(func(p *page.PrintToPDFParams) { p.PreferCSSPageSize = &yes }))
+		if err != nil {
+			t.Fatal(err)
+		}
+		if got := len(pdfPage.FindAll(pdf, -1)); got != want {
+			t.Errorf("%s prints on %d pages, want %d", name, got, want)
+		}
+		if !bytes.Contains(pdf, []byte("/MediaBox [0 0 594.95996 841.91998]")) && !bytes.Contains(pdf, []byte("/MediaBox [0 0 595")) && !bytes.Contains(pdf, []byte("/MediaBox [0 0 594")) {
+			t.Errorf("%s does not print on A4", name)
+		}
+	}
+}
+
+// An index over a thousand passes is there in about a second; the bound leaves room
+// for a busy machine.
+func TestLargeIndexOpensQuickly(t *testing.T) {
+	ctx := browser(t)
+	rows := make([]row, 1000)
+	r := fixtureReport(1)
+	p, err := r.Load(context.Background(), 0)
+	if err != nil {
+		t.Fatal(err)
+	}
+	for i := range rows {
+		rows[i] = newRow("page", p)
+		rows[i].aos = rows[i].aos.Add(time.Duration(i) * 4 * time.Minute)
+		rows[i].culmination = rows[i].culmination.Add(time.Duration(i) * 4 * time.Minute)
+	}
+	index, err := indexPage(newWriter(r, Options{OneFile: true}, chartScript(), nil), rows)
+	if err != nil {
+		t.Fatal(err)
+	}
+	path := filepath.Join(t.TempDir(), "index.html")
+	if err := os.WriteFile(path, index, 0o600); err != nil {
+		t.Fatal(err)
+	}
+	show(t, ctx, "file://"+path, screen{1440, "light"})
+	took := ask[float64](t, ctx, `performance.getEntriesByType('navigation')[0].loadEventEnd`)
+	t.Logf("1000 passes: loaded and drawn in %.0f ms", took)
+	if took > 5000 {
+		t.Errorf("1000 passes: loaded and drawn in %.0f ms, want about 1000", took)
+	}
+}
