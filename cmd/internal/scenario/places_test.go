@@ -59,6 +59,13 @@ func TestLongLists(t *testing.T) {
 	if err == nil || !strings.Contains(err.Error(), want) {
 		t.Errorf("got %v, want it to hold %q", err, want)
 	}
+	for _, ext := range []string{"yaml", "toml", "json"} {
+		writeFile(t, "huge."+ext, `{"stations": [`+strings.Repeat("0,", 2_000_000)+"0]}")
+		want := "huge." + ext + ": the file holds more than 1000000 values; make it smaller"
+		if _, err := scenario.Load(scenario.Request{Path: "huge." + ext}); err == nil || err.Error() != want {
+			t.Errorf("two million values: got %v, want %s", err, want)
+		}
+	}
 	writeFile(t, "many.yaml", "stations: ["+strings.Repeat("{},", 1000)+"]\n")
 	_, err = scenario.Load(scenario.Request{Path: "many.yaml"})
 	if err == nil || strings.Count(err.Error(), "\n") != 100 || !strings.HasSuffix(err.Error(), " more faults") {

@@ -88,6 +88,11 @@ func Parse(text []byte, format Format) (*Node, error) {
 	if err := checkText(text); err != nil {
 		return nil, err
 	}
+	// Every value but the first stands behind a comma or a line end, so that this
+	// bounds them before the memory for them is taken.
+	if bytes.Count(text, []byte(","))+bytes.Count(text, []byte("\n")) > maxNodes {
+		return nil, &SyntaxError{Text: fmt.Sprintf("the file holds more than %d values; make it smaller", maxNodes)}
+	}
 	parse := [...]func([]byte) (*Node, error){parseYAML, parseTOML, parseJSON}[format]
 	root, err := parse(text)
 	if err != nil {
