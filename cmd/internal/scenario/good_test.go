@@ -2,6 +2,7 @@ package scenario_test
 
 import (
 	"reflect"
+	"strings"
 	"testing"
 	"time"
 
@@ -104,6 +105,39 @@ func TestSpacecraftLeftOut(t *testing.T) {
 	}
 	if want := []string{"Wagtail 1", "Pipit 2", "Dunlin 1", "Fulmar 1"}; !reflect.DeepEqual(names, want) {
 		t.Errorf("names %q, want %q", names, want)
+	}
+}
+
+// TestOldElementsWarn: ten days at 512 km are more than the three that are common
+// practice; the same set on its own day gives no warning.
+func TestOldElementsWarn(t *testing.T) {
+	s := loadGood(t, "testdata/good/no-spacecraft.yaml")
+	// Fulmar 1 flies above 1000 km.
+	if len(s.Warnings) != 3 || s.Warnings[0].About != "spacecraft Wagtail 1" || !strings.Contains(s.Warnings[0].Text, "10.5 days old at 2026-09-25T00:00:00Z") {
+		t.Errorf("warnings %q, want one each for the three below 1000 km", s.Warnings)
+	}
+	t.Setenv("SLANTWISE_WINDOW_START_UTC", "2026-09-14T12:00:00Z")
+	if s = loadGood(t, "testdata/good/no-spacecraft.yaml"); len(s.Warnings) != 0 {
+		t.Errorf("warnings of fresh sets: %q", s.Warnings)
+	}
+}
+
+// TestChoice picks among two sets of one object, for the window and for an instant.
+func TestChoice(t *testing.T) {
+	s := loadGood(t, "testdata/good/two-sets.yaml")
+	first, second := time.Date(2026, 9, 14, 12, 0, 0, 0, time.UTC), time.Date(2026, 9, 16, 12, 0, 0, 0, time.UTC)
+	c := &s.Spacecraft[0]
+	if !c.Elements.Epoch.Equal(second) || c.Elements.Among != 2 || len(c.Candidates) != 2 {
+		t.Errorf("newest: epoch %v of %d sets", c.Elements.Epoch, c.Elements.Among)
+	}
+	t.Setenv("SLANTWISE_ELEMENT_CHOICE", "nearest")
+	s = loadGood(t, "testdata/good/two-sets.yaml")
+	c = &s.Spacecraft[0]
+	if !c.Elements.Epoch.Equal(first) {
+		t.Errorf("nearest to the middle of the window: epoch %v, want %v", c.Elements.Epoch, first)
+	}
+	if at := c.ElementsAt(second.Add(-time.Hour)); !at.Epoch.Equal(second) || at.Age != -time.Hour {
+		t.Errorf("nearest to an instant: epoch %v, age %v", at.Epoch, at.Age)
 	}
 }
 
