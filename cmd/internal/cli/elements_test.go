@@ -142,7 +142,7 @@ func TestElementsConvertRefusesNineDigits(t *testing.T) {
 func TestElementsInto(t *testing.T) {
 	path := filepath.Join(t.TempDir(), "sets.tle")
 	code, out, errOut := elementsRun(t, wagtailSet, "-", "--convert", "tle", "--into", path)
-	if code != ExitAnswer || out != "" || errOut != "slantwise: "+path+": 1 element sets written\n" {
+	if code != ExitAnswer || out != "" || errOut != "slantwise: "+path+": 1 element set written\n" {
 		t.Errorf("exit %d, %q, %s", code, out, errOut)
 	}
 	holdsText(t, path, wagtailSet)

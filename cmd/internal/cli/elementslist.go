@@ -5,6 +5,7 @@ import (
 	"math"
 	"slices"
 	"strconv"
+	"strings"
 	"time"
 
 	"slantwise/orbit"
@@ -48,8 +49,8 @@ func (r *elementRow) derive(at time.Time) {
 	r.periodMin = facts.Period.Minutes()
 	node, err := r.NextAscendingNode(at)
 	if err != nil {
-		if r.remark == "" && r.used {
-			r.remark = elements.Label(r.Elements) + ": no next node: " + err.Error()
+		if r.used {
+			r.remark = strings.TrimPrefix(r.remark+"; "+elements.Label(r.Elements)+": no next node: "+err.Error(), "; ")
 		}
 		return
 	}
@@ -58,11 +59,7 @@ func (r *elementRow) derive(at time.Time) {
 
 func listElements(env *Env, o elementsOptions, sets []orbit.Elements) error {
 	rows := elementRows(sets, o.choice, o.at)
-	for _, r := range rows {
-		if r.remark != "" {
-			env.note("warning: %s", printable(r.remark))
-		}
-	}
+	noteRemarks(env, rows)
 	switch o.format {
 	case formatCSV:
 		return writeCSV(env.Out, elementHeads, func(yield func([]string) bool) {
@@ -78,6 +75,22 @@ func listElements(env *Env, o elementsOptions, sets []orbit.Elements) error {
 	return elementsTable(env, o, rows)
 }
 
+// noteRemarks tells the first remarks; a stale catalogue has one for each object.
+func noteRemarks(env *Env, rows []elementRow) {
+	told := 0
+	for _, r := range rows {
+		if r.remark == "" {
+			continue
+		}
+		if told++; told <= listLimit {
+			env.note("warning: %s", printable(r.remark))
+		}
+	}
+	if more := told - listLimit; more > 0 {
+		env.note("and %d more warnings; --format json has them all", more)
+	}
+}
+
 var elementHeads = []string{"name", "catalog_number", "international_designator", "epoch_utc", "age_d", "perigee_km", "apogee_km",
 	"inclination_deg", "period_min", "next_ascending_node_utc", "used", "file", "line"}
 
@@ -87,6 +100,13 @@ func (r *elementRow) record() []string {
 		fixed(r.apogeeKm, 1), fixed(r.Inclination.Degrees(), 4), fixed(r.periodMin, 3), utc(r.node), yes(r.used), r.Source.File,
 		strconv.Itoa(r.Source.Line),
 	}
+}
+
+func setCount(n int) string {
+	if n == 1 {
+		return "1 element set"
+	}
+	return strconv.Itoa(n) + " element sets"
 }
 
 func yes(b bool) string {
@@ -103,7 +123,7 @@ func elementsTable(env *Env, o elementsOptions, rows []elementRow) error {
 		r[1] = fmt.Sprintf("%05d", rows[i].CatalogNumber)
 		table[i] = slices.Delete(slices.Clone(r[:11]), 2, 3)
 	}
-	if _, err := fmt.Fprintf(env.Out, "%d element sets; age and next node at %s; of several sets of an object the %s is used\n\n", len(rows), utc(o.at), o.choice); err != nil {
+	if _, err := fmt.Fprintf(env.Out, "%s; age and next node at %s; of several sets of an object the %s is used\n\n", setCount(len(rows)), utc(o.at), o.choice); err != nil {
 		return fmt.Errorf("write the table: %w", err)
 	}
 	return writeTable(env.Out, env.outWidth(), []column{

@@ -59,7 +59,7 @@ func storeElements(env *Env, o elementsOptions, text []byte, sets []orbit.Elemen
 	if err != nil {
 		return err
 	}
-	env.note("%s: %d element sets written", o.into, len(sets))
+	env.note("%s: %s written", o.into, setCount(len(sets)))
 	return nil
 }
 
