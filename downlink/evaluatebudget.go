@@ -73,13 +73,17 @@ func (l *Link) cautions(g *Geometry, r *result) []string {
 	}
 	for _, t := range l.tables() {
 		low, high := t.table.Span()
-		if t.table.IsConstant() || g.Elevation >= low && g.Elevation <= high {
+		if t.table.IsConstant() || g.Elevation >= low-slack && g.Elevation <= high+slack {
 			continue
 		}
 		say("the table of the %s runs from %g to %g deg: at %.2f deg the value at its end is held", t.name, low.Degrees(), high.Degrees(), g.Elevation.Degrees())
 	}
 	return out
 }
+
+// slack is how far beyond a table's end nothing is said: AOS at the end itself is
+// known to a millisecond alone.
+const slack = 0.01 * unit.Degree
 
 type namedTable struct {
 	name  string

@@ -83,6 +83,9 @@ func (l *Link) notePolarization() {
 			l.note(Default, "axial ratio of the %s left out: 0 dB, perfectly circular", side.who)
 		}
 	}
+	if l.spec.Transmitter.Attitude == AttitudeTumbling {
+		l.note(Warning, "the polarisation is that on the transmit antenna's boresight; as the spacecraft tumbles it changes, to the opposite hand behind many antennas")
+	}
 	l.note(Assumption, "polarisation mismatch %.2f dB (%s), best %.2f dB", float64(m.Loss), m.Basis, float64(m.Best))
 	if float64(m.NinetyPercent) >= 0 {
 		l.note(Warning, "the angle between two linear polarisations is not known: the budget holds the mean, %.2f dB; 90 %% of the angles lose no more than %.2f dB", float64(m.Loss), float64(m.NinetyPercent))

@@ -7,7 +7,6 @@ import (
 	"time"
 
 	"slantwise/orbit"
-	"slantwise/orbit/unit"
 	"slantwise/station"
 )
 
@@ -125,6 +124,14 @@ func TestVolume(t *testing.T) {
 	near(t, "begins to close", c.From.Sub(circleStart).Seconds(), low, 0.01)
 	near(t, "ceases to close", c.To.Sub(circleStart).Seconds(), 600-low, 0.01)
 	near(t, "mode's bytes", coarse.Volume.ModeBytes, 4e7*c.To.Sub(c.From).Seconds()/8, 1)
+	achievable, mode := coarse.VolumeSoFar()
+	last := len(mode) - 1
+	near(t, "bytes at the achievable rate by LOS", achievable[last], coarse.Volume.AchievableBytes, 1e-3)
+	near(t, "bytes in the mode by LOS", mode[last], coarse.Volume.ModeBytes, 1)
+	near(t, "bytes in the mode by culmination", mode[300], coarse.Volume.ModeBytes/2, 0.01*coarse.Volume.ModeBytes)
+	if mode[0] != 0 || achievable[0] != 0 {
+		t.Errorf("%g and %g bytes at AOS", mode[0], achievable[0])
+	}
 	spec.Mode.DataRate = 1
 	if _, all := flown(t, spec, 600, time.Second); len(all.Volume.Closes) != 1 || all.Volume.Closes[0] != (Interval{circleStart, circleStart.Add(600 * time.Second)}) {
 		t.Errorf("a slow mode closes %v, want the whole pass", all.Volume.Closes)
@@ -196,45 +203,4 @@ func TestProfileDoesNotAllocateBySample(t *testing.T) {
 	if few, many := count(time.Minute), count(60*time.Millisecond); few != many {
 		t.Errorf("%g allocations for 11 samples, %g for 10001", few, many)
 	}
-}
-
-var sink float64
-
-// BenchmarkProfileWeek is the link of a week of passes at 1 s: 20,000 samples. The
-// loop beside it evaluates the formulas that a sample cannot do without.
-func BenchmarkProfileWeek(b *testing.B) {
-	const passes, seconds = 33, 605
-	spec := wagtail(b)
-	l := mustLink(b, spec)
-	track := circle{circleStart, seconds}
-	b.Run("link", func(b *testing.B) {
-		b.ReportAllocs()
-		for b.Loop() {
-			for range passes {
-				p, err := l.Profile(track, circleStart, circleStart.Add(seconds*time.Second), time.Second)
-				if err != nil {
-					b.Fatal(err)
-				}
-				sink += p.Volume.ModeBytes
-			}
-		}
-		b.ReportMetric(float64(b.Elapsed().Nanoseconds())/float64(b.N)/(passes*(seconds+1)), "ns/sample")
-	})
-	b.Run("reference", func(b *testing.B) {
-		frame := site()
-		for b.Loop() {
-			for range passes {
-				for s := range seconds + 1 {
-					state := track.StateAt(float64(s))
-					look := frame.Look(state)
-					up := state.Position.Sub(frame.Origin)
-					cos := state.Position.Dot(up) / (state.Position.Norm() * float64(look.Range))
-					fsl := 20 * math.Log10(4*math.Pi*float64(look.Range)*8180e6/unit.SpeedOfLight)
-					noise := 10 * math.Log10(100+float64(look.Elevation))
-					sink += math.Pow(10, (20*math.Log10(cos)-fsl-noise)/10)
-				}
-			}
-		}
-		b.ReportMetric(float64(b.Elapsed().Nanoseconds())/float64(b.N)/(passes*(seconds+1)), "ns/sample")
-	})
 }

@@ -54,3 +54,33 @@ func (p *Profile) volume() Volume {
 func (p *Profile) at(s float64) time.Time {
 	return p.Start.Add(time.Duration(math.Round(s * 1e9)))
 }
+
+// VolumeSoFar returns the bytes that have come down by each sample, at the achievable
+// rate and in the chosen mode; the last of each is the pass's Volume but for the
+// rounding of Closes to nanoseconds. NaN where there is no such rate.
+func (p *Profile) VolumeSoFar() (achievable, mode []float64) {
+	achievable, mode = make([]float64, len(p.Seconds)), make([]float64, len(p.Seconds))
+	bits := 0.0
+	for i, t := range p.Seconds {
+		if i > 0 {
+			bits += (t - p.Seconds[i-1]) * (p.AchievableRateBps[i-1] + p.AchievableRateBps[i]) / 2
+		}
+		achievable[i] = bits / 8
+		mode[i] = float64(p.DataRate) * p.closedBy(t) / 8
+		if p.DataRate == 0 {
+			mode[i] = math.NaN()
+		}
+	}
+	return achievable, mode
+}
+
+// closedBy returns for how many seconds the link has closed by t seconds after the
+// start.
+func (p *Profile) closedBy(t float64) float64 {
+	sum := 0.0
+	for _, c := range p.Volume.Closes {
+		from, to := c.From.Sub(p.Start).Seconds(), c.To.Sub(p.Start).Seconds()
+		sum += max(0, min(t, to)-from)
+	}
+	return sum
+}
