@@ -2,8 +2,8 @@
 minimum elevation, from the altitude that skyfield gives.
 
 The library's own event finder is not used. The altitude is scanned at a fixed step,
-every local maximum and minimum of the scan is refined by golden section, and each
-change of sign is bisected to 1e-6 s. A maximum or minimum between two samples thus
+every local maximum and minimum of the scan is refined by golden section and a fit of
+the top, and each change of sign is bisected to 1e-6 s. A maximum or minimum between two samples thus
 cannot hide a short pass or a short interruption.
 """
 import datetime
@@ -45,6 +45,7 @@ GRAZING = [
     ('Verification 29238', 'Middle north', 0, 0.0005, 5),
     ('Highly eccentric', 'Middle south', 1, 0.0005, 10),
     ('Verification 28057', 'Near the pole', 20, 0.0002, 5),
+    ('Stationary', 'Equator on a mountain', 0, 0.00001, 60),
 ]
 
 
@@ -77,14 +78,25 @@ def golden(f, low, high):
     low, high = np.array(low, float), np.array(high, float)
     if low.size == 0:
         return low
-    while (high - low).max() > 1e-4:
+    half = (high - low) / 4
+    while (high - low).max() > 1e-2:
         a, b = high - g * (high - low), low + g * (high - low)
         up = f(a) < f(b)
         low, high = np.where(up, a, low), np.where(up, high, b)
-    # The top is flat: close the last part by the parabola through three points 1 s apart.
+    # The top is flat, and single values do not tell where it is: a polynomial of
+    # degree 6 through 25 points over half of the bracket does.
     m = (low + high) / 2
-    y0, y1, y2 = f(m - 1), f(m), f(m + 1)
-    return m + (y0 - y2) / 2 / (y0 - 2 * y1 + y2)
+    x = np.linspace(-1, 1, 25)
+    y = f((m[:, None] + half[:, None] * x).ravel()).reshape(-1, 25)
+    return np.array([c + h * summit(x, v) for c, h, v in zip(m, half, y)])
+
+
+def summit(x, y):
+    slope = np.polynomial.Polynomial.fit(x, y, 6).deriv()
+    t = 0.0
+    for _ in range(5):
+        t -= slope(t) / slope.deriv()(t)
+    return t
 
 
 def bisect(f, low, high):
@@ -149,7 +161,7 @@ def main():
     for name, place, rank, below, step in GRAZING:
         scan = Scan(name, place, step)
         tops = np.sort(scan.sky.altitude(scan.tops))[::-1]
-        cases.append((name, place, round(tops[rank] - below, 6), scan))
+        cases.append((name, place, round(tops[rank] - below, 8), scan))
     heads, rows = [], []
     for number, (name, place, least, scan) in enumerate(cases, 1):
         found = scan.passes(least)
