@@ -113,7 +113,7 @@ func (s *scene) contact(a *arc, k *skyline, c clock) (r record, ok bool) {
 	}
 	top, near := s.extremes(a)
 	r.culmination = min(max(c.at(top.t), r.aos), r.los)
-	r.maxElevation = math.Asin(min(1, top.sine()))
+	r.maxElevation = s.height(&top)
 	r.minRange = near
 	r.aosAzimuth, r.culmAzimuth, r.losAzimuth = s.azimuth(&a.from), s.azimuth(&top), s.azimuth(&a.to)
 	r.aosElevation, r.losElevation = s.elevation(&a.from, k), s.elevation(&a.to, k)
@@ -139,5 +139,11 @@ func (s *scene) elevation(p *sight, k *skyline) float32 {
 	if k.level() && p.t != s.from && p.t != s.to {
 		return float32(k.low)
 	}
-	return float32(math.Asin(max(-1, min(1, p.sine()))))
+	return float32(s.height(p))
+}
+
+// height returns the elevation in rad from the offset alone: towards the zenith the
+// sine loses half of its digits, and what carrying leaves in the range besides.
+func (s *scene) height(p *sight) float64 {
+	return math.Atan2(p.d.Dot(s.frame.Up), math.Hypot(p.d.Dot(s.frame.East), p.d.Dot(s.frame.North)))
 }

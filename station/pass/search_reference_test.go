@@ -72,6 +72,20 @@ func comparePass(t *testing.T, got *pass.Pass, want map[string]string) {
 		}
 	}
 	for _, q := range []struct {
+		column string
+		got    unit.Angle
+	}{
+		{"aos_azimuth_deg", got.AOSAzimuth},
+		{"los_azimuth_deg", got.LOSAzimuth},
+	} {
+		// 0.001 deg: some 0.5 deg/s near the zenith times the millisecond, and 1e-5 deg of
+		// rounding.
+		d := math.Remainder(q.got.Degrees()-number(t, want, q.column), 360)
+		if !(math.Abs(d) <= 0.001) {
+			t.Errorf("%s of the pass of %s: %.6f, %+.6f off; want at most 0.001", q.column, want["aos_utc"], q.got.Degrees(), d)
+		}
+	}
+	for _, q := range []struct {
 		column    string
 		got       float64
 		tolerance float64
