@@ -62,7 +62,7 @@ func (l *Link) fillTerms(g *Geometry, s *scratch) error {
 	copy(v, l.base)
 	if l.pattern != nil {
 		gain, ok := l.pattern.gain(g.OffBoresight.Radians())
-		if !ok || math.IsNaN(float64(gain)) {
+		if !ok {
 			return l.noTransmitGain(g)
 		}
 		v[l.slots.transmitGain] = float64(gain)

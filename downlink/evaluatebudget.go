@@ -76,7 +76,7 @@ func (l *Link) cautions(g *Geometry, r *result) []string {
 		if t.table.IsConstant() || g.Elevation >= low-slack && g.Elevation <= high+slack {
 			continue
 		}
-		say("the table of the %s runs from %g to %g deg: at %.2f deg the value at its end is held", t.name, low.Degrees(), high.Degrees(), g.Elevation.Degrees())
+		say("the table of the %s runs from %g to %g deg: at %.2f deg the value at its end is held", t.name, asGiven(low), asGiven(high), g.Elevation.Degrees())
 	}
 	return out
 }

@@ -115,6 +115,9 @@ func TestMeasuredTables(t *testing.T) {
 	if len(b.Cautions) != 0 {
 		t.Errorf("cautions inside the tables: %v", b.Cautions)
 	}
+	if !l.noted(Assumption, "table of the measured G/T runs from 10 to 90 deg") {
+		t.Errorf("notes: %v", l.Notes())
+	}
 	low := mustAt(t, l, Geometry{Elevation: deg(6), Range: 1e6, OffBoresight: 0})
 	if len(low.Cautions) != 2 || !strings.Contains(low.Cautions[0], "runs from 10 to 90 deg: at 6.00 deg") {
 		t.Errorf("cautions under the tables: %v", low.Cautions)
@@ -280,6 +283,8 @@ func TestStatedGeometry(t *testing.T) {
 	if g, err := l.StatedGeometry(1e6, deg(20), nil, nil); err != nil || g.OffBoresight != 0 || !l.noted(Default, "attitude left out") {
 		t.Errorf("without attitude: %v off boresight, %v", g.OffBoresight, err)
 	}
+	spec.Transmitter.Pattern.BackLobe = dbp(-8) // which must not stand in for the angle
+	l = mustLink(t, spec)
 	if _, err := l.At(Geometry{Elevation: 0.3, Range: 1e6, OffBoresight: unit.Angle(math.NaN())}); err == nil || !strings.Contains(err.Error(), "give the attitude") {
 		t.Errorf("a flown spacecraft without attitude: %v", err)
 	}

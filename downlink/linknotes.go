@@ -101,7 +101,7 @@ func (l *Link) notePolarization() {
 func (l *Link) noteAntenna() {
 	a := l.spec.Antenna
 	if l.beamwidth > 0 {
-		l.note(Assumption, "pointing error: root mean square over both axes together, %g deg, with a half-power beamwidth of %.4g deg; the mean loss over the error", a.PointingRMS.Degrees(), l.beamwidth.Degrees())
+		l.note(Assumption, "pointing error: root mean square over both axes together, %g deg, with a half-power beamwidth of %.4g deg; the mean loss over the error", asGiven(a.PointingRMS), l.beamwidth.Degrees())
 	} else {
 		l.note(Default, "beamwidth and pointing error left out: no pointing loss")
 	}
@@ -137,8 +137,14 @@ func (l *Link) noteNoise() {
 			l.note(Warning, "noise added by the weather is left out, as a G/T without the gain cannot take it")
 		}
 	}
+	for _, t := range l.tables() {
+		low, high := t.table.Span()
+		if !t.table.IsConstant() && (low > 0 || high < 90*unit.Degree) {
+			l.note(Assumption, "the table of the %s runs from %g to %g deg of elevation; beyond it the value at its end is held", t.name, asGiven(low), asGiven(high))
+		}
+	}
 	if a.GOverTElevation != nil {
-		l.note(Assumption, "G/T was measured at %g deg elevation", a.GOverTElevation.Degrees())
+		l.note(Assumption, "G/T was measured at %g deg elevation", asGiven(*a.GOverTElevation))
 	}
 }
 

@@ -147,7 +147,7 @@ func (l *Link) addStationGain() {
 
 func (l *Link) addPointing() {
 	a := l.spec.Antenna
-	source := fmt.Sprintf("12 (e/w)² inside the main lobe, w %.4g deg, e %g deg", l.beamwidth.Degrees(), a.PointingRMS.Degrees())
+	source := fmt.Sprintf("12 (e/w)² inside the main lobe, w %.4g deg, e %g deg", l.beamwidth.Degrees(), asGiven(a.PointingRMS))
 	if a.Kind == station.Fixed {
 		source += " with the angle off the antenna's boresight"
 	}

@@ -67,15 +67,18 @@ func (p *Pattern) gain(off float64) (g unit.DB, ok bool) {
 		switch {
 		case off < math.Pi/2:
 			return p.PeakGain + unit.DB(10*p.Exponent*math.Log10(math.Cos(off))), true
-		case p.BackLobe != nil:
+		case off >= math.Pi/2 && p.BackLobe != nil:
 			return *p.BackLobe, true
 		}
-		return 0, false
+		return 0, false // not a number, too
 	}
 	return p.interpolate(off)
 }
 
 func (p *Pattern) interpolate(off float64) (unit.DB, bool) {
+	if !(off >= 0) {
+		return 0, false
+	}
 	last := p.Table[len(p.Table)-1]
 	if off >= last.OffBoresight.Radians() {
 		// A table up to 180 deg must not miss π by a rounding.

@@ -39,6 +39,11 @@ func TestGainAt(t *testing.T) {
 			t.Errorf("%s: got %v dBi, %v, want %v", c.name, got, err, c.want)
 		}
 	}
+	for name, p := range map[string]Pattern{"cosine": cosine, "table": points} {
+		if g, err := p.GainAt(unit.Angle(math.NaN())); err == nil {
+			t.Errorf("%s at no angle: %v dBi", name, g)
+		}
+	}
 	bare := Pattern{Kind: CosinePower, PeakGain: 6, Exponent: 2}
 	for p, want := range map[*Pattern]string{&bare: "give its back lobe", &points: "where the pattern's table ends"} {
 		if _, err := p.GainAt(deg(95)); err == nil || !strings.Contains(err.Error(), want) {
