@@ -280,7 +280,7 @@ func TestStatedGeometry(t *testing.T) {
 	}
 	spec.Transmitter.Attitude = AttitudeUnstated
 	l = mustLink(t, spec)
-	if g, err := l.StatedGeometry(1e6, deg(20), nil, nil); err != nil || g.OffBoresight != 0 || !l.noted(Default, "attitude left out") {
+	if g, err := l.StatedGeometry(1e6, deg(20), nil, nil); err != nil || g.OffBoresight != 0 || !l.noted(Assumption, "attitude left out") {
 		t.Errorf("without attitude: %v off boresight, %v", g.OffBoresight, err)
 	}
 	spec.Transmitter.Pattern.BackLobe = dbp(-8) // which must not stand in for the angle

@@ -44,7 +44,7 @@ func (l *Link) noteTransmitter() {
 	switch t.Attitude {
 	case AttitudeUnstated:
 		if t.Pattern.Kind != Isotropic {
-			l.note(Default, "attitude left out: a stated geometry without an off-boresight angle is taken at the transmit antenna's boresight")
+			l.note(Assumption, "attitude left out: a stated geometry without an off-boresight angle is taken at the transmit antenna's boresight")
 		}
 	case AttitudeNadir:
 		l.note(Assumption, "attitude nadir: the boresight points at the Earth's centre (the geodetic nadir lies up to 0.2 deg from it)")
@@ -103,7 +103,7 @@ func (l *Link) noteAntenna() {
 	if l.beamwidth > 0 {
 		l.note(Assumption, "pointing error: root mean square over both axes together, %g deg, with a half-power beamwidth of %.4g deg; the mean loss over the error", asGiven(a.PointingRMS), l.beamwidth.Degrees())
 	} else {
-		l.note(Default, "beamwidth and pointing error left out: no pointing loss")
+		l.note(Assumption, "the beamwidth is not known: no pointing loss")
 	}
 	if a.Beamwidth == 0 && a.Diameter > 0 && a.BeamwidthFactor == 0 {
 		l.note(Default, "beamwidth factor left out: %g deg times λ/D (58 for a uniform illumination to 73)", station.DefaultBeamwidthFactor.Degrees())
@@ -151,7 +151,7 @@ func (l *Link) noteNoise() {
 func (l *Link) noteMode() {
 	m, t := l.mode, &l.spec.Transmitter
 	if m == nil {
-		l.note(Default, "no mode: no Eb/N0, margin or achievable rate")
+		l.note(Assumption, "no mode: no Eb/N0, margin or achievable rate")
 		return
 	}
 	if m.ErrorRateText != "" {

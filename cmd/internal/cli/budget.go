@@ -103,7 +103,7 @@ func runBudget(env *Env, o *budgetOptions) error {
 	var r *budgetResult
 	switch {
 	case o.stated.given():
-		r, err = statedBudget(c, &o.stated)
+		r, err = statedBudget(s, c, &o.stated)
 	case !o.at.IsZero():
 		r, err = budgetAt(s, c, o.at)
 	default:

@@ -2,6 +2,7 @@ package cli
 
 import (
 	"fmt"
+	"slices"
 
 	"slantwise/cmd/internal/scenario"
 	"slantwise/downlink"
@@ -45,6 +46,36 @@ func chooseLink(s *scenario.Scenario, n linkNames) (*chosenLink, error) {
 		return nil, &InputError{Err: err}
 	}
 	return &c, nil
+}
+
+// notes gathers what an answer about the link takes for granted: the link's own
+// notes and the defaults of the scenario that touch it. The scenario lists every
+// default with its key, so that the link's own list of them is left out.
+func (c *chosenLink) notes(s *scenario.Scenario, flown bool) []downlink.Note {
+	var out []downlink.Note
+	for _, n := range c.link.Notes() {
+		if n.Kind != downlink.Default {
+			out = append(out, n)
+		}
+	}
+	for _, n := range s.Assumptions {
+		if c.touchedBy(n.About) || flown && n.About == "earth" {
+			out = append(out, downlink.Note{Kind: downlink.Default, Text: n.String()})
+		}
+	}
+	return out
+}
+
+// touchedBy tells whether a note of the scenario is about a part of the link.
+func (c *chosenLink) touchedBy(about string) bool {
+	craft := "spacecraft " + c.spacecraft.Name
+	transmitter := craft + ", transmitter " + c.transmitter.Name
+	site := "station " + c.station.Site.Name
+	parts := []string{craft, transmitter, site, site + ", antenna " + c.antenna.Name}
+	if c.mode != nil {
+		parts = append(parts, transmitter+", mode "+c.mode.Name)
+	}
+	return slices.Contains(parts, about)
 }
 
 // makeLink prepares a link with the site's frame and refraction.

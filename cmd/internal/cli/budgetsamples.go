@@ -22,8 +22,8 @@ type budgetResult struct {
 	notes    []downlink.Note
 }
 
-func newBudgetResult(c *chosenLink) *budgetResult {
-	return &budgetResult{chosenLink: c, notes: c.link.Notes()}
+func newBudgetResult(s *scenario.Scenario, c *chosenLink, flown bool) *budgetResult {
+	return &budgetResult{chosenLink: c, notes: c.notes(s, flown)}
 }
 
 func (r *budgetResult) warn(format string, args ...any) {
@@ -31,8 +31,8 @@ func (r *budgetResult) warn(format string, args ...any) {
 }
 
 // statedBudget is the budget of a geometry given by hand.
-func statedBudget(c *chosenLink, o *statedOptions) (*budgetResult, error) {
-	r := newBudgetResult(c)
+func statedBudget(s *scenario.Scenario, c *chosenLink, o *statedOptions) (*budgetResult, error) {
+	r := newBudgetResult(s, c, false)
 	g, err := c.link.StatedGeometry(unit.Length(*o.rangeKm)*unit.Kilometre, unit.Angle(*o.elevationDeg)*unit.Degree, angleOf(o.azimuthDeg), angleOf(o.offBoresightDeg))
 	if err != nil {
 		return nil, &InputError{Err: err}
@@ -55,7 +55,7 @@ func (r *budgetResult) add(g downlink.Geometry) error {
 
 // budgetAt is the budget at one instant.
 func budgetAt(s *scenario.Scenario, c *chosenLink, at time.Time) (*budgetResult, error) {
-	r := newBudgetResult(c)
+	r := newBudgetResult(s, c, true)
 	chosen := c.spacecraft.ElementsAt(at)
 	r.setElements(chosen, at)
 	eph, err := orbit.NewEphemeris(chosen.Elements, at, at.Add(time.Second), s.Earth)
@@ -73,7 +73,7 @@ const mostBudgets = 200_000
 // budgetOfPass is the budget along a pass: the one under way at the instant or the
 // next, the first of the window for the zero time. Without one there are no samples.
 func budgetOfPass(s *scenario.Scenario, c *chosenLink, at time.Time, step time.Duration) (*budgetResult, error) {
-	r := newBudgetResult(c)
+	r := newBudgetResult(s, c, true)
 	eph, err := orbit.NewEphemeris(c.spacecraft.Elements.Elements, s.Window.Start, s.Window.End, s.Earth)
 	if err != nil {
 		return nil, &InputError{Err: fmt.Errorf("spacecraft %s: %w", c.spacecraft.Name, err)}
