@@ -2,12 +2,11 @@ package orbit
 
 import (
 	"errors"
+	"flag"
 	"math"
 	"math/rand/v2"
 	"testing"
 	"time"
-
-	"pgregory.net/rapid"
 
 	"slantwise/orbit/unit"
 )
@@ -85,43 +84,47 @@ func TestInterpolationError(t *testing.T) {
 // TestInterpolationErrorOfAnyOrbit draws orbits with their perigee at 180 km or
 // higher, and windows on either side of the epoch.
 func TestInterpolationErrorOfAnyOrbit(t *testing.T) {
-	rapid.Check(t, func(t *rapid.T) {
-		perigee := rapid.Float64Range(180, 2000).Draw(t, "perigee km")
-		ecc := rapid.Float64Range(0, 0.85).Draw(t, "eccentricity")
-		axis := (wgs72RadiusKm + perigee) / (1 - ecc)
-		turn := func(name string, most float64) unit.Angle {
-			return unit.Angle(rapid.Float64Range(0, most).Draw(t, name)) * unit.Degree
-		}
-		el := Elements{
-			Epoch:        testEpoch,
-			MeanMotion:   86400 / (2 * math.Pi) * math.Sqrt(wgs72Mu/(axis*axis*axis)),
-			Eccentricity: ecc,
-			Inclination:  turn("inclination", 179), RAAN: turn("node", 360),
-			ArgPerigee: turn("perigee", 360), MeanAnomaly: turn("anomaly", 360),
-			BStar: rapid.Float64Range(-1e-4, 5e-4).Draw(t, "B*"),
-		}
-		from := testEpoch.Add(time.Duration(rapid.Int64Range(-5*86400e3, 5*86400e3).Draw(t, "from ms")) * time.Millisecond)
+	rng := rand.New(rand.NewPCG(3, 4))
+	worst, worstV := 0.0, 0.0
+	for range *anyOrbits {
+		el := anyOrbit(rng)
+		from := testEpoch.Add(time.Duration((rng.Float64()*10 - 5) * float64(24*time.Hour)))
 		e, err := NewEphemeris(el, from, from.Add(24*time.Hour), EarthOrientation{})
 		var pe *PropagationError
 		if errors.As(err, &pe) {
-			t.Skip("the orbit has ended")
+			continue // the orbit has ended
 		}
 		if err != nil {
 			t.Fatal(err)
 		}
-		rng := rand.New(rand.NewPCG(3, 4))
-		if p, v := interpolationError(t, e, rng, 200); p > positionBound || v > velocityBound {
-			t.Fatalf("step %g s: %.4f m and %.6f m/s from SGP4, over %g m or %g m/s", e.Step(), p, v, positionBound, velocityBound)
+		p, v := interpolationError(t, e, rng, 200)
+		if p > positionBound || v > velocityBound {
+			t.Errorf("%+v, step %g s: %.4f m and %.6f m/s from SGP4, over %g m or %g m/s", el, e.Step(), p, v, positionBound, velocityBound)
 		}
-	})
+		worst, worstV = math.Max(worst, p), math.Max(worstV, v)
+	}
+	t.Logf("%d orbits: worst %.4f m, %.6f m/s", *anyOrbits, worst, worstV)
+}
+
+var anyOrbits = flag.Int("orbits", 100, "how many random orbits to interpolate")
+
+func anyOrbit(rng *rand.Rand) Elements {
+	within := func(lo, hi float64) float64 { return lo + (hi-lo)*rng.Float64() }
+	turn := func(most float64) unit.Angle { return unit.Angle(within(0, most)) * unit.Degree }
+	ecc := 0.85 * math.Pow(rng.Float64(), 3) // low ones are commoner
+	axis := (wgs72RadiusKm + within(180, 2000)) / (1 - ecc)
+	return Elements{
+		Epoch:        testEpoch,
+		MeanMotion:   86400 / (2 * math.Pi) * math.Sqrt(wgs72Mu/(axis*axis*axis)),
+		Eccentricity: ecc,
+		Inclination:  turn(179), RAAN: turn(360), ArgPerigee: turn(360), MeanAnomaly: turn(360),
+		BStar: within(-1e-4, 5e-4),
+	}
 }
 
 // interpolationError returns the worst differences from the adaptor at random
 // seconds.
-func interpolationError(t interface {
-	Helper()
-	Fatal(...any)
-}, e *Ephemeris, rng *rand.Rand, samples int) (position, velocity float64) {
+func interpolationError(t *testing.T, e *Ephemeris, rng *rand.Rand, samples int) (position, velocity float64) {
 	t.Helper()
 	el := e.Elements()
 	prop, err := newPropagator(&el)

@@ -66,22 +66,22 @@ var lagrange = func() (w [velocityPoints]float64) {
 	return w
 }()
 
-// knotStep returns the whole seconds between knots for an element set. Two things
-// bound it: the angular speed at the perigee, since the flattening of the Earth adds
-// harmonics of it, and, on eccentric orbits, the nearest complex time at which the
-// two-body orbit passes through the Earth's centre, since polynomials in time
-// converge within that distance only. The factors were chosen by measurement
-// (TestInterpolationError).
+// knotStep returns the seconds between knots for an element set. Two things bound
+// it: the angular speed at the perigee (to the power of 4 rather than 2 in 1+e),
+// since the flattening of the Earth adds harmonics of it, and, on eccentric orbits,
+// the nearest complex time at which the two-body orbit passes through the Earth's
+// centre, since polynomials in time converge within that distance only. The factors
+// were chosen by measurement (TestInterpolationError).
 func knotStep(el *Elements) float64 {
 	const (
-		turn      = 0.36  // rad at the perigee
-		reached   = 0.112 // of the distance to the singularity
+		turn      = 0.35 // rad at the perigee
+		reached   = 0.11 // of the distance to the singularity
 		leastStep = 4
 		mostStep  = 3600
 	)
 	motion, _ := el.recovered()
 	n, e := motion/60, el.Eccentricity // rad/s
-	step := turn / (n * (1 + e) * (1 + e) / math.Pow(1-e*e, 1.5))
+	step := turn / (n * math.Pow(1+e, 4))
 	if e > 0 {
 		step = min(step, reached*(math.Acosh(1/e)-math.Sqrt(1-e*e))/n)
 	}

@@ -52,7 +52,7 @@ type weighted struct {
 // nearest point, and for each element that has more digits than the format, the
 // next point in that direction, so that the sum of weight times state is the state
 // of the set itself. The steps are so small (1e-4 degrees at most) that the second
-// order is below a micrometre on a low orbit. Sets that came from two lines need
+// order is millimetres (TestElementsFinerThanTheFormat). Sets that came from two lines need
 // the nearest point alone, except that the drag term b, corrected for a fault of
 // the library, may have more digits than were printed.
 //
