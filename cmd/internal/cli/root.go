@@ -46,6 +46,8 @@ Results go to stdout, words for people to stderr. Exit codes:
 		newCheck(env),
 		newElements(env),
 		newNew(env),
+		newPasses(env),
+		newPointing(env),
 		newBudget(env),
 	)
 	refuseUnknownTopics(root)

@@ -1,0 +1,189 @@
+package cli
+
+import (
+	"context"
+	"time"
+
+	"github.com/spf13/cobra"
+
+	"slantwise/cmd/internal/scenario"
+	"slantwise/orbit"
+	"slantwise/orbit/unit"
+	"slantwise/station"
+	"slantwise/station/pass"
+)
+
+type passesOptions struct {
+	spacecraft, stations []string
+	leastElevationDeg    float64
+	leastDuration        time.Duration
+	sunlit               bool
+	sort                 passOrder
+	workers              int
+	format               format
+}
+
+func newPasses(env *Env) *cobra.Command {
+	var o passesOptions
+	cmd := &cobra.Command{
+		Use:   "passes",
+		Short: "List the passes of the window",
+		Long: `List when each spacecraft stands above the horizon of each station within the window
+of the scenario: the uninterrupted time above the minimum elevation and the horizon
+mask, to the millisecond. A pass that the window cuts is marked, and its time is the
+window's edge. Elevations in the list are geometric.`,
+		Example: `  slantwise passes
+  slantwise passes --station "Skerry Point" --least-elevation-deg 30 --sort elevation
+  slantwise passes --sunlit --format csv > passes.csv`,
+		Args: noArgs,
+		RunE: func(cmd *cobra.Command, _ []string) error { return runPasses(cmd.Context(), env, o) },
+	}
+	fs := cmd.Flags()
+	fs.StringArrayVar(&o.spacecraft, "spacecraft", nil, "only this spacecraft, by `NAME`; may be repeated")
+	fs.StringArrayVar(&o.stations, "station", nil, "only this station, by `NAME`; may be repeated")
+	fs.Float64Var(&o.leastElevationDeg, "least-elevation-deg", 0, "only passes that culminate at least so `HIGH`, geometric, in degrees")
+	addDuration(fs, &o.leastDuration, "least-duration", 0, "only passes that last at least so long")
+	fs.BoolVar(&o.sunlit, "sunlit", false, "only passes at whose culmination the spacecraft is in full sunlight")
+	o.sort = orderAOS
+	fs.Var(&o.sort, "sort", "by aos, elevation (highest first), duration (longest first), spacecraft or station")
+	fs.IntVar(&o.workers, "workers", 0, "how many spacecraft are searched at once; 0: as many as the machine can")
+	addFormat(cmd, &o.format)
+	return cmd
+}
+
+func (o *passesOptions) check() error {
+	if !(o.leastElevationDeg >= -90 && o.leastElevationDeg <= 90) {
+		return inputErrorf("--least-elevation-deg: %g deg is not allowed; it must be -90 to 90 deg", o.leastElevationDeg)
+	}
+	if o.workers < 0 {
+		return inputErrorf("--workers: %d is not allowed; it must be 0 (as many as the machine can) or more", o.workers)
+	}
+	return nil
+}
+
+// passSearch is what a list of passes is about, with the list.
+type passSearch struct {
+	window     pass.Window
+	decides    station.ElevationKind
+	spacecraft []scenario.Spacecraft
+	stations   []scenario.Station
+	list       *pass.List
+}
+
+func runPasses(ctx context.Context, env *Env, o passesOptions) error {
+	if err := o.check(); err != nil {
+		return err
+	}
+	s, err := env.load(needOrbits)
+	if err != nil {
+		return err
+	}
+	p := passSearch{window: pass.Window{From: s.Window.Start, To: s.Window.End}, decides: s.Horizon}
+	if p.spacecraft, err = pickMany("spacecraft", o.spacecraft, s.Spacecraft, spacecraftName); err != nil {
+		return err
+	}
+	if p.stations, err = pickMany("station", o.stations, s.Stations, stationName); err != nil {
+		return err
+	}
+	env.tellHorizon(s.Horizon, p.stations)
+	if err := p.search(ctx, env, s.Earth, o); err != nil {
+		return err
+	}
+	return p.write(env, o)
+}
+
+func spacecraftName(c *scenario.Spacecraft) string { return c.Name }
+func stationName(s *scenario.Station) string       { return s.Site.Name }
+
+// tellHorizon says which elevation decides AOS and LOS, and which masks are compared
+// in the other kind.
+func (e *Env) tellHorizon(decides station.ElevationKind, stations []scenario.Station) {
+	e.note("%s elevation decides AOS and LOS", decides)
+	var other []string
+	for i := range stations {
+		if m := stations[i].Site.Mask; m != nil && m.Kind() != decides {
+			other = append(other, stations[i].Site.Name)
+		}
+	}
+	if len(other) > 0 {
+		kind := station.Apparent
+		if decides == station.Apparent {
+			kind = station.Geometric
+		}
+		e.note("the horizon mask is compared in %s elevation, as it was made, at %s", kind, quotedList(other))
+	}
+}
+
+// search fills the list. Spacecraft without a state in the window are told of and
+// passed over; when that is all of them, it is an error.
+func (p *passSearch) search(ctx context.Context, env *Env, earth orbit.EarthOrientation, o passesOptions) error {
+	bar := env.startProgress("passes", len(p.spacecraft))
+	faults := make([]error, len(p.spacecraft))
+	done := 0
+	job := pass.Job{
+		Spacecraft: len(p.spacecraft),
+		Ephemeris: func(i int, scratch *orbit.Ephemeris) (*orbit.Ephemeris, error) {
+			err := scratch.Rebuild(p.spacecraft[i].Elements.Elements, p.window.From, p.window.To, earth)
+			if err != nil {
+				faults[i] = err
+				return nil, nil
+			}
+			if cut := scratch.Truncated(); cut != nil {
+				faults[i] = cut
+			}
+			return scratch, nil
+		},
+		Window: p.window, Decides: p.decides, Keep: o.keep(), Workers: o.workers,
+		Progress: func(n int) { bar.add(n - done); done = n },
+	}
+	for i := range p.stations {
+		job.Sites = append(job.Sites, &p.stations[i].Site)
+	}
+	var err error
+	p.list, err = pass.SearchAll(ctx, job)
+	bar.stop()
+	if err != nil {
+		return err
+	}
+	return p.tellFaults(env, faults)
+}
+
+func (p *passSearch) tellFaults(env *Env, faults []error) error {
+	failed := 0
+	for i, err := range faults {
+		if err != nil {
+			failed++
+			env.note("warning: spacecraft %s: passes end where its orbit does: %v", printable(p.spacecraft[i].Name), err)
+		}
+	}
+	if failed == len(faults) && failed > 0 && p.list.Len() == 0 {
+		return inputErrorf("no spacecraft has an orbit in the window; see the warnings")
+	}
+	return nil
+}
+
+// keep returns the filter of the options, nil where all is kept.
+func (o *passesOptions) keep() func(*orbit.Ephemeris, *pass.Found) bool {
+	if o.leastElevationDeg == 0 && o.leastDuration == 0 && !o.sunlit {
+		return nil
+	}
+	least := unit.Angle(o.leastElevationDeg) * unit.Degree
+	return func(e *orbit.Ephemeris, f *pass.Found) bool {
+		if o.leastElevationDeg != 0 && f.MaxElevation < least || f.Duration() < o.leastDuration {
+			return false
+		}
+		return !o.sunlit || e.LightAt(min(max(e.Seconds(f.Culmination), 0), e.Span())) == orbit.Sunlit
+	}
+}
+
+// write writes the list in the order and format asked for.
+func (p *passSearch) write(env *Env, o passesOptions) error {
+	at := p.ordered(o.sort)
+	switch o.format {
+	case formatCSV:
+		return p.writeCSV(env.Out, at)
+	case formatJSON:
+		return p.writeJSON(env.Out, at)
+	}
+	return p.writeTable(env, at)
+}

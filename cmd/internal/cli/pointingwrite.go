@@ -1,0 +1,168 @@
+package cli
+
+import (
+	"bufio"
+	"context"
+	"fmt"
+	"io"
+	"math"
+	"strings"
+)
+
+// pointingColumns are the columns of a pointing file, a promise: names, units and
+// order.
+var pointingColumns = []string{
+	"utc", "azimuth_deg", "elevation_deg", "apparent_elevation_deg", "range_km", "range_rate_km_s",
+	"azimuth_rate_deg_s", "elevation_rate_deg_s", "doppler_hz", "received_frequency_hz", "sunlit",
+}
+
+// pointingNumbers is how many columns after the first hold numbers.
+const pointingNumbers = 9
+
+// number returns number n of the row, from 1, as pointingColumns has them, and its
+// decimals: the last one is under what a metre, or a millimetre per second, makes.
+func (p *pointing) number(r *pointingRow, n int) (v float64, decimals int) {
+	l := &r.look
+	switch n {
+	case 1:
+		return l.Azimuth.Degrees(), 6
+	case 2:
+		return l.Elevation.Degrees(), 6
+	case 3:
+		if !r.apparentOK {
+			return math.NaN(), 6
+		}
+		return r.apparent.Degrees(), 6
+	case 4:
+		return l.Range.Kilometres(), 6
+	case 5:
+		return l.RangeRate.KilometresPerSecond(), 9
+	case 6:
+		return l.AzimuthRate.DegreesPerSecond(), 9
+	case 7:
+		return l.ElevationRate.DegreesPerSecond(), 9
+	}
+	if p.transmitter == nil {
+		return math.NaN(), 3
+	}
+	shift, received := p.shift(r)
+	if n == 8 {
+		return shift, 3
+	}
+	return received, 3
+}
+
+func (p *pointing) appendNumber(b []byte, r *pointingRow, n int) []byte {
+	v, decimals := p.number(r, n)
+	if n == 1 {
+		return appendAzimuth(b, v, decimals)
+	}
+	return appendFixed(b, v, decimals)
+}
+
+func (p *pointing) writeCSV(ctx context.Context, w io.Writer) error {
+	out := bufio.NewWriterSize(w, 1<<16)
+	b := append([]byte(strings.Join(pointingColumns, ",")), '\n')
+	var day dayStamp
+	err := p.rows(ctx, func(r *pointingRow) error {
+		if _, err := out.Write(b); err != nil {
+			return fmt.Errorf("write the CSV: %w", err)
+		}
+		b = append(day.append(b[:0], r.at), ',')
+		for n := 1; n <= pointingNumbers; n++ {
+			b = append(p.appendNumber(b, r, n), ',')
+		}
+		b = append(append(b, r.light.String()...), '\n')
+		return nil
+	})
+	if err != nil {
+		return err
+	}
+	out.Write(b) // an error stays in the writer until it is flushed
+	if err := out.Flush(); err != nil {
+		return fmt.Errorf("write the CSV: %w", err)
+	}
+	return nil
+}
+
+// writeJSON writes who points at what, by which element set, and the rows with the
+// columns' names.
+func (p *pointing) writeJSON(ctx context.Context, w io.Writer) error {
+	out := bufio.NewWriterSize(w, 1<<16)
+	transmitter, frequency := "null", math.NaN()
+	if p.transmitter != nil {
+		transmitter, frequency = jsonField(p.transmitter.Name), p.transmitter.Frequency.Hertz()
+	}
+	carrier, err := num(frequency, 3).MarshalJSON()
+	if err != nil {
+		return err
+	}
+	fmt.Fprintf(out, "{\n  \"spacecraft\": %s,\n  \"station\": %s,\n  \"transmitter\": %s,\n  \"frequency_hz\": %s,\n  \"element_set_epoch_utc\": \"%s\",\n  \"rows\": [",
+		jsonField(p.spacecraft.Name), jsonField(p.station.Site.Name), transmitter, carrier, utc(p.elements.Epoch))
+	var b []byte
+	var day dayStamp
+	separator := "\n"
+	err = p.rows(ctx, func(r *pointingRow) error {
+		b = append(append(b[:0], separator...), `    {"utc": "`...)
+		b = append(day.append(b, r.at), '"')
+		for n := 1; n <= pointingNumbers; n++ {
+			b = append(append(append(b, `, "`...), pointingColumns[n]...), `": `...)
+			before := len(b)
+			if b = p.appendNumber(b, r, n); len(b) == before {
+				b = append(b, "null"...)
+			}
+		}
+		b = append(append(append(b, `, "sunlit": "`...), r.light.String()...), `"}`...)
+		separator = ",\n"
+		if _, err := out.Write(b); err != nil {
+			return fmt.Errorf("write the JSON: %w", err)
+		}
+		return nil
+	})
+	if err != nil {
+		return err
+	}
+	out.WriteString("\n  ]\n}\n") // an error stays in the writer until it is flushed
+	if err := out.Flush(); err != nil {
+		return fmt.Errorf("write the JSON: %w", err)
+	}
+	return nil
+}
+
+// writeTable writes the rows for people, with the station's own time where it has a
+// time zone.
+func (p *pointing) writeTable(ctx context.Context, env *Env) error {
+	zone := p.station.Site.TimeZone
+	columns := []column{textColumn("UTC")}
+	if zone != nil {
+		columns = append(columns, textColumn("local"))
+	}
+	for _, head := range []string{"azimuth deg", "elevation deg", "apparent deg", "range km", "range rate km/s",
+		"azimuth rate deg/s", "elevation rate deg/s", "Doppler Hz", "received Hz"} {
+		columns = append(columns, numberColumn(head))
+	}
+	columns = append(columns, textColumn("light"))
+	var rows [][]string
+	err := p.rows(ctx, func(r *pointingRow) error {
+		row := []string{utc(r.at)}
+		if zone != nil {
+			row = append(row, localTime(r.at, zone))
+		}
+		for n := 1; n <= pointingNumbers; n++ {
+			v, decimals := p.number(r, n)
+			// For the eye: angles to 0.001 deg, metres, millimetres per second, hertz.
+			decimals = map[int]int{9: 6, 6: 3, 3: 0}[decimals]
+			if n == 1 {
+				row = append(row, azimuth(v, decimals))
+			} else {
+				row = append(row, fixed(v, decimals))
+			}
+		}
+		rows = append(rows, append(row, r.light.String()))
+		return nil
+	})
+	if err != nil {
+		return err
+	}
+	return writeTable(env.Out, env.outWidth(), columns, rows)
+}
