@@ -137,7 +137,7 @@ func (p *pointing) writeTable(ctx context.Context, env *Env) error {
 	if zone != nil {
 		columns = append(columns, textColumn("local"))
 	}
-	for _, head := range []string{"azimuth deg", "elevation deg", "apparent deg", "range km", "range rate km/s",
+	for _, head := range []string{"azimuth deg", "elevation deg", "apparent elevation deg", "range km", "range rate km/s",
 		"azimuth rate deg/s", "elevation rate deg/s", "Doppler Hz", "received Hz"} {
 		columns = append(columns, numberColumn(head))
 	}
