@@ -2,6 +2,7 @@ package reports
 
 import (
 	"math"
+	"time"
 
 	"slantwise/downlink"
 	"slantwise/orbit/unit"
@@ -44,6 +45,14 @@ func budgetTable(p *Pass) budgetView {
 	return view
 }
 
+func times(all []namedBudget) []time.Time {
+	list := make([]time.Time, len(all))
+	for i, b := range all {
+		list[i] = b.budget.Time
+	}
+	return list
+}
+
 // cells writes one value of each budget.
 func cells(all []namedBudget, write func(*downlink.Budget) string) []string {
 	list := make([]string, len(all))
@@ -63,7 +72,7 @@ func geometryRows(site *station.Site, all []namedBudget) []budgetRow {
 	}
 	rows := []budgetRow{{Name: "time", Unit: "UTC", Cells: cells(all, func(b *downlink.Budget) string { return clock(b.Time) })}}
 	if zone := site.TimeZone; zone != nil {
-		rows = append(rows, localRow(zone, all[0].budget.Time, all[1].budget.Time, all[2].budget.Time))
+		rows = append(rows, localRow(zone, times(all)...))
 	}
 	return append(rows,
 		budgetRow{Name: "azimuth", Unit: "deg", Cells: deg(func(b *downlink.Budget) unit.Angle { return b.Azimuth })},

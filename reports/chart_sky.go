@@ -5,7 +5,7 @@ import (
 	"github.com/go-echarts/go-echarts/v2/opts"
 )
 
-const skyCaption = "Track on the sky as seen from the station: north is up, east is to the right, the zenith in the middle, the horizon at the rim; elevation in degrees."
+const skyCaption = "Track on the sky as seen from the station: north is up, east is to the right, the zenith in the middle, the horizon at the rim; elevation in degrees. The shaded rim lies under the horizon mask or the minimum elevation."
 
 // drawSky returns the sky track: azimuth clockwise from north, elevation from the
 // rim inwards, with the horizon mask where the station has one.
@@ -35,7 +35,7 @@ func drawSky(p *Pass, fr *frame) drawing {
 	// The binding leaves out a minimum of 0, and the axes must not choose their own.
 	m["radiusAxis"] = map[string]any{"type": "value", "min": 0, "max": 90, "interval": 30, "inverse": true}
 	m["angleAxis"] = map[string]any{"type": "value", "min": 0, "max": 360, "interval": 30, "startAngle": 90, "clockwise": true}
-	m["legend"] = map[string]any{"show": len(p.Horizon) > 0, "data": []string{"track", "horizon mask"}}
+	m["legend"] = map[string]any{"show": len(p.Horizon) > 0, "data": []string{"track", "least elevation"}}
 	return drawing{
 		ID: "sky", Kind: "sky", Option: m,
 		Reads: []reading{{Series: 0, Label: "elevation", Unit: "deg", Decimals: 1}, {Series: 0, Label: "azimuth", Unit: "deg", Decimals: 1}},
@@ -65,7 +65,7 @@ func maskSeries(horizon []Direction) charts.SingleSeries {
 		d := horizon[i%n]
 		el[i], az[i], all[i] = max(d.ElevationDeg, 0), d.AzimuthDeg, i
 	}
-	s := skySeries("horizon mask", dashed, el, az, all)
+	s := skySeries("least elevation", dashed, el, az, all)
 	s.AreaStyle = &opts.AreaStyle{Origin: "start", Opacity: opts.Float(0.25)}
 	return s
 }

@@ -89,9 +89,9 @@ type namedBudget struct {
 }
 
 func budgetsOf(r *Radio) []namedBudget {
-	return []namedBudget{
-		{"aos", "AOS", &r.AOS},
-		{"culmination", "culmination", &r.Culmination},
-		{"least_margin", "least margin", &r.LeastMargin},
+	list := []namedBudget{{"aos", "AOS", &r.AOS}, {"culmination", "culmination", &r.Culmination}}
+	if finite(r.Least.Value) {
+		list = append(list, namedBudget{"least_margin", "least margin", &r.LeastMargin})
 	}
+	return list
 }

@@ -60,7 +60,9 @@ func fixturePass(s shape) *Pass {
 			AOS: s.aos, Culmination: s.aos.Add(time.Duration(s.half * float64(time.Second))),
 			LOS: s.aos.Add(time.Duration(2 * s.half * float64(time.Second))), Cut: s.cut,
 		},
-		Notes: []Note{{Kind: Assumption, About: "attitude", Text: "The spacecraft keeps its antenna at nadir.", Source: "scenario"}},
+		Notes: []Note{{Kind: Warning, About: "Wagtail 1", Text: "The element set is 4.2 days old in the middle of the window; order a fresh one."},
+			{Kind: Default, About: "earth", Text: "UT1 is taken as UTC.", Source: "up to 0.9 s, ITU-R TF.460"},
+			{Kind: Assumption, About: "attitude", Text: "The spacecraft keeps its antenna at nadir.", Source: "scenario"}},
 	}
 	for az := 0.0; az < 360; az += 15 {
 		p.Horizon = append(p.Horizon, Direction{az, 4 + 5*math.Abs(math.Sin(az/50))})
@@ -166,6 +168,10 @@ func fillRadio(p *Pass, s shape) {
 		f.Volume.Closes = append(f.Volume.Closes, downlink.Interval{From: open, To: p.Pass.LOS})
 	}
 	f.Volume.AchievableBytes, f.Volume.ModeBytes = best, chosen
+	r.Modes = []ModeResult{
+		{Name: "safe", Text: "QPSK, concatenated", Rate: 1e6, Closed: p.Pass.Duration(), Bytes: p.Pass.Duration().Seconds() * 1e6 / 8, LeastMarginDB: r.Least.Value + 8, GreatestMarginDB: r.Greatest.Value + 8},
+		{Name: "fast", Text: r.ModeText, Rate: 4e6, Bytes: chosen, LeastMarginDB: r.Least.Value, GreatestMarginDB: r.Greatest.Value, Chosen: true},
+	}
 }
 
 func fixtureBudget(f *downlink.Profile, s shape, i int) downlink.Budget {

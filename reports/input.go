@@ -16,7 +16,7 @@ type Report struct {
 	Title    string    // what the report is about, as the scenario's name
 	From, To time.Time // the window that was searched
 	Horizon  station.ElevationKind
-	Notes    []Note // hold for every pass; shown on the index and on each page
+	Notes    []Note // of the index
 
 	// Keys names the passes in the order of the index. Load returns pass i in full;
 	// workers call it at the same time, each i once, and drop the pass when its page
@@ -45,7 +45,7 @@ type Pass struct {
 	// geometry are filled and the others are nil.
 	Profile *downlink.Profile
 	Radio   *Radio // nil without a transmitter or antenna
-	Notes   []Note // hold for this pass
+	Notes   []Note // of the page: all that hold for this pass
 }
 
 // Direction is a point of the sky.
@@ -64,14 +64,25 @@ type Elements struct {
 type Radio struct {
 	Transmitter, Antenna, Mode string
 	Frequency                  unit.Frequency
-	ModeText                   string // modulation and coding in words; may be empty
+	ModeText                   string       // modulation and coding in words; may be empty
+	Modes                      []ModeResult // of all modes that were looked at, the chosen one among them
 
-	Least, Greatest Moment // of Profile.MarginDB; NaN without a margin
+	Least, Greatest Moment // of Profile.MarginDB; NaN and no time without a margin
 
 	// Volume so far at each sample, in bytes; the last is the pass's.
 	AchievableBytes, ModeBytes []float64
 
-	AOS, Culmination, LeastMargin downlink.Budget
+	AOS, Culmination, LeastMargin downlink.Budget // LeastMargin counts only where there is a least margin
+}
+
+// ModeResult is what a mode brings in a pass, held from AOS to LOS.
+type ModeResult struct {
+	Name, Text                      string
+	Rate                            unit.BitRate
+	Closed                          time.Duration // how long its margin is at least what is required
+	Bytes                           float64
+	LeastMarginDB, GreatestMarginDB float64
+	Chosen                          bool
 }
 
 // Moment is a value and when it is reached.

@@ -59,7 +59,18 @@ type radioJSON struct {
 	AchievableBytes  number         `json:"achievable_bytes"`
 	ModeBytes        number         `json:"mode_bytes"`
 	Closes           []intervalJSON `json:"closes"`
+	Modes            []modeJSON     `json:"modes"`
 	Budgets          []budgetJSON   `json:"budgets"`
+}
+
+type modeJSON struct {
+	Name             string `json:"name"`
+	DataRateBps      number `json:"data_rate_bps"`
+	ClosesS          number `json:"closes_s"`
+	LeastMarginDB    number `json:"least_margin_db"`
+	GreatestMarginDB number `json:"greatest_margin_db"`
+	Bytes            number `json:"bytes"`
+	Chosen           bool   `json:"chosen"`
 }
 
 type intervalJSON struct {
@@ -111,10 +122,15 @@ func radioHead(p *Pass) *radioJSON {
 		AchievableBytes: number{f.Volume.AchievableBytes, 0},
 		ModeBytes:       number{f.Volume.ModeBytes, 0},
 		Closes:          []intervalJSON{},
+		Modes:           []modeJSON{},
 		Budgets:         []budgetJSON{},
 	}
 	for _, c := range f.Volume.Closes {
 		h.Closes = append(h.Closes, intervalJSON{utcText(c.From), utcText(c.To)})
+	}
+	for _, m := range r.Modes {
+		h.Modes = append(h.Modes, modeJSON{m.Name, number{m.Rate.BitsPerSecond(), 0}, number{m.Closed.Seconds(), 3},
+			number{m.LeastMarginDB, 3}, number{m.GreatestMarginDB, 3}, number{m.Bytes, 0}, m.Chosen})
 	}
 	for _, at := range budgetsOf(r) {
 		h.Budgets = append(h.Budgets, budgetHead(at.key, at.budget))

@@ -24,7 +24,8 @@ type passView struct {
 	Warnings               []Note
 	Figures                []figureView
 	Budget, Noise          budgetView
-	Doubts                 []Note // of single budgets
+	Modes                  []modeView // empty where there was nothing to choose
+	Doubts                 []Note     // of single budgets
 	Assumptions, Defaults  []Note
 	CSV, JSON              template.URL
 	Stem                   string
@@ -42,6 +43,26 @@ type linkView struct {
 	ModeRate                                        string
 }
 
+// modeView is a line of the table of modes.
+type modeView struct {
+	Name, Text, Rate, Closed, Margin, Volume string
+	Chosen                                   bool
+}
+
+func modeViews(modes []ModeResult) []modeView {
+	if len(modes) < 2 {
+		return nil
+	}
+	list := make([]modeView, len(modes))
+	for i, m := range modes {
+		list[i] = modeView{
+			Name: m.Name, Text: m.Text, Rate: withUnit(m.Rate.BitsPerSecond(), rateScales), Closed: span(m.Closed),
+			Margin: fixed(m.LeastMarginDB, 1) + " to " + fixed(m.GreatestMarginDB, 1), Volume: withUnit(m.Bytes, byteScales), Chosen: m.Chosen,
+		}
+	}
+	return list
+}
+
 type elementView struct{ Name, Epoch, Age, From string }
 
 // passPage renders the page of a pass.
@@ -55,7 +76,6 @@ func passPage(w *writer, i int, p *Pass) ([]byte, error) {
 	if i+1 < len(w.names) {
 		v.Next = w.names[i+1]
 	}
-	v.addNotes(w.report.Notes)
 	v.addNotes(p.Notes)
 	fr := newFrame(p)
 	drawings, views := figures(p, fr)
@@ -116,7 +136,7 @@ func newPassView(p *Pass) *passView {
 	v.Events = eventTable(p)
 	if p.Radio != nil {
 		v.Link = newLinkView(p)
-		v.Budget, v.Noise = budgetTable(p), noiseTable(p)
+		v.Budget, v.Noise, v.Modes = budgetTable(p), noiseTable(p), modeViews(p.Radio.Modes)
 		for _, b := range budgetsOf(p.Radio) {
 			for _, c := range b.budget.Cautions {
 				v.Doubts = append(v.Doubts, Note{About: "at " + b.name, Text: c})

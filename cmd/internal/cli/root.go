@@ -49,6 +49,7 @@ Results go to stdout, words for people to stderr. Exit codes:
 		newPasses(env),
 		newPointing(env),
 		newBudget(env),
+		newReport(env),
 	)
 	refuseUnknownTopics(root)
 	markStart(root, env)

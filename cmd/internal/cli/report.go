@@ -1,0 +1,106 @@
+package cli
+
+import (
+	"context"
+	"errors"
+	"fmt"
+
+	"github.com/spf13/cobra"
+
+	"slantwise/reports"
+)
+
+// reportOptions is what the command line says.
+type reportOptions struct {
+	into                 string
+	oneFile              bool
+	spacecraft, stations []string
+	mode                 string
+	workers              int
+}
+
+func newReport(env *Env) *cobra.Command {
+	return newReportRunning(env, runReport)
+}
+
+// newReportRunning takes the function that does the work, so that a test can look at
+// the flags alone.
+func newReportRunning(env *Env, run func(context.Context, *Env, reportOptions) error) *cobra.Command {
+	var o reportOptions
+	cmd := &cobra.Command{
+		Use:   "report",
+		Short: "Write a report for the browser: an index and a page for each pass",
+		Long: `Write a folder with an index over all passes of the window and a page for each pass:
+when, how high, how strong, whether the link closes and from when to when, how many
+bytes; charts along the pass; the link budget at AOS, at culmination and at the least
+margin; assumptions and cautions. The numbers of each page lie beside it as CSV and
+JSON.
+
+A pass gets a page for each transmitter of the spacecraft that an antenna of the
+station takes, and a page of geometry where there is none. Volumes and margins are
+those of one mode of the transmitter: the one that brings the most bytes in the pass,
+or --mode.
+
+The folder appears whole or not at all. In a folder with an earlier report the files
+of that report are replaced, and all others stay; a folder that holds something else
+is refused. Standard output names the file to open.`,
+		Example: `  slantwise report
+  slantwise report --station "Skerry Point" --mode fast --into friday
+  slantwise report --one-file --spacecraft "Wagtail 1"   pages to be mailed`,
+		Args: noArgs,
+		RunE: func(cmd *cobra.Command, _ []string) error {
+			if o.workers < 0 {
+				return inputErrorf("--workers: %d is not allowed; it must be 0 (as many as the machine can) or more", o.workers)
+			}
+			if o.into == "" {
+				return inputErrorf("--into: the name of the folder is empty; give one, or leave the flag out for slantwise-report")
+			}
+			return run(cmd.Context(), env, o)
+		},
+	}
+	fs := cmd.Flags()
+	fs.StringVar(&o.into, "into", "slantwise-report", "write into this `FOLDER`")
+	fs.BoolVar(&o.oneFile, "one-file", false, "put everything inside each page, to be mailed")
+	fs.StringArrayVar(&o.spacecraft, "spacecraft", nil, "only this spacecraft, by `NAME`; may be repeated")
+	fs.StringArrayVar(&o.stations, "station", nil, "only this station, by `NAME`; may be repeated")
+	fs.StringVar(&o.mode, "mode", "", "take the mode of this `NAME` where a transmitter has it")
+	fs.IntVar(&o.workers, "workers", 0, "how many pages are made at once; 0: as many as the machine can")
+	return cmd
+}
+
+func runReport(ctx context.Context, env *Env, o reportOptions) error {
+	s, err := env.load(needOrbits)
+	if err != nil {
+		return err
+	}
+	plan, err := planReport(ctx, s, o)
+	if err != nil {
+		return err
+	}
+	for _, w := range plan.warnings {
+		env.note("warning: %s", w)
+	}
+	bar := env.startProgress("pages", len(plan.pages))
+	index, err := reports.Write(ctx, o.into, plan.report(), reports.Options{
+		OneFile: o.oneFile, Workers: o.workers, Progress: func(int, int) { bar.add(1) },
+	})
+	bar.stop()
+	var folder *reports.FolderError
+	switch {
+	case errors.As(err, &folder):
+		return inputErrorf("--into: %w", err)
+	case err != nil:
+		return err
+	}
+	env.note("%s on %s; open this file in a browser:", counted(plan.passes, "pass", "passes"), counted(len(plan.pages), "page", "pages"))
+	_, err = fmt.Fprintln(env.Out, index)
+	return err
+}
+
+// counted writes a number of things.
+func counted(n int, one, many string) string {
+	if n == 1 {
+		return "1 " + one
+	}
+	return fmt.Sprintf("%d %s", n, many)
+}

@@ -1,0 +1,126 @@
+package cli
+
+import (
+	"context"
+	"fmt"
+	"math"
+	"path/filepath"
+	"time"
+
+	"slantwise/downlink"
+	"slantwise/reports"
+)
+
+// load works out one page.
+func (p *reportPlan) load(ctx context.Context, i int) (*reports.Pass, error) {
+	if err := ctx.Err(); err != nil {
+		return nil, err
+	}
+	page := &p.pages[i]
+	craft, site := &p.craft[page.Spacecraft], &p.sites[page.Site]
+	el := craft.Elements
+	out := &reports.Pass{
+		Spacecraft: craft.Name, Site: &site.Site, Horizon: site.horizon, Pass: page.Pass,
+		Elements: reports.Elements{
+			Name: el.Name, CatalogNumber: el.CatalogNumber, Epoch: el.Epoch, Age: el.Elements.Age(page.AOS), Source: el.Source,
+		},
+	}
+	// Only the file's name: where it lies on this machine is nobody's business.
+	if out.Elements.Source.File != "" {
+		out.Elements.Source.File = filepath.Base(out.Elements.Source.File)
+	}
+	step := sampleStep(page.Duration())
+	if page.link == nil {
+		out.Profile, out.Notes = geometryProfile(craft, site, page.AOS, page.LOS, step), p.pageNotes(page, nil)
+		return out, nil
+	}
+	best, err := page.bestMode(craft, step)
+	if err != nil {
+		return nil, fmt.Errorf("%s over %s: %w", craft.Name, site.Site.Name, err)
+	}
+	out.Profile, out.Notes = best.profile, p.pageNotes(page, best.link)
+	if out.Radio, err = reportRadio(craft, page, best); err != nil {
+		return nil, fmt.Errorf("%s over %s: %w", craft.Name, site.Site.Name, err)
+	}
+	return out, nil
+}
+
+// mostReportSamples is how many samples a page has, about: a second apart up to two
+// hours, so that a page over days stays a page.
+const mostReportSamples = 7200
+
+// sampleStep returns the whole seconds between the samples of a pass.
+func sampleStep(length time.Duration) time.Duration {
+	return max(time.Second, time.Duration(math.Ceil(length.Seconds()/mostReportSamples))*time.Second)
+}
+
+// geometryProfile fills the columns that need no radio.
+func geometryProfile(craft *reportCraft, site *reportSite, aos, los time.Time, step time.Duration) *downlink.Profile {
+	f := &downlink.Profile{Start: aos}
+	length := los.Sub(aos).Seconds()
+	first := craft.ephemeris.Seconds(aos)
+	for k := 0; ; k++ {
+		s := min(float64(k)*step.Seconds(), length)
+		look := site.frame.Look(craft.ephemeris.StateAt(min(first+s, craft.ephemeris.Span())))
+		apparent := math.NaN()
+		if a, ok := site.refraction.Apparent(look.Elevation); ok {
+			apparent = a.Degrees()
+		}
+		f.Seconds = append(f.Seconds, s)
+		f.AzimuthDeg = append(f.AzimuthDeg, look.Azimuth.Degrees())
+		f.ElevationDeg = append(f.ElevationDeg, look.Elevation.Degrees())
+		f.ApparentElevationDeg = append(f.ApparentElevationDeg, apparent)
+		f.RangeKm = append(f.RangeKm, look.Range.Kilometres())
+		f.RangeRateKmS = append(f.RangeRateKmS, look.RangeRate.KilometresPerSecond())
+		if s >= length {
+			return f
+		}
+	}
+}
+
+// reportRadio works out what the page says of the link beside the profile.
+func reportRadio(craft *reportCraft, page *reportPage, best *modeOnPass) (*reports.Radio, error) {
+	c, f := best.link, best.profile
+	r := &reports.Radio{Transmitter: c.transmitter.Name, Antenna: c.antenna.Name, Frequency: c.link.Frequency(), Modes: best.results}
+	if c.mode != nil {
+		r.Mode, r.ModeText = c.mode.Name, c.mode.Modulation+", "+c.mode.Coding
+	}
+	r.Least, r.Greatest = extremes(f)
+	r.AchievableBytes, r.ModeBytes = volumeSoFar(f)
+	for _, at := range []struct {
+		time time.Time
+		into *downlink.Budget
+	}{{page.AOS, &r.AOS}, {page.Culmination, &r.Culmination}, {r.Least.Time, &r.LeastMargin}} {
+		if at.time.IsZero() {
+			continue
+		}
+		e := craft.ephemeris
+		g, _ := c.link.GeometryOf(e.StateAt(max(0, min(e.Seconds(at.time), e.Span()))))
+		g.Time = at.time
+		b, err := c.link.At(g)
+		if err != nil {
+			return nil, fmt.Errorf("at %s: %w", utc(at.time), err)
+		}
+		*at.into = *b
+	}
+	return r, nil
+}
+
+// extremes returns the least and the greatest margin of a profile; NaN and no time
+// where it has none.
+func extremes(f *downlink.Profile) (least, greatest reports.Moment) {
+	least.Value, greatest.Value = math.NaN(), math.NaN()
+	for i, m := range f.MarginDB {
+		if math.IsNaN(m) || math.IsInf(m, 0) {
+			continue
+		}
+		at := f.Start.Add(time.Duration(f.Seconds[i] * float64(time.Second)))
+		if !(m >= least.Value) {
+			least = reports.Moment{Value: m, Time: at}
+		}
+		if !(m <= greatest.Value) {
+			greatest = reports.Moment{Value: m, Time: at}
+		}
+	}
+	return least, greatest
+}
