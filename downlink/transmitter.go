@@ -31,15 +31,6 @@ type Transmitter struct {
 	HighestRate       unit.BitRate   // information bits; caps the achievable rate; 0: not given
 }
 
-// DefaultMode returns the mode that counts where none was chosen: the first; nil
-// without modes.
-func (t *Transmitter) DefaultMode() *modem.Mode {
-	if len(t.Modes) == 0 {
-		return nil
-	}
-	return &t.Modes[0]
-}
-
 // Loss is a named loss on the spacecraft's side, a term of its own.
 type Loss struct {
 	Name string
