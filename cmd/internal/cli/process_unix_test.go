@@ -76,11 +76,15 @@ func TestInterruptSignal(t *testing.T) {
 	if err := cmd.Start(); err != nil {
 		t.Fatal(err)
 	}
-	time.Sleep(300 * time.Millisecond) // until it waits for the pipe
+	w, err := os.OpenFile(fifo, os.O_WRONLY, 0) // waits until the program reads
+	if err != nil {
+		t.Fatal(err)
+	}
+	defer w.Close()
 	if err := cmd.Process.Signal(syscall.SIGINT); err != nil {
 		t.Fatal(err)
 	}
-	err := cmd.Wait()
+	err = cmd.Wait()
 	if cmd.ProcessState.ExitCode() != ExitFailure || !strings.Contains(errOut.String(), "interrupted") {
 		t.Errorf("%v, stderr %q; want exit code %d with a word", err, errOut, ExitFailure)
 	}
