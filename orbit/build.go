@@ -16,6 +16,9 @@ const farthestFromEpoch = 10 * 365.25 * 24 * time.Hour
 // error it holds nothing until it is rebuilt. Errors are those of NewEphemeris.
 func (e *Ephemeris) Rebuild(el Elements, from, to time.Time, earth EarthOrientation) error {
 	*e = Ephemeris{elements: el, reference: from.UTC(), knots: e.knots[:0], sun: SunTrack{knots: e.sun.knots}}
+	if err := earth.Validate(); err != nil {
+		return err
+	}
 	p, err := newPropagator(&el)
 	if err != nil {
 		return err
@@ -30,7 +33,7 @@ func (e *Ephemeris) Rebuild(el Elements, from, to time.Time, earth EarthOrientat
 	b := builder{
 		e: e, p: p, rot: newRotation(from, earth),
 		sinceEpoch: sinceEpoch, start: int(math.Floor(sinceEpoch)),
-		step: int(min(knotStep(&el), kinkStep(jump))),
+		step: int(min(knotStep(&el, p.eccentricityOver(sinceEpoch, sinceEpoch+length)), kinkStep(jump))),
 	}
 	if err := b.approach(); err != nil {
 		return err
@@ -100,7 +103,7 @@ func (b *builder) fill(end float64) error {
 	e.last = e.intervalOf(end)
 	count := e.last + 2 + 2*reach
 	e.knots = slices.Grow(e.knots, count)[:count]
-	w := watch{p: b.p, good: b.start, end: b.sinceEpoch + e.end}
+	w := watch{p: b.p, good: b.start, end: b.sinceEpoch + e.end, low: lowPerigee(e.step)}
 	for i := 0; i < len(e.knots); i++ {
 		k := b.start + (i-reach)*b.step
 		p, v := b.p.raw(k)

@@ -75,3 +75,27 @@ func (l *eccentricityLaw) kink(from, to float64) float64 {
 	}
 	return math.Abs(l.rate) + math.Abs(l.swing*l.mdot)
 }
+
+// eccentricityOver returns the greatest of the element set's eccentricity and, for
+// deep-space orbits, which the Moon and the Sun change over the months, the
+// osculating ones at two times in s after the epoch.
+func (p *propagator) eccentricityOver(from, to float64) float64 {
+	e := p.elements.Eccentricity
+	if motion, _ := p.elements.recovered(); !isDeep(motion) {
+		return e
+	}
+	for _, s := range [2]float64{from, to} {
+		if now := osculating(p.raw(int(s))); now < 1 { // false for no number, too
+			e = max(e, now)
+		}
+	}
+	return e
+}
+
+// osculating returns the eccentricity of the two-body orbit through a state.
+func osculating(position, velocity Vec3) float64 {
+	const mu = wgs72Mu * 1e9
+	r := position.Norm()
+	v2, rv := velocity.Dot(velocity), position.Dot(velocity)
+	return position.Scale(v2/mu - 1/r).Sub(velocity.Scale(rv / mu)).Norm()
+}

@@ -26,7 +26,6 @@ const (
 	Decayed    Reason = iota + 1 // the orbit's radius falls below the Earth's
 	Diverged                     // the theory leaves the range in which its equations hold
 	NotANumber                   // a component of the state is not finite
-	BadOrbit                     // the elements describe no orbit that SGP4 can start from
 )
 
 // String returns the reason in words that complete "the element set …".
@@ -38,8 +37,6 @@ func (r Reason) String() string {
 		return "diverges: SGP4 leaves the range that its equations hold in"
 	case NotANumber:
 		return "gives no finite state"
-	case BadOrbit:
-		return "describes no orbit that SGP4 can start from"
 	}
 	return fmt.Sprintf("fails for reason %d", int(r))
 }

@@ -31,6 +31,7 @@ func (p *propagator) firstBad(good, bad int) int {
 type watch struct {
 	p       *propagator
 	end     float64 // seconds after the epoch that are of interest
+	low     float64 // radius in m of a knot under which a perigee between knots may lie in the ground
 	good    int     // the last second known to be sound
 	sinking bool    // towards the perigee, there
 	bad     int     // the first second without a state, once found
@@ -47,7 +48,7 @@ func (w *watch) ends(k int, position, velocity Vec3) bool {
 	switch {
 	case w.p.check(k, position, velocity) != 0:
 		w.bad, w.found = w.p.firstBad(w.good, k), true
-	case w.sinking && rising && position.Norm() < lowPerigee:
+	case w.sinking && rising && position.Norm() < w.low:
 		w.bad, w.found = w.p.firstBadBetween(w.good, k)
 	}
 	w.good, w.sinking = k, !rising
@@ -62,9 +63,12 @@ func (w *watch) firstBad(k int) int {
 	return k
 }
 
-// lowPerigee is the radius of a knot in m under which the perigee beside it may lie
-// below the ground: between two knots an orbit sags by less than 100 km.
-const lowPerigee = (wgs72RadiusKm + 100) * 1000
+// lowPerigee returns the radius for watch.low: between two knots an orbit sags by
+// less than the acceleration on the ground times an eighth of the step squared.
+func lowPerigee(step float64) float64 {
+	const gravity = 9.82 // m/s²
+	return wgs72RadiusKm*1000 + gravity/8*step*step
+}
 
 // firstBadBetween looks at each second between two sound ones.
 func (p *propagator) firstBadBetween(a, b int) (int, bool) {

@@ -3,6 +3,7 @@ package orbit
 import (
 	"errors"
 	"math"
+	"math/rand/v2"
 	"strings"
 	"testing"
 	"time"
@@ -33,11 +34,8 @@ func TestPublishedVerificationFailures(t *testing.T) {
 		}
 		delete(want, c.el.CatalogNumber)
 		seen++
-		from := c.el.Epoch
-		if w.seconds > 1e6 {
-			from = from.Add(time.Duration(w.seconds-3*86400) * time.Second)
-		}
-		e, err := NewEphemeris(c.el, from, from.Add(5*24*time.Hour), EarthOrientation{})
+		from := c.el.Epoch.Add(time.Duration(max(0, w.seconds-80000)) * time.Second)
+		e, err := NewEphemeris(c.el, from, from.Add(24*time.Hour), EarthOrientation{})
 		var pe *PropagationError
 		if err == nil {
 			pe = e.Truncated()
@@ -51,6 +49,12 @@ func TestPublishedVerificationFailures(t *testing.T) {
 		}
 		if d := math.Abs(pe.Time.Sub(c.el.Epoch).Seconds() - w.seconds); d > 1.001 || pe.Reason != w.reason {
 			t.Errorf("%05d: %v: %.1f s after the epoch, want %.1f s and reason %d", c.el.CatalogNumber, pe, pe.Time.Sub(c.el.Epoch).Seconds(), w.seconds, w.reason)
+		}
+		if err == nil {
+			p, v := interpolationError(t, e, rand.New(rand.NewPCG(7, 8)), 2000)
+			if p > MaxPositionError.Metres() || v > float64(MaxVelocityError) {
+				t.Errorf("%05d: step %g s: %.4f m and %.6f m/s from SGP4 before the end", c.el.CatalogNumber, e.Step(), p, v)
+			}
 		}
 		if err == nil && !(e.Time(e.Span()).Before(pe.Time)) {
 			t.Errorf("%05d: the span ends at %v, not before the failure at %v", c.el.CatalogNumber, e.Time(e.Span()), pe.Time)
@@ -107,4 +111,62 @@ func TestSpans(t *testing.T) {
 		}
 	}()
 	e.PositionAt(math.NaN())
+}
+
+// Elements that pass Validate and yet are no orbit, or one that SGP4 has no answer for.
+func TestNoOrbit(t *testing.T) {
+	for _, c := range []struct {
+		name   string
+		change func(*Elements)
+		want   Reason
+	}{
+		{"under the ground", func(e *Elements) { e.MeanMotion = 18 }, Decayed},
+		{"exactly against the Earth's rotation", func(e *Elements) { e.Inclination = 180 * unit.Degree }, NotANumber},
+		{"a line through the Earth", func(e *Elements) { e.MeanMotion, e.Eccentricity = 20, 0.9999999 }, Diverged},
+	} {
+		el := orbitKinds[1].elements()
+		c.change(&el)
+		_, err := NewEphemeris(el, testEpoch, testEpoch.Add(time.Hour), EarthOrientation{})
+		var pe *PropagationError
+		if !errors.As(err, &pe) || pe.Reason != c.want {
+			t.Errorf("%s: got %v, want reason %q", c.name, err, c.want)
+		}
+	}
+}
+
+func TestEarthOrientationOutOfRange(t *testing.T) {
+	el := orbitKinds[0].elements()
+	for _, o := range []EarthOrientation{
+		{UT1MinusUTC: time.Second},
+		{PolarMotionX: unit.Angle(math.NaN())},
+		{PolarMotionY: -2 * unit.Arcsecond},
+	} {
+		var re *unit.RangeError
+		if _, err := NewEphemeris(el, testEpoch, testEpoch, o); !errors.As(err, &re) {
+			t.Errorf("%+v: got %v, want a *unit.RangeError", o, err)
+		}
+	}
+}
+
+func TestRebuildGivesWhatNewEphemerisGives(t *testing.T) {
+	var again Ephemeris
+	for _, kind := range []int{13, 1, 19, 4} {
+		el := orbitKinds[kind].elements()
+		to := testEpoch.Add(36 * time.Hour)
+		want, err := NewEphemeris(el, testEpoch, to, EarthOrientation{})
+		if err != nil {
+			t.Fatal(err)
+		}
+		if err := again.Rebuild(el, testEpoch, to, EarthOrientation{}); err != nil {
+			t.Fatal(err)
+		}
+		if again.Span() != want.Span() || again.Step() != want.Step() {
+			t.Errorf("%s: span %g s, step %g s, want %g and %g", el.Name, again.Span(), again.Step(), want.Span(), want.Step())
+		}
+		for s := 0.0; s <= want.Span(); s += 777.7 {
+			if again.StateAt(s) != want.StateAt(s) || again.LightAt(s) != want.LightAt(s) {
+				t.Errorf("%s: the states at %g s differ", el.Name, s)
+			}
+		}
+	}
 }

@@ -66,13 +66,14 @@ var lagrange = func() (w [velocityPoints]float64) {
 	return w
 }()
 
-// knotStep returns the seconds between knots for an element set. Two things bound
-// it: the angular speed at the perigee (to the power of 4 rather than 2 in 1+e),
-// since the flattening of the Earth adds harmonics of it, and, on eccentric orbits,
-// the nearest complex time at which the two-body orbit passes through the Earth's
-// centre, since polynomials in time converge within that distance only. The factors
-// were chosen by measurement (TestInterpolationError).
-func knotStep(el *Elements) float64 {
+// knotStep returns the seconds between knots for an element set and the greatest
+// eccentricity that its orbit comes to. Two things bound it: the angular speed at the
+// perigee (to the power of 4 rather than 2 in 1+e), since the flattening of the Earth
+// adds harmonics of it, and, on eccentric orbits, the nearest complex time at which
+// the two-body orbit passes through the Earth's centre, since polynomials in time
+// converge within that distance only. The factors were chosen by measurement
+// (TestInterpolationError).
+func knotStep(el *Elements, e float64) float64 {
 	const (
 		turn      = 0.35 // rad at the perigee
 		reached   = 0.11 // of the distance to the singularity
@@ -80,7 +81,7 @@ func knotStep(el *Elements) float64 {
 		mostStep  = 3600
 	)
 	motion, _ := el.recovered()
-	n, e := motion/60, el.Eccentricity // rad/s
+	n := motion / 60 // rad/s
 	step := turn / (n * math.Pow(1+e, 4))
 	if e > 0 {
 		step = min(step, reached*(math.Acosh(1/e)-math.Sqrt(1-e*e))/n)

@@ -22,8 +22,7 @@ type term struct {
 	jd     float64 // the library's epoch, as it computed it
 }
 
-// newPropagator prepares SGP4 for a validated element set. The error is what
-// Validate returns, or a *PropagationError at the epoch.
+// newPropagator prepares SGP4 for an element set. The error is what Validate returns.
 //
 // The library's drag terms are wrong for perigees under 156 km: the height of the
 // atmosphere's upper boundary stands as 128 km where the theory has 120 km. All of
@@ -33,10 +32,7 @@ func newPropagator(el *Elements) (*propagator, error) {
 	if err := el.Validate(); err != nil {
 		return nil, err
 	}
-	motion, axis := el.recovered()
-	if !(motion > 0) || math.IsInf(axis, 0) {
-		return nil, &PropagationError{Name: el.Name, CatalogNumber: el.CatalogNumber, Time: el.Epoch, Epoch: el.Epoch, Reason: BadOrbit}
-	}
+	motion, _ := el.recovered()
 	p := &propagator{elements: *el}
 	for _, g := range onGrid(el, el.BStar*dragScale(el.perigeeKm()), isDeep(motion)) {
 		t := newTerm(g)
