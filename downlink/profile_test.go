@@ -204,3 +204,16 @@ func TestProfileDoesNotAllocateBySample(t *testing.T) {
 		t.Errorf("%g allocations for 11 samples, %g for 10001", few, many)
 	}
 }
+
+func TestVolumeSoFarOfIntervals(t *testing.T) {
+	at := func(s float64) time.Time { return circleStart.Add(time.Duration(s * float64(time.Second))) }
+	f := &Profile{Start: circleStart, Seconds: []float64{0, 1, 2, 3, 4}, AchievableRateBps: []float64{0, 8, 8, 16, 0}, DataRate: 8}
+	f.Volume.Closes = []Interval{{From: at(0.5), To: at(1.5)}, {From: at(3), To: at(3.25)}}
+	achievable, mode := f.VolumeSoFar()
+	// By hand: trapezia of the rates over 8 bits; a byte a second while it closes.
+	for i, want := range []struct{ achievable, mode float64 }{{0, 0}, {0.5, 0.5}, {1.5, 1}, {3, 1}, {4, 1.25}} {
+		if achievable[i] != want.achievable || mode[i] != want.mode {
+			t.Errorf("at %d s: %v and %v bytes, want %v and %v", i, achievable[i], mode[i], want.achievable, want.mode)
+		}
+	}
+}

@@ -55,32 +55,30 @@ func (p *Profile) at(s float64) time.Time {
 	return p.Start.Add(time.Duration(math.Round(s * 1e9)))
 }
 
-// VolumeSoFar returns the bytes that have come down by each sample, at the achievable
-// rate and in the chosen mode; the last of each is the pass's Volume but for the
-// rounding of Closes to nanoseconds. NaN where there is no such rate.
+// VolumeSoFar returns, at each sample, the bytes since AOS at the achievable rate and
+// in the chosen mode while its margin holds; the last are those of Volume. NaN where
+// there is no such rate.
 func (p *Profile) VolumeSoFar() (achievable, mode []float64) {
-	achievable, mode = make([]float64, len(p.Seconds)), make([]float64, len(p.Seconds))
-	bits := 0.0
-	for i, t := range p.Seconds {
+	n := len(p.Seconds)
+	achievable, mode = make([]float64, n), make([]float64, n)
+	closes := p.Volume.Closes
+	before, next := 0.0, 0 // seconds of the intervals that are over, and the first that is not
+	for i, s := range p.Seconds {
 		if i > 0 {
-			bits += (t - p.Seconds[i-1]) * (p.AchievableRateBps[i-1] + p.AchievableRateBps[i]) / 2
+			achievable[i] = achievable[i-1] + (s-p.Seconds[i-1])*(p.AchievableRateBps[i-1]+p.AchievableRateBps[i])/16
 		}
-		achievable[i] = bits / 8
-		mode[i] = float64(p.DataRate) * p.closedBy(t) / 8
+		for next < len(closes) && closes[next].To.Sub(p.Start).Seconds() <= s {
+			before += closes[next].To.Sub(closes[next].From).Seconds()
+			next++
+		}
+		open := 0.0
+		if next < len(closes) {
+			open = max(0, s-closes[next].From.Sub(p.Start).Seconds())
+		}
+		mode[i] = float64(p.DataRate) * (before + open) / 8
 		if p.DataRate == 0 {
 			mode[i] = math.NaN()
 		}
 	}
 	return achievable, mode
-}
-
-// closedBy returns for how many seconds the link has closed by t seconds after the
-// start.
-func (p *Profile) closedBy(t float64) float64 {
-	sum := 0.0
-	for _, c := range p.Volume.Closes {
-		from, to := c.From.Sub(p.Start).Seconds(), c.To.Sub(p.Start).Seconds()
-		sum += max(0, min(t, to)-from)
-	}
-	return sum
 }

@@ -154,20 +154,6 @@ func TestReportVolumes(t *testing.T) {
 	}
 }
 
-func TestVolumeSoFarOfIntervals(t *testing.T) {
-	start := time.Date(2026, 3, 10, 0, 0, 0, 0, time.UTC)
-	at := func(s float64) time.Time { return start.Add(time.Duration(s * float64(time.Second))) }
-	f := &downlink.Profile{Start: start, Seconds: []float64{0, 1, 2, 3, 4}, AchievableRateBps: []float64{0, 8, 8, 16, 0}, DataRate: 8}
-	f.Volume.Closes = []downlink.Interval{{From: at(0.5), To: at(1.5)}, {From: at(3), To: at(3.25)}}
-	achievable, mode := volumeSoFar(f)
-	// By hand: trapezia of the rates over 8 bits; a byte a second while it closes.
-	for i, want := range []struct{ achievable, mode float64 }{{0, 0}, {0.5, 0.5}, {1.5, 1}, {3, 1}, {4, 1.25}} {
-		if achievable[i] != want.achievable || mode[i] != want.mode {
-			t.Errorf("at %d s: %v and %v bytes, want %v and %v", i, achievable[i], mode[i], want.achievable, want.mode)
-		}
-	}
-}
-
 func TestReportNotesConcernThePage(t *testing.T) {
 	link := &chosenLink{transmitter: &downlink.Transmitter{Name: "X-band"}, antenna: &station.Antenna{Name: "dish"}}
 	for about, want := range map[string]bool{

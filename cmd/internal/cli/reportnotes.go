@@ -5,6 +5,7 @@ import (
 	"strings"
 
 	"slantwise/cmd/internal/scenario"
+	"slantwise/downlink"
 	"slantwise/reports"
 	"slantwise/station"
 )
@@ -54,6 +55,9 @@ func (p *reportPlan) pageNotes(page *reportPage, chosen *chosenLink) []reports.N
 func linkNotes(c *chosenLink, modes int) []reports.Note {
 	var out []reports.Note
 	for _, n := range c.link.Notes() {
+		if n.Kind == downlink.Default { // the scenario lists each of these with its key
+			continue
+		}
 		out = append(out, reports.Note{Kind: noteKinds[n.Kind], Text: n.Text})
 	}
 	if modes > 1 {

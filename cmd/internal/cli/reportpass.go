@@ -86,7 +86,7 @@ func reportRadio(craft *reportCraft, page *reportPage, best *modeOnPass) (*repor
 		r.Mode, r.ModeText = c.mode.Name, c.mode.Modulation+", "+c.mode.Coding
 	}
 	r.Least, r.Greatest = extremes(f)
-	r.AchievableBytes, r.ModeBytes = volumeSoFar(f)
+	r.AchievableBytes, r.ModeBytes = f.VolumeSoFar()
 	for _, at := range []struct {
 		time time.Time
 		into *downlink.Budget
