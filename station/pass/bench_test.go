@@ -99,8 +99,23 @@ func BenchmarkSearch100x50At10(b *testing.B) {
 	benchmarkSearchAll(b, benchJob(100, 50, 10*unit.Degree))
 }
 
-// BenchmarkEphemerides times what of the search is propagation.
-func BenchmarkEphemerides100(b *testing.B) {
-	j := benchJob(100, 0, 0)
+// BenchmarkSearch100x50Masked gives every site a mask of 36 points between 2° and 12°.
+func BenchmarkSearch100x50Masked(b *testing.B) {
+	j := benchJob(100, 50, 0)
+	r := rand.New(rand.NewPCG(2026, 11))
+	for _, s := range j.Sites {
+		points := make([]station.MaskPoint, 36)
+		for i := range points {
+			points[i] = station.MaskPoint{Azimuth: unit.Angle(10*i) * unit.Degree, Elevation: unit.Angle(2+10*r.Float64()) * unit.Degree}
+		}
+		m, err := station.NewMask(points, station.Geometric)
+		if err != nil {
+			b.Fatal(err)
+		}
+		s.Mask = m
+	}
 	benchmarkSearchAll(b, j)
 }
+
+// BenchmarkEphemerides100 times what of the search is propagation.
+func BenchmarkEphemerides100(b *testing.B) { benchmarkSearchAll(b, benchJob(100, 0, 0)) }

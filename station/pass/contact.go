@@ -9,8 +9,10 @@ type arc struct{ from, to sight }
 type finder struct {
 	track track
 	clock clock
-	arcs  []arc
 	scene scene
+	arcs  []arc
+	// Working space of cutBySkyline.
+	whole, clear []arc
 }
 
 // find appends the passes over one site to records, by rising AOS.
@@ -22,7 +24,7 @@ func (f *finder) find(k *skyline, records []record) []record {
 	start, end := s.see(&s.nodes[0]), s.see(&s.nodes[len(s.nodes)-1])
 	f.arcs = pair(f.arcs[:0], above, s.out, &start, &end)
 	if !k.level() {
-		f.arcs = s.cutBySkyline(k, f.arcs)
+		f.cutBySkyline(k, &start, &end)
 	}
 	f.join(k)
 	for i := range f.arcs {
@@ -46,25 +48,6 @@ func pair(arcs []arc, above bool, crossings []sight, start, end *sight) []arc {
 		arcs = append(arcs, arc{*from, *end})
 	}
 	return arcs
-}
-
-// cutBySkyline takes from arcs over the lowest part of the skyline what lies under
-// its higher parts.
-func (s *scene) cutBySkyline(k *skyline, arcs []arc) []arc {
-	var cut []arc
-	for n := range arcs {
-		whole := &arcs[n]
-		s.out = s.out[:0]
-		a := s.aim(k, whole.from.t)
-		above := a.above >= 0
-		for i := s.stretchAt(whole.from.t); a.t < whole.to.t; i++ {
-			b := s.aim(k, min(s.nodes[i+1].t, whole.to.t))
-			s.unveil(k, &a, &b, &s.stretches[i])
-			a = b
-		}
-		cut = pair(cut, above, s.out, &whole.from, &whole.to)
-	}
-	return cut
 }
 
 // stretchAt returns the index of the stretch that holds t.

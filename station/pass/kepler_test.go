@@ -14,7 +14,16 @@ type kepler struct {
 }
 
 func (k kepler) Span() float64 { return k.span }
-func (k kepler) Step() float64 { return 60 }
+
+// Step is near to what the ephemeris takes for such an orbit: an hour when stationary.
+func (k kepler) Step() float64 {
+	n := math.Sqrt(gravity / (k.a * k.a * k.a))
+	step := 0.34 / n
+	if k.e > 1e-6 {
+		step = min(step, 0.1*(math.Acosh(1/k.e)-math.Sqrt(1-k.e*k.e))/n)
+	}
+	return max(5, min(3600, math.Floor(step)))
+}
 
 func (k kepler) TrackAt(s float64) (position, derivative orbit.Vec3) {
 	n := math.Sqrt(gravity / (k.a * k.a * k.a))

@@ -28,6 +28,48 @@ func (s *scene) aim(k *skyline, t float64) aim {
 	return p
 }
 
+// cutBySkyline takes from the arcs over the lowest part of the skyline what lies
+// under its higher parts. Over its highest part nothing needs to be looked at.
+func (f *finder) cutBySkyline(k *skyline, start, end *sight) {
+	s := &f.scene
+	s.out = s.out[:0]
+	above := s.level(math.Sin(k.high))
+	f.clear = pair(f.clear[:0], above, s.out, start, end)
+	f.whole, f.arcs = f.arcs, f.whole[:0]
+	clear := f.clear
+	for n := range f.whole {
+		whole := &f.whole[n]
+		s.out = s.out[:0]
+		a := s.aim(k, whole.from.t)
+		above := a.above >= 0
+		for ; len(clear) > 0 && clear[0].from.t < whole.to.t; clear = clear[1:] {
+			// The skyline is at most as high as the level that is crossed here.
+			above = above || clear[0].from.t == whole.from.t
+			b := s.aim(k, clear[0].from.t)
+			b.above = max(b.above, 0)
+			s.unveilAll(k, a, b)
+			a = s.aim(k, clear[0].to.t)
+			a.above = max(a.above, 0)
+		}
+		s.unveilAll(k, a, s.aim(k, whole.to.t))
+		f.arcs = pair(f.arcs, above, s.out, &whole.from, &whole.to)
+	}
+}
+
+// unveilAll appends the crossings of the skyline between two aims that may be many
+// stretches apart.
+func (s *scene) unveilAll(k *skyline, a, b aim) {
+	for i := s.stretchAt(a.t); a.t < b.t; i++ {
+		if s.nodes[i+1].t >= b.t {
+			s.unveil(k, &a, &b, &s.stretches[i])
+			return
+		}
+		m := s.aim(k, s.nodes[i+1].t)
+		s.unveil(k, &a, &m, &s.stretches[i])
+		a = m
+	}
+}
+
 // sweep bounds what happens in the sky between two aims.
 type sweep struct {
 	elLow, elHigh   float64 // rad
@@ -37,20 +79,20 @@ type sweep struct {
 	doubt           float64 // how far the rates may be off, rad/s (rateDoubt)
 }
 
-// sweep derives the bounds from the ends. With d the unit vector to the spacecraft,
-// |d'| <= ω = v/ρ, and the components of the angular acceleration along elevation E
-// and azimuth A are
+// sweep derives the bounds from the ends. By the second derivative of ρ times the unit
+// vector to the spacecraft, with a its acceleration along elevation E or azimuth A,
 //
-//	E'' + A'² sin E cos E,  A'' cos E - 2 A' E' sin E,
+//	E'' = (a - 2 ρ' E')/ρ - A'² sin E cos E
+//	A'' = ((a - 2 ρ' A' cos E)/ρ + 2 A' E' sin E) / cos E
 //
-// both at most (a + 2 v ω)/ρ, by the second derivative of ρ d.
-func (s *scene) sweep(a, b *aim, st *stretch) sweep {
+// and |E'|, |A' cos E| <= ω = v/ρ. A second round uses the bounds of the rates that
+// the first one gives.
+func (s *scene) sweep(a, b *aim, st *stretch) (r sweep) {
 	h := b.t - a.t
 	near := s.nearest(a.rho, b.rho, h, st)
 	w := st.speed / near
-	alpha := (st.acc + 2*st.speed*w) / near
-	r := sweep{elLow: min(a.el, b.el) - w*h/2, elHigh: max(a.el, b.el) + w*h/2}
-	steepest := max(math.Abs(r.elLow), math.Abs(r.elHigh))
+	r.elLow, r.elHigh = min(a.el, b.el)-w*h/2, max(a.el, b.el)+w*h/2
+	steepest := max(-r.elLow, r.elHigh)
 	if steepest > 89.5*math.Pi/180 { // about the zenith nothing is said of azimuth
 		r.delLow, r.delHigh = -w, w
 		r.dazLow, r.dazHigh = math.Inf(-1), math.Inf(1)
@@ -59,13 +101,19 @@ func (s *scene) sweep(a, b *aim, st *stretch) sweep {
 	}
 	sin, cos := math.Sincos(steepest)
 	r.doubt = rateDoubt / near / cos
-	ddel := alpha + w*w*sin/cos
-	ddaz := (alpha + 2*w*w*sin/cos) / cos
-	r.delLow, r.delHigh = around(a.del, b.del, ddel*h/2, w)
-	r.dazLow, r.dazHigh = around(a.daz, b.daz, ddaz*h/2, w/cos)
+	del, daz := w, w/cos
+	var ddel, ddaz float64
+	for range 2 {
+		ddel = (st.acc+2*st.speed*del)/near + daz*daz*min(sin, 0.5)
+		ddaz = ((st.acc+2*st.speed*min(w, daz))/near + 2*daz*del*sin) / cos
+		del = min(del, max(math.Abs(a.del), math.Abs(b.del))+ddel*h/2)
+		daz = min(daz, max(math.Abs(a.daz), math.Abs(b.daz))+ddaz*h/2)
+	}
+	r.delLow, r.delHigh = around(a.del, b.del, ddel*h/2, del)
+	r.dazLow, r.dazHigh = around(a.daz, b.daz, ddaz*h/2, daz)
 	r.elLow = max(r.elLow, min(a.el, b.el)-ddel*h*h/8)
 	r.elHigh = min(r.elHigh, max(a.el, b.el)+ddel*h*h/8)
-	if fastest := max(-r.dazLow, r.dazHigh); fastest*h >= math.Pi {
+	if daz*h >= math.Pi {
 		r.width = math.Inf(1)
 		return r
 	}
