@@ -1,6 +1,8 @@
 package reports
 
 import (
+	"math"
+
 	"github.com/go-echarts/go-echarts/v2/charts"
 	"github.com/go-echarts/go-echarts/v2/opts"
 )
@@ -92,10 +94,7 @@ func eventMarks(p *Pass) charts.SingleSeries {
 // culmination inwards.
 func labelSide(e event, inwards bool) string {
 	if inwards {
-		if e.azimuthDeg > 90 && e.azimuthDeg < 270 {
-			return "top"
-		}
-		return "bottom"
+		return [...]string{"bottom", "left", "top", "right"}[int(math.Mod(e.azimuthDeg+45, 360)/90)]
 	}
 	if e.azimuthDeg < 180 {
 		return "right"

@@ -169,7 +169,7 @@ func fillRadio(p *Pass, s shape) {
 	}
 	f.Volume.AchievableBytes, f.Volume.ModeBytes = best, chosen
 	r.Modes = []ModeResult{
-		{Name: "safe", Text: "QPSK, concatenated", Rate: 1e6, Closed: p.Pass.Duration(), Bytes: p.Pass.Duration().Seconds() * 1e6 / 8, LeastMarginDB: r.Least.Value + 8, GreatestMarginDB: r.Greatest.Value + 8},
+		{Name: "safe", Text: "qpsk, ccsds-conv-1-2+rs-255-223", Rate: 1e6, Closed: p.Pass.Duration(), Bytes: p.Pass.Duration().Seconds() * 1e6 / 8, LeastMarginDB: r.Least.Value + 8, GreatestMarginDB: r.Greatest.Value + 8},
 		{Name: "fast", Text: r.ModeText, Rate: 4e6, Bytes: chosen, LeastMarginDB: r.Least.Value, GreatestMarginDB: r.Greatest.Value, Chosen: true},
 	}
 }

@@ -5,6 +5,7 @@ import (
 	"html/template"
 	"slices"
 	"strconv"
+	"strings"
 )
 
 // indexView is what the template of the index shows.
@@ -23,8 +24,9 @@ type indexView struct {
 	CSV, JSON             template.URL
 }
 
-// stateCounts says how many passes there are of each kind.
-type stateCounts struct{ All, Throughout, Partly, Never, Without int }
+// stateCounts says how many passes there are, and how many pages of each kind: a pass
+// with several links has several.
+type stateCounts struct{ Passes, All, Throughout, Partly, Never, Without int }
 
 // rowView is a line of the index; the second of each pair is what the page's script
 // sorts by.
@@ -44,7 +46,7 @@ type rowView struct {
 }
 
 // bestCount is how many passes the index names first.
-const bestCount = 5
+const bestCount = 6
 
 func indexPage(w *writer, rows []row) ([]byte, error) {
 	r := w.report
@@ -95,14 +97,18 @@ func (v *indexView) inline(rows []row) error {
 }
 
 func (v *indexView) addRows(rows []row) {
-	greatest := 0.0
+	greatest := map[string]float64{}
+	passes := map[string]bool{}
 	for i := range rows {
-		if b := rows[i].modeBytes; finite(b) {
-			greatest = max(greatest, b)
+		r := &rows[i]
+		passes[strings.Join([]string{r.spacecraft, r.station, utcText(r.aos)}, "\x00")] = true
+		if finite(r.modeBytes) {
+			greatest[r.spacecraft] = max(greatest[r.spacecraft], r.modeBytes)
 		}
 	}
+	v.Count.Passes = len(passes)
 	for i := range rows {
-		v.Rows = append(v.Rows, newRowView(&rows[i], greatest))
+		v.Rows = append(v.Rows, newRowView(&rows[i], greatest[rows[i].spacecraft]))
 		v.Count.All++
 		switch rows[i].verdict.state {
 		case closesThrough:
@@ -116,13 +122,15 @@ func (v *indexView) addRows(rows []row) {
 		}
 	}
 	v.HasRadio = v.Count.Without < v.Count.All
-	for _, i := range bestRows(rows) {
+	for _, i := range bestRows(rows, len(v.Spacecraft) > 1) {
 		v.Best = append(v.Best, v.Rows[i])
 	}
 }
 
-// bestRows returns the passes that bring most in the chosen mode, best first.
-func bestRows(rows []row) []int {
+// bestRows returns the passes that bring most in the chosen mode, best first: one of
+// each spacecraft, so that the fastest transmitter does not hide the others, or the
+// best of the only one.
+func bestRows(rows []row, oneEach bool) []int {
 	var order []int
 	for i := range rows {
 		if rows[i].modeBytes > 0 {
@@ -138,6 +146,14 @@ func bestRows(rows []row) []int {
 		}
 		return 0
 	})
+	if oneEach {
+		seen := map[string]bool{}
+		order = slices.DeleteFunc(order, func(i int) bool {
+			again := seen[rows[i].spacecraft]
+			seen[rows[i].spacecraft] = true
+			return again
+		})
+	}
 	return order[:min(bestCount, len(order))]
 }
 

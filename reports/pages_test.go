@@ -148,7 +148,7 @@ func TestIndexSortsAndFilters(t *testing.T) {
 	if got := ask[int](t, ctx, `[...document.querySelectorAll('#pass-table tbody tr')].filter(r => r.checkVisibility()).length`); got != 8 {
 		t.Errorf("%d rows of Wagtail 2 are shown, want 8 of 24", got)
 	}
-	if got := ask[string](t, ctx, `document.getElementById('shown').textContent`); got != "8 of 24 passes" {
+	if got := ask[string](t, ctx, `document.getElementById('shown').textContent`); got != "8 of 24 rows" {
 		t.Errorf("the index says %q", got)
 	}
 	o.quiet(t)

@@ -103,8 +103,11 @@
   function forSky(o, spec, p) {
     styled(o.angleAxis, p);
     styled(o.radiusAxis, p);
+    var ends = o.series[o.series.length - 1].data.map(function (e) { return e.value[1]; });
     o.angleAxis.axisLabel.formatter = function (a) {
-      return { 0: 'N', 90: 'E', 180: 'S', 270: 'W' }[a] || (a === 360 ? '' : a + '°');
+      var letter = { 0: 'N', 90: 'E', 180: 'S', 270: 'W', 360: ' ' }[a];
+      var near = [ends[0], ends[2]].some(function (e) { return Math.abs((e - a + 540) % 360 - 180) < 20; });
+      return letter || (near ? '' : a + '°'); // AOS and LOS have their labels there
     };
     o.radiusAxis.axisLabel.formatter = function (e) { return e === 0 ? '' : e + '°'; };
     o.radiusAxis.axisLine.show = false;
@@ -146,8 +149,15 @@
       formatter: function (q) { return spec.names[q.value[2]]; }
     };
     o.series.forEach(function (s, k) {
-      s.itemStyle = { color: p.lines[k % 2], borderWidth: 1.5 };
-      if (s.symbol.indexOf('empty') === 0) { s.itemStyle.borderColor = p.lines[k % 2]; }
+      var colour = p.lines[k % 2];
+      if (s.symbol === 'emptyTriangle') { // nothing to decide there: behind the others
+        colour = p.soft;
+        s.symbolSize = 7;
+        s.z = 1;
+      }
+      var hollow = s.symbol.indexOf('empty') === 0;
+      s.symbol = s.symbol.replace('empty', '').toLowerCase();
+      s.itemStyle = { color: hollow ? 'transparent' : colour, borderColor: colour, borderWidth: 1.5, opacity: 1 };
     });
   }
 
@@ -357,7 +367,7 @@
         tr.hidden = !keep;
         shown += keep ? 1 : 0;
       });
-      document.getElementById('shown').textContent = shown + ' of ' + table.tBodies[0].rows.length + ' passes';
+      document.getElementById('shown').textContent = shown + ' of ' + table.tBodies[0].rows.length + ' rows';
     }
     form.hidden = false;
     form.addEventListener('input', apply);

@@ -230,5 +230,5 @@ func (p *reportPlan) report() *reports.Report {
 
 // noteKinds maps the kinds of a link's notes to those of a report.
 var noteKinds = map[downlink.NoteKind]reports.NoteKind{
-	downlink.Assumption: reports.Assumption, downlink.Default: reports.Default, downlink.Warning: reports.Warning,
+	downlink.Assumption: reports.Assumption, downlink.Warning: reports.Warning,
 }
