@@ -12,6 +12,9 @@ import (
 // writeTable writes the list for people: UTC, and the station's own time of AOS where
 // a station has a time zone.
 func (p *passSearch) writeTable(env *Env, passes iter.Seq[pass.Found]) error {
+	if n := p.list.Len(); n > mostTableRows {
+		return inputErrorf("--format: a table of %d passes is more than %d; take --format csv, or filter them", n, mostTableRows)
+	}
 	local := false
 	for i := range p.stations {
 		local = local || p.stations[i].Site.TimeZone != nil
