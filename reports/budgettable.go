@@ -6,7 +6,6 @@ import (
 
 	"slantwise/downlink"
 	"slantwise/orbit/unit"
-	"slantwise/station"
 )
 
 // budgetView is a table with a column for each instant.
@@ -38,7 +37,7 @@ func budgetTable(p *Pass) budgetView {
 		view.Heads = append(view.Heads, b.name)
 	}
 	view.Parts = []budgetPart{
-		{"Geometry", geometryRows(p.Site, all)},
+		{"Geometry", geometryRows(p, all)},
 		{"Power", append(termRows(all), powerRows(all)...)},
 		{"Noise and data", dataRows(p, all)},
 	}
@@ -66,13 +65,13 @@ func value(all []namedBudget, decimals int, of func(*downlink.Budget) float64) [
 	return cells(all, func(b *downlink.Budget) string { return fixed(of(b), decimals) })
 }
 
-func geometryRows(site *station.Site, all []namedBudget) []budgetRow {
+func geometryRows(p *Pass, all []namedBudget) []budgetRow {
 	deg := func(of func(*downlink.Budget) unit.Angle) []string {
 		return value(all, 2, func(b *downlink.Budget) float64 { return of(b).Degrees() })
 	}
-	rows := []budgetRow{{Name: "time", Unit: "UTC", Cells: cells(all, func(b *downlink.Budget) string { return clock(b.Time) })}}
-	if zone := site.TimeZone; zone != nil {
-		rows = append(rows, localRow(zone, times(all)...))
+	rows := []budgetRow{{Name: "time", Unit: "UTC", Cells: cells(all, func(b *downlink.Budget) string { return utcClock(b.Time, layoutOf(p)) })}}
+	if zone := p.Site.TimeZone; zone != nil {
+		rows = append(rows, localRow(zone, layoutOf(p), times(all)...))
 	}
 	return append(rows,
 		budgetRow{Name: "azimuth", Unit: "deg", Cells: deg(func(b *downlink.Budget) unit.Angle { return b.Azimuth })},
@@ -135,7 +134,12 @@ func dataRows(p *Pass, all []namedBudget) []budgetRow {
 		{Name: "system noise", Unit: "K", Cells: value(all, 1, func(b *downlink.Budget) float64 { return b.SystemNoise.Kelvins() })},
 		{Name: "G/T", Unit: "dB/K", Cells: value(all, 2, func(b *downlink.Budget) float64 { return float64(b.GOverT) })},
 		{Name: "C/N0", Unit: "dBHz", Cells: value(all, 2, func(b *downlink.Budget) float64 { return float64(b.CN0) })},
-		{Name: "information rate", Cells: rate(func(b *downlink.Budget) unit.BitRate { return b.DataRate })},
+		{Name: "information rate", Cells: rate(func(b *downlink.Budget) unit.BitRate {
+			if b.DataRate == 0 { // a carrier without data
+				return unit.BitRate(math.NaN())
+			}
+			return b.DataRate
+		})},
 		{Name: "Eb/N0", Unit: "dB", Cells: value(all, 2, func(b *downlink.Budget) float64 { return float64(b.EbN0) })},
 		{Name: "required Eb/N0", Unit: "dB", Source: "of the code, without implementation loss",
 			Cells: value(all, 2, func(b *downlink.Budget) float64 { return float64(b.RequiredEbN0) })},

@@ -76,18 +76,26 @@ func maskSeries(horizon []Direction) charts.SingleSeries {
 func eventMarks(p *Pass) charts.SingleSeries {
 	symbols := [...]string{"triangle", "circle", "rect"}
 	data := make([]any, 0, len(symbols))
-	for i, e := range events(p) {
+	all := events(p)
+	for i, e := range all {
 		data = append(data, map[string]any{
-			"name":   e.name + "\n" + clock(e.at),
+			"name":   e.short + "\n" + clock(e.at),
 			"value":  []number{{e.elevationDeg, 2}, {e.azimuthDeg, 2}},
 			"symbol": symbols[i],
-			"label":  map[string]any{"position": labelSide(e, i == 1)},
+			"label":  map[string]any{"position": labelSide(e, i == 1), "show": i == 1 || !together(e, all[1])},
 		})
 	}
 	return charts.SingleSeries{
 		Name: "events", Type: "scatter", CoordSystem: "polar", Data: data, SymbolSize: 11,
 		Label: &opts.Label{Show: opts.Bool(true), Formatter: "{b}"},
 	}
+}
+
+// together tells whether two events are so close that their labels would cover each
+// other, as of a spacecraft that stands still.
+func together(a, b event) bool {
+	turn := math.Abs(math.Mod(a.azimuthDeg-b.azimuthDeg+540, 360) - 180)
+	return math.Abs(a.elevationDeg-b.elevationDeg) < 4 && turn*math.Cos(b.elevationDeg*math.Pi/180) < 4
 }
 
 // labelSide keeps the labels apart: those of AOS and LOS outwards, that of the

@@ -75,7 +75,7 @@ func (fr *frame) draw(fig *timeFigure) drawing {
 			Type: "value", Name: "UTC on " + fr.axis.Date,
 			Min: fr.axis.From, Max: fr.axis.To, MinInterval: fr.axis.Step, MaxInterval: fr.axis.Step,
 		}),
-		charts.WithYAxisOpts(opts.YAxis{Type: "value", Name: axisName(fig.quantity, fig.unit), Scale: opts.Bool(!fig.fromZero)}),
+		charts.WithYAxisOpts(fig.leftAxis()),
 		charts.WithLegendOpts(opts.Legend{Show: opts.Bool(len(fig.series) > 1)}),
 	)
 	if fig.right != "" {
@@ -99,6 +99,21 @@ func (fr *frame) draw(fig *timeFigure) drawing {
 	line.Validate()
 	d.Option = plain(line.JSON())
 	return d
+}
+
+// leftAxis returns the axis of the first series. A level that hardly moves gets a
+// unit of room on either side, where the chart's own choice would be half the value.
+func (fig *timeFigure) leftAxis() opts.YAxis {
+	axis := opts.YAxis{Type: "value", Name: axisName(fig.quantity, fig.unit), Scale: opts.Bool(!fig.fromZero)}
+	if fig.fromZero {
+		return axis
+	}
+	s := fig.series[0]
+	least, greatest := leastOf(s.values)/s.divisor, greatestOf(s.values)/s.divisor
+	if greatest-least < 1 {
+		axis.Min, axis.Max = math.Floor(least)-1, math.Ceil(greatest)+1
+	}
+	return axis
 }
 
 // markBelow marks spans; the page's script hatches them, so that they show without

@@ -17,24 +17,43 @@ func utcText(t time.Time) string {
 }
 
 // dayClock is how pages write an instant: date, then the clock to the second.
-func dayClock(t time.Time) string { return t.UTC().Round(time.Second).Format("2006-01-02 15:04:05") }
+func dayClock(t time.Time) string { return utcClock(t, dayLayout) }
 
 // clock writes the time of the day alone.
-func clock(t time.Time) string { return t.UTC().Round(time.Second).Format("15:04:05") }
+func clock(t time.Time) string { return utcClock(t, clockLayout) }
+
+const (
+	clockLayout = "15:04:05"
+	dayLayout   = "2006-01-02 15:04:05"
+)
+
+// layoutOf returns how the instants of a pass are written: with the date where the
+// time of the day alone would be ambiguous.
+func layoutOf(p *Pass) string {
+	if p.Pass.Duration() > 24*time.Hour {
+		return dayLayout
+	}
+	return clockLayout
+}
+
+// utcClock writes t in UTC by a layout, to the second.
+func utcClock(t time.Time, layout string) string {
+	return t.UTC().Round(time.Second).Format(layout)
+}
 
 // localText writes t in the station's zone with the zone's short name, with the date
-// where it is another than the UTC one; empty where the station has no zone.
-func localText(t time.Time, zone *time.Location) string {
+// where it is another than the UTC one or the layout asks for it; empty where the
+// station has no zone.
+func localText(t time.Time, zone *time.Location, layout string) string {
 	if zone == nil {
 		return ""
 	}
 	u := t.UTC().Round(time.Second)
 	l := u.In(zone)
-	layout := "15:04:05 MST"
 	if l.YearDay() != u.YearDay() {
-		layout = "2006-01-02 15:04:05 MST"
+		layout = dayLayout
 	}
-	return l.Format(layout)
+	return l.Format(layout + " MST")
 }
 
 // offsetAt is a station's offset from UTC and from when on it holds.

@@ -17,6 +17,7 @@ import (
 var nasty = []string{
 	`</script><script>alert(1)</script>`, `"><img src=x onerror=alert(2)>`, `'; alert(3); '`, "<!-- <b>bold</b> & \u2028 \u202e",
 	`=1+1,"a`, "{{.Title}} {b}",
+	"a-name-of-one-word-that-is-far-longer-than-any-column-of-any-page-could-be-made",
 }
 
 // nastyReport has a nasty name wherever a name can stand.

@@ -6,11 +6,13 @@ import (
 	"time"
 
 	"slantwise/downlink"
+	"slantwise/station/pass"
 )
 
 // event is one of the instants that a pass is told by.
 type event struct {
 	key, name                string
+	short                    string // where there is little room
 	at                       time.Time
 	azimuthDeg, elevationDeg float64
 	sample                   int // nearest in the profile
@@ -20,19 +22,17 @@ type event struct {
 // pass, the event is named for what it is: the edge of the window.
 func events(p *Pass) []event {
 	q := &p.Pass
-	start, end := "AOS", "LOS"
-	switch q.Cut.String() {
-	case "aos":
-		start = "start of the window"
-	case "los":
-		end = "end of the window"
-	case "both":
-		start, end = "start of the window", "end of the window"
+	start, end, shortStart, shortEnd := "AOS", "LOS", "AOS", "LOS"
+	if q.Cut&pass.CutAOS != 0 {
+		start, shortStart = "start of the window", "start"
+	}
+	if q.Cut&pass.CutLOS != 0 {
+		end, shortEnd = "end of the window", "end"
 	}
 	list := []event{
-		{key: "aos", name: start, at: q.AOS, azimuthDeg: q.AOSAzimuth.Degrees(), elevationDeg: q.AOSElevation.Degrees()},
-		{key: "culmination", name: "culmination", at: q.Culmination, azimuthDeg: q.CulminationAzimuth.Degrees(), elevationDeg: q.MaxElevation.Degrees()},
-		{key: "los", name: end, at: q.LOS, azimuthDeg: q.LOSAzimuth.Degrees(), elevationDeg: q.LOSElevation.Degrees()},
+		{key: "aos", name: start, short: shortStart, at: q.AOS, azimuthDeg: q.AOSAzimuth.Degrees(), elevationDeg: q.AOSElevation.Degrees()},
+		{key: "culmination", name: "culmination", short: "culmination", at: q.Culmination, azimuthDeg: q.CulminationAzimuth.Degrees(), elevationDeg: q.MaxElevation.Degrees()},
+		{key: "los", name: end, short: shortEnd, at: q.LOS, azimuthDeg: q.LOSAzimuth.Degrees(), elevationDeg: q.LOSElevation.Degrees()},
 	}
 	for i := range list {
 		list[i].sample = nearestSample(p.Profile, list[i].at)

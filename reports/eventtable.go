@@ -4,7 +4,7 @@ import "time"
 
 // eventTable lays AOS, culmination and LOS side by side.
 func eventTable(p *Pass) budgetView {
-	f, ev := p.Profile, events(p)
+	f, ev, layout := p.Profile, events(p), layoutOf(p)
 	view := budgetView{Corner: "event"}
 	line := func(name, unit string, write func(event) string) budgetRow {
 		r := budgetRow{Name: name, Unit: unit}
@@ -16,9 +16,9 @@ func eventTable(p *Pass) budgetView {
 	for _, e := range ev {
 		view.Heads = append(view.Heads, e.name)
 	}
-	rows := []budgetRow{line("time", "UTC", func(e event) string { return clock(e.at) })}
+	rows := []budgetRow{line("time", "UTC", func(e event) string { return utcClock(e.at, layout) })}
 	if zone := p.Site.TimeZone; zone != nil {
-		rows = append(rows, localRow(zone, ev[0].at, ev[1].at, ev[2].at))
+		rows = append(rows, localRow(zone, layout, ev[0].at, ev[1].at, ev[2].at))
 	}
 	rows = append(rows,
 		line("azimuth", "deg", func(e event) string { return fixed(e.azimuthDeg, 1) + " " + compass(e.azimuthDeg) }),
@@ -36,7 +36,7 @@ func eventTable(p *Pass) budgetView {
 
 // localRow writes instants in the station's zone, whose name is the unit where one
 // name serves all.
-func localRow(zone *time.Location, at ...time.Time) budgetRow {
+func localRow(zone *time.Location, layout string, at ...time.Time) budgetRow {
 	r := budgetRow{Name: "time at the station", Unit: at[0].In(zone).Format("MST")}
 	for _, t := range at {
 		if t.In(zone).Format("MST") != r.Unit {
@@ -44,7 +44,7 @@ func localRow(zone *time.Location, at ...time.Time) budgetRow {
 		}
 	}
 	for _, t := range at {
-		text := localText(t, zone)
+		text := localText(t, zone, layout)
 		if r.Unit != "" {
 			text = text[:len(text)-len(r.Unit)-1]
 		}

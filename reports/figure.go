@@ -57,7 +57,7 @@ func skyTable(p *Pass, rows []int) template.HTML {
 // has a zone, and the columns. It goes by hand, since a report holds tens of
 // thousands of cells; heads are escaped and all else is digits.
 func numberTable(p *Pass, title string, heads []string, cols []column, rows []int) template.HTML {
-	f, zone := p.Profile, p.Site.TimeZone
+	f, zone, layout := p.Profile, p.Site.TimeZone, layoutOf(p)
 	dst := make([]byte, 0, 200+len(rows)*(60+30*len(cols)))
 	dst = append(dst, "<table><caption>"...)
 	dst = append(dst, template.HTMLEscapeString(title)...)
@@ -72,11 +72,11 @@ func numberTable(p *Pass, title string, heads []string, cols []column, rows []in
 	for _, i := range rows {
 		t := sampleTime(f.Start, f.Seconds[i]).Round(time.Second)
 		dst = append(dst, "<tr><th scope=\"row\">"...)
-		dst = t.AppendFormat(dst, "15:04:05")
+		dst = t.AppendFormat(dst, layout)
 		dst = append(dst, "</th>"...)
 		if zone != nil {
 			dst = append(dst, "<td>"...)
-			dst = t.In(zone).AppendFormat(dst, "15:04:05")
+			dst = t.In(zone).AppendFormat(dst, layout)
 			dst = append(dst, "</td>"...)
 		}
 		for _, c := range cols {

@@ -10,7 +10,10 @@ func timeFigures(p *Pass, fr *frame) []timeFigure {
 	}
 	list = append(list, heightFigure(p))
 	if p.Radio != nil {
-		list = append(list, dopplerFigure(p), volumeFigure(p))
+		list = append(list, dopplerFigure(p))
+		if finite(p.Profile.Volume.AchievableBytes) {
+			list = append(list, volumeFigure(p))
+		}
 	}
 	kept := list[:0]
 	for _, f := range list {

@@ -160,7 +160,7 @@ func bestRows(rows []row, oneEach bool) []int {
 func newRowView(r *row, greatest float64) rowView {
 	v := rowView{
 		Page: passFolder + "/" + r.page + ".html", Spacecraft: r.spacecraft, Station: r.station, Link: r.link, Mode: r.mode,
-		UTC: dayClock(r.aos), LOS: clock(r.los), Local: localText(r.aos, r.zone), AOSSort: r.aos.UnixMilli(),
+		UTC: dayClock(r.aos), LOS: clock(r.los), Local: localText(r.aos, r.zone, clockLayout), AOSSort: r.aos.UnixMilli(),
 		Duration: span(r.los.Sub(r.aos)), DurationSort: sortKey(r.los.Sub(r.aos).Seconds(), 3),
 		Elevation: fixed(r.maxElevationDeg, 1),
 		Closed:    r.verdict.Closed(), ClosedSort: sortKey(r.closedSeconds(), 3),

@@ -69,7 +69,7 @@ func TestOffsetsFollowTheZone(t *testing.T) {
 	if len(got) != 2 || got[0] != want[0] || got[1] != want[1] {
 		t.Errorf("got %v, want %v", got, want)
 	}
-	if text := localText(from.Add(22*time.Hour), zone); text != "2026-03-30 00:30:00 CEST" {
+	if text := localText(from.Add(22*time.Hour), zone, clockLayout); text != "2026-03-30 00:30:00 CEST" {
 		t.Errorf("the local time on the next day is %q", text)
 	}
 }

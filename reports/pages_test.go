@@ -151,6 +151,12 @@ func TestIndexSortsAndFilters(t *testing.T) {
 	if got := ask[string](t, ctx, `document.getElementById('shown').textContent`); got != "8 of 24 rows" {
 		t.Errorf("the index says %q", got)
 	}
+	set("filter-spacecraft", "")
+	set("sort-by", "8")
+	most := ask[float64](t, ctx, `Math.max(...[...document.querySelectorAll('#pass-table tbody tr')].map(r => Number(r.cells[8].dataset.v)))`)
+	if got := ask[float64](t, ctx, `Number(document.querySelector('#pass-table tbody tr').cells[8].dataset.v)`); got != most {
+		t.Errorf("sorted by volume the first row has %v bytes, the most are %v", got, most)
+	}
 	o.quiet(t)
 }
 
@@ -188,6 +194,12 @@ func TestNamesShowAsTextInTheBrowser(t *testing.T) {
 	}
 	if got := ask[int](t, ctx, emptyDrawings); got != 0 {
 		t.Errorf("%d charts are empty", got)
+	}
+	for _, name := range []string{"index", "passes/" + pageNames(r.Keys)[len(nasty)-1]} {
+		show(t, ctx, root+name+".html", screen{375, "light"})
+		if got := ask[int](t, ctx, `document.documentElement.scrollWidth`); got > 375 {
+			t.Errorf("%s: the page is %d px wide on a screen of 375", name, got)
+		}
 	}
 	o.quiet(t)
 }

@@ -126,7 +126,7 @@ func newPassView(p *Pass) *passView {
 		v.EndClock = v.End
 	}
 	if v.HasZone {
-		v.Local = localText(q.AOS, p.Site.TimeZone) + " to " + localText(q.LOS, p.Site.TimeZone)
+		v.Local = localText(q.AOS, p.Site.TimeZone, layoutOf(p)) + " to " + localText(q.LOS, p.Site.TimeZone, layoutOf(p))
 	}
 	v.CutText = map[string]string{
 		"aos":  "Already up when the window opens: the pass began earlier than shown.",
@@ -161,7 +161,7 @@ func newLinkView(p *Pass) *linkView {
 		l.Strongest = fixed(s, 1)
 	}
 	for _, c := range f.Volume.Closes {
-		l.Closes = append(l.Closes, clock(c.From)+" to "+clock(c.To))
+		l.Closes = append(l.Closes, utcClock(c.From, layoutOf(p))+" to "+utcClock(c.To, layoutOf(p)))
 	}
 	return l
 }

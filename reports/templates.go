@@ -78,6 +78,17 @@ func dataAddress(kind string, content []byte) template.URL {
 	return template.URL("data:" + kind + ";charset=utf-8;base64," + base64.StdEncoding.EncodeToString(content))
 }
 
+// leastOf returns the least value that exists, NaN for none.
+func leastOf(values []float64) float64 {
+	best := math.NaN()
+	for _, v := range values {
+		if finite(v) && !(v >= best) {
+			best = v
+		}
+	}
+	return best
+}
+
 // greatestOf returns the greatest value that exists, NaN for none.
 func greatestOf(values []float64) float64 {
 	best := math.NaN()

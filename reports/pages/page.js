@@ -70,7 +70,7 @@
     };
     axis.nameLocation = 'middle';
     axis.nameGap = 26;
-    if (length > 86400) { axis.name += ', month-day at midnight'; }
+    if (length > 86400) { axis.name = 'UTC, month-day at midnight'; }
   }
 
   function heading(text, side, p) {
@@ -198,7 +198,13 @@
   function local(s) {
     var o = null;
     (data.offsets || []).forEach(function (z) { if (z.from <= s) { o = z; } });
-    return o ? ', ' + clock(s + o.seconds, true) + ' ' + o.name : '';
+    return o ? ', ' + instant(s + o.seconds) + ' ' + o.name : '';
+  }
+
+  // instant writes a time of the pass, with its day where a pass lasts longer.
+  function instant(s) {
+    var axis = charts[0].spec.axis || charts[1].spec.axis;
+    return (axis.to - axis.from > 86400 ? day(axis.date, s) + ' ' : '') + clock(s, true);
   }
 
   function place() {
@@ -224,7 +230,7 @@
     var out = document.getElementById('cursor-reading');
     slider.value = at;
     out.textContent = '';
-    var time = clock(samples[at], true) + ' UTC' + local(samples[at]);
+    var time = instant(samples[at]) + ' UTC' + local(samples[at]);
     var words = [time];
     add(out, 'b', time);
     charts.forEach(function (c) {
@@ -325,12 +331,21 @@
       th.textContent = '';
       th.appendChild(button);
       button.addEventListener('click', function () {
-        var up = th.getAttribute('aria-sort') !== 'ascending';
-        Array.prototype.forEach.call(heads, function (h) { h.removeAttribute('aria-sort'); });
-        th.setAttribute('aria-sort', up ? 'ascending' : 'descending');
-        sort(table, column, th.dataset.sort === 'number', up ? 1 : -1);
+        order(table, column, th.getAttribute('aria-sort') !== 'ascending');
+        document.getElementById('sort-by').value = '';
       });
     });
+    // The choice serves where the heads are not shown: time rising, all else falling.
+    document.getElementById('sort-by').addEventListener('input', function (e) {
+      order(table, Number(e.target.value), e.target.value === '');
+    });
+  }
+
+  function order(table, column, up) {
+    var heads = table.tHead.rows[0].cells;
+    Array.prototype.forEach.call(heads, function (h) { h.removeAttribute('aria-sort'); });
+    heads[column].setAttribute('aria-sort', up ? 'ascending' : 'descending');
+    sort(table, column, heads[column].dataset.sort === 'number', up ? 1 : -1);
   }
 
   function sort(table, column, numeric, sign) {
