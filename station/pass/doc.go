@@ -17,7 +17,7 @@
 // Of the ephemeris it uses the positions and their derivative, not SGP4's velocity.
 // Against bisection on a general-purpose astronomy library the times of 313 passes
 // agree to the half millisecond that they are rounded to
-// (TestPassesAgainstAstronomyLibrary); against a plain scan over random orbits, sites
+// (TestSearchAgainstReferenceLibrary); against a plain scan over random orbits, sites
 // and masks every edge agrees to 0.1 ms (TestSearchAgainstPlainScan). An element set
 // is not as good as that: a kilometre along the track is 0.13 s.
 package pass
