@@ -15,6 +15,9 @@ type budgetView struct {
 	Parts  []budgetPart
 }
 
+// Columns counts the columns, that of the names included.
+func (v budgetView) Columns() int { return len(v.Heads) + 1 }
+
 // budgetPart is a group of lines under a heading.
 type budgetPart struct {
 	Title string
@@ -31,7 +34,7 @@ type budgetRow struct {
 // budgetTable lays the budgets of a pass side by side, from the geometry down to the
 // margin and the rate.
 func budgetTable(p *Pass) budgetView {
-	all := budgetsOf(p.Radio)
+	all := budgetsOf(p)
 	view := budgetView{Corner: "term"}
 	for _, b := range all {
 		view.Heads = append(view.Heads, b.name)
@@ -154,7 +157,7 @@ func dataRows(p *Pass, all []namedBudget) []budgetRow {
 
 // noiseTable lays the parts of the system noise side by side.
 func noiseTable(p *Pass) budgetView {
-	all := budgetsOf(p.Radio)
+	all := budgetsOf(p)
 	var rows []budgetRow
 	seen := map[string]bool{}
 	for _, from := range all {

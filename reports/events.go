@@ -88,8 +88,9 @@ type namedBudget struct {
 	budget    *downlink.Budget
 }
 
-func budgetsOf(r *Radio) []namedBudget {
-	list := []namedBudget{{"aos", "AOS", &r.AOS}, {"culmination", "culmination", &r.Culmination}}
+func budgetsOf(p *Pass) []namedBudget {
+	r, ev := p.Radio, events(p)
+	list := []namedBudget{{ev[0].key, ev[0].name, &r.AOS}, {ev[1].key, ev[1].name, &r.Culmination}}
 	if finite(r.Least.Value) {
 		list = append(list, namedBudget{"least_margin", "least margin", &r.LeastMargin})
 	}

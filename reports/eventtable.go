@@ -26,9 +26,10 @@ func eventTable(p *Pass) budgetView {
 		line("slant range", "km", func(e event) string { return fixed(f.RangeKm[e.sample], 0) }),
 	)
 	if p.Radio != nil {
-		rows = append(rows,
-			line("received power", "dBm", func(e event) string { return fixed(f.ReceivedPowerDBm[e.sample], 1) }),
-			line("margin", "dB", func(e event) string { return fixed(f.MarginDB[e.sample], 1) }))
+		rows = append(rows, line("received power", "dBm", func(e event) string { return fixed(f.ReceivedPowerDBm[e.sample], 1) }))
+		if finite(p.Radio.Greatest.Value) {
+			rows = append(rows, line("margin", "dB", func(e event) string { return fixed(f.MarginDB[e.sample], 1) }))
+		}
 	}
 	view.Parts = []budgetPart{{Rows: rows}}
 	return view

@@ -132,7 +132,7 @@ func radioHead(p *Pass) *radioJSON {
 		h.Modes = append(h.Modes, modeJSON{m.Name, number{m.Rate.BitsPerSecond(), 0}, number{m.Closed.Seconds(), 3},
 			number{m.LeastMarginDB, 3}, number{m.GreatestMarginDB, 3}, number{m.Bytes, 0}, m.Chosen})
 	}
-	for _, at := range budgetsOf(r) {
+	for _, at := range budgetsOf(p) {
 		h.Budgets = append(h.Budgets, budgetHead(at.key, at.budget))
 	}
 	return h

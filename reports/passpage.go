@@ -137,7 +137,7 @@ func newPassView(p *Pass) *passView {
 	if p.Radio != nil {
 		v.Link = newLinkView(p)
 		v.Budget, v.Noise, v.Modes = budgetTable(p), noiseTable(p), modeViews(p.Radio.Modes)
-		for _, b := range budgetsOf(p.Radio) {
+		for _, b := range budgetsOf(p) {
 			for _, c := range b.budget.Cautions {
 				v.Doubts = append(v.Doubts, Note{About: "at " + b.name, Text: c})
 			}
