@@ -3,6 +3,7 @@ package reports
 import (
 	"encoding/json"
 	"math"
+	"slices"
 	"time"
 )
 
@@ -12,10 +13,13 @@ func sampleTime(start time.Time, seconds float64) time.Time {
 }
 
 // samplesCSV returns every sample of a pass: a header row, then a row a sample.
-func samplesCSV(p *Pass) []byte {
+func samplesCSV(p *Pass) []byte { return appendCSV(nil, p) }
+
+// appendCSV appends what samplesCSV returns.
+func appendCSV(dst []byte, p *Pass) []byte {
 	cols := columns(p)
 	f := p.Profile
-	dst := make([]byte, 0, (len(f.Seconds)+1)*(26+9*len(cols)))
+	dst = slices.Grow(dst, (len(f.Seconds)+1)*(26+9*len(cols)))
 	dst = append(dst, "utc"...)
 	for _, c := range cols {
 		dst = append(append(dst, ','), c.name...)
@@ -51,14 +55,17 @@ func yesNo(b bool) string {
 
 // passJSON returns the summary, the budgets and every sample of a pass, the samples
 // as one array a column.
-func passJSON(p *Pass) ([]byte, error) {
+func passJSON(p *Pass) ([]byte, error) { return appendPassJSON(nil, p) }
+
+// appendPassJSON appends what passJSON returns.
+func appendPassJSON(dst []byte, p *Pass) ([]byte, error) {
 	head, err := json.Marshal(passHead(p))
 	if err != nil {
 		return nil, err
 	}
 	cols := columns(p)
 	f := p.Profile
-	dst := make([]byte, 0, len(head)+len(f.Seconds)*(28+9*len(cols)))
+	dst = slices.Grow(dst, len(head)+len(f.Seconds)*(28+9*len(cols)))
 	dst = append(dst, head[:len(head)-1]...) // the closing brace comes after the samples
 	dst = append(dst, `,"samples":{"utc":[`...)
 	for i, s := range f.Seconds {

@@ -33,8 +33,8 @@ type Options struct {
 type writer struct {
 	report  *Report
 	options Options
-	names   []string // of the pass pages, without ending
-	put     func(name string, content []byte) error
+	names   []string                                // of the pass pages, without ending
+	put     func(name string, content []byte) error // must not keep content
 
 	chart                            script
 	inlineChart, chartHash, pageHash string
@@ -103,15 +103,20 @@ func (w *writer) pass(ctx context.Context, i int, r *row) error {
 	if err := w.put(stem+".html", page); err != nil || w.options.OneFile {
 		return err
 	}
-	if err := w.put(stem+".csv", samplesCSV(p)); err != nil {
+	// A report holds many times more text than any one file: its memory serves again.
+	buffer := buffers.Get().(*[]byte)
+	defer buffers.Put(buffer)
+	*buffer = appendCSV((*buffer)[:0], p)
+	if err := w.put(stem+".csv", *buffer); err != nil {
 		return err
 	}
-	js, err := passJSON(p)
-	if err != nil {
+	if *buffer, err = appendPassJSON((*buffer)[:0], p); err != nil {
 		return err
 	}
-	return w.put(stem+".json", js)
+	return w.put(stem+".json", *buffer)
 }
+
+var buffers = sync.Pool{New: func() any { return new([]byte) }}
 
 // shared writes the index and what the pages have in common.
 func (w *writer) shared(rows []row) error {
