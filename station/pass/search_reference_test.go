@@ -29,8 +29,8 @@ func TestSearchAgainstReferenceLibrary(t *testing.T) {
 		want[r["case"]] = append(want[r["case"]], r)
 	}
 	cases := referenceRows(t, "pass_cases.csv")
-	if len(cases) != 26 {
-		t.Fatalf("%d cases; want 26", len(cases))
+	if len(cases) != 27 {
+		t.Fatalf("%d cases; want 27", len(cases))
 	}
 	for _, c := range cases {
 		t.Run(c["case"]+" "+c["element_set"]+" from "+c["site"], func(t *testing.T) {
@@ -53,22 +53,30 @@ func TestSearchAgainstReferenceLibrary(t *testing.T) {
 				t.Fatalf("%d passes; want %d: %v", len(got), len(want[c["case"]]), got)
 			}
 			for i := range got {
-				comparePass(t, &got[i], want[c["case"]][i])
+				comparePass(t, e, &site, &got[i], want[c["case"]][i])
 			}
 		})
 	}
 }
 
-func comparePass(t *testing.T, got *pass.Pass, want map[string]string) {
+func comparePass(t *testing.T, e *orbit.Ephemeris, site *station.Site, got *pass.Pass, want map[string]string) {
 	t.Helper()
-	// 1 ms: that is how the times are given; both sides together round by 0.55 ms. The
-	// aim of the design is 50 ms.
+	frame := site.Frame()
 	for _, q := range []struct {
 		name string
 		got  time.Time
 	}{{"aos", got.AOS}, {"culmination", got.Culmination}, {"los", got.LOS}} {
-		if d := q.got.Sub(instant(t, want, q.name+"_utc")).Seconds(); !(math.Abs(d) <= 0.001) {
-			t.Errorf("%s %s: %+.4f s off; want at most 0.001 s", q.name, want[q.name+"_utc"], d)
+		// 1 ms: that is how the times are given; both sides together round by 0.55 ms. The
+		// aim of the design is 50 ms. Where the elevation hardly moves, 3 mm of position
+		// count besides: skyfield's UT1 in one float64 moves a geostationary by 2.5 mm.
+		tolerance := 0.001
+		if q.name != "culmination" {
+			position, derivative := e.TrackAt(e.Seconds(q.got))
+			look := frame.Look(orbit.State{Position: position, Velocity: derivative})
+			tolerance += 0.003 / (look.Range.Metres() * math.Abs(float64(look.ElevationRate)))
+		}
+		if d := q.got.Sub(instant(t, want, q.name+"_utc")).Seconds(); !(math.Abs(d) <= tolerance) {
+			t.Errorf("%s %s: %+.4f s off; want at most %.4f s", q.name, want[q.name+"_utc"], d, tolerance)
 		}
 	}
 	for _, q := range []struct {
