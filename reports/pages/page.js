@@ -176,7 +176,8 @@
     var p = palette();
     charts.forEach(function (c) {
       if (c.chart) { c.chart.dispose(); }
-      var opts = { renderer: c.spec.names && c.spec.names.length > 1500 ? 'canvas' : 'svg' };
+      // Lines stay sharp as vectors; hundreds of symbols are drawn several times faster as pixels.
+      var opts = { renderer: c.spec.names && c.spec.names.length > 300 ? 'canvas' : 'svg' };
       if (size) {
         opts.width = c.spec.kind === 'overview' ? size.wide : size.width;
         opts.height = c.spec.kind === 'sky' ? size.sky : c.spec.kind === 'overview' ? c.box.clientHeight : size.height;
