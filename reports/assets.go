@@ -15,8 +15,14 @@ var assets embed.FS
 //go:embed pages/page.css
 var styleSheet string
 
-//go:embed pages/page.js
-var pageScript string
+//go:embed pages/charts.js
+var chartsCode string
+
+//go:embed pages/table.js
+var tableCode string
+
+// pageScript is the script that every page has, under the name page.js.
+var pageScript = chartsCode + tableCode
 
 // Where a page finds the chart script when none is embedded: the whole of Apache
 // ECharts 5.6.0 at a public host. The hash is of dist/echarts.min.js in the npm
