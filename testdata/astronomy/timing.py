@@ -1,5 +1,5 @@
 """Times a pass list of 10 satellites over 5 stations for 7 days with general-purpose
-libraries, one core: a yardstick for slantwise's own benchmark, part of no test.
+libraries, one core, in processor time: a yardstick for slantwise's own benchmark, part of no test.
 
 1. sgp4's bulk propagator (SatrecArray) with numpy: states every 60 s, the elevation of
    each station, and the crossings bisected on cubic interpolation;
@@ -155,9 +155,9 @@ def main():
     for name, f, repeats in runs:
         best, count = float('inf'), 0
         for _ in range(repeats):
-            start = time.perf_counter()
+            start = time.process_time()
             count = f()
-            best = min(best, time.perf_counter() - start)
+            best = min(best, time.process_time() - start)
         print(f'{name:42s} {best * 1000:9.1f} ms  {count} passes')
 
 
