@@ -14,6 +14,7 @@ type budgetOptions struct {
 	at     time.Time // one instant
 	pass   time.Time // the pass under way then, or the next
 	step   time.Duration
+	paced  bool // --step was given
 	stated statedOptions
 	format format
 }
@@ -46,7 +47,7 @@ Eb/N0, margin and the achievable rate, then what was assumed.
 
 What the scenario holds several of must be named.`,
 		Example: `  slantwise budget --spacecraft "Wagtail 1" --station "Skerry Point" --mode fast
-  slantwise budget --spacecraft "Wagtail 1" --station "Skerry Point" --mode safe --at 2026-09-15T10:02:00Z
+  slantwise budget --spacecraft "Wagtail 1" --station "Skerry Point" --mode safe --at 2026-09-15T00:55:00Z
   slantwise budget --spacecraft "Wagtail 1" --station "Skerry Point" --mode safe --range-km 1200 --elevation-deg 20 --format json`,
 		Args: noArgs,
 	}
@@ -55,20 +56,13 @@ What the scenario holds several of must be named.`,
 	addTime(fs, &o.at, "at", "one instant")
 	addTime(fs, &o.pass, "pass", "the pass under way then, or the next one of the window")
 	addDuration(fs, &o.step, "step", 10*time.Second, "between two samples of a pass")
-	rangeKm := fs.Float64("range-km", 0, "stated slant range in `KM`, with --elevation-deg")
-	elevation := fs.Float64("elevation-deg", 0, "stated elevation in `DEG`, with --range-km")
-	azimuth := fs.Float64("azimuth-deg", 0, "stated azimuth in `DEG`, which a fixed antenna needs")
-	off := fs.Float64("off-boresight-deg", 0, "stated angle in `DEG` off the transmit antenna's boresight (left out: from the attitude over a sphere)")
+	addNumber(fs, &o.stated.rangeKm, "range-km", "stated slant range in `KM`, with --elevation-deg")
+	addNumber(fs, &o.stated.elevationDeg, "elevation-deg", "stated elevation in `DEG`, with --range-km")
+	addNumber(fs, &o.stated.azimuthDeg, "azimuth-deg", "stated azimuth in `DEG`, which a fixed antenna needs")
+	addNumber(fs, &o.stated.offBoresightDeg, "off-boresight-deg", "stated angle in `DEG` off the transmit antenna's boresight (left out: from the attitude over a sphere)")
 	addFormat(cmd, &o.format)
 	cmd.RunE = func(cmd *cobra.Command, _ []string) error {
-		for name, f := range map[string]struct{ value, into **float64 }{
-			"range-km": {&rangeKm, &o.stated.rangeKm}, "elevation-deg": {&elevation, &o.stated.elevationDeg},
-			"azimuth-deg": {&azimuth, &o.stated.azimuthDeg}, "off-boresight-deg": {&off, &o.stated.offBoresightDeg},
-		} {
-			if cmd.Flags().Changed(name) {
-				*f.into = *f.value
-			}
-		}
+		o.paced = cmd.Flags().Changed("step")
 		return runBudget(env, &o)
 	}
 	return cmd
@@ -133,6 +127,8 @@ func (o *budgetOptions) check() error {
 		return inputErrorf("a stated geometry needs --range-km and --elevation-deg, both")
 	case !o.at.IsZero() && !o.pass.IsZero():
 		return inputErrorf("--at asks for one instant, --pass for a whole pass; give one of the two")
+	case o.paced && (st.given() || !o.at.IsZero()):
+		return inputErrorf("--step goes along a pass; it has no effect at one instant or with a stated geometry, so leave it out")
 	}
 	return nil
 }

@@ -8,14 +8,13 @@ import (
 
 	"slantwise/cmd/internal/scenario"
 	"slantwise/orbit"
-	"slantwise/orbit/unit"
 	"slantwise/station"
 	"slantwise/station/pass"
 )
 
 type passesOptions struct {
 	spacecraft, stations []string
-	leastElevationDeg    float64
+	leastElevationDeg    *float64 // nil: any
 	leastDuration        time.Duration
 	sunlit               bool
 	sort                 passOrder
@@ -41,22 +40,19 @@ window's edge. Elevations in the list are geometric.`,
 	fs := cmd.Flags()
 	fs.StringArrayVar(&o.spacecraft, "spacecraft", nil, "only this spacecraft, by `NAME`; may be repeated")
 	fs.StringArrayVar(&o.stations, "station", nil, "only this station, by `NAME`; may be repeated")
-	fs.Float64Var(&o.leastElevationDeg, "least-elevation-deg", 0, "only passes that culminate at least so `HIGH`, geometric, in degrees")
+	addNumber(fs, &o.leastElevationDeg, "least-elevation-deg", "only passes that culminate at least so `HIGH`, geometric, in degrees")
 	addDuration(fs, &o.leastDuration, "least-duration", 0, "only passes that last at least so long")
 	fs.BoolVar(&o.sunlit, "sunlit", false, "only passes at whose culmination the spacecraft is in full sunlight")
 	o.sort = orderAOS
 	fs.Var(&o.sort, "sort", "by aos, elevation (highest first), duration (longest first), spacecraft or station")
-	fs.IntVar(&o.workers, "workers", 0, "how many spacecraft are searched at once; 0: as many as the machine can")
+	addWorkers(fs, &o.workers, "spacecraft are searched")
 	addFormat(cmd, &o.format)
 	return cmd
 }
 
 func (o *passesOptions) check() error {
-	if !(o.leastElevationDeg >= -90 && o.leastElevationDeg <= 90) {
-		return inputErrorf("--least-elevation-deg: %g deg is not allowed; it must be -90 to 90 deg", o.leastElevationDeg)
-	}
-	if o.workers < 0 {
-		return inputErrorf("--workers: %d is not allowed; it must be 0 (as many as the machine can) or more", o.workers)
+	if least := o.leastElevationDeg; least != nil && !(*least >= -90 && *least <= 90) {
+		return inputErrorf("--least-elevation-deg: %g deg is not allowed; it must be -90 to 90 deg", *least)
 	}
 	return nil
 }
@@ -164,12 +160,12 @@ func (p *passSearch) tellFaults(env *Env, faults []error) error {
 
 // keep returns the filter of the options, nil where all is kept.
 func (o *passesOptions) keep() func(*orbit.Ephemeris, *pass.Found) bool {
-	if o.leastElevationDeg == 0 && o.leastDuration == 0 && !o.sunlit {
+	least := angleOf(o.leastElevationDeg)
+	if least == nil && o.leastDuration == 0 && !o.sunlit {
 		return nil
 	}
-	least := unit.Angle(o.leastElevationDeg) * unit.Degree
 	return func(e *orbit.Ephemeris, f *pass.Found) bool {
-		if o.leastElevationDeg != 0 && f.MaxElevation < least || f.Duration() < o.leastDuration {
+		if least != nil && f.MaxElevation < *least || f.Duration() < o.leastDuration {
 			return false
 		}
 		return !o.sunlit || e.LightAt(min(max(e.Seconds(f.Culmination), 0), e.Span())) == orbit.Sunlit

@@ -169,6 +169,27 @@ func TestPassesFilters(t *testing.T) {
 	}
 }
 
+// A least elevation of 0 is a filter like any other: where the horizon lies below the
+// horizontal, there are passes that it leaves out.
+func TestPassesLeastElevationZero(t *testing.T) {
+	inPassScenario(t)
+	text := strings.Replace(passScenario, "minimum_elevation_deg: 5", "minimum_elevation_deg: -5", 1)
+	if err := os.WriteFile("slantwise.yaml", []byte(text), 0o644); err != nil {
+		t.Fatal(err)
+	}
+	all := records(t, "passes", "--station", "Test Hill", "--spacecraft", "Probe A")
+	want := 0
+	for _, r := range all {
+		if float(t, r, "max_elevation_deg") >= 0 {
+			want++
+		}
+	}
+	got := records(t, "passes", "--station", "Test Hill", "--spacecraft", "Probe A", "--least-elevation-deg", "0")
+	if len(got) != want || want == len(all) {
+		t.Errorf("%d passes, want %d of %d", len(got), want, len(all))
+	}
+}
+
 // --sunlit must keep just those that the pointing file calls sunlit.
 func TestPassesSunlit(t *testing.T) {
 	inPassScenario(t)
@@ -227,8 +248,12 @@ func TestPassesRefuses(t *testing.T) {
 		{[]string{"--spacecraft", "Prob A"}, `--spacecraft: "Prob A" is not in the scenario; did you mean "Probe A"; it holds "Probe A", "Still, \"up\""`},
 		{[]string{"--station", "Test Hil"}, `did you mean "Test Hill"`},
 		{[]string{"--sort", "elevatoin"}, `did you mean "elevation"`},
-		{[]string{"--least-elevation-deg", "NaN"}, "--least-elevation-deg: NaN deg is not allowed; it must be -90 to 90 deg"},
-		{[]string{"--workers", "-1"}, "--workers: -1 is not allowed"},
+		{[]string{"--least-elevation-deg", "NaN"}, `--least-elevation-deg: "NaN" is not allowed; it must be a number; only finite numbers are`},
+		{[]string{"--least-elevation-deg", "90.5"}, "--least-elevation-deg: 90.5 deg is not allowed; it must be -90 to 90 deg"},
+		{[]string{"--least-elevation-deg", "−5"}, "it holds a dash that is no minus sign, U+2212"},
+		{[]string{"--least-elevation-deg", "5,5"}, "write the decimal point as ."},
+		{[]string{"--spacecraft", " "}, "--spacecraft: the name is empty; give one, or leave the flag out for all"},
+		{[]string{"--workers", "-1"}, `--workers: "-1" is not allowed; it must be a whole number, 0 (as many as the machine can) to 10000`},
 		{[]string{"--least-duration", "0s"}, "it must be greater than 0"},
 	} {
 		code, out, errOut := invoke(t, append([]string{"passes"}, c.args...)...)

@@ -35,6 +35,9 @@ func pickMany[T any](what string, names []string, items []T, nameOf func(*T) str
 	}
 	wanted := map[string]bool{}
 	for _, n := range names {
+		if strings.TrimSpace(n) == "" {
+			return nil, inputErrorf("--%s: the name is empty; give one, or leave the flag out for all", what)
+		}
 		it, err := pick(what, strings.TrimSpace(n), items, nameOf)
 		if err != nil {
 			return nil, err

@@ -49,9 +49,6 @@ is refused. Standard output names the file to open.`,
   slantwise report --one-file --spacecraft "Wagtail 1"   pages to be mailed`,
 		Args: noArgs,
 		RunE: func(cmd *cobra.Command, _ []string) error {
-			if o.workers < 0 {
-				return inputErrorf("--workers: %d is not allowed; it must be 0 (as many as the machine can) or more", o.workers)
-			}
 			if o.into == "" {
 				return inputErrorf("--into: the name of the folder is empty; give one, or leave the flag out for slantwise-report")
 			}
@@ -64,7 +61,7 @@ is refused. Standard output names the file to open.`,
 	fs.StringArrayVar(&o.spacecraft, "spacecraft", nil, "only this spacecraft, by `NAME`; may be repeated")
 	fs.StringArrayVar(&o.stations, "station", nil, "only this station, by `NAME`; may be repeated")
 	fs.StringVar(&o.mode, "mode", "", "take the mode of this `NAME` where a transmitter has it")
-	fs.IntVar(&o.workers, "workers", 0, "how many pages are made at once; 0: as many as the machine can")
+	addWorkers(fs, &o.workers, "pages are made")
 	return cmd
 }
 

@@ -84,7 +84,7 @@ func TestReportWrongInput(t *testing.T) {
 		"unknown spacecraft": {[]string{"--spacecraft", "Wagtial 1"}, `did you mean "Wagtail 1"`},
 		"unknown station":    {[]string{"--station", "Skery Point"}, `did you mean "Skerry Point"`},
 		"unknown mode":       {[]string{"--mode", "fsat"}, `did you mean "fast"`},
-		"workers":            {[]string{"--workers", "-1"}, "--workers: -1 is not allowed"},
+		"workers":            {[]string{"--workers", "-1"}, `--workers: "-1" is not allowed`},
 		"empty folder name":  {[]string{"--into", ""}, "--into: the name of the folder is empty"},
 		"foreign folder":     {[]string{"--into", full, "--station", "Hoarfjord"}, "holds no report of ours"},
 	} {

@@ -1,6 +1,7 @@
 package cli
 
 import (
+	"errors"
 	"fmt"
 	"strings"
 
@@ -128,9 +129,14 @@ func noArgs(cmd *cobra.Command, args []string) error {
 	return inputErrorf("unknown command %q for %s%s; see %s --help", args[0], cmd.CommandPath(), meant(args[0], known), cmd.CommandPath())
 }
 
-// flagError names the nearest flag where one is unknown.
+// flagError says which flag has a wrong value, and names the nearest flag where one
+// is unknown.
 func flagError(cmd *cobra.Command, err error) error {
 	text := err.Error()
+	var wrong *pflag.InvalidValueError
+	if errors.As(err, &wrong) {
+		text = "--" + wrong.GetFlag().Name + ": " + errors.Unwrap(wrong).Error()
+	}
 	if name, ok := strings.CutPrefix(text, "unknown flag: --"); ok {
 		var known []string
 		cmd.Flags().VisitAll(func(f *pflag.Flag) { known = append(known, f.Name) })

@@ -16,14 +16,14 @@ func TestWrongCommandLines(t *testing.T) {
 		{"zzzzzz", `slantwise: unknown command "zzzzzz" for slantwise; see slantwise --help`},
 		{"--senario x", "slantwise: unknown flag: --senario; did you mean --scenario; see slantwise --help"},
 		{"check --formt csv", "slantwise: unknown flag: --formt; did you mean --format; see slantwise check --help"},
-		{"check --format xml", `slantwise: invalid argument "xml" for "--format" flag: "xml" is not allowed; it must be table, csv or json; see slantwise check --help`},
+		{"check --format xml", `slantwise: --format: "xml" is not allowed; it must be table, csv or json; see slantwise check --help`},
 		{"check --format", "slantwise: flag needs an argument: --format; see slantwise check --help"},
 		{"check now", `slantwise: slantwise check takes no "now"; all it needs is given by flags, see slantwise check --help`},
 		{"new a.yaml b.yaml", "slantwise: new takes one FILE, not 2; see slantwise new --help"},
 		{"help chek", `slantwise: unknown command "chek" for slantwise; did you mean "check"; see slantwise --help`},
 		{"completion bsh", `slantwise: unknown command "bsh" for slantwise completion; did you mean "bash", "zsh", "fish"; see slantwise completion --help`},
 		{"check --scenario nowhere.yaml", "slantwise: nowhere.yaml: there is no such file; check the name, or write a new scenario with: slantwise new"},
-		{"check --window-length-h 1d", `slantwise: flag --window-length-h: window.length_h: "1d" is not allowed; it must be a number, greater than 0 and at most 87672 h; give the number alone, the key's name says the unit`},
+		{"check --window-length-h 1d", `slantwise: flag --window-length-h: window.length_h: "1d" is not allowed; it must be a number, greater than 0 and at most 87672 h; give the number alone, the name says the unit`},
 	} {
 		code, out, errOut := invoke(t, strings.Fields(tt.args)...)
 		if code != ExitInput || out != "" || errOut != tt.want+"\n" {

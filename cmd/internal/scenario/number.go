@@ -1,6 +1,7 @@
 package scenario
 
 import (
+	"fmt"
 	"math"
 	"regexp"
 	"strconv"
@@ -111,23 +112,42 @@ func (o object) notNumber(n *tree.Node, name string, in span) {
 		o.fault(n, name, "%s is not allowed; it must be a number, %s", "", show(n), allowed)
 		return
 	}
-	text := strings.TrimSpace(n.Text)
-	next := "give the number alone"
-	switch bare := strings.ToLower(strings.Trim(text, "+-.")); {
-	case bare == "nan" || bare == "inf" || bare == "infinity" || plainNumber.MatchString(text) && math.IsInf(parsePlain(text), 0):
-		next = "only finite numbers are"
-	case strings.ContainsAny(text, "−–—‐‑‒﹣－"):
-		next = "it holds a dash that is no minus sign, " + dashName(text) + ": write the plain -"
-	case n.Kind == tree.Text && plainNumber.MatchString(text):
+	next := numberAdvice(n.Text)
+	if _, err := ParseNumber(n.Text); n.Kind == tree.Text && err == nil {
 		next = "it is text: remove the quotes"
-	case plainNumber.MatchString(strings.Replace(text, ",", ".", 1)):
-		next = "write the decimal point as ."
-	case leadingNumber.MatchString(text):
-		next = "give the number alone, the key's name says the unit"
 	}
 	o.fault(n, name, "%s is not allowed; it must be a number, %s", next, show(n), allowed)
 }
 
+// ParseNumber reads a finite number, written as those of a scenario are; blanks around
+// it do not count.
+func ParseNumber(text string) (float64, error) {
+	text = strings.TrimSpace(text)
+	if plainNumber.MatchString(text) {
+		if v := parsePlain(text); !math.IsInf(v, 0) {
+			return v + 0, nil // -0 becomes 0
+		}
+	}
+	return 0, fmt.Errorf("%q is not allowed; it must be a number; %s", text, numberAdvice(text))
+}
+
+// numberAdvice says what to do with a text that is no finite number.
+func numberAdvice(text string) string {
+	text = strings.TrimSpace(text)
+	switch bare := strings.ToLower(strings.Trim(text, "+-.")); {
+	case bare == "nan" || bare == "inf" || bare == "infinity" || plainNumber.MatchString(text) && math.IsInf(parsePlain(text), 0):
+		return "only finite numbers are"
+	case strings.ContainsAny(text, "−–—‐‑‒﹣－"):
+		return "it holds a dash that is no minus sign, " + dashName(text) + ": write the plain -"
+	case plainNumber.MatchString(strings.Replace(text, ",", ".", 1)):
+		return "write the decimal point as ."
+	case leadingNumber.MatchString(text):
+		return "give the number alone, the name says the unit"
+	}
+	return "give the number alone"
+}
+
+// leadingNumber is a number with its unit behind it.
 var leadingNumber = regexp.MustCompile(`^[-+]?[0-9.]+ *[A-Za-z°%µ/]+$`)
 
 // dashName names the first dash of a text that is not the plain one.
