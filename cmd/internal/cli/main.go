@@ -7,7 +7,6 @@ import (
 	"fmt"
 	"io"
 	"os/signal"
-	"strings"
 	"syscall"
 	"time"
 
@@ -75,7 +74,7 @@ func exitCode(env *Env, err error) int {
 	if err == nil || errors.Is(err, syscall.EPIPE) { // the reader had enough
 		return ExitAnswer
 	}
-	fmt.Fprintln(env.Err, "slantwise: "+strings.TrimRight(err.Error(), "\n"))
+	fmt.Fprintln(env.Err, "slantwise: "+failureText(err))
 	var ie *InputError
 	if errors.As(err, &ie) || !env.started {
 		return ExitInput

@@ -20,8 +20,8 @@ func newNew(env *Env) *cobra.Command {
 		Use:   "new [FILE]",
 		Short: "Write a commented scenario to start from",
 		Long: `Write a commented scenario to start from into FILE (slantwise.yaml where none is
-named), and a small file of element sets beside it. A file that is there is never
-replaced.`,
+named), and a small file of element sets beside it. A folder that is not there is
+made; a file that is there is never replaced.`,
 		Example: `  slantwise new
   slantwise new plans/summer.yaml`,
 		Args: func(cmd *cobra.Command, args []string) error {
@@ -54,6 +54,9 @@ func runNew(env *Env, file string) error {
 		if _, err := os.Lstat(path); err == nil {
 			return taken(path)
 		}
+	}
+	if err := os.MkdirAll(filepath.Dir(file), 0o777); err != nil {
+		return fmt.Errorf("making the folder of %s: %w", file, err)
 	}
 	if err := createText(elementFile, elementText); err != nil {
 		return err

@@ -43,8 +43,18 @@ func TestNewRefusesOtherNames(t *testing.T) {
 	if code != ExitInput || errOut != "slantwise: scenario.toml: new writes YAML; let the name end in .yaml\n" {
 		t.Errorf("code %d, stderr %q", code, errOut)
 	}
-	code, _, errOut = invoke(t, "new", filepath.Join(t.TempDir(), "no", "a.yaml"))
-	if code != ExitFailure || !strings.Contains(errOut, "no such file or directory") {
-		t.Errorf("a folder that is not there: code %d, stderr %q", code, errOut)
+}
+
+func TestNewMakesTheFolder(t *testing.T) {
+	t.Chdir(t.TempDir())
+	if code, _, errOut := invoke(t, "new", "plans/next/summer.yaml"); code != ExitAnswer {
+		t.Fatalf("code %d, stderr %q", code, errOut)
+	}
+	if code, _, errOut := invoke(t, "check", "--scenario", "plans/next/summer.yaml"); code != ExitAnswer {
+		t.Errorf("check of the new file: code %d, stderr %q", code, errOut)
+	}
+	code, _, errOut := invoke(t, "new", "plans/next/summer.tle/a.yaml")
+	if code != ExitFailure || errOut != "slantwise: making the folder of plans/next/summer.tle/a.yaml: not a directory\n" {
+		t.Errorf("a file in the way: code %d, stderr %q", code, errOut)
 	}
 }

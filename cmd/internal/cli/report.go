@@ -4,6 +4,8 @@ import (
 	"context"
 	"errors"
 	"fmt"
+	"io/fs"
+	"os"
 
 	"github.com/spf13/cobra"
 
@@ -86,6 +88,8 @@ func runReport(ctx context.Context, env *Env, o reportOptions) error {
 	switch {
 	case errors.As(err, &folder):
 		return inputErrorf("--into: %w", err)
+	case errors.As(err, new(*fs.PathError)) || errors.As(err, new(*os.LinkError)):
+		return fmt.Errorf("--into %s: %w", o.into, err)
 	case err != nil:
 		return err
 	}
