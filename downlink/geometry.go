@@ -29,8 +29,8 @@ const MeanEarthRadius = 6371009 * unit.Metre
 // allow. offBoresight nil: from the attitude: for nadir over a sphere through the
 // site (or of MeanEarthRadius), else 0.
 func (l *Link) StatedGeometry(slant unit.Length, elevation unit.Angle, azimuth, offBoresight *unit.Angle) (Geometry, error) {
-	if !(slant > 0 && slant <= 1e12) {
-		return Geometry{}, &unit.RangeError{Quantity: "range", Value: slant.Kilometres(), Unit: "km", Allowed: "greater than 0 and at most 1e9 km"}
+	if !(slant >= unit.Metre && slant <= 1e12) {
+		return Geometry{}, &unit.RangeError{Quantity: "range", Value: slant.Kilometres(), Unit: "km", Allowed: "0.001 to 1e9 km"}
 	}
 	if !(elevation >= -90*unit.Degree && elevation <= 90*unit.Degree) {
 		return Geometry{}, &unit.RangeError{Quantity: "elevation", Value: asGiven(elevation), Unit: "deg", Allowed: "-90 to 90 deg"}

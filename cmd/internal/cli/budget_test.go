@@ -225,6 +225,7 @@ func TestBudgetRefuses(t *testing.T) {
 		{budget("--range-km", "1200"), "needs --range-km and --elevation-deg, both"},
 		{budget("--range-km", "-1", "--elevation-deg", "20"), "range: -1 km is not allowed"},
 		{budget("--range-km", "NaN", "--elevation-deg", "20"), `--range-km: "NaN" is not allowed; it must be a number; only finite numbers are`},
+		{budget("--range-km", "1e-300", "--elevation-deg", "20"), "range: 1e-300 km is not allowed; it must be 0.001 to 1e9 km"},
 		{budget("--range-km", "1200", "--elevation-deg", "91"), "elevation: 91 deg is not allowed"},
 		{budget("--range-km", "1200", "--elevation-deg", "20", "--off-boresight-deg", "-3"), "off-boresight angle: -3 deg"},
 		{budget("--range-km", "1200", "--elevation-deg", "20", "--at", "2026-09-15T01:00:00Z"), "give one of the two"},

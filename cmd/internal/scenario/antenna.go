@@ -62,7 +62,7 @@ func (o object) aperture(a *station.Antenna) {
 	if o.has("gain_dbi") {
 		o.useless("beside gain_dbi, which holds it already", "efficiency", "surface_rms_mm", "blockage_fraction")
 	}
-	a.Diameter = unit.Length(o.numberOr("diameter_m", above(0, 1000, "m"), 0))
+	a.Diameter = unit.Length(o.numberOr("diameter_m", atLeast(0.001, 1000, "m"), 0))
 	a.Efficiency = o.numberOr("efficiency", fraction, 0)
 	a.SurfaceRMS = unit.Length(o.numberOr("surface_rms_mm", atLeast(0, 1000, "mm"), 0)) * unit.Millimetre
 	a.BlockageFraction = o.numberOr("blockage_fraction", span{low: 0, high: 1, highOpen: true}, 0)

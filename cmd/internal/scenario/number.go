@@ -49,7 +49,7 @@ func (s span) allowed() string {
 }
 
 func figure(v float64) string {
-	if math.Abs(v) < 1e9 {
+	if a := math.Abs(v); a == 0 || a > 1e-6 && a < 1e9 {
 		return strconv.FormatFloat(v, 'f', -1, 64)
 	}
 	return strconv.FormatFloat(v, 'g', -1, 64)

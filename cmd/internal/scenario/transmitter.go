@@ -13,7 +13,7 @@ var transmitterKeys = []string{
 
 // Ranges of radio keys; the far ends keep every sum of decibels finite.
 var (
-	frequencyMHz = above(0, 1e6, "MHz")
+	frequencyMHz = atLeast(0.003, 1e6, "MHz") // from the lowest radio band of the ITU on
 	gainDBi      = span{low: -200, high: 200, unit: "dBi"}
 	lossDB       = span{low: 0, high: 100, unit: "dB", next: "a loss is a positive number"}
 	marginDB     = span{low: -100, high: 100, unit: "dB"}
@@ -90,7 +90,7 @@ func (o object) radiatedPower(t *downlink.Transmitter) {
 func (o object) power(key string) unit.Level {
 	switch key {
 	case "power_w":
-		if v, ok := o.number(key, above(0, 1e9, "W")); ok {
+		if v, ok := o.number(key, atLeast(1e-20, 1e9, "W")); ok {
 			level, err := unit.LevelWatts(v)
 			o.addAll(o.get(key), key, err)
 			return level
