@@ -78,6 +78,9 @@ func budgetOfPass(s *scenario.Scenario, c *chosenLink, at time.Time, step time.D
 	if err != nil {
 		return nil, &InputError{Err: fmt.Errorf("spacecraft %s: %w", c.spacecraft.Name, err)}
 	}
+	if cut := eph.Truncated(); cut != nil {
+		r.warn("elements: passes end where the orbit does: %v", cut)
+	}
 	found, err := pass.Search(eph, &c.station.Site, pass.Window{From: s.Window.Start, To: s.Window.End}, s.Horizon)
 	if err != nil {
 		return nil, &InputError{Err: err}

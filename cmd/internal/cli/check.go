@@ -46,13 +46,16 @@ func runCheck(env *Env, f format) error {
 	return checkTable(env, s)
 }
 
-// fly propagates every spacecraft over the window, so that an orbit that decays in
-// it is found here.
+// fly propagates every spacecraft over the window. An orbit with no state in it is a
+// fault, one that ends within it a warning.
 func fly(s *scenario.Scenario) error {
 	var faults []error
 	for _, c := range s.Spacecraft {
-		if _, err := orbit.NewEphemeris(c.Elements.Elements, s.Window.Start, s.Window.End, s.Earth); err != nil {
+		e, err := orbit.NewEphemeris(c.Elements.Elements, s.Window.Start, s.Window.End, s.Earth)
+		if err != nil {
 			faults = append(faults, fmt.Errorf("spacecraft %s: %w", c.Name, err))
+		} else if cut := e.Truncated(); cut != nil {
+			s.Warnings = append(s.Warnings, scenario.Note{About: "spacecraft " + c.Name, Text: "passes end where its orbit does: " + cut.Error()})
 		}
 	}
 	return errors.Join(faults...)

@@ -43,3 +43,27 @@ func TestCheckFliesTheOrbit(t *testing.T) {
 		t.Errorf("twenty years on: code %d, stderr %s", code, errOut)
 	}
 }
+
+// TestCheckWarnsOfAnOrbitThatEnds takes a made-up set with so much drag that SGP4 leads
+// nowhere after minutes: the rest of the window has no passes, and that is said.
+func TestCheckWarnsOfAnOrbitThatEnds(t *testing.T) {
+	t.Chdir(t.TempDir())
+	for name, text := range map[string]string{
+		"slantwise.yaml": "window: {start_utc: 2026-09-14T23:00:00Z, length_h: 24}\nelement_files: [a.tle]\nstations: [{name: A, latitude_deg: 40, longitude_deg: 0, altitude_m: 0}]\n",
+		"a.tle": `FALLING
+1 99004U 26001A   26258.00000000  .05000000  00000-0  50000-2 0  9996
+2 99004  51.6000 100.0000 0005000  90.0000   0.0000 16.55000000    19
+`,
+	} {
+		if err := os.WriteFile(name, []byte(text), 0o644); err != nil {
+			t.Fatal(err)
+		}
+	}
+	code, out, errOut := invoke(t, "check", "--format", "csv")
+	if code != ExitAnswer || !strings.Contains(out, "\nwarning,spacecraft FALLING,") || !strings.Contains(out, "passes end where its orbit does: element set 99004") {
+		t.Errorf("code %d, stdout %s stderr %s", code, out, errOut)
+	}
+	if code, _, errOut = invoke(t, "check", "--window-start", "2026-09-16T00:00:00Z"); code != ExitInput || !strings.Contains(errOut, "spacecraft FALLING: element set 99004") {
+		t.Errorf("after its end: code %d, stderr %s", code, errOut)
+	}
+}
