@@ -256,6 +256,12 @@ func TestPatternThatRadiatesTooMuch(t *testing.T) {
 	if l := mustLink(t, spec); !l.noted(Warning, "radiates 2 times the power that it is fed (3.00 dB too much") {
 		t.Errorf("notes: %v", l.Notes())
 	}
+	// The same gain of a steered antenna is that on its axis, and no pattern is stated.
+	spec.Transmitter.Attitude = AttitudeStation
+	l := mustLink(t, spec)
+	if l.noted(Warning, "radiates") || !l.noted(Assumption, "boresight points at the station") {
+		t.Errorf("steered: notes: %v", l.Notes())
+	}
 }
 
 func TestStatedGeometry(t *testing.T) {

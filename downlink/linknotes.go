@@ -37,7 +37,9 @@ func (l *Link) noteTransmitter() {
 		l.note(Assumption, "the EIRP is taken as it is in every direction; no attitude is applied")
 		return
 	}
-	if share := t.Pattern.RadiatedShare(); share > 1+1e-9 {
+	// A steered antenna needs no pattern: one gain in every direction is that on its axis.
+	steered := t.Attitude == AttitudeStation && t.Pattern.Kind == Isotropic
+	if share := t.Pattern.RadiatedShare(); share > 1+1e-9 && !steered {
 		l.note(Warning, "the transmit antenna's pattern radiates %.3g times the power that it is fed (%.2f dB too much, integrated over the sphere): its gain or its width is wrong",
 			share, float64(decibels(share)))
 	}
@@ -46,6 +48,8 @@ func (l *Link) noteTransmitter() {
 		if t.Pattern.Kind != Isotropic {
 			l.note(Assumption, "attitude left out: a stated geometry without an off-boresight angle is taken at the transmit antenna's boresight")
 		}
+	case AttitudeStation:
+		l.note(Assumption, "attitude station: the transmit antenna's boresight points at the station, without an error")
 	case AttitudeNadir:
 		l.note(Assumption, "attitude nadir: the boresight points at the Earth's centre (the geodetic nadir lies up to 0.2 deg from it)")
 	case AttitudeTumbling:
