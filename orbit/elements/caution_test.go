@@ -19,8 +19,8 @@ func TestCaution(t *testing.T) {
 		want string
 	}{
 		"low, three days":     {low, day(3), ""},
-		"low, older":          {low, day(3.2), "is 3.2 days old at 2026-03-13T16:48:00Z"},
-		"low, far before":     {low, day(-4), "is 4.0 days ahead at 2026-03-06T12:00:00Z"},
+		"low, older":          {low, day(3.2), "is 3.2 days old at 2026-03-13T16:48:00Z; under 1000 km of perigee (here 488 km) 3 days are relied on by common practice: fetch a newer set"},
+		"low, far before":     {low, day(-4), "is 4.0 days ahead at 2026-03-06T12:00:00Z; under 1000 km of perigee (here 488 km) 3 days are relied on by common practice: take a set of that time"},
 		"high, much older":    {high, day(30), ""},
 		"low, three and more": {low, day(3).Add(time.Second), "is 3.0 days old"},
 	} {

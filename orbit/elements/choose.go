@@ -111,10 +111,10 @@ func caution(el *orbit.Elements, at time.Time) string {
 	if err != nil || facts.Perigee >= lowPerigee {
 		return "" // what is wrong with the orbit is told where it is flown
 	}
-	days, when := age.Hours()/24, "old"
+	days, when, next := age.Hours()/24, "old", "fetch a newer set"
 	if days < 0 {
-		days, when = -days, "ahead"
+		days, when, next = -days, "ahead", "take a set of that time"
 	}
-	return fmt.Sprintf("the element set of %s is %.1f days %s at %s; under 1000 km of perigee (here %.0f km) 3 days are relied on by common practice: fetch a newer set",
-		Label(*el), days, when, at.UTC().Format("2006-01-02T15:04:05Z"), facts.Perigee.Kilometres())
+	return fmt.Sprintf("the element set of %s is %.1f days %s at %s; under 1000 km of perigee (here %.0f km) 3 days are relied on by common practice: %s",
+		Label(*el), days, when, at.UTC().Format("2006-01-02T15:04:05Z"), facts.Perigee.Kilometres(), next)
 }

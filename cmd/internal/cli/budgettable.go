@@ -36,7 +36,11 @@ func (r *budgetResult) writeHead(w *bufio.Writer) {
 		line("mode %s: %s, coding %s, %s of information", m.Name, m.Modulation, m.Coding, rateText(float64(m.InformationRate)))
 	}
 	if e := r.elements; e != nil {
-		line("element set %d of %s, %.2f days old", e.CatalogNumber, utc(e.Epoch), e.Age.Hours()/24)
+		when := "old"
+		if e.Age < 0 {
+			when = "ahead"
+		}
+		line("element set %d of %s, %.2f days %s", e.CatalogNumber, utc(e.Epoch), e.Age.Abs().Hours()/24, when)
 	}
 	if p := r.pass; p != nil {
 		line("pass from %s to %s, culmination %.2f deg at %s", utc(p.AOS), utc(p.LOS), p.MaxElevation.Degrees(), utc(p.Culmination))

@@ -110,8 +110,12 @@ func runPointing(ctx context.Context, env *Env, o pointingOptions) error {
 		return err
 	}
 	middle := o.from.Add(o.to.Sub(o.from) / 2)
-	env.note("the element set of %s has the epoch %s, %s days before the middle of the span", printable(p.spacecraft.Name),
-		utc(p.elements.Epoch), fixed(middle.Sub(p.elements.Epoch).Hours()/24, 2))
+	age, side := middle.Sub(p.elements.Epoch), "before"
+	if age < 0 {
+		side = "after"
+	}
+	env.note("the element set of %s has the epoch %s, %s days %s the middle of the span", printable(p.spacecraft.Name),
+		utc(p.elements.Epoch), fixed(age.Abs().Hours()/24, 2), side)
 	if p.elements.Caution != "" {
 		env.note("warning: %s", printable(p.elements.Caution))
 	}

@@ -29,6 +29,10 @@ func TestPointingColumns(t *testing.T) {
 	if !strings.Contains(errOut, "the element set of Probe A has the epoch 2026-03-10T06:00:00.000Z, 2.17 days before the middle of the span") {
 		t.Errorf("the age is not told: %s", errOut)
 	}
+	_, _, errOut = invoke(t, append(pointProbe, "--from", "2026-03-10T00:00:00Z", "--to", "2026-03-10T00:00:00Z")...)
+	if !strings.Contains(errOut, ", 0.25 days after the middle of the span") {
+		t.Errorf("the age of a set from later is not told: %s", errOut)
+	}
 }
 
 // Rates must be those of the columns beside them: central differences over 2 ms, whose
