@@ -31,19 +31,35 @@ func runeCells(r rune) int {
 	return 1
 }
 
-// shorten cuts a text to at most n cells; a cut text ends in an ellipsis.
-func shorten(s string, n int) string {
+// wrap breaks a text between its words into lines of at most n cells; n is at least
+// the longest word. A text that fits stays as it is, its blanks included.
+func wrap(s string, n int) []string {
 	if cells(s) <= n {
-		return s
+		return []string{s}
 	}
-	used := 0
-	for i, r := range s {
-		used += runeCells(r)
-		if used > n-1 {
-			return s[:i] + "…"
+	var lines []string
+	line := ""
+	for _, word := range strings.Fields(s) {
+		switch {
+		case line == "":
+			line = word
+		case cells(line)+1+cells(word) <= n:
+			line += " " + word
+		default:
+			lines = append(lines, line)
+			line = word
 		}
 	}
-	return s
+	return append(lines, line)
+}
+
+// longestWord returns how many cells the longest word of a text takes.
+func longestWord(s string) int {
+	longest := 0
+	for _, word := range strings.Fields(s) {
+		longest = max(longest, cells(word))
+	}
+	return longest
 }
 
 // printable replaces what could steer a terminal or break a line.

@@ -10,24 +10,22 @@ import (
 // column describes a column of a table.
 type column struct {
 	head string // with its unit: "elevation deg"
-	text bool   // left-aligned, and shortened where the terminal is narrow
+	text bool   // left-aligned
 }
 
 // textColumn and numberColumn are the two kinds of columns.
 func textColumn(head string) column   { return column{head: head, text: true} }
 func numberColumn(head string) column { return column{head: head} }
 
-// narrowest is how far a text column may be shortened, in terminal cells.
-const narrowest = 8
-
 // writeTable writes rows under their heads. On a terminal of the given width (0: no
-// terminal, nothing is shortened) text columns are shortened until a line fits;
-// where that does not do, each row becomes a block of lines, one a column.
+// terminal, one line a row) heads and then cells are broken between words until a
+// line fits; where that does not do, each row becomes a block of lines, one a column.
+// Nothing is cut off.
 func writeTable(w io.Writer, width int, columns []column, rows [][]string) error {
 	b := bufio.NewWriter(w)
 	clean := cleanRows(rows)
 	widths := naturalWidths(columns, clean)
-	if width > 0 && !shrink(columns, widths, width) {
+	if width > 0 && !shrink(columns, clean, widths, width) {
 		writeBlocks(b, columns, clean)
 	} else {
 		writeLines(b, columns, widths, clean)
@@ -66,27 +64,39 @@ func naturalWidths(columns []column, rows [][]string) []int {
 // gap is the space between two columns.
 const gap = 2
 
-// shrink narrows text columns, the widest first, until a line fits into width. It
+// shrink narrows columns, the widest first, until a line fits into width: by their
+// heads as long as that does, then by what is in them, never within a word. It
 // reports whether that succeeded.
-func shrink(columns []column, widths []int, width int) bool {
+func shrink(columns []column, rows [][]string, widths []int, width int) bool {
 	total := -gap
 	for _, w := range widths {
 		total += w + gap
 	}
-	for total > width {
-		widest := -1
-		for j, c := range columns {
-			if c.text && widths[j] > narrowest && (widest < 0 || widths[j] > widths[widest]) {
-				widest = j
-			}
+	byHead, byWord := make([]int, len(columns)), make([]int, len(columns))
+	for j, c := range columns {
+		byWord[j] = longestWord(c.head)
+		byHead[j] = byWord[j]
+		for _, row := range rows {
+			byWord[j] = max(byWord[j], longestWord(row[j]))
+			byHead[j] = max(byHead[j], cells(row[j]))
 		}
-		if widest < 0 {
-			return false
-		}
-		widths[widest]--
-		total--
 	}
-	return true
+	for _, least := range [][]int{byHead, byWord} {
+		for total > width {
+			widest := -1
+			for j, w := range widths {
+				if w > least[j] && (widest < 0 || w > widths[widest]) {
+					widest = j
+				}
+			}
+			if widest < 0 {
+				break
+			}
+			widths[widest]--
+			total--
+		}
+	}
+	return total <= width
 }
 
 func writeLines(b *bufio.Writer, columns []column, widths []int, rows [][]string) {
@@ -96,30 +106,43 @@ func writeLines(b *bufio.Writer, columns []column, widths []int, rows [][]string
 		heads[j] = c.head
 		rule[j] = strings.Repeat("-", widths[j])
 	}
-	writeLine(b, columns, widths, heads)
-	writeLine(b, columns, widths, rule)
+	writeRow(b, columns, widths, heads)
+	writeRow(b, columns, widths, rule)
 	for _, row := range rows {
-		writeLine(b, columns, widths, row)
+		writeRow(b, columns, widths, row)
 	}
 }
 
-func writeLine(b *bufio.Writer, columns []column, widths []int, row []string) {
-	var line strings.Builder
+// writeRow writes a row, in as many lines as its highest cell has.
+func writeRow(b *bufio.Writer, columns []column, widths []int, row []string) {
+	parts := make([][]string, len(row))
+	height := 1
 	for j, cell := range row {
-		if j > 0 {
-			line.WriteString("  ")
-		}
-		cell = shorten(cell, widths[j])
-		pad := strings.Repeat(" ", widths[j]-cells(cell))
-		if columns[j].text {
-			line.WriteString(cell + pad)
-		} else {
-			line.WriteString(pad + cell)
-		}
+		parts[j] = wrap(cell, widths[j])
+		height = max(height, len(parts[j]))
 	}
-	// Errors stay in the buffered writer until it is flushed.
-	b.WriteString(strings.TrimRight(line.String(), " "))
-	b.WriteByte('\n')
+	var line strings.Builder
+	for n := range height {
+		line.Reset()
+		for j := range parts {
+			if j > 0 {
+				line.WriteString("  ")
+			}
+			part := ""
+			if n < len(parts[j]) {
+				part = parts[j][n]
+			}
+			pad := strings.Repeat(" ", widths[j]-cells(part))
+			if columns[j].text {
+				line.WriteString(part + pad)
+			} else {
+				line.WriteString(pad + part)
+			}
+		}
+		// Errors stay in the buffered writer until it is flushed.
+		b.WriteString(strings.TrimRight(line.String(), " "))
+		b.WriteByte('\n')
+	}
 }
 
 func writeBlocks(b *bufio.Writer, columns []column, rows [][]string) {
