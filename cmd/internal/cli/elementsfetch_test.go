@@ -115,7 +115,7 @@ func TestElementsFromTrouble(t *testing.T) {
 	} {
 		t.Run(name, func(t *testing.T) {
 			path := elementsFile(t, pipitSet)
-			timeout := "20s"
+			timeout := "3m" // far from what any of these takes, the race detector on a busy machine included
 			if name == "slow" {
 				timeout = "200ms"
 			}
