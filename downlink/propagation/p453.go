@@ -1,0 +1,51 @@
+package propagation
+
+import (
+	"math"
+
+	"slantwise/orbit/unit"
+)
+
+// WetRefractivity returns the wet term of the radio refractivity in N-units from a
+// temperature and a density of water vapour. Source: Rec. ITU-R P.453-14, equations
+// (2) and (10), e = rho T/216.7.
+//
+// From the surface's annual figures it only estimates the median that the
+// Recommendation's map holds: within 5 % at sea level, 18 % low at a site 2.5 km high.
+func WetRefractivity(t unit.Temperature, rho VapourDensity) (float64, error) {
+	return wetRefractivity(t.Kelvins(), rho.GramsPerCubicMetre())
+}
+
+func wetRefractivity(tK, rhoGM3 float64) (float64, error) {
+	if err := firstError(checkAirTemperature(tK), notNegative("water vapour density", rhoGM3, "g/m3")); err != nil {
+		return 0, err
+	}
+	return wetTerm(vapourPressure(rhoGM3, tK), tK), nil
+}
+
+func wetTerm(eHPa, tK float64) float64 { return 72*eHPa/tK + 3.75e5*eHPa/(tK*tK) }
+
+// refractivity returns N of air by P.453-14 equation (2).
+func refractivity(dryHPa, eHPa, tK float64) float64 { return 77.6*dryHPa/tK + wetTerm(eHPa, tK) }
+
+// vapourPressure returns the partial pressure of water vapour in hPa, P.453-14
+// equation (10).
+func vapourPressure(rhoGM3, tK float64) float64 { return rhoGM3 * tK / 216.7 }
+
+// SaturationVapourPressure returns the saturation pressure over liquid water at a
+// temperature and total pressure; -40 °C to 50 °C. Source: Rec. ITU-R P.453-14,
+// equation (9) with its coefficients for water.
+func SaturationVapourPressure(t unit.Temperature, total Pressure) (Pressure, error) {
+	c := t.Kelvins() - 273.15
+	p := total.Hectopascals()
+	err := firstError(within("temperature", t.Kelvins(), "K", 233.15, 323.15, ""), positive("pressure", p, "hPa"))
+	if err != nil {
+		return 0, err
+	}
+	enhancement := 1 + 1e-4*(7.2+p*(0.0320+5.9e-6*c*c))
+	return Pressure(enhancement*6.1121*math.Exp((18.678-c/234.5)*c/(c+257.14))) * Hectopascal, nil
+}
+
+func checkAirTemperature(tK float64) error {
+	return within("temperature", tK, "K", 100, 400, "give it in kelvin")
+}

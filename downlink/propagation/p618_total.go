@@ -1,0 +1,45 @@
+package propagation
+
+import (
+	"math"
+
+	"slantwise/orbit/unit"
+)
+
+// Contributions are the attenuations that occur together on a path at one percentage.
+type Contributions struct{ Gas, Cloud, Rain, Scintillation unit.DB }
+
+// Sum returns the plain sum of the four.
+func (c Contributions) Sum() unit.DB { return c.Gas + c.Cloud + c.Rain + c.Scintillation }
+
+// TotalAttenuation combines contributions that were taken at the percentages of
+// CombinationPercentage: gas, and the root of the squares of rain with cloud and of
+// scintillation. Each must be 0 or greater and finite. Source: Rec. ITU-R P.618-14
+// §2.5, equations (65) and (66).
+func TotalAttenuation(c Contributions) (unit.DB, error) {
+	err := firstError(notNegative("gas attenuation", float64(c.Gas), "dB"), notNegative("cloud attenuation", float64(c.Cloud), "dB"),
+		notNegative("rain attenuation", float64(c.Rain), "dB"), notNegative("scintillation fade", float64(c.Scintillation), "dB"))
+	if err != nil {
+		return 0, err
+	}
+	return unit.DB(combined(float64(c.Gas), float64(c.Cloud), float64(c.Rain), float64(c.Scintillation*c.Scintillation))), nil
+}
+
+func combined(gas, cloud, rain, scintillationSquared float64) float64 {
+	w := rain + cloud
+	return gas + math.Sqrt(w*w+scintillationSquared)
+}
+
+// CombinationPercentage returns the percentage at which gas and cloud enter the total
+// of percentage p: not under 5 %, P.618-14 equations (67) and (68), or not under 1 %
+// in P.618-13. Rain enters at p up to 5 % and not at all above.
+func CombinationPercentage(p Exceedance, e Editions) Exceedance {
+	return Exceedance(combinationPercent(p.Percents(), e.P618)) * Percent
+}
+
+func combinationPercent(pPct float64, edition int) float64 {
+	if edition == 13 {
+		return math.Max(pPct, 1)
+	}
+	return math.Max(pPct, 5)
+}
