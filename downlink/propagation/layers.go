@@ -134,24 +134,38 @@ func (l *Layers) belowTo(absorption []float64, heightKm float64) float64 {
 	return sum
 }
 
-// turn returns the angle at the Earth's centre between the bottom of the shells and
-// their outer edge, and the ray's angle to the vertical in the vacuum there.
-func (l *Layers) turn(apparentDeg float64) (centre, exit float64) {
+// trace follows the ray that appears at apparentDeg: its attenuation in dB, the angle
+// at the Earth's centre between the bottom of the shells and their outer edge, and
+// the ray's angle to the vertical in the vacuum there. absorption may be nil.
+func (l *Layers) trace(absorption []float64, apparentDeg float64) (attenuation, centre, exit float64) {
 	k := l.impact(apparentDeg)
 	for i := range l.shells {
-		x := k / l.shells[i].n
-		r := l.shells[i].rKm
+		s := &l.shells[i]
+		x := k / s.n
 		outer := l.outer(i)
-		centre += math.Atan2(x, halfChord(r, x)) - math.Atan2(x, halfChord(outer, x))
+		chord := halfChord(outer, x) - halfChord(s.rKm, x)
+		if absorption != nil {
+			attenuation += absorption[i] * chord
+		}
+		// The sine of the shell's angle at the centre is chord sin(beta)/outer, under
+		// 0.01, where three terms of the arcsine are exact to 1e-15.
+		z := chord * x / (s.rKm * outer)
+		centre += z * (1 + z*z*(1.0/6+z*z*(3.0/40)))
 	}
-	return centre, math.Atan2(k, halfChord(l.topKm, k))
+	return attenuation, centre, math.Atan2(k, halfChord(l.topKm, k))
 }
 
 // geometricDeg returns the elevation of the straight line to a satellite which
-// appears at apparentDeg (0 to 90): the ray's direction where it has left the air,
-// for a satellite far away, or the line to radius r for one at that radius.
+// appears at apparentDeg (0 to 90).
 func (l *Layers) geometricDeg(apparentDeg, satelliteRadiusKm float64) float64 {
-	centre, exit := l.turn(apparentDeg)
+	_, centre, exit := l.trace(nil, apparentDeg)
+	return l.straight(apparentDeg, centre, exit, satelliteRadiusKm)
+}
+
+// straight returns the elevation of the straight line to a satellite whose ray was
+// traced: the ray's direction where it has left the air, for a satellite far away
+// (infinite radius), or the line to the point where the ray meets the radius.
+func (l *Layers) straight(apparentDeg, centre, exit, satelliteRadiusKm float64) float64 {
 	if math.IsInf(satelliteRadiusKm, 1) {
 		return 90 - degrees(centre+exit)
 	}

@@ -97,6 +97,20 @@ func (l *lowAngle) fade(geometricDeg float64) float64 {
 	return deepDB * math.Exp(u*(l.alpha+u*(l.beta+l.gammaCube*v)))
 }
 
+// transitionDeg returns the geometric elevation at which the deep part begins, by
+// bisection of the refraction of P.834; under -1° it returns -1°.
+func (l *lowAngle) transitionDeg() float64 {
+	low, high := -1.0, 5.0
+	for range 60 {
+		if mid := (low + high) / 2; apparentElevation(mid, l.heightKm)*mradPerDegree <= l.theta1 {
+			low = mid
+		} else {
+			high = mid
+		}
+	}
+	return high
+}
+
 // geoclimaticFactor is Kw of equations (50) to (53) with Table 3.
 func geoclimaticFactor(latDeg, heightKm float64, path LowPath) float64 {
 	c0 := 76.0

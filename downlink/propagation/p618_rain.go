@@ -85,17 +85,35 @@ func (r *rainPath) attenuation(elDeg, pPct float64) float64 {
 
 // attenuation001 is steps 2 to 9: the attenuation exceeded for 0.01 %.
 func (r *rainPath) attenuation001(elDeg, sinEl, cosEl, h float64) float64 {
-	lg := slantBelow(elDeg, sinEl, h) * cosEl // equation (3)
-	k, alpha := r.law.combine(cosEl * cosEl * r.cosTilt)
-	gamma := k * math.Pow(r.site.rateMmH, alpha)                                 // equation (4)
-	r001 := 1 / (1 + 0.78*math.Sqrt(lg*gamma/r.fGHz) - 0.38*(1-math.Exp(-2*lg))) // equation (5)
-	lr := h / sinEl                                                              // step 7, otherwise
-	if zeta := degrees(math.Atan2(h, lg*r001)); zeta > elDeg {
+	gamma, lg, r001 := r.reduction(elDeg, sinEl, cosEl, h)
+	lr := h / sinEl // step 7
+	if steeper(elDeg, h, lg*r001) {
 		lr = lg * r001 / cosEl
 	}
 	chi := math.Max(0, 36-math.Abs(r.site.latDeg))
 	v001 := 1 / (1 + math.Sqrt(sinEl)*(31*(1-math.Exp(-elDeg/(1+chi)))*math.Sqrt(lr*gamma)/(r.fGHz*r.fGHz)-0.45))
 	return gamma * lr * v001 // equations (6) and (7)
+}
+
+// reduction is steps 2 to 6: the specific attenuation, the horizontal projection of
+// the path below the rain height, and its reduction factor.
+func (r *rainPath) reduction(elDeg, sinEl, cosEl, h float64) (gamma, lg, r001 float64) {
+	lg = slantBelow(elDeg, sinEl, h) * cosEl // equation (3)
+	k, alpha := r.law.combine(cosEl * cosEl * r.cosTilt)
+	gamma = k * math.Pow(r.site.rateMmH, alpha)                                 // equation (4)
+	r001 = 1 / (1 + 0.78*math.Sqrt(lg*gamma/r.fGHz) - 0.38*(1-math.Exp(-2*lg))) // equation (5)
+	return gamma, lg, r001
+}
+
+// steeper tells whether the angle zeta of step 7 exceeds the elevation.
+func steeper(elDeg, h, reducedKm float64) bool { return degrees(math.Atan2(h, reducedKm)) > elDeg }
+
+// steep tells which branch of step 7 an elevation takes.
+func (r *rainPath) steep(elDeg float64) bool {
+	sinEl, cosEl := math.Sincos(radians(elDeg))
+	h := r.site.rainKm - r.site.stationKm
+	_, lg, r001 := r.reduction(elDeg, sinEl, cosEl, h)
+	return steeper(elDeg, h, lg*r001)
 }
 
 // slantBelow returns the path below a height h above the station in km, P.618-14

@@ -75,6 +75,21 @@ func (s scintillation) averagingArgument(sinEl float64) float64 {
 	return 1.22 * s.efficiency * s.diameterM * s.diameterM * s.fGHz / l
 }
 
+// averagedOutFrom returns the elevation from which on the aperture averages all
+// scintillation out, 90° if there is none: the path through the turbulence shortens
+// with the elevation, so x rises.
+func (s scintillation) averagedOutFrom() float64 {
+	low, high := 0.0, 90.0
+	for range 60 {
+		if mid := (low + high) / 2; averagingSquared(s.averagingArgument(math.Sin(radians(mid)))) > 0 {
+			low = mid
+		} else {
+			high = mid
+		}
+	}
+	return high
+}
+
 // averagingSquared is the argument of the root in equation (45); not positive where
 // the aperture averages scintillation out.
 func averagingSquared(x float64) float64 {

@@ -9,14 +9,15 @@ import (
 
 // BlockedRayError says that a ray meets the ground before it reaches the station.
 type BlockedRayError struct {
-	Apparent unit.Angle // of the ray at the station
-	Least    unit.Angle // lowest apparent elevation from which a ray still arrives
+	Kind      string     // "apparent" or "geometric"
+	Elevation unit.Angle // of the ray at the station
+	Least     unit.Angle // from which a ray still arrives, in the same kind
 }
 
 // Error names the elevation, the least one that is free, and what to do.
 func (e *BlockedRayError) Error() string {
-	return fmt.Sprintf("apparent elevation: %.4f deg is under the horizon: a ray arrives from %.4f deg up at this height; raise the elevation",
-		e.Apparent.Degrees(), e.Least.Degrees())
+	return fmt.Sprintf("%s elevation: %.4f deg is under the horizon: a ray arrives from %.4f deg up at this height; raise the elevation",
+		e.Kind, e.Elevation.Degrees(), e.Least.Degrees())
 }
 
 // GasAttenuation returns the attenuation of gases in the layers above the station,
@@ -60,7 +61,7 @@ func (l *Layers) lowestPoint(apparentDeg float64) (float64, error) {
 	low, high := math.Min(0, l.baseKm), l.baseKm
 	if ground := l.nr(low); ground > k || low == high {
 		least := -degrees(math.Acos(math.Min(1, ground/l.nr(l.baseKm))))
-		return 0, &BlockedRayError{unit.Angle(apparentDeg) * unit.Degree, unit.Angle(least) * unit.Degree}
+		return 0, &BlockedRayError{"apparent", unit.Angle(apparentDeg) * unit.Degree, unit.Angle(least) * unit.Degree}
 	}
 	for range 60 {
 		mid := (low + high) / 2
@@ -99,12 +100,15 @@ func (l *Layers) Apparent(geometric unit.Angle) (unit.Angle, error) {
 	return unit.Angle(deg) * unit.Degree, err
 }
 
+// roundOffDeg is what conversions between radians and degrees may do to an elevation.
+const roundOffDeg = 1e-9
+
 // apparentDeg inverts geometricDeg, which rises with the elevation, by the secant
 // method held inside a bracket.
 func (l *Layers) apparentDeg(geometricDeg, satelliteRadiusKm float64) (float64, error) {
 	horizon := l.geometricDeg(0, satelliteRadiusKm)
-	if geometricDeg < horizon {
-		return 0, &BlockedRayError{unit.Angle(geometricDeg-horizon) * unit.Degree, 0}
+	if geometricDeg < horizon-roundOffDeg {
+		return 0, &BlockedRayError{"geometric", unit.Angle(geometricDeg) * unit.Degree, unit.Angle(horizon) * unit.Degree}
 	}
 	low, high := 0.0, 90.0
 	guess := math.Min(90, apparentElevation(math.Max(geometricDeg, -0.5), math.Max(0, l.baseKm)))

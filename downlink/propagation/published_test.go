@@ -157,7 +157,7 @@ func TestP618v13TotalPublished(t *testing.T) {
 }
 
 func TestP837Published(t *testing.T) {
-	w := worst{rel: 2e-5} // the published root finding stopped there
+	w := worst{rel: 2e-5}                      // the published root finding stopped there
 	probability := worst{rel: 1e-6, abs: 5e-9} // 8 decimals are printed
 	openSheet(t, "p837_7_rain_rate.csv").each(func(r sheetRow) {
 		var celsius, rainfall [12]float64
