@@ -129,11 +129,23 @@ func (c *Climate) wet(clear Atmosphere, n *notes) float64 {
 	return w
 }
 
+// lastPercent returns the highest percentage that the curves of the climate reach,
+// 50 % at most.
+func (c *Climate) lastPercent() float64 {
+	last := 50.0
+	for _, q := range []Curve{c.Vapour, c.CloudWater} {
+		if n := len(q.points); n > 0 {
+			last = math.Min(last, q.points[n-1].P.Percents())
+		}
+	}
+	return last
+}
+
 // galaxyAndCosmos returns what lies behind the air.
 func galaxyAndCosmos(f unit.Frequency) (float64, error) {
 	g, err := GalacticBrightness(f)
 	if err != nil {
 		return 0, err
 	}
-	return math.Max(0, g.Kelvins()) + CosmicBackground.Kelvins(), nil
+	return g.Kelvins() + CosmicBackground.Kelvins(), nil
 }

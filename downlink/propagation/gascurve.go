@@ -19,8 +19,9 @@ type gasCurve struct {
 
 const gasNodes = 256
 
-func newGasCurve(l *Layers, fGHz, satelliteRadiusKm float64) *gasCurve {
-	c := &gasCurve{layers: l, absorption: l.absorption(fGHz), radiusKm: satelliteRadiusKm,
+// newGasCurve traces the nodes; absorption is in dB/km by shell, the radius in km.
+func newGasCurve(l *Layers, absorption []float64, satelliteRadiusKm float64) *gasCurve {
+	c := &gasCurve{layers: l, absorption: absorption, radiusKm: satelliteRadiusKm,
 		root: make([]float64, gasNodes+1), dB: make([]float64, gasNodes+1)}
 	for i := range c.root {
 		u := float64(i) / gasNodes
@@ -40,13 +41,6 @@ func (c *gasCurve) at(elDeg float64) float64 {
 	y := math.Sqrt(math.Max(0, elDeg-c.horizonDeg))
 	i := max(0, min(sort.SearchFloat64s(c.root, y)-3, gasNodes-5))
 	return lagrange(c.root[i:i+6], c.dB[i:i+6], y)
-}
-
-// without returns the curve of a sky that takes nothing, over the same elevations.
-func (c *gasCurve) without() *gasCurve {
-	w := *c
-	w.absorption, w.dB = make([]float64, len(c.absorption)), make([]float64, len(c.dB))
-	return &w
 }
 
 // direct traces the ray itself.

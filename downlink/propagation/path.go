@@ -35,15 +35,12 @@ func NewPath(s PathSpec) (*Path, error) {
 	if err != nil {
 		return nil, err
 	}
-	p := &Path{spec: s, model: m}
-	surface := m.clearGas.layers.atmosphere.at(s.Climate.Height.Kilometres()).tK
-	medium, err := MeanRadiatingTemperature(unit.Temperature(surface))
+	p, err := newPathOf(s, m)
 	if err != nil {
 		return nil, err
 	}
-	p.medium = medium.Kelvins()
-	if p.behind, err = galaxyAndCosmos(s.Frequency); err != nil {
-		return nil, err
+	if !s.ClearSky {
+		m.notes.add(Assumption, "attenuation exceeded for %s %% of an average year at each elevation: a curve of equal probability, not a storm", number(m.pPct))
 	}
 	b := m.breaks()
 	for i := 1; i < len(b); i++ {
@@ -53,6 +50,17 @@ func NewPath(s PathSpec) (*Path, error) {
 		m.notes.add(Assumption, "between the geometric elevation of the apparent horizon, %.2f deg, and 0 deg rain, cloud and scintillation are those of 0 deg", m.horizon())
 	}
 	return p, nil
+}
+
+// newPathOf returns a path without its tables.
+func newPathOf(s PathSpec, m *pathModel) (*Path, error) {
+	surface := m.clearGas.layers.atmosphere.at(s.Climate.Height.Kilometres()).tK
+	medium, err := MeanRadiatingTemperature(unit.Temperature(surface))
+	if err != nil {
+		return nil, err
+	}
+	behind, err := galaxyAndCosmos(s.Frequency)
+	return &Path{spec: s, model: m, medium: medium.Kelvins(), behind: behind}, err
 }
 
 // Notes tells what the path assumes, took by default, misses or has beyond a stated
@@ -100,8 +108,12 @@ func (p *Path) Sky(elevation unit.Angle) (Sky, error) {
 	if err != nil {
 		return Sky{}, err
 	}
+	return p.sky(&v), nil
+}
+
+func (p *Path) sky(v *[columns]float64) Sky {
 	return Sky{unit.Temperature(brightness(v[colGas]+v[colCloud]+v[colRain], p.medium, p.behind)),
-		unit.Temperature(brightness(v[colClearGas], p.medium, p.behind))}, nil
+		unit.Temperature(brightness(v[colClearGas], p.medium, p.behind))}
 }
 
 // CrossPolar returns the discrimination not exceeded for the path's percentage at an

@@ -34,7 +34,7 @@ const (
 
 // pathModel evaluates all parts of a path without tables; elevations are geometric.
 type pathModel struct {
-	pPct          float64
+	pPct, gasPct  float64 // percentage sought, and the one of the gas
 	gas, clearGas *gasCurve
 	cloudZenith   float64 // dB
 	rain          *rainPath
@@ -43,7 +43,11 @@ type pathModel struct {
 	notes         notes
 }
 
-func newPathModel(s PathSpec) (*pathModel, error) {
+func newPathModel(s PathSpec) (*pathModel, error) { return newPathModelLike(s, nil) }
+
+// newPathModelLike prepares a model and takes over the gas of another of the same
+// spec, where its percentage asks for the same gas.
+func newPathModelLike(s PathSpec, other *pathModel) (*pathModel, error) {
 	e := s.Editions
 	if e == (Editions{}) {
 		e = Newest
@@ -64,33 +68,26 @@ func newPathModel(s PathSpec) (*pathModel, error) {
 	if err != nil {
 		return nil, err
 	}
-	if err := m.prepareGas(s, e, clear); err != nil {
+	if err := m.prepareGas(s, e, clear, other); err != nil {
 		return nil, err
 	}
 	if s.ClearSky {
 		m.notes.add(Assumption, "clear sky: gas of the ordinary air only")
 		return m, nil
 	}
-	m.notes.add(Assumption, "attenuation exceeded for %s %% of an average year at each elevation (P.618-%d): a curve of equal probability, not a storm",
-		number(p), e.P618)
 	return m, firstError(m.prepareCloud(s, e), m.prepareRain(s), m.prepareScintillation(s, clear))
 }
 
-func (m *pathModel) prepareGas(s PathSpec, e Editions, clear Atmosphere) error {
-	radius := math.Inf(1)
-	if s.SatelliteHeight > 0 {
-		radius = earthRadiusKm + s.SatelliteHeight.Kilometres()
-	}
+func (m *pathModel) prepareGas(s PathSpec, e Editions, clear Atmosphere, other *pathModel) (err error) {
 	fGHz := s.Frequency.Gigahertz()
-	layers, err := NewLayers(clear, s.Climate.Height)
-	if err != nil {
+	if other != nil {
+		m.clearGas = other.clearGas
+	} else if m.clearGas, err = s.gasOf(clear); err != nil {
 		return err
 	}
-	m.clearGas = newGasCurve(layers, fGHz, radius)
 	m.gas = m.clearGas
 	if s.WithoutGas {
 		m.notes.add(Assumption, "gas is left out as asked")
-		m.gas, m.clearGas = m.gas.without(), m.clearGas.without()
 		return nil
 	}
 	m.notes.beyond("P.676-13", "frequency", fGHz, "GHz", 1, 1000)
@@ -98,15 +95,34 @@ func (m *pathModel) prepareGas(s PathSpec, e Editions, clear Atmosphere) error {
 	if s.ClearSky {
 		return nil
 	}
-	humid, err := s.Climate.humid(clear, combinationPercent(m.pPct, e.P618), &m.notes)
+	m.gasPct = combinationPercent(m.pPct, e.P618)
+	if other != nil && other.gasPct == m.gasPct {
+		m.gas = other.gas
+		return nil
+	}
+	humid, err := s.Climate.humid(clear, m.gasPct, &m.notes)
 	if err != nil || s.Climate.Vapour.Empty() {
 		return err
 	}
-	if layers, err = NewLayers(humid, s.Climate.Height); err != nil {
-		return err
+	m.gas, err = s.gasOf(humid)
+	return err
+}
+
+// gasOf traces the rays through an atmosphere; without gas they still bend.
+func (s *PathSpec) gasOf(a Atmosphere) (*gasCurve, error) {
+	layers, err := NewLayers(a, s.Climate.Height)
+	if err != nil {
+		return nil, err
 	}
-	m.gas = newGasCurve(layers, fGHz, radius)
-	return nil
+	radius := math.Inf(1)
+	if s.SatelliteHeight > 0 {
+		radius = earthRadiusKm + s.SatelliteHeight.Kilometres()
+	}
+	absorption := make([]float64, len(layers.shells))
+	if !s.WithoutGas {
+		absorption = layers.absorption(s.Frequency.Gigahertz())
+	}
+	return newGasCurve(layers, absorption, radius), nil
 }
 
 func (m *pathModel) prepareCloud(s PathSpec, e Editions) error {

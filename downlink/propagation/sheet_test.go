@@ -29,6 +29,10 @@ func openSheet(t *testing.T, name string) *sheet {
 	if err != nil {
 		t.Fatal(err)
 	}
+	return newSheet(t, name, records)
+}
+
+func newSheet(t *testing.T, name string, records [][]string) *sheet {
 	s := &sheet{t: t, name: name, head: map[string]int{}, rows: records[1:]}
 	for i, h := range records[0] {
 		s.head[h] = i
