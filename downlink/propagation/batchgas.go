@@ -19,8 +19,8 @@ var gasSpecificBatch = batchModel{
 }
 
 // The slant path of gases has three descriptions, told apart by the columns: Annex 2
-// of P.676-13 with its oxygen heights, Annex 2 of P.676-12 (also its zenith vapour
-// alone), and Annex 1 from the surface or the reference atmosphere.
+// of P.676-13 with its oxygen heights, Annex 2 of P.676-12, and Annex 1 from the air
+// at the surface.
 var (
 	annex2Columns = []string{"frequency_ghz", "elevation_deg", "temperature_k", "water_vapour_density_g_m3", "dry_pressure_hpa",
 		"oxygen_height_a0_km", "oxygen_height_b0_km_per_k", "oxygen_height_c0_km_per_hpa", "oxygen_height_d0_km_per_g_m3"}

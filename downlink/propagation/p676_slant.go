@@ -111,7 +111,7 @@ func (l *Layers) apparentDeg(geometricDeg, satelliteRadiusKm float64) (float64, 
 		return 0, &BlockedRayError{"geometric", unit.Angle(geometricDeg) * unit.Degree, unit.Angle(horizon) * unit.Degree}
 	}
 	low, high := 0.0, 90.0
-	guess := math.Min(90, apparentElevation(math.Max(geometricDeg, -0.5), math.Max(0, l.baseKm)))
+	guess := math.Max(low, math.Min(high, apparentElevation(math.Max(geometricDeg, -0.5), math.Max(0, l.baseKm))))
 	for range 60 {
 		diff := l.geometricDeg(guess, satelliteRadiusKm) - geometricDeg
 		if math.Abs(diff) < 1e-11 {

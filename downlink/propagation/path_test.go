@@ -53,8 +53,8 @@ func pathCases() []struct {
 func elevationsOf(p *Path) []unit.Angle {
 	lowest := p.Lowest().Degrees()
 	var degs []float64
-	for i := range 801 {
-		u := float64(i) / 800
+	for i := range 241 {
+		u := float64(i) / 240
 		degs = append(degs, lowest+(90-lowest)*u*u)
 	}
 	for _, b := range p.model.breaks() {
