@@ -51,7 +51,11 @@ func (b *Batch) Row(line int, cells []string) ([]string, error) {
 		return nil, r.bad
 	}
 	out := make([]float64, len(b.model.results))
-	if err := b.model.evaluate(b, r, out); err != nil {
+	err := b.model.evaluate(b, r, out)
+	if r.bad != nil {
+		return nil, r.bad
+	}
+	if err != nil {
 		return nil, r.fault(err)
 	}
 	b.warnings.add(line, r.notes)

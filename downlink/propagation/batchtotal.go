@@ -2,14 +2,19 @@ package propagation
 
 import (
 	"math"
+	"slices"
 )
+
+// cloudLogNormalColumns are those that every row of the log-normal approximation
+// fills; mean and sigma are read where there is cloud at the percentage.
+var cloudLogNormalColumns = []string{"frequency_ghz", "elevation_deg", "exceedance_percent", "lognormal_probability_percent"}
 
 var cloudBatch = batchModel{
 	name: "cloud",
 	inputs: func(b *Batch) ([]string, error) {
 		if b.options.LogNormal {
-			return b.need("frequency_ghz", "elevation_deg", "exceedance_percent",
-				"lognormal_mean_ln_kg_m2", "lognormal_sigma", "lognormal_probability_percent")
+			_, err := b.need(append(slices.Clone(cloudLogNormalColumns), "lognormal_mean_ln_kg_m2", "lognormal_sigma")...)
+			return cloudLogNormalColumns, err
 		}
 		return b.need("frequency_ghz", "elevation_deg", "cloud_liquid_water_kg_m2")
 	},
@@ -17,8 +22,12 @@ var cloudBatch = batchModel{
 	evaluate: func(b *Batch, r *batchRow, out []float64) (err error) {
 		f, el := r.number("frequency_ghz"), r.number("elevation_deg")
 		if b.options.LogNormal {
-			out[0], err = cloudLogNormal(f, el, r.number("exceedance_percent"), r.number("lognormal_mean_ln_kg_m2"),
-				r.number("lognormal_sigma"), r.number("lognormal_probability_percent"), b.editions.P840, &r.notes)
+			p, probability := r.number("exceedance_percent"), r.number("lognormal_probability_percent")
+			mean, sigma := 0.0, 1.0 // of no consequence where there is no cloud, where the map has none
+			if liquidLogNormal(p, mean, sigma, probability) > 0 {
+				mean, sigma = r.number("lognormal_mean_ln_kg_m2"), r.number("lognormal_sigma")
+			}
+			out[0], err = cloudLogNormal(f, el, p, mean, sigma, probability, b.editions.P840, &r.notes)
 			return err
 		}
 		out[0], err = cloudDirect(f, el, r.number("cloud_liquid_water_kg_m2"), b.editions.P840, &r.notes)

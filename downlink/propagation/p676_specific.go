@@ -57,8 +57,9 @@ func oxygenSpecific(f, p, tK, rho float64) float64 {
 	e := vapourPressure(rho, tK)
 	theta08 := math.Exp(0.8 * lnTheta)
 	var sum float64
-	for i := range oxygenLines() {
-		l := &oxygenLines()[i]
+	lines := oxygenLines()
+	for i := range lines {
+		l := &lines[i]
 		strength := l.a[0] * 1e-7 * p * theta * theta * theta * math.Exp(l.a[1]*(1-theta))
 		scale := theta08
 		if l.a[3] != 0 {
@@ -87,8 +88,9 @@ func vapourSpecific(f, p, tK, rho float64) float64 {
 	e := vapourPressure(rho, tK)
 	theta35 := math.Exp(3.5 * lnTheta)
 	var sum float64
-	for i := range vapourLines() {
-		l := &vapourLines()[i]
+	lines := vapourLines()
+	for i := range lines {
+		l := &lines[i]
 		strength := l.a[0] * 0.1 * e * theta35 * math.Exp(l.a[1]*(1-theta))
 		width := l.a[2] * 1e-4 * (p*math.Exp(l.a[3]*lnTheta) + l.a[4]*e*math.Exp(l.a[5]*lnTheta))
 		width = 0.535*width + math.Sqrt(0.217*width*width+2.1316e-12*l.fGHz*l.fGHz/theta) // Doppler
