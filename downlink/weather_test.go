@@ -1,0 +1,94 @@
+package downlink
+
+import (
+	"math"
+	"testing"
+
+	"slantwise/downlink/propagation"
+	"slantwise/orbit/unit"
+)
+
+func kaWeather(t testing.TB, frequency unit.Frequency) (*Weather, *propagation.Path) {
+	t.Helper()
+	rate, rainHeight := 42*propagation.MillimetrePerHour, 4*unit.Kilometre
+	cloud, err := propagation.NewCurve("cloud", "kg/m2", propagation.Exceeded{P: 5 * propagation.Percent, Value: 0.5})
+	if err != nil {
+		t.Fatal(err)
+	}
+	path, err := propagation.NewPath(propagation.PathSpec{Frequency: frequency, Exceedance: 1 * propagation.Percent, Tilt: 45 * unit.Degree,
+		Aperture: &propagation.Aperture{Diameter: 3.7, Efficiency: 0.6},
+		Climate:  propagation.Climate{Latitude: 48 * unit.Degree, Rate001: &rate, RainHeight: &rainHeight, CloudWater: cloud}})
+	if err != nil {
+		t.Fatal(err)
+	}
+	return NewWeather(path), path
+}
+
+// The terms of the link add up to the path's own total, and the noise is what the
+// path says that the sky gains.
+func TestWeatherCarriesThePath(t *testing.T) {
+	var _ PathModel = (*Weather)(nil)
+	var _ NoiseModel = (*Weather)(nil)
+	w, path := kaWeather(t, 26.25*unit.Gigahertz)
+	terms := w.Terms()
+	values, kelvins := make([]float64, len(terms)), make([]float64, len(w.Parts()))
+	for _, el := range []float64{-0.3, 2, 5, 30, 90} {
+		g := Geometry{Elevation: unit.Angle(el) * unit.Degree}
+		if err := w.Losses(&g, values); err != nil {
+			t.Fatal(err)
+		}
+		sum := 0.0
+		for i, term := range terms {
+			sum -= float64(term.Sign) * values[i]
+		}
+		s, err := path.At(g.Elevation)
+		if err != nil {
+			t.Fatal(err)
+		}
+		if math.Abs(sum-float64(s.Total)) > 1e-12 {
+			t.Errorf("%g deg: the terms take %.9f dB, the path %.9f dB", el, sum, s.Total)
+		}
+		if err := w.Kelvins(&g, kelvins); err != nil {
+			t.Fatal(err)
+		}
+		sky, err := path.Sky(g.Elevation)
+		if err != nil || kelvins[0] != sky.Increase().Kelvins() || !(kelvins[0] > 0) {
+			t.Errorf("%g deg: %g K, the path's sky gains %v, %v", el, kelvins[0], sky.Increase(), err)
+		}
+	}
+	if err := w.Losses(&Geometry{Elevation: -3 * unit.Degree}, values); err == nil {
+		t.Error("under the horizon: no error")
+	}
+	if len(w.Notes()) != len(path.Notes()) {
+		t.Errorf("%d notes, the path has %d", len(w.Notes()), len(path.Notes()))
+	}
+}
+
+// At VHF the galaxy is hotter than the air: weather does not lower the noise told.
+func TestWeatherNeverTellsNoiseTooLow(t *testing.T) {
+	w, path := kaWeather(t, 137*unit.Megahertz)
+	g := Geometry{Elevation: 5 * unit.Degree}
+	sky, err := path.Sky(g.Elevation)
+	if err != nil || !(sky.Increase() <= 0) {
+		t.Fatalf("the sky gains %v, %v: not the case that is meant", sky.Increase(), err)
+	}
+	kelvins := []float64{-1}
+	if err := w.Kelvins(&g, kelvins); err != nil || kelvins[0] != 0 {
+		t.Errorf("got %g K, %v, want 0", kelvins[0], err)
+	}
+}
+
+func BenchmarkWeatherSample(b *testing.B) {
+	w, _ := kaWeather(b, 26.25*unit.Gigahertz)
+	g := Geometry{Elevation: 20 * unit.Degree}
+	values, kelvins := make([]float64, 5), make([]float64, 1)
+	b.ReportAllocs()
+	for b.Loop() {
+		if err := w.Losses(&g, values); err != nil {
+			b.Fatal(err)
+		}
+		if err := w.Kelvins(&g, kelvins); err != nil {
+			b.Fatal(err)
+		}
+	}
+}
