@@ -15,7 +15,13 @@ type gasCurve struct {
 	radiusKm   float64   // of the satellite, infinite for one far away
 	horizonDeg float64   // geometric elevation of what appears at 0°
 	root, dB   []float64 // square root of the elevation above the horizon in deg, and the attenuation
+	below      []belowNode
+	fGHz       float64 // of the rays below, 0 without gas
 }
+
+// belowNode is a ray from under the horizontal; nodes rise in elevation, the last
+// appears at 0°.
+type belowNode struct{ apparent, geometric, dB float64 }
 
 const gasNodes = 256
 
@@ -36,8 +42,19 @@ func newGasCurve(l *Layers, absorption []float64, satelliteRadiusKm float64) *ga
 	return c
 }
 
-// at interpolates at an elevation between the horizon and 90°.
+// lowestDeg returns the lowest geometric elevation of the curve.
+func (c *gasCurve) lowestDeg() float64 {
+	if len(c.below) > 0 {
+		return c.below[0].geometric
+	}
+	return c.horizonDeg
+}
+
+// at interpolates at an elevation between lowestDeg and 90°.
 func (c *gasCurve) at(elDeg float64) float64 {
+	if elDeg < c.horizonDeg && len(c.below) > 0 {
+		return c.belowAt(elDeg)
+	}
 	y := math.Sqrt(math.Max(0, elDeg-c.horizonDeg))
 	i := max(0, min(sort.SearchFloat64s(c.root, y)-3, gasNodes-5))
 	return lagrange(c.root[i:i+6], c.dB[i:i+6], y)
@@ -45,6 +62,9 @@ func (c *gasCurve) at(elDeg float64) float64 {
 
 // direct traces the ray itself.
 func (c *gasCurve) direct(elDeg float64) (float64, error) {
+	if elDeg < c.horizonDeg && len(c.below) > 0 {
+		return c.belowDirect(elDeg)
+	}
 	apparent, err := c.layers.apparentDeg(elDeg, c.radiusKm)
 	if err != nil {
 		return 0, err

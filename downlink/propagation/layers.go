@@ -119,19 +119,31 @@ func (l *Layers) chord(i int, k, outer float64) float64 {
 func halfChord(r, x float64) float64 { return math.Sqrt(math.Max(0, (r-x)*(r+x))) }
 
 // belowTo returns the attenuation from the lowest shell's bottom up to a height
-// inside, for a ray that is horizontal at the bottom.
-func (l *Layers) belowTo(absorption []float64, heightKm float64) float64 {
+// inside, for a ray that is horizontal at the bottom, and the angle at the Earth's
+// centre between them.
+func (l *Layers) belowTo(absorption []float64, heightKm float64) (attenuation, centre float64) {
 	k := l.impact(0)
 	r := earthRadiusKm + heightKm
-	var sum float64
 	for i := range l.shells {
-		if outer := l.outer(i); outer < r {
-			sum += absorption[i] * l.chord(i, k, outer)
-			continue
+		s := &l.shells[i]
+		outer := math.Min(l.outer(i), r)
+		x := k / s.n
+		chord := halfChord(outer, x) - halfChord(s.rKm, x)
+		attenuation += absorption[i] * chord
+		centre += centreAngle(chord, x, s.rKm, outer)
+		if outer == r {
+			break
 		}
-		return sum + absorption[i]*l.chord(i, k, r)
 	}
-	return sum
+	return attenuation, centre
+}
+
+// centreAngle returns the angle at the Earth's centre over a chord of impact x
+// between two radii. Its sine is chord x/(inner outer), under 0.02, where three terms of
+// the arcsine are exact to 1e-13.
+func centreAngle(chord, x, inner, outer float64) float64 {
+	z := chord * x / (inner * outer)
+	return z * (1 + z*z*(1.0/6+z*z*(3.0/40)))
 }
 
 // trace follows the ray that appears at apparentDeg: its attenuation in dB, the angle
@@ -147,10 +159,7 @@ func (l *Layers) trace(absorption []float64, apparentDeg float64) (attenuation, 
 		if absorption != nil {
 			attenuation += absorption[i] * chord
 		}
-		// The sine of the shell's angle at the centre is chord sin(beta)/outer, under
-		// 0.01, where three terms of the arcsine are exact to 1e-15.
-		z := chord * x / (s.rKm * outer)
-		centre += z * (1 + z*z*(1.0/6+z*z*(3.0/40)))
+		centre += centreAngle(chord, x, s.rKm, outer)
 	}
 	return attenuation, centre, math.Atan2(k, halfChord(l.topKm, k))
 }
@@ -166,11 +175,14 @@ func (l *Layers) geometricDeg(apparentDeg, satelliteRadiusKm float64) float64 {
 // traced: the ray's direction where it has left the air, for a satellite far away
 // (infinite radius), or the line to the point where the ray meets the radius.
 func (l *Layers) straight(apparentDeg, centre, exit, satelliteRadiusKm float64) float64 {
+	return straightLine(l.impact(apparentDeg), l.shells[0].rKm, centre, exit, satelliteRadiusKm)
+}
+
+// straightLine is straight for a ray of impact k from a station at radius r1.
+func straightLine(k, r1, centre, exit, satelliteRadiusKm float64) float64 {
 	if math.IsInf(satelliteRadiusKm, 1) {
 		return 90 - degrees(centre+exit)
 	}
-	k := l.impact(apparentDeg)
 	centre += exit - math.Atan2(k, halfChord(satelliteRadiusKm, k))
-	r1 := l.shells[0].rKm
 	return degrees(math.Atan2(satelliteRadiusKm*math.Cos(centre)-r1, satelliteRadiusKm*math.Sin(centre)))
 }

@@ -41,16 +41,29 @@ func (l *Layers) GasAttenuation(f unit.Frequency, apparent unit.Angle) (unit.DB,
 // grazing returns the attenuation of a ray that comes from below the horizontal:
 // from its lowest point up to the station and out into space.
 func (l *Layers) grazing(fGHz, apparentDeg float64) (float64, error) {
-	lowest, err := l.lowestPoint(apparentDeg)
-	if err != nil {
-		return 0, err
-	}
-	below, err := newLayers(l.atmosphere, lowest, 0.01)
+	below, err := l.belowHorizontal(apparentDeg)
 	if err != nil {
 		return 0, err
 	}
 	g := below.absorption(fGHz)
-	return below.attenuation(g, 0) + below.belowTo(g, l.baseKm), nil
+	a, _ := below.belowTo(g, l.baseKm)
+	return below.attenuation(g, 0) + a, nil
+}
+
+// belowHorizontal returns the layers above the lowest point of a ray that arrives from
+// under the horizontal.
+func (l *Layers) belowHorizontal(apparentDeg float64) (*Layers, error) {
+	lowest, err := l.lowestPoint(apparentDeg)
+	if err != nil {
+		return nil, err
+	}
+	return newLayers(l.atmosphere, lowest, 0.01)
+}
+
+// leastApparentDeg returns the apparent elevation of the sea's edge, 0 for a station
+// at or under sea level.
+func (l *Layers) leastApparentDeg() float64 {
+	return -degrees(math.Acos(math.Min(1, l.nr(math.Min(0, l.baseKm))/l.nr(l.baseKm))))
 }
 
 // lowestPoint returns the height at which a ray that arrives from under the
@@ -59,9 +72,8 @@ func (l *Layers) grazing(fGHz, apparentDeg float64) (float64, error) {
 func (l *Layers) lowestPoint(apparentDeg float64) (float64, error) {
 	k := l.nr(l.baseKm) * math.Cos(radians(apparentDeg))
 	low, high := math.Min(0, l.baseKm), l.baseKm
-	if ground := l.nr(low); ground > k || low == high {
-		least := -degrees(math.Acos(math.Min(1, ground/l.nr(l.baseKm))))
-		return 0, &BlockedRayError{"apparent", unit.Angle(apparentDeg) * unit.Degree, unit.Angle(least) * unit.Degree}
+	if l.nr(low) > k || low == high {
+		return 0, &BlockedRayError{"apparent", unit.Angle(apparentDeg) * unit.Degree, unit.Angle(l.leastApparentDeg()) * unit.Degree}
 	}
 	for range 60 {
 		mid := (low + high) / 2

@@ -47,7 +47,7 @@ func NewPath(s PathSpec) (*Path, error) {
 		p.segments = append(p.segments, newSegment(m, b[i-1], b[i]))
 	}
 	if m.horizon() < 0 {
-		m.notes.add(Assumption, "between the geometric elevation of the apparent horizon, %.2f deg, and 0 deg rain, cloud and scintillation are those of 0 deg", m.horizon())
+		m.notes.add(Assumption, "between the lowest geometric elevation of a ray, %.2f deg, and 0 deg rain, cloud and scintillation are those of 0 deg", m.horizon())
 	}
 	return p, nil
 }
@@ -67,8 +67,8 @@ func newPathOf(s PathSpec, m *pathModel) (*Path, error) {
 // range.
 func (p *Path) Notes() []Note { return append([]Note(nil), p.model.notes...) }
 
-// Lowest returns the lowest geometric elevation that the path has values for: the
-// one that appears on the horizon.
+// Lowest returns the lowest geometric elevation that the path has values for: the one
+// that appears at 0°, or at the sea's edge with BelowHorizontal.
 func (p *Path) Lowest() unit.Angle { return unit.Angle(p.model.horizon()) * unit.Degree }
 
 // At returns what the path takes at a geometric elevation from Lowest to 90°.

@@ -92,6 +92,35 @@ func TestPathTablesAgreeWithDirect(t *testing.T) {
 	}
 }
 
+// Rays from under the horizontal have layers of their own, and each direct one costs
+// milliseconds.
+func TestPathBelowTheHorizontal(t *testing.T) {
+	spec := PathSpec{Frequency: 8.2 * unit.Gigahertz, Climate: climateAt(40, 2.5), Exceedance: 1 * Percent, Aperture: dish(3)}
+	above, err := NewPath(spec)
+	if err != nil {
+		t.Fatal(err)
+	}
+	spec.BelowHorizontal = true
+	p, err := NewPath(spec)
+	if err != nil {
+		t.Fatal(err)
+	}
+	if !(p.Lowest() < above.Lowest()-1*unit.Degree) {
+		t.Errorf("lowest %.3f deg, without these rays %.3f deg", p.Lowest().Degrees(), above.Lowest().Degrees())
+	}
+	for _, el := range []unit.Angle{p.Lowest(), -2.5 * unit.Degree, -1.7 * unit.Degree, -1 * unit.Degree, above.Lowest() - 1e-6, above.Lowest(), 3 * unit.Degree} {
+		got, err := p.At(el)
+		if err != nil {
+			t.Fatal(err)
+		}
+		want, err := p.Direct(el)
+		if err != nil {
+			t.Fatal(err)
+		}
+		compareSamples(t, el, got, want)
+	}
+}
+
 func compareSamples(t *testing.T, el unit.Angle, got, want Sample) (worst float64) {
 	t.Helper()
 	for _, q := range []struct {

@@ -79,6 +79,11 @@ func (m *pathModel) breaks() []float64 {
 	if m.horizon() < 0 {
 		b = append(b, 0)
 	}
+	for _, c := range []*gasCurve{m.gas, m.clearGas} {
+		if c.horizonDeg > m.horizon() && c.horizonDeg < 0 { // rays from under the horizontal begin
+			b = append(b, c.horizonDeg)
+		}
+	}
 	if m.low != nil {
 		if el := m.low.transitionDeg(); el > 0 && el < 5 {
 			b = append(b, el)
@@ -100,7 +105,7 @@ func (m *pathModel) breaks() []float64 {
 }
 
 // horizon is the lowest geometric elevation from which every part has a value.
-func (m *pathModel) horizon() float64 { return math.Max(m.gas.horizonDeg, m.clearGas.horizonDeg) }
+func (m *pathModel) horizon() float64 { return math.Max(m.gas.lowestDeg(), m.clearGas.lowestDeg()) }
 
 // kinks returns the elevations above 0° at which step 7 of P.618-14 §2.2.1.1 changes
 // its branch.

@@ -19,6 +19,7 @@ type PathSpec struct {
 
 	WithoutGas, WithoutCloud, WithoutRain, WithoutScintillation bool
 
+	BelowHorizontal bool        // also rays from under the horizontal, down to the sea's edge, for a station on a height
 	SatelliteHeight unit.Length // above the ground for the bending of the ray; 0: far away
 }
 
@@ -122,7 +123,15 @@ func (s *PathSpec) gasOf(a Atmosphere) (*gasCurve, error) {
 	if !s.WithoutGas {
 		absorption = layers.absorption(s.Frequency.Gigahertz())
 	}
-	return newGasCurve(layers, absorption, radius), nil
+	c := newGasCurve(layers, absorption, radius)
+	if !s.BelowHorizontal {
+		return c, nil
+	}
+	f := s.Frequency.Gigahertz()
+	if s.WithoutGas {
+		f = 0
+	}
+	return c, c.addBelow(f)
 }
 
 func (m *pathModel) prepareCloud(s PathSpec, e Editions) error {
