@@ -2,6 +2,8 @@ package propagation
 
 import (
 	"fmt"
+	"slices"
+	"strings"
 
 	"slantwise/orbit/unit"
 )
@@ -26,8 +28,7 @@ var (
 		"oxygen_height_a0_km", "oxygen_height_b0_km_per_k", "oxygen_height_c0_km_per_hpa", "oxygen_height_d0_km_per_g_m3"}
 	annex2v12Columns = []string{"frequency_ghz", "elevation_deg", "station_height_km", "temperature_k", "dry_pressure_hpa",
 		"water_vapour_density_g_m3", "integrated_water_vapour_kg_m2"}
-	annex1Columns = []string{"frequency_ghz", "apparent_elevation_deg", "station_height_km", "surface_water_vapour_density_g_m3",
-		"surface_temperature_k", "surface_pressure_hpa"}
+	annex1Columns = append(slices.Clone(surfaceColumns), "surface_water_vapour_density_g_m3")
 )
 
 var gasSlantBatch = batchModel{
@@ -38,11 +39,15 @@ var gasSlantBatch = batchModel{
 			return b.need(annex2v12Columns...)
 		case b.has("oxygen_height_a0_km"):
 			return b.need(annex2Columns...)
-		case b.has("apparent_elevation_deg"):
-			return b.need(annex1Columns...)
+		case b.has("surface_temperature_k"):
+			elevation := "elevation_deg"
+			if b.has("apparent_elevation_deg") {
+				elevation = "apparent_elevation_deg"
+			}
+			return b.need(append(slices.Clone(annex1Columns), elevation)...)
 		}
-		return nil, fmt.Errorf("model \"gas-slant\" needs the columns of P.676-13 Annex 1 (%v) or of its Annex 2 (%v); for those of P.676-12 name the edition 676-12",
-			annex1Columns, annex2Columns)
+		return nil, fmt.Errorf("model \"gas-slant\" needs the columns of P.676-13 Annex 1 (apparent_elevation_deg or elevation_deg, %s) or of its Annex 2 (%s); for those of P.676-12 name the edition 676-12",
+			strings.Join(annex1Columns, ", "), strings.Join(annex2Columns, ", "))
 	},
 	results: []string{"result_gas_attenuation_db"},
 	evaluate: func(b *Batch, r *batchRow, out []float64) (err error) {
@@ -56,23 +61,30 @@ var gasSlantBatch = batchModel{
 			out[0], err = gasAnnex2(r.number("frequency_ghz"), r.number("elevation_deg"), r.number("dry_pressure_hpa"), r.number("temperature_k"),
 				r.number("water_vapour_density_g_m3"), oxygen, &r.notes)
 		default:
-			out[0], err = annex1OfSurface(r)
+			out[0], err = annex1OfSurface(b, r, "surface_water_vapour_density_g_m3", "integrated_water_vapour_kg_m2")
 		}
 		return err
 	},
 }
 
+// surfaceColumns describe the air at a station for P.676-13 Annex 1.
+var surfaceColumns = []string{"frequency_ghz", "station_height_km", "surface_temperature_k", "surface_pressure_hpa"}
+
 // annex1OfSurface traces a ray through the mean annual global reference atmosphere,
-// moved to the stated air at the surface.
-func annex1OfSurface(r *batchRow) (float64, error) {
+// moved to the air at the surface and, where a column holds the integrated vapour, to
+// that. The elevation is apparent or geometric by the column's name.
+func annex1OfSurface(b *Batch, r *batchRow, density, column string) (float64, error) {
 	base, err := MeanAnnualGlobal(7.5 * GramPerCubicMetre)
 	if err != nil {
 		return 0, err
 	}
 	t, p := unit.Temperature(r.number("surface_temperature_k")), Pressure(r.number("surface_pressure_hpa"))*Hectopascal
-	rho := VapourDensity(r.number("surface_water_vapour_density_g_m3")) * GramPerCubicMetre
+	rho := VapourDensity(r.number(density)) * GramPerCubicMetre
 	height := unit.Length(r.number("station_height_km")) * unit.Kilometre
 	a, err := base.WithSurface(height, Surface{&t, &p, &rho})
+	if err == nil && b.has(column) {
+		a, err = a.WithColumn(height, Column(r.number(column)))
+	}
 	if err != nil {
 		return 0, err
 	}
@@ -80,16 +92,31 @@ func annex1OfSurface(r *batchRow) (float64, error) {
 	if err != nil {
 		return 0, err
 	}
-	db, n, err := l.GasAttenuation(unit.Frequency(r.number("frequency_ghz"))*unit.Gigahertz, unit.Angle(r.number("apparent_elevation_deg"))*unit.Degree)
+	var apparent unit.Angle
+	if b.has("apparent_elevation_deg") {
+		apparent = unit.Angle(r.number("apparent_elevation_deg")) * unit.Degree
+	} else if apparent, err = l.Apparent(unit.Angle(r.number("elevation_deg")) * unit.Degree); err != nil {
+		return 0, err
+	}
+	db, n, err := l.GasAttenuation(unit.Frequency(r.number("frequency_ghz"))*unit.Gigahertz, apparent)
 	r.notes = append(r.notes, n...)
 	return float64(db), err
 }
 
 var wetRefractivityBatch = batchModel{
-	name:    "wet-refractivity",
-	inputs:  fixed("surface_temperature_k", "water_vapour_density_50pct_g_m3"),
+	name: "wet-refractivity",
+	inputs: func(b *Batch) ([]string, error) {
+		if b.has("relative_humidity_percent") {
+			return b.need("surface_temperature_k", "relative_humidity_percent", "surface_pressure_hpa")
+		}
+		return b.need("surface_temperature_k", "water_vapour_density_50pct_g_m3")
+	},
 	results: []string{"result_wet_refractivity_n_units"},
-	evaluate: func(_ *Batch, r *batchRow, out []float64) (err error) {
+	evaluate: func(b *Batch, r *batchRow, out []float64) (err error) {
+		if b.has("relative_humidity_percent") {
+			out[0], err = wetOfHumidity(r.number("surface_temperature_k"), r.number("relative_humidity_percent")/100, r.number("surface_pressure_hpa"))
+			return err
+		}
 		out[0], err = wetRefractivity(r.number("surface_temperature_k"), r.number("water_vapour_density_50pct_g_m3"))
 		return err
 	},

@@ -75,8 +75,7 @@ var (
 		given: []string{"gas_attenuation_%s_db", "gas_attenuation_%s_implied_db", "gas_attenuation_db"},
 		needed: func(b *Batch) []string {
 			h := held(b)
-			columns := []string{"frequency_ghz", "elevation_deg", "station_height_km", "surface_temperature_k", "surface_pressure_hpa",
-				"water_vapour_density_" + h + "_g_m3"}
+			columns := append(slices.Clone(surfaceColumns), "elevation_deg", "water_vapour_density_"+h+"_g_m3")
 			if b.editions.P676 == 12 || b.has("integrated_water_vapour_"+h+"_kg_m2") {
 				columns = append(columns, "integrated_water_vapour_"+h+"_kg_m2")
 			}

@@ -3,8 +3,6 @@ package propagation
 import (
 	"strconv"
 	"strings"
-
-	"slantwise/orbit/unit"
 )
 
 // gasOfRow returns the gas of a total: by P.676-12 Annex 2 in that edition, which the
@@ -18,31 +16,7 @@ func gasOfRow(b *Batch, r *batchRow) (float64, error) {
 		return gasAnnex2v12(r.number("frequency_ghz"), r.number("elevation_deg"), r.number("surface_pressure_hpa"), r.number("surface_temperature_k"),
 			r.number(density), r.number(column), r.number("station_height_km"), &r.notes)
 	}
-	base, err := MeanAnnualGlobal(7.5 * GramPerCubicMetre)
-	if err != nil {
-		return 0, err
-	}
-	t, p := unit.Temperature(r.number("surface_temperature_k")), Pressure(r.number("surface_pressure_hpa"))*Hectopascal
-	rho := VapourDensity(r.number(density)) * GramPerCubicMetre
-	height := unit.Length(r.number("station_height_km")) * unit.Kilometre
-	a, err := base.WithSurface(height, Surface{&t, &p, &rho})
-	if err == nil && b.has(column) {
-		a, err = a.WithColumn(height, Column(r.number(column)))
-	}
-	if err != nil {
-		return 0, err
-	}
-	l, err := NewLayers(a, height)
-	if err != nil {
-		return 0, err
-	}
-	apparent, err := l.Apparent(unit.Angle(r.number("elevation_deg")) * unit.Degree)
-	if err != nil {
-		return 0, err
-	}
-	db, n, err := l.GasAttenuation(unit.Frequency(r.number("frequency_ghz"))*unit.Gigahertz, apparent)
-	r.notes = append(r.notes, n...)
-	return float64(db), err
+	return annex1OfSurface(b, r, density, column)
 }
 
 func expand(pattern, held string) string { return strings.ReplaceAll(pattern, "%s", held) }

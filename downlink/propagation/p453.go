@@ -32,18 +32,28 @@ func refractivity(dryHPa, eHPa, tK float64) float64 { return 77.6*dryHPa/tK + we
 // equation (10).
 func vapourPressure(rhoGM3, tK float64) float64 { return rhoGM3 * tK / 216.7 }
 
-// SaturationVapourPressure returns the saturation pressure over liquid water at a
-// temperature and total pressure; -40 °C to 50 °C. Source: Rec. ITU-R P.453-14,
-// equation (9) with its coefficients for water.
-func SaturationVapourPressure(t unit.Temperature, total Pressure) (Pressure, error) {
-	c := t.Kelvins() - 273.15
-	p := total.Hectopascals()
-	err := firstError(within("temperature", t.Kelvins(), "K", 233.15, 323.15, ""), positive("pressure", p, "hPa"))
+// WetRefractivityOfHumidity returns the wet term in N-units from a temperature of
+// -40 °C to 50 °C, a relative humidity over liquid water as a fraction, and the total
+// pressure: P.618-14 §2.4.1 steps 1 and 2. Source: Rec. ITU-R P.453-14, equations (8)
+// and (9) with the coefficients for water.
+func WetRefractivityOfHumidity(t unit.Temperature, relativeHumidity float64, total Pressure) (float64, error) {
+	return wetOfHumidity(t.Kelvins(), relativeHumidity, total.Hectopascals())
+}
+
+func wetOfHumidity(tK, relativeHumidity, totalHPa float64) (float64, error) {
+	err := firstError(within("temperature", tK, "K", 233.15, 323.15, "give it in kelvin"),
+		within("relative humidity", relativeHumidity, "", 0, 1, "give a fraction"), within("pressure", totalHPa, "hPa", 1, 1200, "give it in hPa"))
 	if err != nil {
 		return 0, err
 	}
-	enhancement := 1 + 1e-4*(7.2+p*(0.0320+5.9e-6*c*c))
-	return Pressure(enhancement*6.1121*math.Exp((18.678-c/234.5)*c/(c+257.14))) * Hectopascal, nil
+	return wetTerm(relativeHumidity*saturationPressure(tK-273.15, totalHPa), tK), nil
+}
+
+// saturationPressure returns the saturation vapour pressure over liquid water in hPa
+// at a temperature in °C.
+func saturationPressure(c, totalHPa float64) float64 {
+	enhancement := 1 + 1e-4*(7.2+totalHPa*(0.0320+5.9e-6*c*c))
+	return enhancement * 6.1121 * math.Exp((18.678-c/234.5)*c/(c+257.14))
 }
 
 func checkAirTemperature(tK float64) error {

@@ -98,6 +98,28 @@ func TestP840Published(t *testing.T) {
 	w.report(t, "P.840-8")
 }
 
+// Over water at 20 °C the saturation pressure is 23.37 hPa in pure vapour (Smithsonian
+// Meteorological Tables, Goff and Gratch); air at 1013.25 hPa raises it by 0.42 %, the
+// enhancement of equation (9) worked out: 1e-4 (7.2 + 1013.25 (0.0320 + 5.9e-6 400)).
+func TestWetRefractivityOfHumidity(t *testing.T) {
+	const enhancement = 1.0042016
+	if got := saturationPressure(20, 1013.25); math.Abs(got/enhancement-23.37) > 0.023 { // equation (9) is a fit, within 0.1 % of the tables
+		t.Errorf("saturation at 20 deg C: %.4f hPa, %.4f hPa in pure vapour", got, got/enhancement)
+	}
+	half, err := WetRefractivityOfHumidity(293.15, 0.5, 1013.25*Hectopascal)
+	if err != nil {
+		t.Fatal(err)
+	}
+	e := 0.5 * saturationPressure(20, 1013.25)
+	same, err := WetRefractivity(293.15, VapourDensity(e*216.7/293.15)*GramPerCubicMetre)
+	if err != nil || math.Abs(half-same) > 1e-9 {
+		t.Errorf("half of saturation: %g N-units by humidity, %g by density, %v", half, same, err)
+	}
+	if _, err := WetRefractivityOfHumidity(293.15, 50, 1013.25*Hectopascal); err == nil {
+		t.Error("humidity in percent: no error")
+	}
+}
+
 func TestP453Published(t *testing.T) {
 	w := worst{rel: 1e-6}
 	openSheet(t, "p453_14_wet_refractivity.csv").each(func(r sheetRow) {
