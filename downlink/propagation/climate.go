@@ -53,7 +53,7 @@ func (c *Climate) profile(n *notes) (Atmosphere, error) {
 // humid returns the air with the vapour that is exceeded for p %.
 func (c *Climate) humid(clear Atmosphere, pPct float64, n *notes) (Atmosphere, error) {
 	if c.Vapour.Empty() {
-		n.add(Default, "no integrated water vapour by percentage is stated: gas is that of the atmosphere at every percentage")
+		n.add(Default, "no integrated water vapour by percentage is stated: gas is the mean one at every percentage, as P.618-14 §2.5 allows")
 		return clear, nil
 	}
 	v, err := c.Vapour.At(Exceedance(pPct) * Percent)

@@ -68,13 +68,12 @@ func newLowAngle(s scintillation, latDeg, heightKm, pPct float64, path LowPath, 
 	l.theta1 = math.Pow(10, (level-deepDB)/slope) - 1         // equation (57)
 	l.theta2 = apparentElevation(5, heightKm) * mradPerDegree // step 5
 	slope1 := -slope / (1 + l.theta1) * math.Log10E           // equation (58)
-	a2 := math.Sqrt(s.fadeSquared(5, pPct))                   // equation (59)
+	if l.theta1 >= l.theta2 {                                 // the deep part reaches over 5°: there is no transition
+		return l, nil
+	}
+	a2 := math.Sqrt(s.fadeSquared(5, pPct)) // equation (59)
 	if err := positive("scintillation fade at 5 deg elevation", a2, "dB"); err != nil {
 		return nil, fmt.Errorf("P.618-14 §2.4.3: no transition to it: %w", err)
-	}
-	if !(l.theta1 < l.theta2) {
-		return nil, fmt.Errorf("P.618-14 §2.4.3: %w", &unit.RangeError{Quantity: "apparent elevation with 25 dB of deep fading",
-			Value: l.theta1, Unit: "mrad", Allowed: "under " + withUnit(l.theta2, "mrad") + ", which is 5 deg", Next: "raise the percentage"})
 	}
 	slope2 := a2 * (s.averagingSlope() - 1.2/math.Tan(radians(5))) / 1000 // equation (60)
 	d := l.theta2 - l.theta1

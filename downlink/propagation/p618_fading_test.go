@@ -74,6 +74,16 @@ func TestAveragingSlopeIsEquation61(t *testing.T) {
 	}
 }
 
+// At rare percentages the deep part has more than 25 dB still at 5°, and stands alone:
+// by hand at latitude 45°, 40 GHz, pL = 50 %, p = 0.001 %, 5.17° apparent (90.2 mrad):
+// 101.48 + 2.03 + 14.42 - 116.60 + 30 = 31.3 dB.
+func TestDeepFadingReachesOver5Degrees(t *testing.T) {
+	got, _, err := LowAngleFade(40*unit.Gigahertz, 5*unit.Degree, 45*unit.Degree, 0, *dish(1), 60, LowPath{GradientExceeded: 50 * Percent}, 0.001*Percent)
+	if err != nil || math.Abs(float64(got)-31.3) > 0.1 {
+		t.Errorf("got %.3f dB, %v, want 31.3 dB", got, err)
+	}
+}
+
 func TestLowAngleFadeRefuses(t *testing.T) {
 	ok := LowPath{GradientExceeded: 10 * Percent}
 	for name, c := range map[string]struct {
