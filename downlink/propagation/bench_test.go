@@ -1,6 +1,7 @@
 package propagation
 
 import (
+	"math"
 	"testing"
 
 	"slantwise/orbit/unit"
@@ -8,6 +9,18 @@ import (
 
 func kaPath() PathSpec {
 	return PathSpec{Frequency: 26.25 * unit.Gigahertz, Climate: climateAt(52, 0.05), Exceedance: 1 * Percent, Tilt: 45 * unit.Degree, Aperture: dish(3.7)}
+}
+
+// BenchmarkReference is four exponentials and a logarithm, to judge the machine and its
+// load by: a sample of a path costs about as much.
+func BenchmarkReference(b *testing.B) {
+	x := 0.5
+	for b.Loop() {
+		x = math.Log(1 + math.Exp(-x) + math.Exp(-2*x) + math.Exp(-3*x) + math.Exp(-4*x))
+	}
+	if !(x > 0) {
+		b.Fatal(x)
+	}
 }
 
 // sampled runs a benchmark over elevations that sweep the sky.
