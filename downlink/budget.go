@@ -7,14 +7,15 @@ import (
 )
 
 // Budget is a link budget at one instant. A number that does not exist is NaN in
-// here (and empty or null in files): OffBoresight of a tumbling spacecraft, Eb/N0
-// without a data rate, margins without a required Eb/N0.
+// here (and empty or null in files): OffBoresight of a tumbling spacecraft, the Sun
+// without a time, Eb/N0 without a data rate, margins without a required Eb/N0.
 type Budget struct {
 	Time         time.Time // zero for a stated geometry
 	Azimuth      unit.Angle
 	Elevation    unit.Angle
 	Range        unit.Length
 	OffBoresight unit.Angle
+	Sun, Moon    unit.Angle // off the beam's axis
 
 	Terms            []Term  // adds up to ReceivedPowerDBm, bit for bit in this order
 	ReceivedPowerDBm float64 // at the input of the first amplifier; NaN where the station's gain is not known
@@ -23,6 +24,7 @@ type Budget struct {
 	NoiseParts       []NoisePart  // adds up to SystemNoise; with a measured G/T one part, the implied noise
 	GOverT           unit.DB      // dB/K, the gain after pointing, feed and extra losses left out
 	CN0              unit.DB      // dBHz
+	CI               unit.DB      // dB, carrier to an equal carrier on the other polarisation; NaN where that is not in use
 	EbN0             unit.DB      // dB
 	RequiredEbN0     unit.DB      // dB, the code's own
 	Margin           unit.DB      // EbN0 - implementation loss - RequiredEbN0

@@ -184,3 +184,4 @@ func TestMoreLossNeverRaisesTheMargin(t *testing.T) {
 		})
 	}
 }
+func levelp(dbw float64) *unit.Level { l := unit.LevelDBW(dbw); return &l }

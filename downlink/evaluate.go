@@ -48,6 +48,7 @@ func (l *Link) evaluate(s *scratch) error {
 		// The conversion keeps a fused multiply-add from changing the sum.
 		received += float64(float64(l.terms[i].Sign) * s.terms[i])
 	}
+	g.bodies = l.lookAtBodies(g)
 	r.fluxDBWM2 = radiated - 30 - sphereDB - s.rangeDB
 	if err := l.noiseAndRatio(g, s, received); err != nil {
 		return err

@@ -32,7 +32,7 @@ func (l *Link) At(g Geometry) (*Budget, error) {
 		SystemNoise: unit.Temperature(r.systemK), GOverT: unit.DB(r.gOverT), CN0: unit.DB(r.cn0),
 		EbN0: unit.DB(r.ebn0), RequiredEbN0: unit.DB(math.NaN()), Margin: unit.DB(r.margin), MarginOver: unit.DB(r.marginOver),
 		DataRate: l.dataRate(), AchievableRate: unit.BitRate(r.achievableBps), AchievableLimit: r.limit,
-		Usable: r.usable,
+		Usable: r.usable, CI: unit.DB(math.NaN()),
 	}
 	if l.mode != nil {
 		b.RequiredEbN0 = l.mode.Required
@@ -45,7 +45,17 @@ func (l *Link) At(g Geometry) (*Budget, error) {
 	for i, p := range l.noise.parts {
 		b.NoiseParts[i] = NoisePart{p.Name, unit.Temperature(s.noise[i]), p.Source}
 	}
+	b.Sun, b.Moon = s.geometry.bodies.sun, s.geometry.bodies.moon
 	b.Cautions = l.cautions(&g, r)
+	if l.spec.CrossPolar == nil {
+		return b, nil
+	}
+	ci, err := l.spec.CrossPolar(g.Elevation)
+	if err != nil {
+		b.Cautions = append(b.Cautions, "no discrimination of the other polarisation: "+err.Error())
+		return b, nil
+	}
+	b.CI = ci
 	return b, nil
 }
 
@@ -93,7 +103,10 @@ type namedTable struct {
 // tables lists what the link reads from a table over elevation.
 func (l *Link) tables() []namedTable {
 	name := [...]string{"antenna temperature", "system noise temperature", "measured G/T", "measured G/T"}[l.noise.kind]
-	out := []namedTable{{name, l.noise.first}}
+	var out []namedTable
+	if l.noise.first != nil {
+		out = append(out, namedTable{name, l.noise.first})
+	}
 	if l.gain != nil {
 		out = append(out, namedTable{"measured gain", l.gain})
 	}

@@ -5,6 +5,7 @@ import (
 	"math"
 	"time"
 
+	"slantwise/downlink/propagation"
 	"slantwise/orbit"
 	"slantwise/orbit/unit"
 )
@@ -17,6 +18,11 @@ type Geometry struct {
 	Elevation    unit.Angle // geometric
 	Range        unit.Length
 	OffBoresight unit.Angle // of the station, as the transmit antenna sees it; NaN when tumbling
+
+	// What the models of one evaluation share.
+	air    propagation.Sample
+	airOf  *propagation.Path // whose sample it is; nil: there is none
+	bodies bodyAngles
 }
 
 // MeanEarthRadius is the mean radius R1 of the WGS-84 ellipsoid, which stands for a

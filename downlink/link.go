@@ -5,6 +5,7 @@ import (
 	"fmt"
 
 	"slantwise/downlink/modem"
+	"slantwise/downlink/propagation"
 	"slantwise/orbit"
 	"slantwise/orbit/unit"
 	"slantwise/station"
@@ -19,7 +20,18 @@ type LinkSpec struct {
 	Antenna     *station.Antenna    // of the station
 	PathModels  []PathModel         // their terms follow the free-space loss and the polarisation mismatch
 	NoiseModels []NoiseModel
+
+	Bodies    *Bodies           // the Sun and the Moon; nil: their angles are not known
+	Sun, Moon *propagation.Disc // how bright they are; nil: they add no noise
+	ClearSky  bool              // they shine through the clear air of the path
+
+	CrossPolar CrossPolar // where the other polarisation is in use; nil: it is not
 }
+
+// CrossPolar tells the discrimination between the two polarisations at a geometric
+// elevation, which is the ratio of the carrier to the interference from an equal
+// carrier on the other polarisation.
+type CrossPolar func(elevation unit.Angle) (unit.DB, error)
 
 // Link is a transmitter, a mode, a site and an antenna prepared for the evaluation
 // of budgets. It is immutable and safe for use by many goroutines.
@@ -60,6 +72,9 @@ func NewLink(spec LinkSpec) (*Link, error) {
 	}
 	l.beamwidth, _ = spec.Antenna.BeamwidthAt(f)
 	l.buildTerms()
+	if err := l.addBodies(); err != nil {
+		return nil, err
+	}
 	l.buildNoise()
 	l.buildCaps()
 	l.writeNotes()
@@ -79,6 +94,9 @@ func (l *Link) check() error {
 		faults = append(faults, fmt.Errorf("antenna %q: %w", a.Name, err))
 	} else if err := checkFrequency(a, t.Frequency); err != nil {
 		faults = append(faults, err)
+	}
+	if n := a.Noise; n != nil && n.SpillOver != nil && len(l.spec.NoiseModels) == 0 {
+		faults = append(faults, fmt.Errorf("antenna %q: its temperature is to be worked out from the sky, and the link has no path to see it through; give the antenna temperature", a.Name))
 	}
 	if l.spec.Mode != nil {
 		r, err := l.spec.Mode.Resolve()
@@ -119,7 +137,7 @@ func checkFrequency(a *station.Antenna, f unit.Frequency) error {
 	}
 	tables := []*station.Tabulated{a.Gain, a.GOverT}
 	if a.Noise != nil {
-		tables = append(tables, a.Noise.AntennaTemperature, a.Noise.SystemTemperature)
+		tables = append(tables, a.Noise.SpillOver, a.Noise.AntennaTemperature, a.Noise.SystemTemperature)
 	}
 	for _, t := range tables {
 		if t != nil && !t.HoldsFrequency(f) {

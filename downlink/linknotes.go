@@ -2,6 +2,7 @@ package downlink
 
 import (
 	"fmt"
+	"strings"
 
 	"slantwise/downlink/modem"
 	"slantwise/orbit/unit"
@@ -130,15 +131,18 @@ func (l *Link) noteNoise() {
 	}
 	switch l.noise.kind {
 	case noiseCascade:
-		l.note(Assumption, "system noise: a cascade with all temperatures referred to the input of the first amplifier; the antenna temperature is that of the clear sky with spill-over")
+		l.note(Assumption, "system noise: a cascade with all temperatures referred to the input of the first amplifier")
+		if l.noise.first != nil {
+			l.note(Assumption, "the antenna temperature is that of the clear sky with spill-over, as stated")
+		}
 	case noiseSystem:
-		l.note(Assumption, "the measured system noise temperature is used as it is at the input of the first amplifier; losses of the station add nothing to it")
+		l.note(Assumption, "the measured system noise temperature is used as it is at the input of the first amplifier; losses of the station add nothing to it%s", l.addedNoise())
 	case noiseGOverT:
-		l.note(Assumption, "G/T as measured%s is used unchanged; the feed loss enters the received power alone, and the system noise shown is the one that gain and G/T imply", measuredWhen(a.Measurement))
+		l.note(Assumption, "G/T as measured%s is used unchanged%s; the feed loss enters the received power alone, and the system noise shown is the one that gain and G/T imply", measuredWhen(a.Measurement), l.addedNoise())
 	case noiseUnknown:
 		l.note(Warning, "G/T as measured%s is used unchanged at every elevation and in all weather; the antenna's gain is not known, so that received power and system noise do not exist", measuredWhen(a.Measurement))
 		if len(l.spec.NoiseModels) > 0 {
-			l.note(Warning, "noise added by the weather is left out, as a G/T without the gain cannot take it")
+			l.note(Warning, "noise of the weather, the Sun and the Moon is left out, as a G/T without the gain cannot take it")
 		}
 	}
 	for _, t := range l.tables() {
@@ -150,6 +154,21 @@ func (l *Link) noteNoise() {
 	if a.GOverTElevation != nil {
 		l.note(Assumption, "G/T was measured at %g deg elevation", asGiven(*a.GOverTElevation))
 	}
+}
+
+// addedNoise says what the noise models add to a measured figure, which holds the
+// clear sky.
+func (l *Link) addedNoise() string {
+	var names []string
+	for i := range l.noise.counts {
+		for _, p := range l.spec.NoiseModels[i].Parts() {
+			names = append(names, p.Name)
+		}
+	}
+	if len(names) == 0 {
+		return ""
+	}
+	return ", and to it is added: " + strings.Join(names, ", ")
 }
 
 func (l *Link) noteMode() {

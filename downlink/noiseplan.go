@@ -16,7 +16,7 @@ type noisePlan struct {
 	models int                // place of the models' first contribution
 	counts []int              // how many parts each model has
 	share  float64            // of what comes in at the antenna that reaches the amplifier
-	first  *station.Tabulated // the first part's own quantity, see kind
+	first  *station.Tabulated // the first part's own quantity, see kind; nil: the models bring it
 	kind   noiseKind
 }
 
@@ -52,12 +52,17 @@ func (l *Link) buildNoise() {
 	case n.SystemTemperature != nil:
 		p.kind, p.first = noiseSystem, n.SystemTemperature.AtFrequency(f)
 		first = NoisePart{Name: "system, as measured", Source: "scenario" + measuredWhen(a.Measurement)}
+	case n.AntennaTemperature == nil: // the noise models bring all that the antenna takes in
+		p.kind = noiseCascade
+		rest = n.Cascade(a.FeedLoss, a.ExtraLosses).Parts
 	default:
 		p.kind, p.first = noiseCascade, n.AntennaTemperature.AtFrequency(f)
 		first = NoisePart{Name: "antenna", Source: fmt.Sprintf("antenna temperature, clear sky and spill-over in it, times %.4f for the losses in front of the amplifier", p.share)}
 		rest = n.Cascade(a.FeedLoss, a.ExtraLosses).Parts
 	}
-	p.add(first)
+	if p.first != nil {
+		p.add(first)
+	}
 	p.models = len(p.parts)
 	for _, m := range l.spec.NoiseModels {
 		parts := m.Parts()
@@ -77,6 +82,19 @@ func (p *noisePlan) add(part NoisePart) {
 	p.base = append(p.base, part.Temperature.Kelvins())
 }
 
+// firstNoise is the part that stands in a table, in K.
+func (l *Link) firstNoise(g *Geometry, gainDBi float64) float64 {
+	p := &l.noise
+	v := p.first.Value(g.Elevation)
+	switch p.kind {
+	case noiseCascade:
+		return v * p.share
+	case noiseGOverT:
+		return math.Pow(10, (gainDBi-float64(l.spec.Antenna.FeedLoss)-v)/10)
+	}
+	return v
+}
+
 // evaluateNoise fills into with the parts at a geometry; gainDBi is the antenna's
 // gain after surface and blockage. It returns their sum in K, NaN where the noise is
 // not known.
@@ -86,14 +104,9 @@ func (l *Link) evaluateNoise(g *Geometry, gainDBi float64, into []float64) (floa
 		return math.NaN(), nil
 	}
 	copy(into, p.base)
-	v := p.first.Value(g.Elevation)
-	switch p.kind {
-	case noiseCascade:
-		v *= p.share
-	case noiseGOverT:
-		v = math.Pow(10, (gainDBi-float64(l.spec.Antenna.FeedLoss)-v)/10)
+	if p.first != nil {
+		into[0] = l.firstNoise(g, gainDBi)
 	}
-	into[0] = v
 	at := p.models
 	for i, m := range l.spec.NoiseModels {
 		n := p.counts[i]

@@ -17,8 +17,13 @@ type Profile struct {
 	OffBoresightDeg                                []float64
 	DopplerHz                                      []float64
 
+	SunDeg, MoonDeg []float64 // off the beam's axis; NaN where they are not known
+
 	Terms      []TermInfo
 	TermValues [][]float64 // by term, then by sample
+
+	NoiseParts []NoisePart // their temperatures are not used
+	NoiseK     [][]float64 // by part, then by sample; adds up to SystemNoiseK
 
 	ReceivedPowerDBm, FluxDensityDBWM2 []float64
 	SystemNoiseK, GOverTDBK            []float64
@@ -30,7 +35,8 @@ type Profile struct {
 	DataRate                           unit.BitRate // of the chosen mode
 	RequiredMarginDB                   float64
 
-	Volume Volume
+	Volume    Volume
+	SunInBeam []Interval // while the Sun's disc touches the half-power beam
 }
 
 // Volume is what a pass brings down, in bytes, and while what.

@@ -6,6 +6,7 @@ import (
 	"math"
 	"time"
 
+	"slantwise/downlink/propagation"
 	"slantwise/orbit"
 	"slantwise/orbit/unit"
 )
@@ -38,6 +39,9 @@ func (l *Link) Profile(track Track, aos, los time.Time, step time.Duration) (*Pr
 		}
 	}
 	p.Volume = p.volume()
+	if l.spec.Bodies != nil && l.beamwidth > 0 {
+		p.SunInBeam = p.within(p.SunDeg, (l.beamwidth/2 + propagation.SunDiameter/2).Degrees())
+	}
 	return p, nil
 }
 
@@ -72,13 +76,17 @@ func (l *Link) prepareProfile(track Track, aos, los time.Time, step time.Duratio
 // newProfile lays out the columns in one piece of memory.
 func newProfile(l *Link, n int) *Profile {
 	p := &Profile{Terms: l.terms, TermValues: make([][]float64, len(l.terms)),
+		NoiseParts: l.noise.parts, NoiseK: make([][]float64, len(l.noise.parts)),
 		AchievableLimit: make([]RateLimit, n), Usable: make([]bool, n),
 		DataRate: l.dataRate(), RequiredMarginDB: float64(l.spec.Transmitter.RequiredMargin)}
 	columns := []*[]float64{&p.Seconds, &p.AzimuthDeg, &p.ElevationDeg, &p.ApparentElevationDeg, &p.RangeKm, &p.RangeRateKmS,
-		&p.OffBoresightDeg, &p.DopplerHz, &p.ReceivedPowerDBm, &p.FluxDensityDBWM2, &p.SystemNoiseK, &p.GOverTDBK,
+		&p.OffBoresightDeg, &p.SunDeg, &p.MoonDeg, &p.DopplerHz, &p.ReceivedPowerDBm, &p.FluxDensityDBWM2, &p.SystemNoiseK, &p.GOverTDBK,
 		&p.CN0DBHz, &p.EbN0DB, &p.MarginDB, &p.MarginOverDB, &p.AchievableRateBps}
 	for i := range p.TermValues {
 		columns = append(columns, &p.TermValues[i])
+	}
+	for i := range p.NoiseK {
+		columns = append(columns, &p.NoiseK[i])
 	}
 	all := make([]float64, n*len(columns))
 	for i, c := range columns {
@@ -92,16 +100,24 @@ func (l *Link) sample(p *Profile, i int, state orbit.State, s *scratch) error {
 	g := &s.geometry
 	var rate unit.Speed
 	*g, rate = l.GeometryOf(state)
+	g.Time = p.at(p.Seconds[i])
 	if err := l.evaluate(s); err != nil {
-		return err
+		if !isBlocked(err) {
+			return err
+		}
+		s.noValue()
 	}
 	p.AzimuthDeg[i], p.ElevationDeg[i] = g.Azimuth.Degrees(), g.Elevation.Degrees()
 	p.ApparentElevationDeg[i] = l.apparentDeg(g.Elevation)
 	p.RangeKm[i], p.RangeRateKmS[i] = g.Range.Kilometres(), rate.KilometresPerSecond()
 	p.OffBoresightDeg[i] = g.OffBoresight.Degrees()
 	p.DopplerHz[i] = l.Doppler(rate).Hertz()
+	p.SunDeg[i], p.MoonDeg[i] = g.bodies.sun.Degrees(), g.bodies.moon.Degrees()
 	for t, v := range s.terms {
 		p.TermValues[t][i] = v
+	}
+	for t, v := range s.noise {
+		p.NoiseK[t][i] = v
 	}
 	r := &s.result
 	p.ReceivedPowerDBm[i], p.FluxDensityDBWM2[i] = r.receivedDBm, r.fluxDBWM2
@@ -110,6 +126,54 @@ func (l *Link) sample(p *Profile, i int, state orbit.State, s *scratch) error {
 	p.MarginDB[i], p.MarginOverDB[i] = r.margin, r.marginOver
 	p.AchievableRateBps[i], p.AchievableLimit[i], p.Usable[i] = r.achievableBps, r.limit, r.usable
 	return nil
+}
+
+// isBlocked tells whether the ground is in the ray's way.
+func isBlocked(err error) bool {
+	var blocked *propagation.BlockedRayError
+	return errors.As(err, &blocked)
+}
+
+// noValue marks a sample whose ray the ground blocks: nothing gets through, and no
+// number of the link exists.
+func (s *scratch) noValue() {
+	nan := math.NaN()
+	for i := range s.terms {
+		s.terms[i] = nan
+	}
+	for i := range s.noise {
+		s.noise[i] = nan
+	}
+	s.geometry.bodies = noAngles
+	s.result = result{receivedDBm: nan, fluxDBWM2: nan, systemK: nan, gOverT: nan, cn0: nan, ebn0: nan, margin: nan, marginOver: nan,
+		limit: LimitUnusable}
+}
+
+// within returns the intervals in which a column is at most a bound, from crossing to
+// crossing, linear between samples.
+func (p *Profile) within(column []float64, most float64) []Interval {
+	var out []Interval
+	begun := math.NaN()
+	for i, v := range column {
+		at := p.Seconds[i]
+		crossing := at
+		if i > 0 {
+			if before := column[i-1]; (before <= most) != (v <= most) && !math.IsNaN(before+v) {
+				crossing = p.Seconds[i-1] + (at-p.Seconds[i-1])*(most-before)/(v-before)
+			}
+		}
+		switch in := v <= most; {
+		case in && math.IsNaN(begun):
+			begun = crossing
+		case !in && begun <= crossing:
+			out = append(out, Interval{p.at(begun), p.at(crossing)})
+			begun = math.NaN()
+		}
+	}
+	if last := p.Seconds[len(p.Seconds)-1]; begun < last {
+		out = append(out, Interval{p.at(begun), p.at(last)})
+	}
+	return out
 }
 
 func (l *Link) apparentDeg(geometric unit.Angle) float64 {

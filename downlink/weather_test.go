@@ -2,6 +2,7 @@ package downlink
 
 import (
 	"math"
+	"slices"
 	"testing"
 
 	"slantwise/downlink/propagation"
@@ -24,14 +25,15 @@ func kaWeather(t testing.TB, frequency unit.Frequency) (*Weather, *propagation.P
 	return NewWeather(path), path
 }
 
-// The terms of the link add up to the path's own total, and the noise is what the
-// path says that the sky gains.
+// The terms add up to the path's own total, and the noise is what the path says that
+// the sky gains.
 func TestWeatherCarriesThePath(t *testing.T) {
 	var _ PathModel = (*Weather)(nil)
-	var _ NoiseModel = (*Weather)(nil)
+	var _ NoiseModel = (*WeatherNoise)(nil)
 	w, path := kaWeather(t, 26.25*unit.Gigahertz)
+	noise := NewWeatherNoise(path)
 	terms := w.Terms()
-	values, kelvins := make([]float64, len(terms)), make([]float64, len(w.Parts()))
+	values, kelvins := make([]float64, len(terms)), make([]float64, len(noise.Parts()))
 	for _, el := range []float64{-0.3, 2, 5, 30, 90} {
 		g := Geometry{Elevation: unit.Angle(el) * unit.Degree}
 		if err := w.Losses(&g, values); err != nil {
@@ -48,11 +50,11 @@ func TestWeatherCarriesThePath(t *testing.T) {
 		if math.Abs(sum-float64(s.Total)) > 1e-12 {
 			t.Errorf("%g deg: the terms take %.9f dB, the path %.9f dB", el, sum, s.Total)
 		}
-		if err := w.Kelvins(&g, kelvins); err != nil {
+		if err := noise.Kelvins(&g, kelvins); err != nil {
 			t.Fatal(err)
 		}
 		sky, err := path.Sky(g.Elevation)
-		if err != nil || kelvins[0] != sky.Increase().Kelvins() || !(kelvins[0] > 0) {
+		if err != nil || math.Abs(kelvins[0]-sky.Increase().Kelvins()) > 1e-9 || !(kelvins[0] > 0) {
 			t.Errorf("%g deg: %g K, the path's sky gains %v, %v", el, kelvins[0], sky.Increase(), err)
 		}
 	}
@@ -64,30 +66,73 @@ func TestWeatherCarriesThePath(t *testing.T) {
 	}
 }
 
-// At VHF the galaxy is hotter than the air: weather does not lower the noise told.
+// A clear sky has the gas of the ordinary air and nothing else; what is not known has
+// no term.
+func TestWeatherHasTheTermsThatAreKnown(t *testing.T) {
+	_, path := kaWeather(t, 26.25*unit.Gigahertz)
+	dry, err := propagation.NewPath(propagation.PathSpec{Frequency: 8 * unit.Gigahertz, Exceedance: propagation.Percent, Climate: propagation.Climate{Latitude: 0.8}})
+	if err != nil {
+		t.Fatal(err)
+	}
+	for _, c := range []struct {
+		what string
+		w    *Weather
+		want []string
+	}{
+		{"all", NewWeather(path), []string{"gas attenuation", "cloud attenuation", "rain attenuation", "scintillation", "atmospheric combination"}},
+		{"clear sky", NewClearSky(path), []string{"gas attenuation"}},
+		{"nothing stated", NewWeather(dry), []string{"gas attenuation"}},
+	} {
+		var got []string
+		for _, term := range c.w.Terms() {
+			got = append(got, term.Name)
+		}
+		if !slices.Equal(got, c.want) {
+			t.Errorf("%s: terms %q, want %q", c.what, got, c.want)
+		}
+	}
+	g := Geometry{Elevation: 10 * unit.Degree}
+	gas := []float64{0}
+	s, err := path.Direct(g.Elevation)
+	if err != nil {
+		t.Fatal(err)
+	}
+	if err := NewClearSky(path).Losses(&g, gas); err != nil || math.Abs(gas[0]-float64(s.ClearGas)) > 1e-4 {
+		t.Errorf("clear sky: %g dB, %v, want %g", gas[0], err, s.ClearGas)
+	}
+}
+
+// At VHF the galaxy is hotter than the air: weather does not lower the noise told, and
+// a note says so.
 func TestWeatherNeverTellsNoiseTooLow(t *testing.T) {
-	w, path := kaWeather(t, 137*unit.Megahertz)
+	_, path := kaWeather(t, 137*unit.Megahertz)
+	noise := NewWeatherNoise(path)
 	g := Geometry{Elevation: 5 * unit.Degree}
 	sky, err := path.Sky(g.Elevation)
 	if err != nil || !(sky.Increase() <= 0) {
 		t.Fatalf("the sky gains %v, %v: not the case that is meant", sky.Increase(), err)
 	}
 	kelvins := []float64{-1}
-	if err := w.Kelvins(&g, kelvins); err != nil || kelvins[0] != 0 {
+	if err := noise.Kelvins(&g, kelvins); err != nil || kelvins[0] != 0 {
 		t.Errorf("got %g K, %v, want 0", kelvins[0], err)
+	}
+	if len(noise.Notes()) != 2 {
+		t.Errorf("notes %q, want one on the hot sky", noise.Notes())
 	}
 }
 
 func BenchmarkWeatherSample(b *testing.B) {
-	w, _ := kaWeather(b, 26.25*unit.Gigahertz)
-	g := Geometry{Elevation: 20 * unit.Degree}
+	w, path := kaWeather(b, 26.25*unit.Gigahertz)
+	noise := NewWeatherNoise(path)
 	values, kelvins := make([]float64, 5), make([]float64, 1)
+	var g Geometry
 	b.ReportAllocs()
 	for b.Loop() {
+		g = Geometry{Elevation: 20 * unit.Degree}
 		if err := w.Losses(&g, values); err != nil {
 			b.Fatal(err)
 		}
-		if err := w.Kelvins(&g, kelvins); err != nil {
+		if err := noise.Kelvins(&g, kelvins); err != nil {
 			b.Fatal(err)
 		}
 	}

@@ -155,3 +155,16 @@ func TestSunTrack(t *testing.T) {
 		}
 	}
 }
+
+func TestMoonTrack(t *testing.T) {
+	from := time.Date(2026, 3, 10, 7, 0, 0, 0, time.UTC)
+	earth := EarthOrientation{UT1MinusUTC: 300 * time.Millisecond}
+	track := NewMoonTrack(from, from.Add(30*24*time.Hour), earth)
+	for s := 0.0; s <= 30*86400; s += 4571 {
+		want := MoonPosition(from.Add(time.Duration(s*1e9)), earth)
+		// Tolerance: what the comment of MoonTrack promises.
+		if d := track.PositionAt(s).Sub(want).Norm() / want.Norm(); d > 1e-7 {
+			t.Errorf("after %g s the track is %.2g of the distance from the Moon, over 1e-7", s, d)
+		}
+	}
+}

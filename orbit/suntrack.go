@@ -40,14 +40,5 @@ func (t *SunTrack) PositionAt(s float64) Vec3 {
 	if !(s >= 0 && s <= t.span) {
 		panic(fmt.Sprintf("orbit: %g s is outside the Sun's span of 0 to %g s", s, t.span))
 	}
-	x := s / sunStep
-	i := int(x)
-	u := x - float64(i)
-	k := t.knots[i : i+4]
-	// Lagrange through knots at -1, 0, 1, 2.
-	v := k[0].Scale(-u * (u - 1) * (u - 2) / 6)
-	v = v.Add(k[1].Scale((u + 1) * (u - 1) * (u - 2) / 2))
-	v = v.Add(k[2].Scale(-(u + 1) * u * (u - 2) / 2))
-	v = v.Add(k[3].Scale((u + 1) * u * (u - 1) / 6))
-	return t.rot.fixed(s, v)
+	return t.rot.fixed(s, throughFour(t.knots, s/sunStep))
 }

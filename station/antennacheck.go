@@ -73,10 +73,17 @@ func (a *Antenna) checkNoise(c *checker) {
 		if least, _ := n.SystemTemperature.bounds(); !(least > 0) {
 			c.above("system noise temperature", least, 0, 1e6, "K")
 		}
-	case n.AntennaTemperature == nil:
+	case n.AntennaTemperature == nil && n.SpillOver == nil:
 		c.say("the noise lacks the antenna temperature")
+	case n.AntennaTemperature != nil && n.SpillOver != nil:
+		c.say("an antenna temperature stands beside a spill-over; give one of the two")
 	case len(n.Chain) == 0:
 		c.say("the noise lacks the receiver chain; give at least the first amplifier")
+	case n.SpillOver != nil:
+		least, greatest := n.SpillOver.bounds()
+		c.within("spill-over", least, 0, 1, "")
+		c.within("spill-over", greatest, 0, 1, "")
+		c.within("ground temperature", n.GroundTemperature.Kelvins(), 0, 1000, "K")
 	default:
 		least, greatest := n.AntennaTemperature.bounds()
 		c.within("antenna temperature", least, 0, 1e6, "K")
