@@ -96,7 +96,7 @@ func TestBodiesOutsideTheSpan(t *testing.T) {
 	l, frame := sunLink(t, inside, station.Fixed)
 	g := Geometry{Time: at, Azimuth: 1, Elevation: 0.3, Range: 1000 * unit.Kilometre}
 	_, el, _ := frame.Direction(s2)
-	if got := l.lookAtBodies(&g).sun; math.Abs((got+el-90*unit.Degree).Degrees()) > 1e-4 {
+	if got := l.lookAtBodies(&g).sun; math.Abs((got + el - 90*unit.Degree).Degrees()) > 1e-4 {
 		t.Errorf("the Sun at %g deg stands %g deg from the zenith", el.Degrees(), got.Degrees())
 	}
 }

@@ -21,7 +21,9 @@ type Transmitter struct {
 	AttitudeProbability float64 // of a tumbling spacecraft, in (0, 1): the gain exceeded with it counts; 0: DefaultAttitudeProbability
 
 	Polarization *station.Polarization // nil: left out
-	Modes        []modem.Mode          // may be empty: then there is a carrier and no data
+
+	OtherPolarization bool         // the orthogonal polarisation carries an equal signal, too
+	Modes             []modem.Mode // may be empty: then there is a carrier and no data
 
 	ImplementationLoss unit.DB // of modulator and demodulator together, 0 or greater
 	RequiredMargin     unit.DB

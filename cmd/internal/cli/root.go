@@ -68,10 +68,13 @@ func addScenarioFlags(root *cobra.Command, env *Env) {
 		{"window-length-h", "window.length_h", "length of the window in `HOURS`, in place of the scenario's"},
 		{"element-choice", "element_choice", "`newest` or nearest, in place of the scenario's"},
 		{"horizon", "horizon", "`geometric` or apparent elevation decides AOS and LOS, in place of the scenario's"},
+		{"exceeded-percent", "path.exceeded_percent", "attenuation and noise exceeded for so many `PERCENT` of an average year, in place of the scenario's"},
 	} {
 		fs.String(o.flag, "", o.usage)
 		env.overrides[o.key] = fs.Lookup(o.flag)
 	}
+	fs.Bool("clear-sky", false, "gas of the ordinary air alone: no cloud, rain or scintillation")
+	env.overrides["path.clear_sky"] = fs.Lookup("clear-sky")
 }
 
 // refuseUnknownTopics makes the library's own commands refuse words that they do not

@@ -57,6 +57,7 @@ func holds(t *testing.T, s *Scenario, n Need) {
 	if n == NeedOrbits && !s.Window.End.After(s.Window.Start) {
 		t.Fatalf("window %v", s.Window)
 	}
+	finite(t, "exceedance", float64(s.Path.Exceedance), 1e-5, 0.5)
 	seen := map[string]bool{}
 	for _, c := range s.Spacecraft {
 		if c.Name == "" || seen[c.Name] {
@@ -90,6 +91,10 @@ func holds(t *testing.T, s *Scenario, n Need) {
 			for _, b := range a.Bands {
 				finite(t, "band", float64(b.High-b.Low), 0, 1e12)
 			}
+		}
+		finite(t, "height above the sea", st.Climate.Height.Metres(), -1000, 10_000)
+		if r := st.Climate.Rate001; r != nil {
+			finite(t, "rain rate", float64(*r), 0, 300)
 		}
 		if m := st.Site.Mask; m != nil {
 			finite(t, "mask", m.At(123*unit.Degree).Degrees(), -10.001, 90)

@@ -1,6 +1,7 @@
 package scenario_test
 
 import (
+	"math"
 	"reflect"
 	"strings"
 	"testing"
@@ -8,6 +9,7 @@ import (
 
 	"slantwise/cmd/internal/scenario"
 	"slantwise/downlink"
+	"slantwise/downlink/propagation"
 	"slantwise/orbit/elements"
 	"slantwise/orbit/unit"
 	"slantwise/station"
@@ -66,6 +68,32 @@ func TestEverything(t *testing.T) {
 		{"mask", site.Mask.Points()[1], station.MaskPoint{Azimuth: 90 * unit.Degree, Elevation: 6.5 * unit.Degree}},
 		{"mask file", len(s.Stations[1].Site.Mask.Points()), 2},
 		{"no antennas", len(s.Stations[1].Antennas), 0},
+		{"exceeded", s.Path.Exceedance, 0.5 * propagation.Percent},
+		{"models", [...]bool{s.Path.Gas, s.Path.Cloud, s.Path.Rain, s.Path.Scintillation, s.Path.Ionosphere, s.Path.Sun, s.Path.Moon}, [...]bool{true, true, true, true, true, true, false}},
+		{"stated ionosphere", *s.Path.IonosphericScintillation + *s.Path.IonosphericRotation, unit.DB(2)},
+		{"content and field", [...]float64{float64(s.Path.ElectronContent), s.Path.MagneticField}, [...]float64{1e17, 45e-6}},
+		{"Sun's flux", [...]float64{s.Path.SunFlux[1].Frequency.Gigahertz(), math.Round(s.Path.SunFlux[1].Flux / 1e-22)}, [...]float64{8, 320}},
+		{"other polarisation", x.OtherPolarization, true},
+		{"latitude of the climate", s.Stations[0].Climate.Latitude, 58.4 * unit.Degree},
+		{"height above the sea", s.Stations[0].Climate.Height, (42 - 55.5) * unit.Metre},
+		{"surface temperature", *s.Stations[0].Climate.Surface.Temperature, unit.Temperature(281.5)},
+		{"surface pressure", *s.Stations[0].Climate.Surface.Pressure, 1008 * propagation.Hectopascal},
+		{"surface vapour", *s.Stations[0].Climate.Surface.Vapour, 8.5 * propagation.GramPerCubicMetre},
+		{"season", s.Stations[0].Climate.Season, propagation.Winter},
+		{"rain rate", *s.Stations[0].Climate.Rate001, 28 * propagation.MillimetrePerHour},
+		{"rain height", *s.Stations[0].Climate.RainHeight, 2.1 * unit.Kilometre},
+		{"cloud", at(t, s.Stations[0].Climate.CloudWater), 0.45},
+		{"vapour", at(t, s.Stations[0].Climate.Vapour), 27.0},
+		{"refractivity", *s.Stations[0].Climate.WetRefractivity, 45.0},
+		{"low path", *s.Stations[0].Climate.LowPath, propagation.LowPath{GradientExceeded: 8 * propagation.Percent, WaterFraction: 0.5, WorstMonth: true}},
+		{"environment", *s.Stations[0].Environment, propagation.QuietRural},
+		{"environment of the path", *s.Stations[1].Environment, propagation.Rural},
+		{"months", s.Stations[1].Climate.Months[11], propagation.Month{Temperature: 274.15, Rainfall: 75}},
+		{"0 deg C isotherm", s.Stations[1].Climate.RainHeight.Kilometres(), 2.6 + 0.36}, // P.839-4
+		{"log-normal cloud", *s.Stations[1].Climate.CloudLogNormal, propagation.CloudLogNormal{Mean: -1.6, Sigma: 1.1, Probability: 60 * propagation.Percent}},
+		{"profile", s.Stations[1].Climate.Atmosphere.Name(), "measured profile of 2 levels, 0 km to 3 km"},
+		{"spill-over", s.Stations[0].Antennas[4].Noise.SpillOver.Value(5 * unit.Degree), 0.12},
+		{"ground", s.Stations[0].Antennas[4].Noise.Ground(), unit.Temperature(280)},
 		{"surface", dish.SurfaceRMS, 0.5 * unit.Millimetre},
 		{"beamwidth factor", dish.BeamwidthFactor, 65 * unit.Degree},
 		{"band", dish.Bands[1], station.Band{Low: 8025 * unit.Megahertz, High: 8400 * unit.Megahertz}},
@@ -81,12 +109,27 @@ func TestEverything(t *testing.T) {
 	}
 }
 
+// at returns the value of a curve at 5 %.
+func at(t *testing.T, c propagation.Curve) float64 {
+	t.Helper()
+	v, err := c.At(5 * propagation.Percent)
+	if err != nil {
+		t.Fatal(err)
+	}
+	return v
+}
+
 // TestNotationsAgree reads the same scenario as YAML, TOML and JSON.
 func TestNotationsAgree(t *testing.T) {
 	want := loadGood(t, "testdata/good/everything.yaml")
 	for _, file := range []string{"testdata/good/everything.toml", "testdata/good/everything.json"} {
 		got := loadGood(t, file)
 		got.Label = want.Label
+		// Functions cannot be compared.
+		if a, b := got.Stations[1].Climate.Atmosphere, want.Stations[1].Climate.Atmosphere; a.Name() != b.Name() {
+			t.Errorf("%s: atmosphere %q, want %q", file, a.Name(), b.Name())
+		}
+		got.Stations[1].Climate.Atmosphere = want.Stations[1].Climate.Atmosphere
 		if !reflect.DeepEqual(got, want) {
 			t.Errorf("%s differs from everything.yaml:\n got %+v\nwant %+v", file, got, want)
 		}

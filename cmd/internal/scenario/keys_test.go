@@ -38,6 +38,7 @@ func TestEveryKeyIsRead(t *testing.T) {
 	for _, keys := range [][]string{
 		topKeys, windowKeys, earthKeys, spacecraftKeys, transmitterKeys, patternKeys, modeKeys, lossDissipativeKeys,
 		stationKeys, antennaKeys, noiseKeys, stageKeys, sizingKeys, requirementKeys, marginAtKeys,
+		pathKeys, climateKeys, levelKeys, lognormalKeys, lowPathKeys,
 	} {
 		for _, k := range keys {
 			if !found[k] && k != "end_utc" { // which stands in place of length_h

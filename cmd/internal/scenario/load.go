@@ -44,7 +44,7 @@ func build(root *tree.Node, src *source, req Request) (*Scenario, error) {
 	return s, nil
 }
 
-var topKeys = []string{"window", "earth", "element_files", "element_choice", "horizon", "spacecraft", "stations", "sizing"}
+var topKeys = []string{"window", "earth", "element_files", "element_choice", "horizon", "path", "spacecraft", "stations", "sizing"}
 
 // scenario reads everything; the value is of use only where no fault was noted.
 func (r *reader) scenario(root *tree.Node) *Scenario {
@@ -54,8 +54,9 @@ func (r *reader) scenario(root *tree.Node) *Scenario {
 	s.Choice = r.choice(o)
 	s.Horizon = elevationKind(o, "horizon", "AOS and LOS are decided by")
 	s.Sets = r.elementFiles(o)
+	s.Path = r.path(o)
 	s.Spacecraft = r.spacecraft(o, s)
-	s.Stations = r.stations(o)
+	s.Stations = r.stations(o, s.Path.Environment)
 	r.sizing(o, s)
 	return s
 }

@@ -6,7 +6,7 @@ import (
 )
 
 var (
-	noiseKeys = []string{"physical_temperature_k", "antenna_temperature_k", "system_temperature_k", "receiver_chain"}
+	noiseKeys = []string{"physical_temperature_k", "antenna_temperature_k", "spill_over_fraction", "ground_temperature_k", "system_temperature_k", "receiver_chain"}
 	stageKeys = []string{"name", "gain_db", "noise_temperature_k", "noise_figure_db"}
 )
 
@@ -29,18 +29,27 @@ func (o object) noise(measuredGOverT bool) *station.Noise {
 		c.assume("physical_temperature_k left out: %g K", float64(defaultPhysicalTemperature))
 	}
 	if measuredGOverT {
-		c.useless("beside g_over_t_db_k, which holds all noise", "antenna_temperature_k", "system_temperature_k", "receiver_chain")
+		c.useless("beside g_over_t_db_k, which holds all noise", "antenna_temperature_k", "spill_over_fraction", "ground_temperature_k", "system_temperature_k", "receiver_chain")
 		return n
 	}
 	if c.has("system_temperature_k") {
-		c.useless("beside system_temperature_k, which holds it", "antenna_temperature_k", "receiver_chain")
+		c.useless("beside system_temperature_k, which holds it", "antenna_temperature_k", "spill_over_fraction", "ground_temperature_k", "receiver_chain")
 		n.SystemTemperature = c.tabulated("system_temperature_k", above(0, 1e6, "K"))
 		return n
 	}
-	if !c.has("antenna_temperature_k") {
-		c.missing("antenna_temperature_k", "one figure, or rows of [elevation in deg, K]")
+	switch which, _ := c.exclusive("antenna_temperature_k", "spill_over_fraction"); which {
+	case "antenna_temperature_k":
+		n.AntennaTemperature = c.tabulated(which, atLeast(0, 1e6, "K"))
+		c.useless("beside antenna_temperature_k, which holds the ground", "ground_temperature_k")
+	case "spill_over_fraction":
+		n.SpillOver = c.tabulated(which, atLeast(0, 1, ""))
+		n.GroundTemperature = unit.Temperature(c.numberOr("ground_temperature_k", above(0, 400, "K"), 0))
+		if !c.has("ground_temperature_k") {
+			c.assume("ground_temperature_k left out: as bright as the physical temperature")
+		}
+	default:
+		c.missing("antenna_temperature_k", "one figure, or rows of [elevation in deg, K]; or spill_over_fraction, for an antenna temperature that is worked out from the sky")
 	}
-	n.AntennaTemperature = c.tabulated("antenna_temperature_k", atLeast(0, 1e6, "K"))
 	n.Chain = c.chain()
 	return n
 }

@@ -8,6 +8,7 @@ import (
 
 	"slantwise/cmd/internal/nearest"
 	"slantwise/cmd/internal/scenario/tree"
+	"slantwise/downlink/propagation"
 )
 
 // reader turns the tree of a scenario into domain values and collects what is wrong
@@ -16,6 +17,7 @@ type reader struct {
 	place       string // the file as it was named
 	src         *source
 	need        Need
+	asked       propagation.Exceedance // the percentage at which curves of the climate will be read; 0: at none
 	faults      faults
 	assumptions []Note
 	warnings    []Note

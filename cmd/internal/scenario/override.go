@@ -16,6 +16,8 @@ import (
 var scalarKeys = []string{
 	"window.start_utc", "window.length_h", "window.end_utc",
 	"earth.ut1_minus_utc_s", "element_choice", "horizon",
+	"path.exceeded_percent", "path.clear_sky", "path.noise_environment", "path.ionospheric_scintillation_loss_db",
+	"path.ionospheric_rotation_loss_db", "path.electron_content_1_m2", "path.magnetic_field_ut",
 	"sizing.spacecraft", "sizing.transmitter", "sizing.antenna", "sizing.days",
 	"sizing.requirements.bytes_per_day", "sizing.requirements.availability_percent",
 	"sizing.requirements.longest_gap_h", "sizing.requirements.latency_p95_h",

@@ -4,6 +4,7 @@ import (
 	"time"
 
 	"slantwise/downlink"
+	"slantwise/downlink/propagation"
 	"slantwise/orbit"
 	"slantwise/orbit/elements"
 	"slantwise/station"
@@ -20,6 +21,8 @@ type Scenario struct {
 	Window  Window
 	Earth   orbit.EarthOrientation
 	Horizon station.ElevationKind // which elevation decides AOS and LOS
+
+	Path PathChoice // which models of the path apply, and for what share of the year
 
 	Choice     elements.Choice
 	Sets       []orbit.Elements // every element set of the element files, in their order
@@ -56,8 +59,12 @@ func (s *Spacecraft) ElementsAt(t time.Time) elements.Chosen {
 
 // Station is a site with its antennas.
 type Station struct {
-	Site     station.Site
-	Antennas []station.Antenna // may be empty: passes and pointing only
+	Site    station.Site
+	Climate propagation.Climate
+	// Environment is the class of man-made noise around the station, by its climate or
+	// the scenario's path; nil: none is counted.
+	Environment *propagation.Environment
+	Antennas    []station.Antenna // may be empty: passes and pointing only
 }
 
 // Note is a sentence that belongs to every answer from the scenario.

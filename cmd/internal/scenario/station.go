@@ -5,6 +5,7 @@ import (
 	_ "time/tzdata" // time zones on machines that have no table of them
 
 	"slantwise/cmd/internal/scenario/tree"
+	"slantwise/downlink/propagation"
 	"slantwise/orbit/unit"
 	"slantwise/station"
 )
@@ -14,7 +15,8 @@ var stationKeys = []string{
 	"horizon_mask", "horizon_mask_file", "horizon_mask_kind", "merge_gap_s", "climate", "antennas",
 }
 
-func (r *reader) stations(top object) []Station {
+// stations reads the stations; around is the environment of those that state none.
+func (r *reader) stations(top object, around *propagation.Environment) []Station {
 	if !top.has("stations") {
 		if r.need == NeedOrbits {
 			top.missing("stations", "at least one station")
@@ -28,10 +30,12 @@ func (r *reader) stations(top object) []Station {
 	out := make([]Station, len(items))
 	for i, o := range items {
 		o.about = "station " + called[i]
-		out[i] = Station{Site: o.site(called[i]), Antennas: o.antennas()}
-		if c := o.child("climate", nil); c.node != nil {
-			o.assume("climate stands there and has no effect yet: the path has free-space loss alone")
+		out[i] = Station{Site: o.site(called[i])}
+		out[i].Climate, out[i].Environment = o.climate(&out[i].Site)
+		if out[i].Environment == nil {
+			out[i].Environment = around
 		}
+		out[i].Antennas = o.antennas()
 	}
 	return out
 }

@@ -74,7 +74,7 @@ func (o object) flag(key string) bool {
 	if n == nil {
 		return false
 	}
-	if n.Kind != tree.Bool {
+	if n.Kind != tree.Bool && !(n.Kind == tree.Loose && (n.Text == "true" || n.Text == "false")) {
 		o.fault(n, key, "%s is not allowed; it must be true or false", "", show(n))
 		return false
 	}

@@ -8,7 +8,7 @@ import (
 var transmitterKeys = []string{
 	"name", "frequency_mhz", "power_w", "power_dbm", "power_dbw", "eirp_dbw", "line_loss_db", "antenna",
 	"attitude", "attitude_probability", "polarization", "axial_ratio_db", "polarization_tilt_deg", "modes",
-	"implementation_loss_db", "required_margin_db", "extra_losses", "allotted_bandwidth_mhz", "highest_data_rate_bps",
+	"other_polarization_in_use", "implementation_loss_db", "required_margin_db", "extra_losses", "allotted_bandwidth_mhz", "highest_data_rate_bps",
 }
 
 // Ranges of radio keys; the far ends keep every sum of decibels finite.
@@ -38,6 +38,7 @@ func (r *reader) transmitter(o object, name string) downlink.Transmitter {
 	o.radiatedPower(&t)
 	o.attitude(&t, r.need)
 	t.Polarization = o.polarization()
+	t.OtherPolarization = o.flag("other_polarization_in_use")
 	t.Modes = o.modes()
 	t.ImplementationLoss = unit.DB(o.zeroLeftOut("implementation_loss_db", lossDB))
 	t.RequiredMargin = unit.DB(o.zeroLeftOut("required_margin_db", marginDB))
