@@ -55,34 +55,53 @@ type Surroundings struct {
 
 // SkyNoise is the whole noise that an antenna takes in, contributor by contributor:
 // the cosmic background and the galaxy through the air, the air itself, the ground
-// and man-made noise. It stands in place of a stated antenna temperature. It is a
-// NoiseModel.
+// and man-made noise, as far as they are there. It stands in place of a stated antenna
+// temperature. It is a NoiseModel.
 type SkyNoise struct {
 	air
 	medium, cosmic, galactic float64 // K
 	around                   Surroundings
+	parts                    []NoisePart
+	kinds                    []skyPart // of the parts
 }
+
+type skyPart int
+
+const (
+	skyCosmic skyPart = iota
+	skyGalactic
+	skyGas
+	skyCloud
+	skyRain
+	skyGround
+	skyManMade
+	skyParts
+)
 
 // NewSkyNoise returns the noise of the sky through a path, with its weather or under
 // the clear sky.
 func NewSkyNoise(path *propagation.Path, clear bool, around Surroundings) *SkyNoise {
 	cosmic := propagation.CosmicBackground.Kelvins()
-	return &SkyNoise{air{path, clear}, path.Medium().Kelvins(), cosmic, path.Background().Kelvins() - cosmic, around}
+	n := &SkyNoise{air: air{path, clear}, medium: path.Medium().Kelvins(), cosmic: cosmic, galactic: path.Background().Kelvins() - cosmic, around: around}
+	add := func(is bool, kind skyPart, name, source string) {
+		if is {
+			n.parts, n.kinds = append(n.parts, NoisePart{Name: name, Source: source}), append(n.kinds, kind)
+		}
+	}
+	const through = "through the air, on the share of the pattern that sees the sky"
+	p := path.Parts()
+	add(true, skyCosmic, "cosmic background", "2.7 K "+through)
+	add(true, skyGalactic, "galactic noise", "Rec. ITU-R P.372, the mean over the sky, "+through)
+	add(p.Gas, skyGas, "gas emission", "Rec. ITU-R P.618 §3, through cloud and rain")
+	add(p.Cloud && !clear, skyCloud, "cloud emission", "Rec. ITU-R P.618 §3, through the rain")
+	add(p.Rain && !clear, skyRain, "rain emission", "Rec. ITU-R P.618 §3")
+	add(around.SpillOver != nil, skyGround, "ground", "spill-over times the ground's brightness")
+	add(around.ManMade > 0, skyManMade, "man-made noise", "Rec. ITU-R P.372 Part 6, the median of a short vertical antenna")
+	return n
 }
 
 // Parts names the contributors.
-func (n *SkyNoise) Parts() []NoisePart {
-	const through = "through the air, on the share of the pattern that sees the sky"
-	return []NoisePart{
-		{Name: "cosmic background", Source: "2.7 K " + through},
-		{Name: "galactic noise", Source: "Rec. ITU-R P.372, the mean over the sky, " + through},
-		{Name: "gas emission", Source: "Rec. ITU-R P.618 §3, through cloud and rain"},
-		{Name: "cloud emission", Source: "Rec. ITU-R P.618 §3, through the rain"},
-		{Name: "rain emission", Source: "Rec. ITU-R P.618 §3"},
-		{Name: "ground", Source: "spill-over times the ground's brightness"},
-		{Name: "man-made noise", Source: "Rec. ITU-R P.372 Part 6, the median of a short vertical antenna"},
-	}
-}
+func (n *SkyNoise) Parts() []NoisePart { return n.parts }
 
 // Kelvins implements NoiseModel.
 func (n *SkyNoise) Kelvins(g *Geometry, into []float64) error {
@@ -99,13 +118,18 @@ func (n *SkyNoise) Kelvins(g *Geometry, into []float64) error {
 		spill = n.around.SpillOver.Value(g.Elevation)
 	}
 	sky, through := 1-spill, gas*cloud*rain
-	into[0] = sky * n.cosmic * through
-	into[1] = sky * n.galactic * through
-	into[2] = sky * n.medium * (1 - gas) * cloud * rain
-	into[3] = sky * n.medium * (1 - cloud) * rain
-	into[4] = sky * n.medium * (1 - rain)
-	into[5] = spill * n.around.Ground.Kelvins()
-	into[6] = n.around.ManMade.Kelvins()
+	all := [skyParts]float64{
+		skyCosmic:   sky * n.cosmic * through,
+		skyGalactic: sky * n.galactic * through,
+		skyGas:      sky * n.medium * (1 - gas) * cloud * rain,
+		skyCloud:    sky * n.medium * (1 - cloud) * rain,
+		skyRain:     sky * n.medium * (1 - rain),
+		skyGround:   spill * n.around.Ground.Kelvins(),
+		skyManMade:  n.around.ManMade.Kelvins(),
+	}
+	for i, kind := range n.kinds {
+		into[i] = all[kind]
+	}
 	return nil
 }
 

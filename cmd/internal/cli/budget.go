@@ -109,6 +109,9 @@ func runBudget(env *Env, o *budgetOptions) error {
 	if len(r.samples) == 0 {
 		env.note("there is no such pass in the window %s to %s", utc(s.Window.Start), utc(s.Window.End))
 	}
+	if len(r.sky.missing) > 0 && o.format != formatTable {
+		env.note("warning: %s", missingText(r.sky.missing))
+	}
 	switch o.format {
 	case formatCSV:
 		return writeBudgetCSV(env.Out, r)

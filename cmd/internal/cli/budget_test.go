@@ -136,12 +136,13 @@ func TestBudgetCSV(t *testing.T) {
 		t.Fatalf("%d rows, %v", len(rows), err)
 	}
 	const want = "utc,azimuth_deg,elevation_deg,range_km,off_boresight_deg,transmit_power_dbm,line_loss_db,transmit_antenna_gain_dbi,spacecraft_pointing_db," +
-		"free_space_loss_db,polarisation_mismatch_db,station_antenna_gain_dbi,surface_loss_db,blockage_loss_db,pointing_loss_db,feed_loss_db," +
-		"received_power_dbm,power_flux_density_dbw_m2,system_noise_k,g_over_t_db_k,c_n0_dbhz,eb_n0_db,margin_db,margin_over_required_db,data_rate_bps,achievable_rate_bps,achievable_rate_limit,usable"
+		"free_space_loss_db,polarisation_mismatch_db,gas_attenuation_db,cloud_attenuation_db,rain_attenuation_db,scintillation_db,atmospheric_combination_db,station_antenna_gain_dbi,surface_loss_db,blockage_loss_db,pointing_loss_db,feed_loss_db," +
+		"received_power_dbm,power_flux_density_dbw_m2,system_noise_k,g_over_t_db_k,c_n0_dbhz,eb_n0_db,margin_db,margin_over_required_db,data_rate_bps,achievable_rate_bps,achievable_rate_limit,usable," +
+		"c_i_other_polarization_db,sun_off_beam_deg,moon_off_beam_deg,path_missing"
 	if got := strings.Join(rows[0], ","); got != want {
 		t.Errorf("columns\n%s\nwant\n%s", got, want)
 	}
-	signs := []float64{1, -1, 1, -1, -1, -1, 1, -1, -1, -1, -1}
+	signs := []float64{1, -1, 1, -1, -1, -1, -1, -1, -1, -1, 1, 1, -1, -1, -1, -1}
 	for _, r := range rows[1:] {
 		sum := 0.0
 		for i, sign := range signs {
@@ -151,8 +152,8 @@ func TestBudgetCSV(t *testing.T) {
 			}
 			sum += sign * v
 		}
-		if received, err := strconv.ParseFloat(r[16], 64); err != nil || math.Abs(received-sum) > 1e-10 {
-			t.Errorf("%s: terms add to %.10f, received power %s", r[0], sum, r[16])
+		if received, err := strconv.ParseFloat(r[21], 64); err != nil || math.Abs(received-sum) > 1e-10 {
+			t.Errorf("%s: terms add to %.10f, received power %s", r[0], sum, r[21])
 		}
 	}
 }
@@ -169,7 +170,8 @@ func TestTermColumnsAreUnique(t *testing.T) {
 // writeScenario writes a scenario without orbit: a stated EIRP and an antenna.
 func writeScenario(t *testing.T, transmitter, antenna string) {
 	t.Helper()
-	text := `spacecraft:
+	text := `path: {models: []} # free space
+spacecraft:
   - name: Probe A
     transmitters:
       - name: S-band

@@ -15,10 +15,12 @@ func writeBudgetCSV(w io.Writer, r *budgetResult) error {
 	header := []string{"utc", "azimuth_deg", "elevation_deg", "range_km", "off_boresight_deg"}
 	header = append(header, termColumns(r.link.Terms())...)
 	header = append(header, "received_power_dbm", "power_flux_density_dbw_m2", "system_noise_k", "g_over_t_db_k", "c_n0_dbhz",
-		"eb_n0_db", "margin_db", "margin_over_required_db", "data_rate_bps", "achievable_rate_bps", "achievable_rate_limit", "usable")
+		"eb_n0_db", "margin_db", "margin_over_required_db", "data_rate_bps", "achievable_rate_bps", "achievable_rate_limit", "usable",
+		"c_i_other_polarization_db", "sun_off_beam_deg", "moon_off_beam_deg", "path_missing")
+	missing := strings.Join(r.sky.missing, " ")
 	return writeCSV(w, header, func(yield func([]string) bool) {
 		for _, b := range r.samples {
-			if !yield(budgetRow(b)) {
+			if !yield(append(budgetRow(b), missing)) {
 				return
 			}
 		}
@@ -54,5 +56,6 @@ func budgetRow(b *downlink.Budget) []string {
 	}
 	return append(row, fixed(printedSum(b), 9), fixed(b.PowerFluxDensity, 6), fixed(b.SystemNoise.Kelvins(), 6), fixed(float64(b.GOverT), 6),
 		fixed(float64(b.CN0), 6), fixed(float64(b.EbN0), 6), fixed(float64(b.Margin), 6), fixed(float64(b.MarginOver), 6),
-		fixed(ifAny(float64(b.DataRate)), 3), fixed(float64(b.AchievableRate), 3), b.AchievableLimit.String(), strconv.FormatBool(b.Usable))
+		fixed(ifAny(float64(b.DataRate)), 3), fixed(float64(b.AchievableRate), 3), b.AchievableLimit.String(), strconv.FormatBool(b.Usable),
+		fixed(float64(b.CI), 6), fixed(b.Sun.Degrees(), 4), fixed(b.Moon.Degrees(), 4))
 }

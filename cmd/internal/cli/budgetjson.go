@@ -32,8 +32,16 @@ type budgetJSON struct {
 	Mode         *string          `json:"mode"`
 	Elements     *budgetElements  `json:"elements"`
 	Pass         *budgetPass      `json:"pass"`
+	Path         budgetPath       `json:"path"`
 	Samples      []budgetSample   `json:"samples"`
 	Assumptions  []budgetNoteJSON `json:"assumptions"`
+}
+
+// budgetPath says what the numbers of the path are.
+type budgetPath struct {
+	ClearSky        bool     `json:"clear_sky"`
+	ExceededPercent *float64 `json:"exceeded_percent"` // null for a clear sky
+	Missing         []string `json:"missing"`          // parts that the scenario does not state
 }
 
 type budgetElements struct {
@@ -50,6 +58,9 @@ type budgetPass struct {
 	Closes          []budgetInterval `json:"closes"`
 	ModeBytes       number           `json:"mode_bytes"`
 	AchievableBytes number           `json:"achievable_bytes"`
+	ClearModeBytes  number           `json:"clear_sky_mode_bytes"`
+	ClearAchievable number           `json:"clear_sky_achievable_bytes"`
+	SunInBeam       []budgetInterval `json:"sun_in_beam"`
 }
 
 type budgetInterval struct {
@@ -89,6 +100,9 @@ type budgetSample struct {
 	SystemNoiseK     nano          `json:"system_noise_k"`
 	GOverT           nano          `json:"g_over_t_db_k"`
 	CN0              nano          `json:"c_n0_dbhz"`
+	CI               nano          `json:"c_i_other_polarization_db"`
+	SunDeg           nano          `json:"sun_off_beam_deg"`
+	MoonDeg          nano          `json:"moon_off_beam_deg"`
 	EbN0             nano          `json:"eb_n0_db"`
 	RequiredEbN0     nano          `json:"required_eb_n0_db"`
 	Margin           nano          `json:"margin_db"`
@@ -110,14 +124,19 @@ func budgetOut(r *budgetResult) budgetJSON {
 	if r.mode != nil {
 		out.Mode = &r.mode.Name
 	}
+	out.Path.ClearSky, out.Path.Missing = r.choice.ClearSky, append([]string{}, r.sky.missing...)
+	if p := r.choice.Exceedance.Percents(); !r.choice.ClearSky {
+		out.Path.ExceededPercent = &p
+	}
 	if e := r.elements; e != nil {
 		out.Elements = &budgetElements{e.CatalogNumber, utc(e.Epoch), num(e.Age.Hours()/24, 4)}
 	}
 	if p := r.pass; p != nil {
-		out.Pass = &budgetPass{utc(p.AOS), utc(p.Culmination), utc(p.LOS), num(p.MaxElevation.Degrees(), 4), []budgetInterval{},
-			num(r.volume.ModeBytes, 0), num(r.volume.AchievableBytes, 0)}
-		for _, c := range r.volume.Closes {
-			out.Pass.Closes = append(out.Pass.Closes, budgetInterval{utc(c.From), utc(c.To)})
+		out.Pass = &budgetPass{utc(p.AOS), utc(p.Culmination), utc(p.LOS), num(p.MaxElevation.Degrees(), 4), nil,
+			num(r.volume.ModeBytes, 0), num(r.volume.AchievableBytes, 0), num(math.NaN(), 0), num(math.NaN(), 0), intervalsOut(r.sunInBeam)}
+		out.Pass.Closes = intervalsOut(r.volume.Closes)
+		if v := r.clearVolume; v != nil {
+			out.Pass.ClearModeBytes, out.Pass.ClearAchievable = num(v.ModeBytes, 0), num(v.AchievableBytes, 0)
 		}
 	}
 	for _, b := range r.samples {
@@ -129,11 +148,19 @@ func budgetOut(r *budgetResult) budgetJSON {
 	return out
 }
 
+func intervalsOut(list []downlink.Interval) []budgetInterval {
+	out := []budgetInterval{}
+	for _, c := range list {
+		out = append(out, budgetInterval{utc(c.From), utc(c.To)})
+	}
+	return out
+}
+
 func sampleOut(b *downlink.Budget) budgetSample {
 	s := budgetSample{
 		AzimuthDeg: nano(b.Azimuth.Degrees()), ElevationDeg: nano(b.Elevation.Degrees()), RangeKm: nano(b.Range.Kilometres()), OffBoresightDeg: nano(b.OffBoresight.Degrees()),
 		Terms: []budgetTerm{}, ReceivedPowerDBm: nano(printedSum(b)), FluxDensity: nano(b.PowerFluxDensity),
-		Noise: []budgetNoise{}, SystemNoiseK: nano(b.SystemNoise.Kelvins()), GOverT: nano(b.GOverT), CN0: nano(b.CN0),
+		Noise: []budgetNoise{}, SystemNoiseK: nano(b.SystemNoise.Kelvins()), GOverT: nano(b.GOverT), CN0: nano(b.CN0), CI: nano(b.CI), SunDeg: nano(b.Sun.Degrees()), MoonDeg: nano(b.Moon.Degrees()),
 		EbN0: nano(b.EbN0), RequiredEbN0: nano(b.RequiredEbN0), Margin: nano(b.Margin), MarginOver: nano(b.MarginOver),
 		DataRate: nano(ifAny(float64(b.DataRate))), AchievableRate: nano(b.AchievableRate), AchievableLimit: b.AchievableLimit.String(),
 		Usable: b.Usable, Cautions: append([]string{}, b.Cautions...),

@@ -18,6 +18,8 @@ type chosenLink struct {
 	antenna     *station.Antenna
 	mode        *modem.Mode // nil: the transmitter has none
 	link        *downlink.Link
+	sky         *skyLink
+	clear       *downlink.Link // the same under a clear sky; nil where link is that already
 }
 
 // chooseLink finds what the names name and prepares the link. What the scenario
@@ -42,7 +44,7 @@ func chooseLink(s *scenario.Scenario, n linkNames) (*chosenLink, error) {
 			return nil, err
 		}
 	}
-	if c.link, err = makeLink(c.station, c.transmitter, c.antenna, c.mode); err != nil {
+	if err := c.prepare(newSkies(s)); err != nil {
 		return nil, &InputError{Err: err}
 	}
 	return &c, nil
@@ -53,13 +55,13 @@ func chooseLink(s *scenario.Scenario, n linkNames) (*chosenLink, error) {
 // default with its key, so that the link's own list of them is left out.
 func (c *chosenLink) notes(s *scenario.Scenario, flown bool) []downlink.Note {
 	var out []downlink.Note
-	for _, n := range c.link.Notes() {
+	for _, n := range c.linkNotes() {
 		if n.Kind != downlink.Default {
 			out = append(out, n)
 		}
 	}
 	for _, n := range s.Assumptions {
-		if c.touchedBy(n.About) || flown && n.About == "earth" {
+		if c.touchedBy(n.About) || flown && n.About == "earth" || n.About == "path" {
 			out = append(out, downlink.Note{Kind: downlink.Default, Text: n.String()})
 		}
 	}
@@ -78,12 +80,51 @@ func (c *chosenLink) touchedBy(about string) bool {
 	return slices.Contains(parts, about)
 }
 
-// makeLink prepares a link with the site's frame and refraction.
-func makeLink(st *scenario.Station, t *downlink.Transmitter, a *station.Antenna, m *modem.Mode) (*downlink.Link, error) {
-	frame := st.Site.Frame()
-	refraction, err := station.NewRefraction(st.Site.Altitude - st.Site.GeoidHeight)
-	if err != nil {
-		return nil, fmt.Errorf("station %s: %w", st.Site.Name, err)
+// linkNotes are those of the link with those of its sky.
+func (c *chosenLink) linkNotes() []downlink.Note {
+	return append(append([]downlink.Note(nil), c.link.Notes()...), c.sky.notes...)
+}
+
+// prepare makes the link with the site's frame and refraction, under the weather that
+// the scenario asks for and under a clear sky.
+func (c *chosenLink) prepare(k *skies) error {
+	// Before the path, which takes longer to prepare.
+	if a, f := c.antenna, c.transmitter.Frequency; len(a.Bands) > 0 && !slices.ContainsFunc(a.Bands, func(b station.Band) bool { return b.Holds(f) }) {
+		return &downlink.BandError{Antenna: a.Name, Frequency: f, Bands: a.Bands}
 	}
-	return downlink.NewLink(downlink.LinkSpec{Transmitter: *t, Mode: m, Frame: &frame, Refraction: refraction, Antenna: a})
+	clear := k.scenario.Path.ClearSky
+	var err error
+	if c.sky, err = k.between(c.station, c.transmitter, c.antenna, clear); err != nil {
+		return err
+	}
+	if c.link, err = c.make(k, c.sky, clear); err != nil || clear {
+		return err
+	}
+	fine, err := k.between(c.station, c.transmitter, c.antenna, true)
+	if err != nil {
+		return err
+	}
+	c.clear, err = c.make(k, fine, true)
+	return err
+}
+
+func (c *chosenLink) make(k *skies, sky *skyLink, clear bool) (*downlink.Link, error) {
+	spec, err := c.bareSpec()
+	if err != nil {
+		return nil, err
+	}
+	spec.PathModels, spec.NoiseModels, spec.CrossPolar = sky.paths, sky.noise, sky.cross
+	spec.Bodies, spec.Sun, spec.Moon, spec.ClearSky = k.bodies, sky.sun, sky.moon, clear
+	return downlink.NewLink(spec)
+}
+
+// bareSpec is the link in free space.
+func (c *chosenLink) bareSpec() (downlink.LinkSpec, error) {
+	site := &c.station.Site
+	frame := site.Frame()
+	refraction, err := station.NewRefraction(site.HeightAboveSea())
+	if err != nil {
+		return downlink.LinkSpec{}, fmt.Errorf("station %s: %w", site.Name, err)
+	}
+	return downlink.LinkSpec{Transmitter: *c.transmitter, Mode: c.mode, Frame: &frame, Refraction: refraction, Antenna: c.antenna}, nil
 }

@@ -1,11 +1,13 @@
 package cli
 
 import (
+	"errors"
 	"fmt"
 	"time"
 
 	"slantwise/cmd/internal/scenario"
 	"slantwise/downlink"
+	"slantwise/downlink/propagation"
 	"slantwise/orbit"
 	"slantwise/orbit/elements"
 	"slantwise/orbit/unit"
@@ -15,15 +17,19 @@ import (
 // budgetResult is what the command shows, in whatever format.
 type budgetResult struct {
 	*chosenLink
+	choice   *scenario.PathChoice
 	elements *elements.Chosen // nil for a stated geometry
 	pass     *pass.Pass       // nil for one instant or a stated geometry
 	volume   *downlink.Volume // of the pass
-	samples  []*downlink.Budget
-	notes    []downlink.Note
+	// clearVolume is the pass under a clear sky; nil where volume is that already.
+	clearVolume *downlink.Volume
+	sunInBeam   []downlink.Interval
+	samples     []*downlink.Budget
+	notes       []downlink.Note
 }
 
 func newBudgetResult(s *scenario.Scenario, c *chosenLink, flown bool) *budgetResult {
-	return &budgetResult{chosenLink: c, notes: c.notes(s, flown)}
+	return &budgetResult{chosenLink: c, choice: &s.Path, notes: c.notes(s, flown)}
 }
 
 func (r *budgetResult) warn(format string, args ...any) {
@@ -40,17 +46,43 @@ func statedBudget(s *scenario.Scenario, c *chosenLink, o *statedOptions) (*budge
 	if o.offBoresightDeg == nil && c.transmitter.Attitude == downlink.AttitudeNadir {
 		r.notes = append(r.notes, downlink.Note{Kind: downlink.Assumption, Text: "off-boresight angle left out: worked out from range and elevation over a sphere through the site"})
 	}
+	if r.choice.Sun || r.choice.Moon {
+		r.notes = append(r.notes, downlink.Note{Kind: downlink.Assumption, Text: "a stated geometry has no time: neither the Sun nor the Moon is in the beam"})
+	}
 	return r, r.add(g)
 }
 
 // add evaluates the budget at a geometry.
 func (r *budgetResult) add(g downlink.Geometry) error {
 	b, err := r.link.At(g)
+	var blocked *propagation.BlockedRayError
+	if errors.As(err, &blocked) {
+		b, err = r.underTheHorizon(g, blocked)
+	}
 	if err != nil {
 		return &InputError{Err: err}
 	}
 	r.samples = append(r.samples, b)
 	return nil
+}
+
+// underTheHorizon is the budget in free space where the ground blocks the ray; the
+// models of the air have no value there.
+func (r *budgetResult) underTheHorizon(g downlink.Geometry, blocked error) (*downlink.Budget, error) {
+	spec, err := r.bareSpec()
+	if err != nil {
+		return nil, err
+	}
+	link, err := downlink.NewLink(spec)
+	if err != nil {
+		return nil, blocked // the antenna's noise needs the sky
+	}
+	b, err := link.At(g)
+	if err != nil {
+		return nil, err
+	}
+	b.Cautions = append(b.Cautions, "the terms of the air are left out: "+blocked.Error())
+	return b, nil
 }
 
 // budgetAt is the budget at one instant.
@@ -107,7 +139,14 @@ func (r *budgetResult) fly(eph *orbit.Ephemeris, step time.Duration) error {
 	if err != nil {
 		return &InputError{Err: err}
 	}
-	r.volume = &profile.Volume
+	r.volume, r.sunInBeam = &profile.Volume, profile.SunInBeam
+	if r.clear != nil {
+		fine, err := r.clear.Profile(eph, p.AOS, p.LOS, volumeStep(p.Duration()))
+		if err != nil {
+			return &InputError{Err: err}
+		}
+		r.clearVolume = &fine.Volume
+	}
 	for t := p.AOS; t.Before(p.LOS); t = t.Add(step) {
 		if err := r.addAt(eph, t); err != nil {
 			return err

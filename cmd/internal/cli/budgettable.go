@@ -42,6 +42,9 @@ func (r *budgetResult) writeHead(w *bufio.Writer) {
 		}
 		line("element set %d of %s, %.2f days %s", e.CatalogNumber, utc(e.Epoch), e.Age.Abs().Hours()/24, when)
 	}
+	for _, l := range r.pathHead() {
+		line("%s", l)
+	}
 	if p := r.pass; p != nil {
 		line("pass from %s to %s, culmination %.2f deg at %s", utc(p.AOS), utc(p.LOS), p.MaxElevation.Degrees(), utc(p.Culmination))
 		r.writeVolume(line)
@@ -50,6 +53,9 @@ func (r *budgetResult) writeHead(w *bufio.Writer) {
 }
 
 func (r *budgetResult) writeVolume(line func(string, ...any)) {
+	for _, c := range r.sunInBeam {
+		line("the Sun in the beam from %s to %s", utc(c.From), utc(c.To))
+	}
 	for _, c := range r.volume.Closes {
 		line("closes from %s to %s", utc(c.From), utc(c.To))
 	}
@@ -58,6 +64,9 @@ func (r *budgetResult) writeVolume(line func(string, ...any)) {
 			line("closes at no time of the pass")
 		}
 		line("volume %s in mode %s, %s at the achievable rate", bytesText(r.volume.ModeBytes), m.Name, bytesText(r.volume.AchievableBytes))
+		if v := r.clearVolume; v != nil {
+			line("under a clear sky %s and %s", bytesText(v.ModeBytes), bytesText(v.AchievableBytes))
+		}
 	}
 }
 
@@ -108,6 +117,8 @@ func (r *budgetResult) placeText(b *downlink.Budget) string {
 	add("azimuth", b.Azimuth.Degrees(), 3, "deg")
 	add("range", b.Range.Kilometres(), 3, "km")
 	add("off boresight", b.OffBoresight.Degrees(), 3, "deg")
+	add("Sun off the beam", b.Sun.Degrees(), 2, "deg")
+	add("Moon off the beam", b.Moon.Degrees(), 2, "deg")
 	return strings.Join(parts, ", ")
 }
 
@@ -125,6 +136,7 @@ func (r *budgetResult) results(b *downlink.Budget) [][]string {
 	add("power flux density", b.PowerFluxDensity, 2, "dB(W/m²)", "whole carrier in free space at the site")
 	add("G/T", float64(b.GOverT), 2, "dB/K", "gain less feed loss over the system noise")
 	add("C/N0", float64(b.CN0), 2, "dBHz", "received power over Boltzmann's constant and the system noise")
+	add("C/I, other polarisation", float64(b.CI), 2, "dB", "discrimination not exceeded for the path's percentage, of an equal carrier")
 	add("data rate", ifAny(float64(b.DataRate)), 0, "bit/s", "information bits")
 	add("Eb/N0", float64(b.EbN0), 2, "dB", "C/N0 over the data rate")
 	if r.link.Mode() != nil {

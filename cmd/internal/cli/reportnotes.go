@@ -54,7 +54,7 @@ func (p *reportPlan) pageNotes(page *reportPage, chosen *chosenLink) []reports.N
 
 func linkNotes(c *chosenLink, modes int) []reports.Note {
 	var out []reports.Note
-	for _, n := range c.link.Notes() {
+	for _, n := range c.linkNotes() {
 		if n.Kind == downlink.Default { // the scenario lists each of these with its key
 			continue
 		}

@@ -5,6 +5,7 @@ import (
 	"errors"
 	"fmt"
 	"path/filepath"
+	"slices"
 
 	"slantwise/cmd/internal/scenario"
 	"slantwise/downlink"
@@ -128,6 +129,7 @@ func (p *reportPlan) prepareLinks(mode string) error {
 	found := mode == ""
 	var known []string
 	p.links = make([][]reportLinks, len(p.craft))
+	sky := newSkies(p.scenario)
 	for i, c := range p.craft {
 		p.links[i] = make([]reportLinks, len(p.sites))
 		for t := range c.Transmitters {
@@ -137,7 +139,8 @@ func (p *reportPlan) prepareLinks(mode string) error {
 			}
 		}
 		for k := range p.sites {
-			p.links[i][k] = linksBetween(c.Spacecraft, p.sites[k].Station, mode)
+			p.links[i][k] = linksBetween(sky, c.Spacecraft, p.sites[k].Station, mode)
+			p.warnMissing(&p.sites[k], p.links[i][k].links)
 		}
 	}
 	if !found {
@@ -146,18 +149,29 @@ func (p *reportPlan) prepareLinks(mode string) error {
 	return nil
 }
 
-func linksBetween(c *scenario.Spacecraft, st *scenario.Station, mode string) reportLinks {
+// warnMissing tells once a station which parts of the path its numbers lack.
+func (p *reportPlan) warnMissing(site *reportSite, links []reportLink) {
+	for _, l := range links {
+		if parts := l.modes[0].sky.missing; len(parts) > 0 {
+			if text := "station " + site.Site.Name + ": " + missingText(parts); !slices.Contains(p.warnings, text) {
+				p.warnings = append(p.warnings, text)
+			}
+		}
+	}
+}
+
+func linksBetween(k *skies, c *scenario.Spacecraft, st *scenario.Station, mode string) reportLinks {
 	var out reportLinks
 	for t := range c.Transmitters {
 		for a := range st.Antennas {
 			one := reportLink{transmitter: &c.Transmitters[t], antenna: &st.Antennas[a]}
 			for _, m := range competing(one.transmitter.Modes, mode) {
-				link, err := makeLink(st, one.transmitter, one.antenna, m)
-				if err != nil {
+				link := chosenLink{spacecraft: c, station: st, transmitter: one.transmitter, antenna: one.antenna, mode: m}
+				if err := link.prepare(k); err != nil {
 					out.without = append(out.without, fmt.Sprintf("%s to %s: %v", one.transmitter.Name, one.antenna.Name, err))
 					break // the fault is the antenna's and so that of all modes
 				}
-				one.modes = append(one.modes, chosenLink{spacecraft: c, station: st, transmitter: one.transmitter, antenna: one.antenna, mode: m, link: link})
+				one.modes = append(one.modes, link)
 			}
 			if len(one.modes) > 0 {
 				out.links = append(out.links, one)

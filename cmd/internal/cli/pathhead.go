@@ -1,0 +1,33 @@
+package cli
+
+import (
+	"fmt"
+	"strings"
+)
+
+// missingText says which parts of the path are in no number, as the scenario does not
+// state what they follow from.
+func missingText(parts []string) string {
+	keys := map[string]string{
+		"rain":          "rain_rate_001_mm_h or the months under climate",
+		"cloud":         "cloud_liquid_water_kg_m2 under climate",
+		"scintillation": "the antenna's diameter or gain",
+	}
+	var need []string
+	for _, p := range parts {
+		need = append(need, fmt.Sprintf("%s (%s is not stated)", p, keys[p]))
+	}
+	return "missing from the path: " + strings.Join(need, ", ")
+}
+
+// pathHead says at the head of a budget what its numbers of the path are.
+func (r *budgetResult) pathHead() []string {
+	if r.choice.ClearSky {
+		return []string{"path: clear sky"}
+	}
+	head := []string{fmt.Sprintf("path: attenuation and noise exceeded for %g %% of an average year", r.choice.Exceedance.Percents())}
+	if len(r.sky.missing) > 0 {
+		head = append(head, missingText(r.sky.missing))
+	}
+	return head
+}
