@@ -96,8 +96,13 @@ func (w *Weather) Notes() []Note {
 	if w.clear {
 		return []Note{{Assumption, "clear sky: gas of the ordinary air only, no cloud, rain or scintillation"}}
 	}
+	return pathNotes(w.path.Notes())
+}
+
+// pathNotes are the notes of a path as a link tells them.
+func pathNotes(list []propagation.Note) []Note {
 	var all []Note
-	for _, n := range w.path.Notes() {
+	for _, n := range list {
 		all = append(all, Note{[...]NoteKind{propagation.Assumption: Assumption, propagation.Default: Default, propagation.Warning: Warning}[n.Kind], n.Text})
 	}
 	return all

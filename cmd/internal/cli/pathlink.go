@@ -39,6 +39,7 @@ func newSkies(s *scenario.Scenario) *skies {
 // skyLink is what the air does to one transmitter and antenna, ready for a link.
 type skyLink struct {
 	path    *propagation.Path
+	spec    propagation.PathSpec // of the path
 	paths   []downlink.PathModel
 	noise   []downlink.NoiseModel
 	sun     *propagation.Disc
@@ -97,7 +98,7 @@ func (k *skies) path(st *scenario.Station, t *downlink.Transmitter, a *station.A
 	spec := k.spec(st, t.Frequency)
 	spec.Tilt = k.tilt(t, into)
 	spec.Aperture = apertureOf(a, t.Frequency)
-	into.missing = missingParts(&spec)
+	into.missing, into.spec = missingParts(&spec), spec
 	key := skyKey{station: st.Site.Name, frequency: t.Frequency, tilt: spec.Tilt}
 	if spec.Aperture != nil {
 		key.aperture = *spec.Aperture

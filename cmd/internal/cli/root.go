@@ -50,6 +50,7 @@ Results go to stdout, words for people to stderr. Exit codes:
 		newPasses(env),
 		newPointing(env),
 		newBudget(env),
+		newPath(env),
 		newReport(env),
 	)
 	refuseUnknownTopics(root)
