@@ -73,6 +73,34 @@ type Radio struct {
 	AchievableBytes, ModeBytes []float64
 
 	AOS, Culmination, LeastMargin downlink.Budget // LeastMargin counts only where there is a least margin
+
+	Path PathInfo
+
+	// ClearSky is the same pass under a clear sky: power, noise, margin, rate and volume
+	// beside those of Profile, which are exceeded for a percentage of the year. Nil where
+	// Profile is that of a clear sky.
+	ClearSky *downlink.Profile
+	// Volume so far under the clear sky at each sample, in bytes; nil without ClearSky.
+	ClearAchievableBytes, ClearModeBytes []float64
+
+	// Contributors to attenuation and noise along the pass, to be drawn over each other:
+	// each a column of Profile. Profile.SunDeg, MoonDeg and SunInBeam belong to them.
+	PathParts, NoiseParts []Contributor
+}
+
+// PathInfo says what the numbers of the path are.
+type PathInfo struct {
+	ClearSky        bool
+	ExceededPercent float64  // of an average year; without meaning for a clear sky
+	Missing         []string // parts that the scenario does not state, as "rain"
+	MissingText     string   // a sentence about them with what to do; empty: nothing is missing
+}
+
+// Contributor is one of the quantities that add to a whole along a pass.
+type Contributor struct {
+	Name   string
+	Values []float64 // by sample: dB, or K at the input of the first amplifier
+	Sign   int       // -1 for what is given back
 }
 
 // ModeResult is what a mode brings in a pass, held from AOS to LOS.

@@ -103,7 +103,7 @@ func reportRadio(craft *reportCraft, page *reportPage, best *modeOnPass) (*repor
 		}
 		*at.into = *b
 	}
-	return r, nil
+	return r, addPath(r, craft, page, best)
 }
 
 // extremes returns the least and the greatest margin of a profile; NaN and no time
