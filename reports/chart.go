@@ -12,7 +12,7 @@ import (
 // options cannot say because it would take a function.
 type drawing struct {
 	ID     string         `json:"id"`
-	Kind   string         `json:"kind"` // time, sky or overview
+	Kind   string         `json:"kind"` // time, curve, sky or overview
 	Option map[string]any `json:"option"`
 	Axis   *timeAxis      `json:"axis,omitempty"`
 	Reads  []reading      `json:"reads,omitempty"`

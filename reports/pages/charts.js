@@ -79,7 +79,24 @@
     return t;
   }
 
+  // forCurve is for lines over a quantity that is not time.
+  function forCurve(o, spec, p) {
+    var x = o.xAxis[0];
+    x.axisLabel = { hideOverlap: true, formatter: function (v) { return String(v).replace('-', '−'); } };
+    x.nameLocation = 'middle';
+    x.nameGap = 26;
+    forLines(o, p);
+    // Six lines keep apart by two colours and three dashes.
+    o.series.forEach(function (s, k) { s.lineStyle.color = p.lines[Math.floor(k / 3) % 2]; s.itemStyle = { color: s.lineStyle.color }; });
+    if (o.series.length > 3) { o.grid.top = window.innerWidth < 600 ? 90 : 68; }
+  }
+
   function forTime(o, spec, p) {
+    timeLabels(o.xAxis[0], spec);
+    forLines(o, p);
+  }
+
+  function forLines(o, p) {
     var legend = o.legend && o.legend.show;
     o.title = o.yAxis.map(function (y, k) { return heading(y.name, k ? 'right' : 'left', p); });
     o.yAxis.forEach(function (y) {
@@ -88,7 +105,6 @@
       styled(y, p);
     });
     if (o.yAxis[1]) { o.yAxis[1].splitLine = { show: false }; }
-    timeLabels(o.xAxis[0], spec);
     styled(o.xAxis[0], p);
     o.xAxis[0].splitLine = { show: false };
     o.xAxis[0].axisLine.onZero = false;
@@ -167,7 +183,7 @@
     o.backgroundColor = 'transparent';
     o.textStyle = { fontFamily: getComputedStyle(document.body).fontFamily, color: p.ink };
     if (o.xAxis) { o.xAxis[0].nameTextStyle = { color: p.ink, fontSize: 12 }; }
-    ({ time: forTime, sky: forSky, overview: forOverview })[spec.kind](o, spec, p);
+    ({ time: forTime, curve: forCurve, sky: forSky, overview: forOverview })[spec.kind](o, spec, p);
     return o;
   }
 

@@ -87,7 +87,8 @@ func (t *pathTarget) pathAt(spec propagation.PathSpec, elevations ...unit.Angle)
 			return nil, nil, &InputError{Err: err}
 		}
 		if q.parts.Rain && q.sample.Rain > 0 {
-			if v, _, err := path.CrossPolar(el); err == nil { // outside its range there is none
+			// Outside its range there is none: no error and no note.
+			if v, beyond, err := path.CrossPolar(el); err == nil && len(beyond) == 0 {
 				q.xpd = v
 			}
 		}

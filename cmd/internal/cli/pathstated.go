@@ -13,6 +13,7 @@ import (
 // pathAnswer is what the command shows, in whatever format.
 type pathAnswer struct {
 	target *pathTarget
+	axis   *sweepAxis // nil for a single path
 	points []pathPoint
 	notes  []downlink.Note
 }
@@ -51,17 +52,34 @@ func (a *pathAnswer) addNotes(notes []downlink.Note) {
 // head says what the answer is about, and first what it lacks.
 func (a *pathAnswer) head() []string {
 	t := a.target
-	lines := []string{fmt.Sprintf("path to %s at %g MHz, exceeded for %g %% of an average year", t.station.Site.Name, t.spec.Frequency.Megahertz(), t.spec.Exceedance.Percents())}
-	if t.spec.ClearSky {
-		return []string{fmt.Sprintf("path to %s at %g MHz, clear sky", t.station.Site.Name, t.spec.Frequency.Megahertz())}
+	over := func(name string) bool { return a.axis != nil && a.axis.name == name }
+	line := "path to " + t.station.Site.Name
+	if !over("frequency") {
+		line += fmt.Sprintf(" at %g MHz", t.spec.Frequency.Megahertz())
 	}
+	switch {
+	case t.spec.ClearSky:
+		return []string{line + ", clear sky"}
+	case over("percentage"):
+		return a.withMissing(line + ", over the percentage of an average year")
+	}
+	line += fmt.Sprintf(", exceeded for %g %% of an average year", t.spec.Exceedance.Percents())
 	if w, err := propagation.WorstMonth(t.spec.Exceedance); err == nil {
-		lines[0] += fmt.Sprintf(" (%.3g %% of the average worst month, P.841)", w.Percents())
+		line += fmt.Sprintf(" (%.3g %% of the average worst month, P.841)", w.Percents())
 	}
-	if missing := missingParts(&t.spec); len(missing) > 0 {
-		lines = append(lines, missingText(missing))
+	return a.withMissing(line)
+}
+
+// withMissing adds to a line at the head what is missing.
+func (a *pathAnswer) withMissing(line string) []string {
+	spec := a.target.spec
+	if a.axis != nil && a.axis.name == "frequency" {
+		spec.Frequency = unit.Frequency(a.axis.to) * unit.Megahertz // rain counts from 1 GHz
 	}
-	return lines
+	if missing := missingParts(&spec); len(missing) > 0 {
+		return []string{line, missingText(missing)}
+	}
+	return []string{line}
 }
 
 // writeTerms writes the terms of one path, a line each.

@@ -4,6 +4,7 @@ import (
 	"bufio"
 	"fmt"
 	"math"
+	"regexp"
 
 	"github.com/spf13/pflag"
 
@@ -25,7 +26,7 @@ func (o *sweepOptions) flags(fs *pflag.FlagSet) []optional {
 	return []optional{
 		{"from", "begin of a sweep: `VALUE` in deg, MHz or % (left out: 5 deg, 1000 MHz, 0.01 %)", &o.from},
 		{"to", "end of a sweep: `VALUE` in deg, MHz or % (left out: 90 deg, 50000 MHz, 50 %)", &o.to},
-		{"points", "`NUMBER` of points of a sweep, 2 to 2000 (left out: 86 for elevation, else 41)", &o.points},
+		{"points", "`NUMBER` of points of a sweep, 2 to 2000 (left out: 86 for elevation, 61 for frequency, 41 for percentage)", &o.points},
 	}
 }
 
@@ -45,7 +46,7 @@ type sweepAxis struct {
 
 var sweepAxes = []sweepAxis{
 	{"elevation", "deg", 5, 90, 86, -2, 90, false},
-	{"frequency", "MHz", 1000, 50_000, 41, 10, 1e6, true},
+	{"frequency", "MHz", 1000, 50_000, 61, 10, 1e6, true},
 	{"percentage", "%", 0.01, 50, 41, 0.001, 50, true},
 }
 
@@ -119,6 +120,11 @@ func runPathSweep(env *Env, o *pathOptions) error {
 	if err != nil {
 		return err
 	}
+	if o.sweep.into != "" {
+		if err := a.writePage(env, o.sweep.into, axis); err != nil {
+			return err
+		}
+	}
 	if o.format == formatTable {
 		return a.writeSweep(env)
 	}
@@ -127,7 +133,7 @@ func runPathSweep(env *Env, o *pathOptions) error {
 
 // sweepPath evaluates the path at every point of an axis.
 func (o *pathOptions) sweepPath(t *pathTarget, axis *sweepAxis) (*pathAnswer, error) {
-	a := &pathAnswer{target: t, notes: t.notes}
+	a := &pathAnswer{target: t, axis: axis, notes: t.notes}
 	values := axis.values()
 	if axis.name == "elevation" {
 		elevations := make([]unit.Angle, len(values))
@@ -140,6 +146,7 @@ func (o *pathOptions) sweepPath(t *pathTarget, axis *sweepAxis) (*pathAnswer, er
 		a.addNotes(notes)
 		return a, err
 	}
+	var all []downlink.Note
 	for _, v := range values {
 		spec := t.spec
 		if axis.name == "frequency" {
@@ -152,9 +159,36 @@ func (o *pathOptions) sweepPath(t *pathTarget, axis *sweepAxis) (*pathAnswer, er
 			return nil, inputErrorf("at %g %s: %w", v, axis.unit, err)
 		}
 		a.points = append(a.points, points...)
-		a.addNotes(notes)
+		all = append(all, notes...)
 	}
+	a.addNotes(alike(all))
 	return a, nil
+}
+
+var numberInText = regexp.MustCompile(`[0-9]+(\.[0-9]+)?(e[-+]?[0-9]+)?`)
+
+// alike joins notes that differ by numbers alone: the first stands for them, with how
+// many there are.
+func alike(notes []downlink.Note) []downlink.Note {
+	var out []downlink.Note
+	at, seen, more := map[string]int{}, map[downlink.Note]bool{}, map[int]int{}
+	for _, n := range notes {
+		if seen[n] {
+			continue
+		}
+		seen[n] = true
+		key := n.Kind.String() + numberInText.ReplaceAllString(n.Text, "#")
+		if i, is := at[key]; is {
+			more[i]++
+			continue
+		}
+		at[key] = len(out)
+		out = append(out, n)
+	}
+	for i, n := range more {
+		out[i].Text += fmt.Sprintf(" (and %d more points)", n)
+	}
+	return out
 }
 
 // writeSweep writes a line a point.

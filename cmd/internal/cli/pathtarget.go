@@ -85,7 +85,7 @@ func (o *pathOptions) antennaOf(st *scenario.Station, f unit.Frequency) (*statio
 	var found *station.Antenna
 	for i := range st.Antennas {
 		a := &st.Antennas[i]
-		takes := len(a.Bands) == 0
+		takes := len(a.Bands) == 0 || o.sweep.over == "frequency" // over all bands
 		for _, b := range a.Bands {
 			takes = takes || b.Holds(f)
 		}

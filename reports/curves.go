@@ -1,0 +1,118 @@
+package reports
+
+import (
+	"bytes"
+	"fmt"
+	"html/template"
+
+	"github.com/go-echarts/go-echarts/v2/charts"
+	"github.com/go-echarts/go-echarts/v2/opts"
+)
+
+// Curves is a page of charts over one quantity that is not time.
+type Curves struct {
+	Title    string
+	Lines    []string // what the page is about, a sentence each
+	Warnings []string // shown at the head
+	X        Axis
+	Charts   []CurveChart
+	Notes    []Note
+}
+
+// Axis is the quantity along the charts.
+type Axis struct {
+	Name, Unit  string
+	Values      []float64 // rising; the points
+	Logarithmic bool
+	Decimals    int
+}
+
+// CurveChart is one chart of a Curves page.
+type CurveChart struct {
+	ID             string // of letters and dashes, each once
+	Title, Caption string
+	Quantity, Unit string
+	Curves         []Curve
+}
+
+// Curve is one line: a value at each point of the axis, NaN for a gap.
+type Curve struct {
+	Name   string
+	Values []float64
+}
+
+// curveView is what the template shows.
+type curveView struct {
+	pageView
+	Lines, Warnings []string
+	Figures         []figureView
+	Notes           []Note
+}
+
+// CurvesPage returns the page as one file of HTML that holds everything inside.
+func CurvesPage(c *Curves) ([]byte, error) {
+	w := newWriter(&Report{}, Options{OneFile: true}, chartScript(), nil)
+	v := curveView{pageView: w.page("", c.Title), Lines: c.Lines, Warnings: c.Warnings, Notes: c.Notes}
+	var drawings []drawing
+	for i := range c.Charts {
+		one := &c.Charts[i]
+		for _, k := range one.Curves {
+			if len(k.Values) != len(c.X.Values) {
+				return nil, fmt.Errorf("report: chart %q: %q has %d values for %d points", one.ID, k.Name, len(k.Values), len(c.X.Values))
+			}
+		}
+		drawings = append(drawings, c.draw(one))
+		v.Figures = append(v.Figures, figureView{ID: one.ID, Title: one.Title, Caption: one.Caption, Table: c.table(one)})
+	}
+	data, err := marshalDrawings(map[string]any{"drawings": drawings})
+	if err != nil {
+		return nil, err
+	}
+	v.Data = dataElement(data)
+	var out bytes.Buffer
+	err = pageTemplates.ExecuteTemplate(&out, "curves.html", v)
+	return out.Bytes(), err
+}
+
+// curveDashes tell lines apart beside the two colours, which alternate.
+var curveDashes = [...]string{solid, dashed, dotted, solid, dashed, dotted}
+
+func (c *Curves) draw(one *CurveChart) drawing {
+	x := opts.XAxis{Type: "value", Name: axisName(c.X.Name, c.X.Unit), Min: c.X.Values[0], Max: c.X.Values[len(c.X.Values)-1]}
+	if c.X.Logarithmic {
+		x.Type = "log"
+	}
+	line := charts.NewLine()
+	line.SetGlobalOptions(described(one.Caption), charts.WithAnimation(false), charts.WithXAxisOpts(x),
+		charts.WithYAxisOpts(opts.YAxis{Type: "value", Name: axisName(one.Quantity, one.Unit)}),
+		charts.WithLegendOpts(opts.Legend{Show: opts.Bool(len(one.Curves) > 1)}))
+	all := make([]int, len(c.X.Values))
+	for i := range all {
+		all[i] = i
+	}
+	for i, k := range one.Curves {
+		s := series{name: k.Name, dash: curveDashes[i%len(curveDashes)], values: k.Values, divisor: 1, decimals: 3}
+		line.MultiSeries = append(line.MultiSeries, lineSeries(s, points(c.X.Values, s, all)))
+	}
+	line.Validate()
+	return drawing{ID: one.ID, Kind: "curve", Option: plain(line.JSON())}
+}
+
+// table writes the numbers of a chart, a row a point.
+func (c *Curves) table(one *CurveChart) template.HTML {
+	dst := []byte(`<table><caption>` + template.HTMLEscapeString(axisName(one.Title, one.Unit)) + `</caption><thead><tr><th scope="col">`)
+	dst = append(dst, template.HTMLEscapeString(axisName(c.X.Name, c.X.Unit))...)
+	dst = append(dst, "</th>"...)
+	for _, k := range one.Curves {
+		dst = append(append(append(dst, `<th scope="col">`...), template.HTMLEscapeString(k.Name)...), "</th>"...)
+	}
+	dst = append(dst, "</tr></thead><tbody>\n"...)
+	for i, x := range c.X.Values {
+		dst = append(append(append(dst, `<tr><th scope="row">`...), fixed(x, c.X.Decimals)...), "</th>"...)
+		for _, k := range one.Curves {
+			dst = append(append(append(dst, "<td>"...), fixed(k.Values[i], 2)...), "</td>"...)
+		}
+		dst = append(dst, "</tr>\n"...)
+	}
+	return template.HTML(append(dst, "</tbody></table>"...))
+}
