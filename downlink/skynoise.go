@@ -92,7 +92,11 @@ func NewSkyNoise(path *propagation.Path, clear bool, around Surroundings) *SkyNo
 	p := path.Parts()
 	add(true, skyCosmic, "cosmic background", "2.7 K "+through)
 	add(true, skyGalactic, "galactic noise", "Rec. ITU-R P.372, the mean over the sky, "+through)
-	add(p.Gas, skyGas, "gas emission", "Rec. ITU-R P.618 §3, through cloud and rain")
+	gasSource := "Rec. ITU-R P.618 §3"
+	if !clear && (p.Cloud || p.Rain) {
+		gasSource += ", through cloud and rain"
+	}
+	add(p.Gas, skyGas, "gas emission", gasSource)
 	add(p.Cloud && !clear, skyCloud, "cloud emission", "Rec. ITU-R P.618 §3, through the rain")
 	add(p.Rain && !clear, skyRain, "rain emission", "Rec. ITU-R P.618 §3")
 	add(around.SpillOver != nil, skyGround, "ground", "spill-over times the ground's brightness")

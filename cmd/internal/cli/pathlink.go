@@ -58,7 +58,7 @@ func (k *skies) between(st *scenario.Station, t *downlink.Transmitter, a *statio
 		return nil, err
 	}
 	weather := downlink.NewWeather(out.path)
-	if clear {
+	if clear && !choice.ClearSky { // else the path itself is a clear sky's
 		weather = downlink.NewClearSky(out.path)
 	}
 	out.paths = append(out.paths, weather)
