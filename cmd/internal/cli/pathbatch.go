@@ -55,7 +55,7 @@ func runPathBatch(env *Env, o *pathOptions) error {
 	if b.file != "-" {
 		f, err := os.Open(b.file)
 		if err != nil {
-			return inputErrorf("--batch: %w", err)
+			return inputErrorf("--batch: %v; name a table in CSV that is there", err)
 		}
 		defer f.Close()
 		in = f

@@ -99,7 +99,7 @@ func TestPathBatchRefuses(t *testing.T) {
 			`line 4: column rain_rate_mm_h: "much" is not a finite number`, "line 5: 3 cells where the header has 4 columns", "with --keep-going the other rows are answered"}},
 		{[]string{"--model", "rain-specific", "--batch", "other.csv"}, []string{"missing: elevation_deg, polarization_tilt_deg, rain_rate_mm_h"}},
 		{[]string{"--model", "rain-specific", "--batch", "empty.csv"}, []string{"the table is empty"}},
-		{[]string{"--model", "rain-specific", "--batch", "none.csv"}, []string{"--batch: open none.csv"}},
+		{[]string{"--model", "rain-specific", "--batch", "none.csv"}, []string{"--batch: open none.csv: no such file or directory; name a table in CSV that is there"}},
 		{[]string{"--model", "rainy", "--batch", "bad.csv"}, []string{`model "rainy" is not known; give one of gas-specific, gas-slant`}},
 		{[]string{"--model", "rain-specific"}, []string{"--model goes with --batch FILE"}},
 		{[]string{"--batch", "bad.csv"}, []string{"--batch needs --model"}},
