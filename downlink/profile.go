@@ -36,7 +36,9 @@ type Profile struct {
 	RequiredMarginDB                   float64
 
 	Volume    Volume
-	SunInBeam []Interval // while the Sun's disc touches the half-power beam
+	SunInBeam []Interval // while the Sun is up and its disc touches the half-power beam
+
+	sunUpDeg []float64 // SunDeg while the Sun is up, else NaN
 }
 
 // Volume is what a pass brings down, in bytes, and while what.

@@ -3,10 +3,12 @@ package downlink
 import (
 	"math"
 	"slices"
+	"strings"
 	"testing"
 
 	"slantwise/downlink/propagation"
 	"slantwise/orbit/unit"
+	"slantwise/station"
 )
 
 func kaWeather(t testing.TB, frequency unit.Frequency) (*Weather, *propagation.Path) {
@@ -135,5 +137,43 @@ func BenchmarkWeatherSample(b *testing.B) {
 		if err := noise.Kelvins(&g, kelvins); err != nil {
 			b.Fatal(err)
 		}
+	}
+}
+
+// A measured G/T stays as it is in all weather where the gain is not known; where it
+// is, the weather's noise comes on top, and the notes say which.
+func TestMeasuredGOverTUnderWeather(t *testing.T) {
+	w, path := kaWeather(t, 26.25*unit.Gigahertz)
+	noise := NewWeatherNoise(path)
+	g := Geometry{Range: 1e6, Elevation: 20 * unit.Degree}
+	at := func(a *station.Antenna) (*Budget, string) {
+		l, err := NewLink(LinkSpec{Transmitter: Transmitter{Name: "beacon", Frequency: 26.25 * unit.Gigahertz, EIRP: levelp(10)},
+			Antenna: a, PathModels: []PathModel{w}, NoiseModels: []NoiseModel{noise}})
+		if err != nil {
+			t.Fatal(err)
+		}
+		b, err := l.At(g)
+		if err != nil {
+			t.Fatal(err)
+		}
+		var told []string
+		for _, n := range l.Notes() {
+			told = append(told, n.Text)
+		}
+		return b, strings.Join(told, "\n")
+	}
+	b, told := at(&station.Antenna{Name: "dish", Kind: station.Directive, GOverT: station.Constant(30), FeedLoss: 0.5})
+	if float64(b.GOverT) != 30 || !strings.Contains(told, "in all weather") || !strings.Contains(told, "noise of the weather, the Sun and the Moon is left out") {
+		t.Errorf("without gain: G/T %g dB/K, notes %s", b.GOverT, told)
+	}
+	b, told = at(&station.Antenna{Name: "dish", Kind: station.Directive, Gain: station.Constant(55), GOverT: station.Constant(30), FeedLoss: 0.5})
+	sky, err := path.Sky(g.Elevation)
+	if err != nil {
+		t.Fatal(err)
+	}
+	implied := math.Pow(10, (55-0.5-30)/10)
+	want := 55 - 0.5 - 10*math.Log10(implied+sky.Increase().Kelvins()*math.Pow(10, -0.05))
+	if math.Abs(float64(b.GOverT)-want) > 1e-9 || !strings.Contains(told, "and to it is added: weather above the clear sky") {
+		t.Errorf("with gain: G/T %.6f dB/K, want %.6f; notes %s", b.GOverT, want, told)
 	}
 }
