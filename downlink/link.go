@@ -160,9 +160,6 @@ func (l *Link) Mode() *modem.Resolved { return l.mode }
 // Frequency returns the carrier's frequency.
 func (l *Link) Frequency() unit.Frequency { return l.spec.Transmitter.Frequency }
 
-// RequiredMargin returns the margin that the transmitter's budget must keep.
-func (l *Link) RequiredMargin() unit.DB { return l.spec.Transmitter.RequiredMargin }
-
 // Doppler returns the shift of the received carrier, -f ṙ/c: first order, in Hz.
 func (l *Link) Doppler(rangeRate unit.Speed) unit.Frequency {
 	return unit.Frequency(-l.Frequency().Hertz() * float64(rangeRate) / unit.SpeedOfLight)

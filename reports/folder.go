@@ -15,10 +15,14 @@ import (
 // FolderError says that a folder cannot take a report because of what is in it.
 type FolderError struct {
 	Dir, Name string // Name: the entry that is in the way; empty: the folder as a whole
+	IsFile    bool   // Dir is no folder at all
 }
 
 // Error tells what is in the way and what to do.
 func (e *FolderError) Error() string {
+	if e.IsFile {
+		return e.Dir + ": this is a file; name a folder"
+	}
 	if e.Name == "" {
 		return fmt.Sprintf("%s: the folder is not empty and holds no report of ours (no %s); name another folder, nothing was changed there", e.Dir, contentsFile)
 	}
@@ -42,7 +46,7 @@ func Write(ctx context.Context, dir string, r *Report, o Options) (string, error
 	case err != nil:
 		return "", fmt.Errorf("report: %w", err)
 	case !info.IsDir():
-		return "", fmt.Errorf("report: %s is a file; name a folder", dir)
+		return "", &FolderError{Dir: dir, IsFile: true}
 	}
 	return index, writeOver(ctx, dir, r, o)
 }

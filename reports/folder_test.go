@@ -181,7 +181,8 @@ func TestWriteIntoFile(t *testing.T) {
 	if err := os.WriteFile(path, []byte("mine"), 0o600); err != nil {
 		t.Fatal(err)
 	}
-	if _, err := Write(context.Background(), path, goldenReport(), Options{}); err == nil || !strings.Contains(err.Error(), "is a file") {
+	var folder *FolderError
+	if _, err := Write(context.Background(), path, goldenReport(), Options{}); !errors.As(err, &folder) || !folder.IsFile {
 		t.Errorf("got %v, want that it is a file", err)
 	}
 }

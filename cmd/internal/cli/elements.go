@@ -68,9 +68,6 @@ now. --at names another instant.`,
 	fs.StringVar(&o.from, "from", "", "fetch the sets from this http or https `ADDRESS`")
 	addDuration(fs, &o.timeout, "timeout", 30*time.Second, "give up fetching after this time")
 	fs.StringVar(&o.into, "into", "", "write into this `FILE`, whole or not at all")
-	if err := cmd.RegisterFlagCompletionFunc("convert", cobra.FixedCompletions(elementKinds(), cobra.ShellCompDirectiveNoFileComp)); err != nil {
-		panic(err) // the flag was added just now
-	}
 	fs.BoolVar(&o.loss, "allow-loss", false, "let --into replace a file that holds more objects, newer sets or something else")
 	return cmd
 }

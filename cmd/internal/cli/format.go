@@ -36,8 +36,4 @@ func (f *format) Set(s string) error {
 func addFormat(cmd *cobra.Command, f *format) {
 	*f = formatTable
 	cmd.Flags().Var(f, "format", "table, csv or json")
-	words := []string{string(formatTable), string(formatCSV), string(formatJSON)}
-	if err := cmd.RegisterFlagCompletionFunc("format", cobra.FixedCompletions(words, cobra.ShellCompDirectiveNoFileComp)); err != nil {
-		panic(err) // the flag was added just now
-	}
 }

@@ -42,8 +42,8 @@ made; a file that is there is never replaced.`,
 
 func runNew(env *Env, file string) error {
 	ext := filepath.Ext(file)
-	if ext != ".yaml" && ext != ".yml" {
-		return inputErrorf("%s: new writes YAML; let the name end in .yaml", file)
+	if ext != ".yaml" && ext != ".yml" || filepath.Base(file) == ext {
+		return inputErrorf("%q: new writes YAML; give a name that ends in .yaml", file)
 	}
 	elementFile := strings.TrimSuffix(file, ext) + ".tle"
 	scenarioText, elementText, err := scenario.Start(filepath.Base(elementFile))

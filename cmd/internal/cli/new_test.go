@@ -1,6 +1,7 @@
 package cli
 
 import (
+	"fmt"
 	"os"
 	"path/filepath"
 	"strings"
@@ -39,9 +40,11 @@ func TestNewReplacesNothing(t *testing.T) {
 }
 
 func TestNewRefusesOtherNames(t *testing.T) {
-	code, _, errOut := invoke(t, "new", "scenario.toml")
-	if code != ExitInput || errOut != "slantwise: scenario.toml: new writes YAML; let the name end in .yaml\n" {
-		t.Errorf("code %d, stderr %q", code, errOut)
+	for _, name := range []string{"scenario.toml", "scenario", "plans/.yaml", ""} {
+		code, _, errOut := invoke(t, "new", name)
+		if code != ExitInput || errOut != fmt.Sprintf("slantwise: %q: new writes YAML; give a name that ends in .yaml\n", name) {
+			t.Errorf("%q: code %d, stderr %q", name, code, errOut)
+		}
 	}
 }
 

@@ -34,7 +34,7 @@ counts from true north; apparent elevation is that of the refracted ray (ITU-R P
 and is empty where no ray arrives. Doppler shift and received frequency are those of
 the transmitter's carrier, to first order, and empty where there is no transmitter.`,
 		Example: `  slantwise pointing --spacecraft "Wagtail 1" --station "Skerry Point" \
-    --from 2026-03-10T06:12:00Z --to 2026-03-10T06:24:00Z --step 500ms --format csv`,
+    --from 2026-09-15T00:50:00Z --to 2026-09-15T01:00:00Z --step 500ms --format csv`,
 		Args: noArgs,
 		RunE: func(cmd *cobra.Command, _ []string) error { return runPointing(cmd.Context(), env, o) },
 	}

@@ -48,7 +48,7 @@ of that report are replaced, and all others stay; a folder that holds something 
 is refused. Standard output names the file to open.`,
 		Example: `  slantwise report
   slantwise report --station "Skerry Point" --mode fast --into friday
-  slantwise report --one-file --spacecraft "Wagtail 1"   pages to be mailed`,
+  slantwise report --one-file --spacecraft "Wagtail 1"   # pages to be mailed`,
 		Args: noArgs,
 		RunE: func(cmd *cobra.Command, _ []string) error {
 			if o.into == "" {

@@ -86,6 +86,7 @@ func TestReportWrongInput(t *testing.T) {
 		"unknown mode":       {[]string{"--mode", "fsat"}, `did you mean "fast"`},
 		"workers":            {[]string{"--workers", "-1"}, `--workers: "-1" is not allowed`},
 		"empty folder name":  {[]string{"--into", ""}, "--into: the name of the folder is empty"},
+		"a file":             {[]string{"--into", filepath.Join(full, "mine.txt"), "--station", "Hoarfjord"}, "mine.txt: this is a file; name a folder"},
 		"foreign folder":     {[]string{"--into", full, "--station", "Hoarfjord"}, "holds no report of ours"},
 	} {
 		t.Run(name, func(t *testing.T) {

@@ -27,9 +27,9 @@ Results go to stdout, words for people to stderr. Exit codes:
   0  an answer, an empty one too
   1  a failure
   2  the input is wrong`,
-		Example: `  slantwise new                                  write a scenario to start from
-  slantwise check                                find all faults of ./slantwise.yaml
-  slantwise passes --format csv > passes.csv     all passes of the window`,
+		Example: `  slantwise new                                  # write a scenario to start from
+  slantwise check                                # find all faults of ./slantwise.yaml
+  slantwise passes --format csv > passes.csv     # all passes of the window`,
 		Args:          noArgs,
 		RunE:          func(cmd *cobra.Command, _ []string) error { return cmd.Help() },
 		SilenceUsage:  true,
@@ -53,6 +53,7 @@ Results go to stdout, words for people to stderr. Exit codes:
 		newPath(env),
 		newReport(env),
 	)
+	completeFlags(root, env)
 	refuseUnknownTopics(root)
 	markStart(root, env)
 	return root

@@ -74,6 +74,13 @@ func TestCompletion(t *testing.T) {
 	if _, out, _ := invoke(t, "__complete", "check", "--format", ""); !strings.Contains(out, "table\ncsv\njson") {
 		t.Errorf("--format completes to %q", out)
 	}
+	t.Chdir(t.TempDir()) // the demo
+	if _, out, _ := invoke(t, "__complete", "passes", "--station", ""); !strings.HasPrefix(out, "Skerry Point\nHoarfjord\n") {
+		t.Errorf("--station completes to %q", out)
+	}
+	if _, out, _ := invoke(t, "__complete", "budget", "--horizon", ""); !strings.HasPrefix(out, "geometric\napparent\n") {
+		t.Errorf("--horizon completes to %q", out)
+	}
 }
 
 func TestVersion(t *testing.T) {
