@@ -19,7 +19,6 @@ type pathPoint struct {
 	sample     propagation.Sample
 	ionosphere []downlink.Term
 	sky        propagation.Sky
-	apparent   unit.Angle
 	xpd        unit.DB
 }
 
