@@ -354,7 +354,7 @@ func TestFluxOfTheBudget(t *testing.T) {
 	if err != nil {
 		t.Fatal(err)
 	}
-	all, err := fluxdensity.Worst(circular(500), []fluxdensity.Emission{fluxdensity.FromTransmitter(&tx, link.Mode(), false)})
+	all, err := fluxdensity.Worst(circular(500), []fluxdensity.Emission{fluxdensity.FromTransmitter(&tx, link.Mode())})
 	if err != nil {
 		t.Fatal(err)
 	}

@@ -19,7 +19,7 @@ import (
 func share(t *testing.T, modulation string, shaping float64) float64 {
 	t.Helper()
 	m := &modem.Resolved{Mode: modem.Mode{Modulation: modulation}, Symbols: 1e6, Shaping: shaping, ShapingGiven: shaping > 0}
-	e := fluxdensity.FromTransmitter(&downlink.Transmitter{Frequency: 8200 * unit.Megahertz}, m, false)
+	e := fluxdensity.FromTransmitter(&downlink.Transmitter{Frequency: 8200 * unit.Megahertz}, m)
 	return e.Spectrum.Share(4000) * 1e6 / 4000 // peak density times the symbol rate, over the power
 }
 

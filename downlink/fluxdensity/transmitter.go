@@ -13,9 +13,10 @@ import (
 // all power may fall in one reference bandwidth. Losses of the spacecraft beyond the
 // line to its antenna (ExtraLosses) are not taken off: they may be smaller.
 //
-// A stated EIRP holds toward the station. With greatest it is taken as the greatest in
-// any direction, else the pattern counts as unknown.
-func FromTransmitter(t *downlink.Transmitter, mode *modem.Resolved, greatest bool) Emission {
+// A stated EIRP holds toward the station. Unless it is said to be the greatest in any
+// direction the pattern counts as unknown. A stated peak of the spectrum goes before
+// that of the mode.
+func FromTransmitter(t *downlink.Transmitter, mode *modem.Resolved) Emission {
 	e := Emission{Name: t.Name, Centre: t.Frequency, Attitude: t.Attitude}
 	switch {
 	case t.EIRP == nil:
@@ -24,16 +25,18 @@ func FromTransmitter(t *downlink.Transmitter, mode *modem.Resolved, greatest boo
 		e.Pattern = &pattern
 	default:
 		e.Power = *t.EIRP
-		if greatest {
+		if t.EIRPIsGreatest {
 			e.Pattern = &downlink.Pattern{Kind: downlink.Isotropic}
 		}
 	}
-	if mode == nil || !(mode.Symbols > 0) {
-		return e
+	if mode != nil && mode.Symbols > 0 {
+		e.Spectrum = spectrumOf(mode)
+		if e.Spectrum.Kind == LinearSpectrum && mode.ShapingGiven { // rectangular pulses have no width to speak of
+			e.Width = unit.Frequency(mode.Symbols.Hertz() * (1 + mode.Shaping))
+		}
 	}
-	e.Spectrum = spectrumOf(mode)
-	if e.Spectrum.Kind == LinearSpectrum && mode.ShapingGiven { // rectangular pulses have no width to speak of
-		e.Width = unit.Frequency(mode.Symbols.Hertz() * (1 + mode.Shaping))
+	if t.SpectrumPeak != nil {
+		e.Spectrum = Spectrum{Kind: StatedSpectrum, PeakPerHz: *t.SpectrumPeak}
 	}
 	return e
 }

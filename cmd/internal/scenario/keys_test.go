@@ -38,6 +38,7 @@ func TestEveryKeyIsRead(t *testing.T) {
 	for _, keys := range [][]string{
 		topKeys, windowKeys, earthKeys, spacecraftKeys, transmitterKeys, patternKeys, modeKeys, lossDissipativeKeys,
 		stationKeys, antennaKeys, noiseKeys, stageKeys, sizingKeys, requirementKeys, marginAtKeys,
+		licenceKeys, sectorKeys, hoursKeys, recorderKeys, recorderDataKeys, controlKeys, toleranceKeys, criterionKeys,
 	} {
 		for _, k := range keys {
 			if !found[k] && k != "end_utc" { // which stands in place of length_h

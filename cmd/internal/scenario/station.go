@@ -11,7 +11,7 @@ import (
 
 var stationKeys = []string{
 	"name", "latitude_deg", "longitude_deg", "altitude_m", "geoid_height_m", "time_zone", "minimum_elevation_deg",
-	"horizon_mask", "horizon_mask_file", "horizon_mask_kind", "merge_gap_s", "climate", "antennas",
+	"horizon_mask", "horizon_mask_file", "horizon_mask_kind", "merge_gap_s", "climate", "antennas", "uplink", "ground_line_bps",
 }
 
 func (r *reader) stations(top object) []Station {
@@ -28,7 +28,8 @@ func (r *reader) stations(top object) []Station {
 	out := make([]Station, len(items))
 	for i, o := range items {
 		o.about = "station " + called[i]
-		out[i] = Station{Site: o.site(called[i]), Antennas: o.antennas()}
+		out[i] = Station{Site: o.site(called[i]), Antennas: o.antennas(), Uplink: o.flag("uplink")}
+		out[i].Line = unit.BitRate(o.numberOr("ground_line_bps", bitsASecond, 0))
 		if c := o.child("climate", nil); c.node != nil {
 			o.assume("climate stands there and has no effect yet: the path has free-space loss alone")
 		}
