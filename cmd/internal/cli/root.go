@@ -51,6 +51,11 @@ Results go to stdout, words for people to stderr. Exit codes:
 		newPointing(env),
 		newBudget(env),
 		newReport(env),
+		newTuning(env),
+		newFlux(env),
+		newDesignControl(env),
+		newLicence(env),
+		newRecorder(env),
 	)
 	completeFlags(root, env)
 	refuseUnknownTopics(root)
