@@ -31,6 +31,9 @@ type Profile struct {
 	RequiredMarginDB                   float64
 
 	Volume Volume
+
+	limited   bool // Permit was called
+	permitted []span
 }
 
 // Volume is what a pass brings down, in bytes, and while what.

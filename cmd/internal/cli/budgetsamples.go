@@ -15,6 +15,7 @@ import (
 // budgetResult is what the command shows, in whatever format.
 type budgetResult struct {
 	*chosenLink
+	scenario *scenario.Scenario
 	elements *elements.Chosen // nil for a stated geometry
 	pass     *pass.Pass       // nil for one instant or a stated geometry
 	volume   *downlink.Volume // of the pass
@@ -23,7 +24,7 @@ type budgetResult struct {
 }
 
 func newBudgetResult(s *scenario.Scenario, c *chosenLink, flown bool) *budgetResult {
-	return &budgetResult{chosenLink: c, notes: c.notes(s, flown)}
+	return &budgetResult{chosenLink: c, scenario: s, notes: c.notes(s, flown)}
 }
 
 func (r *budgetResult) warn(format string, args ...any) {
@@ -107,6 +108,11 @@ func (r *budgetResult) fly(eph *orbit.Ephemeris, step time.Duration) error {
 	if err != nil {
 		return &InputError{Err: err}
 	}
+	told, err := keepToLicences(r.scenario, r.chosenLink, profile)
+	if err != nil {
+		return err
+	}
+	r.notes = append(r.notes, told...)
 	r.volume = &profile.Volume
 	for t := p.AOS; t.Before(p.LOS); t = t.Add(step) {
 		if err := r.addAt(eph, t); err != nil {

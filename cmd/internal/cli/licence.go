@@ -84,6 +84,41 @@ func licencesFor(s *scenario.Scenario, craft, transmitter string) []licence.Lice
 	return out
 }
 
+// keepToLicences keeps the volume of a pass to what the licences allow and returns what
+// they take or what of the transmitter they do not allow.
+func keepToLicences(s *scenario.Scenario, c *chosenLink, f *downlink.Profile) ([]downlink.Note, error) {
+	licences := licencesFor(s, c.spacecraft.Name, c.transmitter.Name)
+	if len(licences) == 0 {
+		return nil, nil
+	}
+	course := licence.Course{Start: f.Start, Seconds: f.Seconds, AzimuthDeg: f.AzimuthDeg, ElevationDeg: f.ElevationDeg}
+	kept, err := licence.Keep(licences, c.station.Site.Name, course, licence.Downlink)
+	if err != nil {
+		return nil, err
+	}
+	var spans []downlink.Interval
+	for _, k := range kept.Spans {
+		spans = append(spans, downlink.Interval{From: after(f.Start, k.From), To: after(f.Start, k.To)})
+	}
+	f.Permit(spans)
+	var out []downlink.Note
+	for _, b := range kept.Bindings {
+		out = append(out, downlink.Note{Kind: downlink.Warning, Text: b.String() + " of the pass; volumes are without it"})
+	}
+	told := map[string]bool{}
+	for _, l := range licences {
+		for _, e := range licensedEmissions(c.transmitter) {
+			for _, b := range l.Breaches(e) {
+				if !told[b.String()] {
+					told[b.String()] = true
+					out = append(out, downlink.Note{Kind: downlink.Warning, Text: b.String()})
+				}
+			}
+		}
+	}
+	return out, nil
+}
+
 // addBreaches holds a transmitter to its licences, once for all its modes: the rule is
 // broken if one mode breaks it.
 func addBreaches(out *sheet, s *scenario.Scenario, c *scenario.Spacecraft, t *downlink.Transmitter) {

@@ -34,11 +34,14 @@ func (p *reportPlan) load(ctx context.Context, i int) (*reports.Pass, error) {
 		out.Profile, out.Notes = geometryProfile(craft, site, page.AOS, page.LOS, step), p.pageNotes(page, nil)
 		return out, nil
 	}
-	best, err := page.bestMode(craft, step)
+	best, err := page.bestMode(p.scenario, craft, step)
 	if err != nil {
 		return nil, fmt.Errorf("%s over %s: %w", craft.Name, site.Site.Name, err)
 	}
 	out.Profile, out.Notes = best.profile, p.pageNotes(page, best.link)
+	for _, n := range best.licences {
+		out.Notes = append(out.Notes, reports.Note{Kind: noteKinds[n.Kind], About: "licence", Text: n.Text})
+	}
 	if out.Radio, err = reportRadio(craft, page, best); err != nil {
 		return nil, fmt.Errorf("%s over %s: %w", craft.Name, site.Site.Name, err)
 	}
