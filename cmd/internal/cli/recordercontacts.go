@@ -92,13 +92,15 @@ func recorderContact(s *scenario.Scenario, c *scenario.Spacecraft, st *scenario.
 		return nil, nil, err
 	}
 	begin := p.AOS.Sub(s.Window.Start).Seconds()
-	out := &recorder.Contact{Station: st.Site.Name, From: begin, To: p.LOS.Sub(s.Window.Start).Seconds(), Uplink: st.Uplink && len(uplink.Spans) > 0}
+	// LOS is rounded to the millisecond, which may lie beyond the window's end.
+	end := min(p.LOS.Sub(s.Window.Start).Seconds(), s.Window.Length().Seconds())
+	out := &recorder.Contact{Station: st.Site.Name, From: max(0, begin), To: end, Uplink: st.Uplink && len(uplink.Spans) > 0}
 	for _, closes := range best.Volume.Closes {
 		from, to := closes.From.Sub(p.AOS).Seconds(), closes.To.Sub(p.AOS).Seconds()
 		for _, k := range kept.Spans {
-			a, b := max(from, k.From)+c.Recorder.LockOn, min(to, k.To)
+			a, b := max(0, begin+max(from, k.From))+c.Recorder.LockOn, min(end, begin+min(to, k.To))
 			if b > a {
-				out.Steps = append(out.Steps, recorder.Step{From: begin + a, To: begin + b, BytesPerSecond: best.DataRate.BitsPerSecond() / 8, Loss: c.Recorder.FrameLoss})
+				out.Steps = append(out.Steps, recorder.Step{From: a, To: b, BytesPerSecond: best.DataRate.BitsPerSecond() / 8, Loss: c.Recorder.FrameLoss})
 			}
 		}
 	}
