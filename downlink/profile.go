@@ -39,6 +39,9 @@ type Profile struct {
 	SunInBeam []Interval // while the Sun is up and its disc touches the half-power beam
 
 	sunUpDeg []float64 // SunDeg while the Sun is up, else NaN
+
+	limited   bool // Permit was called
+	permitted []span
 }
 
 // Volume is what a pass brings down, in bytes, and while what.

@@ -17,6 +17,9 @@ type Transmitter struct {
 	Pattern  Pattern
 	EIRP     *unit.Level // toward the station, in place of the three above; nil: from them
 
+	EIRPIsGreatest bool     // EIRP is the greatest in any direction, not only toward the station
+	SpectrumPeak   *unit.DB // peak spectral density over the whole power, dB(1/Hz); nil: from the mode
+
 	Attitude            Attitude
 	AttitudeProbability float64 // of a tumbling spacecraft, in (0, 1): the gain exceeded with it counts; 0: DefaultAttitudeProbability
 

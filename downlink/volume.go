@@ -15,14 +15,13 @@ func (p *Profile) volume() Volume {
 	bits, seconds, begun := 0.0, 0.0, math.NaN()
 	end := func(at float64) {
 		if at > begun { // never where nothing has begun
-			seconds += at - begun
-			v.Closes = append(v.Closes, Interval{p.at(begun), p.at(at)})
+			seconds += p.addClosed(&v, begun, at)
 		}
 		begun = math.NaN()
 	}
 	for i := 1; i < len(p.Seconds); i++ {
 		a, b := p.Seconds[i-1], p.Seconds[i]
-		bits += (b - a) * (p.AchievableRateBps[i-1] + p.AchievableRateBps[i]) / 2
+		bits += p.achieved(a, b, p.AchievableRateBps[i-1], p.AchievableRateBps[i])
 		before, after := p.MarginOverDB[i-1], p.MarginOverDB[i]
 		usable := p.Usable[i-1] && p.Usable[i]
 		switch {
@@ -65,7 +64,7 @@ func (p *Profile) VolumeSoFar() (achievable, mode []float64) {
 	before, next := 0.0, 0 // seconds of the intervals that are over, and the first that is not
 	for i, s := range p.Seconds {
 		if i > 0 {
-			achievable[i] = achievable[i-1] + (s-p.Seconds[i-1])*(p.AchievableRateBps[i-1]+p.AchievableRateBps[i])/16
+			achievable[i] = achievable[i-1] + p.achieved(p.Seconds[i-1], s, p.AchievableRateBps[i-1], p.AchievableRateBps[i])/8
 		}
 		for next < len(closes) && closes[next].To.Sub(p.Start).Seconds() <= s {
 			before += closes[next].To.Sub(closes[next].From).Seconds()

@@ -124,8 +124,8 @@ func budgetOut(r *budgetResult) budgetJSON {
 	if r.mode != nil {
 		out.Mode = &r.mode.Name
 	}
-	out.Path.ClearSky, out.Path.Missing = r.choice.ClearSky, append([]string{}, r.sky.missing...)
-	if p := r.choice.Exceedance.Percents(); !r.choice.ClearSky {
+	out.Path.ClearSky, out.Path.Missing = r.scenario.Path.ClearSky, append([]string{}, r.sky.missing...)
+	if p := r.scenario.Path.Exceedance.Percents(); !r.scenario.Path.ClearSky {
 		out.Path.ExceededPercent = &p
 	}
 	if e := r.elements; e != nil {

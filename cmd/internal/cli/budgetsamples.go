@@ -17,7 +17,7 @@ import (
 // budgetResult is what the command shows, in whatever format.
 type budgetResult struct {
 	*chosenLink
-	choice   *scenario.PathChoice
+	scenario *scenario.Scenario
 	elements *elements.Chosen // nil for a stated geometry
 	pass     *pass.Pass       // nil for one instant or a stated geometry
 	volume   *downlink.Volume // of the pass
@@ -29,7 +29,7 @@ type budgetResult struct {
 }
 
 func newBudgetResult(s *scenario.Scenario, c *chosenLink, flown bool) *budgetResult {
-	return &budgetResult{chosenLink: c, choice: &s.Path, notes: c.notes(s, flown)}
+	return &budgetResult{chosenLink: c, scenario: s, notes: c.notes(s, flown)}
 }
 
 func (r *budgetResult) warn(format string, args ...any) {
@@ -46,7 +46,7 @@ func statedBudget(s *scenario.Scenario, c *chosenLink, o *statedOptions) (*budge
 	if o.offBoresightDeg == nil && c.transmitter.Attitude == downlink.AttitudeNadir {
 		r.notes = append(r.notes, downlink.Note{Kind: downlink.Assumption, Text: "off-boresight angle left out: worked out from range and elevation over a sphere through the site"})
 	}
-	if r.choice.Sun || r.choice.Moon {
+	if r.scenario.Path.Sun || r.scenario.Path.Moon {
 		r.notes = append(r.notes, downlink.Note{Kind: downlink.Assumption, Text: "a stated geometry has no time: neither the Sun nor the Moon is in the beam"})
 	}
 	return r, r.add(g)
@@ -139,11 +139,19 @@ func (r *budgetResult) fly(eph *orbit.Ephemeris, step time.Duration) error {
 	if err != nil {
 		return &InputError{Err: err}
 	}
+	told, err := keepToLicences(r.scenario, r.chosenLink, profile)
+	if err != nil {
+		return err
+	}
+	r.notes = append(r.notes, told...)
 	r.volume, r.sunInBeam = &profile.Volume, profile.SunInBeam
 	if r.clear != nil {
 		fine, err := r.clear.Profile(eph, p.AOS, p.LOS, volumeStep(p.Duration()))
 		if err != nil {
 			return &InputError{Err: err}
+		}
+		if _, err := keepToLicences(r.scenario, r.chosenLink, fine); err != nil { // told above
+			return err
 		}
 		r.clearVolume = &fine.Volume
 	}

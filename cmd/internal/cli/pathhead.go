@@ -22,10 +22,10 @@ func missingText(parts []string) string {
 
 // pathHead says at the head of a budget what its numbers of the path are.
 func (r *budgetResult) pathHead() []string {
-	if r.choice.ClearSky {
+	if r.scenario.Path.ClearSky {
 		return []string{"path: clear sky"}
 	}
-	head := []string{fmt.Sprintf("path: attenuation and noise exceeded for %g %% of an average year", r.choice.Exceedance.Percents())}
+	head := []string{fmt.Sprintf("path: attenuation and noise exceeded for %g %% of an average year", r.scenario.Path.Exceedance.Percents())}
 	if len(r.sky.missing) > 0 {
 		head = append(head, missingText(r.sky.missing))
 	}

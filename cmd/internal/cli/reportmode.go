@@ -3,20 +3,22 @@ package cli
 import (
 	"time"
 
+	"slantwise/cmd/internal/scenario"
 	"slantwise/downlink"
 	"slantwise/reports"
 )
 
 // modeOnPass is a mode's link along a pass, with what all modes of it bring.
 type modeOnPass struct {
-	link    *chosenLink
-	profile *downlink.Profile
-	results []reports.ModeResult
+	link     *chosenLink
+	profile  *downlink.Profile
+	results  []reports.ModeResult
+	licences []downlink.Note // what licences take from the pass
 }
 
 // bestMode flies the pass with every mode that competes and returns the one that
 // brings the most bytes; of equals, as where none closes, the first in the scenario.
-func (page *reportPage) bestMode(craft *reportCraft, step time.Duration) (*modeOnPass, error) {
+func (page *reportPage) bestMode(s *scenario.Scenario, craft *reportCraft, step time.Duration) (*modeOnPass, error) {
 	var best *modeOnPass
 	var results []reports.ModeResult
 	chosen := 0
@@ -26,11 +28,15 @@ func (page *reportPage) bestMode(craft *reportCraft, step time.Duration) (*modeO
 		if err != nil {
 			return nil, err
 		}
+		told, err := keepToLicences(s, c, f)
+		if err != nil {
+			return nil, err
+		}
 		if c.mode != nil {
 			results = append(results, modeResult(c, f))
 		}
 		if best == nil || f.Volume.ModeBytes > best.profile.Volume.ModeBytes {
-			best, chosen = &modeOnPass{link: c, profile: f}, i
+			best, chosen = &modeOnPass{link: c, profile: f, licences: told}, i
 		}
 	}
 	if len(results) > 0 {

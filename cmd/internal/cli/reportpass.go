@@ -7,6 +7,7 @@ import (
 	"path/filepath"
 	"time"
 
+	"slantwise/cmd/internal/scenario"
 	"slantwise/downlink"
 	"slantwise/reports"
 )
@@ -34,12 +35,15 @@ func (p *reportPlan) load(ctx context.Context, i int) (*reports.Pass, error) {
 		out.Profile, out.Notes = geometryProfile(craft, site, page.AOS, page.LOS, step), p.pageNotes(page, nil)
 		return out, nil
 	}
-	best, err := page.bestMode(craft, step)
+	best, err := page.bestMode(p.scenario, craft, step)
 	if err != nil {
 		return nil, fmt.Errorf("%s over %s: %w", craft.Name, site.Site.Name, err)
 	}
 	out.Profile, out.Notes = best.profile, p.pageNotes(page, best.link)
-	if out.Radio, err = reportRadio(craft, page, best); err != nil {
+	for _, n := range best.licences {
+		out.Notes = append(out.Notes, reports.Note{Kind: noteKinds[n.Kind], About: "licence", Text: n.Text})
+	}
+	if out.Radio, err = reportRadio(p.scenario, craft, page, best); err != nil {
 		return nil, fmt.Errorf("%s over %s: %w", craft.Name, site.Site.Name, err)
 	}
 	return out, nil
@@ -79,7 +83,7 @@ func geometryProfile(craft *reportCraft, site *reportSite, aos, los time.Time, s
 }
 
 // reportRadio works out what the page says of the link beside the profile.
-func reportRadio(craft *reportCraft, page *reportPage, best *modeOnPass) (*reports.Radio, error) {
+func reportRadio(s *scenario.Scenario, craft *reportCraft, page *reportPage, best *modeOnPass) (*reports.Radio, error) {
 	c, f := best.link, best.profile
 	r := &reports.Radio{Transmitter: c.transmitter.Name, Antenna: c.antenna.Name, Frequency: c.link.Frequency(), Modes: best.results}
 	if c.mode != nil {
@@ -103,7 +107,7 @@ func reportRadio(craft *reportCraft, page *reportPage, best *modeOnPass) (*repor
 		}
 		*at.into = *b
 	}
-	return r, addPath(r, craft, page, best)
+	return r, addPath(r, s, craft, page, best)
 }
 
 // extremes returns the least and the greatest margin of a profile; NaN and no time

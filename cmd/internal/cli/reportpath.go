@@ -3,15 +3,16 @@ package cli
 import (
 	"strings"
 
+	"slantwise/cmd/internal/scenario"
 	"slantwise/downlink"
 	"slantwise/reports"
 )
 
 // addPath adds to a page what its numbers of the path are, the contributors, and the
 // pass under a clear sky.
-func addPath(r *reports.Radio, craft *reportCraft, page *reportPage, best *modeOnPass) error {
+func addPath(r *reports.Radio, s *scenario.Scenario, craft *reportCraft, page *reportPage, best *modeOnPass) error {
 	c, f := best.link, best.profile
-	choice := page.path
+	choice := &s.Path
 	r.Path = reports.PathInfo{ClearSky: choice.ClearSky, ExceededPercent: choice.Exceedance.Percents(), Missing: c.sky.missing}
 	if len(c.sky.missing) > 0 {
 		r.Path.MissingText = missingText(c.sky.missing)
@@ -29,6 +30,9 @@ func addPath(r *reports.Radio, craft *reportCraft, page *reportPage, best *modeO
 	}
 	fine, err := c.clear.Profile(craft.ephemeris, page.AOS, page.LOS, sampleStep(page.Duration()))
 	if err != nil {
+		return err
+	}
+	if _, err := keepToLicences(s, c, fine); err != nil { // told with the profile of the weather
 		return err
 	}
 	r.ClearSky = fine

@@ -58,7 +58,6 @@ type reportPage struct {
 	pass.Found
 	link *reportLink // nil: geometry alone
 	many bool        // the pass has other pages
-	path *scenario.PathChoice
 }
 
 func planReport(ctx context.Context, s *scenario.Scenario, o reportOptions) (*reportPlan, error) {
@@ -217,7 +216,7 @@ func (p *reportPlan) search(ctx context.Context, workers int) error {
 	for f := range list.All() {
 		links := p.links[f.Spacecraft][f.Site].links
 		for l := range links {
-			p.pages = append(p.pages, reportPage{Found: f, link: &links[l], many: len(links) > 1, path: &p.scenario.Path})
+			p.pages = append(p.pages, reportPage{Found: f, link: &links[l], many: len(links) > 1})
 		}
 		if len(links) == 0 {
 			p.pages = append(p.pages, reportPage{Found: f})

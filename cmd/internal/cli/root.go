@@ -52,6 +52,11 @@ Results go to stdout, words for people to stderr. Exit codes:
 		newBudget(env),
 		newPath(env),
 		newReport(env),
+		newTuning(env),
+		newFlux(env),
+		newDesignControl(env),
+		newLicence(env),
+		newRecorder(env),
 	)
 	completeFlags(root, env)
 	refuseUnknownTopics(root)

@@ -9,7 +9,10 @@ import (
 
 	"slantwise/cmd/internal/scenario"
 	"slantwise/downlink"
+	"slantwise/downlink/licence"
 	"slantwise/downlink/propagation"
+	"slantwise/downlink/recorder"
+	"slantwise/downlink/tolerance"
 	"slantwise/orbit/elements"
 	"slantwise/orbit/unit"
 	"slantwise/station"
@@ -101,6 +104,26 @@ func TestEverything(t *testing.T) {
 		{"passive stage", dish.Noise.Chain[1], station.Stage{Name: "cable", Gain: -6}},
 		{"measurement", *measured.Measurement, station.Measurement{Date: "2026-02-14", Weather: "clear"}},
 		{"G/T elevation", *single.GOverTElevation, 30 * unit.Degree},
+		{"spectrum", *x.SpectrumPeak, unit.DB(-62.5)},
+		{"greatest EIRP", craft.Transmitters[1].EIRPIsGreatest, true},
+		{"recorder", *craft.Recorder, scenario.Recorder{
+			Capacity: 64e9, WhenFull: recorder.Overwrite, Copies: 2, Housekeeping: 0.05,
+			Acknowledge: recorder.Acknowledge{Every: 15, Delay: 0.5}, LockOn: 4, FrameLoss: 0.001,
+			Data: []scenario.RecorderData{
+				{Name: "telemetry", BytesPerSecond: 250, OnBoard: 1e6, OnBoardAge: 600},
+				{Name: "images", BytesPerOrbit: 1.5e9, AfterNode: 600, Lasting: 900},
+			},
+		}},
+		{"uplink", s.Stations[0].Uplink, true},
+		{"no uplink", s.Stations[1].Uplink, false},
+		{"ground line", s.Stations[0].Line, unit.BitRate(8e6)},
+		{"licensed stations", s.Licences[0].Stations, []string{"Skerry Point", "Reedmere"}},
+		{"least elevation to receive", *s.Licences[0].LeastToReceive, 5.5 * unit.Degree},
+		{"sector", s.Licences[0].Sectors[0], licence.Sector{From: 350 * unit.Degree, To: 20 * unit.Degree, Below: 12 * unit.Degree}},
+		{"hours", s.Licences[0].Hours[0], licence.Hours{From: 6*time.Hour + 30*time.Minute, To: 24 * time.Hour, Days: []time.Weekday{time.Monday, time.Friday}}},
+		{"licensed band", s.Licences[0].High, 8190 * unit.Megahertz},
+		{"tolerance", s.Control.Spreads[0], tolerance.Spread{Term: "free-space loss", Favourable: 0.1, Adverse: -0.2, Law: tolerance.Uniform, Source: "orbit"}},
+		{"criterion", s.Control.Criteria[0], tolerance.Criterion{Name: "own", Statement: tolerance.MeanLessSigmas, Sigmas: 3, Least: 1, Source: "project"}},
 		{"boresight", roof.Boresight, station.Direction{Azimuth: 10 * unit.Degree, Elevation: 90 * unit.Degree}},
 	} {
 		if !reflect.DeepEqual(tt.got, tt.want) {

@@ -44,7 +44,7 @@ func build(root *tree.Node, src *source, req Request) (*Scenario, error) {
 	return s, nil
 }
 
-var topKeys = []string{"window", "earth", "element_files", "element_choice", "horizon", "path", "spacecraft", "stations", "sizing"}
+var topKeys = []string{"window", "earth", "element_files", "element_choice", "horizon", "path", "spacecraft", "stations", "sizing", "licence", "design_control"}
 
 // scenario reads everything; the value is of use only where no fault was noted.
 func (r *reader) scenario(root *tree.Node) *Scenario {
@@ -58,6 +58,8 @@ func (r *reader) scenario(root *tree.Node) *Scenario {
 	s.Spacecraft = r.spacecraft(o, s)
 	s.Stations = r.stations(o, s.Path.Environment)
 	r.sizing(o, s)
+	s.Licences = r.licences(o, s)
+	s.Control = r.control(o)
 	return s
 }
 

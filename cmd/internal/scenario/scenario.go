@@ -4,9 +4,11 @@ import (
 	"time"
 
 	"slantwise/downlink"
+	"slantwise/downlink/licence"
 	"slantwise/downlink/propagation"
 	"slantwise/orbit"
 	"slantwise/orbit/elements"
+	"slantwise/orbit/unit"
 	"slantwise/station"
 )
 
@@ -29,6 +31,9 @@ type Scenario struct {
 	Spacecraft []Spacecraft     // in the order of the file
 	Stations   []Station        // in the order of the file
 
+	Licences []licence.Licence // what may be sent and received, in the order of the file
+	Control  Control           // tolerances and criteria; empty where none are given
+
 	Assumptions []Note // every default taken
 	Warnings    []Note // what may make an answer wrong: old elements, …
 }
@@ -46,6 +51,7 @@ type Spacecraft struct {
 	Candidates   []orbit.Elements       // all sets of the object, in the order of the files
 	Choice       elements.Choice        // how Elements was chosen
 	Transmitters []downlink.Transmitter // may be empty: passes and pointing only
+	Recorder     *Recorder              // nil: none is given
 }
 
 // ElementsAt returns the element set to be used at t by the scenario's choice, with
@@ -65,6 +71,8 @@ type Station struct {
 	// the scenario's path; nil: none is counted.
 	Environment *propagation.Environment
 	Antennas    []station.Antenna // may be empty: passes and pointing only
+	Uplink      bool              // it can acknowledge
+	Line        unit.BitRate      // of the ground line to the user; 0: data are passed on at once
 }
 
 // Note is a sentence that belongs to every answer from the scenario.

@@ -4,6 +4,7 @@ import (
 	"fmt"
 
 	"slantwise/cmd/internal/nearest"
+	"slantwise/cmd/internal/scenario/tree"
 )
 
 var (
@@ -68,6 +69,11 @@ func (o object) sizingNames(s *Scenario) {
 
 // knownName adds a fault where a name is none of the scenario's.
 func (o object) knownName(key, name string, known []string) {
+	o.knownNameAt(o.node, key, name, known)
+}
+
+// knownNameAt is knownName for a name that stands at a node of its own.
+func (o object) knownNameAt(at *tree.Node, key, name string, known []string) {
 	for _, k := range known {
 		if k == name {
 			return
@@ -77,5 +83,5 @@ func (o object) knownName(key, name string, known []string) {
 	if near := nearest.Names(name, known, 1); len(near) > 0 {
 		next = "did you mean " + quote(near[0]) + "?"
 	}
-	o.fault(o.node, key, "%s is not in the scenario", next, quote(name))
+	o.fault(at, key, "%s is not in the scenario", next, quote(name))
 }

@@ -12,7 +12,7 @@ import (
 
 var stationKeys = []string{
 	"name", "latitude_deg", "longitude_deg", "altitude_m", "geoid_height_m", "time_zone", "minimum_elevation_deg",
-	"horizon_mask", "horizon_mask_file", "horizon_mask_kind", "merge_gap_s", "climate", "antennas",
+	"horizon_mask", "horizon_mask_file", "horizon_mask_kind", "merge_gap_s", "climate", "antennas", "uplink", "ground_line_bps",
 }
 
 // stations reads the stations; around is the environment of those that state none.
@@ -30,7 +30,8 @@ func (r *reader) stations(top object, around *propagation.Environment) []Station
 	out := make([]Station, len(items))
 	for i, o := range items {
 		o.about = "station " + called[i]
-		out[i] = Station{Site: o.site(called[i])}
+		out[i] = Station{Site: o.site(called[i]), Uplink: o.flag("uplink")}
+		out[i].Line = unit.BitRate(o.numberOr("ground_line_bps", bitsASecond, 0))
 		out[i].Climate, out[i].Environment = o.climate(&out[i].Site)
 		if out[i].Environment == nil {
 			out[i].Environment = around

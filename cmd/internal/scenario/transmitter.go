@@ -9,6 +9,7 @@ var transmitterKeys = []string{
 	"name", "frequency_mhz", "power_w", "power_dbm", "power_dbw", "eirp_dbw", "line_loss_db", "antenna",
 	"attitude", "attitude_probability", "polarization", "axial_ratio_db", "polarization_tilt_deg", "modes",
 	"other_polarization_in_use", "implementation_loss_db", "required_margin_db", "extra_losses", "allotted_bandwidth_mhz", "highest_data_rate_bps",
+	"eirp_is_greatest", "spectrum_peak_db_hz",
 }
 
 // Ranges of radio keys; the far ends keep every sum of decibels finite.
@@ -47,6 +48,14 @@ func (r *reader) transmitter(o object, name string) downlink.Transmitter {
 	}
 	t.AllottedBandwidth = unit.Frequency(o.numberOr("allotted_bandwidth_mhz", above(0, 1e6, "MHz"), 0)) * unit.Megahertz
 	t.HighestRate = unit.BitRate(o.numberOr("highest_data_rate_bps", bitsASecond, 0))
+	t.EIRPIsGreatest = o.flag("eirp_is_greatest")
+	if t.EIRP == nil {
+		o.useless("without eirp_dbw", "eirp_is_greatest")
+	}
+	if v, ok := o.number("spectrum_peak_db_hz", span{low: -200, high: 0, unit: "dB(1/Hz)", next: "it is the peak density over the whole power"}); ok {
+		peak := unit.DB(v)
+		t.SpectrumPeak = &peak
+	}
 	return t
 }
 

@@ -1,0 +1,129 @@
+package cli
+
+import (
+	"bytes"
+	"encoding/json"
+	"fmt"
+	"math"
+)
+
+// sheet is a result of rows that goes out as a table, as CSV or as JSON, always with
+// the same columns. A cell is a string or a float64; NaN does not exist.
+type sheet struct {
+	name    string // of the list in JSON
+	columns []sheetColumn
+	rows    [][]any
+	notes   []string // what the answer takes for granted, for people and for JSON
+}
+
+type sheetColumn struct {
+	name     string // in CSV and JSON, with its unit
+	head     string // in a table
+	text     bool
+	decimals int
+}
+
+func wordsAs(name, head string) sheetColumn { return sheetColumn{name: name, head: head, text: true} }
+
+func numbersAs(name, head string, decimals int) sheetColumn {
+	return sheetColumn{name: name, head: head, decimals: decimals}
+}
+
+// cell returns the text of a cell, empty for a number that does not exist.
+func (s *sheet) cell(column int, v any) string {
+	if text, ok := v.(string); ok {
+		return text
+	}
+	return fixed(v.(float64), s.columns[column].decimals)
+}
+
+func (s *sheet) texts(row []any) []string {
+	out := make([]string, len(row))
+	for i, v := range row {
+		out[i] = s.cell(i, v)
+	}
+	return out
+}
+
+// write writes the sheet in a format. Notes follow a table on stderr, and stand in
+// JSON.
+func (s *sheet) write(env *Env, f format) error {
+	switch f {
+	case formatCSV:
+		return s.writeCSV(env)
+	case formatJSON:
+		return writeJSON(env.Out, s)
+	}
+	columns := make([]column, len(s.columns))
+	for i, c := range s.columns {
+		columns[i] = column{head: c.head, text: c.text}
+	}
+	rows := make([][]string, len(s.rows))
+	for i, r := range s.rows {
+		rows[i] = s.texts(r)
+	}
+	if err := writeTable(env.Out, env.outWidth(), columns, rows); err != nil {
+		return err
+	}
+	for _, n := range s.notes {
+		env.note("%s", printable(n))
+	}
+	return nil
+}
+
+func (s *sheet) writeCSV(env *Env) error {
+	header := make([]string, len(s.columns))
+	for i, c := range s.columns {
+		header[i] = c.name
+	}
+	return writeCSV(env.Out, header, func(yield func([]string) bool) {
+		for _, r := range s.rows {
+			if !yield(s.texts(r)) {
+				return
+			}
+		}
+	})
+}
+
+// MarshalJSON writes {"NAME": [rows], "notes": [texts]}, keys in the order of the
+// columns.
+func (s *sheet) MarshalJSON() ([]byte, error) {
+	var b bytes.Buffer
+	fmt.Fprintf(&b, "{%q:[", s.name)
+	for i, r := range s.rows {
+		if i > 0 {
+			b.WriteByte(',')
+		}
+		b.WriteByte('{')
+		for j, v := range r {
+			if j > 0 {
+				b.WriteByte(',')
+			}
+			text, err := s.jsonCell(j, v)
+			if err != nil {
+				return nil, err
+			}
+			fmt.Fprintf(&b, "%q:%s", s.columns[j].name, text)
+		}
+		b.WriteByte('}')
+	}
+	notes, err := json.Marshal(append([]string{}, s.notes...))
+	if err != nil {
+		return nil, err
+	}
+	fmt.Fprintf(&b, "],\"notes\":%s}", notes)
+	return b.Bytes(), nil
+}
+
+func (s *sheet) jsonCell(column int, v any) ([]byte, error) {
+	if x, ok := v.(float64); ok {
+		return num(x, s.columns[column].decimals).MarshalJSON()
+	}
+	if v == "" {
+		return []byte("null"), nil
+	}
+	return json.Marshal(v)
+}
+
+// none is a number that does not exist.
+var none = math.NaN()

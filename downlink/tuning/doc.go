@@ -1,0 +1,12 @@
+// Package tuning makes the table by which a receiver follows the Doppler shift of a
+// pass in steps: at which instant to set which frequency, so that what is left over
+// never exceeds a stated value.
+//
+// The table has the fewest steps that do so: each step is held as long as it can be,
+// and a shorter hold never lets a later step last longer. Frequencies are shifts from
+// the carrier as sent, in Hz; a receiver that is set to whole steps of its own loses up
+// to half of one, which is counted.
+//
+// Left out: the error of the orbit and of the oscillators; add them to what the
+// receiver must bear.
+package tuning
