@@ -51,6 +51,7 @@ Results go to stdout, words for people to stderr. Exit codes:
 		newPointing(env),
 		newBudget(env),
 		newReport(env),
+		newModes(env),
 	)
 	refuseUnknownTopics(root)
 	markStart(root, env)
