@@ -52,6 +52,7 @@ Results go to stdout, words for people to stderr. Exit codes:
 		newBudget(env),
 		newPath(env),
 		newReport(env),
+		newModes(env),
 		newTuning(env),
 		newFlux(env),
 		newDesignControl(env),
