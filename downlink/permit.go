@@ -13,6 +13,16 @@ func (p *Profile) Permit(spans []Interval) {
 	p.Volume = p.volume()
 }
 
+// Permits tells whether the link may be used some seconds after the start.
+func (p *Profile) Permits(seconds float64) bool {
+	for _, s := range p.permitted {
+		if seconds >= s.from && seconds <= s.to {
+			return true
+		}
+	}
+	return !p.limited
+}
+
 // span is seconds after the start of a profile.
 type span struct{ from, to float64 }
 

@@ -16,12 +16,12 @@ type Track struct {
 }
 
 // FromProfile returns the track of a profile. Samples at which the antenna does not
-// follow are not usable.
+// follow, and those in which the link may not be used, are not usable.
 func FromProfile(p *downlink.Profile) Track {
 	t := Track{Start: p.Start, Seconds: p.Seconds, CN0DBHz: make([]float64, len(p.CN0DBHz))}
 	copy(t.CN0DBHz, p.CN0DBHz)
 	for i, usable := range p.Usable {
-		if !usable {
+		if !usable || !p.Permits(p.Seconds[i]) {
 			t.CN0DBHz[i] = math.NaN()
 		}
 	}

@@ -11,6 +11,7 @@ import (
 	"slantwise/downlink"
 	"slantwise/downlink/licence"
 	"slantwise/downlink/propagation"
+	"slantwise/downlink/rateplan"
 	"slantwise/downlink/recorder"
 	"slantwise/downlink/tolerance"
 	"slantwise/orbit/elements"
@@ -113,6 +114,14 @@ func TestEverything(t *testing.T) {
 				{Name: "telemetry", BytesPerSecond: 250, OnBoard: 1e6, OnBoardAge: 600},
 				{Name: "images", BytesPerOrbit: 1.5e9, AfterNode: 600, Lasting: 900},
 			},
+		}},
+		{"rate plan", craft.RatePlan, scenario.RatePlan{
+			Choice: scenario.Changing, Low: 0.5e6, High: 2e6, Steps: 8,
+			Rules: rateplan.Rules{Changes: 6, LeastStay: 20 * time.Second, Relock: 4 * time.Second, Guard: 0.5, GuardTime: 2 * time.Second, Silent: true},
+		}},
+		{"rate plan with a list", s.Spacecraft[1].RatePlan, scenario.RatePlan{
+			Choice: scenario.OneForAll, Rates: []unit.Frequency{9600, 19200}, Steps: scenario.DefaultSymbolRateSteps,
+			Rules: rateplan.Rules{Relock: 1500 * time.Millisecond},
 		}},
 		{"uplink", s.Stations[0].Uplink, true},
 		{"no uplink", s.Stations[1].Uplink, false},

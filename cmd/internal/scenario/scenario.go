@@ -52,6 +52,7 @@ type Spacecraft struct {
 	Choice       elements.Choice        // how Elements was chosen
 	Transmitters []downlink.Transmitter // may be empty: passes and pointing only
 	Recorder     *Recorder              // nil: none is given
+	RatePlan     RatePlan               // one mode a pass where none is given
 }
 
 // ElementsAt returns the element set to be used at t by the scenario's choice, with

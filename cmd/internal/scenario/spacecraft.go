@@ -9,7 +9,7 @@ import (
 	"slantwise/orbit/elements"
 )
 
-var spacecraftKeys = []string{"name", "element_set", "transmitters", "recorder"}
+var spacecraftKeys = []string{"name", "element_set", "transmitters", "recorder", "rate_plan"}
 
 // spacecraft reads the spacecraft, or takes every object of the element files where
 // the key is left out.
@@ -25,6 +25,7 @@ func (r *reader) spacecraft(top object, s *Scenario) []Spacecraft {
 		o.about = "spacecraft " + called[i]
 		out[i] = Spacecraft{Name: called[i], Choice: s.Choice, Transmitters: r.transmitters(o)}
 		out[i].Recorder = o.recorder()
+		out[i].RatePlan = o.ratePlan(&out[i])
 		if r.need != NeedOrbits {
 			o.elementSetName()
 			continue
