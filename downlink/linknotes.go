@@ -201,7 +201,7 @@ func (l *Link) noteBandwidth() {
 	if !m.ShapingGiven {
 		l.note(Default, "roll-off left out: %g", modem.DefaultRollOff)
 	}
-	if need := m.Symbols.Hertz() * (1 + m.Shaping); need > b.Hertz() {
+	if need := m.Bandwidth.Hertz(); need > b.Hertz() {
 		l.note(Warning, "mode %q takes %.4g MHz, more than the allotted %.4g MHz", m.Name, need/1e6, b.Megahertz())
 	}
 }

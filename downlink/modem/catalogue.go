@@ -1,130 +1,149 @@
 package modem
 
 import (
-	_ "embed" // the tables below
-	"encoding/csv"
 	"fmt"
-	"math"
 	"slices"
-	"strconv"
-	"strings"
 	"sync"
-
-	"slantwise/orbit/unit"
 )
 
-//go:embed thresholds.csv
-var thresholdsCSV string
-
-//go:embed modulations.csv
-var modulationsCSV string
-
-// Entry is a row of the catalogue: what one coding requires with some modulations
-// for one error rate.
-type Entry struct {
-	Coding       string
-	Modulations  []string
-	CodeRate     float64 // information bits to sent bits, (0, 1]
-	CodeRateText string  // as a fraction, "223/510"
-	RequiredEbN0 unit.DB // per information bit, without implementation loss
-	ErrorRate    float64
-	Metric       string // "bit error rate", "codeword error rate", ...
-	Provenance   string // "seen-primary", "seen-secondary", "computed"
-	Source       string
+// Catalogue is a list of modulations and of codings upon them. It does not change once
+// it is made and may be shared between goroutines.
+type Catalogue struct {
+	modulations []Modulation
+	rows        []Row
+	index       map[[2]string]int // of rows, by modulation and coding
 }
 
-// Modulation is a modulation that the catalogue knows.
-type Modulation struct {
-	Name          string
-	BitsPerSymbol int
-	What          string
-}
-
-// Catalogue lists the entries in their order: for a coding and modulation the first
-// is the one that counts when no error rate is named.
-func Catalogue() []Entry { return slices.Clone(tables().entries) }
+// Rows lists the rows: first by coding in the order of the tables, then by modulation.
+func (c *Catalogue) Rows() []Row { return slices.Clone(c.rows) }
 
 // Modulations lists the modulations.
-func Modulations() []Modulation { return slices.Clone(tables().modulations) }
+func (c *Catalogue) Modulations() []Modulation { return slices.Clone(c.modulations) }
 
-type catalogue struct {
-	entries     []Entry
-	modulations []Modulation
+// With returns the catalogue with further rows after its own. A row that is there
+// already is an error, as two thresholds for one name would hide one another.
+func (c *Catalogue) With(rows ...Row) (*Catalogue, error) {
+	out := newCatalogue(slices.Clone(c.modulations), slices.Clone(c.rows))
+	for _, r := range rows {
+		if err := r.check(); err != nil {
+			return nil, err
+		}
+		key := [2]string{r.Modulation.Name, r.Coding.Name}
+		if _, there := out.index[key]; there {
+			return nil, fmt.Errorf("%s: the row is in the catalogue already; give the coding another name", r.Name())
+		}
+		known, err := out.FindModulation(r.Modulation.Name)
+		if err != nil {
+			out.modulations = append(out.modulations, r.Modulation)
+		} else if known != r.Modulation {
+			return nil, fmt.Errorf("%s: the modulation %q is in the catalogue with %d bits a symbol and %g Hz/baud of width; give another name", r.Name(), known.Name, known.BitsPerSymbol, known.Width)
+		}
+		out.index[key] = len(out.rows)
+		out.rows = append(out.rows, r)
+	}
+	return out, nil
 }
 
-// tables reads the embedded tables once. A fault in them is one of the program: the
-// tests read them too.
-var tables = sync.OnceValue(func() catalogue {
-	entries, err := readEntries(thresholdsCSV)
-	if err != nil {
-		panic("modem: thresholds.csv: " + err.Error())
+func newCatalogue(modulations []Modulation, rows []Row) *Catalogue {
+	c := &Catalogue{modulations: modulations, rows: rows, index: map[[2]string]int{}}
+	for i := range rows {
+		c.index[[2]string{rows[i].Modulation.Name, rows[i].Coding.Name}] = i
 	}
-	modulations, err := readModulations(modulationsCSV)
+	return c
+}
+
+// Standard returns the embedded catalogue. A fault in its tables is one of the program:
+// the tests read them too.
+var Standard = sync.OnceValue(func() *Catalogue {
+	c, err := assemble(modulationsCSV, codingsCSV, thresholdsCSV, curvesCSV, spectraCSV)
 	if err != nil {
-		panic("modem: modulations.csv: " + err.Error())
+		panic("modem: " + err.Error())
 	}
-	return catalogue{entries, modulations}
+	return c
 })
 
-// readRows returns the rows below the header and the row of units.
-func readRows(text string, header string) ([][]string, error) {
-	rows, err := csv.NewReader(strings.NewReader(text)).ReadAll()
+// assemble puts the tables together: a row for each coding and modulation that carries
+// it, with its formulas, curves and thresholds.
+func assemble(modulations, codings, thresholds, curves, spectra string) (*Catalogue, error) {
+	mods, err := readModulations(modulations)
 	if err != nil {
-		return nil, err
+		return nil, fmt.Errorf("modulations: %w", err)
 	}
-	if len(rows) < 3 || strings.Join(rows[0], ",") != header {
-		return nil, fmt.Errorf("the header is not %s with a row of units and rows below it", header)
-	}
-	return rows[2:], nil
-}
-
-func readEntries(text string) ([]Entry, error) {
-	rows, err := readRows(text, "coding,modulations,code_rate,required_eb_n0,error_rate,metric,provenance,source")
+	list, err := readCodings(codings)
 	if err != nil {
-		return nil, err
+		return nil, fmt.Errorf("codings: %w", err)
 	}
-	out := make([]Entry, 0, len(rows))
-	for i, r := range rows {
-		e := Entry{Coding: r[0], Modulations: strings.Fields(r[1]), CodeRateText: r[2], Metric: r[5], Provenance: r[6], Source: r[7]}
-		need, errNeed := strconv.ParseFloat(r[3], 64)
-		e.RequiredEbN0 = unit.DB(need)
-		var errRate, errCode error
-		e.ErrorRate, errRate = strconv.ParseFloat(r[4], 64)
-		e.CodeRate, errCode = fraction(r[2])
-		if errNeed != nil || errRate != nil || errCode != nil || !(math.Abs(need) <= 100) || !(e.ErrorRate > 0 && e.ErrorRate < 1) || !(e.CodeRate > 0 && e.CodeRate <= 1) {
-			return nil, fmt.Errorf("row %d (%s): code rate %q, Eb/N0 %q or error rate %q is no number in range", i+3, r[0], r[2], r[3], r[4])
+	needs, err := readThresholds(thresholds)
+	if err != nil {
+		return nil, fmt.Errorf("thresholds: %w", err)
+	}
+	points, err := readCurves(curves)
+	if err != nil {
+		return nil, fmt.Errorf("curves: %w", err)
+	}
+	bounds, err := readSpectra(spectra)
+	if err != nil {
+		return nil, fmt.Errorf("spectra: %w", err)
+	}
+	c := newCatalogue(mods, nil)
+	for _, coding := range list {
+		for _, name := range coding.modulations {
+			m, err := c.FindModulation(name)
+			if err != nil {
+				return nil, err
+			}
+			r := Row{Modulation: m, Coding: coding.Coding}
+			r.fill(needs, points, bounds)
+			if err := r.check(); err != nil {
+				return nil, err
+			}
+			c.index[[2]string{name, coding.Name}] = len(c.rows)
+			c.rows = append(c.rows, r)
 		}
-		out = append(out, e)
 	}
-	return out, nil
+	return c, nil
 }
 
-func readModulations(text string) ([]Modulation, error) {
-	rows, err := readRows(text, "modulation,bits_per_symbol,what")
-	if err != nil {
-		return nil, err
-	}
-	out := make([]Modulation, 0, len(rows))
-	for i, r := range rows {
-		bits, err := strconv.Atoi(r[1])
-		if err != nil || bits < 1 {
-			return nil, fmt.Errorf("row %d (%s): %q bits a symbol is not a whole number above 0", i+3, r[0], r[1])
+// fill gives a row its formulas, curves and thresholds. Without a threshold of its own
+// it gets that of its first curve.
+func (r *Row) fill(needs []thresholdRow, points []curveRow, bounds map[string]*unionBound) {
+	r.Curves = append(r.Curves, r.formulas(bounds)...)
+	for _, p := range points {
+		if p.coding == r.Coding.Name && slices.Contains(p.modulations, r.Modulation.Name) {
+			r.Curves = append(r.Curves, p.Curve)
 		}
-		out = append(out, Modulation{r[0], bits, r[2]})
 	}
-	return out, nil
+	for _, n := range needs {
+		if n.coding == r.Coding.Name && slices.Contains(n.modulations, r.Modulation.Name) {
+			t := n.Threshold
+			if n.perSymbol {
+				t.EbN0 -= r.EsN0(0)
+			}
+			r.Thresholds = append(r.Thresholds, t)
+		}
+	}
+	r.Curves = append(r.Curves, r.coded(points)...)
+	if len(r.Thresholds) > 0 || len(r.Curves) == 0 {
+		return
+	}
+	c := &r.Curves[0]
+	if need, err := c.EbN0(c.usual()); err == nil {
+		r.Thresholds = []Threshold{{need, c.usual(), c.Metric, c.Provenance, c.Source}}
+	}
 }
 
-// fraction reads "223/510" or "1".
-func fraction(s string) (float64, error) {
-	above, below, divided := strings.Cut(s, "/")
-	a, err := strconv.Atoi(above)
-	if err != nil || !divided {
-		return float64(a), err
+func (r *Row) check() error {
+	if r.Modulation.Name == "" || r.Coding.Name == "" {
+		return fmt.Errorf("a row must name its modulation and its coding; they are %q and %q", r.Modulation.Name, r.Coding.Name)
 	}
-	b, err := strconv.Atoi(below)
-	if err != nil || b <= 0 {
-		return 0, fmt.Errorf("%q is not a fraction", s)
+	if len(r.Thresholds) == 0 {
+		return fmt.Errorf("%s: no threshold is known", r.Name())
 	}
-	return float64(a) / float64(b), nil
+	if !(r.Coding.Rate > 0 && r.Coding.Rate <= 1) || r.Modulation.BitsPerSymbol < 1 || r.Modulation.BitsPerSymbol > 16 {
+		return fmt.Errorf("%s: a code rate of %g at %d bits a symbol is not allowed; it must be greater than 0 and at most 1, at 1 to 16 bits", r.Name(), r.Coding.Rate, r.Modulation.BitsPerSymbol)
+	}
+	if err := r.Coding.Frame.check(); err != nil {
+		return fmt.Errorf("%s: %w", r.Name(), err)
+	}
+	return nil
 }

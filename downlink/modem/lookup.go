@@ -4,7 +4,6 @@ import (
 	"cmp"
 	"fmt"
 	"slices"
-	"strconv"
 	"strings"
 
 	"github.com/agnivade/levenshtein"
@@ -13,7 +12,7 @@ import (
 // UnknownError says that the catalogue lacks a name and lists the nearest that it
 // has.
 type UnknownError struct {
-	What    string // "modulation", "coding with qpsk", "error rate of none with qpsk"
+	What    string // "modulation", "coding with qpsk"
 	Name    string
 	Nearest []string
 }
@@ -23,46 +22,38 @@ func (e *UnknownError) Error() string {
 	return fmt.Sprintf("%s: %q is not in the catalogue; the nearest are %s", e.What, e.Name, strings.Join(e.Nearest, ", "))
 }
 
+// FindModulation returns the standard modulation of a name, or an *UnknownError.
+func FindModulation(name string) (Modulation, error) { return Standard().FindModulation(name) }
+
 // FindModulation returns the modulation of a name, or an *UnknownError.
-func FindModulation(name string) (Modulation, error) {
-	all := tables().modulations
-	var names []string
-	for _, m := range all {
+func (c *Catalogue) FindModulation(name string) (Modulation, error) {
+	names := make([]string, len(c.modulations))
+	for i, m := range c.modulations {
 		if m.Name == name {
 			return m, nil
 		}
-		names = append(names, m.Name)
+		names[i] = m.Name
 	}
 	return Modulation{}, &UnknownError{"modulation", name, nearest(name, names)}
 }
 
-// Find returns the catalogue's entry for a modulation and coding at an error rate; 0
-// takes the first entry. What it lacks is an *UnknownError.
-func Find(modulation, coding string, errorRate float64) (Entry, error) {
-	if _, err := FindModulation(modulation); err != nil {
-		return Entry{}, err
+// Find returns the row of a modulation and coding, or an *UnknownError. The row is
+// shared: it must not be changed.
+func (c *Catalogue) Find(modulation, coding string) (*Row, error) {
+	if i, ok := c.index[[2]string{modulation, coding}]; ok {
+		return &c.rows[i], nil
 	}
-	var codings, rates []string
-	for _, e := range tables().entries {
-		if !slices.Contains(e.Modulations, modulation) {
-			continue
-		}
-		codings = append(codings, e.Coding)
-		if e.Coding != coding {
-			continue
-		}
-		if errorRate == 0 || e.ErrorRate == errorRate {
-			return e, nil
-		}
-		rates = append(rates, formatRate(e.ErrorRate))
+	if _, err := c.FindModulation(modulation); err != nil {
+		return nil, err
 	}
-	if len(rates) > 0 {
-		return Entry{}, &UnknownError{"error rate of " + coding + " with " + modulation, formatRate(errorRate), rates}
+	var codings []string
+	for i := range c.rows {
+		if c.rows[i].Modulation.Name == modulation {
+			codings = append(codings, c.rows[i].Coding.Name)
+		}
 	}
-	return Entry{}, &UnknownError{"coding with " + modulation, coding, nearest(coding, codings)}
+	return nil, &UnknownError{"coding with " + modulation, coding, nearest(coding, codings)}
 }
-
-func formatRate(r float64) string { return strconv.FormatFloat(r, 'e', -1, 64) }
 
 // nearest returns up to four of the names by their distance to name.
 func nearest(name string, names []string) []string {

@@ -3,6 +3,7 @@ package modem
 import (
 	"errors"
 	"fmt"
+	"math"
 
 	"slantwise/orbit/unit"
 )
@@ -15,14 +16,19 @@ type Resolved struct {
 	RequiredSource  string
 	ErrorRateText   string         // "1e-05 bit error rate"; empty where the threshold is the mode's own
 	BitsPerSymbol   int            // of the modulation
-	CodeRate        float64        // 0: not known
+	CodeRate        float64        // information bits to sent bits, charged headers and pilots taken off; 0: not known
 	InformationRate unit.BitRate   // 0: the mode gives no speed
+	NetRate         unit.BitRate   // of the user's bits, after sync markers and frame headers; the information rate where no frame is known
 	Symbols         unit.Frequency // a second; 0: not known
+	Bandwidth       unit.Frequency // occupied; 0: not known
 	Shaping         float64        // the roll-off that counts
 	ShapingGiven    bool
+	Row             *Row // of the catalogue; nil: the catalogue lacks the coding
+
+	width float64 // Hz of band for each symbol a second
 }
 
-// Resolve looks a mode up in the catalogue. The information rate is the data rate,
+// Resolve looks a mode up in its catalogue. The information rate is the data rate,
 // or symbol rate × bits a symbol × code rate.
 //
 // A coding that the catalogue lacks is accepted with RequiredEbN0, when the code rate
@@ -34,11 +40,11 @@ func (m Mode) Resolve() (Resolved, error) {
 	if m.RollOff != nil {
 		r.Shaping, r.ShapingGiven = *m.RollOff, true
 	}
-	modulation, err := FindModulation(m.Modulation)
+	modulation, err := m.catalogue().FindModulation(m.Modulation)
 	if err != nil {
 		return Resolved{}, errors.Join(append(faults, err)...)
 	}
-	r.BitsPerSymbol = modulation.BitsPerSymbol
+	r.BitsPerSymbol, r.width = modulation.BitsPerSymbol, modulation.WidthFactor(r.Shaping)
 	if err := r.lookUp(); err != nil {
 		faults = append(faults, err)
 	}
@@ -51,7 +57,7 @@ func (m Mode) Resolve() (Resolved, error) {
 
 // lookUp fills the threshold and the code rate.
 func (r *Resolved) lookUp() error {
-	e, err := Find(r.Modulation, r.Coding, r.ErrorRate)
+	row, err := r.catalogue().Find(r.Modulation, r.Coding)
 	if err != nil {
 		if r.RequiredEbN0 == nil {
 			return err
@@ -62,15 +68,24 @@ func (r *Resolved) lookUp() error {
 		r.Required, r.RequiredSource = *r.RequiredEbN0, "scenario"
 		return nil
 	}
+	r.Row = row
+	if r.Pilots && !row.Coding.Frame.hasPilots() {
+		return fmt.Errorf("coding %q has no pilots; leave them out", r.Coding)
+	}
 	if r.CodeRate == 0 {
-		r.CodeRate = e.CodeRate
+		r.CodeRate = row.efficiencyWith(r.Pilots) / float64(r.BitsPerSymbol)
 	}
 	if r.RequiredEbN0 != nil {
 		r.Required, r.RequiredSource = *r.RequiredEbN0, "scenario"
 		return nil
 	}
-	r.Required, r.RequiredSource = e.RequiredEbN0, e.Source
-	r.ErrorRateText = formatRate(e.ErrorRate) + " " + e.Metric
+	need, err := row.At("", r.ErrorRate)
+	if err != nil {
+		return err
+	}
+	// Pilots take energy from the information; a symbol needs what it needs.
+	pilots := 10 * math.Log10(row.SpectralEfficiency()/row.efficiencyWith(r.Pilots))
+	r.Required, r.RequiredSource, r.ErrorRateText = need.EbN0+unit.DB(pilots), need.Source, need.String()
 	return nil
 }
 
@@ -83,39 +98,18 @@ func (r *Resolved) setRates() {
 	case r.DataRate > 0 && perSymbol > 0:
 		r.Symbols = unit.Frequency(r.DataRate.BitsPerSecond() / perSymbol)
 	}
+	r.NetRate = r.InformationRate
+	if r.Row != nil {
+		r.NetRate *= unit.BitRate(r.Row.NetEfficiency(r.Pilots) / r.Row.efficiencyWith(r.Pilots))
+	}
+	r.Bandwidth = unit.Frequency(r.Symbols.Hertz() * r.width)
 }
 
-// BandwidthRate returns the information rate that fits into a bandwidth, b/(1+roll-off)
-// symbols a second; ok is false when the code rate is not known.
+// BandwidthRate returns the information rate that fits into a bandwidth; ok is false
+// when the code rate is not known.
 func (r *Resolved) BandwidthRate(b unit.Frequency) (rate unit.BitRate, ok bool) {
 	if r.CodeRate == 0 {
 		return 0, false
 	}
-	return unit.BitRate(b.Hertz() / (1 + r.Shaping) * float64(r.BitsPerSymbol) * r.CodeRate), true
-}
-
-// faults returns what is wrong with the mode's own numbers.
-func (m Mode) faults() []error {
-	var out []error
-	check := func(what string, v float64, u, allowed string, fine bool) {
-		if !fine {
-			out = append(out, &unit.RangeError{Quantity: what, Value: v, Unit: u, Allowed: allowed})
-		}
-	}
-	positive := func(v float64) bool { return v >= 0 && v <= 1e15 }
-	check("data rate", float64(m.DataRate), "bit/s", "greater than 0 and at most 1e15 bit/s", positive(float64(m.DataRate)))
-	check("symbol rate", float64(m.SymbolRate), "baud", "greater than 0 and at most 1e15 baud", positive(float64(m.SymbolRate)))
-	check("code rate", m.CodeRate, "", "greater than 0 and at most 1", m.CodeRate >= 0 && m.CodeRate <= 1)
-	check("error rate", m.ErrorRate, "", "greater than 0 and less than 1", m.ErrorRate >= 0 && m.ErrorRate < 1)
-	if m.RequiredEbN0 != nil {
-		v := float64(*m.RequiredEbN0)
-		check("required Eb/N0", v, "dB", "-20 to 100 dB", v >= -20 && v <= 100)
-	}
-	if m.RollOff != nil {
-		check("roll-off", *m.RollOff, "", "0 to 1", *m.RollOff >= 0 && *m.RollOff <= 1)
-	}
-	if m.DataRate > 0 && m.SymbolRate > 0 {
-		out = append(out, errors.New("data rate and symbol rate are both given; give one"))
-	}
-	return out
+	return unit.BitRate(b.Hertz() / r.width * float64(r.BitsPerSymbol) * r.CodeRate), true
 }
