@@ -52,6 +52,7 @@ Results go to stdout, words for people to stderr. Exit codes:
 		newBudget(env),
 		newPath(env),
 		newReport(env),
+		newModes(env),
 	)
 	completeFlags(root, env)
 	refuseUnknownTopics(root)

@@ -2,8 +2,8 @@
 // curve no formula gives: convolutional codes under Reed-Solomon codes, and frequency
 // modulation behind a limiter and discriminator.
 //
-// It feeds curves.csv of package modem through the command in run, and the tests,
-// which measure some of the committed points again. The planner itself does not
+// Its tests measure the simulated curves of package modem (curves.csv) with -measure,
+// and some of the committed points again in every run. The planner itself does not
 // use it. The same seed gives the same count.
 package trial
 
