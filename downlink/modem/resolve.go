@@ -73,7 +73,7 @@ func (r *Resolved) lookUp() error {
 		return fmt.Errorf("coding %q has no pilots; leave them out", r.Coding)
 	}
 	if r.CodeRate == 0 {
-		r.CodeRate = row.efficiencyWith(r.Pilots) / float64(r.BitsPerSymbol)
+		r.CodeRate = row.Efficiency(r.Pilots) / float64(r.BitsPerSymbol)
 	}
 	if r.RequiredEbN0 != nil {
 		r.Required, r.RequiredSource = *r.RequiredEbN0, "scenario"
@@ -84,7 +84,7 @@ func (r *Resolved) lookUp() error {
 		return err
 	}
 	// Pilots take energy from the information; a symbol needs what it needs.
-	pilots := 10 * math.Log10(row.SpectralEfficiency()/row.efficiencyWith(r.Pilots))
+	pilots := 10 * math.Log10(row.SpectralEfficiency()/row.Efficiency(r.Pilots))
 	r.Required, r.RequiredSource, r.ErrorRateText = need.EbN0+unit.DB(pilots), need.Source, need.String()
 	return nil
 }
@@ -100,7 +100,7 @@ func (r *Resolved) setRates() {
 	}
 	r.NetRate = r.InformationRate
 	if r.Row != nil {
-		r.NetRate *= unit.BitRate(r.Row.NetEfficiency(r.Pilots) / r.Row.efficiencyWith(r.Pilots))
+		r.NetRate *= unit.BitRate(r.Row.NetEfficiency(r.Pilots) / r.Row.Efficiency(r.Pilots))
 	}
 	r.Bandwidth = unit.Frequency(r.Symbols.Hertz() * r.width)
 }

@@ -19,10 +19,10 @@ func (r *Row) Name() string { return r.Modulation.Name + " " + r.Coding.Name }
 
 // SpectralEfficiency returns information bits a symbol: bits a symbol times code rate,
 // with the headers taken off where the coding's standard charges them.
-func (r *Row) SpectralEfficiency() float64 { return r.efficiencyWith(false) }
+func (r *Row) SpectralEfficiency() float64 { return r.Efficiency(false) }
 
-// efficiencyWith is the spectral efficiency with or without pilots.
-func (r *Row) efficiencyWith(pilots bool) float64 {
+// Efficiency is the spectral efficiency with or without pilots, in codings that know them.
+func (r *Row) Efficiency(pilots bool) float64 {
 	if f := r.Coding.Frame; f.Charged {
 		return f.net() / f.symbols(r.Modulation.BitsPerSymbol, pilots)
 	}

@@ -20,6 +20,7 @@ type Planner struct {
 	eligible []int     // by sample: so many samples lie the least stay before it
 	best     []float64 // by change, then by sample: most bits of schedules whose mode may end there
 	choice   []int16   // the mode that ends there
+	spans    []span    // of the best schedule
 }
 
 // silence is the index of the mode that sends nothing.

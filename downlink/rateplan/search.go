@@ -1,5 +1,7 @@
 package rateplan
 
+import "slices"
+
 // search fills best and choice: for so many changes and each sample, the most bits of
 // all schedules of that many changes whose last mode may end there, and which mode that
 // is. A mode begun at sample k and kept to j brings bits[j] - locked[k]; where that is
@@ -86,17 +88,19 @@ func (p *Planner) trace() []span {
 			}
 		}
 	}
-	var spans []span
+	spans := p.spans[:0] // from the last to the first
 	for c, j := changes, end; c >= 0; c-- {
 		s := p.lastSpan(c, j)
-		if len(spans) > 0 && spans[0].mode == s.mode { // a tie of changing to itself
-			spans[0].from = s.from
-			spans[0].bits += s.bits
+		if n := len(spans); n > 0 && spans[n-1].mode == s.mode { // a tie of changing to itself
+			spans[n-1].from = s.from
+			spans[n-1].bits += s.bits
 		} else {
-			spans = append([]span{s}, spans...)
+			spans = append(spans, s)
 		}
 		j = s.from
 	}
+	slices.Reverse(spans)
+	p.spans = spans
 	return spans
 }
 
