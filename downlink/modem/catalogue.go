@@ -2,6 +2,7 @@ package modem
 
 import (
 	"fmt"
+	"math"
 	"slices"
 	"sync"
 )
@@ -138,6 +139,14 @@ func (r *Row) check() error {
 	}
 	if len(r.Thresholds) == 0 {
 		return fmt.Errorf("%s: no threshold is known", r.Name())
+	}
+	for _, t := range r.Thresholds {
+		if !(math.Abs(float64(t.EbN0)) <= 100) || !(t.ErrorRate > 0 && t.ErrorRate < 1) || !slices.Contains(metrics, t.Metric) || t.Source == "" {
+			return fmt.Errorf("%s: a threshold of %g dB for a %s of %g with the source %q is not allowed; it must be -100 to 100 dB, for an error rate greater than 0 and less than 1, with its source", r.Name(), float64(t.EbN0), t.Metric, t.ErrorRate, t.Source)
+		}
+	}
+	if w := r.Modulation.Width; !(w >= 0 && w <= 1000) {
+		return fmt.Errorf("%s: a width of %g Hz/baud is not allowed; it must be 0 (shaped pulses) to 1000", r.Name(), w)
 	}
 	if !(r.Coding.Rate > 0 && r.Coding.Rate <= 1) || r.Modulation.BitsPerSymbol < 1 || r.Modulation.BitsPerSymbol > 16 {
 		return fmt.Errorf("%s: a code rate of %g at %d bits a symbol is not allowed; it must be greater than 0 and at most 1, at 1 to 16 bits", r.Name(), r.Coding.Rate, r.Modulation.BitsPerSymbol)

@@ -41,12 +41,12 @@ func TestCatalogueReads(t *testing.T) {
 	}
 }
 
-// No code does with less than Shannon's bound, and none of the table is worse than
-// uncoded binary tones.
+// No code does with less than Shannon's bound; audio tones on a frequency modulation are
+// the worst of the table, near 22 dB over it.
 func TestNoCodeBeatsShannon(t *testing.T) {
 	for _, r := range Standard().Rows() {
 		for _, n := range r.Thresholds {
-			if gap := float64(r.ShannonGap(n.EbN0)); !(gap > 0 && gap < 16) {
+			if gap := float64(r.ShannonGap(n.EbN0)); !(gap > 0 && gap < 23) {
 				t.Errorf("%s: %.2f dB over Shannon's bound", r.Name(), gap)
 			}
 		}
@@ -186,7 +186,14 @@ func TestWithRefuses(t *testing.T) {
 	nothing := good
 	nothing.Coding.Name = "house"
 	nothing.Thresholds = nil
-	for want, r := range map[string]Row{"in the catalogue already": good, "with 2 bits a symbol": other, "no threshold is known": nothing} {
+	silent := good
+	silent.Coding.Name = "house"
+	silent.Thresholds = []Threshold{{EbN0: 3, ErrorRate: 1e-5, Metric: BitErrors}}
+	endless := silent
+	endless.Thresholds = []Threshold{{EbN0: unit.DB(math.NaN()), ErrorRate: 1e-5, Metric: BitErrors, Source: "bench"}}
+	wide := good
+	wide.Coding.Name, wide.Modulation.Width = "house", math.Inf(1)
+	for want, r := range map[string]Row{"with its source": silent, "NaN dB": endless, "+Inf Hz/baud": wide, "in the catalogue already": good, "with 2 bits a symbol": other, "no threshold is known": nothing} {
 		if _, err := Standard().With(r); err == nil || !strings.Contains(err.Error(), want) {
 			t.Errorf("got %v, want %q", err, want)
 		}
