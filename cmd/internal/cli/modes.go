@@ -3,6 +3,7 @@ package cli
 import (
 	"errors"
 	"fmt"
+	"io/fs"
 	"os"
 	"slices"
 	"strings"
@@ -67,19 +68,19 @@ where the frame, the width and nothing else may be empty.`,
 			return run(env, o)
 		},
 	}
-	fs := cmd.Flags()
+	flags := cmd.Flags()
 	addFormat(cmd, &o.format)
-	fs.StringArrayVar(&o.modulations, "modulation", nil, "only this modulation, `NAME`; may be repeated")
-	fs.StringArrayVar(&o.codings, "coding", nil, "only codings whose name holds this `TEXT`; may be repeated")
-	fs.Float64Var(&o.errorRate, "error-rate", 0, "required Eb/N0 for this error `RATE`, in place of each row's own")
-	fs.StringVar(&o.metric, "metric", "", "what the error rate counts: `bit`, codeword, frame or packet (default each row's own)")
-	fs.Float64Var(&o.most, "max-eb-n0-db", 0, "only rows that require no more than this, `DB`")
-	fs.Float64Var(&o.least, "min-efficiency", 0, "only rows with this many information `BITS` a symbol or more")
-	fs.StringVar(&o.add, "add", "", "rows of your own from this CSV `FILE`, - for standard input")
-	fs.Float64Var(&o.symbolRate, "symbol-rate", 0, "give net data rate and bandwidth at this symbol rate, `BAUD`")
-	fs.Float64Var(&o.rollOff, "roll-off", modem.DefaultRollOff, "of shaped pulses, `0..1`")
-	fs.BoolVar(&o.pilots, "pilots", false, "pilots are sent in codings that know them")
-	fs.Float64Var(&o.bandwidthMHz, "bandwidth-mhz", 0, "only rows that fit into this bandwidth at --symbol-rate, `MHZ`")
+	flags.StringArrayVar(&o.modulations, "modulation", nil, "only this modulation, `NAME`; may be repeated")
+	flags.StringArrayVar(&o.codings, "coding", nil, "only codings whose name holds this `TEXT`; may be repeated")
+	flags.Float64Var(&o.errorRate, "error-rate", 0, "required Eb/N0 for this error `RATE`, in place of each row's own")
+	flags.StringVar(&o.metric, "metric", "", "what the error rate counts: `bit`, codeword, frame or packet (default each row's own)")
+	flags.Float64Var(&o.most, "max-eb-n0-db", 0, "only rows that require no more than this, `DB`")
+	flags.Float64Var(&o.least, "min-efficiency", 0, "only rows with this many information `BITS` a symbol or more")
+	flags.StringVar(&o.add, "add", "", "rows of your own from this CSV `FILE`, - for standard input")
+	flags.Float64Var(&o.symbolRate, "symbol-rate", 0, "give net data rate and bandwidth at this symbol rate, `BAUD`")
+	flags.Float64Var(&o.rollOff, "roll-off", modem.DefaultRollOff, "of shaped pulses, `0..1`")
+	flags.BoolVar(&o.pilots, "pilots", false, "pilots are sent in codings that know them")
+	flags.Float64Var(&o.bandwidthMHz, "bandwidth-mhz", 0, "only rows that fit into this bandwidth at --symbol-rate, `MHZ`")
 	return cmd
 }
 
@@ -155,7 +156,7 @@ func (o *modesOptions) catalogue(env *Env) (*modem.Catalogue, error) {
 	if o.add != "-" {
 		f, err := os.Open(o.add)
 		if err != nil {
-			return nil, fmt.Errorf("--add: %w", err)
+			return nil, cannotRead(o.add, err)
 		}
 		defer f.Close()
 		in = f
@@ -169,6 +170,16 @@ func (o *modesOptions) catalogue(env *Env) (*modem.Catalogue, error) {
 		return nil, fmt.Errorf("--add %s: %w", o.add, err)
 	}
 	return all, nil
+}
+
+// cannotRead says why a file of rows was not opened, without the words for a file that
+// is written.
+func cannotRead(name string, err error) error {
+	var why *fs.PathError
+	if !errors.As(err, &why) {
+		return fmt.Errorf("--add %s: %w", name, err)
+	}
+	return fmt.Errorf("--add %s: it cannot be read (%v); name a CSV file of modes, or - for standard input", name, why.Err)
 }
 
 // modeRow is a row of the catalogue at the error rate that was asked for.

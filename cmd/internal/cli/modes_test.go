@@ -139,7 +139,8 @@ func TestModesRefuses(t *testing.T) {
 		{[]string{"--roll-off", "2"}, "--roll-off: 2 is not allowed"},
 		{[]string{"--bandwidth-mhz", "1"}, "--bandwidth-mhz needs --symbol-rate"},
 		{[]string{"--metric", "words"}, `--metric: "words" is not allowed; it must be bit, codeword, frame or packet`},
-		{[]string{"--add", "no-such-file.csv"}, "--add: open no-such-file.csv"},
+		{[]string{"--add", "no-such-file.csv"}, "--add no-such-file.csv: it cannot be read (no such file or directory); name a CSV file of modes"},
+		{[]string{"--add", "."}, "--add .: modes: "},
 		{[]string{"extra"}, `takes no "extra"`},
 	} {
 		code, _, errOut := invoke(t, append([]string{"modes"}, c.args...)...)
