@@ -4,6 +4,7 @@ import (
 	"fmt"
 	"math"
 	"math/rand/v2"
+	"slices"
 	"testing"
 	"time"
 
@@ -198,6 +199,9 @@ func obeys(t *testing.T, i int, modes []Mode, rules Rules, track Track, p *Plan)
 	}
 	if p.Bytes > p.FreeBytes*(1+1e-12) {
 		t.Fatalf("case %d: %g bytes, free switching has %g", i, p.Bytes, p.FreeBytes)
+	}
+	if got := p.SoFar[len(p.SoFar)-1]; math.Abs(got-p.Bytes) > 1e-9 || !slices.IsSorted(p.SoFar) || p.SoFar[0] != 0 {
+		t.Fatalf("case %d: bytes so far %v, in all %g", i, p.SoFar, p.Bytes)
 	}
 	for k, s := range p.Steps {
 		if len(p.Steps) > 1 && s.To.Sub(s.From) < rules.LeastStay-time.Nanosecond {

@@ -12,8 +12,9 @@ import (
 type Plan struct {
 	Steps        []Step // one after another; empty where nothing can be brought down
 	Bytes        float64
-	FreeBytes    float64 // bound: the best mode at every instant, without guards and rules
-	ShannonBytes float64 // bound: Shannon's limit, in the band where one is given, without margins
+	FreeBytes    float64   // bound: the best mode at every instant, without guards and rules
+	SoFar        []float64 // bytes brought down by each sample of the track
+	ShannonBytes float64   // bound: Shannon's limit, in the band where one is given, without margins
 }
 
 // Step is a part of a schedule in one mode.
@@ -46,7 +47,7 @@ func share(part, whole float64) float64 {
 }
 
 func (p *Planner) report(t *Track, spans []span) Plan {
-	plan := Plan{Steps: make([]Step, len(spans)), FreeBytes: p.free(t) / 8, ShannonBytes: shannon(t, p.rules.Band) / 8}
+	plan := Plan{Steps: make([]Step, len(spans)), SoFar: make([]float64, len(t.Seconds)), FreeBytes: p.free(t) / 8, ShannonBytes: shannon(t, p.rules.Band.Hertz()) / 8}
 	for i, s := range spans {
 		step := Step{From: t.at(t.Seconds[s.from]), To: t.at(t.Seconds[s.to]), Mode: s.mode, Name: "silent", LeastMargin: unit.DB(math.NaN()), Bytes: s.bits / 8}
 		if s.mode != silence {
@@ -59,45 +60,63 @@ func (p *Planner) report(t *Track, spans []span) Plan {
 			step.LeastMargin = unit.DB(least - m.NeedDBHz)
 		}
 		plan.Steps[i] = step
+		p.addSoFar(plan.SoFar, s, plan.Bytes)
 		plan.Bytes += step.Bytes
 	}
 	return plan
+}
+
+// addSoFar fills the bytes by each sample of a span and after it.
+func (p *Planner) addSoFar(soFar []float64, s span, before float64) {
+	n := len(soFar)
+	for j := s.from; j < n; j++ {
+		soFar[j] = before
+		if s.mode != silence {
+			soFar[j] += max(0, p.bits[s.mode*n+min(j, s.to)]-p.locked[s.mode*n+s.from]) / 8
+		}
+	}
 }
 
 // free returns the bits of free switching among the modes, without guards.
 func (p *Planner) free(t *Track) float64 {
 	sum := 0.0
 	for i := 1; i < len(t.Seconds); i++ {
-		least := lesser(t.CN0DBHz[i-1], t.CN0DBHz[i])
-		rate := 0.0
-		for m := range p.modes {
-			if least >= p.modes[m].NeedDBHz {
-				rate = max(rate, p.modes[m].NetRate.BitsPerSecond())
-			}
-		}
-		sum += rate * (t.Seconds[i] - t.Seconds[i-1])
+		sum += p.freeRate(lesser(t.CN0DBHz[i-1], t.CN0DBHz[i])) * (t.Seconds[i] - t.Seconds[i-1])
 	}
 	return sum
 }
 
-// shannon returns the bits of Shannon's limit by the trapezoidal rule: B log2(1 + C/(N0 B))
-// in a band, C/N0 / ln 2 without one. No rate flows where the link is not usable.
-func shannon(t *Track, band unit.Frequency) float64 {
-	rate := func(db float64) float64 {
-		c := math.Exp(db * (math.Ln10 / 10))
-		switch {
-		case math.IsNaN(db):
-			return 0
-		case band > 0:
-			return band.Hertz() * math.Log1p(c/band.Hertz()) / math.Ln2
+// freeRate returns the net rate of the best mode at a C/N0, 0 where none closes.
+func (p *Planner) freeRate(cn0 float64) float64 {
+	rate := 0.0
+	for m := range p.modes {
+		if cn0 >= p.modes[m].NeedDBHz {
+			rate = max(rate, p.modes[m].NetRate.BitsPerSecond())
 		}
-		return c / math.Ln2
 	}
-	sum, before := 0.0, rate(t.CN0DBHz[0])
+	return rate
+}
+
+// shannon returns the bits of Shannon's limit by the trapezoidal rule.
+func shannon(t *Track, band float64) float64 {
+	sum, before := 0.0, shannonRate(t.CN0DBHz[0], band)
 	for i := 1; i < len(t.Seconds); i++ {
-		now := rate(t.CN0DBHz[i])
+		now := shannonRate(t.CN0DBHz[i], band)
 		sum += (before + now) / 2 * (t.Seconds[i] - t.Seconds[i-1])
 		before = now
 	}
 	return sum
+}
+
+// shannonRate is B log2(1 + C/(N0 B)) in a band of B hertz, C/N0 / ln 2 without one (0);
+// 0 where the link is not usable.
+func shannonRate(cn0DBHz, band float64) float64 {
+	c := math.Exp(cn0DBHz * (math.Ln10 / 10))
+	switch {
+	case math.IsNaN(cn0DBHz):
+		return 0
+	case band > 0:
+		return band * math.Log1p(c/band) / math.Ln2
+	}
+	return c / math.Ln2
 }

@@ -225,3 +225,70 @@ func TestTrackRefuses(t *testing.T) {
 		t.Error("no passes are taken")
 	}
 }
+
+// The series of the plan slow, fast, slow: its rate, its margin of 1 dB throughout, and
+// Shannon's limit of 50 dBHz in a band of 1 kHz: 1000 log2(1 + 100).
+func TestSeries(t *testing.T) {
+	p, err := NewPlanner(twoModes(), Rules{Changes: 2, Band: 1000})
+	if err != nil {
+		t.Fatal(err)
+	}
+	plan, err := p.Plan(hill())
+	if err != nil {
+		t.Fatal(err)
+	}
+	s, err := p.Series(hill(), &plan)
+	if err != nil {
+		t.Fatal(err)
+	}
+	for i, want := range []float64{800, 800, 800, 800, 3200, 3200, 3200, 800, 800, 800, 0} {
+		if s.RateBps[i] != want {
+			t.Errorf("sample %d: %g bit/s, want %g", i, s.RateBps[i], want)
+		}
+	}
+	if s.MarginDB[0] != 1 || s.MarginDB[5] != 1 || s.MarginDB[7] != 7 || !math.IsNaN(s.MarginDB[10]) || s.FreeBps[7] != 3200 || s.FreeBps[8] != 800 {
+		t.Errorf("margins %v, free rates %v", s.MarginDB, s.FreeBps)
+	}
+	if want := 1000 * math.Log2(101); math.Abs(s.ShannonBps[0]-want) > 1e-9*want {
+		t.Errorf("Shannon's limit %g bit/s, want %g", s.ShannonBps[0], want)
+	}
+	if plan.SoFar[4] != 4000 || plan.SoFar[7] != 16000 || plan.SoFar[10] != 19000 {
+		t.Errorf("bytes so far %v", plan.SoFar)
+	}
+	if _, err := p.Series(Track{}, &plan); err == nil {
+		t.Error("an empty track is taken")
+	}
+}
+
+// More freedom never brings less: more changes, less stay, less guard, no lock.
+func TestMoreFreedomBringsMore(t *testing.T) {
+	track := overhead(721)
+	plan := func(rules Rules) float64 {
+		p, err := NewPlanner(ladder(12), rules)
+		if err != nil {
+			t.Fatal(err)
+		}
+		got, err := p.Plan(track)
+		if err != nil {
+			t.Fatal(err)
+		}
+		return got.Bytes
+	}
+	for _, silent := range []bool{false, true} {
+		strict := Rules{Changes: 3, LeastStay: 40 * time.Second, Relock: 4 * time.Second, Guard: 1, GuardTime: 5 * time.Second, Silent: silent}
+		base := plan(strict)
+		if !(base > 0) {
+			t.Fatal("the strict rules bring nothing")
+		}
+		for name, ease := range map[string]func(*Rules){
+			"changes": func(r *Rules) { r.Changes = 6 }, "stay": func(r *Rules) { r.LeastStay = 0 }, "lock": func(r *Rules) { r.Relock = 0 },
+			"guard": func(r *Rules) { r.Guard = 0 }, "guard in time": func(r *Rules) { r.GuardTime = 0 }, "loss": func(r *Rules) { r.Silent = false },
+		} {
+			eased := strict
+			ease(&eased)
+			if got := plan(eased); got < base*(1-1e-12) {
+				t.Errorf("silent %t, with more freedom of %s: %g bytes, before %g", silent, name, got, base)
+			}
+		}
+	}
+}

@@ -47,14 +47,17 @@ func (p *Planner) Plan(t Track) (Plan, error) {
 	if err := t.check(); err != nil {
 		return Plan{}, err
 	}
-	single := p.single(&t)
-	if guard := p.rules.GuardTime.Seconds(); guard != p.singleGuard() {
+	single, guard := p.single(&t), p.rules.GuardTime.Seconds()
+	if guard != p.singleGuard() {
 		p.prepare(&t, guard)
 	}
 	p.search()
 	spans := p.trace()
 	if single.bits >= value(spans)*(1-1e-12) {
 		spans = single.alone()
+		if guard != p.singleGuard() {
+			p.prepare(&t, p.singleGuard())
+		}
 	}
 	return p.report(&t, spans), nil
 }
