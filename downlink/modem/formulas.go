@@ -62,7 +62,7 @@ func (c *Curve) summed(n float64) Curve {
 	sum := func(p float64) float64 { return -math.Expm1(n*math.Log1p(-2*p)) / 2 }
 	out := *c
 	out.Low, out.High = sum(c.Low), sum(min(c.High, 0.1))
-	out.Source += "; " + map[float64]string{2: "NRZI decoded, errors doubled", 6: "descrambled and NRZI decoded, errors sixfold"}[n]
+	out.Source += "; " + map[float64]string{2: "NRZI decoded, errors taken as independent and doubled", 6: "descrambled and NRZI decoded, errors taken as independent and sixfold"}[n]
 	if c.rate != nil {
 		out.rate = func(g float64) float64 { return sum(c.rate(g)) }
 		return out
