@@ -58,7 +58,7 @@ func (s span) alone() []span {
 
 // Fixed returns the plan of the one mode that brings down the most in a pass.
 func (p *Planner) Fixed(t Track) (Plan, error) {
-	if err := t.check(); err != nil {
+	if err := p.checkTrack(&t); err != nil {
 		return Plan{}, err
 	}
 	return p.report(&t, p.single(&t).alone()), nil
@@ -80,7 +80,7 @@ func (p *Planner) Common(tracks []Track) (Common, error) {
 	var faults []error
 	sums := make([]float64, len(p.modes))
 	for i := range tracks {
-		if err := tracks[i].check(); err != nil {
+		if err := p.checkTrack(&tracks[i]); err != nil {
 			faults = append(faults, fmt.Errorf("pass %d: %w", i+1, err))
 			continue
 		}

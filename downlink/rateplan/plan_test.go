@@ -292,3 +292,17 @@ func TestMoreFreedomBringsMore(t *testing.T) {
 		}
 	}
 }
+
+func TestTooLargeToPlan(t *testing.T) {
+	p, err := NewPlanner(twoModes(), Rules{Changes: 1000})
+	if err != nil {
+		t.Fatal(err)
+	}
+	long := Track{Seconds: make([]float64, 60_000), CN0DBHz: make([]float64, 60_000)}
+	for i := range long.Seconds {
+		long.Seconds[i] = float64(i)
+	}
+	if _, err := p.Plan(long); err == nil || !strings.Contains(err.Error(), "60000 samples with 2 modes and 1000 changes are too many") {
+		t.Errorf("got %v", err)
+	}
+}

@@ -44,7 +44,7 @@ func (p *Planner) Modes() []Mode { return slices.Clone(p.modes) }
 // Plan returns the schedule that brings down the most bits. Of schedules that bring
 // down as many it has one with the fewest changes.
 func (p *Planner) Plan(t Track) (Plan, error) {
-	if err := t.check(); err != nil {
+	if err := p.checkTrack(&t); err != nil {
 		return Plan{}, err
 	}
 	single, guard := p.single(&t), p.rules.GuardTime.Seconds()

@@ -13,7 +13,7 @@ type Series struct {
 
 // Series follows a plan along its track.
 func (p *Planner) Series(t Track, plan *Plan) (Series, error) {
-	if err := t.check(); err != nil {
+	if err := p.checkTrack(&t); err != nil {
 		return Series{}, err
 	}
 	n := len(t.Seconds)

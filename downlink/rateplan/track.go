@@ -46,6 +46,22 @@ func (t *Track) check() error {
 	return nil
 }
 
+// mostCells bounds modes times samples and changes times samples, for memory's sake (a
+// day at 1 s with 300 modes is half of it).
+const mostCells = 50_000_000
+
+// checkTrack checks a track and whether the planner has room for it.
+func (p *Planner) checkTrack(t *Track) error {
+	if err := t.check(); err != nil {
+		return err
+	}
+	if n := len(t.Seconds); n*len(p.modes) > mostCells || n*(p.rules.Changes+1) > mostCells {
+		return fmt.Errorf("track: %d samples with %d modes and %d changes are too many; samples times modes, and times changes, must be at most %d: take wider steps, or leave out modes that others surpass",
+			n, len(p.modes), p.rules.Changes, mostCells)
+	}
+	return nil
+}
+
 // at returns the instant some seconds after the start, to the nanosecond.
 func (t *Track) at(seconds float64) time.Time {
 	return t.Start.Add(time.Duration(math.Round(seconds * 1e9)))
