@@ -222,7 +222,7 @@ func TestBudgetRefuses(t *testing.T) {
 	}{
 		{[]string{"budget"}, `--spacecraft: left out, and the scenario holds 4; name one of "Wagtail 1"`},
 		{[]string{"budget", "--spacecraft", "Wagtale 1"}, `did you mean "Wagtail 1"`},
-		{[]string{"budget", "--spacecraft", "Wagtail 1", "--station", "Skerry Point"}, `--mode: left out, and the scenario holds 2; name one of "safe", "fast"`},
+		{[]string{"budget", "--spacecraft", "Wagtail 1", "--station", "Skerry Point"}, `--mode: left out, and the scenario holds 3; name one of "safe", "middle", "fast"`},
 		{[]string{"budget", "--spacecraft", "Wagtail 1", "--station", "Acacia Ridge", "--mode", "safe"}, `antenna "dish": 8180 MHz lies outside its bands 2200 to 2290 MHz`},
 		{budget("--range-km", "1200"), "needs --range-km and --elevation-deg, both"},
 		{budget("--range-km", "-1", "--elevation-deg", "20"), "range: -1 km is not allowed"},

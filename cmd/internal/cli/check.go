@@ -17,9 +17,9 @@ func newCheck(env *Env) *cobra.Command {
 	cmd := &cobra.Command{
 		Use:   "check",
 		Short: "Find all faults of a scenario and list every default taken",
-		Long: `Read the scenario with all its files, fly each spacecraft over the window, and tell
-all faults at once; where there are none, list the element sets that are used with
-their age, warnings, and every default that was taken.`,
+		Long: `Read the scenario with all its files, fly each spacecraft over the window, prepare
+each link, and tell all faults at once; where there are none, list the element sets
+that are used with their age, warnings, and every default that was taken.`,
 		Example: `  slantwise check
   slantwise check --scenario plans/summer.yaml --format json`,
 		Args: noArgs,
@@ -37,6 +37,7 @@ func runCheck(env *Env, f format) error {
 	if err := fly(s); err != nil {
 		return &InputError{Err: err}
 	}
+	warnOfLinks(s)
 	switch f {
 	case formatCSV:
 		return checkCSV(env.Out, s)

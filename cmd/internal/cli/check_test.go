@@ -67,3 +67,24 @@ func TestCheckWarnsOfAnOrbitThatEnds(t *testing.T) {
 		t.Errorf("after its end: code %d, stderr %s", code, errOut)
 	}
 }
+
+// TestCheckPreparesLinks: what budget would warn of, check tells before; here a
+// pattern that radiates ten times the power it is fed.
+func TestCheckPreparesLinks(t *testing.T) {
+	t.Chdir(t.TempDir())
+	if code, _, errOut := invoke(t, "new"); code != ExitAnswer {
+		t.Fatal(errOut)
+	}
+	text, err := os.ReadFile("slantwise.yaml")
+	if err != nil {
+		t.Fatal(err)
+	}
+	hot := strings.Replace(string(text), "peak_gain_dbi: 5.0", "peak_gain_dbi: 15.0", 1)
+	if err := os.WriteFile("slantwise.yaml", []byte(hot), 0o600); err != nil {
+		t.Fatal(err)
+	}
+	code, out, errOut := invoke(t, "check", "--format", "csv")
+	if code != ExitAnswer || !strings.Contains(out, "warning,\"spacecraft My spacecraft, transmitter downlink to station My station, antenna dish\",") || !strings.Contains(out, "radiates") {
+		t.Errorf("code %d, %s\n%s", code, errOut, out)
+	}
+}
