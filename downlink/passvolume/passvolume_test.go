@@ -173,6 +173,27 @@ func TestTwoCoins(t *testing.T) {
 	}
 }
 
+// TestNearlySure: passes that nearly surely bring all they can, none of them a whole
+// number of points of the grid, keep their mean and all of the probability.
+func TestNearlySure(t *testing.T) {
+	var of []passvolume.Distribution
+	mean := 0.0
+	for i := range 40 {
+		d := passvolume.Distribution{{Bytes: 0, Probability: 1e-4}, {Bytes: 1e9 + 12345678*float64(i), Probability: 1 - 1e-4}}
+		of, mean = append(of, d), mean+d.Mean()
+	}
+	sum := passvolume.Independent(of)
+	total := 0.0
+	for _, a := range sum {
+		total += a.Probability
+	}
+	near(t, "all probabilities", total, 1, 1e-12)
+	near(t, "mean", sum.Mean(), mean, 1e-9*mean)
+	if v := sum.ReachedWith(0.5); v < 0.99*mean {
+		t.Errorf("reached with 50 %%: %g B of %g B", v, mean)
+	}
+}
+
 func TestBadInput(t *testing.T) {
 	for _, c := range []struct {
 		change func(*passvolume.Pass)

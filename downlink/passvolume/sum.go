@@ -51,8 +51,9 @@ func Independent(of []Distribution) Distribution {
 		return Distribution{{0, 1}}
 	}
 	step := most / bins
-	sum := make([]float64, bins+2)
-	next := make([]float64, bins+2)
+	// Each volume may be shared up to the next point.
+	sum := make([]float64, bins+2+len(of))
+	next := make([]float64, bins+2+len(of))
 	sum[0] = 1
 	used := 1 // so many points of sum hold anything
 	for _, d := range of {
@@ -60,12 +61,10 @@ func Independent(of []Distribution) Distribution {
 		shares := onGrid(d, step)
 		for _, s := range shares {
 			for j, v := range sum[:used] {
-				if k := j + s.at; k < len(next) {
-					next[k] += v * s.probability
-				}
+				next[j+s.at] += v * s.probability
 			}
 		}
-		used = min(len(next), used+shares[len(shares)-1].at)
+		used += shares[len(shares)-1].at
 		sum, next = next, sum
 	}
 	out := make(Distribution, 0, used)

@@ -57,6 +57,7 @@ Results go to stdout, words for people to stderr. Exit codes:
 		newFlux(env),
 		newDesignControl(env),
 		newLicence(env),
+		newRates(env),
 		newRecorder(env),
 	)
 	completeFlags(root, env)
