@@ -27,9 +27,9 @@ func newRecorder(env *Env) *cobra.Command {
 		Use:   "recorder",
 		Short: "On-board recorder through the window: what arrives, how old, what is lost",
 		Long: `Follow the data of a spacecraft's recorder through the window: all passes over the
-stations, sent in the mode that brings most in each pass (or in --mode) while its margin
-holds, after the lock-on time, within the licences. Passes that overlap are taken in the
-order of AOS, each from the end of the one before.
+stations, each with the modes of its rate plan (the command rates shows it), after the
+lock-on time, within the licences. Passes that overlap are taken in the order of AOS,
+each from the end of the one before.
 
   --show data      made, received, lost, on board, and the age at delivery, a kind of data a row
   --show contacts  what each contact offered and brought, and the backlog after it
@@ -43,7 +43,7 @@ order of AOS, each from the end of the one before.
 	fs := cmd.Flags()
 	fs.StringVar(&o.spacecraft, "spacecraft", "", "`NAME` of the spacecraft")
 	fs.StringVar(&o.transmitter, "transmitter", "", "`NAME` of the transmitter")
-	fs.StringVar(&o.mode, "mode", "", "`NAME` of the mode (left out: the one that brings most in each pass)")
+	fs.StringVar(&o.mode, "mode", "", "`NAME` of the only mode that may be sent (left out: all)")
 	fs.StringArrayVar(&o.stations, "station", nil, "`NAME` of a station (again for more; left out: all)")
 	fs.StringVar(&o.what, "show", "data", "`WHAT` to write: data, contacts, volumes or filling")
 	addFormat(cmd, &o.format)
