@@ -47,9 +47,8 @@
   }
 
   function strokes(g) {
-    [[-2, 2], [-2, 10], [6, 10]].forEach(function (p) {
-      g.beginPath(); g.moveTo(p[0], p[1]); g.lineTo(p[0] + 12, p[1] - 12); g.stroke();
-    });
+    [[-2, 2], [-2, 10], [6, 10]].forEach(function (p) { g.moveTo(p[0], p[1]); g.lineTo(p[0] + 12, p[1] - 12); });
+    g.stroke();
   }
 
   function dots(g) { g.fillRect(2, 2, 2, 2); }
@@ -149,8 +148,7 @@
   function marked(o, spec, p) {
     var s = o.series[o.series.length - 1];
     s.markArea = {
-      silent: true, itemStyle: { color: tile(6, p.soft, dots), borderColor: p.soft, borderWidth: 1 },
-      label: { color: p.ink, fontSize: 11, position: 'top', distance: 1 },
+      silent: true, itemStyle: { color: tile(6, p.soft, dots), borderColor: p.soft, borderWidth: 1 }, label: { color: p.ink, fontSize: 11, position: 'top', distance: 1 },
       data: spec.marks.map(function (m) { return [{ xAxis: m.from, name: m.label }, { xAxis: m.to }]; })
     };
   }
