@@ -133,9 +133,8 @@
   // underLegend leaves room for as many rows as the names of the lines need.
   function underLegend(o, width) {
     if (!o.legend.show) { return; }
-    var g = document.createElement('canvas').getContext('2d');
+    var x = 0, rows = 1, g = document.createElement('canvas').getContext('2d');
     g.font = '12px ' + o.textStyle.fontFamily;
-    var rows = 1, x = 0;
     o.series.forEach(function (s) {
       var w = o.legend.itemWidth + 5 + g.measureText(s.name).width;
       if (x > 0 && x + w > width) { rows += 1; x = 0; }
