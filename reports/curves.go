@@ -70,7 +70,7 @@ func CurvesPage(c *Curves) ([]byte, error) {
 	}
 	v.Data = dataElement(data)
 	var out bytes.Buffer
-	err = pageTemplates.ExecuteTemplate(&out, "curves.html", v)
+	err = pageTemplates().ExecuteTemplate(&out, "curves.html", v)
 	return out.Bytes(), err
 }
 

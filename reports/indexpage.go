@@ -87,7 +87,7 @@ func indexPage(w *writer, rows []row) ([]byte, error) {
 		}
 	}
 	var out bytes.Buffer
-	err := pageTemplates.ExecuteTemplate(&out, "index.html", v)
+	err := pageTemplates().ExecuteTemplate(&out, "index.html", v)
 	return out.Bytes(), err
 }
 

@@ -98,7 +98,7 @@ func passPage(w *writer, i int, p *Pass) ([]byte, error) {
 	}
 	var out bytes.Buffer
 	out.Grow(len(data) + 64<<10)
-	err = pageTemplates.ExecuteTemplate(&out, "pass.html", v)
+	err = pageTemplates().ExecuteTemplate(&out, "pass.html", v)
 	return out.Bytes(), err
 }
 
