@@ -35,10 +35,13 @@ type Profile struct {
 	DataRate                           unit.BitRate // of the chosen mode
 	RequiredMarginDB                   float64
 
-	Volume    Volume
-	SunInBeam []Interval // while the Sun is up and its disc touches the half-power beam
+	Volume Volume
 
-	sunUpDeg []float64 // SunDeg while the Sun is up, else NaN
+	// While the Sun, the Moon is up and its disc touches the half-power beam; empty: never,
+	// nil: where they stand or the beamwidth is not known.
+	SunInBeam, MoonInBeam []Interval
+
+	sunUpDeg, moonUpDeg []float64 // SunDeg, MoonDeg while they are up, else NaN
 
 	limited   bool // Permit was called
 	permitted []span

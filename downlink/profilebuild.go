@@ -41,6 +41,7 @@ func (l *Link) Profile(track Track, aos, los time.Time, step time.Duration) (*Pr
 	p.Volume = p.volume()
 	if l.spec.Bodies != nil && l.beamwidth > 0 {
 		p.SunInBeam = p.within(p.sunUpDeg, (l.beamwidth/2 + propagation.SunDiameter/2).Degrees())
+		p.MoonInBeam = p.within(p.moonUpDeg, (l.beamwidth/2 + propagation.MoonDiameter/2).Degrees())
 	}
 	return p, nil
 }
@@ -80,7 +81,7 @@ func newProfile(l *Link, n int) *Profile {
 		AchievableLimit: make([]RateLimit, n), Usable: make([]bool, n),
 		DataRate: l.dataRate(), RequiredMarginDB: float64(l.spec.Transmitter.RequiredMargin)}
 	columns := []*[]float64{&p.Seconds, &p.AzimuthDeg, &p.ElevationDeg, &p.ApparentElevationDeg, &p.RangeKm, &p.RangeRateKmS,
-		&p.OffBoresightDeg, &p.SunDeg, &p.MoonDeg, &p.sunUpDeg, &p.DopplerHz, &p.ReceivedPowerDBm, &p.FluxDensityDBWM2, &p.SystemNoiseK, &p.GOverTDBK,
+		&p.OffBoresightDeg, &p.SunDeg, &p.MoonDeg, &p.sunUpDeg, &p.moonUpDeg, &p.DopplerHz, &p.ReceivedPowerDBm, &p.FluxDensityDBWM2, &p.SystemNoiseK, &p.GOverTDBK,
 		&p.CN0DBHz, &p.EbN0DB, &p.MarginDB, &p.MarginOverDB, &p.AchievableRateBps}
 	for i := range p.TermValues {
 		columns = append(columns, &p.TermValues[i])
@@ -113,9 +114,12 @@ func (l *Link) sample(p *Profile, i int, state orbit.State, s *scratch) error {
 	p.OffBoresightDeg[i] = g.OffBoresight.Degrees()
 	p.DopplerHz[i] = l.Doppler(rate).Hertz()
 	p.SunDeg[i], p.MoonDeg[i] = g.bodies.sun.Degrees(), g.bodies.moon.Degrees()
-	p.sunUpDeg[i] = math.NaN()
+	p.sunUpDeg[i], p.moonUpDeg[i] = math.NaN(), math.NaN()
 	if g.bodies.sunUp {
 		p.sunUpDeg[i] = p.SunDeg[i]
+	}
+	if g.bodies.moonUp {
+		p.moonUpDeg[i] = p.MoonDeg[i]
 	}
 	for t, v := range s.terms {
 		p.TermValues[t][i] = v
@@ -154,9 +158,9 @@ func (s *scratch) noValue() {
 }
 
 // within returns the intervals in which a column is at most a bound, from crossing to
-// crossing, linear between samples.
+// crossing, linear between samples; never nil.
 func (p *Profile) within(column []float64, most float64) []Interval {
-	var out []Interval
+	out := []Interval{}
 	begun := math.NaN()
 	for i, v := range column {
 		at := p.Seconds[i]

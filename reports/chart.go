@@ -1,6 +1,7 @@
 package reports
 
 import (
+	"cmp"
 	"encoding/json"
 	"strings"
 
@@ -18,6 +19,15 @@ type drawing struct {
 	Reads  []reading      `json:"reads,omitempty"`
 	Links  []string       `json:"links,omitempty"` // overview: the page behind each point, by the third value
 	Names  []string       `json:"names,omitempty"` // overview: the text of each point
+	Many   bool           `json:"many,omitempty"`  // many lines, which have symbols
+	Marks  []chartMark    `json:"marks,omitempty"` // spans of the x axis with a word in them
+}
+
+// chartMark is a span of the x axis that is marked with a word.
+type chartMark struct {
+	From  float64 `json:"from"`
+	To    float64 `json:"to"`
+	Label string  `json:"label"`
 }
 
 // reading tells the page's script how to write a series at the cursor.
@@ -54,6 +64,9 @@ type series struct {
 	right    bool   // on the second y axis
 	still    bool   // a constant: nothing to read at the cursor
 	short    string // at the cursor; empty: name
+	symbol   string // on some of its points, where dashes are too few; empty: none
+
+	tableOnly bool // too small to be drawn
 }
 
 // marshalDrawings returns the drawings as JSON that may stand in a page: markup in
@@ -81,7 +94,7 @@ func points(x []float64, s series, samples []int) json.RawMessage {
 func lineSeries(s series, data json.RawMessage) charts.SingleSeries {
 	one := charts.SingleSeries{
 		Name: s.name, Type: "line", Data: data,
-		Symbol:    "none", // in the legend too, where the dash tells the lines apart
+		Symbol:    cmp.Or(s.symbol, "none"), // in the legend too
 		LineStyle: &opts.LineStyle{Type: s.dash, Width: 2},
 	}
 	if s.right {

@@ -20,6 +20,9 @@ type timeFigure struct {
 	series    []series
 	right     string // name with unit of the second axis; empty: none
 	below     []axisSpan
+	marks     []chartMark
+	many      bool    // many lines, with symbols
+	logFrom   float64 // the left axis is logarithmic and begins here; 0: linear
 	fromZero  bool
 }
 
@@ -81,8 +84,13 @@ func (fr *frame) draw(fig *timeFigure) drawing {
 	if fig.right != "" {
 		line.ExtendYAxis(opts.YAxis{Type: "value", Name: fig.right, Scale: opts.Bool(true), Position: "right", AlignTicks: opts.Bool(true)})
 	}
-	d := drawing{ID: fig.id, Kind: "time", Axis: &fr.axis}
-	for k, s := range fig.series {
+	d := drawing{ID: fig.id, Kind: "time", Axis: &fr.axis, Marks: fig.marks, Many: fig.many}
+	k := -1
+	for _, s := range fig.series {
+		if s.tableOnly {
+			continue
+		}
+		k++
 		one := lineSeries(s, points(fr.x, s, fr.samples))
 		if k == 0 && len(fig.below) > 0 {
 			one.MarkAreas = markBelow(fig.below)
@@ -101,15 +109,30 @@ func (fr *frame) draw(fig *timeFigure) drawing {
 	return d
 }
 
-// leftAxis returns the axis of the first series. A level that hardly moves gets a
+// lesser returns the lesser of two numbers, or the one that exists.
+func lesser(a, b float64) float64 {
+	if !(a <= b) && finite(b) {
+		return b
+	}
+	return a
+}
+
+// leftAxis returns the axis of all series but those on the right. A level that hardly moves gets a
 // unit of room on either side, where the chart's own choice would be half the value.
 func (fig *timeFigure) leftAxis() opts.YAxis {
 	axis := opts.YAxis{Type: "value", Name: axisName(fig.quantity, fig.unit), Scale: opts.Bool(!fig.fromZero)}
+	if fig.logFrom > 0 {
+		axis.Type, axis.Min = "log", fig.logFrom
+	}
 	if fig.fromZero {
 		return axis
 	}
-	s := fig.series[0]
-	least, greatest := leastOf(s.values)/s.divisor, greatestOf(s.values)/s.divisor
+	least, greatest := math.NaN(), math.NaN()
+	for _, s := range fig.series {
+		if !s.right {
+			least, greatest = lesser(least, leastOf(s.values)/s.divisor), -lesser(-greatest, -greatestOf(s.values)/s.divisor)
+		}
+	}
 	if greatest-least < 1 {
 		axis.Min, axis.Max = math.Floor(least)-1, math.Ceil(greatest)+1
 	}

@@ -34,5 +34,29 @@ func checkPass(p *Pass) error {
 			return fmt.Errorf("the profile has %d values of %s for %d samples", len(c.values), c.name, n)
 		}
 	}
+	return checkSky(p.Radio, n)
+}
+
+// checkSky refuses columns of the path and of the clear sky that do not fit the
+// samples.
+func checkSky(r *Radio, n int) error {
+	var list []column
+	for _, parts := range [][]Contributor{r.PathParts, r.NoiseParts} {
+		for _, c := range parts {
+			list = append(list, column{name: c.Name, values: c.Values})
+		}
+	}
+	if len(r.PathParts) > 0 {
+		list = append(list, column{name: "path attenuation", values: r.PathTotalDB})
+	}
+	if c := r.ClearSky; c != nil {
+		list = append(list, column{name: "received power under a clear sky", values: c.ReceivedPowerDBm},
+			column{name: "margin under a clear sky", values: c.MarginDB}, column{name: "rate under a clear sky", values: c.AchievableRateBps})
+	}
+	for _, c := range list {
+		if len(c.values) != n {
+			return fmt.Errorf("the pass has %d values of %s for %d samples", len(c.values), c.name, n)
+		}
+	}
 	return nil
 }

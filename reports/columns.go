@@ -42,22 +42,53 @@ func columns(p *Pass) []column {
 			column{"mode_bytes", 0, p.Radio.ModeBytes},
 		)
 	}
+	return ofLength(list, len(f.Seconds))
+}
+
+// laterColumns lists the columns that came to stand behind all of columns: the path's,
+// the noise's, and those of the pass under a clear sky.
+func laterColumns(p *Pass) []column {
+	if p.Radio == nil {
+		return nil
+	}
+	f, r := p.Profile, p.Radio
+	list := []column{{"path_attenuation_db", 3, r.PathTotalDB}}
+	for _, n := range r.NoiseParts {
+		list = append(list, column{"noise_" + underscored(n.Name) + "_k", 2, n.Values})
+	}
+	list = append(list, column{"sun_off_beam_deg", 2, f.SunDeg}, column{"moon_off_beam_deg", 2, f.MoonDeg})
+	if c := r.ClearSky; c != nil {
+		list = append(list,
+			column{"clear_sky_received_power_dbm", 3, c.ReceivedPowerDBm},
+			column{"clear_sky_system_noise_k", 2, c.SystemNoiseK},
+			column{"clear_sky_margin_db", 3, c.MarginDB},
+			column{"clear_sky_achievable_rate_bps", 0, c.AchievableRateBps},
+			column{"clear_sky_achievable_bytes", 0, r.ClearAchievableBytes},
+			column{"clear_sky_mode_bytes", 0, r.ClearModeBytes},
+		)
+	}
+	return ofLength(list, len(f.Seconds))
+}
+
+// ofLength keeps the columns that have a value for each sample.
+func ofLength(list []column, samples int) []column {
 	kept := list[:0]
 	for _, c := range list {
-		if len(c.values) == len(f.Seconds) {
+		if len(c.values) == samples {
 			kept = append(kept, c)
 		}
 	}
 	return kept
 }
 
+func underscored(s string) string { return strings.ReplaceAll(slug(s), "-", "_") }
+
 // termColumns gives each term of the budget a column named after it and its unit;
 // a loss stays a positive number.
 func termColumns(f *downlink.Profile) []column {
 	list := make([]column, 0, len(f.Terms))
 	for i, t := range f.Terms {
-		name := "term_" + strings.ReplaceAll(slug(t.Name+" "+t.Unit), "-", "_")
-		list = append(list, column{name, 3, f.TermValues[i]})
+		list = append(list, column{"term_" + underscored(t.Name+" "+t.Unit), 3, f.TermValues[i]})
 	}
 	return list
 }

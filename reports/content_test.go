@@ -106,7 +106,7 @@ func TestNoNaNLeaves(t *testing.T) {
 		p, err := load(ctx, i)
 		f := p.Profile
 		nan, inf := math.NaN(), math.Inf(-1)
-		for _, c := range columns(p) {
+		for _, c := range append(columns(p), laterColumns(p)...) {
 			for k := range c.values {
 				if k%3 == 1 {
 					c.values[k] = nan
@@ -141,7 +141,7 @@ func TestNoNaNLeaves(t *testing.T) {
 
 // Every number of a chart stands in the CSV and the JSON, and both say the same.
 func TestFilesAgree(t *testing.T) {
-	p := fixturePass(basicShape())
+	p := skyPass()
 	rows, err := csv.NewReader(bytes.NewReader(samplesCSV(p))).ReadAll()
 	if err != nil {
 		t.Fatal(err)

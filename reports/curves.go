@@ -62,7 +62,7 @@ func CurvesPage(c *Curves) ([]byte, error) {
 			}
 		}
 		drawings = append(drawings, c.draw(one))
-		v.Figures = append(v.Figures, figureView{ID: one.ID, Title: one.Title, Caption: one.Caption, Table: c.table(one)})
+		v.Figures = append(v.Figures, figureView{ID: one.ID, Title: one.Title, Caption: one.Caption, Table: c.table(one), Many: len(one.Curves) > len(fewDashes)})
 	}
 	data, err := marshalDrawings(map[string]any{"drawings": drawings})
 	if err != nil {
@@ -70,12 +70,12 @@ func CurvesPage(c *Curves) ([]byte, error) {
 	}
 	v.Data = dataElement(data)
 	var out bytes.Buffer
-	err = pageTemplates.ExecuteTemplate(&out, "curves.html", v)
+	err = pageTemplates().ExecuteTemplate(&out, "curves.html", v)
 	return out.Bytes(), err
 }
 
-// curveDashes tell lines apart beside the two colours, which alternate.
-var curveDashes = [...]string{solid, dashed, dotted, solid, dashed, dotted}
+// fewDashes tell up to three lines apart; more of them need symbols.
+var fewDashes = [...]string{solid, dotted, dashed}
 
 func (c *Curves) draw(one *CurveChart) drawing {
 	x := opts.XAxis{Type: "value", Name: axisName(c.X.Name, c.X.Unit), Min: c.X.Values[0], Max: c.X.Values[len(c.X.Values)-1]}
@@ -91,11 +91,15 @@ func (c *Curves) draw(one *CurveChart) drawing {
 		all[i] = i
 	}
 	for i, k := range one.Curves {
-		s := series{name: k.Name, dash: curveDashes[i%len(curveDashes)], values: k.Values, divisor: 1, decimals: 3}
+		look := looks[i%len(looks)]
+		if len(one.Curves) <= len(fewDashes) {
+			look.dash, look.symbol = fewDashes[i], ""
+		}
+		s := series{name: k.Name, dash: look.dash, symbol: look.symbol, values: k.Values, divisor: 1, decimals: 3}
 		line.MultiSeries = append(line.MultiSeries, lineSeries(s, points(c.X.Values, s, all)))
 	}
 	line.Validate()
-	return drawing{ID: one.ID, Kind: "curve", Option: plain(line.JSON())}
+	return drawing{ID: one.ID, Kind: "curve", Many: len(one.Curves) > len(fewDashes), Option: plain(line.JSON())}
 }
 
 // table writes the numbers of a chart, a row a point.

@@ -88,3 +88,39 @@ func TestCurvesPageDraws(t *testing.T) {
 		}
 	}
 }
+
+// Few lines are told apart by their dashes, many by symbols too.
+func TestCurvesDifferWithoutColour(t *testing.T) {
+	for count := 2; count <= len(looks); count++ {
+		c := someCurves()
+		c.Charts[0].Curves = nil
+		for i := range count {
+			c.Charts[0].Curves = append(c.Charts[0].Curves, Curve{string(rune('a' + i)), []float64{1, 2, 3}})
+		}
+		js, err := json.Marshal(c.draw(&c.Charts[0]))
+		if err != nil {
+			t.Fatal(err)
+		}
+		var d struct {
+			Option struct {
+				Series []struct {
+					Symbol    string
+					LineStyle struct{ Type string }
+				}
+			}
+		}
+		if err := json.Unmarshal(js, &d); err != nil {
+			t.Fatal(err)
+		}
+		seen := map[string]bool{}
+		for _, s := range d.Option.Series {
+			seen[s.LineStyle.Type+" "+s.Symbol] = true
+			if count <= 3 && s.Symbol != "none" {
+				t.Errorf("%d lines have symbols", count)
+			}
+		}
+		if len(seen) != count {
+			t.Errorf("%d lines have %d looks", count, len(seen))
+		}
+	}
+}

@@ -29,6 +29,9 @@ func eventTable(p *Pass) budgetView {
 		rows = append(rows, line("received power", "dBm", func(e event) string { return fixed(f.ReceivedPowerDBm[e.sample], 1) }))
 		if finite(p.Radio.Greatest.Value) {
 			rows = append(rows, line("margin", "dB", func(e event) string { return fixed(f.MarginDB[e.sample], 1) }))
+			if c := p.Radio.ClearSky; c != nil {
+				rows = append(rows, line("margin under a clear sky", "dB", func(e event) string { return fixed(c.MarginDB[e.sample], 1) }))
+			}
 		}
 	}
 	view.Parts = []budgetPart{{Rows: rows}}

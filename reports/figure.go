@@ -10,6 +10,7 @@ import (
 type figureView struct {
 	ID, Title, Caption string
 	Table              template.HTML
+	Many               bool // many lines: a higher drawing
 }
 
 // figures returns the charts of a pass and what the page shows of them.
@@ -19,12 +20,12 @@ func figures(p *Pass, fr *frame) ([]drawing, []figureView) {
 	var views []figureView
 	for _, fig := range timeFigures(p, fr) {
 		drawings = append(drawings, fr.draw(&fig))
-		views = append(views, figureView{fig.id, fig.title, fig.caption, fig.table(p, rows)})
+		views = append(views, figureView{fig.id, fig.title, fig.caption, fig.table(p, rows), fig.many})
 	}
 	// The sky is twice as high as the others: with an odd one after it the columns end
 	// level.
 	last := max(len(views)-1, 0)
-	sky := figureView{"sky", "Track on the sky", skyText(p), skyTable(p, rows)}
+	sky := figureView{ID: "sky", Title: "Track on the sky", Caption: skyText(p), Table: skyTable(p, rows)}
 	return slices.Insert(drawings, last, drawSky(p, fr)), slices.Insert(views, last, sky)
 }
 

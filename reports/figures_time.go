@@ -1,16 +1,20 @@
 package reports
 
-import "slantwise/downlink"
+import (
+	"slices"
+
+	"slantwise/downlink"
+)
 
 // timeFigures lists the charts over time of a pass, in the order of the page.
 func timeFigures(p *Pass, fr *frame) []timeFigure {
 	var list []timeFigure
 	if p.Radio != nil {
-		list = append(list, powerFigure(p), marginFigure(p, fr), rateFigure(p))
+		list = append(list, powerFigure(p), marginFigure(p, fr), rateFigure(p, fr))
 	}
 	list = append(list, heightFigure(p))
 	if p.Radio != nil {
-		list = append(list, dopplerFigure(p))
+		list = append(list, pathFigure(p), noiseFigure(p, fr), dopplerFigure(p))
 		if finite(p.Profile.Volume.AchievableBytes) {
 			list = append(list, volumeFigure(p))
 		}
@@ -27,6 +31,9 @@ func timeFigures(p *Pass, fr *frame) []timeFigure {
 // drawable tells whether there is anything to draw: columns of the full length, and
 // in the first of them a number.
 func (fig *timeFigure) drawable(samples int) bool {
+	if len(fig.series) == 0 {
+		return false
+	}
 	for _, s := range fig.series {
 		if len(s.values) != samples {
 			return false
@@ -41,36 +48,55 @@ func (fig *timeFigure) drawable(samples int) bool {
 }
 
 func powerFigure(p *Pass) timeFigure {
-	return timeFigure{
+	fig := timeFigure{
 		id: "power", title: "Received power", quantity: "received power", unit: "dBm",
-		caption: "Received power at the input of the first amplifier, whole carrier, in dBm over UTC.",
+		caption: "Received power at the input of the first amplifier, whole carrier, in dBm over UTC." + besideClear(p),
 		series:  []series{{name: "received power", short: "power", dash: solid, values: p.Profile.ReceivedPowerDBm, divisor: 1, decimals: 2}},
 	}
+	if c := p.Radio.ClearSky; c != nil {
+		fig.series[0].name = exceededName(p)
+		fig.series = append(fig.series, clearSeries("power", c.ReceivedPowerDBm, 1, 2))
+	}
+	return fig
 }
 
 func marginFigure(p *Pass, fr *frame) timeFigure {
 	f := p.Profile
-	return timeFigure{
-		id: "margin", title: "Margin", quantity: "margin", unit: "dB", fromZero: true,
+	fig := timeFigure{
+		id: "margin", title: "Margin", quantity: "margin", unit: "dB", fromZero: true, marks: fr.inBeam(p),
 		caption: "Margin of mode " + p.Radio.Mode + " in dB over UTC, with the required " + fixed(f.RequiredMarginDB, 1) +
-			" dB as a dashed line. Hatched: the time in which the margin is less than required.",
+			" dB as a dashed line. Hatched: the time in which the margin is less than required." + besideClear(p),
 		series: []series{
 			{name: "margin", dash: solid, values: f.MarginDB, divisor: 1, decimals: 2},
 			{name: "required", dash: dashed, values: constant(f.RequiredMarginDB, len(f.Seconds)), divisor: 1, decimals: 2, still: true},
 		},
 		below: fr.notClosing(p),
 	}
+	if c := p.Radio.ClearSky; c != nil {
+		fig.series[0].name, fig.series[0].short = exceededName(p), "margin"
+		fig.series = slices.Insert(fig.series, 1, clearSeries("margin", c.MarginDB, 1, 2))
+	}
+	return fig
 }
 
-func rateFigure(p *Pass) timeFigure {
+func rateFigure(p *Pass, fr *frame) timeFigure {
 	f := p.Profile
 	rate := f.DataRate.BitsPerSecond()
-	sc := scaleFor(maxOf(f.AchievableRateBps, []float64{rate}), rateScales)
+	clear := p.Radio.ClearSky
+	greatest := maxOf(f.AchievableRateBps, []float64{rate})
+	if clear != nil {
+		greatest = max(greatest, maxOf(clear.AchievableRateBps))
+	}
+	sc := scaleFor(greatest, rateScales)
 	fig := timeFigure{
-		id: "rate", title: "Achievable rate", quantity: "information rate", unit: sc.unit, fromZero: true,
+		id: "rate", title: "Achievable rate", quantity: "information rate", unit: sc.unit, fromZero: true, marks: fr.inBeam(p),
 		caption: "Highest information rate that the link carries with the required margin, in " + sc.unit + " over UTC" + limitText(f) +
-			". Dashed: the rate of mode " + p.Radio.Mode + ".",
+			". Dashed: the rate of mode " + p.Radio.Mode + "." + besideClear(p),
 		series: []series{{name: "achievable", short: "best rate", dash: solid, values: f.AchievableRateBps, divisor: sc.divisor}},
+	}
+	if clear != nil {
+		fig.series[0].name = exceededName(p)
+		fig.series = append(fig.series, clearSeries("best rate", clear.AchievableRateBps, sc.divisor, 0))
 	}
 	if rate > 0 {
 		fig.series = append(fig.series, series{name: "mode " + p.Radio.Mode, dash: dashed, values: constant(rate, len(f.Seconds)), divisor: sc.divisor, still: true})

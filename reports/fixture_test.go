@@ -27,6 +27,7 @@ type shape struct {
 	miss       float64 // km from the station to the ground track
 	power      float64 // dBm at 1000 km
 	noRadio    bool
+	sky        bool // a path, see addSky
 	cut        pass.Cut
 }
 
@@ -77,6 +78,9 @@ func fixturePass(s shape) *Pass {
 	q.AOSElevation, q.LOSElevation = at(f.ElevationDeg[0]), at(f.ElevationDeg[n-1])
 	if !s.noRadio {
 		fillRadio(p, s)
+		if s.sky {
+			addSky(p, s)
+		}
 	}
 	return p
 }
@@ -231,6 +235,7 @@ func fixtureReport(n int) *Report {
 		}
 		s.power = -100 - float64(i%4)*2.5
 		s.noRadio = i%7 == 6
+		s.sky = i%2 == 0
 		shapes[i] = s
 		r.Keys = append(r.Keys, Key{Spacecraft: s.spacecraft, Station: s.site.Name, AOS: s.aos})
 	}

@@ -41,6 +41,7 @@ func goldenReport() *Report {
 	r := fixtureReport(0)
 	shapes := []shape{basicShape(), basicShape(), basicShape()}
 	shapes[0].miss, shapes[0].half, shapes[0].power = 1100, 45, -104.6
+	shapes[0].sky = true
 	shapes[1].noRadio, shapes[1].half, shapes[1].site = true, 30, plateau()
 	shapes[1].aos = firstAOS.Add(95 * 60e9)
 	shapes[2].half, shapes[2].cut, shapes[2].aos = 40, 2, firstAOS.Add(71*3600e9)

@@ -6,6 +6,7 @@ import (
 	"slices"
 	"strconv"
 	"strings"
+	"time"
 )
 
 // indexView is what the template of the index shows.
@@ -22,6 +23,8 @@ type indexView struct {
 	Warnings              []Note
 	Assumptions, Defaults []Note
 	CSV, JSON             template.URL
+	Sky                   string   // what the path in the numbers is; empty: no row has one
+	Lacks                 []string // what is missing where
 }
 
 // stateCounts says how many passes there are, and how many pages of each kind: a pass
@@ -40,6 +43,8 @@ type rowView struct {
 	LeastSort, GreatestSort               string
 	ModeVolume, Achievable                string
 	ModeSort, AchievableSort              string
+	ClearLeast, ClearVolume               string // empty: no clear sky beside it
+	Sun                                   string // for how long it is in the beam; empty: it is not
 	Verdict                               verdict
 	Cut                                   string
 	Share                                 string // width of the bar beside the volume, percent
@@ -58,6 +63,7 @@ func indexPage(w *writer, rows []row) ([]byte, error) {
 		CSV:        indexCSVFile, JSON: indexJSONFile, Chart: len(rows) > 0,
 	}
 	v.addRows(rows)
+	v.addSky(rows)
 	for _, n := range r.Notes {
 		switch n.Kind {
 		case Warning:
@@ -81,7 +87,7 @@ func indexPage(w *writer, rows []row) ([]byte, error) {
 		}
 	}
 	var out bytes.Buffer
-	err := pageTemplates.ExecuteTemplate(&out, "index.html", v)
+	err := pageTemplates().ExecuteTemplate(&out, "index.html", v)
 	return out.Bytes(), err
 }
 
@@ -170,6 +176,12 @@ func newRowView(r *row, greatest float64) rowView {
 		Achievable: withUnit(r.achievableBytes, byteScales), AchievableSort: sortKey(r.achievableBytes, 0),
 		Verdict: r.verdict,
 		Cut:     map[string]string{"aos": "begins before the window", "los": "ends after the window", "both": "lasts beyond the window"}[r.cut],
+	}
+	if finite(r.clearModeBytes) {
+		v.ClearLeast, v.ClearVolume = fixed(r.clearLeast, 1), withUnit(r.clearModeBytes, byteScales)
+	}
+	if r.sunInBeam > 0 {
+		v.Sun = span(time.Duration(r.sunInBeam * float64(time.Second)))
 	}
 	if greatest > 0 && r.modeBytes > 0 {
 		v.Share = string(appendFixed(nil, 100*r.modeBytes/greatest, 1))

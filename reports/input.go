@@ -82,10 +82,13 @@ type Radio struct {
 	ClearSky *downlink.Profile
 	// Volume so far under the clear sky at each sample, in bytes; nil without ClearSky.
 	ClearAchievableBytes, ClearModeBytes []float64
+	ClearLeast, ClearGreatest            Moment // of ClearSky.MarginDB, as Least and Greatest
 
 	// Contributors to attenuation and noise along the pass, to be drawn over each other:
-	// each a column of Profile. Profile.SunDeg, MoonDeg and SunInBeam belong to them.
+	// each a column of Profile. Profile.SunDeg, MoonDeg, SunInBeam and MoonInBeam belong to
+	// them. Nil without a path.
 	PathParts, NoiseParts []Contributor
+	PathTotalDB           []float64 // the sum of PathParts, what is given back taken off
 }
 
 // PathInfo says what the numbers of the path are.

@@ -79,7 +79,7 @@ func TestPagesDrawAtAnyWidth(t *testing.T) {
 	o := observe(t, ctx)
 	root := onDisk(t, goldenReport(), Options{})
 	pages := map[string]int{
-		"index.html": 1, firstPage: 7, "passes/wagtail-1-high-plateau-20260310t121731z.html": 2,
+		"index.html": 1, firstPage: 9, "passes/wagtail-1-high-plateau-20260310t121731z.html": 2,
 	}
 	for _, s := range []screen{{375, "light"}, {768, "dark"}, {1440, "light"}} {
 		for name, charts := range pages {
@@ -107,7 +107,7 @@ func TestCursorGoesThroughAllCharts(t *testing.T) {
 	const hairs = `[...document.querySelectorAll('.hair')].map(h => Math.round(parseFloat(h.style.left)))`
 	before := ask[[]int](t, ctx, hairs)
 	words := ask[string](t, ctx, `document.getElementById('cursor-reading').textContent`)
-	for _, want := range []string{"10:43:16 UTC, 10:43:16 WET", "dBm", "margin", "Mbit/s", "km", "kHz", "azimuth", "MB"} {
+	for _, want := range []string{"10:43:16 UTC, 10:43:16 WET", "dBm", "margin", "Mbit/s", "km", "kHz", "azimuth", "MB", "margin, clear sky", "path", "noise"} {
 		if !strings.Contains(words, want) {
 			t.Errorf("the reading at the culmination lacks %q: %s", want, words)
 		}
@@ -218,8 +218,8 @@ func TestPageSaysWhatIsMissing(t *testing.T) {
 	if !ask[bool](t, ctx, `document.getElementById('missing').checkVisibility()`) {
 		t.Error("nothing says that the drawings are missing")
 	}
-	if got := ask[int](t, ctx, `document.querySelectorAll('.figure details[open] table').length`); got != 7 {
-		t.Errorf("%d tables are open, want 7", got)
+	if got := ask[int](t, ctx, `document.querySelectorAll('.figure details[open] table').length`); got != 9 {
+		t.Errorf("%d tables are open, want 9", got)
 	}
 }
 
@@ -228,7 +228,7 @@ var pdfPage = regexp.MustCompile(`/Type\s*/Page[^s]`)
 func TestPrintsOnA4(t *testing.T) {
 	ctx := browser(t)
 	root := onDisk(t, goldenReport(), Options{})
-	for name, want := range map[string]int{"index.html": 2, firstPage: 4} {
+	for name, want := range map[string]int{"index.html": 2, firstPage: 5} {
 		show(t, ctx, root+name, screen{1440, "dark"})
 		yes := true
 		pdf, err := chromedp.Run(ctx, chromedp.PrintToPDF(func(p *page.PrintToPDFParams) { p.PreferCSSPageSize = &yes }))

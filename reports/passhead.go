@@ -61,6 +61,10 @@ type radioJSON struct {
 	Closes           []intervalJSON `json:"closes"`
 	Modes            []modeJSON     `json:"modes"`
 	Budgets          []budgetJSON   `json:"budgets"`
+	Path             pathJSON       `json:"path"`
+	SunInBeam        []intervalJSON `json:"sun_in_beam"`
+	MoonInBeam       []intervalJSON `json:"moon_in_beam"`
+	ClearSky         *clearJSON     `json:"clear_sky"` // null where there is no other sky to compare with
 }
 
 type modeJSON struct {
@@ -121,12 +125,12 @@ func radioHead(p *Pass) *radioJSON {
 		GreatestMarginDB: number{r.Greatest.Value, 3}, GreatestUTC: utcText(r.Greatest.Time),
 		AchievableBytes: number{f.Volume.AchievableBytes, 0},
 		ModeBytes:       number{f.Volume.ModeBytes, 0},
-		Closes:          []intervalJSON{},
+		Closes:          intervals(f.Volume.Closes),
 		Modes:           []modeJSON{},
 		Budgets:         []budgetJSON{},
-	}
-	for _, c := range f.Volume.Closes {
-		h.Closes = append(h.Closes, intervalJSON{utcText(c.From), utcText(c.To)})
+		Path:            pathOf(&r.Path),
+		SunInBeam:       intervals(f.SunInBeam), MoonInBeam: intervals(f.MoonInBeam),
+		ClearSky: clearOf(r),
 	}
 	for _, m := range r.Modes {
 		h.Modes = append(h.Modes, modeJSON{m.Name, number{m.Rate.BitsPerSecond(), 0}, number{m.Closed.Seconds(), 3},

@@ -41,6 +41,7 @@ type linkView struct {
 	Strongest                                       string // empty: not known
 	ModeVolume, AchievableVolume                    string
 	ModeRate                                        string
+	Sky                                             skyView
 }
 
 // modeView is a line of the table of modes.
@@ -97,7 +98,7 @@ func passPage(w *writer, i int, p *Pass) ([]byte, error) {
 	}
 	var out bytes.Buffer
 	out.Grow(len(data) + 64<<10)
-	err = pageTemplates.ExecuteTemplate(&out, "pass.html", v)
+	err = pageTemplates().ExecuteTemplate(&out, "pass.html", v)
 	return out.Bytes(), err
 }
 
@@ -156,6 +157,7 @@ func newLinkView(p *Pass) *linkView {
 		ModeRate:         withUnit(f.DataRate.BitsPerSecond(), rateScales),
 		ModeVolume:       withUnit(f.Volume.ModeBytes, byteScales),
 		AchievableVolume: withUnit(f.Volume.AchievableBytes, byteScales),
+		Sky:              newSkyView(p),
 	}
 	if s := greatestOf(f.ReceivedPowerDBm); finite(s) {
 		l.Strongest = fixed(s, 1)

@@ -5,6 +5,7 @@ import (
 	"encoding/csv"
 	"encoding/json"
 	"math"
+	"strings"
 	"time"
 )
 
@@ -20,6 +21,9 @@ type row struct {
 	verdict                    verdict
 	least, greatest, required  float64
 	modeBytes, achievableBytes float64
+	path                       PathInfo
+	clearLeast, clearModeBytes float64 // under a clear sky
+	sunInBeam                  float64 // seconds
 }
 
 func newRow(page string, p *Pass) row {
@@ -30,11 +34,22 @@ func newRow(page string, p *Pass) row {
 		aos: q.AOS, culmination: q.Culmination, los: q.LOS,
 		maxElevationDeg: q.MaxElevation.Degrees(), cut: q.Cut.String(), verdict: verdictOf(p),
 		least: none, greatest: none, required: none, modeBytes: none, achievableBytes: none,
+		clearLeast: none, clearModeBytes: none, sunInBeam: none,
 	}
 	if p.Radio != nil {
 		r.link, r.mode = p.Radio.Transmitter+" to "+p.Radio.Antenna, p.Radio.Mode
 		r.least, r.greatest, r.required = p.Radio.Least.Value, p.Radio.Greatest.Value, p.Profile.RequiredMarginDB
 		r.modeBytes, r.achievableBytes = p.Profile.Volume.ModeBytes, p.Profile.Volume.AchievableBytes
+		r.path = p.Radio.Path
+		if c := p.Radio.ClearSky; c != nil {
+			r.clearLeast, r.clearModeBytes = p.Radio.ClearLeast.Value, c.Volume.ModeBytes
+		}
+		if in := p.Profile.SunInBeam; in != nil {
+			r.sunInBeam = 0
+			for _, s := range in {
+				r.sunInBeam += s.To.Sub(s.From).Seconds()
+			}
+		}
 	}
 	return r
 }
@@ -67,6 +82,11 @@ var indexFields = []field{
 	{name: "mode_bytes", number: func(r *row) number { return number{r.modeBytes, 0} }},
 	{name: "achievable_bytes", number: func(r *row) number { return number{r.achievableBytes, 0} }},
 	{name: "page", text: func(r *row) string { return passFolder + "/" + r.page + ".html" }},
+	{name: "exceeded_percent", number: func(r *row) number { return exceeded(&r.path) }},
+	{name: "missing", text: func(r *row) string { return strings.Join(r.path.Missing, " ") }},
+	{name: "clear_sky_least_margin_db", number: func(r *row) number { return number{r.clearLeast, 3} }},
+	{name: "clear_sky_mode_bytes", number: func(r *row) number { return number{r.clearModeBytes, 0} }},
+	{name: "sun_in_beam_s", number: func(r *row) number { return number{r.sunInBeam, 3} }},
 }
 
 func (r *row) closedSeconds() float64 {

@@ -17,31 +17,43 @@ func samplesCSV(p *Pass) []byte { return appendCSV(nil, p) }
 
 // appendCSV appends what samplesCSV returns.
 func appendCSV(dst []byte, p *Pass) []byte {
-	cols := columns(p)
+	cols, later := columns(p), laterColumns(p)
 	f := p.Profile
-	dst = slices.Grow(dst, (len(f.Seconds)+1)*(26+9*len(cols)))
+	dst = slices.Grow(dst, (len(f.Seconds)+1)*(26+9*(len(cols)+len(later))))
 	dst = append(dst, "utc"...)
-	for _, c := range cols {
-		dst = append(append(dst, ','), c.name...)
-	}
+	dst = appendNames(dst, cols)
 	words := p.Radio != nil && len(f.AchievableLimit) == len(f.Seconds) && len(f.Usable) == len(f.Seconds)
 	if words {
 		dst = append(dst, ",achievable_limit,usable"...)
 	}
+	dst = appendNames(dst, later)
 	dst = append(dst, '\n')
 	for i, s := range f.Seconds {
 		dst = sampleTime(f.Start, s).AppendFormat(dst, utcLayout)
-		for k := range cols {
-			dst = append(dst, ',')
-			if v := cols[k].values[i]; finite(v) {
-				dst = appendFixed(dst, v, cols[k].decimals)
-			}
-		}
+		dst = appendRow(dst, cols, i)
 		if words {
 			dst = append(append(dst, ','), limitName(f.AchievableLimit[i])...)
 			dst = append(append(dst, ','), yesNo(f.Usable[i])...)
 		}
-		dst = append(dst, '\n')
+		dst = append(appendRow(dst, later, i), '\n')
+	}
+	return dst
+}
+
+func appendNames(dst []byte, cols []column) []byte {
+	for _, c := range cols {
+		dst = append(append(dst, ','), c.name...)
+	}
+	return dst
+}
+
+// appendRow writes the values of a sample; what does not exist is empty.
+func appendRow(dst []byte, cols []column, sample int) []byte {
+	for k := range cols {
+		dst = append(dst, ',')
+		if v := cols[k].values[sample]; finite(v) {
+			dst = appendFixed(dst, v, cols[k].decimals)
+		}
 	}
 	return dst
 }
@@ -63,7 +75,7 @@ func appendPassJSON(dst []byte, p *Pass) ([]byte, error) {
 	if err != nil {
 		return nil, err
 	}
-	cols := columns(p)
+	cols := append(columns(p), laterColumns(p)...)
 	f := p.Profile
 	dst = slices.Grow(dst, len(head)+len(f.Seconds)*(28+9*len(cols)))
 	dst = append(dst, head[:len(head)-1]...) // the closing brace comes after the samples

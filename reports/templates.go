@@ -6,12 +6,17 @@ import (
 	"html/template"
 	"math"
 	"strings"
+	"sync"
 )
 
 //go:embed pages/*.html
 var templateFiles embed.FS
 
-var pageTemplates = template.Must(template.ParseFS(templateFiles, "pages/*.html"))
+// pageTemplates parses the templates once, when a page is first made: other commands
+// start without them.
+var pageTemplates = sync.OnceValue(func() *template.Template {
+	return template.Must(template.ParseFS(templateFiles, "pages/*.html"))
+})
 
 // pageView is what every page has.
 type pageView struct {

@@ -36,18 +36,22 @@
     };
   }
 
-  // hatching marks an area without colour.
-  function hatching(colour) {
+  // tile returns a pattern that marks an area without colour.
+  function tile(size, colour, paint) {
     var c = document.createElement('canvas');
-    c.width = c.height = 8;
+    c.width = c.height = size;
     var g = c.getContext('2d');
-    g.strokeStyle = colour;
-    g.lineWidth = 1;
-    [[-2, 2], [-2, 10], [6, 10]].forEach(function (p) {
-      g.beginPath(); g.moveTo(p[0], p[1]); g.lineTo(p[0] + 12, p[1] - 12); g.stroke();
-    });
+    g.strokeStyle = g.fillStyle = colour;
+    paint(g);
     return { image: c, repeat: 'repeat' };
   }
+
+  function strokes(g) {
+    [[-2, 2], [-2, 10], [6, 10]].forEach(function (p) { g.moveTo(p[0], p[1]); g.lineTo(p[0] + 12, p[1] - 12); });
+    g.stroke();
+  }
+
+  function dots(g) { g.fillRect(2, 2, 2, 2); }
 
   function styled(axis, p) {
     axis.axisLine = { show: true, lineStyle: { color: p.soft } };
@@ -80,20 +84,72 @@
   }
 
   // forCurve is for lines over a quantity that is not time.
-  function forCurve(o, spec, p) {
+  function forCurve(o, spec, p, width) {
     var x = o.xAxis[0];
     x.axisLabel = { hideOverlap: true, formatter: function (v) { return String(v).replace('-', '−'); } };
     x.nameLocation = 'middle';
     x.nameGap = 26;
     forLines(o, p);
-    // Six lines keep apart by two colours and three dashes.
-    o.series.forEach(function (s, k) { s.lineStyle.color = p.lines[Math.floor(k / 3) % 2]; s.itemStyle = { color: s.lineStyle.color }; });
-    if (o.series.length > 3) { o.grid.top = window.innerWidth < 600 ? 90 : 68; }
+    if (spec.many) { forMany(o, p); }
+    underLegend(o, width);
   }
 
-  function forTime(o, spec, p) {
+  function forTime(o, spec, p, width) {
     timeLabels(o.xAxis[0], spec);
     forLines(o, p);
+    if (spec.many) { forMany(o, p); }
+    underLegend(o, width);
+    if (spec.marks) { marked(o, spec, p); }
+    if (o.yAxis[0].type === 'log') { positive(o); }
+  }
+
+  // forMany is for charts with many lines: the sum in ink, its parts in two colours with
+  // a symbol of their own on some of their points.
+  function forMany(o, p) {
+    o.series.forEach(function (s, k) {
+      var colour = k ? p.lines[k % 2] : p.ink;
+      s.lineStyle.color = colour;
+      s.lineStyle.width = k ? 1.5 : 2.5;
+      s.itemStyle = { color: colour };
+      if (s.symbol === 'none') { return; }
+      s.symbolSize = 8;
+      var step = Math.max(1, Math.round(s.data.length / 9));
+      s.data = s.data.map(function (q, i) {
+        return (i + k * 2) % step === Math.floor(step / 2) ? { value: q } : { value: q, symbol: 'none' };
+      });
+    });
+    o.legend.itemGap = 10;
+    o.legend.itemStyle = {};
+    o.legend.data = o.series.map(function (s) { return s.symbol === 'none' ? { name: s.name, itemStyle: { opacity: 0 } } : s.name; });
+  }
+
+  // positive leaves gaps where a logarithmic scale has no place.
+  function positive(o) {
+    o.series.forEach(function (s) {
+      s.data = s.data.map(function (q) { return (q.value || q)[1] > 0 ? q : [(q.value || q)[0], null]; });
+    });
+  }
+
+  // underLegend leaves room for as many rows as the names of the lines need.
+  function underLegend(o, width) {
+    if (!o.legend.show) { return; }
+    var x = 0, rows = 1, g = document.createElement('canvas').getContext('2d');
+    g.font = '12px ' + o.textStyle.fontFamily;
+    o.series.forEach(function (s) {
+      var w = o.legend.itemWidth + 5 + g.measureText(s.name).width;
+      if (x > 0 && x + w > width) { rows += 1; x = 0; }
+      x += w + o.legend.itemGap;
+    });
+    o.grid.top = 24 + rows * (14 + o.legend.itemGap);
+  }
+
+  // marked hatches the spans in which something is in the beam, with a word in them.
+  function marked(o, spec, p) {
+    var s = o.series[o.series.length - 1];
+    s.markArea = {
+      silent: true, itemStyle: { color: tile(6, p.soft, dots), borderColor: p.soft, borderWidth: 1 }, label: { color: p.ink, fontSize: 11, position: 'top', distance: 1 },
+      data: spec.marks.map(function (m) { return [{ xAxis: m.from, name: m.label }, { xAxis: m.to }]; })
+    };
   }
 
   function forLines(o, p) {
@@ -109,9 +165,9 @@
     o.xAxis[0].splitLine = { show: false };
     o.xAxis[0].axisLine.onZero = false;
     o.legend = { show: legend, left: 0, top: 21, padding: 0, itemWidth: 34, itemGap: 16, itemStyle: { opacity: 0 }, textStyle: { color: p.ink, fontSize: 12 } };
-    o.grid = { left: 50, right: o.yAxis[1] ? 50 : 22, top: legend ? 48 : 28, bottom: 44 };
+    o.grid = { left: 50, right: o.yAxis[1] ? 50 : 22, top: 28, bottom: 44 };
     o.series.forEach(function (s) {
-      if (s.markArea) { s.markArea.silent = true; s.markArea.itemStyle = { color: hatching(p.hatch) }; }
+      if (s.markArea) { s.markArea.silent = true; s.markArea.itemStyle = { color: tile(8, p.hatch, strokes) }; }
       s.silent = true;
     });
   }
@@ -177,13 +233,13 @@
     });
   }
 
-  function finished(spec, p) {
+  function finished(spec, p, width) {
     var o = JSON.parse(JSON.stringify(spec.option));
     o.color = p.lines;
     o.backgroundColor = 'transparent';
     o.textStyle = { fontFamily: getComputedStyle(document.body).fontFamily, color: p.ink };
     if (o.xAxis) { o.xAxis[0].nameTextStyle = { color: p.ink, fontSize: 12 }; }
-    ({ time: forTime, curve: forCurve, sky: forSky, overview: forOverview })[spec.kind](o, spec, p);
+    ({ time: forTime, curve: forCurve, sky: forSky, overview: forOverview })[spec.kind](o, spec, p, width);
     return o;
   }
 
@@ -196,10 +252,12 @@
       var opts = { renderer: c.spec.names && c.spec.names.length > 300 ? 'canvas' : 'svg' };
       if (size) {
         opts.width = c.spec.kind === 'overview' ? size.wide : size.width;
-        opts.height = c.spec.kind === 'sky' ? size.sky : c.spec.kind === 'overview' ? c.box.clientHeight : size.height;
+        opts.height = c.spec.kind === 'sky' ? size.sky : c.spec.many ? size.many : c.spec.kind === 'overview' ? c.box.clientHeight : size.height;
       }
       c.chart = window.echarts.init(c.box, null, opts);
-      c.chart.setOption(finished(c.spec, p));
+      var o = finished(c.spec, p, opts.width || c.box.clientWidth);
+      c.top = o.grid && o.grid.top;
+      c.chart.setOption(o);
       c.box.appendChild(c.hair);
       if (c.spec.links) {
         c.chart.on('click', function (q) { window.location.href = c.spec.links[q.value[2]]; });
@@ -231,7 +289,7 @@
       if (c.spec.kind === 'time') {
         q = c.chart.convertToPixel({ xAxisIndex: 0 }, samples[at]);
         c.hair.style.left = q + 'px';
-        c.hair.style.top = c.spec.option.series.length > 1 ? '48px' : '28px';
+        c.hair.style.top = c.top + 'px';
       } else if (c.spec.kind === 'sky') {
         q = c.chart.convertToPixel({ seriesIndex: 0 }, c.spec.option.series[0].data[at]);
         c.hair.style.left = q[0] + 'px';
@@ -308,7 +366,7 @@
     });
     window.addEventListener('beforeprint', function () {
       page.classList.add('printing');
-      draw({ width: 336, height: 190, sky: 380, wide: 690 });
+      draw({ width: 336, height: 205, many: 285, sky: 410, wide: 690 });
     });
     window.addEventListener('afterprint', function () {
       page.classList.remove('printing');

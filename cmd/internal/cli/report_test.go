@@ -146,6 +146,17 @@ func TestReportVolumes(t *testing.T) {
 				t.Errorf("%s over %s: mode %s brings %v bytes, the chosen one %v", p.Spacecraft, p.Site.Name, m.Name, m.Bytes, v.ModeBytes)
 			}
 		}
+		for i, power := range p.Profile.ReceivedPowerDBm {
+			rest := 0.0
+			for k, term := range p.Profile.Terms {
+				if !ofThePath(term) {
+					rest += float64(term.Sign) * p.Profile.TermValues[k][i]
+				}
+			}
+			if math.Abs(rest-p.Radio.PathTotalDB[i]-power) > 1e-9 { // rounding of some twenty terms near 200 dB
+				t.Fatalf("%s over %s, sample %d: %v dBm without the path, %v dB of path, %v dBm received", p.Spacecraft, p.Site.Name, i, rest, p.Radio.PathTotalDB[i], power)
+			}
+		}
 		if d := p.Radio.LeastMargin; math.Abs(float64(d.Margin)-p.Radio.Least.Value) > 1e-6 {
 			t.Errorf("%s over %s: the budget at least margin has %v dB, the least margin is %v", p.Spacecraft, p.Site.Name, d.Margin, p.Radio.Least.Value)
 		}

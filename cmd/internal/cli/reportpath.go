@@ -22,6 +22,7 @@ func addPath(r *reports.Radio, s *scenario.Scenario, craft *reportCraft, page *r
 			r.PathParts = append(r.PathParts, reports.Contributor{Name: t.Name, Values: f.TermValues[i], Sign: -t.Sign})
 		}
 	}
+	r.PathTotalDB = totalOf(r.PathParts, len(f.Seconds))
 	for i, n := range f.NoiseParts {
 		r.NoiseParts = append(r.NoiseParts, reports.Contributor{Name: n.Name, Values: f.NoiseK[i], Sign: 1})
 	}
@@ -37,7 +38,22 @@ func addPath(r *reports.Radio, s *scenario.Scenario, craft *reportCraft, page *r
 	}
 	r.ClearSky = fine
 	r.ClearAchievableBytes, r.ClearModeBytes = fine.VolumeSoFar()
+	r.ClearLeast, r.ClearGreatest = extremes(fine)
 	return nil
+}
+
+// totalOf adds the contributors sample by sample; nil for none.
+func totalOf(parts []reports.Contributor, samples int) []float64 {
+	if len(parts) == 0 {
+		return nil
+	}
+	total := make([]float64, samples)
+	for _, p := range parts {
+		for i, v := range p.Values {
+			total[i] += float64(p.Sign) * v
+		}
+	}
+	return total
 }
 
 // ofThePath tells whether a term is one of the air's or the ionosphere's.
