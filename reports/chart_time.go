@@ -19,6 +19,7 @@ type timeFigure struct {
 	quantity  string
 	series    []series
 	right     string // name with unit of the second axis; empty: none
+	rightUnit string
 	below     []axisSpan
 	marks     []chartMark
 	many      bool    // many lines, with symbols
@@ -98,7 +99,7 @@ func (fr *frame) draw(fig *timeFigure) drawing {
 		line.MultiSeries = append(line.MultiSeries, one)
 		unit := fig.unit
 		if s.right {
-			unit = "km"
+			unit = fig.rightUnit
 		}
 		if !s.still {
 			d.Reads = append(d.Reads, reading{Series: k, Label: cmp.Or(s.short, s.name), Unit: unit, Decimals: s.decimals})

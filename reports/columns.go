@@ -46,7 +46,7 @@ func columns(p *Pass) []column {
 }
 
 // laterColumns lists the columns that came to stand behind all of columns: the path's,
-// the noise's, and those of the pass under a clear sky.
+// the noise's, those of the pass under a clear sky, and the rate plan's.
 func laterColumns(p *Pass) []column {
 	if p.Radio == nil {
 		return nil
@@ -66,6 +66,9 @@ func laterColumns(p *Pass) []column {
 			column{"clear_sky_achievable_bytes", 0, r.ClearAchievableBytes},
 			column{"clear_sky_mode_bytes", 0, r.ClearModeBytes},
 		)
+	}
+	if r.Plan != nil {
+		list = append(list, planColumns(r.Plan)...)
 	}
 	return ofLength(list, len(f.Seconds))
 }

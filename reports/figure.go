@@ -36,7 +36,7 @@ func (fig *timeFigure) table(p *Pass, rows []int) template.HTML {
 	for _, s := range fig.series {
 		unit := fig.unit
 		if s.right {
-			unit = "km"
+			unit = fig.rightUnit
 		}
 		heads = append(heads, axisName(s.name, unit))
 		scaled := make([]float64, len(s.values))

@@ -12,6 +12,9 @@ func timeFigures(p *Pass, fr *frame) []timeFigure {
 	if p.Radio != nil {
 		list = append(list, powerFigure(p), marginFigure(p, fr), rateFigure(p, fr))
 	}
+	if p.Radio != nil && p.Radio.Plan != nil {
+		list = append(list, planFigure(p, fr))
+	}
 	list = append(list, heightFigure(p))
 	if p.Radio != nil {
 		list = append(list, pathFigure(p), noiseFigure(p, fr), dopplerFigure(p))
@@ -127,7 +130,7 @@ func limitText(f *downlink.Profile) string {
 func heightFigure(p *Pass) timeFigure {
 	f := p.Profile
 	return timeFigure{
-		id: "height", title: "Elevation and range", quantity: "elevation", unit: "deg", fromZero: true, right: "range, km",
+		id: "height", title: "Elevation and range", quantity: "elevation", unit: "deg", fromZero: true, right: "range, km", rightUnit: "km",
 		caption: "Geometric elevation in degrees (left, solid) and slant range in km (right, dashed) over UTC.",
 		series: []series{
 			{name: "elevation", dash: solid, values: f.ElevationDeg, divisor: 1, decimals: 2},

@@ -44,6 +44,7 @@ type rowView struct {
 	ModeVolume, Achievable                string
 	ModeSort, AchievableSort              string
 	ClearLeast, ClearVolume               string // empty: no clear sky beside it
+	Plan, PlanShare                       string // bytes at the rate plan and percent of free switching; empty: none
 	Sun                                   string // for how long it is in the beam; empty: it is not
 	Verdict                               verdict
 	Cut                                   string
@@ -179,6 +180,9 @@ func newRowView(r *row, greatest float64) rowView {
 	}
 	if finite(r.clearModeBytes) {
 		v.ClearLeast, v.ClearVolume = fixed(r.clearLeast, 1), withUnit(r.clearModeBytes, byteScales)
+	}
+	if r.plan != nil {
+		v.Plan, v.PlanShare = withUnit(r.plan.Bytes, byteScales), fixed(100*r.plan.ShareOfFree, 0)
 	}
 	if r.sunInBeam > 0 {
 		v.Sun = span(time.Duration(r.sunInBeam * float64(time.Second)))

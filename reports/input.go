@@ -89,6 +89,8 @@ type Radio struct {
 	// them. Nil without a path.
 	PathParts, NoiseParts []Contributor
 	PathTotalDB           []float64 // the sum of PathParts, what is given back taken off
+
+	Plan *Plan // which mode is sent when; nil: none was made
 }
 
 // PathInfo says what the numbers of the path are.

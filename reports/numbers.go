@@ -68,6 +68,7 @@ type scale struct {
 var (
 	byteScales = []scale{{"TB", 1e12}, {"GB", 1e9}, {"MB", 1e6}, {"kB", 1e3}, {"B", 1}}
 	rateScales = []scale{{"Tbit/s", 1e12}, {"Gbit/s", 1e9}, {"Mbit/s", 1e6}, {"kbit/s", 1e3}, {"bit/s", 1}}
+	baudScales = []scale{{"Tbaud", 1e12}, {"Gbaud", 1e9}, {"Mbaud", 1e6}, {"kbaud", 1e3}, {"baud", 1}}
 	freqScales = []scale{{"GHz", 1e9}, {"MHz", 1e6}, {"kHz", 1e3}, {"Hz", 1}}
 )
 

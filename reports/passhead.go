@@ -65,6 +65,7 @@ type radioJSON struct {
 	SunInBeam        []intervalJSON `json:"sun_in_beam"`
 	MoonInBeam       []intervalJSON `json:"moon_in_beam"`
 	ClearSky         *clearJSON     `json:"clear_sky"` // null where there is no other sky to compare with
+	Plan             *planJSON      `json:"plan"`      // null where none was made
 }
 
 type modeJSON struct {
@@ -130,7 +131,7 @@ func radioHead(p *Pass) *radioJSON {
 		Budgets:         []budgetJSON{},
 		Path:            pathOf(&r.Path),
 		SunInBeam:       intervals(f.SunInBeam), MoonInBeam: intervals(f.MoonInBeam),
-		ClearSky: clearOf(r),
+		ClearSky: clearOf(r), Plan: planOf(r.Plan),
 	}
 	for _, m := range r.Modes {
 		h.Modes = append(h.Modes, modeJSON{m.Name, number{m.Rate.BitsPerSecond(), 0}, number{m.Closed.Seconds(), 3},

@@ -42,6 +42,7 @@ type linkView struct {
 	ModeVolume, AchievableVolume                    string
 	ModeRate                                        string
 	Sky                                             skyView
+	Plan                                            *planView
 }
 
 // modeView is a line of the table of modes.
@@ -158,6 +159,7 @@ func newLinkView(p *Pass) *linkView {
 		ModeVolume:       withUnit(f.Volume.ModeBytes, byteScales),
 		AchievableVolume: withUnit(f.Volume.AchievableBytes, byteScales),
 		Sky:              newSkyView(p),
+		Plan:             newPlanView(p),
 	}
 	if s := greatestOf(f.ReceivedPowerDBm); finite(s) {
 		l.Strongest = fixed(s, 1)

@@ -24,6 +24,7 @@ type row struct {
 	path                       PathInfo
 	clearLeast, clearModeBytes float64 // under a clear sky
 	sunInBeam                  float64 // seconds
+	plan                       *Plan
 }
 
 func newRow(page string, p *Pass) row {
@@ -41,6 +42,9 @@ func newRow(page string, p *Pass) row {
 		r.least, r.greatest, r.required = p.Radio.Least.Value, p.Radio.Greatest.Value, p.Profile.RequiredMarginDB
 		r.modeBytes, r.achievableBytes = p.Profile.Volume.ModeBytes, p.Profile.Volume.AchievableBytes
 		r.path = p.Radio.Path
+		if q := p.Radio.Plan; q != nil { // without its samples
+			r.plan = &Plan{Bytes: q.Bytes, Changes: q.Changes, ShareOfFree: q.ShareOfFree, ShareOfShannon: q.ShareOfShannon}
+		}
 		if c := p.Radio.ClearSky; c != nil {
 			r.clearLeast, r.clearModeBytes = p.Radio.ClearLeast.Value, c.Volume.ModeBytes
 		}
@@ -87,6 +91,18 @@ var indexFields = []field{
 	{name: "clear_sky_least_margin_db", number: func(r *row) number { return number{r.clearLeast, 3} }},
 	{name: "clear_sky_mode_bytes", number: func(r *row) number { return number{r.clearModeBytes, 0} }},
 	{name: "sun_in_beam_s", number: func(r *row) number { return number{r.sunInBeam, 3} }},
+	{name: "plan_bytes", number: func(r *row) number { return r.planned(func(p *Plan) float64 { return p.Bytes }, 0) }},
+	{name: "plan_share_of_free_switching_percent", number: func(r *row) number { return r.planned(func(p *Plan) float64 { return 100 * p.ShareOfFree }, 2) }},
+	{name: "plan_share_of_shannon_percent", number: func(r *row) number { return r.planned(func(p *Plan) float64 { return 100 * p.ShareOfShannon }, 2) }},
+	{name: "plan_changes", number: func(r *row) number { return r.planned(func(p *Plan) float64 { return float64(p.Changes) }, 0) }},
+}
+
+// planned is a number of the rate plan; it does not exist without one.
+func (r *row) planned(of func(*Plan) float64, decimals int) number {
+	if r.plan == nil {
+		return number{math.NaN(), 0}
+	}
+	return number{of(r.plan), decimals}
 }
 
 func (r *row) closedSeconds() float64 {

@@ -73,6 +73,17 @@ func (p *ratePlanner) modes(tx *downlink.Transmitter, plan *scenario.RatePlan, m
 	return f.Modes(plan.Steps)
 }
 
+// copy returns a planner for another goroutine.
+func (p *ratePlanner) copy() (*ratePlanner, error) {
+	out := *p
+	var err error
+	if out.all, err = rateplan.NewPlanner(p.all.Modes(), p.rules); err != nil || p.common == nil {
+		return &out, err
+	}
+	out.common, err = rateplan.NewPlanner(p.common.Modes(), p.rules)
+	return &out, err
+}
+
 // settle chooses the one mode for all passes, where there is to be one.
 func (p *ratePlanner) settle(tracks []rateplan.Track) error {
 	if p.choice != scenario.OneForAll || len(tracks) == 0 {

@@ -25,6 +25,7 @@ type reportPlan struct {
 	pages    []reportPage
 	passes   int
 	warnings []string // beside the scenario's own
+	rates    reportRates
 }
 
 type reportCraft struct {
