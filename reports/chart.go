@@ -21,6 +21,7 @@ type drawing struct {
 	Names  []string       `json:"names,omitempty"` // overview: the text of each point
 	Many   bool           `json:"many,omitempty"`  // many lines, which have symbols
 	Marks  []chartMark    `json:"marks,omitempty"` // spans of the x axis with a word in them
+	Bare   bool           `json:"bare,omitempty"`  // the spans have edges and no dots: they fill the axis
 }
 
 // chartMark is a span of the x axis that is marked with a word.

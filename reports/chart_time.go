@@ -22,6 +22,7 @@ type timeFigure struct {
 	rightUnit string
 	below     []axisSpan
 	marks     []chartMark
+	bare      bool    // marks have edges and no dots
 	many      bool    // many lines, with symbols
 	logFrom   float64 // the left axis is logarithmic and begins here; 0: linear
 	fromZero  bool
@@ -85,7 +86,7 @@ func (fr *frame) draw(fig *timeFigure) drawing {
 	if fig.right != "" {
 		line.ExtendYAxis(opts.YAxis{Type: "value", Name: fig.right, Scale: opts.Bool(true), Position: "right", AlignTicks: opts.Bool(true)})
 	}
-	d := drawing{ID: fig.id, Kind: "time", Axis: &fr.axis, Marks: fig.marks, Many: fig.many}
+	d := drawing{ID: fig.id, Kind: "time", Axis: &fr.axis, Marks: fig.marks, Bare: fig.bare, Many: fig.many}
 	k := -1
 	for _, s := range fig.series {
 		if s.tableOnly {

@@ -60,7 +60,7 @@ func newPlanView(p *Pass) *planView {
 		Changes: changesText(plan.Changes), SingleMode: plan.SingleMode, SingleTop: withUnit(plan.SingleBytes, byteScales),
 	}
 	for _, s := range plan.Steps {
-		one := stepView{From: utcClock(s.From, layoutOf(p)), To: utcClock(s.To, layoutOf(p)), Mode: s.Mode, SymbolRate: "–", Rate: "–", NetRate: "–",
+		one := stepView{From: utcClock(s.From, layoutOf(p)), To: utcClock(s.To, layoutOf(p)), Mode: s.Mode,
 			Margin: fixed(s.LeastMarginDB, 1), Volume: withUnit(s.Bytes, byteScales)}
 		if s.SymbolRate > 0 {
 			one.SymbolRate = withUnit(s.SymbolRate.Hertz(), baudScales)
@@ -88,9 +88,9 @@ func planFigure(p *Pass, fr *frame) timeFigure {
 	plan := p.Radio.Plan
 	sc := scaleFor(maxOf(plan.FreeBps, plan.RateBps), rateScales)
 	fig := timeFigure{
-		id: "plan", title: "Planned modes", quantity: "margin", unit: "dB", right: axisName("net rate", sc.unit), rightUnit: sc.unit,
+		id: "plan", title: "Planned modes", quantity: "margin", unit: "dB", right: axisName("net rate", sc.unit), rightUnit: sc.unit, bare: true,
 		caption: "Margin of the mode that is sent at the time, in dB over UTC (left, solid), and its net rate in " + sc.unit +
-			" (right, dashed), beside that of free switching among the modes (right, dotted).",
+			" (right, dashed), beside that of free switching among the modes (right, dotted). The words over it say which mode.",
 		series: []series{
 			{name: "margin of the mode", short: "planned margin", dash: solid, values: plan.MarginDB, divisor: 1, decimals: 2},
 			{name: "rate", short: "planned rate", dash: dashed, values: plan.RateBps, divisor: sc.divisor, right: true, decimals: decimalsFor(maxOf(plan.FreeBps) / sc.divisor)},

@@ -147,7 +147,7 @@
   function marked(o, spec, p) {
     var s = o.series[o.series.length - 1];
     s.markArea = {
-      silent: true, itemStyle: { color: tile(6, p.soft, dots), borderColor: p.soft, borderWidth: 1 }, label: { color: p.ink, fontSize: 11, position: 'top', distance: 1 },
+      silent: true, itemStyle: { color: spec.bare ? 'transparent' : tile(6, p.soft, dots), borderColor: p.soft, borderWidth: 1 }, label: { color: p.ink, fontSize: 11, position: 'top', distance: 1 },
       data: spec.marks.map(function (m) { return [{ xAxis: m.from, name: m.label }, { xAxis: m.to }]; })
     };
   }
