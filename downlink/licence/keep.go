@@ -96,7 +96,9 @@ func (c *Course) check() error {
 func (l *Licence) bindings(station string, c *Course, use Use) []Binding {
 	var out []Binding
 	add := func(rule string, spans []Span) {
-		if spans = union(spans); len(spans) > 0 {
+		// AOS and LOS are to the millisecond: less than half of one is their rounding.
+		spans = slices.DeleteFunc(union(spans), func(s Span) bool { return s.To-s.From < 5e-4 })
+		if len(spans) > 0 {
 			out = append(out, Binding{l.Name, rule, spans})
 		}
 	}
