@@ -37,3 +37,22 @@ func TestPathYearNotes(t *testing.T) {
 		seen[line] = true
 	}
 }
+
+// TestPathSaysThatRainIsMissing in every form of output, in the file itself: a climate
+// without rain, at Ka band.
+func TestPathSaysThatRainIsMissing(t *testing.T) {
+	climateScenario(t, "{cloud_liquid_water_kg_m2: [[1, 1], [50, 0.1]]}", "")
+	for _, form := range [][]string{
+		{"--frequency-mhz", "26000", "--elevation-deg", "20"},
+		{"--frequency-mhz", "26000", "--sweep", "elevation", "--points", "3"},
+		{"--elevation-deg", "20", "--sweep", "frequency", "--points", "3"},
+		{"--frequency-mhz", "26000", "--elevation-deg", "20", "--sweep", "percentage", "--points", "3"},
+	} {
+		for format, want := range map[string]string{"table": "missing from the path: rain", "csv": ",rain", "json": "\"rain\""} {
+			code, out, errOut := invoke(t, append([]string{"path", "--format", format}, form...)...)
+			if code != ExitAnswer || !strings.Contains(out, want) {
+				t.Errorf("%v as %s: code %d, stderr %s, output lacks %q:\n%s", form, format, code, errOut, want, out)
+			}
+		}
+	}
+}
