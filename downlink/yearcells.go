@@ -15,12 +15,11 @@ type ContactCells struct {
 	cells   map[cellKey]*contactCell
 }
 
-// The width of a cell. A thousandth of a dB is what half a degree changes in P.618's
-// terms beyond 10 deg; the mean elevation and C/N0 stand for a cell, so the error is of
-// the second order.
+// The width of a cell, whose mean elevation and C/N0 stand for it. A cell is under a
+// margin or not as a whole, so that a margin is told to a tenth of a dB.
 const (
-	cellDegrees  = 1.0
-	cellDecibels = 0.5
+	cellDegrees  = 0.25
+	cellDecibels = 0.1
 )
 
 type cellKey struct {

@@ -238,3 +238,19 @@ func FuzzRunBatch(f *testing.F) {
 		}
 	})
 }
+
+// Spaces around a header's names are the file's own and stay; a number in a spelling of
+// the Go language is none.
+func TestBatchSpellings(t *testing.T) {
+	var out bytes.Buffer
+	in := " zero_degree_isotherm_height_km ,note\n 2.5 ,a\n"
+	if _, err := RunBatch(BatchOptions{Model: "rain-height"}, strings.NewReader(in), &out, false); err != nil || out.String() != "\" zero_degree_isotherm_height_km \",note,result_rain_height_km\n\" 2.5 \",a,2.86\n" {
+		t.Errorf("%v, %q", err, out.String())
+	}
+	for _, number := range []string{"0x1p1", "1_0", "0X.8p2", "inf", "1e999"} {
+		report, err := RunBatch(BatchOptions{Model: "rain-height"}, strings.NewReader("zero_degree_isotherm_height_km\n"+number+"\n"), &out, false)
+		if err == nil || len(report.Bad) != 1 || report.Bad[0].Line != 2 {
+			t.Errorf("%q: %v, %+v", number, err, report)
+		}
+	}
+}

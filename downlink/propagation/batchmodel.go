@@ -70,6 +70,7 @@ func NewBatch(o BatchOptions, header []string) (*Batch, error) {
 		return nil, fmt.Errorf("the log-normal approximation belongs to model %q, not to %q", cloudBatch.name, o.Model)
 	}
 	for i, h := range header {
+		h = strings.TrimSpace(h) // as the cells; the header passes through as it is
 		if _, twice := b.column[h]; twice {
 			return nil, fmt.Errorf("column %q stands twice in the header", h)
 		}

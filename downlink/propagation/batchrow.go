@@ -76,7 +76,7 @@ func (r *batchRow) number(column string) float64 {
 	switch {
 	case text == "":
 		r.fail(column, errors.New("the cell is empty; give a number"))
-	case err != nil, math.IsNaN(v), math.IsInf(v, 0):
+	case err != nil, math.IsNaN(v), math.IsInf(v, 0), strings.ContainsAny(text, "_xX"): // Go's own spellings are no decimal numbers
 		r.fail(column, fmt.Errorf("%q is not a finite number; give one with a decimal point", text))
 	}
 	return v

@@ -90,19 +90,27 @@ func AntennaRise(d Disc, gain unit.DB, beamwidth, offAxis unit.Angle) (unit.Temp
 		return 0, nil
 	}
 	// exp(-a (off² + r² + 2 off r cos phi)) over the disc, rings by Gauss-Legendre and
-	// angles by the midpoint rule, which converges as fast on a circle.
+	// angles by the midpoint rule, which converges as fast on a circle; one half of the
+	// circle mirrors the other.
 	a := 1.2 * math.Ln10 / (width * width)
-	const rings, angles = 4, 32
+	const rings = 4
 	var sum float64
 	for ring := range rings {
 		for k, x := range gaussNodes {
 			r := radius * (float64(ring) + 0.5 + 0.5*x) / rings
-			weight := gaussWeights[k] * radius / (2 * rings) * r * (2 * math.Pi / angles)
-			for i := range angles {
-				c := math.Cos(2 * math.Pi * (float64(i) + 0.5) / angles)
+			weight := gaussWeights[k] * radius / (2 * rings) * r * (2 * math.Pi / float64(len(halfCircle)))
+			for _, c := range halfCircle {
 				sum += weight * math.Exp(-a*(off*off+r*r+2*off*r*c))
 			}
 		}
 	}
 	return d.Brightness * unit.Temperature(gain.Ratio()*sum/(4*math.Pi)), nil
 }
+
+// halfCircle holds the cosines of the middles of sixteen equal arcs of half a circle.
+var halfCircle = func() (c [16]float64) {
+	for i := range c {
+		c[i] = math.Cos(math.Pi * (float64(i) + 0.5) / float64(len(c)))
+	}
+	return c
+}()

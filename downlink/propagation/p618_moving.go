@@ -62,9 +62,10 @@ type Moving struct {
 }
 
 // movingPercents are the percentages at which a path is evaluated, P.618's total from
-// end to end.
+// end to end. Rain counts to 5 % and no further: what falls there must not be drawn out
+// to the next percentage.
 var movingPercents = []float64{0.001, 0.002, 0.003, 0.005, 0.01, 0.02, 0.03, 0.05, 0.1, 0.2, 0.3, 0.5,
-	1, 1.5, 2, 3, 4, 5, 7, 10, 14, 20, 30, 50}
+	1, 1.5, 2, 3, 4, 5, 5.0001, 7, 10, 14, 20, 30, 50}
 
 // NewMoving evaluates the path of a spec, whose Exceedance is not used, for all
 // intervals and percentages. Where a curve by percentage of the climate ends under

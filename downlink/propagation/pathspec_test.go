@@ -3,6 +3,7 @@ package propagation
 import (
 	"errors"
 	"math"
+	"slices"
 	"strings"
 	"testing"
 
@@ -122,6 +123,31 @@ func TestEditionsByName(t *testing.T) {
 	}
 	if _, err := Newest.With("618-12"); err == nil || !strings.Contains(err.Error(), "give one of 618-14, 618-13, ") {
 		t.Errorf("618-12: got %v", err)
+	}
+}
+
+// The current edition of a Recommendation that has one is no fault; two editions of one
+// are.
+func TestEditionsNamed(t *testing.T) {
+	e, err := EditionsNamed([]string{"838-3", "676-12", "P.676-12", "837-7"})
+	if want := (Editions{14, 12, 9}); err != nil || e != want {
+		t.Errorf("got %v, %v, want %v", e, err, want)
+	}
+	for _, bad := range [][]string{{"676-12", "676-13"}, {"838-2"}, {""}} {
+		if _, err := EditionsNamed(bad); err == nil {
+			t.Errorf("%q: no error", bad)
+		}
+	}
+	if got := EditionsWithoutPart([]string{"618-13", "840-8", "838-3"}, "cloud"); len(got) != 1 || got[0] != "618-13" {
+		t.Errorf("without part in cloud: %q", got)
+	}
+	known := BatchModels()
+	for _, models := range editionModels {
+		for _, m := range models {
+			if !slices.Contains(known, m) {
+				t.Errorf("%q is no model of a batch", m)
+			}
+		}
 	}
 }
 

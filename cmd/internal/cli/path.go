@@ -1,6 +1,10 @@
 package cli
 
-import "github.com/spf13/cobra"
+import (
+	"context"
+
+	"github.com/spf13/cobra"
+)
 
 // pathOptions is what the command line says.
 type pathOptions struct {
@@ -61,12 +65,12 @@ stays empty. Values outside the range that a Recommendation states come with a w
 	addFormat(cmd, &o.format)
 	cmd.RunE = func(cmd *cobra.Command, _ []string) error {
 		set(cmd.Flags())
-		return runPath(env, &o)
+		return runPath(cmd.Context(), env, &o)
 	}
 	return cmd
 }
 
-func runPath(env *Env, o *pathOptions) error {
+func runPath(ctx context.Context, env *Env, o *pathOptions) error {
 	if err := o.check(); err != nil {
 		return err
 	}
@@ -74,7 +78,7 @@ func runPath(env *Env, o *pathOptions) error {
 	case o.batch.given():
 		return runPathBatch(env, o)
 	case o.year.year:
-		return runPathYear(env, o)
+		return runPathYear(ctx, env, o)
 	case o.sweep.over != "":
 		return runPathSweep(env, o)
 	}

@@ -301,7 +301,7 @@ func TestPathCSV(t *testing.T) {
 		t.Fatalf("code %d, %v, stderr %s, stdout %s", code, err, errOut, out)
 	}
 	const want = "elevation_deg,frequency_mhz,exceeded_percent,gas_attenuation_db,cloud_attenuation_db,rain_attenuation_db,scintillation_db,atmospheric_combination_db," +
-		"total_attenuation_db,clear_sky_gas_attenuation_db,ionospheric_scintillation_db,ionospheric_polarisation_rotation_db,sky_brightness_k,clear_sky_brightness_k,xpd_db"
+		"total_attenuation_db,clear_sky_gas_attenuation_db,ionospheric_scintillation_db,ionospheric_polarisation_rotation_db,sky_brightness_k,clear_sky_brightness_k,xpd_db,path_missing"
 	if got := strings.Join(rows[0], ","); got != want {
 		t.Errorf("columns %s", got)
 	}

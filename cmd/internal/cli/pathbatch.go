@@ -44,12 +44,9 @@ func (o *batchOptions) check(f format) error {
 // lies outside a stated range.
 func runPathBatch(env *Env, o *pathOptions) error {
 	b := &o.batch
-	editions := propagation.Newest
-	for _, name := range b.edition {
-		var err error
-		if editions, err = editions.With(name); err != nil {
-			return inputErrorf("--edition: %w", err)
-		}
+	editions, err := propagation.EditionsNamed(b.edition)
+	if err != nil {
+		return inputErrorf("--edition: %w", err)
 	}
 	in := env.In
 	if b.file != "-" {
@@ -78,6 +75,9 @@ func runPathBatch(env *Env, o *pathOptions) error {
 			break
 		}
 		env.note("no result: %s", printable(bad.Error()))
+	}
+	for _, name := range propagation.EditionsWithoutPart(b.edition, b.model) {
+		env.note("warning: edition %s has no part in model %s", printable(name), b.model)
 	}
 	for _, w := range report.Warnings {
 		env.note("%s: %s", w.Kind, printable(w.Text))

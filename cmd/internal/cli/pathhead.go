@@ -5,6 +5,10 @@ import (
 	"strings"
 )
 
+// pathMissing is the column of every CSV of a path that names the parts in no number, as
+// the words at its head go to stderr and do not stay with the file.
+const pathMissing = "path_missing"
+
 // missingText says which parts of the path are in no number, as the scenario does not
 // state what they follow from.
 func missingText(parts []string) string {

@@ -84,7 +84,7 @@ func (k *skies) between(st *scenario.Station, t *downlink.Transmitter, a *statio
 			v, _, err := out.path.CrossPolar(elevation)
 			return v, err
 		}
-		out.note(downlink.Assumption, "the other polarisation is in use: C/I is the discrimination not exceeded for the path's percentage (P.618 §4.1), from rain alone and for an equal carrier; it stands beside C/N0 and takes nothing off it")
+		out.note(downlink.Assumption, "the other polarisation is in use: C/I is the discrimination not exceeded for the path's percentage (P.618 §4.1), from rain alone and for an equal carrier; it stands beside C/N0 and takes nothing off it; beyond 60 deg of elevation and 1 %% of the year, where its stated range ends, the formula's value is given")
 	}
 	return out, nil
 }

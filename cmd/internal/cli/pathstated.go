@@ -72,14 +72,19 @@ func (a *pathAnswer) head() []string {
 
 // withMissing adds to a line at the head what is missing.
 func (a *pathAnswer) withMissing(line string) []string {
+	if missing := a.missing(); len(missing) > 0 {
+		return []string{line, missingText(missing)}
+	}
+	return []string{line}
+}
+
+// missing lists the parts that are in no number of the answer.
+func (a *pathAnswer) missing() []string {
 	spec := a.target.spec
 	if a.axis != nil && a.axis.name == "frequency" {
 		spec.Frequency = unit.Frequency(a.axis.to) * unit.Megahertz // rain counts from 1 GHz
 	}
-	if missing := missingParts(&spec); len(missing) > 0 {
-		return []string{line, missingText(missing)}
-	}
-	return []string{line}
+	return missingParts(&spec)
 }
 
 // writeTerms writes the terms of one path, a line each.

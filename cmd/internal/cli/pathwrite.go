@@ -4,6 +4,8 @@ import (
 	"bytes"
 	"encoding/json"
 	"fmt"
+	"slices"
+	"strings"
 )
 
 // pathJSON is the JSON of a path; points hold pathColumns by name.
@@ -37,7 +39,7 @@ func (p pathPointJSON) MarshalJSON() ([]byte, error) {
 func (a *pathAnswer) write(env *Env, f format) error {
 	if f == formatJSON {
 		out := pathJSON{Station: a.target.station.Site.Name, ClearSky: a.target.spec.ClearSky,
-			Missing: append([]string{}, missingParts(&a.target.spec)...), Points: []pathPointJSON{}, Assumptions: []budgetNoteJSON{}}
+			Missing: append([]string{}, a.missing()...), Points: []pathPointJSON{}, Assumptions: []budgetNoteJSON{}}
 		for i := range a.points {
 			out.Points = append(out.Points, pathPointJSON{&a.points[i]})
 		}
@@ -49,13 +51,14 @@ func (a *pathAnswer) write(env *Env, f format) error {
 	for _, l := range a.head() {
 		env.note("%s", printable(l))
 	}
-	return writeCSV(env.Out, pathColumns, func(yield func([]string) bool) {
+	missing := strings.Join(a.missing(), " ")
+	return writeCSV(env.Out, append(slices.Clone(pathColumns), pathMissing), func(yield func([]string) bool) {
 		for i := range a.points {
 			var row []string
 			for _, v := range a.points[i].numbers() {
 				row = append(row, fixed(v, 6))
 			}
-			if !yield(row) {
+			if !yield(append(row, missing)) {
 				return
 			}
 		}

@@ -1,8 +1,10 @@
 package cli
 
 import (
+	"context"
 	"fmt"
 	"math"
+	"slices"
 	"time"
 
 	"github.com/spf13/pflag"
@@ -45,7 +47,7 @@ type yearAnswer struct {
 	notes  []downlink.Note
 }
 
-func runPathYear(env *Env, o *pathOptions) error {
+func runPathYear(ctx context.Context, env *Env, o *pathOptions) error {
 	if o.frequencyMHz != nil || o.elevationDeg != nil || o.tiltDeg != nil || o.diameterM != nil {
 		return inputErrorf("--year takes frequency, polarisation and antenna from the scenario; give --spacecraft and --station")
 	}
@@ -62,12 +64,13 @@ func runPathYear(env *Env, o *pathOptions) error {
 	if s.Path.ClearSky {
 		return inputErrorf("path.clear_sky: a sky that is always clear has no statistics; leave it out")
 	}
+	s.Window.End = s.Window.Start.Add(time.Duration(days * 24 * float64(time.Hour))) // Sun and Moon are prepared for it, too
 	c, err := chooseLink(s, linkNames{o.spacecraft, o.station, o.transmitter, o.antenna, o.year.mode})
 	if err != nil {
 		return err
 	}
 	a := &yearAnswer{link: c, days: days}
-	if err := a.fly(env, s, o.year.step); err != nil {
+	if err := a.fly(ctx, env, s, o.year.step); err != nil {
 		return err
 	}
 	return a.write(env, o.format)
@@ -79,15 +82,18 @@ const chunk = 10 * 24 * time.Hour
 // fly gathers the contacts and makes the statistics. One element set does not carry
 // its theory through a year, so its drag is left out: the orbit is held, and drifts by
 // the Earth's figure alone.
-func (a *yearAnswer) fly(env *Env, s *scenario.Scenario, step time.Duration) error {
+func (a *yearAnswer) fly(ctx context.Context, env *Env, s *scenario.Scenario, step time.Duration) error {
 	elements := a.link.spacecraft.Elements.Elements
 	elements.BStar = 0
 	var contacts downlink.ContactCells
 	var eph *orbit.Ephemeris
-	from, end := s.Window.Start, s.Window.Start.Add(time.Duration(a.days*24*float64(time.Hour)))
+	from, end := s.Window.Start, s.Window.End
 	bar := env.startProgress("days", int(a.days))
 	defer bar.stop()
 	for ; from.Before(end); from = from.Add(chunk) {
+		if err := ctx.Err(); err != nil {
+			return err
+		}
 		to := from.Add(chunk)
 		if to.After(end) {
 			to = end
@@ -112,18 +118,29 @@ func (a *yearAnswer) fly(env *Env, s *scenario.Scenario, step time.Duration) err
 	}
 	for _, n := range a.year.Notes() {
 		if n.Kind != downlink.Default { // the scenario's come with their keys
-			a.notes = append(a.notes, n)
+			a.note(n)
 		}
 	}
-	a.notes = append(a.notes, downlink.Note{Kind: downlink.Assumption, Text: fmt.Sprintf(
+	if f := a.link.transmitter.Frequency; s.Path.Ionosphere && s.Path.IonosphericScintillation == nil && f <= unit.Gigahertz {
+		a.note(downlink.Note{Kind: downlink.Warning, Text: "ionospheric scintillation is not in the statistics: its table holds 0.1 to 1 % of the year alone; state a loss, and it counts all year"})
+	}
+	a.note(downlink.Note{Kind: downlink.Assumption, Text: fmt.Sprintf(
 		"orbit: element set %d of %s held from %s for %g days, without its drag, as one set does not carry SGP4 through a year; the shares of contact time at each elevation are those of the orbit, the instants are no predictions",
 		elements.CatalogNumber, utc(elements.Epoch), utc(s.Window.Start), a.days)})
 	for _, n := range a.link.notes(s, true) {
 		if n.Kind != downlink.Assumption {
-			a.notes = append(a.notes, n)
+			a.note(n)
 		}
 	}
 	return nil
+}
+
+// note keeps a note once: the path of the year and that of the link take much for
+// granted alike.
+func (a *yearAnswer) note(n downlink.Note) {
+	if !slices.Contains(a.notes, n) {
+		a.notes = append(a.notes, n)
+	}
 }
 
 // gather adds the contacts of one chunk; a contact over its edge comes in two pieces.

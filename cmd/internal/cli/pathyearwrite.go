@@ -3,6 +3,7 @@ package cli
 import (
 	"bufio"
 	"fmt"
+	"strings"
 
 	"slantwise/downlink/propagation"
 )
@@ -89,17 +90,18 @@ func (a *yearAnswer) writeCSV(env *Env) error {
 	for _, l := range a.head() {
 		env.note("%s", printable(l))
 	}
-	return writeCSV(env.Out, []string{"quantity", "value_db", "contact_percent_low", "contact_percent_high", "worst_month_percent_low", "worst_month_percent_high", "clear_sky_percent"},
+	missing := strings.Join(a.link.sky.missing, " ")
+	return writeCSV(env.Out, []string{"quantity", "value_db", "contact_percent_low", "contact_percent_high", "worst_month_percent_low", "worst_month_percent_high", "clear_sky_percent", pathMissing},
 		func(yield func([]string) bool) {
 			for i, v := range a.attenuations() {
 				p := fixed(yearFractions[i], 4)
-				if !yield([]string{"total attenuation above", fixed(v, 4), p, p, "", "", ""}) {
+				if !yield([]string{"total attenuation above", fixed(v, 4), p, p, "", "", "", missing}) {
 					return
 				}
 			}
 			for _, m := range a.margins() {
 				if !yield([]string{"margin over required below", fixed(m.margin, 4), fixed(100*m.year.Low, 4), fixed(100*m.year.High, 4),
-					fixed(100*m.month.Low, 4), fixed(100*m.month.High, 4), fixed(100*m.clear, 4)}) {
+					fixed(100*m.month.Low, 4), fixed(100*m.month.High, 4), fixed(100*m.clear, 4), missing}) {
 					return
 				}
 			}
