@@ -34,6 +34,7 @@ type Ionosphere struct {
 	terms  []TermInfo
 	values []float64
 	notes  []Note
+	lacks  bool
 }
 
 // NewIonosphere returns the terms that exist at a frequency: fades of scintillation
@@ -65,8 +66,10 @@ func (m *Ionosphere) addScintillation(s IonosphereSpec) error {
 		m.add(name, *s.Scintillation, "scenario")
 	case s.ClearSky || s.Frequency > scintillationTo:
 	case s.Frequency < scintillationFrom:
+		m.lacks = true
 		m.note(Warning, "ionospheric scintillation is missing: its table begins at 100 MHz; state a loss")
 	case percent < 0.1 || percent > 1:
+		m.lacks = true
 		m.note(Warning, "ionospheric scintillation is missing: its table holds 0.1 to 1 %% of the year, not %g %%; state a loss", percent)
 	default:
 		v, err := propagation.IonosphericFade(s.Frequency, s.Exceedance)
@@ -108,6 +111,9 @@ func (m *Ionosphere) addRotation(s IonosphereSpec) error {
 		r.Rotation.Degrees(), float64(content), field, float64(r.Loss90))
 	return nil
 }
+
+// LacksScintillation tells whether fades should be there and have no model.
+func (m *Ionosphere) LacksScintillation() bool { return m.lacks }
 
 // Terms implements PathModel.
 func (m *Ionosphere) Terms() []TermInfo { return m.terms }

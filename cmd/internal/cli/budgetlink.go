@@ -19,7 +19,8 @@ type chosenLink struct {
 	mode        *modem.Mode // nil: the transmitter has none
 	link        *downlink.Link
 	sky         *skyLink
-	clear       *downlink.Link // the same under a clear sky; nil where link is that already
+	refraction  *station.Refraction // of the station; nil: not traced yet
+	clear       *downlink.Link      // the same under a clear sky; nil where link is that already
 }
 
 // chooseLink finds what the names name and prepares the link. What the scenario
@@ -122,9 +123,11 @@ func (c *chosenLink) make(k *skies, sky *skyLink, clear bool) (*downlink.Link, e
 func (c *chosenLink) bareSpec() (downlink.LinkSpec, error) {
 	site := &c.station.Site
 	frame := site.Frame()
-	refraction, err := station.NewRefraction(site.HeightAboveSea())
-	if err != nil {
-		return downlink.LinkSpec{}, fmt.Errorf("station %s: %w", site.Name, err)
+	if c.refraction == nil {
+		var err error
+		if c.refraction, err = station.NewRefraction(site.HeightAboveSea()); err != nil {
+			return downlink.LinkSpec{}, fmt.Errorf("station %s: %w", site.Name, err)
+		}
 	}
-	return downlink.LinkSpec{Transmitter: *c.transmitter, Mode: c.mode, Frame: &frame, Refraction: refraction, Antenna: c.antenna}, nil
+	return downlink.LinkSpec{Transmitter: *c.transmitter, Mode: c.mode, Frame: &frame, Refraction: c.refraction, Antenna: c.antenna}, nil
 }

@@ -16,6 +16,7 @@ func missingText(parts []string) string {
 		"rain":          "rain_rate_001_mm_h or the months under climate",
 		"cloud":         "cloud_liquid_water_kg_m2 under climate",
 		"scintillation": "the antenna's diameter or gain",
+		"ionosphere":    "ionospheric_scintillation_loss_db under path, as the table of fades ends at 100 MHz and holds 0.1 to 1 % of the year,",
 	}
 	var need []string
 	for _, p := range parts {

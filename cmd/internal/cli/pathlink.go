@@ -72,6 +72,9 @@ func (k *skies) between(st *scenario.Station, t *downlink.Transmitter, a *statio
 			return nil, err
 		}
 		out.paths = append(out.paths, ionosphere)
+		if !clear && ionosphere.LacksScintillation() {
+			out.missing = append(out.missing, "ionosphere")
+		}
 	}
 	if err := out.addNoise(st, t, a, clear); err != nil {
 		return nil, err

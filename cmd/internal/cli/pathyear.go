@@ -53,8 +53,8 @@ func runPathYear(ctx context.Context, env *Env, o *pathOptions) error {
 	}
 	days := 365.0
 	if o.year.days != nil {
-		if days = *o.year.days; !(days >= 1 && days <= 3660) {
-			return inputErrorf("--days: %g d is not allowed; it must be 1 to 3660 d", days)
+		if days = *o.year.days; !(days >= 1 && days <= 3600) {
+			return inputErrorf("--days: %g d is not allowed; it must be 1 to 3600 d", days)
 		}
 	}
 	s, err := env.load(needOrbits)

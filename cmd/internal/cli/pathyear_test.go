@@ -56,3 +56,16 @@ func TestPathSaysThatRainIsMissing(t *testing.T) {
 		}
 	}
 }
+
+// TestIonosphereMissingStandsAtTheHead: at 0.01 % of the year the fades of UHF have no
+// table, and a budget without them must not look better than that at 1 %.
+func TestIonosphereMissingStandsAtTheHead(t *testing.T) {
+	t.Chdir(t.TempDir()) // the demo
+	stated := []string{"budget", "--spacecraft", "Pipit 2", "--station", "Reedmere", "--transmitter", "UHF", "--antenna", "crossed yagi", "--range-km", "1500", "--elevation-deg", "20", "--exceeded-percent"}
+	const want = "missing from the path: ionosphere ("
+	for percent, missing := range map[string]bool{"0.01": true, "1": false} {
+		if code, out, errOut := invoke(t, append(stated, percent)...); code != ExitAnswer || strings.Contains(out, want) != missing {
+			t.Errorf("%s %%: code %d, stderr %s, output:\n%s", percent, code, errOut, out)
+		}
+	}
+}

@@ -140,7 +140,7 @@ func (p *reportPlan) prepareLinks(mode string) error {
 			}
 		}
 		for k := range p.sites {
-			p.links[i][k] = linksBetween(sky, c.Spacecraft, p.sites[k].Station, mode)
+			p.links[i][k] = linksBetween(sky, c.Spacecraft, &p.sites[k], mode)
 			p.warnMissing(&p.sites[k], p.links[i][k].links)
 		}
 	}
@@ -161,13 +161,13 @@ func (p *reportPlan) warnMissing(site *reportSite, links []reportLink) {
 	}
 }
 
-func linksBetween(k *skies, c *scenario.Spacecraft, st *scenario.Station, mode string) reportLinks {
+func linksBetween(k *skies, c *scenario.Spacecraft, st *reportSite, mode string) reportLinks {
 	var out reportLinks
 	for t := range c.Transmitters {
 		for a := range st.Antennas {
 			one := reportLink{transmitter: &c.Transmitters[t], antenna: &st.Antennas[a]}
 			for _, m := range competing(one.transmitter.Modes, mode) {
-				link := chosenLink{spacecraft: c, station: st, transmitter: one.transmitter, antenna: one.antenna, mode: m}
+				link := chosenLink{spacecraft: c, station: st.Station, refraction: st.refraction, transmitter: one.transmitter, antenna: one.antenna, mode: m}
 				if err := link.prepare(k); err != nil {
 					out.without = append(out.without, fmt.Sprintf("%s to %s: %v", one.transmitter.Name, one.antenna.Name, err))
 					break // the fault is the antenna's and so that of all modes
