@@ -79,7 +79,7 @@ func linkOver(sky *skies, c *scenario.Spacecraft, st *scenario.Station, tx *down
 	if len(st.Antennas) == 0 {
 		return nil, "it has no antenna"
 	}
-	found := linksBetween(sky, &scenario.Spacecraft{Name: c.Name, Transmitters: []downlink.Transmitter{*tx}}, st, tx.Modes[0].Name)
+	found := linksBetween(sky, &scenario.Spacecraft{Name: c.Name, Transmitters: []downlink.Transmitter{*tx}}, &reportSite{Station: st}, tx.Modes[0].Name)
 	if len(found.links) == 0 {
 		return nil, "no antenna takes the transmitter"
 	}
