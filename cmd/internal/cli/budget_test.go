@@ -245,3 +245,18 @@ func TestBudgetRefuses(t *testing.T) {
 		}
 	}
 }
+
+// TestBudgetNamesTheLicence: an instant that the demo's licence does not allow is told
+// of, one that it allows is not.
+func TestBudgetNamesTheLicence(t *testing.T) {
+	for at, binds := range map[string]bool{"2026-09-15T00:40:34Z": true, "2026-09-15T00:55:34Z": false} {
+		code, out, errOut := invoke(t, "budget", "--spacecraft", "Wagtail 1", "--station", "Skerry Point", "--mode", "fast", "--at", at)
+		if code != ExitAnswer {
+			t.Fatal(errOut)
+		}
+		told := strings.Contains(out, `licence "X-band downlink" does not allow this instant: least elevation to receive 3 deg`)
+		if told != binds {
+			t.Errorf("%s: told %v, want %v:\n%s", at, told, binds, out)
+		}
+	}
+}

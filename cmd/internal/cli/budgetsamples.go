@@ -96,6 +96,12 @@ func budgetAt(s *scenario.Scenario, c *chosenLink, at time.Time) (*budgetResult,
 	}
 	g, _ := c.link.GeometryOf(eph.StateAt(0))
 	g.Time = at
+	later, _ := c.link.GeometryOf(eph.StateAt(eph.Span()))
+	told, err := licensedAt(s, c, g, later, eph.Span())
+	if err != nil {
+		return nil, err
+	}
+	r.notes = append(r.notes, told...)
 	return r, r.add(g)
 }
 

@@ -1,6 +1,7 @@
 package cli
 
 import (
+	"fmt"
 	"time"
 
 	"github.com/spf13/cobra"
@@ -105,9 +106,41 @@ func keepToLicences(s *scenario.Scenario, c *chosenLink, f *downlink.Profile) ([
 	for _, b := range kept.Bindings {
 		out = append(out, downlink.Note{Kind: downlink.Warning, Text: b.String() + " of the pass; volumes are without it"})
 	}
+	return append(out, breachNotes(licences, c.transmitter)...), nil
+}
+
+// licensedAt returns what the licences do not allow at one instant: the rules that bind
+// at the first of two geometries so many seconds apart, and what of the transmitter
+// they do not allow.
+func licensedAt(s *scenario.Scenario, c *chosenLink, g, later downlink.Geometry, seconds float64) ([]downlink.Note, error) {
+	licences := licencesFor(s, c.spacecraft.Name, c.transmitter.Name)
+	if len(licences) == 0 {
+		return nil, nil
+	}
+	course := licence.Course{
+		Start: g.Time, Seconds: []float64{0, seconds},
+		AzimuthDeg:   []float64{g.Azimuth.Degrees(), later.Azimuth.Degrees()},
+		ElevationDeg: []float64{g.Elevation.Degrees(), later.Elevation.Degrees()},
+	}
+	kept, err := licence.Keep(licences, c.station.Site.Name, course, licence.Downlink)
+	if err != nil {
+		return nil, err
+	}
+	var out []downlink.Note
+	for _, b := range kept.Bindings {
+		if b.Spans[0].From == 0 {
+			out = append(out, downlink.Note{Kind: downlink.Warning, Text: fmt.Sprintf("licence %q does not allow this instant: %s", b.Licence, b.Rule)})
+		}
+	}
+	return append(out, breachNotes(licences, c.transmitter)...), nil
+}
+
+// breachNotes tells, each once, what of a transmitter its licences do not allow.
+func breachNotes(licences []licence.Licence, t *downlink.Transmitter) []downlink.Note {
+	var out []downlink.Note
 	told := map[string]bool{}
 	for _, l := range licences {
-		for _, e := range licensedEmissions(c.transmitter) {
+		for _, e := range licensedEmissions(t) {
 			for _, b := range l.Breaches(e) {
 				if !told[b.String()] {
 					told[b.String()] = true
@@ -116,7 +149,7 @@ func keepToLicences(s *scenario.Scenario, c *chosenLink, f *downlink.Profile) ([
 			}
 		}
 	}
-	return out, nil
+	return out
 }
 
 // addBreaches holds a transmitter to its licences, once for all its modes: the rule is
