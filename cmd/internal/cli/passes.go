@@ -82,6 +82,9 @@ func runPasses(ctx context.Context, env *Env, o passesOptions) error {
 		return err
 	}
 	env.tellHorizon(s.Horizon, p.stations)
+	if len(s.Licences) > 0 {
+		env.note("passes are listed whole; slantwise licence tells what the scenario's licences take from them")
+	}
 	if err := p.search(ctx, env, s.Earth, o); err != nil {
 		return err
 	}
