@@ -39,6 +39,9 @@ func rateFlights(s *scenario.Scenario, c *scenario.Spacecraft, tx *downlink.Tran
 			notes = append(notes, fmt.Sprintf("no contact over %s: %s", st.Site.Name, why))
 			continue
 		}
+		if why != "" {
+			notes = append(notes, fmt.Sprintf("over %s: %s", st.Site.Name, why))
+		}
 		eph, found, err := passesOver(s, c, st)
 		if err != nil {
 			return nil, nil, err
@@ -74,7 +77,7 @@ func (f *rateFlight) fly(s *scenario.Scenario) ([]downlink.Note, error) {
 }
 
 // linkOver prepares the transmitter's first mode to the first antenna of the station
-// that takes it.
+// that takes it. why tells that there is none, or which of several it is.
 func linkOver(sky *skies, c *scenario.Spacecraft, st *scenario.Station, tx *downlink.Transmitter) (link *chosenLink, why string) {
 	if len(st.Antennas) == 0 {
 		return nil, "it has no antenna"
@@ -83,7 +86,10 @@ func linkOver(sky *skies, c *scenario.Spacecraft, st *scenario.Station, tx *down
 	if len(found.links) == 0 {
 		return nil, "no antenna takes the transmitter"
 	}
-	return &found.links[0].modes[0], ""
+	if first, n := found.links[0].antenna.Name, len(found.links); n > 1 {
+		why = fmt.Sprintf("of %d antennas that take %s the first is counted, %s; set another one first to count that", n, tx.Name, first)
+	}
+	return &found.links[0].modes[0], why
 }
 
 // passFrom returns the flight of the pass under way at an instant or the next, all of

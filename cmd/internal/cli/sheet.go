@@ -45,15 +45,28 @@ func (s *sheet) texts(row []any) []string {
 	return out
 }
 
-// write writes the sheet in a format. Notes follow a table on stderr, and stand in
-// JSON.
+// write writes the sheet in a format. Notes follow a table and CSV on stderr, and
+// stand in JSON.
 func (s *sheet) write(env *Env, f format) error {
+	var err error
 	switch f {
-	case formatCSV:
-		return s.writeCSV(env)
 	case formatJSON:
 		return writeJSON(env.Out, s)
+	case formatCSV:
+		err = s.writeCSV(env)
+	default:
+		err = s.writeTable(env)
 	}
+	if err != nil {
+		return err
+	}
+	for _, n := range s.notes {
+		env.note("%s", printable(n))
+	}
+	return nil
+}
+
+func (s *sheet) writeTable(env *Env) error {
 	columns := make([]column, len(s.columns))
 	for i, c := range s.columns {
 		columns[i] = column{head: c.head, text: c.text}
@@ -62,13 +75,7 @@ func (s *sheet) write(env *Env, f format) error {
 	for i, r := range s.rows {
 		rows[i] = s.texts(r)
 	}
-	if err := writeTable(env.Out, env.outWidth(), columns, rows); err != nil {
-		return err
-	}
-	for _, n := range s.notes {
-		env.note("%s", printable(n))
-	}
-	return nil
+	return writeTable(env.Out, env.outWidth(), columns, rows)
 }
 
 func (s *sheet) writeCSV(env *Env) error {

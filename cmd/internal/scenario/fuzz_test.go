@@ -37,7 +37,11 @@ func FuzzScenario(f *testing.F) {
 	if err != nil {
 		f.Fatal(err)
 	}
-	files := fstest.MapFS{"elements.tle": {Data: sets}, "skyline.csv": {Data: []byte("azimuth_deg,elevation_deg\n0,2\n")}}
+	codings, err := os.ReadFile("testdata/codings.csv")
+	if err != nil {
+		f.Fatal(err)
+	}
+	files := fstest.MapFS{"elements.tle": {Data: sets}, "codings.csv": {Data: codings}, "skyline.csv": {Data: []byte("azimuth_deg,elevation_deg\n0,2\n")}}
 	f.Fuzz(func(t *testing.T, text []byte, format byte) {
 		src := &source{label: "fuzz", dir: "good", files: files, format: tree.Format(format % 3), text: text}
 		for _, n := range []Need{NeedOrbits, NeedRadio} {

@@ -44,7 +44,7 @@ func build(root *tree.Node, src *source, req Request) (*Scenario, error) {
 	return s, nil
 }
 
-var topKeys = []string{"window", "earth", "element_files", "element_choice", "horizon", "path", "spacecraft", "stations", "sizing", "licence", "design_control"}
+var topKeys = []string{"window", "earth", "element_files", "coding_files", "element_choice", "horizon", "path", "spacecraft", "stations", "sizing", "licence", "design_control"}
 
 // scenario reads everything; the value is of use only where no fault was noted.
 func (r *reader) scenario(root *tree.Node) *Scenario {
@@ -55,6 +55,7 @@ func (r *reader) scenario(root *tree.Node) *Scenario {
 	s.Horizon = elevationKind(o, "horizon", "AOS and LOS are decided by")
 	s.Sets = r.elementFiles(o)
 	s.Path = r.path(o)
+	r.catalogue = r.codingFiles(o)
 	s.Spacecraft = r.spacecraft(o, s)
 	s.Stations = r.stations(o, s.Path.Environment)
 	r.sizing(o, s)

@@ -26,7 +26,7 @@ func (o object) modes() []modem.Mode {
 
 func (o object) mode(name string) modem.Mode {
 	before := o.r.faults.count()
-	m := modem.Mode{Name: name}
+	m := modem.Mode{Name: name, Catalogue: o.r.catalogue}
 	m.Modulation = o.needText("modulation", "a modulation, for instance qpsk")
 	m.Coding = o.needText("coding", "a coding, none where there is none")
 	which, given := o.exclusive("data_rate_bps", "symbol_rate_baud")
@@ -49,7 +49,7 @@ func (o object) mode(name string) modem.Mode {
 	} else if !o.has("roll_off") {
 		o.assume("roll_off left out: %g for the occupied bandwidth", modem.DefaultRollOff)
 	}
-	if o.r.faults.count() == before {
+	if o.r.faults.count() == before && !o.r.codingsUnread {
 		_, err := m.Resolve()
 		o.addAll(o.node, "", err)
 	}

@@ -8,19 +8,22 @@ import (
 
 	"slantwise/cmd/internal/nearest"
 	"slantwise/cmd/internal/scenario/tree"
+	"slantwise/downlink/modem"
 	"slantwise/downlink/propagation"
 )
 
 // reader turns the tree of a scenario into domain values and collects what is wrong
 // and what was assumed on the way.
 type reader struct {
-	place       string // the file as it was named
-	src         *source
-	need        Need
-	asked       propagation.Exceedance // the percentage at which curves of the climate will be read; 0: at none
-	faults      faults
-	assumptions []Note
-	warnings    []Note
+	place         string // the file as it was named
+	src           *source
+	need          Need
+	asked         propagation.Exceedance // the percentage at which curves of the climate will be read; 0: at none
+	catalogue     *modem.Catalogue       // in which modes are looked up; nil: the standard one
+	codingsUnread bool                   // a file of its rows is at fault
+	faults        faults
+	assumptions   []Note
+	warnings      []Note
 }
 
 // object reads the keys of one group. The zero value has no key at all.
