@@ -5,6 +5,7 @@ import (
 	"errors"
 	"fmt"
 	"io"
+	"math"
 	"slices"
 	"strconv"
 	"strings"
@@ -138,9 +139,29 @@ func userRow(fields []string) (Row, error) {
 		if known, err := FindModulation(r.Modulation.Name); err == nil && r.Modulation.Width == 0 && r.Modulation.BitsPerSymbol == known.BitsPerSymbol {
 			r.Modulation = known // its width and its words
 		}
-		faults = append(faults, r.check())
+		faults = append(faults, r.check(), r.checkBound(&t))
 	}
 	return r, errors.Join(faults...)
+}
+
+// checkBound refuses a threshold that no coding could reach: Shannon's bound for the
+// information that is left when so many bits are wrong, η (1 - h(p)) with the binary
+// entropy h (C. E. Shannon, 1959). A count of larger units than bits bounds it no less.
+func (r *Row) checkBound(t *Threshold) error {
+	if !(t.ErrorRate < 0.5) {
+		return nil
+	}
+	density := r.SpectralEfficiency()
+	if !r.Modulation.Shaped() {
+		density /= r.Modulation.Width
+	}
+	p := t.ErrorRate
+	kept := 1 + p*math.Log2(p) + (1-p)*math.Log2(1-p)
+	least := 10 * math.Log10(math.Expm1(density*kept*math.Ln2)/density)
+	if float64(t.EbN0) >= least {
+		return nil
+	}
+	return fmt.Errorf("required_eb_n0_db: %g dB is not allowed; at an error rate of %g Shannon's bound for %g information bits a symbol is %.2f dB", float64(t.EbN0), p, r.SpectralEfficiency(), math.Round(100*least)/100+0)
 }
 
 // addLine adds a line's threshold to its row, or begins a row.

@@ -62,6 +62,7 @@ func TestReadRowsRefuses(t *testing.T) {
 		{"twice", userHead + good + good, "line 3: qpsk house stands above with the same error rate"},
 		{"two code rates", userHead + good + strings.Replace(good, "1/2", "3/4", 1), "with other numbers"},
 		{"rising", userHead + good + strings.Replace(good, "3.5,1e-3", "4.5,1e-2", 1), "Eb/N0 must rise and the error rate fall"},
+		{"under Shannon's bound", userHead + strings.Replace(good, "3.5,1e-3", "-0.1,1e-3", 1), "required_eb_n0_db: -0.1 dB is not allowed; at an error rate of 0.001 Shannon's bound for 1 information bits a symbol is -0.07 dB"},
 		{"two faults", userHead + strings.Replace(good, "3.5", "x", 1) + strings.Replace(good, "bench", "", 1), "line 3: source"},
 	} {
 		_, err := ReadRows(strings.NewReader(c.text))

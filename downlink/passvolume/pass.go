@@ -16,7 +16,8 @@ type Pass struct {
 	CN0DBHz  []float64 // in clear sky; -Inf where the link is not usable
 	NeedDBHz []float64 // C/N0 from which the mode of the moment gets through
 	RateBps  []float64 // information bits a second after overheads and expected frame losses; 0: silent
-	Lock     float64   // seconds that are lost at each begin of reception
+	Lock     float64   // seconds that are lost at each begin of reception and at each change
+	Changes  []bool    // whether the receiver has to lock again at a sample, as a mode begins there; empty: never
 
 	ExceedancePercent []float64   // of the time, rising, in (0, 100]; empty: clear sky alone
 	AttenuationDB     [][]float64 // by exceedance, then by sample: what C/N0 loses
@@ -26,6 +27,9 @@ type Pass struct {
 func (p *Pass) Check() error {
 	var faults []error
 	n := len(p.Seconds)
+	if len(p.Changes) != 0 && len(p.Changes) != n {
+		faults = append(faults, fmt.Errorf("%d marks of changes on %d samples; give one a sample, or none", len(p.Changes), n))
+	}
 	if n < 2 || len(p.CN0DBHz) != n || len(p.NeedDBHz) != n || len(p.RateBps) != n {
 		return fmt.Errorf("a pass needs columns of one length, two at least; it has %d instants, %d C/N0, %d needs and %d rates", n, len(p.CN0DBHz), len(p.NeedDBHz), len(p.RateBps))
 	}
@@ -88,7 +92,7 @@ func (p *Pass) bytes(attenuation []float64) float64 {
 		if !ok || p.RateBps[i-1] == 0 {
 			continue
 		}
-		if from > until {
+		if from > until || len(p.Changes) > 0 && p.Changes[i-1] {
 			counts = from + p.Lock
 		}
 		until = to

@@ -84,6 +84,8 @@ func TestCrossingAndLock(t *testing.T) {
 	near(t, "silent from 100 s to 120 s", volumes(t, p).ClearSkyBytes, 100*(50-7+30-7), 1e-6)
 	p.RateBps[1] = 1600
 	near(t, "a change of rate keeps the lock", volumes(t, p).ClearSkyBytes, 100*(50-7+2*20+30), 1e-6)
+	p.Changes = []bool{false, true, true, false}
+	near(t, "locking again after each change", volumes(t, p).ClearSkyBytes, 100*(50-7+2*(20-7)+30-7), 1e-6)
 	p.CN0DBHz[1] = math.Inf(-1)
 	near(t, "not usable at 100 s", volumes(t, p).ClearSkyBytes, 100*(30-7), 1e-6)
 }

@@ -129,6 +129,9 @@ func (f *Family) Modes(steps int) ([]Mode, error) {
 	for _, rate := range f.steps(steps) {
 		out = append(out, modesAt(members, rate)...)
 	}
+	if len(out) == 0 {
+		return nil, fmt.Errorf("no symbol rate of the plan fits into the band of %g MHz; give lower ones", f.Band.Hertz()/1e6)
+	}
 	return Unsurpassed(out), nil
 }
 

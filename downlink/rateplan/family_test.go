@@ -175,6 +175,11 @@ func TestFamilyRefuses(t *testing.T) {
 	if _, err := good.Modes(1); err == nil || !strings.Contains(err.Error(), "steps of the symbol rate: 1") {
 		t.Errorf("one step: %v", err)
 	}
+	narrow := good
+	narrow.Rates, narrow.Band = []unit.Frequency{5e6, 2e6}, 1e6
+	if _, err := narrow.Modes(3); err == nil || !strings.Contains(err.Error(), "no symbol rate of the plan fits into the band of 1 MHz; give lower ones") {
+		t.Errorf("all too fast: %v", err)
+	}
 	if _, _, err := good.Best(nil, -1, 0); err == nil || !strings.Contains(err.Error(), "no passes") || !strings.Contains(err.Error(), "guard: -1 dB") {
 		t.Errorf("no passes and a negative guard: %v", err)
 	}

@@ -10,6 +10,7 @@ import (
 
 	"github.com/spf13/cobra"
 
+	"slantwise/cmd/internal/nearest"
 	"slantwise/downlink/modem"
 	"slantwise/orbit/unit"
 )
@@ -131,6 +132,9 @@ func runModes(env *Env, o modesOptions) error {
 			return inputErrorf("--modulation: %w", err)
 		}
 	}
+	if err := o.checkCodings(catalogue); err != nil {
+		return err
+	}
 	rows, unknown, err := o.choose(catalogue)
 	if err != nil {
 		return err
@@ -210,6 +214,33 @@ func (o *modesOptions) choose(c *modem.Catalogue) (rows []modeRow, unknown int, 
 		rows = append(rows, m)
 	}
 	return rows, unknown, nil
+}
+
+// checkCodings finds a part of a name that no coding holds: more likely a slip than a
+// question whose answer is nothing.
+func (o *modesOptions) checkCodings(c *modem.Catalogue) error {
+	var names, known []string // known: whole names, and what they begin with or are joined of
+	for _, r := range c.Rows() {
+		name := r.Coding.Name
+		names, known = append(names, name), append(append(known, name), strings.Split(name, "-")...)
+		for at, letter := range name {
+			if letter == '-' {
+				known = append(known, name[:at])
+			}
+		}
+	}
+	slices.Sort(known)
+	known = slices.Compact(known)
+	for _, part := range o.codings {
+		if !slices.ContainsFunc(names, func(name string) bool { return strings.Contains(name, part) }) {
+			near := nearest.Names(part, known, 4)
+			if len(near) == 0 {
+				return inputErrorf("--coding: no name in the catalogue holds %q; slantwise modes lists them all", part)
+			}
+			return inputErrorf("--coding: no name in the catalogue holds %q; the nearest are %s", part, strings.Join(near, ", "))
+		}
+	}
+	return nil
 }
 
 func (o *modesOptions) wants(r *modem.Row) bool {

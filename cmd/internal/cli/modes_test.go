@@ -121,7 +121,7 @@ func TestModesTable(t *testing.T) {
 	if code != ExitAnswer || errOut != "" || !strings.Contains(out, "bpsk        ccsds-conv-1-2") || !strings.Contains(out, "net bit/s") {
 		t.Errorf("exit %d, %s\n%s", code, errOut, out)
 	}
-	code, out, _ = invoke(t, "modes", "--coding", "nothing has this")
+	code, out, _ = invoke(t, "modes", "--max-eb-n0-db", "-50")
 	if code != ExitAnswer || strings.Count(out, "\n") != 2 {
 		t.Errorf("an empty answer: exit %d\n%s", code, out)
 	}
@@ -141,6 +141,8 @@ func TestModesRefuses(t *testing.T) {
 		{[]string{"--metric", "words"}, `--metric: "words" is not allowed; it must be bit, codeword, frame or packet`},
 		{[]string{"--add", "no-such-file.csv"}, "--add no-such-file.csv: it cannot be read (no such file or directory); name a CSV file of modes"},
 		{[]string{"--add", "."}, "--add .: modes: "},
+		{[]string{"--coding", "dvbs2"}, `--coding: no name in the catalogue holds "dvbs2"; the nearest are dvb-s2`},
+		{[]string{"--coding", "nosuch"}, `--coding: no name in the catalogue holds "nosuch"; slantwise modes lists them all`},
 		{[]string{"extra"}, `takes no "extra"`},
 	} {
 		code, _, errOut := invoke(t, append([]string{"modes"}, c.args...)...)

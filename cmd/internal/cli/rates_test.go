@@ -95,6 +95,12 @@ func TestRatesVolumes(t *testing.T) {
 			t.Errorf("%s: mean %.0f B, the passes' means add up to %.0f B", r["row"], m, sum)
 		}
 	}
+	for _, r := range rates(t, "--show", "volumes", "--clear-sky", "--silent") {
+		planned, clear := float(t, r, "planned_bytes"), float(t, r, "clear_sky_bytes")
+		if math.Abs(clear-planned) > 1e-3*planned {
+			t.Errorf("%s of %s: %.0f B planned and %.0f B by the distribution, the sky being clear in both", r["row"], r["aos_utc"], planned, clear)
+		}
+	}
 	if len(rows) < 5 || !(sum > 0) {
 		t.Errorf("%d rows, mean %g B", len(rows), sum)
 	}

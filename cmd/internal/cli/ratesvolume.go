@@ -99,7 +99,7 @@ func (v *volumeLinks) distribute(f *rateFlight, r *ratedPass) (*passvolume.Resul
 		return nil, err
 	}
 	p.CN0DBHz = clear
-	p.NeedDBHz, p.RateBps = schedule(f.track, r)
+	p.NeedDBHz, p.RateBps, p.Changes = schedule(f.track, r)
 	for i, link := range v.under {
 		levels, err := v.levels(f, link)
 		if err != nil {
@@ -133,10 +133,10 @@ func (v *volumeLinks) levels(f *rateFlight, link *chosenLink) ([]float64, error)
 }
 
 // schedule returns what a plan sends from each sample on: the C/N0 that it needs and
-// its net rate.
-func schedule(t rateplan.Track, r *ratedPass) (need, rate []float64) {
-	need, rate = make([]float64, len(t.Seconds)), make([]float64, len(t.Seconds))
-	step := 0
+// its net rate, and where a step begins.
+func schedule(t rateplan.Track, r *ratedPass) (need, rate []float64, changes []bool) {
+	need, rate, changes = make([]float64, len(t.Seconds)), make([]float64, len(t.Seconds)), make([]bool, len(t.Seconds))
+	step, last := 0, -1
 	for i, sec := range t.Seconds {
 		at := after(t.Start, sec)
 		for step < len(r.plan.Steps) && !at.Before(r.plan.Steps[step].To) {
@@ -144,8 +144,9 @@ func schedule(t rateplan.Track, r *ratedPass) (need, rate []float64) {
 		}
 		if step < len(r.plan.Steps) && !at.Before(r.plan.Steps[step].From) && r.plan.Steps[step].Mode >= 0 {
 			s := &r.plan.Steps[step]
-			need[i], rate[i] = r.needAt(s), s.NetRate.BitsPerSecond()
+			need[i], rate[i], changes[i] = r.needAt(s), s.NetRate.BitsPerSecond(), step != last
+			last = step
 		}
 	}
-	return need, rate
+	return need, rate, changes
 }

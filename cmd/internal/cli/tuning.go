@@ -50,7 +50,7 @@ orbit and of the oscillators comes on top.`,
 
 func runTuning(env *Env, o *tuningOptions) error {
 	if o.residualHz == 0 {
-		return inputErrorf("--residual-hz: left out; give the difference in Hz that the receiver bears")
+		return inputErrorf("--residual-hz: left out or 0; give the difference in Hz that the receiver bears, greater than 0")
 	}
 	s, err := env.load(needOrbits)
 	if err != nil {
