@@ -21,6 +21,7 @@ type rateFlight struct {
 	pass    *pass.Pass
 	profile *downlink.Profile // kept to the licences
 	track   rateplan.Track
+	cut     bool // whether a licence takes time of it
 }
 
 // rateFlights flies all passes of a spacecraft over stations, in the order of AOS,
@@ -72,6 +73,7 @@ func (f *rateFlight) fly(s *scenario.Scenario) ([]downlink.Note, error) {
 		return nil, &InputError{Err: fmt.Errorf("%s over %s: %w", f.link.spacecraft.Name, f.station.Site.Name, err)}
 	}
 	told, err := keepToLicences(s, f.link, f.profile)
+	f.cut = slices.ContainsFunc(f.profile.Seconds, func(at float64) bool { return !f.profile.Permits(at) })
 	f.track = rateplan.FromProfile(f.profile)
 	return told, err
 }

@@ -2,6 +2,7 @@ package cli
 
 import (
 	"fmt"
+	"slices"
 	"time"
 
 	"github.com/spf13/cobra"
@@ -115,6 +116,9 @@ func runRates(env *Env, o *ratesOptions) error {
 	}[*show](&job)
 	if err != nil {
 		return err
+	}
+	if !rules.Rules.Silent && slices.ContainsFunc(flights, func(f rateFlight) bool { return f.cut }) {
+		notes = append(notes, "steps go on through the time that a licence takes; where it forbids to radiate the spacecraft has to be silent, which --silent (silent: true in the rate plan) plans")
 	}
 	out.notes = append(append(rulesNotes(&rules, tx), notes...), out.notes...)
 	return out.write(env, o.format)

@@ -154,3 +154,19 @@ func TestRatesRefuses(t *testing.T) {
 		t.Errorf("no pass: code %d, %s", code, errOut)
 	}
 }
+
+// TestRatesSayWhereToBeSilent: a schedule that goes on through time which a licence takes
+// says so; one with silence does not need to.
+func TestRatesSayWhereToBeSilent(t *testing.T) {
+	inBytesScenario(t)
+	for _, silent := range []bool{false, true} {
+		args := append([]string{}, ratesOfProbe...)
+		if silent {
+			args = append(args, "--silent")
+		}
+		code, _, errOut := invoke(t, args...)
+		if told := strings.Contains(errOut, "steps go on through the time that a licence takes"); code != ExitAnswer || told == silent {
+			t.Errorf("silent %v: exit %d, told %v: %s", silent, code, told, errOut)
+		}
+	}
+}
