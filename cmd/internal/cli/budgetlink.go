@@ -28,13 +28,13 @@ type chosenLink struct {
 func chooseLink(s *scenario.Scenario, n linkNames) (*chosenLink, error) {
 	var c chosenLink
 	var err error
-	if c.spacecraft, err = pick("spacecraft", n.spacecraft, s.Spacecraft, func(v *scenario.Spacecraft) string { return v.Name }); err != nil {
+	if c.spacecraft, err = pick("spacecraft", n.spacecraft, s.Spacecraft, spacecraftName); err != nil {
 		return nil, err
 	}
-	if c.station, err = pick("station", n.station, s.Stations, func(v *scenario.Station) string { return v.Site.Name }); err != nil {
+	if c.station, err = pick("station", n.station, s.Stations, stationName); err != nil {
 		return nil, err
 	}
-	if c.transmitter, err = pick("transmitter", n.transmitter, c.spacecraft.Transmitters, func(v *downlink.Transmitter) string { return v.Name }); err != nil {
+	if c.transmitter, err = pick("transmitter", n.transmitter, c.spacecraft.Transmitters, transmitterName); err != nil {
 		return nil, err
 	}
 	if c.antenna, err = pick("antenna", n.antenna, c.station.Antennas, func(v *station.Antenna) string { return v.Name }); err != nil {

@@ -7,6 +7,7 @@ import (
 	"github.com/spf13/cobra"
 
 	"slantwise/cmd/internal/scenario"
+	"slantwise/downlink"
 	"slantwise/orbit"
 	"slantwise/station"
 	"slantwise/station/pass"
@@ -91,8 +92,9 @@ func runPasses(ctx context.Context, env *Env, o passesOptions) error {
 	return p.write(env, o)
 }
 
-func spacecraftName(c *scenario.Spacecraft) string { return c.Name }
-func stationName(s *scenario.Station) string       { return s.Site.Name }
+func spacecraftName(c *scenario.Spacecraft) string   { return c.Name }
+func stationName(s *scenario.Station) string         { return s.Site.Name }
+func transmitterName(t *downlink.Transmitter) string { return t.Name }
 
 // tellHorizon says which elevation decides AOS and LOS, and which masks are compared
 // in the other kind.

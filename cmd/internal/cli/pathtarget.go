@@ -72,7 +72,7 @@ func (o *pathOptions) transmitterOf(s *scenario.Scenario) (*downlink.Transmitter
 	if err != nil {
 		return nil, err
 	}
-	return pick("transmitter", o.transmitter, c.Transmitters, func(t *downlink.Transmitter) string { return t.Name })
+	return pick("transmitter", o.transmitter, c.Transmitters, transmitterName)
 }
 
 // antennaOf returns the antenna that the flags name, else the only one of the station

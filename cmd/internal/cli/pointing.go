@@ -139,8 +139,7 @@ func newPointingRows(s *scenario.Scenario, o pointingOptions) (*pointing, error)
 		return nil, err
 	}
 	if o.transmitter != "" || len(p.spacecraft.Transmitters) > 0 {
-		name := func(t *downlink.Transmitter) string { return t.Name }
-		if p.transmitter, err = pick("transmitter", o.transmitter, p.spacecraft.Transmitters, name); err != nil {
+		if p.transmitter, err = pick("transmitter", o.transmitter, p.spacecraft.Transmitters, transmitterName); err != nil {
 			return nil, err
 		}
 	}

@@ -79,7 +79,7 @@ func runRates(env *Env, o *ratesOptions) error {
 	if err != nil {
 		return err
 	}
-	tx, err := pick("transmitter", o.transmitter, craft.Transmitters, func(t *downlink.Transmitter) string { return t.Name })
+	tx, err := pick("transmitter", o.transmitter, craft.Transmitters, transmitterName)
 	if err != nil {
 		return err
 	}

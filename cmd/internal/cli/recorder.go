@@ -66,7 +66,7 @@ func runRecorder(env *Env, o *recorderOptions) error {
 	if craft.Recorder == nil {
 		return inputErrorf("spacecraft %s: the scenario gives it no recorder; add the key recorder to it", craft.Name)
 	}
-	tx, err := pick("transmitter", o.transmitter, craft.Transmitters, func(t *downlink.Transmitter) string { return t.Name })
+	tx, err := pick("transmitter", o.transmitter, craft.Transmitters, transmitterName)
 	if err != nil {
 		return err
 	}

@@ -64,7 +64,7 @@ func runTuning(env *Env, o *tuningOptions) error {
 	if err != nil {
 		return err
 	}
-	tx, err := pick("transmitter", o.transmitter, craft.Transmitters, func(t *downlink.Transmitter) string { return t.Name })
+	tx, err := pick("transmitter", o.transmitter, craft.Transmitters, transmitterName)
 	if err != nil {
 		return err
 	}
