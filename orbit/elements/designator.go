@@ -47,7 +47,10 @@ func shortForm(s string) (short string, ok bool) {
 				return "", false
 			}
 		}
-		return s, len(s) <= 8
+		if len(s) > 8 {
+			return "", false
+		}
+		return s, true
 	}
 	if m[1] < strconv.Itoa(firstYear) || m[1] > strconv.Itoa(lastYear) {
 		return "", false
