@@ -88,9 +88,9 @@ func (r *budgetResult) underTheHorizon(g downlink.Geometry, blocked error) (*dow
 // budgetAt is the budget at one instant.
 func budgetAt(s *scenario.Scenario, c *chosenLink, at time.Time) (*budgetResult, error) {
 	r := newBudgetResult(s, c, true)
-	chosen := c.spacecraft.ElementsAt(at)
-	r.setElements(chosen, at)
-	eph, err := orbit.NewEphemeris(chosen.Elements, at, at.Add(time.Second), s.Earth)
+	end := at.Add(time.Second)
+	r.setElements(s.ElementsOver(c.spacecraft, at, end), at)
+	eph, err := s.Ephemeris(c.spacecraft, at, end, nil)
 	if err != nil {
 		return nil, &InputError{Err: fmt.Errorf("spacecraft %s: %w", c.spacecraft.Name, err)}
 	}
@@ -112,7 +112,7 @@ const mostBudgets = 200_000
 // next, the first of the window for the zero time. Without one there are no samples.
 func budgetOfPass(s *scenario.Scenario, c *chosenLink, at time.Time, step time.Duration) (*budgetResult, error) {
 	r := newBudgetResult(s, c, true)
-	eph, err := orbit.NewEphemeris(c.spacecraft.Elements.Elements, s.Window.Start, s.Window.End, s.Earth)
+	eph, err := s.Ephemeris(c.spacecraft, s.Window.Start, s.Window.End, nil)
 	if err != nil {
 		return nil, &InputError{Err: fmt.Errorf("spacecraft %s: %w", c.spacecraft.Name, err)}
 	}

@@ -9,7 +9,6 @@ import (
 	"github.com/spf13/cobra"
 
 	"slantwise/cmd/internal/scenario"
-	"slantwise/orbit"
 )
 
 func newCheck(env *Env) *cobra.Command {
@@ -52,7 +51,7 @@ func runCheck(env *Env, f format) error {
 func fly(s *scenario.Scenario) error {
 	var faults []error
 	for _, c := range s.Spacecraft {
-		e, err := orbit.NewEphemeris(c.Elements.Elements, s.Window.Start, s.Window.End, s.Earth)
+		e, err := s.Ephemeris(&c, s.Window.Start, s.Window.End, nil)
 		if err != nil {
 			faults = append(faults, fmt.Errorf("spacecraft %s: %w", c.Name, err))
 		} else if cut := e.Truncated(); cut != nil {

@@ -11,7 +11,6 @@ import (
 	"slantwise/downlink"
 	"slantwise/downlink/fluxdensity"
 	"slantwise/downlink/modem"
-	"slantwise/orbit"
 	"slantwise/orbit/unit"
 )
 
@@ -135,7 +134,7 @@ func orbitRange(s *scenario.Scenario, c *scenario.Spacecraft) (fluxdensity.Orbit
 	}
 	const wgs72 = 6378135 * unit.Metre // what the heights of the facts count from
 	o := fluxdensity.Orbit{Perigee: facts.Perigee + wgs72, Apogee: facts.Apogee + wgs72}
-	eph, err := orbit.NewEphemeris(c.Elements.Elements, s.Window.Start, s.Window.End, s.Earth)
+	eph, err := s.Ephemeris(c, s.Window.Start, s.Window.End, nil)
 	if err != nil {
 		return fluxdensity.Orbit{}, err
 	}

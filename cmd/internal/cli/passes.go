@@ -86,7 +86,7 @@ func runPasses(ctx context.Context, env *Env, o passesOptions) error {
 	if len(s.Licences) > 0 {
 		env.note("passes are listed whole; slantwise licence tells what the scenario's licences take from them")
 	}
-	if err := p.search(ctx, env, s.Earth, o); err != nil {
+	if err := p.search(ctx, env, s, o); err != nil {
 		return err
 	}
 	return p.write(env, o)
@@ -117,22 +117,22 @@ func (e *Env) tellHorizon(decides station.ElevationKind, stations []scenario.Sta
 
 // search fills the list. Spacecraft without a state in the window are told of and
 // passed over; when that is all of them, it is an error.
-func (p *passSearch) search(ctx context.Context, env *Env, earth orbit.EarthOrientation, o passesOptions) error {
+func (p *passSearch) search(ctx context.Context, env *Env, s *scenario.Scenario, o passesOptions) error {
 	bar := env.startProgress("passes", len(p.spacecraft))
 	faults := make([]error, len(p.spacecraft))
 	done := 0
 	job := pass.Job{
 		Spacecraft: len(p.spacecraft),
 		Ephemeris: func(i int, scratch *orbit.Ephemeris) (*orbit.Ephemeris, error) {
-			err := scratch.Rebuild(p.spacecraft[i].Elements.Elements, p.window.From, p.window.To, earth)
+			e, err := s.Ephemeris(&p.spacecraft[i], p.window.From, p.window.To, scratch)
 			if err != nil {
 				faults[i] = err
 				return nil, nil
 			}
-			if cut := scratch.Truncated(); cut != nil {
+			if cut := e.Truncated(); cut != nil {
 				faults[i] = cut
 			}
-			return scratch, nil
+			return e, nil
 		},
 		Window: p.window, Decides: p.decides, Keep: o.keep(), Workers: o.workers,
 		Progress: func(n int) { bar.add(n - done); done = n },

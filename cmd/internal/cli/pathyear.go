@@ -83,8 +83,8 @@ const chunk = 10 * 24 * time.Hour
 // its theory through a year, so its drag is left out: the orbit is held, and drifts by
 // the Earth's figure alone.
 func (a *yearAnswer) fly(ctx context.Context, env *Env, s *scenario.Scenario, step time.Duration) error {
-	elements := a.link.spacecraft.Elements.Elements
-	elements.BStar = 0
+	held := a.link.spacecraft.Held()
+	elements := &held.Elements
 	var contacts downlink.ContactCells
 	var eph *orbit.Ephemeris
 	from, end := s.Window.Start, s.Window.End
@@ -99,12 +99,7 @@ func (a *yearAnswer) fly(ctx context.Context, env *Env, s *scenario.Scenario, st
 			to = end
 		}
 		var err error
-		if eph == nil {
-			eph, err = orbit.NewEphemeris(elements, from, to, s.Earth)
-		} else {
-			err = eph.Rebuild(elements, from, to, s.Earth)
-		}
-		if err != nil {
+		if eph, err = s.Ephemeris(held, from, to, eph); err != nil {
 			return &InputError{Err: fmt.Errorf("spacecraft %s: %w", a.link.spacecraft.Name, err)}
 		}
 		if err := a.gather(&contacts, eph, s, step); err != nil {

@@ -147,9 +147,9 @@ func newPointingRows(s *scenario.Scenario, o pointingOptions) (*pointing, error)
 	if p.refraction, err = station.NewRefraction(p.station.Site.HeightAboveSea()); err != nil {
 		return nil, &InputError{Err: err}
 	}
-	p.elements = p.spacecraft.ElementsAt(o.from.Add(o.to.Sub(o.from) / 2))
-	// A span of no length has no knots to look between.
-	p.ephemeris, err = orbit.NewEphemeris(p.elements.Elements, o.from, o.to.Add(time.Second), s.Earth)
+	end := o.to.Add(time.Second) // a span of no length has no knots to look between
+	p.elements = s.ElementsOver(p.spacecraft, o.from, end)
+	p.ephemeris, err = s.Ephemeris(p.spacecraft, o.from, end, nil)
 	if err == nil && p.ephemeris.Seconds(o.to) > p.ephemeris.Span() {
 		err = p.ephemeris.Truncated()
 	}

@@ -106,7 +106,7 @@ func (p *reportPlan) fly() error {
 	var faults []error
 	for i := range p.craft {
 		c := &p.craft[i]
-		e, err := orbit.NewEphemeris(c.Elements.Elements, w.Start, w.End, p.scenario.Earth)
+		e, err := p.scenario.Ephemeris(c.Spacecraft, w.Start, w.End, nil)
 		if err != nil {
 			faults = append(faults, fmt.Errorf("spacecraft %s: %w", c.Name, err))
 			continue

@@ -125,7 +125,7 @@ func shiftCourse(eph *orbit.Ephemeris, st *scenario.Station, tx *downlink.Transm
 
 // passesOver flies a spacecraft through the window and finds its passes over a station.
 func passesOver(s *scenario.Scenario, craft *scenario.Spacecraft, st *scenario.Station) (*orbit.Ephemeris, []pass.Pass, error) {
-	eph, err := orbit.NewEphemeris(craft.Elements.Elements, s.Window.Start, s.Window.End, s.Earth)
+	eph, err := s.Ephemeris(craft, s.Window.Start, s.Window.End, nil)
 	if err != nil {
 		return nil, nil, &InputError{Err: fmt.Errorf("spacecraft %s: %w", craft.Name, err)}
 	}
