@@ -51,10 +51,17 @@ func (e *Ephemeris) Rebuild(el Elements, from, to time.Time, earth EarthOrientat
 	return nil
 }
 
-func checkSpan(el *Elements, from, to time.Time) error {
+func checkOrder(from, to time.Time) error {
 	if to.Before(from) {
 		return &unit.RangeError{Quantity: "length of the span", Value: to.Sub(from).Seconds(), Unit: "s",
 			Allowed: "0 or more", Next: "give the earlier instant first"}
+	}
+	return nil
+}
+
+func checkSpan(el *Elements, from, to time.Time) error {
+	if err := checkOrder(from, to); err != nil {
+		return err
 	}
 	for _, t := range [2]time.Time{from, to} {
 		if d := t.Sub(el.Epoch); d > farthestFromEpoch || d < -farthestFromEpoch {
@@ -97,12 +104,8 @@ func (b *builder) approach() error {
 // the differences need them.
 func (b *builder) fill(end float64) error {
 	e := b.e
-	e.end, e.truncated = end, nil
-	e.first, e.step = float64(b.start)-b.sinceEpoch, float64(b.step)
-	e.rate = 1 / e.step
-	e.last = e.intervalOf(end)
-	count := e.last + 2 + 2*reach
-	e.knots = slices.Grow(e.knots, count)[:count]
+	e.truncated = nil
+	e.layOut(float64(b.start)-b.sinceEpoch, end, float64(b.step))
 	w := watch{p: b.p, good: b.start, end: b.sinceEpoch + e.end, low: lowPerigee(e.step)}
 	for i := 0; i < len(e.knots); i++ {
 		k := b.start + (i-reach)*b.step
@@ -142,6 +145,15 @@ func (b *builder) shorten(bad int, end float64) error {
 	e.last = e.intervalOf(e.end)
 	e.knots = e.knots[:e.last+2+2*reach]
 	return nil
+}
+
+// layOut makes room for the knots of a span that ends at end, the first knot at first,
+// at most 0; all in seconds after the reference.
+func (e *Ephemeris) layOut(first, end, step float64) {
+	e.end, e.first, e.step, e.rate = end, first, step, 1/step
+	e.last = e.intervalOf(end)
+	count := e.last + 2 + 2*reach
+	e.knots = slices.Grow(e.knots, count)[:count]
 }
 
 // intervalOf returns the number of the interval between knots that ends at s or

@@ -79,12 +79,12 @@ func runPathYear(ctx context.Context, env *Env, o *pathOptions) error {
 // chunk is how much of the year is flown at a time.
 const chunk = 10 * 24 * time.Hour
 
-// fly gathers the contacts and makes the statistics. One element set does not carry
-// its theory through a year, so its drag is left out: the orbit is held, and drifts by
-// the Earth's figure alone.
+// fly gathers the contacts and makes the statistics, on the kept orbit.
 func (a *yearAnswer) fly(ctx context.Context, env *Env, s *scenario.Scenario, step time.Duration) error {
-	held := a.link.spacecraft.Held()
-	elements := &held.Elements
+	kept, err := a.link.spacecraft.Kept()
+	if err != nil {
+		return &InputError{Err: fmt.Errorf("spacecraft %s: %w", a.link.spacecraft.Name, err)}
+	}
 	var contacts downlink.ContactCells
 	var eph *orbit.Ephemeris
 	from, end := s.Window.Start, s.Window.End
@@ -98,8 +98,7 @@ func (a *yearAnswer) fly(ctx context.Context, env *Env, s *scenario.Scenario, st
 		if to.After(end) {
 			to = end
 		}
-		var err error
-		if eph, err = s.Ephemeris(held, from, to, eph); err != nil {
+		if eph, err = kept.Ephemeris(from, to, s.Earth, eph); err != nil {
 			return &InputError{Err: fmt.Errorf("spacecraft %s: %w", a.link.spacecraft.Name, err)}
 		}
 		if err := a.gather(&contacts, eph, s, step); err != nil {
@@ -107,7 +106,6 @@ func (a *yearAnswer) fly(ctx context.Context, env *Env, s *scenario.Scenario, st
 		}
 		bar.add(int(to.Sub(from).Hours() / 24))
 	}
-	var err error
 	if a.year, err = downlink.NewYear(a.link.clear, a.link.sky.spec, &contacts); err != nil {
 		return &InputError{Err: err}
 	}
@@ -119,15 +117,25 @@ func (a *yearAnswer) fly(ctx context.Context, env *Env, s *scenario.Scenario, st
 	if f := a.link.transmitter.Frequency; s.Path.Ionosphere && s.Path.IonosphericScintillation == nil && f <= unit.Gigahertz {
 		a.note(downlink.Note{Kind: downlink.Warning, Text: "ionospheric scintillation is not in the statistics: its table holds 0.1 to 1 % of the year alone; state a loss, and it counts all year"})
 	}
-	a.note(downlink.Note{Kind: downlink.Assumption, Text: fmt.Sprintf(
-		"orbit: element set %d of %s held from %s for %g days, without its drag, as one set does not carry SGP4 through a year; the shares of contact time at each elevation are those of the orbit, the instants are no predictions",
-		elements.CatalogNumber, utc(elements.Epoch), utc(s.Window.Start), a.days)})
+	a.note(downlink.Note{Kind: downlink.Assumption, Text: keptText(kept) + fmt.Sprintf("; from %s for %g days", utc(s.Window.Start), a.days)})
 	for _, n := range a.link.notes(s, true) {
 		if n.Kind != downlink.Assumption {
 			a.note(n)
 		}
 	}
 	return nil
+}
+
+// keptText says what orbit a long statistic is flown on, and what that means.
+func keptText(k *orbit.KeptOrbit) string {
+	el := k.Elements()
+	held := "node and perigee turn by the Earth's flattening"
+	if k.SunSynchronous() {
+		held = fmt.Sprintf("the node's mean local time is held at %.2f h (flattening alone would move it by %.1f min a year)",
+			k.LocalTimeOfNode(el.Epoch).Degrees()/15, k.NodeDrift().DegreesPerSecond()*4*86400*365.25)
+	}
+	return fmt.Sprintf("orbit: element set %d of %s as a kept orbit, as one set does not carry SGP4 through a year: no drag, height and eccentricity held, %s; shares of time hold, the instants of single passes are no predictions",
+		el.CatalogNumber, utc(el.Epoch), held)
 }
 
 // note keeps a note once: the path of the year and that of the link take much for

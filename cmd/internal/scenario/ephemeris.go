@@ -33,11 +33,6 @@ func (s *Scenario) ElementsOver(c *Spacecraft, from, to time.Time) elements.Chos
 	return c.ElementsAt(from.Add(to.Sub(from) / 2))
 }
 
-// Held returns the spacecraft on its element set without drag, whatever the time
-// asked for: for statistics over spans that one set does not carry its theory through.
-func (c *Spacecraft) Held() *Spacecraft {
-	held := *c
-	held.Elements.BStar = 0
-	held.Candidates = []orbit.Elements{held.Elements.Elements}
-	return &held
-}
+// Kept returns the orbit of the spacecraft as its operator keeps it, for statistics over
+// spans that one element set does not carry its theory through.
+func (c *Spacecraft) Kept() (*orbit.KeptOrbit, error) { return orbit.KeepOrbit(c.Elements.Elements) }
