@@ -58,6 +58,11 @@ func prepareExample(t *testing.T, command string) {
 	if err := os.Link("plans/summer.tle", "weather.tle"); err != nil {
 		t.Fatal(err)
 	}
+	for _, side := range []string{"before.yaml", "after.yaml"} {
+		if code, _, errOut := invoke(t, "new", side); code != ExitAnswer {
+			t.Fatal(errOut)
+		}
+	}
 	// The columns that the model rain-specific reads.
 	table := "frequency_ghz,elevation_deg,polarization_tilt_deg,rain_rate_mm_h\n20,40,45,10\n"
 	if err := os.WriteFile("in.csv", []byte(table), 0o600); err != nil {

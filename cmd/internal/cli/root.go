@@ -48,6 +48,7 @@ Results go to stdout, words for people to stderr. Exit codes:
 		newElements(env),
 		newNew(env),
 		newPasses(env),
+		newCompare(env),
 		newPointing(env),
 		newBudget(env),
 		newPath(env),
