@@ -34,6 +34,14 @@ type Budget struct {
 	AchievableLimit  RateLimit
 	Usable           bool // false where the antenna points outside its main lobe
 
+	// What the orbit's error does, one standard deviation each; NaN where it is not known.
+	OrbitAlong, OrbitTotal unit.Angle     // of the direction, along the apparent motion and over both axes
+	DopplerSpread          unit.Frequency // of the received frequency
+	// SureError is how far off the beam's axis the spacecraft is at most with
+	// SureProbability, by the orbit's error and the antenna's; NaN where the antenna does
+	// not follow the prediction or its beamwidth is not known.
+	SureError unit.Angle
+
 	Cautions []string // what is doubtful at this geometry alone
 }
 

@@ -30,7 +30,9 @@ type result struct {
 	margin, marginOver, achievableBps float64
 	limit                             RateLimit
 	usable                            bool
-	pointing                          unit.Angle // off the beam's axis, all errors together
+	pointing                          unit.Angle         // off the beam's axis, all errors together
+	look                              station.LookSpread // by the orbit's error; NaN where it is not known
+	sureError                         unit.Angle         // not exceeded with SureProbability; NaN where the orbit does not lead the beam
 }
 
 // evaluate is the one evaluator behind Budget and Profile; the geometry is the
@@ -99,6 +101,10 @@ func (l *Link) fillPointing(g *Geometry, s *scratch) error {
 		off := station.AngleBetween(a.Boresight, to).Radians()
 		e = unit.Angle(math.Sqrt(off*off + e.Radians()*e.Radians()))
 		s.terms[l.slots.pointing] = float64(station.PointingLoss(e, l.beamwidth))
+	}
+	e, err := l.fillOrbitPointing(g, s, e)
+	if err != nil {
+		return err
 	}
 	s.result.pointing = e
 	s.result.usable = l.beamwidth == 0 || station.InMainLobe(e, l.beamwidth)

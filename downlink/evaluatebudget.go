@@ -45,6 +45,8 @@ func (l *Link) At(g Geometry) (*Budget, error) {
 	for i, p := range l.noise.parts {
 		b.NoiseParts[i] = NoisePart{p.Name, unit.Temperature(s.noise[i]), p.Source}
 	}
+	b.OrbitAlong, b.OrbitTotal, b.SureError = r.look.Along, r.look.Total(), r.sureError
+	b.DopplerSpread = l.dopplerSpread(r.look)
 	b.Sun, b.Moon = s.geometry.bodies.sun, s.geometry.bodies.moon
 	b.Cautions = l.cautions(&g, r)
 	if l.spec.CrossPolar == nil {
@@ -78,6 +80,9 @@ func (l *Link) cautions(g *Geometry, r *result) []string {
 	switch w := l.beamwidth; {
 	case !r.usable:
 		say("the spacecraft stands %.3g deg off the beam's axis, outside the main lobe (%.3g deg): the link counts as unusable", r.pointing.Degrees(), w.Degrees())
+	case w > 0 && r.sureError > w/2:
+		say("by the orbit's error and the antenna's the spacecraft may stand %.3g deg off the beam's axis (probability %g), beyond the half-power point at %.3g deg: the beam is too narrow to be sure of",
+			r.sureError.Degrees(), SureProbability, (w / 2).Degrees())
 	case w > 0 && r.pointing > w/2:
 		say("the spacecraft stands %.3g deg off the beam's axis, beyond the half-power point: the pointing loss may be up to 4.3 dB more", r.pointing.Degrees())
 	}

@@ -23,6 +23,9 @@ type Geometry struct {
 	air    propagation.Sample
 	airOf  *propagation.Path // whose sample it is; nil: there is none
 	bodies bodyAngles
+
+	state orbit.State // that the geometry was made of
+	flown bool        // there is one; a stated geometry has none
 }
 
 // MeanEarthRadius is the mean radius R1 of the WGS-84 ellipsoid, which stands for a

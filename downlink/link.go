@@ -25,6 +25,8 @@ type LinkSpec struct {
 	Sun, Moon *propagation.Disc // how bright they are; nil: they add no noise
 	ClearSky  bool              // they shine through the clear air of the path
 
+	Orbit *OrbitError // how uncertain the spacecraft's position is; nil: it is taken as exact
+
 	CrossPolar CrossPolar // where the other polarisation is in use; nil: it is not
 }
 
@@ -53,11 +55,14 @@ type Link struct {
 	beamwidth unit.Angle         // 0: not known
 	noise     noisePlan
 	caps      rateCaps
+
+	quantile *station.ErrorQuantile // of the pointing error in the budget; nil: the mean loss counts
+	sure     *station.ErrorQuantile // by which the beam is judged; nil: the link knows no orbit error
 }
 
 // slots are the places of the terms that change with the geometry; -1: there is no
 // such term, or it does not change.
-type slots struct{ transmitGain, freeSpace, path, stationGain, pointing int }
+type slots struct{ transmitGain, freeSpace, path, stationGain, pointing, orbitPointing int }
 
 // NewLink checks the spec and prepares the link. It returns all faults at once.
 func NewLink(spec LinkSpec) (*Link, error) {
@@ -71,6 +76,9 @@ func NewLink(spec LinkSpec) (*Link, error) {
 		l.gain = g
 	}
 	l.beamwidth, _ = spec.Antenna.BeamwidthAt(f)
+	if err := l.prepareOrbitError(); err != nil {
+		return nil, err
+	}
 	l.buildTerms()
 	if err := l.addBodies(); err != nil {
 		return nil, err
@@ -171,5 +179,6 @@ func (l *Link) GeometryOf(s orbit.State) (Geometry, unit.Speed) {
 	look := l.spec.Frame.Look(s)
 	g := Geometry{Azimuth: look.Azimuth, Elevation: look.Elevation, Range: look.Range}
 	g.OffBoresight = l.offBoresight(s.Position)
+	g.state, g.flown = s, true
 	return g, look.RangeRate
 }

@@ -18,6 +18,7 @@ func (l *Link) writeNotes() {
 	l.noteTransmitter()
 	l.notePolarization()
 	l.noteAntenna()
+	l.noteOrbitError()
 	l.noteNoise()
 	l.noteMode()
 	for _, m := range l.spec.PathModels {

@@ -21,7 +21,7 @@ func (l *Link) loss(name string, value unit.DB, source string) {
 // buildTerms lays down the terms in their order. Terms that change with the geometry
 // hold 0 in base.
 func (l *Link) buildTerms() {
-	l.slots = slots{-1, -1, -1, -1, -1}
+	l.slots = slots{-1, -1, -1, -1, -1, -1}
 	l.addRadiated()
 	l.eirpTerms = len(l.terms)
 	l.slots.freeSpace = l.add("free-space loss", -1, "dB", 0,
@@ -155,6 +155,7 @@ func (l *Link) addPointing() {
 	if a.Kind == station.Fixed {
 		l.slots.pointing = at
 	}
+	l.addOrbitPointing()
 }
 
 func measuredWhen(m *station.Measurement) string {

@@ -19,6 +19,9 @@ type Profile struct {
 
 	SunDeg, MoonDeg []float64 // off the beam's axis; NaN where they are not known
 
+	// What the orbit's error does, as in Budget; NaN where it is not known.
+	OrbitAlongDeg, OrbitTotalDeg, DopplerSpreadHz, SureErrorDeg []float64
+
 	Terms      []TermInfo
 	TermValues [][]float64 // by term, then by sample
 
@@ -40,6 +43,10 @@ type Profile struct {
 	// While the Sun, the Moon is up and its disc touches the half-power beam; empty: never,
 	// nil: where they stand or the beamwidth is not known.
 	SunInBeam, MoonInBeam []Interval
+
+	// BeamUnsure is while the beam is too narrow to be sure of: SureErrorDeg beyond the
+	// half-power point. Empty: never; nil: the orbit does not lead the beam.
+	BeamUnsure []Interval
 
 	sunUpDeg, moonUpDeg []float64 // SunDeg, MoonDeg while they are up, else NaN
 

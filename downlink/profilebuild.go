@@ -43,6 +43,7 @@ func (l *Link) Profile(track Track, aos, los time.Time, step time.Duration) (*Pr
 		p.SunInBeam = p.within(p.sunUpDeg, (l.beamwidth/2 + propagation.SunDiameter/2).Degrees())
 		p.MoonInBeam = p.within(p.moonUpDeg, (l.beamwidth/2 + propagation.MoonDiameter/2).Degrees())
 	}
+	p.BeamUnsure = l.unsure(p)
 	return p, nil
 }
 
@@ -81,7 +82,7 @@ func newProfile(l *Link, n int) *Profile {
 		AchievableLimit: make([]RateLimit, n), Usable: make([]bool, n),
 		DataRate: l.dataRate(), RequiredMarginDB: float64(l.spec.Transmitter.RequiredMargin)}
 	columns := []*[]float64{&p.Seconds, &p.AzimuthDeg, &p.ElevationDeg, &p.ApparentElevationDeg, &p.RangeKm, &p.RangeRateKmS,
-		&p.OffBoresightDeg, &p.SunDeg, &p.MoonDeg, &p.sunUpDeg, &p.moonUpDeg, &p.DopplerHz, &p.ReceivedPowerDBm, &p.FluxDensityDBWM2, &p.SystemNoiseK, &p.GOverTDBK,
+		&p.OffBoresightDeg, &p.OrbitAlongDeg, &p.OrbitTotalDeg, &p.DopplerSpreadHz, &p.SureErrorDeg, &p.SunDeg, &p.MoonDeg, &p.sunUpDeg, &p.moonUpDeg, &p.DopplerHz, &p.ReceivedPowerDBm, &p.FluxDensityDBWM2, &p.SystemNoiseK, &p.GOverTDBK,
 		&p.CN0DBHz, &p.EbN0DB, &p.MarginDB, &p.MarginOverDB, &p.AchievableRateBps}
 	for i := range p.TermValues {
 		columns = append(columns, &p.TermValues[i])
@@ -113,6 +114,9 @@ func (l *Link) sample(p *Profile, i int, state orbit.State, s *scratch) error {
 	p.RangeKm[i], p.RangeRateKmS[i] = g.Range.Kilometres(), rate.KilometresPerSecond()
 	p.OffBoresightDeg[i] = g.OffBoresight.Degrees()
 	p.DopplerHz[i] = l.Doppler(rate).Hertz()
+	k := &s.result
+	p.OrbitAlongDeg[i], p.OrbitTotalDeg[i], p.SureErrorDeg[i] = k.look.Along.Degrees(), k.look.Total().Degrees(), k.sureError.Degrees()
+	p.DopplerSpreadHz[i] = l.dopplerSpread(k.look).Hertz()
 	p.SunDeg[i], p.MoonDeg[i] = g.bodies.sun.Degrees(), g.bodies.moon.Degrees()
 	p.sunUpDeg[i], p.moonUpDeg[i] = math.NaN(), math.NaN()
 	if g.bodies.sunUp {
@@ -154,7 +158,7 @@ func (s *scratch) noValue() {
 	}
 	s.geometry.bodies = noAngles
 	s.result = result{receivedDBm: nan, fluxDBWM2: nan, systemK: nan, gOverT: nan, cn0: nan, ebn0: nan, margin: nan, marginOver: nan,
-		limit: LimitUnusable}
+		limit: LimitUnusable, look: noLook, sureError: unit.Angle(nan)}
 }
 
 // within returns the intervals in which a column is at most a bound, from crossing to

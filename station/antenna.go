@@ -26,6 +26,23 @@ func (k AntennaKind) String() string {
 	return "unknown kind of antenna"
 }
 
+// Follows tells by what a steered antenna is led.
+type Follows int
+
+// Ways to follow a spacecraft.
+const (
+	FollowsPrediction Follows = iota // the orbit as predicted: its errors are errors of pointing
+	FollowsSignal                    // the signal itself, once it is found: PointingRMS holds all that is left
+)
+
+// String returns the way as the scenario writes it.
+func (f Follows) String() string {
+	if f == FollowsSignal {
+		return "signal"
+	}
+	return "prediction"
+}
+
 // DefaultBeamwidthFactor is k of the half-power beamwidth k λ/D where the scenario
 // gives none: 70°, common practice for a tapered illumination (books have 58° for a
 // uniform one to 73°).
@@ -53,6 +70,7 @@ type Antenna struct {
 
 	Boresight    Direction     // of a fixed antenna
 	PointingRMS  unit.Angle    // pointing error, root mean square over both axes together
+	Follows      Follows       // how a steered antenna finds the spacecraft
 	Polarization *Polarization // nil: left out
 	Bands        []Band        // empty: any frequency
 	FeedLoss     unit.DB       // between antenna and first amplifier, at the physical temperature
