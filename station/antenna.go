@@ -76,6 +76,7 @@ type Antenna struct {
 	FeedLoss     unit.DB       // between antenna and first amplifier, at the physical temperature
 	ExtraLosses  []Loss        // each a term of its own
 	Noise        *Noise        // nil with a measured G/T
+	Mount        *Mount        // what turns it; nil: it follows whatever it is asked to
 }
 
 // Direction is a direction in the sky of a site.

@@ -21,6 +21,7 @@ var layers = []struct {
 	{"slantwise/orbit/elements", 2},
 	{"slantwise/station", 3},
 	{"slantwise/station/pass", 4},
+	{"slantwise/station/mount", 4},
 	{"slantwise/downlink/modem", 5},
 	{"slantwise/downlink/propagation", 5},
 	{"slantwise/downlink", 6},

@@ -98,3 +98,9 @@ const BitPerSecond BitRate = 1
 
 // BitsPerSecond returns the rate in bit/s.
 func (r BitRate) BitsPerSecond() float64 { return float64(r) }
+
+// AngularAcceleration is a change of angular rate in radians per second squared.
+type AngularAcceleration float64
+
+// DegreesPerSecond2 returns the acceleration in deg/s².
+func (a AngularAcceleration) DegreesPerSecond2() float64 { return float64(a) * (180 / math.Pi) }
