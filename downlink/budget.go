@@ -15,7 +15,10 @@ type Budget struct {
 	Elevation    unit.Angle
 	Range        unit.Length
 	OffBoresight unit.Angle
-	Sun, Moon    unit.Angle // off the beam's axis
+
+	AroundBoresight       unit.Angle // as in Geometry
+	BodyOffZ, BodyAroundZ unit.Angle
+	Sun, Moon             unit.Angle // off the beam's axis
 
 	Terms            []Term  // adds up to ReceivedPowerDBm, bit for bit in this order
 	ReceivedPowerDBm float64 // at the input of the first amplifier; NaN where the station's gain is not known

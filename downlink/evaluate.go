@@ -64,7 +64,7 @@ func (l *Link) fillTerms(g *Geometry, s *scratch) error {
 	v := s.terms
 	copy(v, l.base)
 	if l.pattern != nil {
-		gain, ok := l.pattern.gain(g.OffBoresight.Radians())
+		gain, ok := l.transmitGain(g)
 		if !ok {
 			return l.noTransmitGain(g)
 		}
@@ -84,6 +84,14 @@ func (l *Link) fillTerms(g *Geometry, s *scratch) error {
 		v[i] = l.gain.Value(g.Elevation)
 	}
 	return l.fillPointing(g, s)
+}
+
+// transmitGain is the gain of an antenna that depends on the direction.
+func (l *Link) transmitGain(g *Geometry) (unit.DB, bool) {
+	if l.spin != nil {
+		return l.spin.at(g.BodyOffZ.Radians())
+	}
+	return l.pattern.gainToward(g.OffBoresight.Radians(), g.AroundBoresight.Radians())
 }
 
 // fillPointing finds how far off the beam's axis the spacecraft stands.

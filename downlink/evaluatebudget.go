@@ -28,6 +28,7 @@ func (l *Link) At(g Geometry) (*Budget, error) {
 	r := &s.result
 	b := &Budget{
 		Time: g.Time, Azimuth: g.Azimuth, Elevation: g.Elevation, Range: g.Range, OffBoresight: g.OffBoresight,
+		AroundBoresight: g.AroundBoresight, BodyOffZ: g.BodyOffZ, BodyAroundZ: g.BodyAroundZ,
 		ReceivedPowerDBm: r.receivedDBm, PowerFluxDensity: r.fluxDBWM2,
 		SystemNoise: unit.Temperature(r.systemK), GOverT: unit.DB(r.gOverT), CN0: unit.DB(r.cn0),
 		EbN0: unit.DB(r.ebn0), RequiredEbN0: unit.DB(math.NaN()), Margin: unit.DB(r.margin), MarginOver: unit.DB(r.marginOver),
@@ -63,10 +64,20 @@ func (l *Link) At(g Geometry) (*Budget, error) {
 
 func (l *Link) noTransmitGain(g *Geometry) error {
 	t := &l.spec.Transmitter
-	if math.IsNaN(g.OffBoresight.Radians()) {
-		return fmt.Errorf("transmitter %q: its attitude is left out, and its gain depends on it; give the attitude", t.Name)
+	unknown := math.IsNaN(g.OffBoresight.Radians())
+	if l.spin != nil {
+		unknown = math.IsNaN(g.BodyOffZ.Radians())
 	}
-	_, err := l.pattern.GainAt(g.OffBoresight)
+	switch {
+	case unknown && t.Attitude.HasBody():
+		return fmt.Errorf("transmitter %q: attitude %s needs the Sun and the stars, and the link was made without the sky of a window", t.Name, t.Attitude)
+	case unknown:
+		return fmt.Errorf("transmitter %q: its attitude is left out, and its gain depends on it; give the attitude", t.Name)
+	case l.spin != nil:
+		return fmt.Errorf("transmitter %q: at %.2f deg off the spin axis the turning antenna shows a side where its pattern has no gain that counts as %q; give its pattern there, or let the spin count as something else",
+			t.Name, g.BodyOffZ.Degrees(), t.Body.SpinGain)
+	}
+	_, err := l.pattern.GainToward(g.OffBoresight, g.AroundBoresight)
 	return fmt.Errorf("transmitter %q: %w", t.Name, err)
 }
 

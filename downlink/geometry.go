@@ -2,6 +2,7 @@ package downlink
 
 import (
 	"errors"
+	"fmt"
 	"math"
 	"time"
 
@@ -17,7 +18,12 @@ type Geometry struct {
 	Azimuth      unit.Angle
 	Elevation    unit.Angle // geometric
 	Range        unit.Length
-	OffBoresight unit.Angle // of the station, as the transmit antenna sees it; NaN when tumbling
+	OffBoresight unit.Angle // of the station, as the transmit antenna sees it; NaN when tumbling, and for an antenna that a spin carries around
+
+	// Of the station in the antenna's and the body's axes; NaN where they are not known, or
+	// not worked out since no gain depends on them.
+	AroundBoresight       unit.Angle // about the boresight, from the pattern's own zero
+	BodyOffZ, BodyAroundZ unit.Angle // from body z, and about it from x toward y
 
 	// What the models of one evaluation share.
 	air    propagation.Sample
@@ -36,7 +42,9 @@ const MeanEarthRadius = 6371009 * unit.Metre
 // StatedGeometry returns the geometry of a stated range and elevation, for which no
 // element set is needed. azimuth nil: not known, which a fixed antenna does not
 // allow. offBoresight nil: from the attitude: for nadir over a sphere through the
-// site (or of MeanEarthRadius), else 0.
+// site (or of MeanEarthRadius), else 0 where an attitude with body axes does not need
+// it. For a spinning antenna it is the angle off the spin axis. The angle around the
+// boresight stays NaN; a caller who knows it sets it.
 func (l *Link) StatedGeometry(slant unit.Length, elevation unit.Angle, azimuth, offBoresight *unit.Angle) (Geometry, error) {
 	if !(slant >= unit.Metre && slant <= 1e12) {
 		return Geometry{}, &unit.RangeError{Quantity: "range", Value: slant.Kilometres(), Unit: "km", Allowed: "0.001 to 1e9 km"}
@@ -44,14 +52,17 @@ func (l *Link) StatedGeometry(slant unit.Length, elevation unit.Angle, azimuth, 
 	if !(elevation >= -90*unit.Degree && elevation <= 90*unit.Degree) {
 		return Geometry{}, &unit.RangeError{Quantity: "elevation", Value: asGiven(elevation), Unit: "deg", Allowed: "-90 to 90 deg"}
 	}
-	g := Geometry{Azimuth: unit.Angle(math.NaN()), Elevation: elevation, Range: slant}
+	nan := unit.Angle(math.NaN())
+	g := Geometry{Azimuth: nan, Elevation: elevation, Range: slant, AroundBoresight: nan, BodyOffZ: nan, BodyAroundZ: nan}
 	if azimuth != nil {
 		g.Azimuth = *azimuth
 		if !(*azimuth >= -360*unit.Degree && *azimuth <= 360*unit.Degree) {
 			return Geometry{}, &unit.RangeError{Quantity: "azimuth", Value: asGiven(*azimuth), Unit: "deg", Allowed: "-360 to 360 deg"}
 		}
 	}
-	tumbling := l.spec.Transmitter.Attitude == AttitudeTumbling
+	t := &l.spec.Transmitter
+	tumbling := t.Attitude == AttitudeTumbling
+	toCentre := t.Attitude == AttitudeNadir || t.Attitude == AttitudeYawSteering
 	switch {
 	case offBoresight != nil && tumbling:
 		return Geometry{}, errors.New("a tumbling spacecraft has no off-boresight angle; leave the angle out")
@@ -60,9 +71,14 @@ func (l *Link) StatedGeometry(slant unit.Length, elevation unit.Angle, azimuth, 
 	case offBoresight != nil:
 		g.OffBoresight = *offBoresight
 	case tumbling:
-		g.OffBoresight = unit.Angle(math.NaN())
-	case l.spec.Transmitter.Attitude == AttitudeNadir:
+		g.OffBoresight = nan
+	case toCentre && t.Body.Boresight.OffZ == 0:
 		g.OffBoresight = l.nadirAngle(slant, elevation)
+	case l.pattern != nil && t.Attitude.HasBody():
+		return Geometry{}, fmt.Errorf("range and elevation do not tell how an antenna with attitude %s looks at the station; give the off-boresight angle (for a spin, that off its axis)", t.Attitude)
+	}
+	if l.spin != nil {
+		g.BodyOffZ, g.OffBoresight = g.OffBoresight, nan
 	}
 	return g, nil
 }
@@ -78,18 +94,22 @@ func (l *Link) nadirAngle(slant unit.Length, elevation unit.Angle) unit.Angle {
 	return unit.Angle(math.Atan2(radius*cos, slant.Metres()+radius*sin))
 }
 
-// offBoresight returns the angle between the transmit antenna's boresight and the
-// station for a spacecraft's Earth-fixed position.
-func (l *Link) offBoresight(position orbit.Vec3) unit.Angle {
-	switch l.spec.Transmitter.Attitude {
-	case AttitudeStation:
-		return 0
-	case AttitudeNadir:
-		up := position.Sub(l.spec.Frame.Origin)
-		cos := position.Dot(up) / math.Sqrt(position.Dot(position)*up.Dot(up))
-		return unit.Angle(math.Acos(max(-1, min(1, cos)))) // rounding only
+// lookFromSpacecraft fills the angles under which the transmit antenna sees the station,
+// for an Earth-fixed state; the geometry's time is set.
+func (l *Link) lookFromSpacecraft(g *Geometry, s orbit.State) {
+	nan := unit.Angle(math.NaN())
+	g.OffBoresight, g.AroundBoresight, g.BodyOffZ, g.BodyAroundZ = nan, nan, nan, nan
+	switch {
+	case l.view != nil:
+		l.view.look(g, s)
+	case l.spec.Transmitter.Attitude == AttitudeStation:
+		g.OffBoresight = 0
+	case l.spec.Transmitter.Attitude == AttitudeNadir:
+		up := s.Position.Sub(l.spec.Frame.Origin)
+		cos := s.Position.Dot(up) / math.Sqrt(s.Position.Dot(s.Position)*up.Dot(up))
+		g.OffBoresight = unit.Angle(math.Acos(max(-1, min(1, cos)))) // rounding only
+		g.BodyOffZ = g.OffBoresight
 	}
-	return unit.Angle(math.NaN())
 }
 
 // asGiven returns the degrees of an angle as someone may have written them: the way

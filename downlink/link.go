@@ -3,6 +3,7 @@ package downlink
 import (
 	"errors"
 	"fmt"
+	"time"
 
 	"slantwise/downlink/modem"
 	"slantwise/downlink/propagation"
@@ -50,6 +51,8 @@ type Link struct {
 	waveNumberDB float64 // 20 log10(4π/λ), the free-space loss at 1 m
 
 	pattern   *Pattern           // whose gain depends on the angle; nil: it is in base
+	spin      *spinCurve         // of a pattern that turns; nil: it does not
+	view      *bodyView          // nil: the angle to the boresight is all there is to know
 	gain      *station.Tabulated // dBi; nil: not known
 	gainLoss  float64            // dB, surface and blockage, that belong to the gain
 	beamwidth unit.Angle         // 0: not known
@@ -76,6 +79,7 @@ func NewLink(spec LinkSpec) (*Link, error) {
 		l.gain = g
 	}
 	l.beamwidth, _ = spec.Antenna.BeamwidthAt(f)
+	l.view = l.newBodyView()
 	if err := l.prepareOrbitError(); err != nil {
 		return nil, err
 	}
@@ -173,12 +177,11 @@ func (l *Link) Doppler(rangeRate unit.Speed) unit.Frequency {
 	return unit.Frequency(-l.Frequency().Hertz() * float64(rangeRate) / unit.SpeedOfLight)
 }
 
-// GeometryOf returns the geometry of a spacecraft's state and how fast the range
-// grows. The link needs a Frame.
-func (l *Link) GeometryOf(s orbit.State) (Geometry, unit.Speed) {
+// GeometryOf returns the geometry of a spacecraft's state at an instant and how fast the
+// range grows. The link needs a Frame.
+func (l *Link) GeometryOf(t time.Time, s orbit.State) (Geometry, unit.Speed) {
 	look := l.spec.Frame.Look(s)
-	g := Geometry{Azimuth: look.Azimuth, Elevation: look.Elevation, Range: look.Range}
-	g.OffBoresight = l.offBoresight(s.Position)
-	g.state, g.flown = s, true
+	g := Geometry{Time: t, Azimuth: look.Azimuth, Elevation: look.Elevation, Range: look.Range, state: s, flown: true}
+	l.lookFromSpacecraft(&g, s)
 	return g, look.RangeRate
 }

@@ -53,13 +53,56 @@ func (l *Link) noteTransmitter() {
 	case AttitudeStation:
 		l.note(Assumption, "attitude station: the transmit antenna's boresight points at the station, without an error")
 	case AttitudeNadir:
-		l.note(Assumption, "attitude nadir: the boresight points at the Earth's centre (the geodetic nadir lies up to 0.2 deg from it)")
-	case AttitudeTumbling:
-		if t.AttitudeProbability == 0 {
-			l.note(Default, "attitude probability left out: %g", DefaultAttitudeProbability)
+		if l.view != nil {
+			l.noteBody()
+			return
 		}
+		l.note(Assumption, "attitude nadir: the boresight points at the Earth's centre (the geodetic nadir lies up to 0.2 deg from it)")
+	case AttitudeSun, AttitudeSpin, AttitudeYawSteering:
+		l.noteBody()
+	case AttitudeTumbling:
+		l.noteProbability()
 		l.note(Assumption, "attitude tumbling: every direction is equally likely, and the gain reached or exceeded with probability %g stands in the budget; it serves the margin, the volume of a fading link is another matter", t.attitudeProbability())
 	}
+}
+
+func (l *Link) noteProbability() {
+	if l.spec.Transmitter.AttitudeProbability == 0 {
+		l.note(Default, "attitude probability left out: %g", DefaultAttitudeProbability)
+	}
+}
+
+// noteBody says how the body is held and where the antenna sits on it.
+func (l *Link) noteBody() {
+	t := &l.spec.Transmitter
+	held := map[Attitude]string{
+		AttitudeNadir:       "body z points at the Earth's centre and body y against the orbit's normal, x completes",
+		AttitudeSun:         "body z points at the Sun, and the Earth's north pole lies on the side of body x",
+		AttitudeSpin:        "body z is the spin axis, fixed among the stars; the phase of the spin is not known",
+		AttitudeYawSteering: "body z points at the Earth's centre, body y is normal to the Sun, and the Sun stands on the side of body x; turns at noon and midnight of the orbit are taken as fast as the law asks, which a spacecraft may not follow",
+	}[t.Attitude]
+	where := "the boresight is body z"
+	if b := t.Body.Boresight; b.OffZ != 0 {
+		where = fmt.Sprintf("the boresight stands %g deg off body z and %g deg around it, from x toward y", asGiven(b.OffZ), asGiven(b.AroundZ))
+	}
+	l.note(Assumption, "attitude %s: %s; %s; no error of the attitude is counted", t.Attitude, held, where)
+	if t.Pattern.Kind == GainGrid && t.Attitude != AttitudeSpin {
+		l.note(Assumption, "the pattern's angle around the boresight counts from the direction away from body z (with the boresight on z, from body x)%s", turned(t.Body.Turn))
+	}
+	if t.Attitude != AttitudeSpin {
+		return
+	}
+	l.noteProbability()
+	if t.Body.SpinGain != SpinWorst {
+		l.note(Assumption, "attitude spin: the gain fades at the spin's rate about what stands in the budget; it serves the margin, the volume of a fading link is another matter")
+	}
+}
+
+func turned(by unit.Angle) string {
+	if by == 0 {
+		return ""
+	}
+	return fmt.Sprintf(", turned by %g deg", asGiven(by))
 }
 
 func decibels(ratio float64) unit.DB {

@@ -64,6 +64,16 @@ func (l *Link) addTransmitGain() {
 		q := t.attitudeProbability()
 		l.add(name, 1, "dBi", float64(t.Pattern.GainExceeded(q)),
 			fmt.Sprintf("%s pattern, reached or exceeded with probability %g over all attitudes", t.Pattern.Kind, q))
+	case t.Attitude == AttitudeSpin:
+		l.pattern, l.spin = &t.Pattern, newSpinCurve(&t.Pattern, &t.Body, t.attitudeProbability())
+		what := fmt.Sprintf("reached or exceeded with probability %g over a turn", t.attitudeProbability())
+		switch t.Body.SpinGain {
+		case SpinMean:
+			what = "mean power over a turn"
+		case SpinWorst:
+			what = "the least of a turn"
+		}
+		l.slots.transmitGain = l.add(name, 1, "dBi", 0, fmt.Sprintf("%s pattern at the angle off the spin axis, %s", t.Pattern.Kind, what))
 	default:
 		l.pattern = &t.Pattern
 		l.slots.transmitGain = l.add(name, 1, "dBi", 0,

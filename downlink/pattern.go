@@ -16,16 +16,18 @@ const (
 	Isotropic   PatternKind = iota // PeakGain in every direction
 	CosinePower                    // PeakGain times cosⁿ of the off-boresight angle, BackLobe beyond 90°
 	GainTable                      // linear in dB between the points of Table
+	GainGrid                       // bilinear in dB between the nodes of Grid, in two angles
 )
 
 // Pattern is the power gain of a transmit antenna against the angle off its
-// boresight, the same all around it.
+// boresight, the same all around it but for a grid.
 type Pattern struct {
 	Kind     PatternKind
 	PeakGain unit.DB        // dBi, of Isotropic and CosinePower
 	Exponent float64        // n of CosinePower, 0 or greater
 	BackLobe *unit.DB       // dBi, of CosinePower beyond 90°; nil: nothing is radiated there
 	Table    []PatternPoint // of GainTable; angles rise from 0
+	Grid     *PatternGrid   // of GainGrid
 }
 
 // PatternPoint is a point of a measured pattern.
@@ -36,29 +38,53 @@ type PatternPoint struct {
 
 // String returns the form as the scenario writes it.
 func (k PatternKind) String() string {
-	return [...]string{"isotropic", "cosine_power", "table"}[k]
+	return [...]string{"isotropic", "cosine_power", "table", "table of two angles"}[k]
 }
 
 // GainAt returns the gain in dBi at an angle off boresight in [0, π]. Where a pattern
 // radiates nothing (a cosine power beyond 90° without back lobe) or a table does not
-// reach, the error is a *unit.RangeError.
+// reach, the error is a *unit.RangeError. A grid has a gain on its boresight alone here.
 func (p *Pattern) GainAt(off unit.Angle) (unit.DB, error) {
-	g, ok := p.gain(off.Radians())
+	return p.GainToward(off, unit.Angle(math.NaN()))
+}
+
+// GainToward is GainAt in a direction with its angle around the boresight, in [0, 2π];
+// NaN where that is not known, which only a grid minds.
+func (p *Pattern) GainToward(off, around unit.Angle) (unit.DB, error) {
+	g, ok := p.gainToward(off.Radians(), around.Radians())
 	if ok {
 		return g, nil
+	}
+	last := unit.Angle(0)
+	switch p.Kind {
+	case GainTable:
+		last = p.Table[len(p.Table)-1].OffBoresight
+	case GainGrid:
+		last = p.Grid.Off[len(p.Grid.Off)-1]
+		if off <= last {
+			return 0, errors.New("the pattern's gain depends on the angle around the boresight, which is not known")
+		}
 	}
 	e := &unit.RangeError{Quantity: "off-boresight angle", Value: off.Degrees(), Unit: "deg"}
 	switch {
 	case p.Kind == CosinePower:
 		e.Allowed, e.Next = "less than 90 deg", "beyond it this pattern radiates nothing; give its back lobe"
 	default:
-		e.Allowed = fmt.Sprintf("0 to %g deg, where the pattern's table ends", p.Table[len(p.Table)-1].OffBoresight.Degrees())
+		e.Allowed = fmt.Sprintf("0 to %g deg, where the pattern's table ends", asGiven(last))
 		e.Next = "give the table up to the angle"
 	}
 	return 0, e
 }
 
-// gain is GainAt for the inner loop; ok is false where there is none.
+// gainToward is GainToward for the inner loop; ok is false where there is none.
+func (p *Pattern) gainToward(off, around float64) (g unit.DB, ok bool) {
+	if p.Kind == GainGrid {
+		return p.Grid.at(off, around)
+	}
+	return p.gain(off)
+}
+
+// gain is the gain of a pattern that is the same all around its boresight.
 func (p *Pattern) gain(off float64) (g unit.DB, ok bool) {
 	switch p.Kind {
 	case Isotropic:
@@ -100,12 +126,20 @@ func (p *Pattern) WholeSphere() bool {
 		return p.BackLobe != nil
 	case GainTable:
 		return p.Table[len(p.Table)-1].OffBoresight >= 180*unit.Degree-1e-9
+	case GainGrid:
+		return p.Grid.Off[len(p.Grid.Off)-1] >= 180*unit.Degree-angleSlack
 	}
 	return true
 }
 
 // Validate returns every fault of the pattern.
 func (p *Pattern) Validate() error {
+	if p.Kind == GainGrid {
+		if p.Grid == nil {
+			return errors.New("the pattern has no table of two angles")
+		}
+		return nil // NewPatternGrid has checked it
+	}
 	var faults []error
 	gain := func(what string, g unit.DB) {
 		if !(g >= -200 && g <= 100) {

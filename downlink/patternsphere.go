@@ -20,6 +20,8 @@ func (p *Pattern) RadiatedShare() float64 {
 			share += p.BackLobe.Ratio() / 2
 		}
 		return share
+	case GainGrid:
+		return p.Grid.share
 	}
 	share := 0.0
 	for i := 1; i < len(p.Table); i++ {
@@ -49,6 +51,8 @@ func (p *Pattern) GainExceeded(q float64) unit.DB {
 		return p.PeakGain
 	case CosinePower:
 		return p.cosineExceeded(q)
+	case GainGrid:
+		return p.Grid.exceededWith(q)
 	}
 	return p.tableExceeded(q)
 }

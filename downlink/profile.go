@@ -15,7 +15,9 @@ type Profile struct {
 	AzimuthDeg, ElevationDeg, ApparentElevationDeg []float64
 	RangeKm, RangeRateKmS                          []float64
 	OffBoresightDeg                                []float64
-	DopplerHz                                      []float64
+	// Of the station in the antenna's and the body's axes; nil where no gain depends on them.
+	AroundBoresightDeg, BodyOffZDeg, BodyAroundZDeg []float64
+	DopplerHz                                       []float64
 
 	SunDeg, MoonDeg []float64 // off the beam's axis; NaN where they are not known
 

@@ -62,7 +62,7 @@ func TestProfileIsTheBudgets(t *testing.T) {
 	track := circle{circleStart, 400.5}
 	for i, s := range p.Seconds {
 		state := track.StateAt(s)
-		g, rate := l.GeometryOf(state)
+		g, rate := l.GeometryOf(time.Time{}, state)
 		b := mustAt(t, l, g)
 		for name, v := range map[string][2]float64{
 			"received power": {p.ReceivedPowerDBm[i], b.ReceivedPowerDBm}, "flux density": {p.FluxDensityDBWM2[i], b.PowerFluxDensity},
@@ -109,7 +109,7 @@ func TestVolume(t *testing.T) {
 		t.Fatalf("closes %d times: %v", len(coarse.Volume.Closes), coarse.Volume.Closes)
 	}
 	over := func(s float64) float64 {
-		g, _ := l.GeometryOf(circle{circleStart, 600}.StateAt(s))
+		g, _ := l.GeometryOf(circleStart, circle{circleStart, 600}.StateAt(s))
 		return float64(mustAt(t, l, g).MarginOver)
 	}
 	low, high := 0.0, 300.0

@@ -84,6 +84,9 @@ func newProfile(l *Link, n int) *Profile {
 	columns := []*[]float64{&p.Seconds, &p.AzimuthDeg, &p.ElevationDeg, &p.ApparentElevationDeg, &p.RangeKm, &p.RangeRateKmS,
 		&p.OffBoresightDeg, &p.OrbitAlongDeg, &p.OrbitTotalDeg, &p.DopplerSpreadHz, &p.SureErrorDeg, &p.SunDeg, &p.MoonDeg, &p.sunUpDeg, &p.moonUpDeg, &p.DopplerHz, &p.ReceivedPowerDBm, &p.FluxDensityDBWM2, &p.SystemNoiseK, &p.GOverTDBK,
 		&p.CN0DBHz, &p.EbN0DB, &p.MarginDB, &p.MarginOverDB, &p.AchievableRateBps}
+	if l.view != nil {
+		columns = append(columns, &p.AroundBoresightDeg, &p.BodyOffZDeg, &p.BodyAroundZDeg)
+	}
 	for i := range p.TermValues {
 		columns = append(columns, &p.TermValues[i])
 	}
@@ -101,8 +104,7 @@ func newProfile(l *Link, n int) *Profile {
 func (l *Link) sample(p *Profile, i int, state orbit.State, s *scratch) error {
 	g := &s.geometry
 	var rate unit.Speed
-	*g, rate = l.GeometryOf(state)
-	g.Time = p.at(p.Seconds[i])
+	*g, rate = l.GeometryOf(p.at(p.Seconds[i]), state)
 	if err := l.evaluate(s); err != nil {
 		if !isBlocked(err) {
 			return err
@@ -113,6 +115,9 @@ func (l *Link) sample(p *Profile, i int, state orbit.State, s *scratch) error {
 	p.ApparentElevationDeg[i] = l.apparentDeg(g.Elevation)
 	p.RangeKm[i], p.RangeRateKmS[i] = g.Range.Kilometres(), rate.KilometresPerSecond()
 	p.OffBoresightDeg[i] = g.OffBoresight.Degrees()
+	if p.BodyOffZDeg != nil {
+		p.AroundBoresightDeg[i], p.BodyOffZDeg[i], p.BodyAroundZDeg[i] = g.AroundBoresight.Degrees(), g.BodyOffZ.Degrees(), g.BodyAroundZ.Degrees()
+	}
 	p.DopplerHz[i] = l.Doppler(rate).Hertz()
 	k := &s.result
 	p.OrbitAlongDeg[i], p.OrbitTotalDeg[i], p.SureErrorDeg[i] = k.look.Along.Degrees(), k.look.Total().Degrees(), k.sureError.Degrees()

@@ -21,7 +21,8 @@ type Transmitter struct {
 	SpectrumPeak   *unit.DB // peak spectral density over the whole power, dB(1/Hz); nil: from the mode
 
 	Attitude            Attitude
-	AttitudeProbability float64 // of a tumbling spacecraft, in (0, 1): the gain exceeded with it counts; 0: DefaultAttitudeProbability
+	AttitudeProbability float64 // of a tumbling or spinning spacecraft, in (0, 1): the gain exceeded with it counts; 0: DefaultAttitudeProbability
+	Body                Body    // where the antenna sits on the body, and what else the attitude needs
 
 	Polarization *station.Polarization // nil: left out
 
@@ -40,24 +41,4 @@ type Transmitter struct {
 type Loss struct {
 	Name string
 	Loss unit.DB // 0 or greater
-}
-
-// DefaultAttitudeProbability is the probability whose exceeded gain stands for a
-// tumbling spacecraft where the scenario gives none.
-const DefaultAttitudeProbability = 0.9
-
-// Attitude tells how the transmit antenna's boresight is held.
-type Attitude int
-
-// Attitudes.
-const (
-	AttitudeUnstated Attitude = iota // enough for an isotropic pattern, a stated EIRP or a stated geometry
-	AttitudeNadir                    // boresight at the Earth's centre
-	AttitudeStation                  // boresight at the station
-	AttitudeTumbling                 // every direction equally likely
-)
-
-// String returns the attitude as the scenario writes it.
-func (a Attitude) String() string {
-	return [...]string{"unstated", "nadir", "station", "tumbling"}[a]
 }

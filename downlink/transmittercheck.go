@@ -30,6 +30,7 @@ func (t *Transmitter) Validate() error {
 		} else if err := t.checkTumbling(); err != nil {
 			faults = append(faults, err)
 		}
+		faults = append(faults, t.checkBody()...)
 	}
 	q := t.AttitudeProbability
 	check("attitude probability", q, "", "greater than 0 and less than 1", q >= 0 && q < 1)
@@ -62,8 +63,34 @@ func (t *Transmitter) checkTumbling() error {
 	if t.Pattern.Kind == CosinePower {
 		return errors.New("a tumbling spacecraft shows every side of its antenna; give the pattern's back lobe")
 	}
-	return fmt.Errorf("a tumbling spacecraft shows every side of its antenna; continue the pattern's table from %g deg to 180 deg",
-		t.Pattern.Table[len(t.Pattern.Table)-1].OffBoresight.Degrees())
+	last := unit.Angle(0)
+	if g := t.Pattern.Grid; g != nil {
+		last = g.Off[len(g.Off)-1]
+	} else {
+		last = t.Pattern.Table[len(t.Pattern.Table)-1].OffBoresight
+	}
+	return fmt.Errorf("a tumbling spacecraft shows every side of its antenna; continue the pattern's table from %g deg to 180 deg", asGiven(last))
+}
+
+// checkBody returns what is wrong with where the antenna sits and how the body turns.
+func (t *Transmitter) checkBody() []error {
+	var faults []error
+	b := &t.Body
+	degrees := func(what string, v unit.Angle, low, high float64) {
+		if d := asGiven(v); !(d >= low && d <= high) {
+			faults = append(faults, &unit.RangeError{Quantity: what, Value: d, Unit: "deg", Allowed: fmt.Sprintf("%g to %g deg", low, high)})
+		}
+	}
+	degrees("boresight off body z", b.Boresight.OffZ, 0, 180)
+	degrees("boresight around body z", b.Boresight.AroundZ, -360, 360)
+	degrees("turn of the pattern", b.Turn, -360, 360)
+	if b.Boresight.OffZ != 0 && !t.Attitude.HasBody() && t.Attitude != AttitudeUnstated {
+		faults = append(faults, fmt.Errorf("with attitude %s the boresight has no place on the body; leave it out", t.Attitude))
+	}
+	if n := b.SpinAxis.Norm(); t.Attitude == AttitudeSpin && !(n > 1-1e-9 && n < 1+1e-9) {
+		faults = append(faults, &unit.RangeError{Quantity: "length of the spin axis", Value: n, Allowed: "1"})
+	}
+	return faults
 }
 
 // attitudeProbability returns the probability that counts for a tumbling spacecraft.

@@ -56,6 +56,7 @@ func laterColumns(p *Pass) []column {
 	for _, n := range r.NoiseParts {
 		list = append(list, column{"noise_" + underscored(n.Name) + "_k", 2, n.Values})
 	}
+	list = append(list, column{"around_boresight_deg", 3, f.AroundBoresightDeg}, column{"body_off_z_deg", 3, f.BodyOffZDeg}, column{"body_around_z_deg", 3, f.BodyAroundZDeg})
 	list = append(list, column{"sun_off_beam_deg", 2, f.SunDeg}, column{"moon_off_beam_deg", 2, f.MoonDeg})
 	if c := r.ClearSky; c != nil {
 		list = append(list,

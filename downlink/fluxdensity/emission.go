@@ -16,7 +16,7 @@ type Emission struct {
 	Width    unit.Frequency    // occupied bandwidth; 0: not known, then it meets every other emission
 	Power    unit.Level        // fed to the antenna, all of it
 	Pattern  *downlink.Pattern // nil: not known in any direction
-	Attitude downlink.Attitude // unstated counts as tumbling: any direction may face the ground
+	Attitude downlink.Attitude // nadir and station turn the boresight; with any other, as with none, every direction may face the ground
 	Spectrum Spectrum
 }
 
@@ -102,6 +102,7 @@ func newRadiator(e *Emission, reference unit.Frequency) radiator {
 	switch {
 	case e.Pattern == nil:
 		return r
+	case e.Pattern.Kind == downlink.GainGrid: // no one gain for an angle off boresight: its greatest counts
 	case e.Pattern.Kind != downlink.Isotropic && e.Attitude == downlink.AttitudeNadir:
 		r.axis = axisNadir
 	case e.Pattern.Kind != downlink.Isotropic && e.Attitude == downlink.AttitudeStation:
@@ -109,26 +110,18 @@ func newRadiator(e *Emission, reference unit.Frequency) radiator {
 	}
 	r.whole = e.Pattern.WholeSphere()
 	r.knownTo = math.Pi
-	peak := e.Pattern.PeakGain
 	switch e.Pattern.Kind {
 	case downlink.CosinePower:
 		if e.Pattern.BackLobe == nil {
 			r.knownTo = math.Nextafter(math.Pi/2, 0)
-		} else {
-			peak = max(peak, *e.Pattern.BackLobe)
 		}
 	case downlink.GainTable:
-		last := e.Pattern.Table[len(e.Pattern.Table)-1]
-		r.knownTo = last.OffBoresight.Radians()
-		peak = last.Gain
-		for _, q := range e.Pattern.Table {
-			peak = max(peak, q.Gain)
-		}
+		r.knownTo = e.Pattern.Table[len(e.Pattern.Table)-1].OffBoresight.Radians()
 	}
 	if r.whole {
 		r.knownTo = math.Pi
 	}
-	r.peak = peak.Ratio()
+	r.peak = e.Pattern.Peak().Ratio()
 	return r
 }
 

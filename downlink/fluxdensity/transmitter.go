@@ -23,6 +23,9 @@ func FromTransmitter(t *downlink.Transmitter, mode *modem.Resolved) Emission {
 		e.Power = t.Power.Minus(t.LineLoss)
 		pattern := t.Pattern
 		e.Pattern = &pattern
+		if t.Body.Boresight.OffZ != 0 {
+			e.Attitude = downlink.AttitudeUnstated // the boresight is not where the attitude points
+		}
 	default:
 		e.Power = *t.EIRP
 		if t.EIRPIsGreatest {

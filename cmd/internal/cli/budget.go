@@ -24,11 +24,11 @@ type linkNames struct{ spacecraft, station, transmitter, antenna, mode string }
 
 // statedOptions is a geometry given by hand; nil: not given.
 type statedOptions struct {
-	rangeKm, elevationDeg, azimuthDeg, offBoresightDeg *float64
+	rangeKm, elevationDeg, azimuthDeg, offBoresightDeg, aroundBoresightDeg *float64
 }
 
 func (o *statedOptions) given() bool {
-	return o.rangeKm != nil || o.elevationDeg != nil || o.azimuthDeg != nil || o.offBoresightDeg != nil
+	return o.rangeKm != nil || o.elevationDeg != nil || o.azimuthDeg != nil || o.offBoresightDeg != nil || o.aroundBoresightDeg != nil
 }
 
 func newBudget(env *Env) *cobra.Command {
@@ -59,7 +59,8 @@ What the scenario holds several of must be named.`,
 	addNumber(fs, &o.stated.rangeKm, "range-km", "stated slant range in `KM`, with --elevation-deg")
 	addNumber(fs, &o.stated.elevationDeg, "elevation-deg", "stated elevation in `DEG`, with --range-km")
 	addNumber(fs, &o.stated.azimuthDeg, "azimuth-deg", "stated azimuth in `DEG`, which a fixed antenna needs")
-	addNumber(fs, &o.stated.offBoresightDeg, "off-boresight-deg", "stated angle in `DEG` off the transmit antenna's boresight (left out: from the attitude over a sphere)")
+	addNumber(fs, &o.stated.offBoresightDeg, "off-boresight-deg", "stated angle in `DEG` off the transmit antenna's boresight (left out: from the attitude over a sphere), or off its spin axis")
+	addNumber(fs, &o.stated.aroundBoresightDeg, "around-boresight-deg", "stated angle in `DEG` around that boresight, for a pattern in two angles")
 	addFormat(cmd, &o.format)
 	cmd.RunE = func(cmd *cobra.Command, _ []string) error {
 		o.paced = cmd.Flags().Changed("step")

@@ -17,10 +17,18 @@ func writeBudgetCSV(w io.Writer, r *budgetResult) error {
 	header = append(header, "received_power_dbm", "power_flux_density_dbw_m2", "system_noise_k", "g_over_t_db_k", "c_n0_dbhz",
 		"eb_n0_db", "margin_db", "margin_over_required_db", "data_rate_bps", "achievable_rate_bps", "achievable_rate_limit", "usable",
 		"c_i_other_polarization_db", "sun_off_beam_deg", "moon_off_beam_deg", pathMissing)
+	body := r.link.HasBodyAngles()
+	if body {
+		header = append(header, "around_boresight_deg", "body_off_z_deg", "body_around_z_deg")
+	}
 	missing := strings.Join(r.sky.missing, " ")
 	return writeCSV(w, header, func(yield func([]string) bool) {
 		for _, b := range r.samples {
-			if !yield(append(budgetRow(b), missing)) {
+			row := append(budgetRow(b), missing)
+			if body {
+				row = append(row, fixed(b.AroundBoresight.Degrees(), 6), fixed(b.BodyOffZ.Degrees(), 6), fixed(b.BodyAroundZ.Degrees(), 6))
+			}
+			if !yield(row) {
 				return
 			}
 		}

@@ -93,6 +93,9 @@ type budgetSample struct {
 	ElevationDeg     nano          `json:"elevation_deg"`
 	RangeKm          nano          `json:"range_km"`
 	OffBoresightDeg  nano          `json:"off_boresight_deg"`
+	AroundBoresight  nano          `json:"around_boresight_deg"` // null where no gain depends on it
+	BodyOffZDeg      nano          `json:"body_off_z_deg"`
+	BodyAroundZDeg   nano          `json:"body_around_z_deg"`
 	Terms            []budgetTerm  `json:"terms"`
 	ReceivedPowerDBm nano          `json:"received_power_dbm"`
 	FluxDensity      nano          `json:"power_flux_density_dbw_m2"`
@@ -159,6 +162,7 @@ func intervalsOut(list []downlink.Interval) []budgetInterval {
 func sampleOut(b *downlink.Budget) budgetSample {
 	s := budgetSample{
 		AzimuthDeg: nano(b.Azimuth.Degrees()), ElevationDeg: nano(b.Elevation.Degrees()), RangeKm: nano(b.Range.Kilometres()), OffBoresightDeg: nano(b.OffBoresight.Degrees()),
+		AroundBoresight: nano(b.AroundBoresight.Degrees()), BodyOffZDeg: nano(b.BodyOffZ.Degrees()), BodyAroundZDeg: nano(b.BodyAroundZ.Degrees()),
 		Terms: []budgetTerm{}, ReceivedPowerDBm: nano(printedSum(b)), FluxDensity: nano(b.PowerFluxDensity),
 		Noise: []budgetNoise{}, SystemNoiseK: nano(b.SystemNoise.Kelvins()), GOverT: nano(b.GOverT), CN0: nano(b.CN0), CI: nano(b.CI), SunDeg: nano(b.Sun.Degrees()), MoonDeg: nano(b.Moon.Degrees()),
 		EbN0: nano(b.EbN0), RequiredEbN0: nano(b.RequiredEbN0), Margin: nano(b.Margin), MarginOver: nano(b.MarginOver),

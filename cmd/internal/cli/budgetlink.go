@@ -74,7 +74,7 @@ func (c *chosenLink) touchedBy(about string) bool {
 	craft := "spacecraft " + c.spacecraft.Name
 	transmitter := craft + ", transmitter " + c.transmitter.Name
 	site := "station " + c.station.Site.Name
-	parts := []string{craft, transmitter, site, site + ", antenna " + c.antenna.Name}
+	parts := []string{craft, transmitter, transmitter + ", antenna", site, site + ", antenna " + c.antenna.Name}
 	if c.mode != nil {
 		parts = append(parts, transmitter+", mode "+c.mode.Name)
 	}

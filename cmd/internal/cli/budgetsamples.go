@@ -43,7 +43,13 @@ func statedBudget(s *scenario.Scenario, c *chosenLink, o *statedOptions) (*budge
 	if err != nil {
 		return nil, &InputError{Err: err}
 	}
-	if o.offBoresightDeg == nil && c.transmitter.Attitude == downlink.AttitudeNadir {
+	if a := o.aroundBoresightDeg; a != nil {
+		if !(*a >= -360 && *a <= 360) {
+			return nil, &InputError{Err: &unit.RangeError{Quantity: "angle around the boresight", Value: *a, Unit: "deg", Allowed: "-360 to 360 deg"}}
+		}
+		g.AroundBoresight = (unit.Angle(*a) * unit.Degree).Wrapped()
+	}
+	if t := c.transmitter; o.offBoresightDeg == nil && (t.Attitude == downlink.AttitudeNadir || t.Attitude == downlink.AttitudeYawSteering) && t.Body.Boresight.OffZ == 0 {
 		r.notes = append(r.notes, downlink.Note{Kind: downlink.Assumption, Text: "off-boresight angle left out: worked out from range and elevation over a sphere through the site"})
 	}
 	if r.scenario.Path.Sun || r.scenario.Path.Moon {
@@ -73,6 +79,9 @@ func (r *budgetResult) underTheHorizon(g downlink.Geometry, blocked error) (*dow
 	if err != nil {
 		return nil, err
 	}
+	if r.link.HasBodyAngles() {
+		spec.Bodies = newSkies(r.scenario).bodies
+	}
 	link, err := downlink.NewLink(spec)
 	if err != nil {
 		return nil, blocked // the antenna's noise needs the sky
@@ -94,9 +103,8 @@ func budgetAt(s *scenario.Scenario, c *chosenLink, at time.Time) (*budgetResult,
 	if err != nil {
 		return nil, &InputError{Err: fmt.Errorf("spacecraft %s: %w", c.spacecraft.Name, err)}
 	}
-	g, _ := c.link.GeometryOf(eph.StateAt(0))
-	g.Time = at
-	later, _ := c.link.GeometryOf(eph.StateAt(eph.Span()))
+	g, _ := c.link.GeometryOf(at, eph.StateAt(0))
+	later, _ := c.link.GeometryOf(eph.Time(eph.Span()), eph.StateAt(eph.Span()))
 	told, err := licensedAt(s, c, g, later, eph.Span())
 	if err != nil {
 		return nil, err
@@ -170,8 +178,7 @@ func (r *budgetResult) fly(eph *orbit.Ephemeris, step time.Duration) error {
 }
 
 func (r *budgetResult) addAt(eph *orbit.Ephemeris, t time.Time) error {
-	g, _ := r.link.GeometryOf(eph.StateAt(min(eph.Seconds(t), eph.Span())))
-	g.Time = t
+	g, _ := r.link.GeometryOf(t, eph.StateAt(min(eph.Seconds(t), eph.Span())))
 	return r.add(g)
 }
 

@@ -117,6 +117,11 @@ func (r *budgetResult) placeText(b *downlink.Budget) string {
 	add("azimuth", b.Azimuth.Degrees(), 3, "deg")
 	add("range", b.Range.Kilometres(), 3, "km")
 	add("off boresight", b.OffBoresight.Degrees(), 3, "deg")
+	if off := b.BodyOffZ.Degrees(); off != b.OffBoresight.Degrees() { // otherwise it is said already
+		add("around boresight", b.AroundBoresight.Degrees(), 3, "deg")
+		add("off body z", off, 3, "deg")
+		add("around body z", b.BodyAroundZ.Degrees(), 3, "deg")
+	}
 	add("Sun off the beam", b.Sun.Degrees(), 2, "deg")
 	add("Moon off the beam", b.Moon.Degrees(), 2, "deg")
 	return strings.Join(parts, ", ")

@@ -102,8 +102,7 @@ func reportRadio(s *scenario.Scenario, craft *reportCraft, page *reportPage, bes
 			continue
 		}
 		e := craft.ephemeris
-		g, _ := c.link.GeometryOf(e.StateAt(max(0, min(e.Seconds(at.time), e.Span()))))
-		g.Time = at.time
+		g, _ := c.link.GeometryOf(at.time, e.StateAt(max(0, min(e.Seconds(at.time), e.Span()))))
 		b, err := c.link.At(g)
 		if err != nil {
 			return nil, fmt.Errorf("at %s: %w", utc(at.time), err)

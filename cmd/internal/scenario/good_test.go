@@ -58,6 +58,12 @@ func TestEverything(t *testing.T) {
 		{"allotted bandwidth", x.AllottedBandwidth, 60 * unit.Megahertz},
 		{"extra loss", x.ExtraLosses, []downlink.Loss{{Name: "spacecraft pointing", Loss: 0.5}}},
 		{"EIRP", *craft.Transmitters[1].EIRP, eirp},
+		{"pattern of a file", [...]any{s.Spacecraft[1].Transmitters[2].Pattern.Kind, s.Spacecraft[1].Transmitters[2].Pattern.Grid.Gain[1][1]}, [...]any{downlink.GainGrid, unit.DB(0)}},
+		{"spin", s.Spacecraft[1].Transmitters[2].Body.SpinGain, downlink.SpinMean},
+		{"spin axis", math.Round(s.Spacecraft[1].Transmitters[2].Body.SpinAxis.Z * 1e6), -173648.0}, // sin(-10 deg)
+		{"boresight by a vector", math.Round(s.Spacecraft[1].Transmitters[2].Body.Boresight.OffZ.Degrees() * 1e6), 36869898.0},
+		{"turn", s.Spacecraft[1].Transmitters[2].Body.Turn, 30 * unit.Degree},
+		{"boresight by angles", s.Spacecraft[1].Transmitters[3].Body.Boresight, downlink.BodyDirection{OffZ: 25 * unit.Degree, AroundZ: -90 * unit.Degree}},
 		{"tilt", *craft.Transmitters[1].Polarization.Tilt, 45 * unit.Degree},
 		{"power", uhf.Power, unit.LevelDBm(30)},
 		{"table", uhf.Pattern.Table[1], downlink.PatternPoint{OffBoresight: 90 * unit.Degree, Gain: -1}},

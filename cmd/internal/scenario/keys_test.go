@@ -36,7 +36,7 @@ func TestEveryKeyIsRead(t *testing.T) {
 		}
 	})
 	for _, keys := range [][]string{
-		topKeys, windowKeys, earthKeys, spacecraftKeys, transmitterKeys, patternKeys, modeKeys, lossDissipativeKeys,
+		topKeys, windowKeys, earthKeys, spacecraftKeys, transmitterKeys, spinKeys, patternKeys, modeKeys, lossDissipativeKeys,
 		stationKeys, antennaKeys, noiseKeys, stageKeys, sizingKeys, requirementKeys, marginAtKeys,
 		pathKeys, climateKeys, levelKeys, lognormalKeys, lowPathKeys,
 		ratePlanKeys, licenceKeys, sectorKeys, hoursKeys, recorderKeys, recorderDataKeys, controlKeys, toleranceKeys, criterionKeys,

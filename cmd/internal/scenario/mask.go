@@ -45,20 +45,28 @@ func (o object) maskFile(kind station.ElevationKind) *station.Mask {
 	if !ok {
 		return nil
 	}
-	at := o.get("horizon_mask_file")
-	f, err := o.r.src.open(name)
-	if err != nil {
-		var pe *fs.PathError
-		if errors.As(err, &pe) {
-			err = pe.Err
-		}
-		o.fault(at, "horizon_mask_file", "%s cannot be read: %v", "names are relative to the scenario file", quote(name), err)
+	f := o.file("horizon_mask_file", name)
+	if f == nil {
 		return nil
 	}
 	defer f.Close()
 	m, err := station.ReadMaskCSV(f, kind)
 	if err != nil {
-		o.fault(at, "horizon_mask_file", "%s: %v", "", name, err)
+		o.fault(o.get("horizon_mask_file"), "horizon_mask_file", "%s: %v", "", name, err)
 	}
 	return m
+}
+
+// file opens a file that a key names; nil with a fault where it cannot be read.
+func (o object) file(key, name string) fs.File {
+	f, err := o.r.src.open(name)
+	if err == nil {
+		return f
+	}
+	var pe *fs.PathError
+	if errors.As(err, &pe) {
+		err = pe.Err
+	}
+	o.fault(o.get(key), key, "%s cannot be read: %v", "names are relative to the scenario file", quote(name), err)
+	return nil
 }

@@ -7,7 +7,7 @@ import (
 
 var transmitterKeys = []string{
 	"name", "frequency_mhz", "power_w", "power_dbm", "power_dbw", "eirp_dbw", "line_loss_db", "antenna",
-	"attitude", "attitude_probability", "polarization", "axial_ratio_db", "polarization_tilt_deg", "modes",
+	"attitude", "attitude_probability", "spin", "polarization", "axial_ratio_db", "polarization_tilt_deg", "modes",
 	"other_polarization_in_use", "implementation_loss_db", "required_margin_db", "extra_losses", "allotted_bandwidth_mhz", "highest_data_rate_bps",
 	"eirp_is_greatest", "spectrum_peak_db_hz",
 }
@@ -94,7 +94,7 @@ func (o object) radiatedPower(t *downlink.Transmitter) {
 	}
 	t.Power = o.power(which)
 	t.LineLoss = unit.DB(o.zeroLeftOut("line_loss_db", lossDB))
-	t.Pattern = o.pattern()
+	t.Pattern, t.Body = o.pattern()
 }
 
 func (o object) power(key string) unit.Level {
@@ -111,31 +111,4 @@ func (o object) power(key string) unit.Level {
 		return unit.LevelDBW(o.numberOr(key, span{low: -200, high: 90, unit: "dBW"}, 0))
 	}
 	return unit.Level{}
-}
-
-// attitude reads how the antenna is held. It must be there where the pattern has a
-// direction and the spacecraft is flown.
-func (o object) attitude(t *downlink.Transmitter, n Need) {
-	word, given := o.word("attitude", "nadir", "station", "tumbling")
-	if given {
-		t.Attitude = map[string]downlink.Attitude{
-			"nadir": downlink.AttitudeNadir, "station": downlink.AttitudeStation, "tumbling": downlink.AttitudeTumbling,
-		}[word]
-	}
-	directed := t.EIRP == nil && t.Pattern.Kind != downlink.Isotropic
-	if !o.has("attitude") && directed && n == NeedOrbits {
-		o.missing("attitude", "nadir, station or tumbling, since the antenna's gain depends on the direction")
-	}
-	if o.has("attitude") && t.Attitude != downlink.AttitudeTumbling {
-		o.useless("unless attitude is tumbling", "attitude_probability")
-		return
-	}
-	if t.Attitude != downlink.AttitudeTumbling {
-		o.useless("without attitude: tumbling", "attitude_probability")
-		return
-	}
-	if !o.has("attitude_probability") {
-		o.assume("attitude_probability left out: the gain exceeded with probability %g counts", downlink.DefaultAttitudeProbability)
-	}
-	t.AttitudeProbability = o.numberOr("attitude_probability", span{low: 0, high: 1, lowOpen: true, highOpen: true}, downlink.DefaultAttitudeProbability)
 }
