@@ -28,8 +28,7 @@ func withOrbitError(t testing.TB, probability float64, s orbit.Spread) LinkSpec 
 // The geometry of the circle's track s seconds after its start.
 func onCircle(l *Link, s float64) Geometry {
 	c := circle{circleStart, 400}
-	g, _ := l.GeometryOf(time.Time{}, c.StateAt(s))
-	g.Time = circleStart.Add(time.Duration(s * 1e9))
+	g, _ := l.GeometryOf(circleStart.Add(time.Duration(s*1e9)), c.StateAt(s))
 	return g
 }
 
