@@ -108,3 +108,9 @@ func (r *rotation) toPole(v Vec3) Vec3 {
 	y, z := r.cosY*v.Y-r.sinY*v.Z, r.sinY*v.Y+r.cosY*v.Z
 	return Vec3{r.cosX*v.X + r.sinX*z, y, r.cosX*z - r.sinX*v.X}
 }
+
+// fromPole is the turn back.
+func (r *rotation) fromPole(v Vec3) Vec3 {
+	x, z := r.cosX*v.X-r.sinX*v.Z, r.sinX*v.X+r.cosX*v.Z
+	return Vec3{x, r.cosY*v.Y + r.sinY*z, r.cosY*z - r.sinY*v.Y}
+}
