@@ -68,7 +68,7 @@ func (l *Link) fillTerms(g *Geometry, s *scratch) error {
 		if !ok {
 			return l.noTransmitGain(g)
 		}
-		v[l.slots.transmitGain] = float64(gain)
+		v[l.slots.craftGain] = float64(gain)
 	}
 	s.rangeDB = 20 * math.Log10(g.Range.Metres())
 	v[l.slots.freeSpace] = l.waveNumberDB + s.rangeDB
@@ -129,7 +129,7 @@ func (l *Link) noiseAndRatio(g *Geometry, s *scratch, sum float64) error {
 		r.cn0 = sum - 30 + r.gOverT - k
 		return nil
 	}
-	gain := l.gain.Value(g.Elevation) - l.gainLoss
+	gain, loss := l.receiving(g, s)
 	t, err := l.evaluateNoise(g, gain, s.noise)
 	if err != nil {
 		return err
@@ -139,7 +139,7 @@ func (l *Link) noiseAndRatio(g *Geometry, s *scratch, sum float64) error {
 	}
 	tDB := 10 * math.Log10(t)
 	r.receivedDBm, r.systemK = sum, t
-	r.gOverT = gain - float64(l.spec.Antenna.FeedLoss) - tDB
+	r.gOverT = gain - loss - tDB
 	r.cn0 = sum - 30 - k - tDB
 	return nil
 }

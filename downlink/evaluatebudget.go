@@ -70,15 +70,15 @@ func (l *Link) noTransmitGain(g *Geometry) error {
 	}
 	switch {
 	case unknown && t.Attitude.HasBody():
-		return fmt.Errorf("transmitter %q: attitude %s needs the Sun and the stars, and the link was made without the sky of a window", t.Name, t.Attitude)
+		return fmt.Errorf("%s %q: attitude %s needs the Sun and the stars, and the link was made without the sky of a window", l.who(), t.Name, t.Attitude)
 	case unknown:
-		return fmt.Errorf("transmitter %q: its attitude is left out, and its gain depends on it; give the attitude", t.Name)
+		return fmt.Errorf("%s %q: its attitude is left out, and its gain depends on it; give the attitude", l.who(), t.Name)
 	case l.spin != nil:
-		return fmt.Errorf("transmitter %q: at %.2f deg off the spin axis the turning antenna shows a side where its pattern has no gain that counts as %q; give its pattern there, or let the spin count as something else",
-			t.Name, g.BodyOffZ.Degrees(), t.Body.SpinGain)
+		return fmt.Errorf("%s %q: at %.2f deg off the spin axis the turning antenna shows a side where its pattern has no gain that counts as %q; give its pattern there, or let the spin count as something else",
+			l.who(), t.Name, g.BodyOffZ.Degrees(), t.Body.SpinGain)
 	}
 	_, err := l.pattern.GainToward(g.OffBoresight, g.AroundBoresight)
-	return fmt.Errorf("transmitter %q: %w", t.Name, err)
+	return fmt.Errorf("%s %q: %w", l.who(), t.Name, err)
 }
 
 // cautions says what is doubtful at a geometry.
@@ -118,7 +118,7 @@ type namedTable struct {
 
 // tables lists what the link reads from a table over elevation.
 func (l *Link) tables() []namedTable {
-	name := [...]string{"antenna temperature", "system noise temperature", "measured G/T", "measured G/T"}[l.noise.kind]
+	name := [...]string{"antenna temperature", "system noise temperature", "measured G/T", "measured G/T", ""}[l.noise.kind]
 	var out []namedTable
 	if l.noise.first != nil {
 		out = append(out, namedTable{name, l.noise.first})

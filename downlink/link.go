@@ -15,6 +15,7 @@ import (
 // LinkSpec is what a link is made of.
 type LinkSpec struct {
 	Transmitter Transmitter
+	Receiver    *Receiver           // not nil: the link is an uplink to it, in place of Transmitter, from the Antenna's transmit side; NoiseModels and Bodies stay empty
 	Mode        *modem.Mode         // nil: a carrier without data
 	Frame       *station.Frame      // of the site; nil for a stated geometry without one
 	Refraction  *station.Refraction // for the apparent elevation of profiles; nil: it stays NaN
@@ -65,14 +66,18 @@ type Link struct {
 
 // slots are the places of the terms that change with the geometry; -1: there is no
 // such term, or it does not change.
-type slots struct{ transmitGain, freeSpace, path, stationGain, pointing, orbitPointing int }
+type slots struct{ craftGain, freeSpace, path, stationGain, pointing, orbitPointing int }
 
 // NewLink checks the spec and prepares the link. It returns all faults at once.
 func NewLink(spec LinkSpec) (*Link, error) {
 	l := &Link{spec: spec}
+	if spec.Receiver != nil {
+		l.spec.Transmitter = spec.Receiver.Transmitter
+	}
 	if err := l.check(); err != nil {
 		return nil, err
 	}
+	spec = l.spec
 	f := spec.Transmitter.Frequency
 	l.waveNumberDB = float64(FreeSpaceLoss(unit.Metre, f))
 	if g, ok := spec.Antenna.GainAt(f); ok {
@@ -96,18 +101,18 @@ func NewLink(spec LinkSpec) (*Link, error) {
 func (l *Link) check() error {
 	t, a := &l.spec.Transmitter, l.spec.Antenna
 	var faults []error
-	if err := t.Validate(); err != nil {
-		faults = append(faults, fmt.Errorf("transmitter %q: %w", t.Name, err))
+	if err := l.validateCraft(); err != nil {
+		faults = append(faults, fmt.Errorf("%s %q: %w", l.who(), t.Name, err))
 	}
 	if a == nil {
 		return errors.Join(append(faults, errors.New("the link has no station antenna"))...)
 	}
 	if err := a.Validate(); err != nil {
 		faults = append(faults, fmt.Errorf("antenna %q: %w", a.Name, err))
-	} else if err := checkFrequency(a, t.Frequency); err != nil {
+	} else if err := l.useAntenna(); err != nil {
 		faults = append(faults, err)
 	}
-	if n := a.Noise; n != nil && n.SpillOver != nil && len(l.spec.NoiseModels) == 0 {
+	if n := a.Noise; !l.up() && n != nil && n.SpillOver != nil && len(l.spec.NoiseModels) == 0 {
 		faults = append(faults, fmt.Errorf("antenna %q: its temperature is to be worked out from the sky, and the link has no path to see it through; give the antenna temperature", a.Name))
 	}
 	if l.spec.Mode != nil {
@@ -118,6 +123,30 @@ func (l *Link) check() error {
 		l.mode = &r
 	}
 	return errors.Join(faults...)
+}
+
+// validateCraft checks the spacecraft's end.
+func (l *Link) validateCraft() error {
+	if l.up() {
+		return l.spec.Receiver.Validate()
+	}
+	return l.spec.Transmitter.Validate()
+}
+
+// useAntenna takes the antenna's side that the link uses and checks its frequency.
+func (l *Link) useAntenna() error {
+	f := l.Frequency()
+	if l.up() {
+		if len(l.spec.NoiseModels) > 0 || l.spec.Bodies != nil {
+			return errors.New("an uplink has no noise of the station's sky; leave NoiseModels and Bodies out")
+		}
+		sending, err := l.spec.Antenna.Sending(f)
+		if err != nil {
+			return err
+		}
+		l.spec.Antenna = sending
+	}
+	return checkFrequency(l.spec.Antenna, f)
 }
 
 // BandError says that an antenna does not take a frequency.

@@ -15,7 +15,11 @@ func (l *Link) note(kind NoteKind, format string, args ...any) {
 
 // writeNotes gathers what every budget of the link takes for granted.
 func (l *Link) writeNotes() {
-	l.noteTransmitter()
+	if l.up() {
+		l.noteReceiver()
+	} else {
+		l.noteTransmitter()
+	}
 	l.notePolarization()
 	l.noteAntenna()
 	l.noteOrbitError()
@@ -39,19 +43,25 @@ func (l *Link) noteTransmitter() {
 		l.note(Assumption, "the EIRP is taken as it is in every direction; no attitude is applied")
 		return
 	}
+	l.noteCraftAntenna()
+}
+
+// noteCraftAntenna says how the spacecraft's antenna is taken.
+func (l *Link) noteCraftAntenna() {
+	t := &l.spec.Transmitter
 	// A steered antenna needs no pattern: one gain in every direction is that on its axis.
 	steered := t.Attitude == AttitudeStation && t.Pattern.Kind == Isotropic
 	if share := t.Pattern.RadiatedShare(); share > 1+1e-9 && !steered {
-		l.note(Warning, "the transmit antenna's pattern radiates %.3g times the power that it is fed (%.2f dB too much, integrated over the sphere): its gain or its width is wrong",
-			share, float64(decibels(share)))
+		l.note(Warning, "the %s's pattern radiates %.3g times the power that it is fed (%.2f dB too much, integrated over the sphere): its gain or its width is wrong",
+			l.antennaName(), share, float64(decibels(share)))
 	}
 	switch t.Attitude {
 	case AttitudeUnstated:
 		if t.Pattern.Kind != Isotropic {
-			l.note(Assumption, "attitude left out: a stated geometry without an off-boresight angle is taken at the transmit antenna's boresight")
+			l.note(Assumption, "attitude left out: a stated geometry without an off-boresight angle is taken at the %s's boresight", l.antennaName())
 		}
 	case AttitudeStation:
-		l.note(Assumption, "attitude station: the transmit antenna's boresight points at the station, without an error")
+		l.note(Assumption, "attitude station: the %s's boresight points at the station, without an error", l.antennaName())
 	case AttitudeNadir:
 		if l.view != nil {
 			l.noteBody()
@@ -123,7 +133,7 @@ func (l *Link) notePolarization() {
 	for _, side := range []struct {
 		who string
 		p   *station.Polarization
-	}{{"transmitter", a}, {"antenna", b}} {
+	}{{l.who(), a}, {"antenna", b}} {
 		switch {
 		case side.p.AxialRatio != nil:
 		case side.p.Kind == station.Linear:
@@ -133,7 +143,7 @@ func (l *Link) notePolarization() {
 		}
 	}
 	if l.spec.Transmitter.Attitude == AttitudeTumbling {
-		l.note(Warning, "the polarisation is that on the transmit antenna's boresight; as the spacecraft tumbles it changes, to the opposite hand behind many antennas")
+		l.note(Warning, "the polarisation is that on the %s's boresight; as the spacecraft tumbles it changes, to the opposite hand behind many antennas", l.antennaName())
 	}
 	l.note(Assumption, "polarisation mismatch %.2f dB (%s), best %.2f dB", float64(m.Loss), m.Basis, float64(m.Best))
 	if float64(m.NinetyPercent) >= 0 {
@@ -143,7 +153,7 @@ func (l *Link) notePolarization() {
 		l.note(Assumption, "the polarisation mismatch is held at %g dB, as no antenna is purer than that on its axis (common practice)", float64(station.LargestMismatch))
 	}
 	if a.Kind != station.Linear && b.Kind != station.Linear && a.Kind != b.Kind {
-		l.note(Warning, "transmitter and antenna have opposite hands of circular polarisation")
+		l.note(Warning, "%s and antenna have opposite hands of circular polarisation", l.who())
 	}
 }
 
@@ -170,6 +180,9 @@ func (l *Link) noteAntenna() {
 
 func (l *Link) noteNoise() {
 	a := l.spec.Antenna
+	if l.up() {
+		return // noteReceiver said it
+	}
 	if (a.Noise == nil || a.Noise.PhysicalTemperature == 0) && l.noise.kind != noiseSystem && l.noise.kind != noiseUnknown {
 		l.note(Default, "physical temperature left out: 290 K")
 	}

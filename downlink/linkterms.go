@@ -22,7 +22,11 @@ func (l *Link) loss(name string, value unit.DB, source string) {
 // hold 0 in base.
 func (l *Link) buildTerms() {
 	l.slots = slots{-1, -1, -1, -1, -1, -1}
-	l.addRadiated()
+	if l.up() {
+		l.addSent()
+	} else {
+		l.addRadiated()
+	}
 	l.eirpTerms = len(l.terms)
 	l.slots.freeSpace = l.add("free-space loss", -1, "dB", 0,
 		fmt.Sprintf("Rec. ITU-R P.525, exact: 20 log10(4π d/λ) at %g MHz", l.Frequency().Megahertz()))
@@ -36,7 +40,11 @@ func (l *Link) buildTerms() {
 			l.base = append(l.base, 0)
 		}
 	}
-	l.addReceived()
+	if l.up() {
+		l.addArrived()
+	} else {
+		l.addReceived()
+	}
 }
 
 func (l *Link) addRadiated() {
@@ -47,22 +55,22 @@ func (l *Link) addRadiated() {
 	default:
 		l.add("transmit power", 1, "dBm", t.Power.DBm(), "scenario")
 		l.loss("line loss", t.LineLoss, "scenario")
-		l.addTransmitGain()
+		l.addCraftGain()
 	}
 	for _, x := range t.ExtraLosses {
 		l.loss(x.Name, x.Loss, "scenario, at the spacecraft")
 	}
 }
 
-func (l *Link) addTransmitGain() {
+func (l *Link) addCraftGain() {
 	t := &l.spec.Transmitter
-	const name = "transmit antenna gain"
+	name := l.antennaName() + " gain"
 	switch {
 	case t.Pattern.Kind == Isotropic:
-		l.add(name, 1, "dBi", float64(t.Pattern.PeakGain), "scenario, the same in every direction")
+		l.slots.craftGain = l.add(name, 1, "dBi", float64(t.Pattern.PeakGain), "scenario, the same in every direction")
 	case t.Attitude == AttitudeTumbling:
 		q := t.attitudeProbability()
-		l.add(name, 1, "dBi", float64(t.Pattern.GainExceeded(q)),
+		l.slots.craftGain = l.add(name, 1, "dBi", float64(t.Pattern.GainExceeded(q)),
 			fmt.Sprintf("%s pattern, reached or exceeded with probability %g over all attitudes", t.Pattern.Kind, q))
 	case t.Attitude == AttitudeSpin:
 		l.pattern, l.spin = &t.Pattern, newSpinCurve(&t.Pattern, &t.Body, t.attitudeProbability())
@@ -76,7 +84,7 @@ func (l *Link) addTransmitGain() {
 		l.slots.transmitGain = l.add(name, 1, "dBi", 0, fmt.Sprintf("%s pattern at the angle off the spin axis, %s", t.Pattern.Kind, what))
 	default:
 		l.pattern = &t.Pattern
-		l.slots.transmitGain = l.add(name, 1, "dBi", 0,
+		l.slots.craftGain = l.add(name, 1, "dBi", 0,
 			fmt.Sprintf("%s pattern at the off-boresight angle, attitude %s", t.Pattern.Kind, t.Attitude))
 	}
 }
@@ -106,7 +114,7 @@ func (l *Link) addMismatch() {
 // (a measured G/T alone) they end with what falls on the antenna, less what C/N0
 // loses to pointing and extra losses.
 func (l *Link) addReceived() {
-	a, f := l.spec.Antenna, l.Frequency()
+	a := l.spec.Antenna
 	if l.gain != nil {
 		l.addStationGain()
 	}
@@ -116,13 +124,24 @@ func (l *Link) addReceived() {
 	if l.gain != nil {
 		l.loss("feed loss", a.FeedLoss, "scenario")
 	}
-	for _, x := range a.ExtraLosses {
+	l.addStationLosses()
+	l.setGainLoss(a)
+}
+
+// addStationLosses adds the antenna's losses that have names of their own.
+func (l *Link) addStationLosses() {
+	for _, x := range l.spec.Antenna.ExtraLosses {
 		source := "scenario, at the station"
 		if x.Dissipative {
 			source += ", dissipative"
 		}
 		l.loss(x.Name, x.Loss, source)
 	}
+}
+
+// setGainLoss keeps what surface and blockage take off the gain of a dish.
+func (l *Link) setGainLoss(a *station.Antenna) {
+	f := l.Frequency()
 	if a.Gain != nil || l.gain == nil {
 		return
 	}

@@ -27,9 +27,14 @@ const (
 	noiseSystem                   // first is the system noise temperature as measured
 	noiseGOverT                   // first is G/T in dB/K, the noise is the one implied
 	noiseUnknown                  // first is G/T, and the gain is not known: there is no noise to show
+	noiseOfCraft                  // of the spacecraft's receiver in an uplink, all of it in base
 )
 
 func (l *Link) buildNoise() {
+	if l.up() {
+		l.buildCraftNoise()
+		return
+	}
 	a, f := l.spec.Antenna, l.Frequency()
 	bare := &station.Noise{PhysicalTemperature: a.Noise.Physical()}
 	front := bare.Cascade(a.FeedLoss, a.ExtraLosses) // losses alone

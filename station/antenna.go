@@ -77,6 +77,7 @@ type Antenna struct {
 	ExtraLosses  []Loss        // each a term of its own
 	Noise        *Noise        // nil with a measured G/T
 	Mount        *Mount        // what turns it; nil: it follows whatever it is asked to
+	Transmit     *Transmit     // nil: the antenna receives alone
 }
 
 // Direction is a direction in the sky of a site.

@@ -24,10 +24,9 @@ func (a *Antenna) Validate() error {
 	for _, l := range a.ExtraLosses {
 		c.within(fmt.Sprintf("extra loss %q", l.Name), float64(l.Loss), 0, 1000, "dB")
 	}
-	for i, b := range a.Bands {
-		if !(b.Low > 0 && b.High >= b.Low && !math.IsInf(float64(b.High), 1)) {
-			c.say("band %d: %g to %g MHz is not a band; give its lower end, above 0, then its upper end", i+1, b.Low.Megahertz(), b.High.Megahertz())
-		}
+	c.bands("band", a.Bands)
+	if a.Transmit != nil {
+		c.add(a.Transmit.Validate())
 	}
 	a.checkGain(&c)
 	a.checkNoise(&c)
@@ -130,6 +129,23 @@ type checker struct{ faults []error }
 
 func (c *checker) say(format string, args ...any) {
 	c.faults = append(c.faults, fmt.Errorf(format, args...))
+}
+
+// add takes an error, or each of those joined in it.
+func (c *checker) add(err error) {
+	if joined, ok := err.(interface{ Unwrap() []error }); ok {
+		c.faults = append(c.faults, joined.Unwrap()...)
+	} else if err != nil {
+		c.faults = append(c.faults, err)
+	}
+}
+
+func (c *checker) bands(what string, list []Band) {
+	for i, b := range list {
+		if !(b.Low > 0 && b.High >= b.Low && !math.IsInf(float64(b.High), 1)) {
+			c.say("%s %d: %g to %g MHz is not a band; give its lower end, above 0, then its upper end", what, i+1, b.Low.Megahertz(), b.High.Megahertz())
+		}
+	}
 }
 
 func (c *checker) within(what string, v, low, high float64, u string) {
