@@ -12,7 +12,7 @@ var antennaKeys = []string{
 	"name", "kind", "diameter_m", "efficiency", "surface_rms_mm", "blockage_fraction", "beamwidth_factor_deg",
 	"gain_dbi", "beamwidth_deg", "g_over_t_db_k", "g_over_t_elevation_deg", "measured_on", "measured_weather",
 	"boresight_azimuth_deg", "boresight_elevation_deg", "pointing_error_deg",
-	"polarization", "axial_ratio_db", "polarization_tilt_deg", "bands_mhz", "feed_loss_db", "extra_losses", "noise",
+	"polarization", "axial_ratio_db", "polarization_tilt_deg", "bands_mhz", "feed_loss_db", "extra_losses", "noise", "transmit",
 }
 
 func (o object) antennas() []station.Antenna {
@@ -46,6 +46,7 @@ func (o object) antenna(name string) station.Antenna {
 	a.FeedLoss = unit.DB(o.zeroLeftOut("feed_loss_db", lossDB))
 	a.ExtraLosses = o.losses(true)
 	a.Noise = o.noise(a.GOverT != nil)
+	a.Transmit = o.transmit()
 	if o.r.faults.count() == before {
 		o.addAll(o.node, "", a.Validate())
 	}

@@ -34,7 +34,7 @@ func TestEverything(t *testing.T) {
 	craft, site := s.Spacecraft[0], s.Stations[0].Site
 	x, uhf := craft.Transmitters[0], s.Spacecraft[1].Transmitters[0]
 	dish, measured, single, roof := s.Stations[0].Antennas[0], s.Stations[0].Antennas[1], s.Stations[0].Antennas[2], s.Stations[0].Antennas[3]
-	back, eirp := unit.DB(-12), unit.LevelDBW(-6)
+	back, eirp, ratio := unit.DB(-12), unit.LevelDBW(-6), unit.DB(1.5)
 	for _, tt := range []struct {
 		what      string
 		got, want any
@@ -129,6 +129,18 @@ func TestEverything(t *testing.T) {
 			Choice: scenario.OneForAll, Rates: []unit.Frequency{9600, 19200}, Steps: scenario.DefaultSymbolRateSteps,
 			Rules: rateplan.Rules{Relock: 1500 * time.Millisecond},
 		}},
+		{"uplinks", []string{craft.Uplinks[0].Name, craft.Uplinks[1].Name, craft.Uplinks[2].Name}, []string{"command", "spare command", "stated"}},
+		{"sensitivity", *craft.Uplinks[0].Sensitivity, downlink.Sensitivity{Power: unit.LevelDBm(-112), Rate: 4000, Mode: "slow"}},
+		{"noise of the spacecraft", craft.Uplinks[1].Noise.AntennaTemperature.Value(0), 250.0},
+		{"G/T of the spacecraft", *craft.Uplinks[2].GOverT, unit.DB(-24.5)},
+		{"no receive antenna", craft.Uplinks[2].AntennaUnknown, true},
+		{"transmit power", single.Transmit.Power, unit.LevelDBm(43)},
+		{"transmit side", *dish.Transmit, station.Transmit{
+			Power: watts(t, 5), LineLoss: 1.2, Bands: []station.Band{{Low: 2025 * unit.Megahertz, High: 2110 * unit.Megahertz}},
+			Gain: dish.Transmit.Gain, Beamwidth: 2.6 * unit.Degree,
+			Polarization: &station.Polarization{Kind: station.LeftHandCircular, AxialRatio: &ratio},
+		}},
+		{"transmit gain", dish.Transmit.Gain.Value(90 * unit.Degree), 35.5},
 		{"uplink", s.Stations[0].Uplink, true},
 		{"no uplink", s.Stations[1].Uplink, false},
 		{"ground line", s.Stations[0].Line, unit.BitRate(8e6)},
@@ -145,6 +157,15 @@ func TestEverything(t *testing.T) {
 			t.Errorf("%s: got %v, want %v", tt.what, tt.got, tt.want)
 		}
 	}
+}
+
+func watts(t *testing.T, w float64) unit.Level {
+	t.Helper()
+	l, err := unit.LevelWatts(w)
+	if err != nil {
+		t.Fatal(err)
+	}
+	return l
 }
 
 // at returns the value of a curve at 5 %.

@@ -38,7 +38,7 @@ func TestEveryKeyIsRead(t *testing.T) {
 	for _, keys := range [][]string{
 		topKeys, windowKeys, earthKeys, spacecraftKeys, transmitterKeys, spinKeys, patternKeys, modeKeys, lossDissipativeKeys,
 		stationKeys, antennaKeys, noiseKeys, stageKeys, sizingKeys, requirementKeys, marginAtKeys,
-		pathKeys, climateKeys, levelKeys, lognormalKeys, lowPathKeys,
+		uplinkKeys, transmitKeys, pathKeys, climateKeys, levelKeys, lognormalKeys, lowPathKeys,
 		ratePlanKeys, licenceKeys, sectorKeys, hoursKeys, recorderKeys, recorderDataKeys, controlKeys, toleranceKeys, criterionKeys,
 	} {
 		for _, k := range keys {

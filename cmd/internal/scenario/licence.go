@@ -136,6 +136,11 @@ func (o object) licenceNames(l *licence.Licence, s *Scenario) {
 				transmitters = append(transmitters, t.Name)
 			}
 		}
+		for _, u := range c.Uplinks {
+			if l.Spacecraft == "" || l.Spacecraft == c.Name {
+				transmitters = append(transmitters, u.Name)
+			}
+		}
 	}
 	for _, st := range s.Stations {
 		sites = append(sites, st.Site.Name)

@@ -51,6 +51,7 @@ type Spacecraft struct {
 	Candidates   []orbit.Elements       // all sets of the object, in the order of the files
 	Choice       elements.Choice        // how Elements was chosen
 	Transmitters []downlink.Transmitter // may be empty: passes and pointing only
+	Uplinks      []downlink.Receiver    // may be empty: nothing is known of commanding
 	Recorder     *Recorder              // nil: none is given
 	RatePlan     RatePlan               // one mode a pass where none is given
 }

@@ -9,7 +9,7 @@ import (
 	"slantwise/orbit/elements"
 )
 
-var spacecraftKeys = []string{"name", "element_set", "transmitters", "recorder", "rate_plan"}
+var spacecraftKeys = []string{"name", "element_set", "transmitters", "recorder", "rate_plan", "uplinks"}
 
 // spacecraft reads the spacecraft, or takes every object of the element files where
 // the key is left out.
@@ -24,6 +24,7 @@ func (r *reader) spacecraft(top object, s *Scenario) []Spacecraft {
 	for i, o := range items {
 		o.about = "spacecraft " + called[i]
 		out[i] = Spacecraft{Name: called[i], Choice: s.Choice, Transmitters: r.transmitters(o)}
+		out[i].Uplinks = r.uplinks(o, out[i].Transmitters)
 		out[i].Recorder = o.recorder()
 		out[i].RatePlan = o.ratePlan(&out[i])
 		if r.need != NeedOrbits {

@@ -37,6 +37,10 @@ func (r *reader) stations(top object, around *propagation.Environment) []Station
 			out[i].Environment = around
 		}
 		out[i].Antennas = o.antennas()
+		if !o.has("uplink") && canSend(out[i].Antennas) {
+			out[i].Uplink = true
+			o.assume("uplink left out: an antenna has a transmit side, so that the station can acknowledge")
+		}
 	}
 	return out
 }
