@@ -6,6 +6,9 @@
 // evaluator. Terms of the path and noise from outside (gases, rain, the Sun) come in
 // through PathModel and NoiseModel; without them the path is free space.
 //
+// The other direction is the same link with a Receiver in place of the Transmitter: the
+// station's transmit side radiates, and received power and noise are at the spacecraft.
+//
 // Received power and system noise are at the input of the first amplifier, after the
 // feed loss. Losses are positive decibels with the sign -1. With a measured G/T,
 // C/N0 = EIRP - losses of the path + G/T - 10 log10 k, and the noise shown is the one

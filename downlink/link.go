@@ -15,7 +15,7 @@ import (
 // LinkSpec is what a link is made of.
 type LinkSpec struct {
 	Transmitter Transmitter
-	Receiver    *Receiver           // not nil: the link is an uplink to it, in place of Transmitter, from the Antenna's transmit side; NoiseModels and Bodies stay empty
+	Receiver    *Receiver           // not nil: the link is an uplink to it, in place of Transmitter, from the Antenna's transmit side; NoiseModels, Sun and Moon stay empty
 	Mode        *modem.Mode         // nil: a carrier without data
 	Frame       *station.Frame      // of the site; nil for a stated geometry without one
 	Refraction  *station.Refraction // for the apparent elevation of profiles; nil: it stays NaN
@@ -137,8 +137,8 @@ func (l *Link) validateCraft() error {
 func (l *Link) useAntenna() error {
 	f := l.Frequency()
 	if l.up() {
-		if len(l.spec.NoiseModels) > 0 || l.spec.Bodies != nil {
-			return errors.New("an uplink has no noise of the station's sky; leave NoiseModels and Bodies out")
+		if len(l.spec.NoiseModels) > 0 || l.spec.Sun != nil || l.spec.Moon != nil {
+			return errors.New("an uplink has no noise of the station's sky; leave NoiseModels, Sun and Moon out")
 		}
 		sending, err := l.spec.Antenna.Sending(f)
 		if err != nil {

@@ -81,7 +81,7 @@ func (l *Link) addCraftGain() {
 		case SpinWorst:
 			what = "the least of a turn"
 		}
-		l.slots.transmitGain = l.add(name, 1, "dBi", 0, fmt.Sprintf("%s pattern at the angle off the spin axis, %s", t.Pattern.Kind, what))
+		l.slots.craftGain = l.add(name, 1, "dBi", 0, fmt.Sprintf("%s pattern at the angle off the spin axis, %s", t.Pattern.Kind, what))
 	default:
 		l.pattern = &t.Pattern
 		l.slots.craftGain = l.add(name, 1, "dBi", 0,

@@ -60,7 +60,7 @@ func (l *Link) buildCraftNoise() {
 		p.kind, p.first = noiseUnknown, station.Constant(float64(*r.GOverT))
 		return
 	case r.GOverT != nil:
-		gain, _ := r.Pattern.gain(0)
+		gain, _ := r.Pattern.gainToward(0, 0)
 		t := unit.DB(float64(gain) - float64(r.LineLoss) - float64(*r.GOverT)).Ratio()
 		p.add(NoisePart{"system, implied", unit.Temperature(t), "gain on boresight after the line loss less the stated G/T"})
 	case r.Sensitivity != nil:

@@ -60,7 +60,7 @@ func (a *Antenna) RadiationAt(f unit.Frequency) (r Radiation, ok bool) {
 func (r *Radiation) DensityAt(distance unit.Length) float64 {
 	d := distance.Metres()
 	switch u := r.NearFieldEnd.Metres() / d; {
-	case math.IsNaN(u) || distance > r.FarFieldFrom:
+	case math.IsNaN(u) || distance >= r.FarFieldFrom:
 		return r.EIRP.Watts() / (4 * math.Pi * d * d)
 	case u >= 1:
 		return r.NearFieldMost

@@ -20,7 +20,7 @@ type budgetOptions struct {
 }
 
 // linkNames chooses a link of the scenario; an empty name picks the only one.
-type linkNames struct{ spacecraft, station, transmitter, antenna, mode string }
+type linkNames struct{ spacecraft, station, transmitter, uplink, antenna, mode string }
 
 // statedOptions is a geometry given by hand; nil: not given.
 type statedOptions struct {
@@ -36,9 +36,11 @@ func newBudget(env *Env) *cobra.Command {
 	cmd := &cobra.Command{
 		Use:   "budget",
 		Short: "The link budget at an instant, along a pass, or for a stated geometry",
-		Long: `Give the link budget of one transmitter, antenna and mode, term by term: every term
+		Long: `Give the link budget of one transmitter (or one uplink), antenna and mode, term by term: every term
 with its value, the sum so far and where it comes from, then the noise, then C/N0,
-Eb/N0, margin and the achievable rate, then what was assumed.
+Eb/N0, margin and the achievable rate, then what was assumed. With --uplink the station
+sends and the spacecraft receives, by the same terms; then follows how much the antenna
+radiates, with the caution that belongs to it.
 
   --at UTC                        at one instant, whether a pass is under way or not
   --range-km R --elevation-deg E  for a stated geometry; no element set is needed
@@ -48,7 +50,8 @@ Eb/N0, margin and the achievable rate, then what was assumed.
 What the scenario holds several of must be named.`,
 		Example: `  slantwise budget --spacecraft "Wagtail 1" --station "Skerry Point" --mode fast
   slantwise budget --spacecraft "Wagtail 1" --station "Skerry Point" --mode safe --at 2026-09-15T00:55:00Z
-  slantwise budget --spacecraft "Wagtail 1" --station "Skerry Point" --mode safe --range-km 1200 --elevation-deg 20 --format json`,
+  slantwise budget --spacecraft "Wagtail 1" --station "Skerry Point" --mode safe --range-km 1200 --elevation-deg 20 --format json
+  slantwise budget --spacecraft "Wagtail 1" --station "Skerry Point" --uplink command --mode quick`,
 		Args: noArgs,
 	}
 	fs := cmd.Flags()
@@ -59,7 +62,7 @@ What the scenario holds several of must be named.`,
 	addNumber(fs, &o.stated.rangeKm, "range-km", "stated slant range in `KM`, with --elevation-deg")
 	addNumber(fs, &o.stated.elevationDeg, "elevation-deg", "stated elevation in `DEG`, with --range-km")
 	addNumber(fs, &o.stated.azimuthDeg, "azimuth-deg", "stated azimuth in `DEG`, which a fixed antenna needs")
-	addNumber(fs, &o.stated.offBoresightDeg, "off-boresight-deg", "stated angle in `DEG` off the transmit antenna's boresight (left out: from the attitude over a sphere), or off its spin axis")
+	addNumber(fs, &o.stated.offBoresightDeg, "off-boresight-deg", "stated angle in `DEG` off the spacecraft antenna's boresight (left out: from the attitude over a sphere), or off its spin axis")
 	addNumber(fs, &o.stated.aroundBoresightDeg, "around-boresight-deg", "stated angle in `DEG` around that boresight, for a pattern in two angles")
 	addFormat(cmd, &o.format)
 	cmd.RunE = func(cmd *cobra.Command, _ []string) error {
@@ -75,8 +78,9 @@ func addLinkNames(cmd *cobra.Command, n *linkNames) {
 	fs.StringVar(&n.spacecraft, "spacecraft", "", "`NAME` of the spacecraft")
 	fs.StringVar(&n.station, "station", "", "`NAME` of the station")
 	fs.StringVar(&n.transmitter, "transmitter", "", "`NAME` of the spacecraft's transmitter")
+	fs.StringVar(&n.uplink, "uplink", "", "`NAME` of the spacecraft's uplink, in place of --transmitter")
 	fs.StringVar(&n.antenna, "antenna", "", "`NAME` of the station's antenna")
-	fs.StringVar(&n.mode, "mode", "", "`NAME` of the transmitter's mode")
+	fs.StringVar(&n.mode, "mode", "", "`NAME` of the transmitter's or the uplink's mode")
 }
 
 func runBudget(env *Env, o *budgetOptions) error {

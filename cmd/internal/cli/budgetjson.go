@@ -26,7 +26,8 @@ func (n nano) MarshalJSON() ([]byte, error) {
 type budgetJSON struct {
 	Spacecraft   string           `json:"spacecraft"`
 	Station      string           `json:"station"`
-	Transmitter  string           `json:"transmitter"`
+	Transmitter  string           `json:"transmitter"` // of an uplink its name
+	Direction    string           `json:"direction"`   // down, up
 	FrequencyMHz nano             `json:"frequency_mhz"`
 	Antenna      string           `json:"antenna"`
 	Mode         *string          `json:"mode"`
@@ -35,6 +36,7 @@ type budgetJSON struct {
 	Path         budgetPath       `json:"path"`
 	Samples      []budgetSample   `json:"samples"`
 	Assumptions  []budgetNoteJSON `json:"assumptions"`
+	Radiation    *radiationJSON   `json:"radiation"` // of the station; null in a downlink
 }
 
 // budgetPath says what the numbers of the path are.
@@ -122,7 +124,10 @@ func budgetOut(r *budgetResult) budgetJSON {
 	out := budgetJSON{
 		Spacecraft: r.spacecraft.Name, Station: r.station.Site.Name, Transmitter: r.transmitter.Name,
 		FrequencyMHz: nano(r.transmitter.Frequency.Megahertz()), Antenna: r.antenna.Name,
-		Samples: []budgetSample{}, Assumptions: []budgetNoteJSON{},
+		Samples: []budgetSample{}, Assumptions: []budgetNoteJSON{}, Direction: r.link.Direction().String(),
+	}
+	if rad, ok := r.radiation(); ok {
+		out.Radiation = radiationOut(&rad)
 	}
 	if r.mode != nil {
 		out.Mode = &r.mode.Name

@@ -14,7 +14,8 @@ import (
 type chosenLink struct {
 	spacecraft  *scenario.Spacecraft
 	station     *scenario.Station
-	transmitter *downlink.Transmitter
+	transmitter *downlink.Transmitter // or what the uplink shares with one
+	uplink      *downlink.Receiver    // nil: the spacecraft sends
 	antenna     *station.Antenna
 	mode        *modem.Mode // nil: the transmitter has none
 	link        *downlink.Link
@@ -34,10 +35,10 @@ func chooseLink(s *scenario.Scenario, n linkNames) (*chosenLink, error) {
 	if c.station, err = pick("station", n.station, s.Stations, stationName); err != nil {
 		return nil, err
 	}
-	if c.transmitter, err = pick("transmitter", n.transmitter, c.spacecraft.Transmitters, transmitterName); err != nil {
+	if err := c.pickEnd(n); err != nil {
 		return nil, err
 	}
-	if c.antenna, err = pick("antenna", n.antenna, c.station.Antennas, func(v *station.Antenna) string { return v.Name }); err != nil {
+	if err := c.pickAntenna(n.antenna); err != nil {
 		return nil, err
 	}
 	if len(c.transmitter.Modes) > 0 || n.mode != "" {
@@ -72,9 +73,12 @@ func (c *chosenLink) notes(s *scenario.Scenario, flown bool) []downlink.Note {
 // touchedBy tells whether a note of the scenario is about a part of the link.
 func (c *chosenLink) touchedBy(about string) bool {
 	craft := "spacecraft " + c.spacecraft.Name
-	transmitter := craft + ", transmitter " + c.transmitter.Name
+	transmitter := craft + ", " + c.kind() + " " + c.transmitter.Name
 	site := "station " + c.station.Site.Name
 	parts := []string{craft, transmitter, transmitter + ", antenna", site, site + ", antenna " + c.antenna.Name}
+	if c.uplink != nil {
+		parts = append(parts, site+", antenna "+c.antenna.Name+", transmit")
+	}
 	if c.mode != nil {
 		parts = append(parts, transmitter+", mode "+c.mode.Name)
 	}
@@ -89,19 +93,18 @@ func (c *chosenLink) linkNotes() []downlink.Note {
 // prepare makes the link with the site's frame and refraction, under the weather that
 // the scenario asks for and under a clear sky.
 func (c *chosenLink) prepare(k *skies) error {
-	// Before the path, which takes longer to prepare.
-	if a, f := c.antenna, c.transmitter.Frequency; len(a.Bands) > 0 && !slices.ContainsFunc(a.Bands, func(b station.Band) bool { return b.Holds(f) }) {
-		return &downlink.BandError{Antenna: a.Name, Frequency: f, Bands: a.Bands}
+	if err := c.takesFrequency(); err != nil {
+		return err
 	}
 	clear := k.scenario.Path.ClearSky
 	var err error
-	if c.sky, err = k.between(c.station, c.transmitter, c.antenna, clear); err != nil {
+	if c.sky, err = c.skyOf(k, clear); err != nil {
 		return err
 	}
 	if c.link, err = c.make(k, c.sky, clear); err != nil || clear {
 		return err
 	}
-	fine, err := k.between(c.station, c.transmitter, c.antenna, true)
+	fine, err := c.skyOf(k, true)
 	if err != nil {
 		return err
 	}
@@ -129,5 +132,5 @@ func (c *chosenLink) bareSpec() (downlink.LinkSpec, error) {
 			return downlink.LinkSpec{}, fmt.Errorf("station %s: %w", site.Name, err)
 		}
 	}
-	return downlink.LinkSpec{Transmitter: *c.transmitter, Mode: c.mode, Frame: &frame, Refraction: c.refraction, Antenna: c.antenna}, nil
+	return downlink.LinkSpec{Transmitter: *c.transmitter, Receiver: c.uplink, Mode: c.mode, Frame: &frame, Refraction: c.refraction, Antenna: c.antenna}, nil
 }

@@ -31,7 +31,11 @@ func writeBudgetTable(env *Env, r *budgetResult) error {
 
 func (r *budgetResult) writeHead(w *bufio.Writer) {
 	line := func(format string, args ...any) { fmt.Fprintln(w, printable(fmt.Sprintf(format, args...))) }
-	line("%s to %s: %s at %g MHz, antenna %s", r.spacecraft.Name, r.station.Site.Name, r.transmitter.Name, r.transmitter.Frequency.Megahertz(), r.antenna.Name)
+	from, to := r.spacecraft.Name, r.station.Site.Name
+	if r.uplink != nil {
+		from, to = to, from
+	}
+	line("%s to %s: %s at %g MHz, antenna %s", from, to, r.transmitter.Name, r.transmitter.Frequency.Megahertz(), r.antenna.Name)
 	if m := r.link.Mode(); m != nil {
 		line("mode %s: %s, coding %s, %s of information", m.Name, m.Modulation, m.Coding, rateText(float64(m.InformationRate)))
 	}
@@ -56,12 +60,16 @@ func (r *budgetResult) writeVolume(line func(string, ...any)) {
 	for _, c := range r.sunInBeam {
 		line("the Sun in the beam from %s to %s", utc(c.From), utc(c.To))
 	}
+	closes := "closes"
+	if r.uplink != nil {
+		closes = "commanding works"
+	}
 	for _, c := range r.volume.Closes {
-		line("closes from %s to %s", utc(c.From), utc(c.To))
+		line("%s from %s to %s", closes, utc(c.From), utc(c.To))
 	}
 	if m := r.link.Mode(); m != nil {
 		if len(r.volume.Closes) == 0 {
-			line("closes at no time of the pass")
+			line("%s at no time of the pass", closes)
 		}
 		line("volume %s in mode %s, %s at the achievable rate", bytesText(r.volume.ModeBytes), m.Name, bytesText(r.volume.AchievableBytes))
 		if v := r.clearVolume; v != nil {
@@ -89,7 +97,7 @@ func (r *budgetResult) writePaper(env *Env, width int, b *downlink.Budget) error
 	for _, p := range b.NoiseParts {
 		rows = append(rows, []string{p.Name, fixed(p.Temperature.Kelvins(), 3), "K", p.Source})
 	}
-	rows = append(rows, []string{"system noise", fixed(b.SystemNoise.Kelvins(), 3), "K", "sum, at the input of the first amplifier"})
+	rows = append(rows, []string{"system noise", fixed(b.SystemNoise.Kelvins(), 3), "K", "sum, at the input of the " + r.front()})
 	if _, err := fmt.Fprintln(env.Out); err != nil {
 		return err
 	}
@@ -137,9 +145,9 @@ func (r *budgetResult) results(b *downlink.Budget) [][]string {
 			rows = append(rows, []string{name, s, u, from})
 		}
 	}
-	add("received power", b.ReceivedPowerDBm, 2, "dBm", "sum of the terms, at the input of the first amplifier")
-	add("power flux density", b.PowerFluxDensity, 2, "dB(W/m²)", "whole carrier in free space at the site")
-	add("G/T", float64(b.GOverT), 2, "dB/K", "gain less feed loss over the system noise")
+	add("received power", b.ReceivedPowerDBm, 2, "dBm", "sum of the terms, at the input of the "+r.front())
+	add("power flux density", b.PowerFluxDensity, 2, "dB(W/m²)", "whole carrier in free space at the "+r.farEnd())
+	add("G/T", float64(b.GOverT), 2, "dB/K", "gain less "+r.frontLoss()+" loss over the system noise")
 	add("C/N0", float64(b.CN0), 2, "dBHz", "received power over Boltzmann's constant and the system noise")
 	add("C/I, other polarisation", float64(b.CI), 2, "dB", "discrimination not exceeded for the path's percentage, of an equal carrier")
 	add("data rate", ifAny(float64(b.DataRate)), 0, "bit/s", "information bits")
@@ -193,6 +201,11 @@ func (r *budgetResult) writeNotes(env *Env) error {
 	fmt.Fprintln(w)
 	for _, n := range r.notes {
 		fmt.Fprintf(w, "%s: %s\n", n.Kind, printable(n.Text))
+	}
+	if rad, ok := r.radiation(); ok {
+		for _, text := range append(radiationText(&rad), radiationCaution) {
+			fmt.Fprintf(w, "radiation: %s\n", strings.TrimPrefix(text, "Radiation: "))
+		}
 	}
 	doubtful := 0
 	for _, b := range r.samples {

@@ -21,6 +21,7 @@ type checkSpacecraft struct {
 	AgeDays       number   `json:"age_days"` // at the middle of the window
 	Sets          int      `json:"sets"`
 	Transmitters  []string `json:"transmitters"`
+	Uplinks       []string `json:"uplinks"`
 }
 
 type checkStation struct {
@@ -54,7 +55,7 @@ func checkResult(s *scenario.Scenario) checkAnswer {
 		a.Spacecraft = append(a.Spacecraft, checkSpacecraft{
 			Name: c.Name, ElementSet: c.Elements.Name, CatalogNumber: c.Elements.CatalogNumber,
 			EpochUTC: utc(c.Elements.Epoch), AgeDays: num(c.Elements.Age.Hours()/24, 3),
-			Sets: c.Elements.Among, Transmitters: names,
+			Sets: c.Elements.Among, Transmitters: names, Uplinks: append([]string{}, uplinkNames(&c)...),
 		})
 	}
 	for _, st := range s.Stations {

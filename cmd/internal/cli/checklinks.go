@@ -6,7 +6,6 @@ import (
 
 	"slantwise/cmd/internal/scenario"
 	"slantwise/downlink"
-	"slantwise/station"
 )
 
 // warnOfLinks prepares every link that the antennas' bands allow, as budget and report will,
@@ -19,24 +18,34 @@ func warnOfLinks(s *scenario.Scenario) {
 		for t := range c.Transmitters {
 			for j := range s.Stations {
 				for a := range s.Stations[j].Antennas {
-					warnOfLink(s, k, c, &c.Transmitters[t], &s.Stations[j], &s.Stations[j].Antennas[a])
+					warnOfLink(s, k, chosenLink{spacecraft: c, transmitter: &c.Transmitters[t], station: &s.Stations[j], antenna: &s.Stations[j].Antennas[a]})
+				}
+			}
+		}
+		for u := range c.Uplinks {
+			for j := range s.Stations {
+				for a := range s.Stations[j].Antennas {
+					if s.Stations[j].Antennas[a].Transmit != nil {
+						warnOfLink(s, k, chosenLink{spacecraft: c, transmitter: &c.Uplinks[u].Transmitter, uplink: &c.Uplinks[u], station: &s.Stations[j], antenna: &s.Stations[j].Antennas[a]})
+					}
 				}
 			}
 		}
 	}
 }
 
-// warnOfLink adds the warnings of one transmitter and one antenna in all modes.
-func warnOfLink(s *scenario.Scenario, k *skies, c *scenario.Spacecraft, t *downlink.Transmitter, st *scenario.Station, a *station.Antenna) {
-	about := "spacecraft " + c.Name + ", transmitter " + t.Name + " to station " + st.Site.Name + ", antenna " + a.Name
+// warnOfLink adds the warnings of one transmitter or uplink and one antenna in all modes.
+func warnOfLink(s *scenario.Scenario, k *skies, c chosenLink) {
+	about := "spacecraft " + c.spacecraft.Name + ", " + c.kind() + " " + c.transmitter.Name + " to station " + c.station.Site.Name + ", antenna " + c.antenna.Name
 	add := func(text string) {
 		n := scenario.Note{About: about, Text: text}
 		if !slices.Contains(s.Warnings, n) {
 			s.Warnings = append(s.Warnings, n)
 		}
 	}
-	for _, m := range competing(t.Modes, "") {
-		l := chosenLink{spacecraft: c, station: st, transmitter: t, antenna: a, mode: m}
+	for _, m := range competing(c.transmitter.Modes, "") {
+		l := c
+		l.mode = m
 		err := l.prepare(k)
 		var band *downlink.BandError
 		switch {

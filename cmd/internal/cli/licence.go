@@ -93,7 +93,7 @@ func keepToLicences(s *scenario.Scenario, c *chosenLink, f *downlink.Profile) ([
 		return nil, nil
 	}
 	course := licence.Course{Start: f.Start, Seconds: f.Seconds, AzimuthDeg: f.AzimuthDeg, ElevationDeg: f.ElevationDeg}
-	kept, err := licence.Keep(licences, c.station.Site.Name, course, licence.Downlink)
+	kept, err := licence.Keep(licences, c.station.Site.Name, course, c.use())
 	if err != nil {
 		return nil, err
 	}
@@ -106,7 +106,7 @@ func keepToLicences(s *scenario.Scenario, c *chosenLink, f *downlink.Profile) ([
 	for _, b := range kept.Bindings {
 		out = append(out, downlink.Note{Kind: downlink.Warning, Text: b.String() + " of the pass; volumes are without it"})
 	}
-	return append(out, breachNotes(licences, c.transmitter)...), nil
+	return append(out, breachNotes(licences, c.emissions())...), nil
 }
 
 // licensedAt returns what the licences do not allow at one instant: the rules that bind
@@ -122,7 +122,7 @@ func licensedAt(s *scenario.Scenario, c *chosenLink, g, later downlink.Geometry,
 		AzimuthDeg:   []float64{g.Azimuth.Degrees(), later.Azimuth.Degrees()},
 		ElevationDeg: []float64{g.Elevation.Degrees(), later.Elevation.Degrees()},
 	}
-	kept, err := licence.Keep(licences, c.station.Site.Name, course, licence.Downlink)
+	kept, err := licence.Keep(licences, c.station.Site.Name, course, c.use())
 	if err != nil {
 		return nil, err
 	}
@@ -132,15 +132,15 @@ func licensedAt(s *scenario.Scenario, c *chosenLink, g, later downlink.Geometry,
 			out = append(out, downlink.Note{Kind: downlink.Warning, Text: fmt.Sprintf("licence %q does not allow this instant: %s", b.Licence, b.Rule)})
 		}
 	}
-	return append(out, breachNotes(licences, c.transmitter)...), nil
+	return append(out, breachNotes(licences, c.emissions())...), nil
 }
 
 // breachNotes tells, each once, what of a transmitter its licences do not allow.
-func breachNotes(licences []licence.Licence, t *downlink.Transmitter) []downlink.Note {
+func breachNotes(licences []licence.Licence, emissions []licence.Emission) []downlink.Note {
 	var out []downlink.Note
 	told := map[string]bool{}
 	for _, l := range licences {
-		for _, e := range licensedEmissions(t) {
+		for _, e := range emissions {
 			for _, b := range l.Breaches(e) {
 				if !told[b.String()] {
 					told[b.String()] = true
@@ -157,7 +157,7 @@ func breachNotes(licences []licence.Licence, t *downlink.Transmitter) []downlink
 func addBreaches(out *sheet, s *scenario.Scenario, c *scenario.Spacecraft, t *downlink.Transmitter) {
 	told := map[string]bool{}
 	for _, l := range licencesFor(s, c.Name, t.Name) {
-		for _, e := range licensedEmissions(t) {
+		for _, e := range licensedEmissions(t, greatestEIRP(t)) {
 			for _, b := range l.Breaches(e) {
 				kind := "breach"
 				if b.Unknown {
@@ -174,8 +174,8 @@ func addBreaches(out *sheet, s *scenario.Scenario, c *scenario.Spacecraft, t *do
 
 // licensedEmissions returns what a licence asks of each mode, or of the carrier where
 // there is none.
-func licensedEmissions(t *downlink.Transmitter) []licence.Emission {
-	base := licence.Emission{EIRP: greatestEIRP(t), Centre: t.Frequency}
+func licensedEmissions(t *downlink.Transmitter, greatest *unit.Level) []licence.Emission {
+	base := licence.Emission{EIRP: greatest, Centre: t.Frequency}
 	if len(t.Modes) == 0 {
 		return []licence.Emission{base}
 	}
@@ -190,6 +190,22 @@ func licensedEmissions(t *downlink.Transmitter) []licence.Emission {
 		out = append(out, e)
 	}
 	return out
+}
+
+// use is what a licence asks of the link.
+func (c *chosenLink) use() licence.Use {
+	if c.uplink != nil {
+		return licence.Uplink
+	}
+	return licence.Downlink
+}
+
+// emissions are those of the end of the link that sends.
+func (c *chosenLink) emissions() []licence.Emission {
+	if rad, ok := c.radiation(); ok {
+		return licensedEmissions(c.transmitter, &rad.EIRP)
+	}
+	return licensedEmissions(c.transmitter, greatestEIRP(c.transmitter))
 }
 
 // greatestEIRP returns the greatest EIRP in any direction that is known; nil where an

@@ -49,8 +49,26 @@ type skyLink struct {
 	notes   []downlink.Note
 }
 
-// between prepares the sky of a link, under its weather or as a clear sky.
+// between prepares the sky of a downlink, under its weather or as a clear sky.
 func (k *skies) between(st *scenario.Station, t *downlink.Transmitter, a *station.Antenna, clear bool) (*skyLink, error) {
+	out, err := k.over(st, t, a, clear)
+	if err != nil {
+		return nil, err
+	}
+	if err := out.addNoise(st, t, a, clear); err != nil {
+		return nil, err
+	}
+	if err := out.addBodies(&k.scenario.Path, t.Frequency); err != nil {
+		return nil, err
+	}
+	if t.OtherPolarization && !clear {
+		out.addCross()
+	}
+	return out, nil
+}
+
+// over prepares what the air takes, of a link in either direction.
+func (k *skies) over(st *scenario.Station, t *downlink.Transmitter, a *station.Antenna, clear bool) (*skyLink, error) {
 	out := &skyLink{}
 	choice := &k.scenario.Path
 	var err error
@@ -76,20 +94,16 @@ func (k *skies) between(st *scenario.Station, t *downlink.Transmitter, a *statio
 			out.missing = append(out.missing, "ionosphere")
 		}
 	}
-	if err := out.addNoise(st, t, a, clear); err != nil {
-		return nil, err
-	}
-	if err := out.addBodies(choice, t.Frequency); err != nil {
-		return nil, err
-	}
-	if t.OtherPolarization && !clear {
-		out.cross = func(elevation unit.Angle) (unit.DB, error) {
-			v, _, err := out.path.CrossPolar(elevation)
-			return v, err
-		}
-		out.note(downlink.Assumption, "the other polarisation is in use: C/I is the discrimination not exceeded for the path's percentage (P.618 §4.1), from rain alone and for an equal carrier; it stands beside C/N0 and takes nothing off it; beyond 60 deg of elevation and 1 %% of the year, where its stated range ends, the formula's value is given")
-	}
 	return out, nil
+}
+
+// addCross adds the discrimination of the other polarisation.
+func (l *skyLink) addCross() {
+	l.cross = func(elevation unit.Angle) (unit.DB, error) {
+		v, _, err := l.path.CrossPolar(elevation)
+		return v, err
+	}
+	l.note(downlink.Assumption, "the other polarisation is in use: C/I is the discrimination not exceeded for the path's percentage (P.618 §4.1), from rain alone and for an equal carrier; it stands beside C/N0 and takes nothing off it; beyond 60 deg of elevation and 1 %% of the year, where its stated range ends, the formula's value is given")
 }
 
 func (l *skyLink) note(kind downlink.NoteKind, format string, args ...any) {

@@ -65,7 +65,7 @@ func runPathYear(ctx context.Context, env *Env, o *pathOptions) error {
 		return inputErrorf("path.clear_sky: a sky that is always clear has no statistics; leave it out")
 	}
 	s.Window.End = s.Window.Start.Add(time.Duration(days * 24 * float64(time.Hour))) // Sun and Moon are prepared for it, too
-	c, err := chooseLink(s, linkNames{o.spacecraft, o.station, o.transmitter, o.antenna, o.year.mode})
+	c, err := chooseLink(s, linkNames{spacecraft: o.spacecraft, station: o.station, transmitter: o.transmitter, antenna: o.antenna, mode: o.year.mode})
 	if err != nil {
 		return err
 	}

@@ -8,7 +8,7 @@ import (
 
 var (
 	uplinkKeys = []string{
-		"name", "frequency_mhz", "line_loss_db", "antenna", "attitude", "attitude_probability",
+		"name", "frequency_mhz", "line_loss_db", "antenna", "attitude", "attitude_probability", "spin",
 		"polarization", "axial_ratio_db", "polarization_tilt_deg", "modes",
 		"noise", "g_over_t_db_k", "sensitivity_dbm", "sensitivity_data_rate_bps", "sensitivity_mode",
 		"implementation_loss_db", "required_margin_db", "extra_losses", "allotted_bandwidth_mhz", "highest_data_rate_bps",
@@ -44,7 +44,7 @@ func (r *reader) uplink(o object, name string) downlink.Receiver {
 	o.receiverNoise(&u)
 	o.receiveAntenna(&u)
 	if u.AntennaUnknown {
-		o.useless("without antenna", "attitude", "attitude_probability")
+		o.useless("without antenna", "attitude", "attitude_probability", "spin")
 	} else {
 		o.attitude(&u.Transmitter, r.need)
 	}
@@ -76,7 +76,7 @@ func (o object) tellSensitivity(u *downlink.Receiver) {
 func (o object) receiveAntenna(u *downlink.Receiver) {
 	if o.has("antenna") {
 		u.LineLoss = unit.DB(o.zeroLeftOut("line_loss_db", lossDB))
-		u.Pattern = o.pattern()
+		u.Pattern, u.Body = o.pattern()
 		return
 	}
 	if u.GOverT == nil {
