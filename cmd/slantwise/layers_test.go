@@ -19,6 +19,7 @@ var layers = []struct {
 	{"slantwise/orbit/unit", 0},
 	{"slantwise/orbit", 1},
 	{"slantwise/orbit/elements", 2},
+	{"slantwise/orbit/fit", 2},
 	{"slantwise/station", 3},
 	{"slantwise/station/pass", 4},
 	{"slantwise/station/mount", 4},

@@ -1,0 +1,64 @@
+package fit
+
+import (
+	"fmt"
+	"math"
+	"time"
+)
+
+// carried refuses a fit that SGP4 does not carry, or that leaves elements open.
+func (o *Options) carried(r *Result) error {
+	most := o.MostRMS
+	if most == 0 {
+		most = mostRMS
+	}
+	switch {
+	case !(r.RMS <= most):
+		return &Refusal{Why: BeyondTheory,
+			Found: fmt.Sprintf("the RMS distance is %s, worst %s along at %s; at most %s are taken", kilometres(r.RMS), kilometres(r.Along.Worst),
+				r.Along.At.UTC().Format("2006-01-02T15:04:05Z"), kilometres(most)),
+			Next: "check frame and time scale; split the span at a manoeuvre; take a shorter one; or allow more"}
+	case !(r.Condition <= mostCondition):
+		return &Refusal{Why: Undetermined,
+			Found: fmt.Sprintf("the condition number of the partials is %s, over %s: some combination of elements is not in the data", short(r.Condition), short(mostCondition)),
+			Next:  "give a longer span, velocities, or state B*"}
+	}
+	return nil
+}
+
+// leastDrag is a doubt in B* that always passes: on an orbit of 500 km height it is some
+// 200 m along the track after a day (the drag that a set of B* 1e-4 shows there).
+const leastDrag = 5e-5
+
+// dragCarried refuses a B* that is not known to half of itself.
+func dragCarried(r *Result) error {
+	if !r.DragFound {
+		return nil
+	}
+	doubt := r.sigma(atDrag)
+	if doubt <= math.Max(leastDrag, math.Abs(r.Elements.BStar)/2) {
+		return nil
+	}
+	return &Refusal{Why: SpanShortForDrag,
+		Found: fmt.Sprintf("it comes out as %s ± %s per Earth radius", short(r.Elements.BStar), short(doubt)),
+		Next:  "give a longer span, or state B*: that of an earlier set, or 0"}
+}
+
+// mostSpread in m is a standard deviation a revolution after the epoch with which a set
+// points no antenna at the next pass: 13 s early or late on a low orbit.
+const mostSpread = 100e3
+
+// positionCarried refuses a set whose own position is open.
+func positionCarried(r *Result) error {
+	revolution := time.Duration(24 / r.Elements.MeanMotion * float64(time.Hour))
+	s, err := r.Uncertainty.At(r.Elements.Epoch.Add(revolution))
+	if err != nil {
+		return &Refusal{Why: OutsideTheory, Found: "the orbit ends within a revolution after the epoch", Err: err,
+			Next: "choose an earlier epoch; where the orbit is about to decay, no set lasts"}
+	}
+	if total := s.Total().Metres(); !(total <= mostSpread) {
+		return &Refusal{Why: Undetermined, Found: "the position a revolution after the epoch is known to " + kilometres(total) + " only",
+			Next: "give a longer span, velocities, or an epoch within the data"}
+	}
+	return nil
+}
