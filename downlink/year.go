@@ -85,7 +85,7 @@ func (y *Year) clearUnder(i int, m unit.DB) bool {
 // cn0 is the C/N0 of a cell with what its path takes.
 func (y *Year) cn0(i int, s *propagation.Sample, k propagation.Sky) float64 {
 	c := &y.cells[i]
-	added := y.link.skyShare(y.shares[i].Elevation) * max(0, k.Increase().Kelvins())
+	added := y.link.SkyShare(y.shares[i].Elevation) * max(0, k.Increase().Kelvins())
 	noise := 0.0
 	if added > 0 {
 		noise = 10 * math.Log10(1+added/c.noise)
@@ -104,9 +104,9 @@ func (l *Link) marginOverAt(cn0 float64) float64 {
 	return r.marginOver
 }
 
-// skyShare is the share of a rise of the sky's brightness that reaches the amplifier;
+// SkyShare is the share of a rise of the sky's brightness that reaches the amplifier;
 // 0 where the system noise is not known.
-func (l *Link) skyShare(elevation unit.Angle) float64 {
+func (l *Link) SkyShare(elevation unit.Angle) float64 {
 	if l.noise.kind == noiseUnknown {
 		return 0
 	}

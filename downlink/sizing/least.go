@@ -1,0 +1,343 @@
+package sizing
+
+import (
+	"errors"
+	"math"
+
+	"slantwise/orbit/unit"
+)
+
+// Range is where a diameter is sought, and at how many diameters, evenly in their
+// logarithm, all is evaluated first.
+type Range struct {
+	Low, High unit.Length
+	Steps     int // 2 or more; 0: DefaultSteps
+}
+
+// DefaultSteps is the number of diameters of a trade curve.
+const DefaultSteps = 24
+
+// Grid returns the diameters, both ends included.
+func (r Range) Grid() []unit.Length {
+	n := r.Steps
+	if n == 0 {
+		n = DefaultSteps
+	}
+	out := make([]unit.Length, n)
+	for i := range out {
+		out[i] = unit.Length(r.Low.Metres() * math.Pow(r.High.Metres()/r.Low.Metres(), float64(i)/float64(n-1)))
+	}
+	out[n-1] = r.High
+	return out
+}
+
+// Check returns a *unit.RangeError for a range that is none.
+func (r Range) Check() error {
+	if !(r.Low > 0 && r.High > r.Low && r.High <= 1000) {
+		return &unit.RangeError{Quantity: "diameters to look among", Value: r.Low.Metres(), Unit: "m", Allowed: "above 0 m, up to a greater diameter of at most 1000 m"}
+	}
+	if r.Steps != 0 && (r.Steps < 2 || r.Steps > 1000) {
+		return &unit.RangeError{Quantity: "steps of the diameter", Value: float64(r.Steps), Allowed: "2 to 1000"}
+	}
+	return nil
+}
+
+// resolution is how closely a diameter is found, as a share of it.
+const resolution = 5e-4
+
+// Found is the answer of a search for a diameter.
+type Found struct {
+	Diameter unit.Length // the least that meets all; 0: none does
+	Most     unit.Length // the greatest of the stretch that begins there, at most the range's end
+	Nearest  *Outcome    // where none does, what comes nearest: the worst requirement missed by the least share
+}
+
+// Least returns the least diameter of a range that meets some requirements together.
+//
+// Margins are not monotone in the diameter: beyond some size pointing and surface
+// errors take more than the aperture gives. But over a stretch of diameters from a to b
+// the gain rises by no more than 20 log(b/a), and scintillation falls by no more than
+// it does between the ends; what does not meet with that much more power does not meet
+// anywhere in the stretch. Stretches that this does not exclude are halved down to the
+// resolution. It holds for requirements that more power never makes worse, which margin,
+// availability and gaps are exactly; bytes and latency are but for the plans being made
+// for one weather and counted in all.
+func (s *Study) Least(needs []Need, r Range) (Found, error) {
+	if len(needs) == 0 {
+		return Found{}, errors.New("nothing is required; give a requirement")
+	}
+	if err := r.Check(); err != nil {
+		return Found{}, err
+	}
+	q := search{study: s, needs: needs, grid: r.Grid()}
+	for _, n := range needs {
+		q.parts |= n.part
+	}
+	return q.run()
+}
+
+type search struct {
+	study *Study
+	needs []Need
+	parts part
+	grid  []unit.Length
+}
+
+// met tells whether a variant meets all.
+func (q *search) met(v Variant) (bool, error) {
+	o, err := q.study.outcome(v, q.parts)
+	if err != nil {
+		return false, err
+	}
+	for i := range q.needs {
+		if !q.needs[i].Met(o) {
+			return false, nil
+		}
+	}
+	return true, nil
+}
+
+func (q *search) run() (Found, error) {
+	var f Found
+	ok, err := q.met(Variant{Diameter: q.grid[0]})
+	if err != nil {
+		return f, err
+	}
+	if ok {
+		f.Diameter = q.grid[0]
+	}
+	for i := 1; i < len(q.grid) && f.Diameter == 0; i++ {
+		if f.Diameter, err = q.between(q.grid[i-1], q.grid[i]); err != nil {
+			return f, err
+		}
+	}
+	if f.Diameter > 0 {
+		f.Most, err = q.last(f.Diameter)
+		return f, err
+	}
+	f.Nearest, err = q.nearest()
+	return f, err
+}
+
+// between returns the least diameter in (a, b] that meets all, where a does not; 0 where
+// none does.
+func (q *search) between(a, b unit.Length) (unit.Length, error) {
+	end, err := q.met(Variant{Diameter: b})
+	if err != nil {
+		return 0, err
+	}
+	fine := b.Metres()-a.Metres() <= resolution*b.Metres()
+	if end && fine {
+		return b, nil
+	}
+	if fine {
+		return 0, nil
+	}
+	if !end {
+		possible, err := q.possible(a, b)
+		if err != nil || !possible {
+			return 0, err
+		}
+	}
+	mid := unit.Length(math.Sqrt(a.Metres() * b.Metres()))
+	middle, err := q.met(Variant{Diameter: mid})
+	if err != nil {
+		return 0, err
+	}
+	d, err := q.betweenKnown(a, mid, middle)
+	if err != nil || d > 0 {
+		return d, err
+	}
+	return q.between(mid, b)
+}
+
+// betweenKnown is between where the outcome at the end is known. Where the end meets
+// all, an earlier stretch that does and ends before it is not looked for: margins have
+// one summit.
+func (q *search) betweenKnown(a, b unit.Length, end bool) (unit.Length, error) {
+	if !end {
+		return q.between(a, b)
+	}
+	for b.Metres()-a.Metres() > resolution*b.Metres() {
+		mid := unit.Length(math.Sqrt(a.Metres() * b.Metres()))
+		ok, err := q.met(Variant{Diameter: mid})
+		if err != nil {
+			return 0, err
+		}
+		if ok {
+			b = mid
+		} else {
+			a = mid
+		}
+	}
+	return b, nil
+}
+
+// possible tells whether any diameter between two that do not meet all could.
+func (q *search) possible(a, b unit.Length) (bool, error) {
+	more := 20 * math.Log10(b.Metres()/a.Metres())
+	still, err := q.study.stiller(a, b)
+	if err != nil {
+		return false, err
+	}
+	more += still
+	for _, d := range q.grid { // one that has as much more, and does not meet either, excludes it for nothing
+		o := q.study.known[Variant{Diameter: d}]
+		if d <= b || o == nil || q.parts&^o.done != 0 {
+			continue
+		}
+		gain, err := q.study.gainOver(d, a)
+		if err != nil {
+			return false, err
+		}
+		if gain >= more {
+			for i := range q.needs {
+				if !q.needs[i].Met(o) {
+					return false, nil
+				}
+			}
+			break
+		}
+	}
+	return q.met(Variant{Diameter: a, Power: unit.DB(more)})
+}
+
+// last returns the end of the stretch of diameters that meet all from d on.
+func (q *search) last(d unit.Length) (unit.Length, error) {
+	for _, next := range q.grid {
+		if next <= d {
+			continue
+		}
+		ok, err := q.met(Variant{Diameter: next})
+		if err != nil {
+			return 0, err
+		}
+		if ok {
+			d = next
+			continue
+		}
+		for next.Metres()-d.Metres() > resolution*d.Metres() {
+			mid := unit.Length(math.Sqrt(next.Metres() * d.Metres()))
+			if ok, err = q.met(Variant{Diameter: mid}); err != nil {
+				return 0, err
+			}
+			if ok {
+				d = mid
+			} else {
+				next = mid
+			}
+		}
+		return d, nil
+	}
+	return d, nil
+}
+
+// nearest returns the outcome whose worst requirement is missed by the least share, by
+// the grid and a search around its best.
+func (q *search) nearest() (*Outcome, error) {
+	var best *Outcome
+	at := 0
+	look := func(d unit.Length) (float64, error) {
+		o, err := q.study.outcome(Variant{Diameter: d}, q.parts)
+		if err != nil {
+			return 0, err
+		}
+		v := q.worst(o)
+		if best == nil || v > q.worst(best) {
+			best = o
+		}
+		return v, nil
+	}
+	for i, d := range q.grid {
+		before := best
+		if _, err := look(d); err != nil {
+			return nil, err
+		}
+		if best != before {
+			at = i
+		}
+	}
+	low, high := q.grid[max(at-1, 0)].Metres(), q.grid[min(at+1, len(q.grid)-1)].Metres()
+	const golden = 0.6180339887498949
+	for high-low > 0.01*high {
+		c, d := high-golden*(high-low), low+golden*(high-low)
+		vc, err := look(unit.Length(c))
+		if err != nil {
+			return nil, err
+		}
+		vd, err := look(unit.Length(d))
+		if err != nil {
+			return nil, err
+		}
+		if vc >= vd {
+			high = d
+		} else {
+			low = c
+		}
+	}
+	return best, nil
+}
+
+// worst returns the greatest miss of an outcome as a negative share of what is
+// required; decibels as tenths of ten.
+func (q *search) worst(o *Outcome) float64 {
+	worst := math.Inf(1)
+	for i := range q.needs {
+		n := &q.needs[i]
+		scale := math.Abs(n.Required)
+		if n.Unit == "dB" || scale == 0 {
+			scale = 10
+		}
+		worst = min(worst, n.Over(o)/scale)
+	}
+	return worst
+}
+
+// stiller returns how much less the weather takes with the aperture of b than with that
+// of a, at most, in dB: what scintillation loses by averaging.
+func (s *Study) stiller(a, b unit.Length) (float64, error) {
+	most := 0.0
+	for _, i := range s.spec.Sites {
+		fa, err := s.front(i, Variant{Diameter: a})
+		if err != nil {
+			return 0, err
+		}
+		fb, err := s.front(i, Variant{Diameter: b})
+		if err != nil {
+			return 0, err
+		}
+		for r := range fa.clear {
+			most = max(most, (fa.clear[r]-fa.planned[r])-(fb.clear[r]-fb.planned[r]))
+			if fa.losses == nil {
+				continue
+			}
+			for k := range fa.losses[r] {
+				most = max(most, fa.losses[r][k]-fb.losses[r][k])
+			}
+		}
+	}
+	return most, nil
+}
+
+// gainOver returns the least that a diameter gains over another at any site, elevation
+// and percentage.
+func (s *Study) gainOver(d, over unit.Length) (float64, error) {
+	least := math.Inf(1)
+	for _, i := range s.spec.Sites {
+		fd, err := s.front(i, Variant{Diameter: d})
+		if err != nil {
+			return 0, err
+		}
+		fo, err := s.front(i, Variant{Diameter: over})
+		if err != nil {
+			return 0, err
+		}
+		if !fd.usable && fo.usable {
+			return math.Inf(-1), nil
+		}
+		for r := range fd.clear {
+			least = min(least, fd.clear[r]-fo.clear[r])
+		}
+	}
+	return least, nil
+}
