@@ -1,7 +1,6 @@
 package orbit
 
 import (
-	"fmt"
 	"math"
 	"time"
 
@@ -25,6 +24,11 @@ type Ephemeris struct {
 	last  int     // the greatest interval
 	knots []knot  // reach knots before the first interval and after the last
 	sun   SunTrack
+
+	later []run  // further runs of knots, where a trajectory has several
+	spans []Span // where there are states; empty: from 0 to end
+	gaps  []Gap
+	bend  unit.Length
 }
 
 // MaxPositionError and MaxVelocityError are how far an ephemeris is from SGP4's own
@@ -64,8 +68,14 @@ func (e *Ephemeris) Time(s float64) time.Time {
 	return e.reference.Add(time.Duration(math.Round(s * float64(time.Second))))
 }
 
-// Span returns the last valid argument of PositionAt and StateAt; the first is 0.
-func (e *Ephemeris) Span() float64 { return e.end }
+// Span returns the last valid argument of PositionAt and StateAt; the first is 0. A
+// trajectory may have gaps between them: see Spans.
+func (e *Ephemeris) Span() float64 {
+	if n := len(e.later); n > 0 {
+		return e.later[n-1].end
+	}
+	return e.end
+}
 
 // Step returns the seconds between two knots.
 func (e *Ephemeris) Step() float64 { return e.step }
@@ -73,8 +83,8 @@ func (e *Ephemeris) Step() float64 { return e.step }
 // Truncated returns why the span ends before the instant asked for, or nil.
 func (e *Ephemeris) Truncated() *PropagationError { return e.truncated }
 
-// PositionAt returns the Earth-fixed position in m at s in [0, Span()]; s outside
-// is a programming error and panics.
+// PositionAt returns the Earth-fixed position in m at s in one of Spans, as a rule
+// [0, Span()]; s outside is a programming error and panics.
 func (e *Ephemeris) PositionAt(s float64) Vec3 {
 	i, u := e.locate(s)
 	return between(&e.knots[i], &e.knots[i+1], u)
@@ -96,11 +106,11 @@ func (e *Ephemeris) SunAt(s float64) Vec3 { return e.sun.PositionAt(s) }
 // LightAt returns how much of the Sun the spacecraft sees at s in [0, Span()].
 func (e *Ephemeris) LightAt(s float64) Light { return LightAt(e.PositionAt(s), e.SunAt(s)) }
 
-// At returns the state at t, or a *SpanError when t lies outside the span.
+// At returns the state at t, or a *SpanError when t lies outside the span or in a gap.
 func (e *Ephemeris) At(t time.Time) (State, error) {
 	s := e.Seconds(t)
-	if !(s >= 0 && s <= e.end) {
-		return State{}, &SpanError{Time: t, From: e.reference, To: e.Time(e.end)}
+	if !e.Covers(s) {
+		return State{}, e.spanError(t)
 	}
 	return e.StateAt(s), nil
 }
@@ -109,14 +119,9 @@ func (e *Ephemeris) At(t time.Time) (State, error) {
 // next.
 func (e *Ephemeris) locate(s float64) (int, float64) {
 	if !(s >= 0 && s <= e.end) {
-		e.outside(s)
+		s = e.elsewhere(s)
 	}
 	x := (s - e.first) * e.rate
 	i := min(int(x), e.last)
 	return i + reach, x - float64(i)
-}
-
-// outside is kept out of locate so that locate stays small enough to be inlined.
-func (e *Ephemeris) outside(s float64) {
-	panic(fmt.Sprintf("orbit: %g s is outside the ephemeris' span of 0 to %g s", s, e.end))
 }

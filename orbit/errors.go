@@ -63,17 +63,6 @@ func (e *PropagationError) Error() string {
 	return s + "; take a newer element set or an earlier window"
 }
 
-// SpanError says that an instant lies outside the span of an ephemeris.
-type SpanError struct {
-	Time, From, To time.Time
-}
-
-// Error names the instant and the span.
-func (e *SpanError) Error() string {
-	return fmt.Sprintf("ephemeris: %s is outside the span %s to %s",
-		e.Time.UTC().Format(timeLayout), e.From.UTC().Format(timeLayout), e.To.UTC().Format(timeLayout))
-}
-
 const timeLayout = "2006-01-02T15:04:05.000Z"
 
 func objectName(name string, number int) string {

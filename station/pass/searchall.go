@@ -1,6 +1,7 @@
 package pass
 
 import (
+	"cmp"
 	"context"
 	"fmt"
 	"runtime"
@@ -110,17 +111,24 @@ func (w *worker) spacecraft(i int) ([]record, error) {
 	if err != nil || e == nil {
 		return nil, err
 	}
-	if err := w.finder.aimAt(e, w.job.Window); err != nil {
+	spans, err := within(e, w.job.Window)
+	if err != nil {
 		return nil, err
 	}
 	w.records = w.records[:0]
-	for site, k := range w.skylines {
-		first := len(w.records)
-		w.records = w.finder.find(k, w.records)
-		for n := first; n < len(w.records); n++ {
-			w.records[n].craft, w.records[n].site = uint32(i), uint32(site)
+	for _, span := range spans {
+		w.finder.aimAt(e, span)
+		for site, k := range w.skylines {
+			first := len(w.records)
+			w.records = w.finder.find(k, w.records)
+			for n := first; n < len(w.records); n++ {
+				w.records[n].craft, w.records[n].site = uint32(i), uint32(site)
+			}
+			w.records = w.kept(e, w.records, first)
 		}
-		w.records = w.kept(e, w.records, first)
+	}
+	if len(spans) > 1 {
+		slices.SortStableFunc(w.records, func(a, b record) int { return cmp.Compare(a.site, b.site) })
 	}
 	return slices.Clone(w.records), nil
 }
