@@ -64,6 +64,12 @@ func TestEverything(t *testing.T) {
 		{"boresight by a vector", math.Round(s.Spacecraft[1].Transmitters[2].Body.Boresight.OffZ.Degrees() * 1e6), 36869898.0},
 		{"turn", s.Spacecraft[1].Transmitters[2].Body.Turn, 30 * unit.Degree},
 		{"boresight by angles", s.Spacecraft[1].Transmitters[3].Body.Boresight, downlink.BodyDirection{OffZ: 25 * unit.Degree, AroundZ: -90 * unit.Degree}},
+		{"EIRP in dBm", *s.Spacecraft[1].Transmitters[4].EIRP, unit.LevelDBW(6)},
+		{"licensed EIRP in dBm", *s.Licences[1].HighestEIRP, unit.LevelDBW(10)},
+		{"latitude in minutes", math.Round(s.Stations[3].Site.Latitude.Degrees() * 1e9), -54.51e9},
+		{"longitude in minutes", s.Stations[3].Site.Longitude, -3.25 * unit.Degree},
+		{"locator", [...]float64{math.Round(s.Stations[2].Site.Latitude.Degrees() * 1e6), math.Round(s.Stations[2].Site.Longitude.Degrees() * 1e6)},
+			[...]float64{52e6 + 2.5e6/60 + 1.25e6/60, math.Round(4e6 + 2.5e6/60)}}, // second row up, first column: the middle of 5' by 2.5'
 		{"tilt", *craft.Transmitters[1].Polarization.Tilt, 45 * unit.Degree},
 		{"power", uhf.Power, unit.LevelDBm(30)},
 		{"table", uhf.Pattern.Table[1], downlink.PatternPoint{OffBoresight: 90 * unit.Degree, Gain: -1}},
@@ -118,7 +124,7 @@ func TestEverything(t *testing.T) {
 			Acknowledge: recorder.Acknowledge{Every: 15, Delay: 0.5}, LockOn: 4, FrameLoss: 0.001,
 			Data: []scenario.RecorderData{
 				{Name: "telemetry", BytesPerSecond: 250, OnBoard: 1e6, OnBoardAge: 600},
-				{Name: "images", BytesPerOrbit: 1.5e9, AfterNode: 600, Lasting: 900},
+				{Name: "images", BytesPerOrbit: 1.5 * (1 << 30), AfterNode: 600, Lasting: 900},
 			},
 		}},
 		{"rate plan", craft.RatePlan, scenario.RatePlan{

@@ -13,7 +13,7 @@ import (
 var (
 	licenceKeys = []string{
 		"name", "spacecraft", "transmitter", "stations", "least_elevation_to_radiate_deg", "least_elevation_to_receive_deg",
-		"blocked_sectors", "highest_eirp_dbw", "widest_bandwidth_mhz", "band_mhz", "hours_utc",
+		"blocked_sectors", "highest_eirp_dbw", "highest_eirp_dbm", "widest_bandwidth_mhz", "band_mhz", "hours_utc",
 	}
 	sectorKeys = []string{"from_azimuth_deg", "to_azimuth_deg", "below_elevation_deg"}
 	hoursKeys  = []string{"from", "to", "days"}
@@ -52,9 +52,8 @@ func (o object) licence(name string) licence.Licence {
 	for _, b := range o.objects("blocked_sectors", "sectors", maxParts, sectorKeys) {
 		l.Sectors = append(l.Sectors, b.sector())
 	}
-	if v, ok := o.number("highest_eirp_dbw", span{low: -200, high: 200, unit: "dBW"}); ok {
-		level := unit.LevelDBW(v)
-		l.HighestEIRP = &level
+	if which, given := o.exclusive("highest_eirp_dbw", "highest_eirp_dbm"); given {
+		l.HighestEIRP = o.level(which)
 	}
 	l.Widest = unit.Frequency(o.numberOr("widest_bandwidth_mhz", above(0, 1e6, "MHz"), 0)) * unit.Megahertz
 	if band, ok := o.two("band_mhz", frequencyMHz); ok {

@@ -51,7 +51,10 @@ func (o object) recorder() *Recorder {
 		return nil
 	}
 	r.about = o.about + ", recorder"
-	out := &Recorder{Capacity: r.required("capacity_bytes", above(0, 1e15, "B"), "what it holds")}
+	out := &Recorder{Capacity: r.bytesOr("capacity_bytes", above(0, 1e15, "B"), 0)}
+	if !r.has("capacity_bytes") {
+		r.missing("capacity_bytes", "what it holds, "+above(0, 1e15, "B").allowed())
+	}
 	if w, _ := r.word("when_full", "lose_new", "overwrite_oldest"); w == "overwrite_oldest" {
 		out.WhenFull = recorder.Overwrite
 	}
@@ -100,13 +103,13 @@ func (o object) recorderData() []RecorderData {
 			d.BytesPerSecond = it.numberOr(which, bitsASecond, 0) / 8
 			it.useless("beside rate_bps: the data are made all the time", "after_node_s", "lasting_s")
 		case which == "bytes_per_orbit":
-			d.BytesPerOrbit = it.numberOr(which, above(0, 1e15, "B"), 0)
+			d.BytesPerOrbit = it.bytesOr(which, above(0, 1e15, "B"), 0)
 			d.AfterNode = it.numberOr("after_node_s", atLeast(0, secondsInAWeek, "s"), 0)
 			d.Lasting = it.required("lasting_s", above(0, secondsInAWeek, "s"), "for how long they are made in each orbit")
 		default:
 			it.useless("without bytes_per_orbit", "after_node_s", "lasting_s")
 		}
-		d.OnBoard = it.numberOr("on_board_bytes", atLeast(0, 1e15, "B"), 0)
+		d.OnBoard = it.bytesOr("on_board_bytes", atLeast(0, 1e15, "B"), 0)
 		d.OnBoardAge = it.numberOr("on_board_age_s", atLeast(0, 1e8, "s"), 0)
 		out = append(out, d)
 	}

@@ -27,7 +27,7 @@ func (r *reader) sizing(top object, s *Scenario) {
 	}
 	o.number("days", above(0, 36_525, "d"))
 	q := o.child("requirements", requirementKeys)
-	q.number("bytes_per_day", above(0, 1e18, "B"))
+	q.bytes("bytes_per_day", above(0, 1e18, "B"))
 	q.number("availability_percent", above(0, 100, "%"))
 	q.number("longest_gap_h", above(0, 876_600, "h"))
 	q.number("latency_p95_h", above(0, 876_600, "h"))

@@ -4,14 +4,13 @@ import (
 	"time"
 	_ "time/tzdata" // time zones on machines that have no table of them
 
-	"slantwise/cmd/internal/scenario/tree"
 	"slantwise/downlink/propagation"
 	"slantwise/orbit/unit"
 	"slantwise/station"
 )
 
 var stationKeys = []string{
-	"name", "latitude_deg", "longitude_deg", "altitude_m", "geoid_height_m", "time_zone", "minimum_elevation_deg",
+	"name", "locator", "latitude_deg", "longitude_deg", "altitude_m", "geoid_height_m", "time_zone", "minimum_elevation_deg",
 	"horizon_mask", "horizon_mask_file", "horizon_mask_kind", "merge_gap_s", "climate", "antennas", "uplink", "ground_line_bps",
 }
 
@@ -47,8 +46,7 @@ func (r *reader) stations(top object, around *propagation.Environment) []Station
 
 func (o object) site(name string) station.Site {
 	s := station.Site{Name: name}
-	s.Latitude = unit.Angle(o.required("latitude_deg", span{low: -90, high: 90, unit: "deg", next: "north is positive, south negative"}, "the latitude")) * unit.Degree
-	s.Longitude = unit.Angle(o.longitude()) * unit.Degree
+	o.place(&s)
 	s.Altitude = unit.Length(o.zeroLeftOut("altitude_m", span{low: -500, high: 9000, unit: "m", next: "give metres above the WGS-84 ellipsoid"}))
 	s.GeoidHeight = unit.Length(o.zeroLeftOut("geoid_height_m", span{low: -120, high: 120, unit: "m"}))
 	s.TimeZone = o.timeZone()
@@ -56,18 +54,6 @@ func (o object) site(name string) station.Site {
 	s.Mask = o.mask()
 	s.MergeGap = time.Duration(o.numberOr("merge_gap_s", atLeast(0, 86_400, "s"), 0) * float64(time.Second))
 	return s
-}
-
-// longitude takes -180 to 180 alone; for a value up to 360 it says what to write.
-func (o object) longitude() float64 {
-	in := span{low: -180, high: 180, unit: "deg", next: "east is positive, west negative"}
-	n := o.get("longitude_deg")
-	if n != nil && n.Kind == tree.Number && plainNumber.MatchString(n.Text) {
-		if v := parsePlain(n.Text); v > 180 && v <= 360 {
-			in.next = "longitudes of 0 to 360 deg are not taken: write " + figure(roundTo(v-360, 1e9)) + " for " + n.Text
-		}
-	}
-	return o.required("longitude_deg", in, "the longitude")
 }
 
 func (o object) timeZone() *time.Location {

@@ -1,12 +1,14 @@
 package scenario
 
 import (
+	"strings"
+
 	"slantwise/downlink"
 	"slantwise/orbit/unit"
 )
 
 var transmitterKeys = []string{
-	"name", "frequency_mhz", "power_w", "power_dbm", "power_dbw", "eirp_dbw", "line_loss_db", "antenna",
+	"name", "frequency_mhz", "power_w", "power_dbm", "power_dbw", "eirp_dbw", "eirp_dbm", "line_loss_db", "antenna",
 	"attitude", "attitude_probability", "spin", "polarization", "axial_ratio_db", "polarization_tilt_deg", "modes",
 	"other_polarization_in_use", "implementation_loss_db", "required_margin_db", "extra_losses", "allotted_bandwidth_mhz", "highest_data_rate_bps",
 	"eirp_is_greatest", "spectrum_peak_db_hz",
@@ -50,7 +52,7 @@ func (r *reader) transmitter(o object, name string) downlink.Transmitter {
 	t.HighestRate = unit.BitRate(o.numberOr("highest_data_rate_bps", bitsASecond, 0))
 	t.EIRPIsGreatest = o.flag("eirp_is_greatest")
 	if t.EIRP == nil {
-		o.useless("without eirp_dbw", "eirp_is_greatest")
+		o.useless("without a stated EIRP", "eirp_is_greatest")
 	}
 	if v, ok := o.number("spectrum_peak_db_hz", span{low: -200, high: 0, unit: "dB(1/Hz)", next: "it is the peak density over the whole power"}); ok {
 		peak := unit.DB(v)
@@ -79,17 +81,14 @@ func (o object) zeroLeftOut(key string, in span) float64 {
 
 // radiatedPower reads power, line loss and antenna, or the EIRP in their place.
 func (o object) radiatedPower(t *downlink.Transmitter) {
-	which, given := o.exclusive("power_w", "power_dbm", "power_dbw", "eirp_dbw")
+	which, given := o.exclusive("power_w", "power_dbm", "power_dbw", "eirp_dbw", "eirp_dbm")
 	if !given {
-		o.missing("power_w", "one of power_w, power_dbm, power_dbw, eirp_dbw")
+		o.missing("power_w", "one of power_w, power_dbm, power_dbw, eirp_dbw, eirp_dbm")
 		return
 	}
-	if which == "eirp_dbw" {
-		if v, ok := o.number(which, span{low: -200, high: 200, unit: "dBW"}); ok {
-			level := unit.LevelDBW(v)
-			t.EIRP = &level
-		}
-		o.useless("beside eirp_dbw, which holds power, line loss and antenna gain", "line_loss_db", "antenna")
+	if which == "eirp_dbw" || which == "eirp_dbm" {
+		t.EIRP = o.level(which)
+		o.useless("beside "+which+", which holds power, line loss and antenna gain", "line_loss_db", "antenna")
 		return
 	}
 	t.Power = o.power(which)
@@ -105,10 +104,29 @@ func (o object) power(key string) unit.Level {
 			o.addAll(o.get(key), key, err)
 			return level
 		}
-	case "power_dbm":
-		return unit.LevelDBm(o.numberOr(key, span{low: -170, high: 120, unit: "dBm"}, 0))
-	case "power_dbw":
-		return unit.LevelDBW(o.numberOr(key, span{low: -200, high: 90, unit: "dBW"}, 0))
+	case "power_dbm", "power_dbw":
+		if l := o.level(key); l != nil {
+			return *l
+		}
 	}
 	return unit.Level{}
+}
+
+// level reads a power in dBm or dBW, by the end of its key, and tells the other and the
+// watts; nil where it is not there or wrong.
+func (o object) level(key string) *unit.Level {
+	in, of := span{low: -200, high: 200, unit: "dBW"}, unit.LevelDBW
+	if strings.HasPrefix(key, "power") {
+		in.high = 90 // what a transmitter may have
+	}
+	if strings.HasSuffix(key, "_dbm") {
+		in, of = span{low: in.low + 30, high: in.high + 30, unit: "dBm"}, unit.LevelDBm
+	}
+	v, ok := o.number(key, in)
+	if !ok {
+		return nil
+	}
+	l := of(v)
+	o.assume("%s %s understood as %s dBm, %s dBW, %.4g W", key, figure(v), figure(roundTo(l.DBm(), 1e6)), figure(roundTo(l.DBW(), 1e6)), l.Watts())
+	return &l
 }
