@@ -20,7 +20,7 @@ var covarianceNames = [6]string{"radial position", "position along", "position a
 type CovarianceError struct {
 	Row    string  // in plain words
 	Number int     // of the row, from 1
-	Pivot  float64 // what is left of the row's variance when the rows before it are known
+	Pivot  float64 // what is left of the row's variance when the rows before it are known, in m² or m²/s²
 	Detail string  // in place of the pivot where that is not the fault
 }
 
@@ -29,8 +29,12 @@ func (e *CovarianceError) Error() string {
 	if e.Detail != "" {
 		return fmt.Sprintf("covariance: row %d (%s): %s", e.Number, e.Row, e.Detail)
 	}
-	return fmt.Sprintf("covariance: row %d (%s): its pivot is %.3g, and a covariance has none below 0: the matrix is not positive; check signs, units and the order of the rows",
-		e.Number, e.Row, e.Pivot)
+	square := "m²"
+	if e.Number > 3 {
+		square = "m²/s²"
+	}
+	return fmt.Sprintf("covariance: row %d (%s): its pivot is %.3g %s, and a covariance has none below 0: the matrix is not positive; check signs, units and the order of the rows",
+		e.Number, e.Row, e.Pivot, square)
 }
 
 // pivotDoubt is how far a pivot may fall below 0 by the rounding of printed figures,

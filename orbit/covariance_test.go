@@ -138,8 +138,8 @@ func TestCovarianceNotPositive(t *testing.T) {
 		name, want string
 		spoil      func(*Covariance)
 	}{
-		{"negative variance", "row 3 (position across): its pivot is -900", func(c *Covariance) { c[2][2] = -900 }},
-		{"correlation above one", "row 2 (position along): its pivot is -8.1e+03", func(c *Covariance) { c[1][0] = -6000 }},
+		{"negative variance", "row 3 (position across): its pivot is -900 m²", func(c *Covariance) { c[2][2] = -900 }},
+		{"correlation above one", "row 2 (position along): its pivot is -8.1e+03 m²", func(c *Covariance) { c[1][0] = -6000 }},
 		{"correlated with what is known exactly", "row 2 (position along): it goes with the radial position, which has no variance", func(c *Covariance) { c[0][0] = 0 }},
 		{"not a number", "row 4 (radial velocity): number 2 is not finite", func(c *Covariance) { c[3][1] = math.NaN() }},
 		{"kilometres taken for metres", "row 2 (position along): a standard deviation of 1.2e+05 km", func(c *Covariance) { c[1][1] = 1.44e16 }},

@@ -11,7 +11,7 @@ import (
 var antennaKeys = []string{
 	"name", "kind", "diameter_m", "efficiency", "surface_rms_mm", "blockage_fraction", "beamwidth_factor_deg",
 	"gain_dbi", "beamwidth_deg", "g_over_t_db_k", "g_over_t_elevation_deg", "measured_on", "measured_weather",
-	"boresight_azimuth_deg", "boresight_elevation_deg", "pointing_error_deg",
+	"boresight_azimuth_deg", "boresight_elevation_deg", "pointing_error_deg", "follows",
 	"polarization", "axial_ratio_db", "polarization_tilt_deg", "bands_mhz", "feed_loss_db", "extra_losses", "noise", "transmit",
 }
 
@@ -41,6 +41,7 @@ func (o object) antenna(name string) station.Antenna {
 	o.measured(&a)
 	o.boresight(&a)
 	a.PointingRMS = unit.Angle(o.zeroLeftOut("pointing_error_deg", atLeast(0, 180, "deg"))) * unit.Degree
+	a.Follows = o.follows(a.Kind)
 	a.Polarization = o.polarization()
 	a.Bands = o.bands()
 	a.FeedLoss = unit.DB(o.zeroLeftOut("feed_loss_db", lossDB))
@@ -51,6 +52,18 @@ func (o object) antenna(name string) station.Antenna {
 		o.addAll(o.node, "", a.Validate())
 	}
 	return a
+}
+
+// follows reads by what a steered antenna is led.
+func (o object) follows(kind station.AntennaKind) station.Follows {
+	if kind == station.Fixed {
+		o.useless("with kind: fixed, which is not steered", "follows")
+		return station.FollowsPrediction
+	}
+	if w, _ := o.word("follows", "prediction", "signal"); w == "signal" {
+		return station.FollowsSignal
+	}
+	return station.FollowsPrediction
 }
 
 // aperture reads the keys from which a dish's gain and beamwidth are worked out.

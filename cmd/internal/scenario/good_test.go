@@ -14,6 +14,7 @@ import (
 	"slantwise/downlink/rateplan"
 	"slantwise/downlink/recorder"
 	"slantwise/downlink/tolerance"
+	"slantwise/orbit"
 	"slantwise/orbit/elements"
 	"slantwise/orbit/unit"
 	"slantwise/station"
@@ -147,6 +148,11 @@ func TestEverything(t *testing.T) {
 			Polarization: &station.Polarization{Kind: station.LeftHandCircular, AxialRatio: &ratio},
 		}},
 		{"transmit gain", dish.Transmit.Gain.Value(90 * unit.Degree), 35.5},
+		{"probability of the pointing loss", craft.Uncertainty.Probability, 0.75},
+		{"covariance", craft.Uncertainty.Covariances[0].Covariance[1][0], -2400.0},
+		{"uncertainty across, from the scenario's own", s.Spacecraft[1].Uncertainty.Rule.Across, orbit.Growth{AtEpoch: 250, PerDay: 62.5}},
+		{"uncertainty along, its own", s.Spacecraft[1].Uncertainty.Rule.Along, orbit.Growth{AtEpoch: 2000, PerDay: 3000}},
+		{"follows", dish.Follows, station.FollowsSignal},
 		{"uplink", s.Stations[0].Uplink, true},
 		{"no uplink", s.Stations[1].Uplink, false},
 		{"ground line", s.Stations[0].Line, unit.BitRate(8e6)},

@@ -39,7 +39,7 @@ func TestEveryKeyIsRead(t *testing.T) {
 		topKeys, windowKeys, earthKeys, spacecraftKeys, transmitterKeys, spinKeys, patternKeys, modeKeys, lossDissipativeKeys,
 		stationKeys, antennaKeys, noiseKeys, stageKeys, sizingKeys, requirementKeys, marginAtKeys,
 		uplinkKeys, transmitKeys, pathKeys, climateKeys, levelKeys, lognormalKeys, lowPathKeys,
-		ratePlanKeys, licenceKeys, sectorKeys, hoursKeys, recorderKeys, recorderDataKeys, controlKeys, toleranceKeys, criterionKeys,
+		ratePlanKeys, licenceKeys, sectorKeys, hoursKeys, recorderKeys, recorderDataKeys, craftUncertaintyKeys, covarianceKeys, controlKeys, toleranceKeys, criterionKeys,
 	} {
 		for _, k := range keys {
 			if !found[k] && k != "end_utc" { // which stands in place of length_h

@@ -54,6 +54,7 @@ type Spacecraft struct {
 	Uplinks      []downlink.Receiver    // may be empty: nothing is known of commanding
 	Recorder     *Recorder              // nil: none is given
 	RatePlan     RatePlan               // one mode a pass where none is given
+	Uncertainty  *Uncertainty           // of its position; nil: the scenario states nothing
 }
 
 // ElementsAt returns the element set to be used at t by the scenario's choice, with

@@ -9,7 +9,7 @@ import (
 	"slantwise/orbit/elements"
 )
 
-var spacecraftKeys = []string{"name", "element_set", "transmitters", "recorder", "rate_plan", "uplinks"}
+var spacecraftKeys = []string{"name", "element_set", "transmitters", "recorder", "rate_plan", "uplinks", "position_uncertainty"}
 
 // spacecraft reads the spacecraft, or takes every object of the element files where
 // the key is left out.
@@ -20,6 +20,7 @@ func (r *reader) spacecraft(top object, s *Scenario) []Spacecraft {
 	}
 	items := top.objects("spacecraft", "spacecraft", maxSpacecraft, spacecraftKeys)
 	called := names("spacecraft", items)
+	all := top.uncertainty()
 	out := make([]Spacecraft, len(items))
 	for i, o := range items {
 		o.about = "spacecraft " + called[i]
@@ -27,6 +28,7 @@ func (r *reader) spacecraft(top object, s *Scenario) []Spacecraft {
 		out[i].Uplinks = r.uplinks(o, out[i].Transmitters)
 		out[i].Recorder = o.recorder()
 		out[i].RatePlan = o.ratePlan(&out[i])
+		out[i].Uncertainty = o.craftUncertainty(all)
 		if r.need != NeedOrbits {
 			o.elementSetName()
 			continue
@@ -94,6 +96,7 @@ func (r *reader) everyObject(top object, s *Scenario, middle time.Time) []Spacec
 	}
 	chosen := elements.Choose(s.Sets, s.Choice, middle)
 	top.assume("spacecraft left out: all %d objects of the element files, without transmitter", len(chosen))
+	all := top.uncertainty()
 	byObject := map[string][]orbit.Elements{}
 	for _, el := range s.Sets {
 		byObject[objectKey(el)] = append(byObject[objectKey(el)], el)
@@ -109,7 +112,7 @@ func (r *reader) everyObject(top object, s *Scenario, middle time.Time) []Spacec
 		if count[name] == 2 {
 			top.warn("several objects are named %s; what names one of them means the first", quote(name))
 		}
-		out[i] = Spacecraft{Name: name, Elements: c, Candidates: byObject[objectKey(c.Elements)], Choice: s.Choice}
+		out[i] = Spacecraft{Name: name, Uncertainty: all, Elements: c, Candidates: byObject[objectKey(c.Elements)], Choice: s.Choice}
 		named := top
 		named.about = "spacecraft " + name
 		named.tellAge(c)
