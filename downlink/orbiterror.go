@@ -146,6 +146,17 @@ func (l *Link) unsure(p *Profile) []Interval {
 	return p.within(room, -(l.beamwidth / 2).Degrees())
 }
 
+// LeastHeight returns how near a track comes to the site at most: its least distance from the
+// Earth's centre over its first day, less the site's own.
+func (l *Link) LeastHeight(track Track) unit.Length {
+	least := math.Inf(1)
+	for s := 0.0; s <= min(track.Span(), 86400); s += 30 {
+		p := track.StateAt(s).Position
+		least = min(least, p.Norm())
+	}
+	return unit.Length(least - l.spec.Frame.Origin.Norm())
+}
+
 // TooNarrowFrom returns from when on the beam is too narrow to be sure of: the first
 // instant of [from, to] at which the pointing error of a pass straight overhead, at a
 // height over the site, stays inside the half-power points with less than

@@ -5,7 +5,9 @@ import (
 
 	"github.com/spf13/cobra"
 
+	"slantwise/cmd/internal/scenario"
 	"slantwise/orbit/unit"
+	"slantwise/station/pass"
 )
 
 // budgetOptions is what the command line says.
@@ -95,7 +97,7 @@ func runBudget(env *Env, o *budgetOptions) error {
 	if err != nil {
 		return err
 	}
-	c, err := chooseLink(s, o.who)
+	c, err := chooseLink(s, o.who, o.flight(s))
 	if err != nil {
 		return err
 	}
@@ -125,6 +127,20 @@ func runBudget(env *Env, o *budgetOptions) error {
 	}
 	return writeBudgetTable(env, r)
 }
+
+// flight is when the orbit is flown; zero for a stated geometry.
+func (o *budgetOptions) flight(s *scenario.Scenario) pass.Window {
+	switch {
+	case o.stated.given():
+		return pass.Window{}
+	case !o.at.IsZero():
+		return flightAt(o.at)
+	}
+	return pass.Window{From: s.Window.Start, To: s.Window.End}
+}
+
+// flightAt is the flight for a budget at one instant.
+func flightAt(at time.Time) pass.Window { return pass.Window{From: at, To: at.Add(time.Second)} }
 
 // check refuses flags that contradict each other.
 func (o *budgetOptions) check() error {

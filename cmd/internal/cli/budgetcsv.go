@@ -17,9 +17,12 @@ func writeBudgetCSV(w io.Writer, r *budgetResult) error {
 	header = append(header, "received_power_dbm", "power_flux_density_dbw_m2", "system_noise_k", "g_over_t_db_k", "c_n0_dbhz",
 		"eb_n0_db", "margin_db", "margin_over_required_db", "data_rate_bps", "achievable_rate_bps", "achievable_rate_limit", "usable",
 		"c_i_other_polarization_db", "sun_off_beam_deg", "moon_off_beam_deg", pathMissing)
-	body := r.link.HasBodyAngles()
+	body, uncertain := r.link.HasBodyAngles(), r.orbit != nil
 	if body {
 		header = append(header, "around_boresight_deg", "body_off_z_deg", "body_around_z_deg")
+	}
+	if uncertain {
+		header = append(header, "orbit_pointing_along_deg", "orbit_pointing_deg", "doppler_spread_hz", "pointing_error_95_deg")
 	}
 	missing := strings.Join(r.sky.missing, " ")
 	return writeCSV(w, header, func(yield func([]string) bool) {
@@ -27,6 +30,9 @@ func writeBudgetCSV(w io.Writer, r *budgetResult) error {
 			row := append(budgetRow(b), missing)
 			if body {
 				row = append(row, fixed(b.AroundBoresight.Degrees(), 6), fixed(b.BodyOffZ.Degrees(), 6), fixed(b.BodyAroundZ.Degrees(), 6))
+			}
+			if uncertain {
+				row = append(row, fixed(b.OrbitAlong.Degrees(), 6), fixed(b.OrbitTotal.Degrees(), 6), fixed(b.DopplerSpread.Hertz(), 3), fixed(b.SureError.Degrees(), 6))
 			}
 			if !yield(row) {
 				return

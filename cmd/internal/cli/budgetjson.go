@@ -32,6 +32,8 @@ type budgetJSON struct {
 	Antenna      string           `json:"antenna"`
 	Mode         *string          `json:"mode"`
 	Elements     *budgetElements  `json:"elements"`
+	Uncertainty  *string          `json:"position_uncertainty"`     // where its figures come from; null: the position is taken as exact
+	NarrowFrom   *string          `json:"beam_too_narrow_from_utc"` // for a pass overhead; null: not known, or not within 30 days of the window
 	Pass         *budgetPass      `json:"pass"`
 	Path         budgetPath       `json:"path"`
 	Samples      []budgetSample   `json:"samples"`
@@ -63,6 +65,11 @@ type budgetPass struct {
 	ClearModeBytes  number           `json:"clear_sky_mode_bytes"`
 	ClearAchievable number           `json:"clear_sky_achievable_bytes"`
 	SunInBeam       []budgetInterval `json:"sun_in_beam"`
+	AOSPlusMinus    number           `json:"aos_plus_minus_s"` // one standard deviation, as the next two
+	LOSPlusMinus    number           `json:"los_plus_minus_s"`
+	MaxElPlusMinus  number           `json:"max_elevation_plus_minus_deg"`
+	Existence       number           `json:"existence_probability"`
+	BeamUnsure      []budgetInterval `json:"beam_too_narrow"`
 }
 
 type budgetInterval struct {
@@ -117,6 +124,10 @@ type budgetSample struct {
 	AchievableLimit  string        `json:"achievable_rate_limit"`
 	Usable           bool          `json:"usable"`
 	Cautions         []string      `json:"cautions"`
+	OrbitAlongDeg    nano          `json:"orbit_pointing_along_deg"`
+	OrbitTotalDeg    nano          `json:"orbit_pointing_deg"`
+	DopplerSpreadHz  nano          `json:"doppler_spread_hz"`
+	SureErrorDeg     nano          `json:"pointing_error_95_deg"`
 }
 
 // budgetOut makes the JSON result.
@@ -139,10 +150,15 @@ func budgetOut(r *budgetResult) budgetJSON {
 	if e := r.elements; e != nil {
 		out.Elements = &budgetElements{e.CatalogNumber, utc(e.Epoch), num(e.Age.Hours()/24, 4)}
 	}
+	if r.orbit != nil {
+		basis := r.orbit.Uncertainty.Basis()
+		out.Uncertainty = &basis
+	}
 	if p := r.pass; p != nil {
 		out.Pass = &budgetPass{utc(p.AOS), utc(p.Culmination), utc(p.LOS), num(p.MaxElevation.Degrees(), 4), nil,
-			num(r.volume.ModeBytes, 0), num(r.volume.AchievableBytes, 0), num(math.NaN(), 0), num(math.NaN(), 0), intervalsOut(r.sunInBeam)}
+			num(r.volume.ModeBytes, 0), num(r.volume.AchievableBytes, 0), num(math.NaN(), 0), num(math.NaN(), 0), intervalsOut(r.sunInBeam), num(math.NaN(), 3), num(math.NaN(), 3), num(math.NaN(), 4), num(math.NaN(), 4), []budgetInterval{}}
 		out.Pass.Closes = intervalsOut(r.volume.Closes)
+		r.surety.into(&out)
 		if v := r.clearVolume; v != nil {
 			out.Pass.ClearModeBytes, out.Pass.ClearAchievable = num(v.ModeBytes, 0), num(v.AchievableBytes, 0)
 		}
@@ -173,6 +189,7 @@ func sampleOut(b *downlink.Budget) budgetSample {
 		EbN0: nano(b.EbN0), RequiredEbN0: nano(b.RequiredEbN0), Margin: nano(b.Margin), MarginOver: nano(b.MarginOver),
 		DataRate: nano(ifAny(float64(b.DataRate))), AchievableRate: nano(b.AchievableRate), AchievableLimit: b.AchievableLimit.String(),
 		Usable: b.Usable, Cautions: append([]string{}, b.Cautions...),
+		OrbitAlongDeg: nano(b.OrbitAlong.Degrees()), OrbitTotalDeg: nano(b.OrbitTotal.Degrees()), DopplerSpreadHz: nano(b.DopplerSpread), SureErrorDeg: nano(b.SureError.Degrees()),
 	}
 	if !b.Time.IsZero() {
 		t := utc(b.Time)

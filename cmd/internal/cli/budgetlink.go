@@ -8,6 +8,7 @@ import (
 	"slantwise/downlink"
 	"slantwise/downlink/modem"
 	"slantwise/station"
+	"slantwise/station/pass"
 )
 
 // chosenLink is one link of the scenario, prepared.
@@ -20,13 +21,15 @@ type chosenLink struct {
 	mode        *modem.Mode // nil: the transmitter has none
 	link        *downlink.Link
 	sky         *skyLink
-	refraction  *station.Refraction // of the station; nil: not traced yet
-	clear       *downlink.Link      // the same under a clear sky; nil where link is that already
+	refraction  *station.Refraction  // of the station; nil: not traced yet
+	orbit       *downlink.OrbitError // nil: the position is taken as exact
+	clear       *downlink.Link       // the same under a clear sky; nil where link is that already
 }
 
 // chooseLink finds what the names name and prepares the link. What the scenario
-// holds several of must be named, but for a transmitter without modes.
-func chooseLink(s *scenario.Scenario, n linkNames) (*chosenLink, error) {
+// holds several of must be named, but for a transmitter without modes. flight is when its orbit is
+// flown; zero for none, which has no error either.
+func chooseLink(s *scenario.Scenario, n linkNames, flight pass.Window) (*chosenLink, error) {
 	var c chosenLink
 	var err error
 	if c.spacecraft, err = pick("spacecraft", n.spacecraft, s.Spacecraft, spacecraftName); err != nil {
@@ -46,7 +49,9 @@ func chooseLink(s *scenario.Scenario, n linkNames) (*chosenLink, error) {
 			return nil, err
 		}
 	}
-	if err := c.prepare(newSkies(s)); err != nil {
+	k := newSkies(s)
+	k.flight = flight
+	if err := c.prepare(k); err != nil {
 		return nil, &InputError{Err: err}
 	}
 	return &c, nil
@@ -63,7 +68,7 @@ func (c *chosenLink) notes(s *scenario.Scenario, flown bool) []downlink.Note {
 		}
 	}
 	for _, n := range s.Assumptions {
-		if c.touchedBy(n.About) || flown && n.About == "earth" || n.About == "path" {
+		if c.touchedBy(n.About) || flown && n.About == "earth" || n.About == "path" || flown && n.About == "position uncertainty" {
 			out = append(out, downlink.Note{Kind: downlink.Default, Text: n.String()})
 		}
 	}
@@ -75,7 +80,7 @@ func (c *chosenLink) touchedBy(about string) bool {
 	craft := "spacecraft " + c.spacecraft.Name
 	transmitter := craft + ", " + c.kind() + " " + c.transmitter.Name
 	site := "station " + c.station.Site.Name
-	parts := []string{craft, transmitter, transmitter + ", antenna", site, site + ", antenna " + c.antenna.Name}
+	parts := []string{craft, craft + ", position uncertainty", transmitter, transmitter + ", antenna", site, site + ", antenna " + c.antenna.Name}
 	if c.uplink != nil {
 		parts = append(parts, site+", antenna "+c.antenna.Name+", transmit")
 	}
@@ -98,6 +103,9 @@ func (c *chosenLink) prepare(k *skies) error {
 	}
 	clear := k.scenario.Path.ClearSky
 	var err error
+	if c.orbit, err = k.orbitError(c.spacecraft); err != nil {
+		return err
+	}
 	if c.sky, err = c.skyOf(k, clear); err != nil {
 		return err
 	}
@@ -132,5 +140,5 @@ func (c *chosenLink) bareSpec() (downlink.LinkSpec, error) {
 			return downlink.LinkSpec{}, fmt.Errorf("station %s: %w", site.Name, err)
 		}
 	}
-	return downlink.LinkSpec{Transmitter: *c.transmitter, Receiver: c.uplink, Mode: c.mode, Frame: &frame, Refraction: c.refraction, Antenna: c.antenna}, nil
+	return downlink.LinkSpec{Transmitter: *c.transmitter, Receiver: c.uplink, Mode: c.mode, Frame: &frame, Refraction: c.refraction, Antenna: c.antenna, Orbit: c.orbit}, nil
 }

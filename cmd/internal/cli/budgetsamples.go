@@ -24,6 +24,7 @@ type budgetResult struct {
 	// clearVolume is the pass under a clear sky; nil where volume is that already.
 	clearVolume *downlink.Volume
 	sunInBeam   []downlink.Interval
+	surety      *surety // of the pass; nil: the position is taken as exact
 	samples     []*downlink.Budget
 	notes       []downlink.Note
 }
@@ -159,6 +160,9 @@ func (r *budgetResult) fly(eph *orbit.Ephemeris, step time.Duration) error {
 	}
 	r.notes = append(r.notes, told...)
 	r.volume, r.sunInBeam = &profile.Volume, profile.SunInBeam
+	if r.surety, err = r.judge(r.scenario, eph, p, profile); err != nil {
+		return &InputError{Err: err}
+	}
 	if r.clear != nil {
 		fine, err := r.clear.Profile(eph, p.AOS, p.LOS, volumeStep(p.Duration()))
 		if err != nil {

@@ -51,6 +51,11 @@ func (r *budgetResult) writeHead(w *bufio.Writer) {
 	}
 	if p := r.pass; p != nil {
 		line("pass from %s to %s, culmination %.2f deg at %s", utc(p.AOS), utc(p.LOS), p.MaxElevation.Degrees(), utc(p.Culmination))
+		if r.surety != nil {
+			for _, l := range r.surety.lines() {
+				line("%s", l)
+			}
+		}
 		r.writeVolume(line)
 	}
 	fmt.Fprintln(w)
@@ -160,6 +165,10 @@ func (r *budgetResult) results(b *downlink.Budget) [][]string {
 	add("required margin", float64(t.RequiredMargin), 2, "dB", "scenario")
 	add("margin over required", float64(b.MarginOver), 2, "dB", "margin less required margin")
 	add("achievable rate", float64(b.AchievableRate), 0, "bit/s", limitText(b.AchievableLimit))
+	add("orbit's error along the track", b.OrbitAlong.Degrees(), 4, "deg", "direction, one standard deviation")
+	add("orbit's error of the direction", b.OrbitTotal.Degrees(), 4, "deg", "both axes together, root mean square")
+	add("Doppler by the orbit's error", b.DopplerSpread.Hertz(), 1, "Hz", "one standard deviation")
+	add("pointing error kept to", b.SureError.Degrees(), 4, "deg", fmt.Sprintf("orbit and antenna, with probability %g", downlink.SureProbability))
 	return rows
 }
 

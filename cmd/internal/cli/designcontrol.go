@@ -8,6 +8,7 @@ import (
 	"slantwise/cmd/internal/scenario"
 	"slantwise/downlink"
 	"slantwise/downlink/tolerance"
+	"slantwise/station/pass"
 )
 
 type controlOptions struct {
@@ -62,7 +63,11 @@ func runDesignControl(env *Env, o *controlOptions) error {
 	if err != nil {
 		return err
 	}
-	c, err := chooseLink(s, o.who)
+	flight := pass.Window{}
+	if !o.stated.given() {
+		flight = flightAt(o.at)
+	}
+	c, err := chooseLink(s, o.who, flight)
 	if err != nil {
 		return err
 	}

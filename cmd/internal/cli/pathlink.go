@@ -9,6 +9,7 @@ import (
 	"slantwise/downlink/propagation"
 	"slantwise/orbit/unit"
 	"slantwise/station"
+	"slantwise/station/pass"
 )
 
 // skies prepares what lies between the spacecraft and the stations of a scenario, each
@@ -18,6 +19,7 @@ type skies struct {
 	scenario *scenario.Scenario
 	bodies   *downlink.Bodies // nil without a window
 	paths    map[skyKey]*propagation.Path
+	flight   pass.Window // when orbits are flown; zero: they are not
 }
 
 // skyKey tells paths apart.
@@ -29,7 +31,7 @@ type skyKey struct {
 }
 
 func newSkies(s *scenario.Scenario) *skies {
-	k := &skies{scenario: s, paths: map[skyKey]*propagation.Path{}}
+	k := &skies{scenario: s, paths: map[skyKey]*propagation.Path{}, flight: pass.Window{From: s.Window.Start, To: s.Window.End}}
 	if !s.Window.Start.IsZero() {
 		k.bodies = downlink.NewBodies(s.Window.Start, s.Window.End, s.Earth)
 	}

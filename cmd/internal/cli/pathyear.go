@@ -65,7 +65,8 @@ func runPathYear(ctx context.Context, env *Env, o *pathOptions) error {
 		return inputErrorf("path.clear_sky: a sky that is always clear has no statistics; leave it out")
 	}
 	s.Window.End = s.Window.Start.Add(time.Duration(days * 24 * float64(time.Hour))) // Sun and Moon are prepared for it, too
-	c, err := chooseLink(s, linkNames{spacecraft: o.spacecraft, station: o.station, transmitter: o.transmitter, antenna: o.antenna, mode: o.year.mode})
+	// A year's statistics do not age with an element set: no flight, no error of the orbit.
+	c, err := chooseLink(s, linkNames{spacecraft: o.spacecraft, station: o.station, transmitter: o.transmitter, antenna: o.antenna, mode: o.year.mode}, pass.Window{})
 	if err != nil {
 		return err
 	}
