@@ -10,7 +10,8 @@ import (
 )
 
 // writeBudgetCSV writes a row a sample with a column a term. A term's column is its
-// name with the unit; values are those of the budget, losses positive.
+// name with the unit; values are those of the budget, losses positive. Where the
+// scenario states how uncertain the position is, what that does stands in four more.
 func writeBudgetCSV(w io.Writer, r *budgetResult) error {
 	header := []string{"utc", "azimuth_deg", "elevation_deg", "range_km", "off_boresight_deg"}
 	header = append(header, termColumns(r.link.Terms())...)
