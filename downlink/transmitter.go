@@ -35,6 +35,9 @@ type Transmitter struct {
 
 	AllottedBandwidth unit.Frequency // caps the achievable rate; 0: not given
 	HighestRate       unit.BitRate   // information bits; caps the achievable rate; 0: not given
+
+	Oscillator *Oscillator // how far the carrier, or where a receiver listens, is off Frequency; nil: not at all
+	Turnaround *Turnaround // of a transmitter that can be locked to an uplink; nil: it cannot
 }
 
 // Loss is a named loss on the spacecraft's side, a term of its own.

@@ -7,6 +7,9 @@
 // the carrier as sent, in Hz; a receiver that is set to whole steps of its own loses up
 // to half of one, which is counted.
 //
-// Left out: the error of the orbit and of the oscillators; add them to what the
-// receiver must bear.
+// SendFor, Received and Transponded relate what a station sends, what a spacecraft
+// receives and what comes back.
+//
+// Left out: the error of the orbit and what is not known of the oscillators; add them to
+// what the receiver must bear.
 package tuning

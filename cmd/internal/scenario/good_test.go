@@ -141,6 +141,10 @@ func TestEverything(t *testing.T) {
 		{"noise of the spacecraft", craft.Uplinks[1].Noise.AntennaTemperature.Value(0), 250.0},
 		{"G/T of the spacecraft", *craft.Uplinks[2].GOverT, unit.DB(-24.5)},
 		{"no receive antenna", craft.Uplinks[2].AntennaUnknown, true},
+		{"oscillator", *x.Oscillator, downlink.Oscillator{Offset: 850, Drift: -12.0 / 86400, Epoch: time.Date(2026, 9, 10, 0, 0, 0, 0, time.UTC)}},
+		{"ppm", math.Round(craft.Transmitters[1].Oscillator.Offset.Hertz()*1e6) / 1e6, -343.75},
+		{"fitted drift", math.Round(craft.Uplinks[0].Oscillator.Drift*2*86400*1e6) / 1e6, 13.0},
+		{"turnaround", *craft.Transmitters[2].Turnaround, downlink.Turnaround{Uplink: "command", Down: 240, Up: 221}},
 		{"transmit power", single.Transmit.Power, unit.LevelDBm(43)},
 		{"transmit side", *dish.Transmit, station.Transmit{
 			Power: watts(t, 5), LineLoss: 1.2, Bands: []station.Band{{Low: 2025 * unit.Megahertz, High: 2110 * unit.Megahertz}},

@@ -38,7 +38,7 @@ func TestEveryKeyIsRead(t *testing.T) {
 	for _, keys := range [][]string{
 		topKeys, windowKeys, earthKeys, spacecraftKeys, transmitterKeys, spinKeys, patternKeys, modeKeys, lossDissipativeKeys,
 		stationKeys, antennaKeys, noiseKeys, stageKeys, sizingKeys, requirementKeys, marginAtKeys,
-		uplinkKeys, transmitKeys, pathKeys, climateKeys, levelKeys, lognormalKeys, lowPathKeys,
+		uplinkKeys, transmitKeys, oscillatorKeys, measuredKeys, coherentKeys, pathKeys, climateKeys, levelKeys, lognormalKeys, lowPathKeys,
 		ratePlanKeys, licenceKeys, sectorKeys, hoursKeys, recorderKeys, recorderDataKeys, craftUncertaintyKeys, covarianceKeys, controlKeys, toleranceKeys, criterionKeys,
 	} {
 		for _, k := range keys {

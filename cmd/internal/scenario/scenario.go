@@ -57,6 +57,16 @@ type Spacecraft struct {
 	Uncertainty  *Uncertainty           // of its position; nil: the scenario states nothing
 }
 
+// Uplink returns the uplink of a name, nil where there is none.
+func (s *Spacecraft) Uplink(name string) *downlink.Receiver {
+	for i := range s.Uplinks {
+		if s.Uplinks[i].Name == name {
+			return &s.Uplinks[i]
+		}
+	}
+	return nil
+}
+
 // ElementsAt returns the element set to be used at t by the scenario's choice, with
 // its age at t.
 func (s *Spacecraft) ElementsAt(t time.Time) elements.Chosen {

@@ -26,6 +26,7 @@ func (r *reader) spacecraft(top object, s *Scenario) []Spacecraft {
 		o.about = "spacecraft " + called[i]
 		out[i] = Spacecraft{Name: called[i], Choice: s.Choice, Transmitters: r.transmitters(o)}
 		out[i].Uplinks = r.uplinks(o, out[i].Transmitters)
+		r.checkCoherent(o, &out[i])
 		out[i].Recorder = o.recorder()
 		out[i].RatePlan = o.ratePlan(&out[i])
 		out[i].Uncertainty = o.craftUncertainty(all)

@@ -11,7 +11,7 @@ var transmitterKeys = []string{
 	"name", "frequency_mhz", "power_w", "power_dbm", "power_dbw", "eirp_dbw", "eirp_dbm", "line_loss_db", "antenna",
 	"attitude", "attitude_probability", "spin", "polarization", "axial_ratio_db", "polarization_tilt_deg", "modes",
 	"other_polarization_in_use", "implementation_loss_db", "required_margin_db", "extra_losses", "allotted_bandwidth_mhz", "highest_data_rate_bps",
-	"eirp_is_greatest", "spectrum_peak_db_hz",
+	"eirp_is_greatest", "spectrum_peak_db_hz", "oscillator", "coherent",
 }
 
 // Ranges of radio keys; the far ends keep every sum of decibels finite.
@@ -50,6 +50,7 @@ func (r *reader) transmitter(o object, name string) downlink.Transmitter {
 	}
 	t.AllottedBandwidth = unit.Frequency(o.numberOr("allotted_bandwidth_mhz", above(0, 1e6, "MHz"), 0)) * unit.Megahertz
 	t.HighestRate = unit.BitRate(o.numberOr("highest_data_rate_bps", bitsASecond, 0))
+	t.Oscillator, t.Turnaround = o.oscillator(t.Frequency), o.coherent()
 	t.EIRPIsGreatest = o.flag("eirp_is_greatest")
 	if t.EIRP == nil {
 		o.useless("without a stated EIRP", "eirp_is_greatest")

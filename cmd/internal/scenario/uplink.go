@@ -11,7 +11,7 @@ var (
 		"name", "frequency_mhz", "line_loss_db", "antenna", "attitude", "attitude_probability", "spin",
 		"polarization", "axial_ratio_db", "polarization_tilt_deg", "modes",
 		"noise", "g_over_t_db_k", "sensitivity_dbm", "sensitivity_data_rate_bps", "sensitivity_mode",
-		"implementation_loss_db", "required_margin_db", "extra_losses", "allotted_bandwidth_mhz", "highest_data_rate_bps",
+		"implementation_loss_db", "required_margin_db", "extra_losses", "allotted_bandwidth_mhz", "highest_data_rate_bps", "oscillator",
 	}
 	transmitKeys = []string{
 		"power_w", "power_dbm", "power_dbw", "line_loss_db", "bands_mhz", "gain_dbi", "beamwidth_deg",
@@ -57,6 +57,7 @@ func (r *reader) uplink(o object, name string) downlink.Receiver {
 	}
 	u.AllottedBandwidth = unit.Frequency(o.numberOr("allotted_bandwidth_mhz", above(0, 1e6, "MHz"), 0)) * unit.Megahertz
 	u.HighestRate = unit.BitRate(o.numberOr("highest_data_rate_bps", bitsASecond, 0))
+	u.Oscillator = o.oscillator(u.Frequency)
 	if r.faults.count() == before && !r.codingsUnread {
 		o.addAll(o.node, "", u.Validate())
 	}
