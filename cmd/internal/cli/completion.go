@@ -14,6 +14,7 @@ func completeFlags(cmd *cobra.Command, env *Env) {
 		"convert":        elementKinds(),
 		"sort":           passOrders,
 		"horizon":        {"geometric", "apparent"},
+		"locked":         lockedWords,
 		"element-choice": {"newest", "nearest"},
 	}
 	for flag, words := range fixed {

@@ -185,9 +185,9 @@ func (p *pointing) row(at time.Time) pointingRow {
 }
 
 // shift returns the Doppler shift and the frequency that is received, in Hz, to first
-// order: f - f ṙ/c.
+// order: f - f ṙ/c, and where the transmitter's oscillator is off, by that more.
 func (p *pointing) shift(r *pointingRow) (shift, received float64) {
 	f := p.transmitter.Frequency.Hertz()
 	shift = -f * float64(r.look.RangeRate) / unit.SpeedOfLight
-	return shift, f + shift
+	return shift, f + p.transmitter.Oscillator.OffsetAt(r.at).Hertz() + shift
 }
