@@ -5,6 +5,7 @@ import (
 	"math"
 	"strings"
 	"testing"
+	"time"
 )
 
 type frequencyRow struct {
@@ -55,12 +56,15 @@ func TestFrequenciesBothWays(t *testing.T) {
 			}
 		}
 	}
-	// Unlocked: 2456.4 Hz above the carrier on the day, by the line through the three points.
+	// Unlocked: the line through the three points, as numpy's polyfit gives it.
+	first := time.Date(2026, 9, 2, 5, 10, 0, 0, time.UTC)
 	rows, notes := askFrequencies(t, "--transmitter", "S-band")
 	for _, r := range rows {
 		offset := *r.Received/(1-r.Rate/c) - down
-		if r.Sent != nil || math.Abs(offset-2463) > 15 {
-			t.Errorf("at %s the carrier is %.1f Hz off", r.UTC, offset)
+		at, err := time.Parse(time.RFC3339, r.UTC)
+		want := 2313.071260 + 12.009790*at.Sub(first).Hours()/24
+		if err != nil || r.Sent != nil || math.Abs(offset-want) > 0.02 {
+			t.Errorf("at %s the carrier is %.3f Hz off, want %.3f", r.UTC, offset, want)
 		}
 	}
 	if !strings.Contains(notes, "fit to 3 measured") {
