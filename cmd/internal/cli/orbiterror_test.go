@@ -121,3 +121,88 @@ func TestBudgetTableOfAnUncertainOrbit(t *testing.T) {
 		}
 	}
 }
+
+// passes tells the plus-minus in the CSV by a flag alone, in the JSON and the table where the
+// scenario states it, and takes the default rule where it is asked for and not stated.
+func TestPassesPlusMinus(t *testing.T) {
+	ask := []string{"passes", "--spacecraft", "Wagtail 1", "--station", "Skerry Point"}
+	const more = ",aos_plus_minus_s,los_plus_minus_s,max_elevation_plus_minus_deg,existence_probability"
+	_, plain, _ := invoke(t, append(ask, "--format", "csv")...)
+	_, asked, told := invoke(t, append(ask, "--format", "csv", "--plus-minus")...)
+	before, after := strings.Split(plain, "\n"), strings.Split(asked, "\n")
+	if len(before) != len(after) || after[0] != before[0]+more || !strings.Contains(told, "common practice") {
+		t.Fatalf("columns %s; told %s", after[0], told)
+	}
+	for i := 1; i < len(after)-1; i++ {
+		if !strings.HasPrefix(after[i], before[i]+",0.") {
+			t.Errorf("row %d: %s", i, after[i])
+		}
+	}
+	if _, out, _ := invoke(t, append(ask, "--format", "json")...); strings.Contains(out, "plus_minus") {
+		t.Error("the JSON tells of what the scenario does not state")
+	}
+	uncertainDemo(t, "3")
+	_, stated, _ := invoke(t, append(ask, "--format", "csv")...)
+	if stated != plain {
+		t.Error("the CSV changes without its flag")
+	}
+	var list struct {
+		Passes []struct {
+			AOS  float64 `json:"aos_plus_minus_s"`
+			LOS  float64 `json:"los_plus_minus_s"`
+			Sure float64 `json:"existence_probability"`
+		} `json:"passes"`
+	}
+	_, out, _ := invoke(t, append(ask, "--format", "json")...)
+	if err := json.Unmarshal([]byte(out), &list); err != nil {
+		t.Fatal(err)
+	}
+	for i, p := range list.Passes {
+		if math.Abs(p.AOS-0.395) > 0.1 || math.Abs(p.LOS-0.395) > 0.1 || p.Sure < 0.99 {
+			t.Errorf("pass %d: ±%g s, ±%g s, takes place with %g; 3 km at 7.6 km/s are 0.395 s", i, p.AOS, p.LOS, p.Sure)
+		}
+	}
+	if _, table, _ := invoke(t, ask...); !strings.Contains(table, "takes place %") {
+		t.Errorf("no plus-minus in the table\n%s", table)
+	}
+}
+
+// A low pass of an orbit whose plane is known to 500 km alone may not take place, and
+// budget says so.
+func TestGrazingPassIsTold(t *testing.T) {
+	uncertainDemo(t, "0")
+	t.Setenv("SLANTWISE_POSITION_UNCERTAINTY_ACROSS_KM", "500")
+	_, out, _ := invoke(t, budget("--pass", "2026-09-15T16:58:00Z")...)
+	if !strings.Contains(out, "the pass grazes the horizon") || !strings.Contains(out, "takes place with a probability of 0.") {
+		t.Errorf("nothing of a grazing pass in\n%s", out)
+	}
+}
+
+// pointing and budget tell the same of one instant.
+func TestPointingPlusMinus(t *testing.T) {
+	uncertainDemo(t, "3")
+	ask := []string{"pointing", "--spacecraft", "Wagtail 1", "--station", "Skerry Point", "--from", "2026-09-15T00:55:00Z", "--to", "2026-09-15T00:55:00Z"}
+	_, out, _ := invoke(t, append(ask, "--format", "json")...)
+	var p struct {
+		Rows []struct {
+			Along   float64 `json:"pointing_along_plus_minus_deg"`
+			Total   float64 `json:"pointing_plus_minus_deg"`
+			Doppler float64 `json:"doppler_plus_minus_hz"`
+		} `json:"rows"`
+	}
+	if err := json.Unmarshal([]byte(out), &p); err != nil {
+		t.Fatal(err)
+	}
+	b := askSureness(t, budget("--at", "2026-09-15T00:55:00Z")...)
+	if r := p.Rows[0]; math.Abs(r.Along-*b.Samples[0].Along) > 1e-6 || math.Abs(r.Doppler-*b.Samples[0].Doppler) > 1e-2 || r.Total < r.Along {
+		t.Errorf("pointing has ±%g deg and ±%g Hz, budget ±%g deg and ±%g Hz", r.Along, r.Doppler, *b.Samples[0].Along, *b.Samples[0].Doppler)
+	}
+	_, csv, _ := invoke(t, append(ask, "--format", "csv")...)
+	if strings.Contains(csv, "plus_minus") {
+		t.Error("the CSV has the columns without their flag")
+	}
+	_, csv, _ = invoke(t, append(ask, "--format", "csv", "--plus-minus")...)
+	if head, _, _ := strings.Cut(csv, "\n"); !strings.HasSuffix(head, ",sunlit,pointing_along_plus_minus_deg,pointing_plus_minus_deg,doppler_plus_minus_hz") {
+		t.Errorf("columns %s", head)
+	}
+}

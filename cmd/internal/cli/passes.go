@@ -18,6 +18,7 @@ type passesOptions struct {
 	leastElevationDeg    *float64 // nil: any
 	leastDuration        time.Duration
 	sunlit               bool
+	plusMinus            bool
 	sort                 passOrder
 	workers              int
 	format               format
@@ -31,9 +32,16 @@ func newPasses(env *Env) *cobra.Command {
 		Long: `List when each spacecraft stands above the horizon of each station within the window
 of the scenario: the uninterrupted time above the minimum elevation and the horizon
 mask, to the millisecond. A pass that the window cuts is marked, and its time is the
-window's edge. Elevations in the list are geometric.`,
+window's edge. Elevations in the list are geometric.
+
+Where the scenario states position_uncertainty, the table and the JSON tell how sure the
+passes are: one standard deviation of AOS, LOS and the greatest elevation, and the
+probability that the pass takes place at all, under one where it grazes the horizon.
+--plus-minus asks for it in the CSV, too, and takes a rule by the age of the element
+sets where the scenario states none.`,
 		Example: `  slantwise passes
   slantwise passes --station "Skerry Point" --least-elevation-deg 30 --sort elevation
+  slantwise passes --plus-minus --spacecraft "Wagtail 1"
   slantwise passes --sunlit --format csv > passes.csv`,
 		Args: noArgs,
 		RunE: func(cmd *cobra.Command, _ []string) error { return runPasses(cmd.Context(), env, o) },
@@ -44,6 +52,7 @@ window's edge. Elevations in the list are geometric.`,
 	addNumber(fs, &o.leastElevationDeg, "least-elevation-deg", "only passes that culminate at least so `HIGH`, geometric, in degrees")
 	addDuration(fs, &o.leastDuration, "least-duration", 0, "only passes that last at least so long")
 	fs.BoolVar(&o.sunlit, "sunlit", false, "only passes at whose culmination the spacecraft is in full sunlight")
+	fs.BoolVar(&o.plusMinus, "plus-minus", false, "with the plus-minus by the orbit's error, in four more columns")
 	o.sort = orderAOS
 	fs.Var(&o.sort, "sort", "by aos, elevation (highest first), duration (longest first), spacecraft or station")
 	addWorkers(fs, &o.workers, "spacecraft are searched")
@@ -65,6 +74,7 @@ type passSearch struct {
 	spacecraft []scenario.Spacecraft
 	stations   []scenario.Station
 	list       *pass.List
+	sure       *sureList // nil: nothing is known of it
 }
 
 func runPasses(ctx context.Context, env *Env, o passesOptions) error {
@@ -86,8 +96,14 @@ func runPasses(ctx context.Context, env *Env, o passesOptions) error {
 	if len(s.Licences) > 0 {
 		env.note("passes are listed whole; slantwise licence tells what the scenario's licences take from them")
 	}
+	if p.sure, err = p.newSureList(env, s, o.plusMinus); err != nil {
+		return &InputError{Err: err}
+	}
 	if err := p.search(ctx, env, s, o); err != nil {
 		return err
+	}
+	if p.sure != nil {
+		p.sure.tellBasis(env, &p)
 	}
 	return p.write(env, o)
 }
@@ -134,7 +150,7 @@ func (p *passSearch) search(ctx context.Context, env *Env, s *scenario.Scenario,
 			}
 			return e, nil
 		},
-		Window: p.window, Decides: p.decides, Keep: o.keep(), Workers: o.workers,
+		Window: p.window, Decides: p.decides, Keep: p.sure.measuring(o.keep()), Workers: o.workers,
 		Progress: func(n int) { bar.add(n - done); done = n },
 	}
 	for i := range p.stations {
@@ -182,7 +198,7 @@ func (p *passSearch) write(env *Env, o passesOptions) error {
 	at := p.ordered(o.sort)
 	switch o.format {
 	case formatCSV:
-		return p.writeCSV(env.Out, at)
+		return p.writeCSV(env.Out, at, o.plusMinus)
 	case formatJSON:
 		return p.writeJSON(env.Out, at)
 	}

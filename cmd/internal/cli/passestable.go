@@ -26,15 +26,23 @@ func (p *passSearch) writeTable(env *Env, passes iter.Seq[pass.Found]) error {
 	columns = append(columns, textColumn("culmination UTC"), textColumn("LOS UTC"), numberColumn("duration s"),
 		numberColumn("max elevation deg"), numberColumn("AOS azimuth deg"), numberColumn("culmination azimuth deg"),
 		numberColumn("LOS azimuth deg"), numberColumn("least range km"), textColumn("cut"))
+	if p.sure != nil {
+		columns = append(columns, numberColumn("AOS ± s"), numberColumn("LOS ± s"), numberColumn("takes place %"))
+	}
 	var rows [][]string
 	for f := range passes {
 		row := []string{p.spacecraft[f.Spacecraft].Name, p.stations[f.Site].Site.Name, utc(f.AOS)}
 		if local {
 			row = append(row, localTime(f.AOS, p.stations[f.Site].Site.TimeZone))
 		}
-		rows = append(rows, append(row, laterUTC(f.Culmination, f.AOS), laterUTC(f.LOS, f.AOS), fixed(f.Duration().Seconds(), 1),
+		row = append(row, laterUTC(f.Culmination, f.AOS), laterUTC(f.LOS, f.AOS), fixed(f.Duration().Seconds(), 1),
 			fixed(f.MaxElevation.Degrees(), 2), azimuth(f.AOSAzimuth.Degrees(), 1), azimuth(f.CulminationAzimuth.Degrees(), 1),
-			azimuth(f.LOSAzimuth.Degrees(), 1), fixed(f.MinRange.Kilometres(), 1), f.Cut.String()))
+			azimuth(f.LOSAzimuth.Degrees(), 1), fixed(f.MinRange.Kilometres(), 1), f.Cut.String())
+		if p.sure != nil {
+			m := p.sure.of(&f)
+			row = append(row, fixed(m[0], 2), fixed(m[1], 2), fixed(100*m[3], 1))
+		}
+		rows = append(rows, row)
 	}
 	if len(rows) == 0 {
 		_, err := fmt.Fprintf(env.Out, "no passes from %s to %s\n", utc(p.window.From), utc(p.window.To))

@@ -51,8 +51,8 @@ func appendAzimuth(b []byte, deg float64, decimals int) []byte {
 }
 
 // writeCSV writes the list without keeping it as text: a million passes must not
-// take a gigabyte.
-func (p *passSearch) writeCSV(w io.Writer, passes iter.Seq[pass.Found]) error {
+// take a gigabyte. plusMinus adds plusMinusColumns.
+func (p *passSearch) writeCSV(w io.Writer, passes iter.Seq[pass.Found], plusMinus bool) error {
 	craft, stations := p.quoted(csvField)
 	out := bufio.NewWriterSize(w, 1<<16)
 	b := make([]byte, 0, 512)
@@ -62,6 +62,11 @@ func (p *passSearch) writeCSV(w io.Writer, passes iter.Seq[pass.Found]) error {
 			b = append(b, ',')
 		}
 		b = append(b, c...)
+	}
+	if plusMinus {
+		for _, c := range plusMinusColumns {
+			b = append(append(b, ','), c...)
+		}
 	}
 	b = append(b, '\n')
 	for f := range passes {
@@ -75,7 +80,14 @@ func (p *passSearch) writeCSV(w io.Writer, passes iter.Seq[pass.Found]) error {
 		for n := firstPassNumber; n <= lastPassNumber; n++ {
 			b = append(passNumber(b, &f, n), ',')
 		}
-		b = append(append(b, f.Cut.String()...), '\n')
+		b = append(b, f.Cut.String()...)
+		if plusMinus {
+			m := p.sure.of(&f)
+			for n := range m {
+				b = sureNumber(append(b, ','), &m, n)
+			}
+		}
+		b = append(b, '\n')
 	}
 	out.Write(b) // an error stays in the writer until it is flushed
 	if err := out.Flush(); err != nil {
@@ -103,7 +115,11 @@ func (p *passSearch) writeJSON(w io.Writer, passes iter.Seq[pass.Found]) error {
 			b = append(append(append(b, `, "`...), passColumns[n]...), `": `...)
 			b = passNumber(b, &f, n)
 		}
-		b = append(append(append(b, `, "cut": "`...), f.Cut.String()...), `"}`...)
+		b = append(append(append(b, `, "cut": "`...), f.Cut.String()...), '"')
+		if p.sure != nil {
+			b = p.sure.appendFields(b, &f)
+		}
+		b = append(b, '}')
 		if _, err := out.Write(b); err != nil {
 			return fmt.Errorf("write the JSON: %w", err)
 		}

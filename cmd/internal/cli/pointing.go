@@ -19,6 +19,7 @@ type pointingOptions struct {
 	spacecraft, station, transmitter string
 	from, to                         time.Time
 	step                             time.Duration
+	plusMinus                        bool
 	format                           format
 }
 
@@ -32,9 +33,15 @@ another, both included (the last step may be shorter), also below the horizon an
 outside the scenario's window. Rates come from the orbit's own velocity. Azimuth
 counts from true north; apparent elevation is that of the refracted ray (ITU-R P.834),
 and is empty where no ray arrives. Doppler shift and received frequency are those of
-the transmitter's carrier, to first order, and empty where there is no transmitter.`,
+the transmitter's carrier, to first order, and empty where there is no transmitter.
+
+Where the scenario states position_uncertainty, the table and the JSON tell what the
+orbit's error does to the direction and the frequency; --plus-minus asks for it in the
+CSV, too, and takes a rule by the age of the element set where none is stated.`,
 		Example: `  slantwise pointing --spacecraft "Wagtail 1" --station "Skerry Point" \
-    --from 2026-09-15T00:50:00Z --to 2026-09-15T01:00:00Z --step 500ms --format csv`,
+    --from 2026-09-15T00:50:00Z --to 2026-09-15T01:00:00Z --step 500ms --format csv
+  slantwise pointing --spacecraft "Wagtail 1" --station "Skerry Point" \
+    --from 2026-09-15T00:50:00Z --to 2026-09-15T01:00:00Z --step 60s --plus-minus`,
 		Args: noArgs,
 		RunE: func(cmd *cobra.Command, _ []string) error { return runPointing(cmd.Context(), env, o) },
 	}
@@ -45,6 +52,7 @@ the transmitter's carrier, to first order, and empty where there is no transmitt
 	addTime(fs, &o.from, "from", "first instant")
 	addTime(fs, &o.to, "to", "last instant")
 	addDuration(fs, &o.step, "step", time.Second, "between two rows, whole milliseconds")
+	fs.BoolVar(&o.plusMinus, "plus-minus", false, "with the plus-minus by the orbit's error, in three more columns")
 	addFormat(cmd, &o.format)
 	return cmd
 }
@@ -85,6 +93,7 @@ type pointing struct {
 	ephemeris   *orbit.Ephemeris
 	from, to    time.Time
 	step        time.Duration
+	sure        *pointingSure // nil: nothing is known of it
 }
 
 // pointingRow is where the antenna points at one instant.
@@ -95,6 +104,7 @@ type pointingRow struct {
 	apparent   unit.Angle
 	apparentOK bool
 	light      orbit.Light
+	state      orbit.State
 }
 
 func runPointing(ctx context.Context, env *Env, o pointingOptions) error {
@@ -109,6 +119,9 @@ func runPointing(ctx context.Context, env *Env, o pointingOptions) error {
 	if err != nil {
 		return err
 	}
+	if err := p.sureOf(env, s, &o); err != nil {
+		return err
+	}
 	middle := o.from.Add(o.to.Sub(o.from) / 2)
 	age, side := middle.Sub(p.elements.Epoch), "before"
 	if age < 0 {
@@ -121,7 +134,7 @@ func runPointing(ctx context.Context, env *Env, o pointingOptions) error {
 	}
 	switch o.format {
 	case formatCSV:
-		return p.writeCSV(ctx, env.Out)
+		return p.writeCSV(ctx, env.Out, o.plusMinus)
 	case formatJSON:
 		return p.writeJSON(ctx, env.Out)
 	}
@@ -179,7 +192,8 @@ func (p *pointing) rows(ctx context.Context, do func(r *pointingRow) error) erro
 
 func (p *pointing) row(at time.Time) pointingRow {
 	s := p.ephemeris.Seconds(at)
-	r := pointingRow{at: at, look: p.frame.Look(p.ephemeris.StateAt(s)), light: p.ephemeris.LightAt(s)}
+	state := p.ephemeris.StateAt(s)
+	r := pointingRow{at: at, state: state, look: p.frame.Look(state), light: p.ephemeris.LightAt(s)}
 	r.apparent, r.apparentOK = p.refraction.Apparent(r.look.Elevation)
 	return r
 }

@@ -6,6 +6,7 @@ import (
 	"fmt"
 	"io"
 	"math"
+	"slices"
 	"strings"
 )
 
@@ -60,9 +61,14 @@ func (p *pointing) appendNumber(b []byte, r *pointingRow, n int) []byte {
 	return appendFixed(b, v, decimals)
 }
 
-func (p *pointing) writeCSV(ctx context.Context, w io.Writer) error {
+// writeCSV writes the promised columns; plusMinus adds spreadColumns.
+func (p *pointing) writeCSV(ctx context.Context, w io.Writer, plusMinus bool) error {
 	out := bufio.NewWriterSize(w, 1<<16)
-	b := append([]byte(strings.Join(pointingColumns, ",")), '\n')
+	columns := pointingColumns
+	if plusMinus {
+		columns = append(slices.Clone(columns), spreadColumns...)
+	}
+	b := append([]byte(strings.Join(columns, ",")), '\n')
 	var day dayStamp
 	err := p.rows(ctx, func(r *pointingRow) error {
 		if _, err := out.Write(b); err != nil {
@@ -72,7 +78,11 @@ func (p *pointing) writeCSV(ctx context.Context, w io.Writer) error {
 		for n := 1; n <= pointingNumbers; n++ {
 			b = append(p.appendNumber(b, r, n), ',')
 		}
-		b = append(append(b, r.light.String()...), '\n')
+		b = append(b, r.light.String()...)
+		if plusMinus {
+			b = p.sure.appendCSV(b, r)
+		}
+		b = append(b, '\n')
 		return nil
 	})
 	if err != nil {
@@ -112,7 +122,11 @@ func (p *pointing) writeJSON(ctx context.Context, w io.Writer) error {
 				b = append(b, "null"...)
 			}
 		}
-		b = append(append(append(b, `, "sunlit": "`...), r.light.String()...), `"}`...)
+		b = append(append(append(b, `, "sunlit": "`...), r.light.String()...), '"')
+		if p.sure != nil {
+			b = p.sure.appendJSON(b, r)
+		}
+		b = append(b, '}')
 		separator = ",\n"
 		if _, err := out.Write(b); err != nil {
 			return fmt.Errorf("write the JSON: %w", err)
@@ -142,6 +156,9 @@ func (p *pointing) writeTable(ctx context.Context, env *Env) error {
 		columns = append(columns, numberColumn(head))
 	}
 	columns = append(columns, textColumn("light"))
+	if p.sure != nil {
+		columns = append(columns, numberColumn("along ± deg"), numberColumn("direction ± deg"), numberColumn("Doppler ± Hz"))
+	}
 	var rows [][]string
 	err := p.rows(ctx, func(r *pointingRow) error {
 		row := []string{utc(r.at)}
@@ -158,7 +175,12 @@ func (p *pointing) writeTable(ctx context.Context, env *Env) error {
 				row = append(row, fixed(v, decimals))
 			}
 		}
-		rows = append(rows, append(row, r.light.String()))
+		row = append(row, r.light.String())
+		if p.sure != nil {
+			m := p.sure.spread(r)
+			row = append(row, fixed(m[0], 4), fixed(m[1], 4), fixed(m[2], 1))
+		}
+		rows = append(rows, row)
 		return nil
 	})
 	if err != nil {
