@@ -3,14 +3,34 @@ package downlink
 // Permit keeps the volume of the profile to the spans in which the link may be used, as
 // by a licence: the achievable rate and the chosen mode count within them alone. Spans
 // are in order and apart from one another; none permits nothing. Margins and rates of
-// the samples stay what they are.
+// the samples stay what they are. Called again, as for what a mount can follow, it keeps
+// to what both permit.
 func (p *Profile) Permit(spans []Interval) {
-	p.limited = true
-	p.permitted = make([]span, len(spans))
+	permitted := make([]span, len(spans))
 	for i, s := range spans {
-		p.permitted[i] = span{s.From.Sub(p.Start).Seconds(), s.To.Sub(p.Start).Seconds()}
+		permitted[i] = span{s.From.Sub(p.Start).Seconds(), s.To.Sub(p.Start).Seconds()}
 	}
+	if p.limited {
+		permitted = inBoth(p.permitted, permitted)
+	}
+	p.limited, p.permitted = true, permitted
 	p.Volume = p.volume()
+}
+
+// inBoth returns what two lists share, each in order and apart.
+func inBoth(a, b []span) []span {
+	out := []span{}
+	for len(a) > 0 && len(b) > 0 {
+		if from, to := max(a[0].from, b[0].from), min(a[0].to, b[0].to); to > from {
+			out = append(out, span{from, to})
+		}
+		if a[0].to < b[0].to {
+			a = a[1:]
+		} else {
+			b = b[1:]
+		}
+	}
+	return out
 }
 
 // Permits tells whether the link may be used some seconds after the start.

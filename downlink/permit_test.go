@@ -50,3 +50,18 @@ func TestPermit(t *testing.T) {
 		t.Errorf("nothing permitted, and it closes in %v", p.Volume.Closes)
 	}
 }
+
+// TestPermitTwice keeps to what both permit: 3 s to 5 s and 9 s to 12 s, by the same
+// integral as TestPermit.
+func TestPermitTwice(t *testing.T) {
+	p := rising()
+	at := func(s float64) time.Time { return p.Start.Add(time.Duration(s * 1e9)) }
+	p.Permit([]downlink.Interval{{From: at(2), To: at(5)}, {From: at(6), To: at(7)}, {From: at(9), To: at(20)}})
+	p.Permit([]downlink.Interval{{From: at(3), To: at(5.5)}, {From: at(7.5), To: at(12)}})
+	if want := 500.0 * (25 - 9 + 144 - 81); math.Abs(p.Volume.AchievableBytes-want) > 1e-6 {
+		t.Errorf("got %.6f bytes, want %.6f", p.Volume.AchievableBytes, want)
+	}
+	if p.Permits(6.5) || !p.Permits(4) || p.Permits(2.5) {
+		t.Error("what one of the two does not permit is permitted")
+	}
+}

@@ -33,6 +33,9 @@ func (a *Antenna) Validate() error {
 	if a.Polarization != nil {
 		a.Polarization.check(&c)
 	}
+	if a.Mount != nil {
+		c.faults = append(c.faults, a.Mount.Validate())
+	}
 	return c.joined()
 }
 

@@ -2,6 +2,7 @@ package station
 
 import (
 	"math"
+	"sort"
 
 	"slantwise/orbit/unit"
 )
@@ -64,6 +65,39 @@ type Mount struct {
 	Stow         *AxisAngles // where it stands when it is not used; nil: not said
 	Settle       float64     // s that it takes to come to rest after a slew
 	Tolerance    unit.Angle  // the greatest error on the sky that counts as followed; 0: by the beam
+	// ByDiameter says how fast the mounts of other dishes turn, by rising diameter; empty:
+	// as this one.
+	ByDiameter []MountRates
+}
+
+// MountRates are the greatest rates of the axes of a mount for a dish.
+type MountRates struct {
+	Diameter     unit.Length
+	Lower, Upper unit.AngularRate
+}
+
+// ForDiameter returns the mount of a dish of another diameter: with the rates of
+// ByDiameter, straight between two rows, those of the first and the last row beyond them.
+// beyond tells that the diameter lies outside the rows.
+func (m *Mount) ForDiameter(d unit.Length) (of Mount, beyond bool) {
+	of = *m
+	rows := m.ByDiameter
+	if len(rows) == 0 {
+		return of, false
+	}
+	i := sort.Search(len(rows), func(i int) bool { return rows[i].Diameter >= d })
+	switch {
+	case i == len(rows):
+		of.Lower.Rate, of.Upper.Rate = rows[i-1].Lower, rows[i-1].Upper
+		return of, true
+	case i == 0 || rows[i].Diameter == d:
+		of.Lower.Rate, of.Upper.Rate = rows[i].Lower, rows[i].Upper
+		return of, rows[i].Diameter != d
+	}
+	a, b := rows[i-1], rows[i]
+	share := unit.AngularRate((d - a.Diameter) / (b.Diameter - a.Diameter))
+	of.Lower.Rate, of.Upper.Rate = a.Lower+share*(b.Lower-a.Lower), a.Upper+share*(b.Upper-a.Upper)
+	return of, false
 }
 
 // Validate returns every fault of the mount at once, nil when it can be used.

@@ -128,3 +128,6 @@ func (p *Plan) Ready(from station.AxisAngles) time.Duration {
 		quickest(p.drive.mount.Upper, motion{at: from.Upper.Radians()}, upper))
 	return max(0, seconds(need+p.drive.mount.Settle-p.OnTrack.From))
 }
+
+// Mount returns the mount that is planned for.
+func (p *Plan) Mount() station.Mount { return p.drive.mount }

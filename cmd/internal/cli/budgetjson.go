@@ -70,6 +70,7 @@ type budgetPass struct {
 	MaxElPlusMinus  number           `json:"max_elevation_plus_minus_deg"`
 	Existence       number           `json:"existence_probability"`
 	BeamUnsure      []budgetInterval `json:"beam_too_narrow"`
+	Mount           *mountJSON       `json:"mount,omitempty"`
 }
 
 type budgetInterval struct {
@@ -156,8 +157,9 @@ func budgetOut(r *budgetResult) budgetJSON {
 	}
 	if p := r.pass; p != nil {
 		out.Pass = &budgetPass{utc(p.AOS), utc(p.Culmination), utc(p.LOS), num(p.MaxElevation.Degrees(), 4), nil,
-			num(r.volume.ModeBytes, 0), num(r.volume.AchievableBytes, 0), num(math.NaN(), 0), num(math.NaN(), 0), intervalsOut(r.sunInBeam), num(math.NaN(), 3), num(math.NaN(), 3), num(math.NaN(), 4), num(math.NaN(), 4), []budgetInterval{}}
+			num(r.volume.ModeBytes, 0), num(r.volume.AchievableBytes, 0), num(math.NaN(), 0), num(math.NaN(), 0), intervalsOut(r.sunInBeam), num(math.NaN(), 3), num(math.NaN(), 3), num(math.NaN(), 4), num(math.NaN(), 4), []budgetInterval{}, nil}
 		out.Pass.Closes = intervalsOut(r.volume.Closes)
+		out.Pass.Mount = mountOut(r.mount, p.AOS)
 		r.surety.into(&out)
 		if v := r.clearVolume; v != nil {
 			out.Pass.ClearModeBytes, out.Pass.ClearAchievable = num(v.ModeBytes, 0), num(v.AchievableBytes, 0)

@@ -80,7 +80,8 @@ func (c *chosenLink) touchedBy(about string) bool {
 	craft := "spacecraft " + c.spacecraft.Name
 	transmitter := craft + ", " + c.kind() + " " + c.transmitter.Name
 	site := "station " + c.station.Site.Name
-	parts := []string{craft, craft + ", position uncertainty", transmitter, transmitter + ", antenna", site, site + ", antenna " + c.antenna.Name}
+	parts := []string{craft, craft + ", position uncertainty", transmitter, transmitter + ", antenna", site, site + ", antenna " + c.antenna.Name,
+		site + ", antenna " + c.antenna.Name + ", mount"}
 	if c.uplink != nil {
 		parts = append(parts, site+", antenna "+c.antenna.Name+", transmit")
 	}

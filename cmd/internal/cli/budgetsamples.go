@@ -24,7 +24,8 @@ type budgetResult struct {
 	// clearVolume is the pass under a clear sky; nil where volume is that already.
 	clearVolume *downlink.Volume
 	sunInBeam   []downlink.Interval
-	surety      *surety // of the pass; nil: the position is taken as exact
+	surety      *surety      // of the pass; nil: the position is taken as exact
+	mount       *mountOnPass // nil where nothing is said of the mount
 	samples     []*downlink.Budget
 	notes       []downlink.Note
 }
@@ -154,11 +155,12 @@ func (r *budgetResult) fly(eph *orbit.Ephemeris, step time.Duration) error {
 	if err != nil {
 		return &InputError{Err: err}
 	}
-	told, err := keepToLicences(r.scenario, r.chosenLink, profile)
+	told, turned, err := keepToLimits(r.scenario, r.chosenLink, profile)
 	if err != nil {
 		return err
 	}
 	r.notes = append(r.notes, told...)
+	r.mount = turned
 	r.volume, r.sunInBeam = &profile.Volume, profile.SunInBeam
 	if r.surety, err = r.judge(r.scenario, eph, p, profile); err != nil {
 		return &InputError{Err: err}
@@ -168,7 +170,7 @@ func (r *budgetResult) fly(eph *orbit.Ephemeris, step time.Duration) error {
 		if err != nil {
 			return &InputError{Err: err}
 		}
-		if _, err := keepToLicences(r.scenario, r.chosenLink, fine); err != nil { // told above
+		if _, _, err := keepToLimits(r.scenario, r.chosenLink, fine); err != nil { // told above
 			return err
 		}
 		r.clearVolume = &fine.Volume

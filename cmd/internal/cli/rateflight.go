@@ -72,7 +72,7 @@ func (f *rateFlight) fly(s *scenario.Scenario) ([]downlink.Note, error) {
 	if f.profile, err = f.link.link.Profile(f.eph, p.AOS, p.LOS, volumeStep(p.Duration())); err != nil {
 		return nil, &InputError{Err: fmt.Errorf("%s over %s: %w", f.link.spacecraft.Name, f.station.Site.Name, err)}
 	}
-	told, err := keepToLicences(s, f.link, f.profile)
+	told, _, err := keepToLimits(s, f.link, f.profile)
 	f.cut = slices.ContainsFunc(f.profile.Seconds, func(at float64) bool { return !f.profile.Permits(at) })
 	f.track = rateplan.FromProfile(f.profile)
 	return told, err

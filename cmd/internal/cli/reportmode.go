@@ -10,10 +10,11 @@ import (
 
 // modeOnPass is a mode's link along a pass, with what all modes of it bring.
 type modeOnPass struct {
-	link     *chosenLink
-	profile  *downlink.Profile
-	results  []reports.ModeResult
-	licences []downlink.Note // what licences take from the pass
+	link    *chosenLink
+	profile *downlink.Profile
+	results []reports.ModeResult
+	limits  []downlink.Note // what licences and the mount take from the pass
+	mount   *mountOnPass    // nil where nothing is said of it
 }
 
 // bestMode flies the pass with every mode that competes and returns the one that
@@ -28,7 +29,7 @@ func (page *reportPage) bestMode(s *scenario.Scenario, craft *reportCraft, step 
 		if err != nil {
 			return nil, err
 		}
-		told, err := keepToLicences(s, c, f)
+		told, turned, err := keepToLimits(s, c, f)
 		if err != nil {
 			return nil, err
 		}
@@ -36,7 +37,7 @@ func (page *reportPage) bestMode(s *scenario.Scenario, craft *reportCraft, step 
 			results = append(results, modeResult(c, f))
 		}
 		if best == nil || f.Volume.ModeBytes > best.profile.Volume.ModeBytes {
-			best, chosen = &modeOnPass{link: c, profile: f, licences: told}, i
+			best, chosen = &modeOnPass{link: c, profile: f, limits: told, mount: turned}, i
 		}
 	}
 	if len(results) > 0 {

@@ -40,8 +40,8 @@ func (p *reportPlan) load(ctx context.Context, i int) (*reports.Pass, error) {
 		return nil, fmt.Errorf("%s over %s: %w", craft.Name, site.Site.Name, err)
 	}
 	out.Profile, out.Notes = best.profile, p.pageNotes(page, best.link)
-	for _, n := range best.licences {
-		out.Notes = append(out.Notes, reports.Note{Kind: noteKinds[n.Kind], About: "licence", Text: n.Text})
+	for _, n := range best.limits {
+		out.Notes = append(out.Notes, reports.Note{Kind: noteKinds[n.Kind], About: "limits", Text: n.Text})
 	}
 	if out.Radio, err = reportRadio(p.scenario, craft, page, best); err != nil {
 		return nil, fmt.Errorf("%s over %s: %w", craft.Name, site.Site.Name, err)

@@ -33,7 +33,7 @@ func addPath(r *reports.Radio, s *scenario.Scenario, craft *reportCraft, page *r
 	if err != nil {
 		return err
 	}
-	if _, err := keepToLicences(s, c, fine); err != nil { // told with the profile of the weather
+	if _, _, err := keepToLimits(s, c, fine); err != nil { // told with the profile of the weather
 		return err
 	}
 	r.ClearSky = fine

@@ -13,6 +13,7 @@ var antennaKeys = []string{
 	"gain_dbi", "beamwidth_deg", "g_over_t_db_k", "g_over_t_elevation_deg", "measured_on", "measured_weather",
 	"boresight_azimuth_deg", "boresight_elevation_deg", "pointing_error_deg", "follows",
 	"polarization", "axial_ratio_db", "polarization_tilt_deg", "bands_mhz", "feed_loss_db", "extra_losses", "noise", "transmit",
+	"mount",
 }
 
 func (o object) antennas() []station.Antenna {
@@ -48,6 +49,7 @@ func (o object) antenna(name string) station.Antenna {
 	a.ExtraLosses = o.losses(true)
 	a.Noise = o.noise(a.GOverT != nil)
 	a.Transmit = o.transmit()
+	a.Mount = o.mount(a.Kind)
 	if o.r.faults.count() == before {
 		o.addAll(o.node, "", a.Validate())
 	}

@@ -167,6 +167,19 @@ func TestEverything(t *testing.T) {
 		{"licensed band", s.Licences[0].High, 8190 * unit.Megahertz},
 		{"tolerance", s.Control.Spreads[0], tolerance.Spread{Term: "free-space loss", Favourable: 0.1, Adverse: -0.2, Law: tolerance.Uniform, Source: "orbit"}},
 		{"criterion", s.Control.Criteria[0], tolerance.Criterion{Name: "own", Statement: tolerance.MeanLessSigmas, Sigmas: 3, Least: 1, Source: "project"}},
+		{"mount", *dish.Mount, station.Mount{
+			Lower:       station.Axis{Low: -270 * unit.Degree, High: 280 * unit.Degree, Rate: degrees(10), Acceleration: unit.AngularAcceleration(degrees(4))},
+			Upper:       station.Axis{Low: 2 * unit.Degree, High: 178 * unit.Degree, Rate: degrees(5), Acceleration: unit.AngularAcceleration(degrees(3))},
+			TiltAzimuth: 45 * unit.Degree, TiltAngle: 7.5 * unit.Degree, Settle: 1.5, Tolerance: 0.05 * unit.Degree,
+			Stow:       &station.AxisAngles{Lower: 180 * unit.Degree, Upper: 88 * unit.Degree},
+			ByDiameter: []station.MountRates{{Diameter: 3.7, Lower: degrees(10), Upper: degrees(5)}, {Diameter: 11, Lower: degrees(3), Upper: degrees(2)}},
+		}},
+		{"X-Y mount", *measured.Mount, station.Mount{
+			Kind: station.YOverX, XAxisAzimuth: 90 * unit.Degree,
+			Lower: station.Axis{Low: -85 * unit.Degree, High: 85 * unit.Degree, Rate: degrees(3), Acceleration: unit.AngularAcceleration(degrees(2))},
+			Upper: station.Axis{Low: -80 * unit.Degree, High: 80 * unit.Degree, Rate: degrees(4), Acceleration: unit.AngularAcceleration(degrees(2.5))},
+		}},
+		{"no mount", single.Mount, (*station.Mount)(nil)},
 		{"boresight", roof.Boresight, station.Direction{Azimuth: 10 * unit.Degree, Elevation: 90 * unit.Degree}},
 	} {
 		if !reflect.DeepEqual(tt.got, tt.want) {
@@ -183,6 +196,9 @@ func watts(t *testing.T, w float64) unit.Level {
 	}
 	return l
 }
+
+// degrees returns a rate of degrees a second.
+func degrees(v float64) unit.AngularRate { return unit.AngularRate(v * unit.Degree.Radians()) }
 
 // at returns the value of a curve at 5 %.
 func at(t *testing.T, c propagation.Curve) float64 {

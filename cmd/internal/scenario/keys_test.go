@@ -39,6 +39,7 @@ func TestEveryKeyIsRead(t *testing.T) {
 		topKeys, windowKeys, earthKeys, spacecraftKeys, transmitterKeys, spinKeys, patternKeys, modeKeys, lossDissipativeKeys,
 		stationKeys, antennaKeys, noiseKeys, stageKeys, sizingKeys, requirementKeys, marginAtKeys,
 		uplinkKeys, transmitKeys, oscillatorKeys, measuredKeys, coherentKeys, pathKeys, climateKeys, levelKeys, lognormalKeys, lowPathKeys,
+		mountKeys,
 		ratePlanKeys, licenceKeys, sectorKeys, hoursKeys, recorderKeys, recorderDataKeys, craftUncertaintyKeys, covarianceKeys, controlKeys, toleranceKeys, criterionKeys,
 	} {
 		for _, k := range keys {
