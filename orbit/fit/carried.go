@@ -30,13 +30,18 @@ func (o *Options) carried(r *Result) error {
 // 200 m along the track after a day (the drag that a set of B* 1e-4 shows there).
 const leastDrag = 5e-5
 
-// dragCarried refuses a B* that is not known to half of itself.
+// mostDoubt is a doubt in B* that never passes: the greatest B* there are, of foil and empty
+// tanks about to fall, are some 0.1.
+const mostDoubt = 0.05
+
+// dragCarried refuses a B* that is smaller than its own standard deviation: the set would be
+// better off with 0.
 func dragCarried(r *Result) error {
 	if !r.DragFound {
 		return nil
 	}
 	doubt := r.sigma(atDrag)
-	if doubt <= math.Max(leastDrag, math.Abs(r.Elements.BStar)/2) {
+	if doubt <= math.Max(leastDrag, math.Min(mostDoubt, math.Abs(r.Elements.BStar))) {
 		return nil
 	}
 	return &Refusal{Why: SpanShortForDrag,

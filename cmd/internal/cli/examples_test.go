@@ -63,6 +63,9 @@ func prepareExample(t *testing.T, command string) {
 			t.Fatal(errOut)
 		}
 	}
+	if err := os.WriteFile("positions.csv", []byte(samplePositions), 0o600); err != nil {
+		t.Fatal(err)
+	}
 	// The columns that the model rain-specific reads.
 	table := "frequency_ghz,elevation_deg,polarization_tilt_deg,rain_rate_mm_h\n20,40,45,10\n"
 	if err := os.WriteFile("in.csv", []byte(table), 0o600); err != nil {
