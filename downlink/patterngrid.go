@@ -5,6 +5,7 @@ import (
 	"fmt"
 	"math"
 	"slices"
+	"sync"
 
 	"slantwise/orbit/unit"
 )
@@ -18,8 +19,10 @@ type PatternGrid struct {
 	Around []unit.Angle // about it, rising from 0 and below 360°; from the pattern's zero (Body.Turn)
 	Gain   [][]unit.DB  // dBi, by Off, then by Around
 
-	share    float64   // of the power, radiated
-	exceeded []float64 // the gain exceeded in growing shares of all directions; nil where the grid ends before 180°
+	share float64 // of the power, radiated
+
+	counting sync.Once
+	exceeded []float64 // the gain exceeded in growing shares of all directions, once it was asked for
 }
 
 // PatternRow is a row of a table of two angles.
@@ -67,9 +70,6 @@ func NewPatternGrid(rows []PatternRow) (*PatternGrid, error) {
 		return nil, err
 	}
 	g.share = g.integrate()
-	if g.Off[len(g.Off)-1] >= 180*unit.Degree-angleSlack {
-		g.exceeded = g.countExceeded()
-	}
 	return g, nil
 }
 

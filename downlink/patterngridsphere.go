@@ -101,6 +101,7 @@ func (g *PatternGrid) countExceeded() []float64 {
 // exceededWith returns the gain reached or exceeded with probability q when every
 // direction is equally likely; the grid must reach to 180°.
 func (g *PatternGrid) exceededWith(q float64) unit.DB {
+	g.counting.Do(func() { g.exceeded = g.countExceeded() })
 	x := q * quantiles
 	i := min(int(x), quantiles-1)
 	w := x - float64(i)
