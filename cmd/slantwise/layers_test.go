@@ -20,6 +20,7 @@ var layers = []struct {
 	{"slantwise/orbit", 1},
 	{"slantwise/orbit/elements", 2},
 	{"slantwise/orbit/fit", 2},
+	{"slantwise/orbit/oem", 3},
 	{"slantwise/station", 3},
 	{"slantwise/station/pass", 4},
 	{"slantwise/station/mount", 4},
