@@ -5,6 +5,7 @@ import (
 	"math"
 	"os"
 	"path/filepath"
+	"strconv"
 	"strings"
 	"testing"
 )
@@ -103,5 +104,85 @@ func TestMountTakesBytes(t *testing.T) {
 		if math.Abs(v-none) > 1 {
 			t.Errorf("what is left and what is lost are %g bytes together, without a mount %g come down", v, none)
 		}
+	}
+}
+
+// column returns the numbers of a column of CSV.
+func numbersOf(t *testing.T, records []map[string]string, name string) []float64 {
+	t.Helper()
+	var out []float64
+	for _, r := range records {
+		v, err := strconv.ParseFloat(r[name], 64)
+		if err != nil {
+			t.Fatalf("%s: %v", name, err)
+		}
+		out = append(out, v)
+	}
+	return out
+}
+
+// TestPointingAxes holds the axis angles of the demo's keyhole pass: within the rates that
+// the scenario gives, without jumps, on the apparent direction but in the slew.
+func TestPointingAxes(t *testing.T) {
+	rows := records(t, "pointing", "--spacecraft", "Fulmar 1", "--station", "Tussock Bay", "--axes",
+		"--from", "2026-09-15T07:04:02Z", "--to", "2026-09-15T07:18:00Z", "--step", "1s")
+	lower, upper := numbersOf(t, rows, "lower_axis_deg"), numbersOf(t, rows, "upper_axis_deg")
+	off, rate := numbersOf(t, rows, "following_error_deg"), numbersOf(t, rows, "lower_axis_rate_deg_s")
+	azimuth, apparent := numbersOf(t, rows, "azimuth_deg"), numbersOf(t, rows, "apparent_elevation_deg")
+	lost := 0
+	for i := range rows {
+		if off[i] > 0.027 {
+			lost++
+		} else if d := math.Remainder(lower[i]-azimuth[i], 360); math.Abs(d)*math.Cos(apparent[i]*math.Pi/180) > 0.03 || math.Abs(upper[i]-apparent[i]) > 0.03 {
+			t.Errorf("%s: axes %g, %g deg, apparent direction %g, %g deg", rows[i]["utc"], lower[i], upper[i], azimuth[i], apparent[i])
+		}
+		if math.Abs(rate[i]) > 6.0001 || lower[i] < -270 || lower[i] > 270 || upper[i] > 90 {
+			t.Errorf("%s: axes %g, %g deg, rate %g deg/s", rows[i]["utc"], lower[i], upper[i], rate[i])
+		}
+		if i > 0 && math.Abs(lower[i]-lower[i-1]) > 6.001 {
+			t.Errorf("%s: from %g to %g deg", rows[i]["utc"], lower[i-1], lower[i])
+		}
+	}
+	if lost < 14 || lost > 16 {
+		t.Errorf("%d s are not followed, budget says 14.6 s", lost)
+	}
+	for _, bad := range [][]string{
+		{"--station", "Reedmere", "--axes"}, {"--station", "Tussock Bay", "--antenna", "dish"}, {"--station", "Tussock Bay", "--axes", "--to", "2026-09-16T07:18:00Z"},
+	} {
+		args := append([]string{"pointing", "--spacecraft", "Fulmar 1", "--from", "2026-09-15T07:04:02Z", "--to", "2026-09-15T07:18:00Z"}, bad...)
+		if code, _, errOut := invoke(t, args...); code != 2 || !strings.Contains(errOut, "slantwise: --a") {
+			t.Errorf("%v: exit %d, %s", bad, code, errOut)
+		}
+	}
+}
+
+// TestPassesMount: the list names the keyhole pass; without the flag the promised columns
+// stand alone, and with it each pass ends where its target does, a turn of the cable apart.
+func TestPassesMount(t *testing.T) {
+	rows := records(t, "passes", "--mount", "--station", "Tussock Bay")
+	held := 0
+	for _, r := range rows {
+		if r["mount_antenna"] == "" {
+			if r["spacecraft"] == "Fulmar 1" || r["spacecraft"] == "Wagtail 1" {
+				t.Errorf("no mount for %s at %s", r["spacecraft"], r["aos_utc"])
+			}
+			continue
+		}
+		held++
+		one := []map[string]string{r}
+		for at, axis := range map[string]string{"aos_azimuth_deg": "start_lower_axis_deg", "los_azimuth_deg": "end_lower_axis_deg"} {
+			if d := math.Remainder(numbersOf(t, one, axis)[0]-numbersOf(t, one, at)[0], 360); math.Abs(d) > 0.001 {
+				t.Errorf("%s: %s is %s deg, %s %s deg", r["aos_utc"], axis, r[axis], at, r[at])
+			}
+		}
+		if lost := numbersOf(t, one, "not_followed_s")[0]; (lost > 0) != (r["aos_utc"] == "2026-09-15T07:04:01.370Z") {
+			t.Errorf("%s: %g s are not followed", r["aos_utc"], lost)
+		}
+	}
+	if held < 8 {
+		t.Errorf("%d passes are taken by the mount", held)
+	}
+	if code, _, errOut := invoke(t, "passes", "--mount", "--station", "Reedmere"); code != 2 || !strings.Contains(errOut, "no antenna has a mount") {
+		t.Errorf("exit %d, %s", code, errOut)
 	}
 }

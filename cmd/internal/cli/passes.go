@@ -19,6 +19,7 @@ type passesOptions struct {
 	leastDuration        time.Duration
 	sunlit               bool
 	plusMinus            bool
+	mount                bool
 	sort                 passOrder
 	workers              int
 	format               format
@@ -38,10 +39,15 @@ Where the scenario states position_uncertainty, the table and the JSON tell how 
 passes are: one standard deviation of AOS, LOS and the greatest elevation, and the
 probability that the pass takes place at all, under one where it grazes the horizon.
 --plus-minus asks for it in the CSV, too, and takes a rule by the age of the element
-sets where the scenario states none.`,
+sets where the scenario states none.
+
+--mount adds how the mount of the station's antenna takes each pass: how long it does not
+follow, planned and without a plan, and where its lower axis begins and ends, as the
+cable counts it.`,
 		Example: `  slantwise passes
   slantwise passes --station "Skerry Point" --least-elevation-deg 30 --sort elevation
   slantwise passes --plus-minus --spacecraft "Wagtail 1"
+  slantwise passes --mount --station "Tussock Bay"
   slantwise passes --sunlit --format csv > passes.csv`,
 		Args: noArgs,
 		RunE: func(cmd *cobra.Command, _ []string) error { return runPasses(cmd.Context(), env, o) },
@@ -53,6 +59,7 @@ sets where the scenario states none.`,
 	addDuration(fs, &o.leastDuration, "least-duration", 0, "only passes that last at least so long")
 	fs.BoolVar(&o.sunlit, "sunlit", false, "only passes at whose culmination the spacecraft is in full sunlight")
 	fs.BoolVar(&o.plusMinus, "plus-minus", false, "with the plus-minus by the orbit's error, in four more columns")
+	fs.BoolVar(&o.mount, "mount", false, "with how the antenna's mount takes each pass, in eight more columns")
 	o.sort = orderAOS
 	fs.Var(&o.sort, "sort", "by aos, elevation (highest first), duration (longest first), spacecraft or station")
 	addWorkers(fs, &o.workers, "spacecraft are searched")
@@ -74,7 +81,8 @@ type passSearch struct {
 	spacecraft []scenario.Spacecraft
 	stations   []scenario.Station
 	list       *pass.List
-	sure       *sureList // nil: nothing is known of it
+	sure       *sureList  // nil: nothing is known of it
+	mounts     *mountList // nil: not asked for
 }
 
 func runPasses(ctx context.Context, env *Env, o passesOptions) error {
@@ -98,6 +106,11 @@ func runPasses(ctx context.Context, env *Env, o passesOptions) error {
 	}
 	if p.sure, err = p.newSureList(env, s, o.plusMinus); err != nil {
 		return &InputError{Err: err}
+	}
+	if o.mount {
+		if p.mounts, err = p.newMountList(env); err != nil {
+			return &InputError{Err: err}
+		}
 	}
 	if err := p.search(ctx, env, s, o); err != nil {
 		return err
@@ -150,7 +163,7 @@ func (p *passSearch) search(ctx context.Context, env *Env, s *scenario.Scenario,
 			}
 			return e, nil
 		},
-		Window: p.window, Decides: p.decides, Keep: p.sure.measuring(o.keep()), Workers: o.workers,
+		Window: p.window, Decides: p.decides, Keep: p.mounts.measuring(p.sure.measuring(o.keep())), Workers: o.workers,
 		Progress: func(n int) { bar.add(n - done); done = n },
 	}
 	for i := range p.stations {
@@ -161,6 +174,9 @@ func (p *passSearch) search(ctx context.Context, env *Env, s *scenario.Scenario,
 	bar.stop()
 	if err != nil {
 		return err
+	}
+	if p.mounts != nil && p.mounts.fault != nil {
+		return p.mounts.fault
 	}
 	return p.tellFaults(env, faults)
 }

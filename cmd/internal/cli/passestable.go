@@ -29,6 +29,9 @@ func (p *passSearch) writeTable(env *Env, passes iter.Seq[pass.Found]) error {
 	if p.sure != nil {
 		columns = append(columns, numberColumn("AOS ± s"), numberColumn("LOS ± s"), numberColumn("takes place %"))
 	}
+	if p.mounts != nil {
+		columns = append(columns, textColumn("antenna"), numberColumn("not followed s"), numberColumn("without a plan s"), numberColumn("axis from deg"), numberColumn("axis to deg"), numberColumn("turn-overs"))
+	}
 	var rows [][]string
 	for f := range passes {
 		row := []string{p.spacecraft[f.Spacecraft].Name, p.stations[f.Site].Site.Name, utc(f.AOS)}
@@ -41,6 +44,9 @@ func (p *passSearch) writeTable(env *Env, passes iter.Seq[pass.Found]) error {
 		if p.sure != nil {
 			m := p.sure.of(&f)
 			row = append(row, fixed(m[0], 2), fixed(m[1], 2), fixed(100*m[3], 1))
+		}
+		if p.mounts != nil {
+			row = append(row, p.mounts.cells(&f)...)
 		}
 		rows = append(rows, row)
 	}

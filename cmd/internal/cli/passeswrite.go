@@ -68,6 +68,11 @@ func (p *passSearch) writeCSV(w io.Writer, passes iter.Seq[pass.Found], plusMinu
 			b = append(append(b, ','), c...)
 		}
 	}
+	if p.mounts != nil {
+		for _, c := range mountColumns {
+			b = append(append(b, ','), c...)
+		}
+	}
 	b = append(b, '\n')
 	for f := range passes {
 		if _, err := out.Write(b); err != nil {
@@ -86,6 +91,9 @@ func (p *passSearch) writeCSV(w io.Writer, passes iter.Seq[pass.Found], plusMinu
 			for n := range m {
 				b = sureNumber(append(b, ','), &m, n)
 			}
+		}
+		if p.mounts != nil {
+			b = p.mounts.appendCSV(b, &f)
 		}
 		b = append(b, '\n')
 	}
@@ -118,6 +126,9 @@ func (p *passSearch) writeJSON(w io.Writer, passes iter.Seq[pass.Found]) error {
 		b = append(append(append(b, `, "cut": "`...), f.Cut.String()...), '"')
 		if p.sure != nil {
 			b = p.sure.appendFields(b, &f)
+		}
+		if p.mounts != nil {
+			b = p.mounts.appendFields(b, &f)
 		}
 		b = append(b, '}')
 		if _, err := out.Write(b); err != nil {

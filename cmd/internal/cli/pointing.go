@@ -17,6 +17,8 @@ import (
 
 type pointingOptions struct {
 	spacecraft, station, transmitter string
+	antenna                          string
+	axes                             bool
 	from, to                         time.Time
 	step                             time.Duration
 	plusMinus                        bool
@@ -37,11 +39,17 @@ the transmitter's carrier, to first order, and empty where there is no transmitt
 
 Where the scenario states position_uncertainty, the table and the JSON tell what the
 orbit's error does to the direction and the frequency; --plus-minus asks for it in the
-CSV, too, and takes a rule by the age of the element set where none is stated.`,
+CSV, too, and takes a rule by the age of the element set where none is stated.
+
+--axes adds where the axes of the antenna's mount are commanded, continuous in the
+range of its cable and within its rates: turns that the mount cannot follow are slewed
+ahead where that loses least. The span is planned as a whole, so ask for a pass.`,
 		Example: `  slantwise pointing --spacecraft "Wagtail 1" --station "Skerry Point" \
     --from 2026-09-15T00:50:00Z --to 2026-09-15T01:00:00Z --step 500ms --format csv
   slantwise pointing --spacecraft "Wagtail 1" --station "Skerry Point" \
-    --from 2026-09-15T00:50:00Z --to 2026-09-15T01:00:00Z --step 60s --plus-minus`,
+    --from 2026-09-15T00:50:00Z --to 2026-09-15T01:00:00Z --step 60s --plus-minus
+  slantwise pointing --spacecraft "Fulmar 1" --station "Tussock Bay" --axes \
+    --from 2026-09-15T07:04:02Z --to 2026-09-15T07:18:00Z --step 10s`,
 		Args: noArgs,
 		RunE: func(cmd *cobra.Command, _ []string) error { return runPointing(cmd.Context(), env, o) },
 	}
@@ -53,6 +61,8 @@ CSV, too, and takes a rule by the age of the element set where none is stated.`,
 	addTime(fs, &o.to, "to", "last instant")
 	addDuration(fs, &o.step, "step", time.Second, "between two rows, whole milliseconds")
 	fs.BoolVar(&o.plusMinus, "plus-minus", false, "with the plus-minus by the orbit's error, in three more columns")
+	fs.BoolVar(&o.axes, "axes", false, "with the angles of the axes of the antenna's mount, in five more columns")
+	fs.StringVar(&o.antenna, "antenna", "", "`NAME` of the antenna whose mount it is, with --axes")
 	addFormat(cmd, &o.format)
 	return cmd
 }
@@ -94,6 +104,7 @@ type pointing struct {
 	from, to    time.Time
 	step        time.Duration
 	sure        *pointingSure // nil: nothing is known of it
+	axes        *pointingAxes // nil: not asked for
 }
 
 // pointingRow is where the antenna points at one instant.
@@ -120,6 +131,9 @@ func runPointing(ctx context.Context, env *Env, o pointingOptions) error {
 		return err
 	}
 	if err := p.sureOf(env, s, &o); err != nil {
+		return err
+	}
+	if err := p.axesOf(env, &o); err != nil {
 		return err
 	}
 	middle := o.from.Add(o.to.Sub(o.from) / 2)

@@ -68,6 +68,9 @@ func (p *pointing) writeCSV(ctx context.Context, w io.Writer, plusMinus bool) er
 	if plusMinus {
 		columns = append(slices.Clone(columns), spreadColumns...)
 	}
+	if p.axes != nil {
+		columns = append(slices.Clone(columns), axisColumns...)
+	}
 	b := append([]byte(strings.Join(columns, ",")), '\n')
 	var day dayStamp
 	err := p.rows(ctx, func(r *pointingRow) error {
@@ -81,6 +84,9 @@ func (p *pointing) writeCSV(ctx context.Context, w io.Writer, plusMinus bool) er
 		b = append(b, r.light.String()...)
 		if plusMinus {
 			b = p.sure.appendCSV(b, r)
+		}
+		if p.axes != nil {
+			b = p.axes.appendCSV(b, r)
 		}
 		b = append(b, '\n')
 		return nil
@@ -126,6 +132,9 @@ func (p *pointing) writeJSON(ctx context.Context, w io.Writer) error {
 		if p.sure != nil {
 			b = p.sure.appendJSON(b, r)
 		}
+		if p.axes != nil {
+			b = p.axes.appendJSON(b, r)
+		}
 		b = append(b, '}')
 		separator = ",\n"
 		if _, err := out.Write(b); err != nil {
@@ -159,6 +168,9 @@ func (p *pointing) writeTable(ctx context.Context, env *Env) error {
 	if p.sure != nil {
 		columns = append(columns, numberColumn("along ± deg"), numberColumn("direction ± deg"), numberColumn("Doppler ± Hz"))
 	}
+	if p.axes != nil {
+		columns = append(columns, numberColumn("lower axis deg"), numberColumn("upper axis deg"), numberColumn("lower deg/s"), numberColumn("upper deg/s"), numberColumn("error deg"))
+	}
 	var rows [][]string
 	err := p.rows(ctx, func(r *pointingRow) error {
 		row := []string{utc(r.at)}
@@ -179,6 +191,11 @@ func (p *pointing) writeTable(ctx context.Context, env *Env) error {
 		if p.sure != nil {
 			m := p.sure.spread(r)
 			row = append(row, fixed(m[0], 4), fixed(m[1], 4), fixed(m[2], 1))
+		}
+		if p.axes != nil {
+			for _, v := range p.axes.numbers(r) {
+				row = append(row, fixed(v, 3))
+			}
 		}
 		rows = append(rows, row)
 		return nil
