@@ -9,6 +9,8 @@ import (
 
 	"github.com/go-echarts/go-echarts/v2/charts"
 	"github.com/go-echarts/go-echarts/v2/opts"
+
+	"slantwise/downlink"
 )
 
 // timeFigure is what a chart over time is made from.
@@ -153,12 +155,12 @@ func markBelow(spans []axisSpan) *opts.MarkAreas {
 
 func axisNumber(v float64) string { return string(appendFixed(nil, v, 3)) }
 
-// notClosing returns the spans of the pass in which the margin is under what is
-// required: what the intervals of closing leave.
-func (fr *frame) notClosing(p *Pass) []axisSpan {
+// outside returns the spans of the pass that intervals leave: those of closing, the time
+// in which the margin is under what is required.
+func (fr *frame) outside(intervals []downlink.Interval) []axisSpan {
 	var spans []axisSpan
 	at := fr.axis.From
-	for _, c := range p.Profile.Volume.Closes {
+	for _, c := range intervals {
 		if from := c.From.Sub(fr.base).Seconds(); from > at {
 			spans = append(spans, axisSpan{at, from})
 		}

@@ -26,6 +26,13 @@ func checkPass(p *Pass) error {
 	if len(f.TermValues) != len(f.Terms) {
 		return fmt.Errorf("the profile has %d columns for %d terms", len(f.TermValues), len(f.Terms))
 	}
+	for _, u := range p.Uplinks {
+		for _, c := range uplinkColumns(&u) {
+			if len(c.values) != n {
+				return fmt.Errorf("uplink %q has %d values of %s for %d samples", u.Name, len(c.values), c.name, n)
+			}
+		}
+	}
 	if p.Radio == nil {
 		return nil
 	}

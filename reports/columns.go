@@ -46,11 +46,19 @@ func columns(p *Pass) []column {
 }
 
 // laterColumns lists the columns that came to stand behind all of columns: the path's,
-// the noise's, those of the pass under a clear sky, and the rate plan's.
+// the noise's, those of the pass under a clear sky, the rate plan's, and the uplinks'.
 func laterColumns(p *Pass) []column {
-	if p.Radio == nil {
-		return nil
+	var list []column
+	if p.Radio != nil {
+		list = radioLaterColumns(p)
 	}
+	for i := range p.Uplinks {
+		list = append(list, uplinkColumns(&p.Uplinks[i])...)
+	}
+	return ofLength(list, len(p.Profile.Seconds))
+}
+
+func radioLaterColumns(p *Pass) []column {
 	f, r := p.Profile, p.Radio
 	list := []column{{"path_attenuation_db", 3, r.PathTotalDB}}
 	for _, n := range r.NoiseParts {
@@ -71,7 +79,7 @@ func laterColumns(p *Pass) []column {
 	if r.Plan != nil {
 		list = append(list, planColumns(r.Plan)...)
 	}
-	return ofLength(list, len(f.Seconds))
+	return list
 }
 
 // ofLength keeps the columns that have a value for each sample.

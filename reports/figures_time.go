@@ -22,6 +22,7 @@ func timeFigures(p *Pass, fr *frame) []timeFigure {
 			list = append(list, volumeFigure(p))
 		}
 	}
+	list = append(list, uplinkFigures(p, fr)...)
 	kept := list[:0]
 	for _, f := range list {
 		if f.drawable(len(p.Profile.Seconds)) {
@@ -73,7 +74,7 @@ func marginFigure(p *Pass, fr *frame) timeFigure {
 			{name: "margin", dash: solid, values: f.MarginDB, divisor: 1, decimals: 2},
 			{name: "required", dash: dashed, values: constant(f.RequiredMarginDB, len(f.Seconds)), divisor: 1, decimals: 2, still: true},
 		},
-		below: fr.notClosing(p),
+		below: fr.outside(f.Volume.Closes),
 	}
 	if c := p.Radio.ClearSky; c != nil {
 		fig.series[0].name, fig.series[0].short = exceededName(p), "margin"

@@ -45,6 +45,7 @@ type Pass struct {
 	// geometry are filled and the others are nil.
 	Profile *downlink.Profile
 	Radio   *Radio // nil without a transmitter or antenna
+	Uplinks []Uplink
 	Notes   []Note // of the page: all that hold for this pass
 }
 

@@ -27,6 +27,7 @@ type headJSON struct {
 	Events     []eventJSON  `json:"events"`
 	DurationS  number       `json:"duration_s"`
 	Radio      *radioJSON   `json:"radio"`
+	Uplinks    []uplinkJSON `json:"uplinks"`
 	Notes      []noteJSON   `json:"notes"`
 }
 
@@ -102,6 +103,7 @@ func passHead(p *Pass) headJSON {
 		DurationS:  number{p.Pass.Duration().Seconds(), 3},
 		Events:     []eventJSON{},
 		Notes:      []noteJSON{},
+		Uplinks:    uplinkHeads(p),
 	}
 	for _, ev := range events(p) {
 		h.Events = append(h.Events, eventJSON{ev.key, utcText(ev.at), number{ev.azimuthDeg, 4}, number{ev.elevationDeg, 4}})

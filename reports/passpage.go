@@ -24,6 +24,7 @@ type passView struct {
 	Warnings               []Note
 	Figures                []figureView
 	Budget, Noise          budgetView
+	Uplinks                []uplinkView
 	Modes                  []modeView // empty where there was nothing to choose
 	Doubts                 []Note     // of single budgets
 	Assumptions, Defaults  []Note
@@ -136,6 +137,7 @@ func newPassView(p *Pass) *passView {
 		"both": "Up during the whole window: the pass begins earlier and ends later than shown.",
 	}[q.Cut.String()]
 	v.Events = eventTable(p)
+	v.Uplinks = uplinkViews(p)
 	if p.Radio != nil {
 		v.Link = newLinkView(p)
 		v.Budget, v.Noise, v.Modes = budgetTable(p), noiseTable(p), modeViews(p.Radio.Modes)

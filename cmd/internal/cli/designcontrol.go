@@ -23,12 +23,13 @@ func newDesignControl(env *Env) *cobra.Command {
 	cmd := &cobra.Command{
 		Use:   "design-control",
 		Short: "Every term of a link with its tolerances, and the margins that follow",
-		Long: `Write the design control table of a link at one geometry: every term of the margin with
+		Long: `Write the design control table of a link (with --uplink of the other direction) at one geometry: every term of the margin with
 its design value, favourable and adverse tolerance, law, mean and variance from the
 scenario's design_control, then the nominal, mean, worst-case, root-sum-square and
 mean-less-sigmas margins against its criteria. Terms without a tolerance are taken as
 exact. Criteria are the scenario's own; no standard stands behind them here.`,
-		Example: `  slantwise design-control --spacecraft "Wagtail 1" --station "Skerry Point" --mode safe --range-km 1200 --elevation-deg 20`,
+		Example: `  slantwise design-control --spacecraft "Wagtail 1" --station "Skerry Point" --mode safe --range-km 1200 --elevation-deg 20
+  slantwise design-control --spacecraft "Wagtail 1" --station "Skerry Point" --uplink command --mode slow --range-km 1200 --elevation-deg 20`,
 		Args:    noArgs,
 	}
 	fs := cmd.Flags()

@@ -35,7 +35,8 @@ func newReportRunning(env *Env, run func(context.Context, *Env, reportOptions) e
 		Long: `Write a folder with an index over all passes of the window and a page for each pass:
 when, how high, how strong, whether the link closes and from when to when, how many
 bytes; charts along the pass; the link budget at AOS, at culmination and at the least
-margin; assumptions and cautions. The numbers of each page lie beside it as CSV and
+margin; for each uplink that the station can send when commanding works, its margin, the
+frequency to send and how much the antenna radiates; assumptions and cautions. The numbers of each page lie beside it as CSV and
 JSON.
 
 A pass gets a page for each transmitter of the spacecraft that an antenna of the

@@ -34,7 +34,7 @@ func (p *reportPlan) pageNotes(page *reportPage, chosen *chosenLink) []reports.N
 	var out []reports.Note
 	keep := func(kind reports.NoteKind, list []scenario.Note) {
 		for _, n := range list {
-			if general(n) || concerns(n.About, craft.Name, site.Site.Name, chosen) {
+			if general(n) || concerns(n.About, craft.Name, site.Site.Name, chosen) || p.touchesUplink(page, n.About) {
 				out = append(out, reports.Note{Kind: kind, About: n.About, Text: n.Text})
 			}
 		}
@@ -50,6 +50,18 @@ func (p *reportPlan) pageNotes(page *reportPage, chosen *chosenLink) []reports.N
 	}
 	keep(reports.Default, p.scenario.Assumptions)
 	return out
+}
+
+// touchesUplink tells whether a note is about an uplink of the page.
+func (p *reportPlan) touchesUplink(page *reportPage, about string) bool {
+	for _, u := range p.uplinks[page.Spacecraft][page.Site] {
+		for i := range u.modes {
+			if u.modes[i].touchedBy(about) {
+				return true
+			}
+		}
+	}
+	return false
 }
 
 func linkNotes(c *chosenLink, modes int) []reports.Note {

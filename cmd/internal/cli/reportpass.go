@@ -33,7 +33,7 @@ func (p *reportPlan) load(ctx context.Context, i int) (*reports.Pass, error) {
 	step := sampleStep(page.Duration())
 	if page.link == nil {
 		out.Profile, out.Notes = geometryProfile(craft, site, page.AOS, page.LOS, step), p.pageNotes(page, nil)
-		return out, nil
+		return out, p.addUplinks(out, craft, page)
 	}
 	best, err := page.bestMode(p.scenario, craft, step)
 	if err != nil {
@@ -48,6 +48,9 @@ func (p *reportPlan) load(ctx context.Context, i int) (*reports.Pass, error) {
 	}
 	if err := p.addRates(out, craft, page, best); err != nil {
 		return nil, fmt.Errorf("%s over %s: %w", craft.Name, site.Site.Name, err)
+	}
+	if err := p.addUplinks(out, craft, page); err != nil {
+		return nil, fmt.Errorf("%s over %s, uplink: %w", craft.Name, site.Site.Name, err)
 	}
 	return out, nil
 }
@@ -101,11 +104,9 @@ func reportRadio(s *scenario.Scenario, craft *reportCraft, page *reportPage, bes
 		if at.time.IsZero() {
 			continue
 		}
-		e := craft.ephemeris
-		g, _ := c.link.GeometryOf(at.time, e.StateAt(max(0, min(e.Seconds(at.time), e.Span()))))
-		b, err := c.link.At(g)
+		b, err := c.budgetAt(craft, at.time)
 		if err != nil {
-			return nil, fmt.Errorf("at %s: %w", utc(at.time), err)
+			return nil, err
 		}
 		*at.into = *b
 	}

@@ -22,6 +22,7 @@ type reportPlan struct {
 	craft    []reportCraft
 	sites    []reportSite
 	links    [][]reportLinks // by spacecraft, by station
+	uplinks  [][][]reportUplink
 	pages    []reportPage
 	passes   int
 	warnings []string // beside the scenario's own
@@ -130,22 +131,31 @@ func (p *reportPlan) prepareLinks(mode string) error {
 	found := mode == ""
 	var known []string
 	p.links = make([][]reportLinks, len(p.craft))
+	p.uplinks = make([][][]reportUplink, len(p.craft))
 	sky := newSkies(p.scenario)
 	for i, c := range p.craft {
 		p.links[i] = make([]reportLinks, len(p.sites))
+		p.uplinks[i] = make([][]reportUplink, len(p.sites))
 		for t := range c.Transmitters {
 			for m := range c.Transmitters[t].Modes {
 				known = append(known, c.Transmitters[t].Modes[m].Name)
 				found = found || c.Transmitters[t].Modes[m].Name == mode
 			}
 		}
+		for u := range c.Uplinks {
+			for m := range c.Uplinks[u].Modes {
+				known = append(known, c.Uplinks[u].Modes[m].Name)
+				found = found || c.Uplinks[u].Modes[m].Name == mode
+			}
+		}
 		for k := range p.sites {
 			p.links[i][k] = linksBetween(sky, c.Spacecraft, &p.sites[k], mode)
 			p.warnMissing(&p.sites[k], p.links[i][k].links)
+			p.uplinks[i][k] = p.uplinksBetween(sky, &p.craft[i], &p.sites[k], mode)
 		}
 	}
 	if !found {
-		return inputErrorf("--mode: no transmitter of these spacecraft has a mode %q%s; they have %s", mode, meant(mode, known), quotedList(known))
+		return inputErrorf("--mode: no transmitter or uplink of these spacecraft has a mode %q%s; they have %s", mode, meant(mode, known), quotedList(known))
 	}
 	return nil
 }

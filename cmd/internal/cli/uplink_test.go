@@ -4,6 +4,7 @@ import (
 	"encoding/json"
 	"math"
 	"os"
+	"path/filepath"
 	"strings"
 	"testing"
 )
@@ -157,5 +158,55 @@ func TestUplinkWrongNames(t *testing.T) {
 		if code != ExitInput || !strings.Contains(errOut, c.want) {
 			t.Errorf("%v: code %d, %s; want %s", c.more, code, errOut, c.want)
 		}
+	}
+}
+
+// TestReportHoldsUplinks: the pages over the station that sends show when commanding
+// works, as budget does, and the caution; those over the other do not.
+func TestReportHoldsUplinks(t *testing.T) {
+	inUplinkScenario(t)
+	if code, _, errOut := invoke(t, "report"); code != ExitAnswer {
+		t.Fatalf("code %d: %s", code, errOut)
+	}
+	files, err := filepath.Glob("slantwise-report/passes/probe-a-test-hill-*.json")
+	if err != nil || len(files) == 0 {
+		t.Fatalf("%d files, %v", len(files), err)
+	}
+	budget := askUplink(t, "budget", "--station", "Test Hill", "--uplink", "command", "--mode", "quick", "--step", "30s")
+	text, err := os.ReadFile(files[0])
+	if err != nil {
+		t.Fatal(err)
+	}
+	var page struct {
+		Uplinks []struct {
+			Mode  string
+			Works []struct {
+				From string `json:"from_utc"`
+			}
+			Budgets []struct {
+				Margin float64 `json:"margin_db"`
+			}
+			Radiation struct{ Caution string }
+		}
+	}
+	if err := json.Unmarshal(text, &page); err != nil {
+		t.Fatal(err)
+	}
+	if len(page.Uplinks) != 1 {
+		t.Fatalf("%d uplinks", len(page.Uplinks))
+	}
+	u := page.Uplinks[0]
+	if u.Mode != "quick" || len(u.Works) != len(budget.Pass.Closes) || u.Works[0].From != budget.Pass.Closes[0].From {
+		t.Errorf("the page has mode %s and %v, budget %v", u.Mode, u.Works, budget.Pass.Closes)
+	}
+	if math.Abs(u.Budgets[0].Margin-budget.Samples[0].Margin) > 1e-3 || u.Radiation.Caution != radiationCaution {
+		t.Errorf("margin at AOS %v, budget %v; caution %q", u.Budgets[0].Margin, budget.Samples[0].Margin, u.Radiation.Caution)
+	}
+	others, err := filepath.Glob("slantwise-report/passes/probe-a-saltmarsh-*.html")
+	if err != nil || len(others) == 0 {
+		t.Fatalf("%d files, %v", len(others), err)
+	}
+	if text, err := os.ReadFile(others[0]); err != nil || strings.Contains(string(text), "Commanding") {
+		t.Errorf("a station that cannot send commands: %v", err)
 	}
 }
