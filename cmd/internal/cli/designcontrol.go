@@ -30,7 +30,7 @@ mean-less-sigmas margins against its criteria. Terms without a tolerance are tak
 exact. Criteria are the scenario's own; no standard stands behind them here.`,
 		Example: `  slantwise design-control --spacecraft "Wagtail 1" --station "Skerry Point" --mode safe --range-km 1200 --elevation-deg 20
   slantwise design-control --spacecraft "Wagtail 1" --station "Skerry Point" --uplink command --mode slow --range-km 1200 --elevation-deg 20`,
-		Args:    noArgs,
+		Args: noArgs,
 	}
 	fs := cmd.Flags()
 	addLinkNames(cmd, &o.who)

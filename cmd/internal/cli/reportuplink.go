@@ -52,7 +52,7 @@ func (p *reportPlan) addUplinks(out *reports.Pass, craft *reportCraft, page *rep
 		}
 		out.Uplinks = append(out.Uplinks, *u)
 		about := "uplink " + u.Name
-		for _, n := range append(best.link.linkNotes(), best.licences...) {
+		for _, n := range append(best.link.linkNotes(), best.limits...) {
 			if n.Kind != downlink.Default {
 				out.Notes = append(out.Notes, reports.Note{Kind: noteKinds[n.Kind], About: about, Text: n.Text})
 			}

@@ -172,35 +172,42 @@ func TestReportHoldsUplinks(t *testing.T) {
 	if err != nil || len(files) == 0 {
 		t.Fatalf("%d files, %v", len(files), err)
 	}
-	budget := askUplink(t, "budget", "--station", "Test Hill", "--uplink", "command", "--mode", "quick", "--step", "30s")
-	text, err := os.ReadFile(files[0])
-	if err != nil {
-		t.Fatal(err)
-	}
-	var page struct {
-		Uplinks []struct {
-			Mode  string
-			Works []struct {
-				From string `json:"from_utc"`
+	compared := 0
+	for _, file := range files {
+		text, err := os.ReadFile(file)
+		if err != nil {
+			t.Fatal(err)
+		}
+		var page struct {
+			Uplinks []struct {
+				Mode  string
+				Works []struct {
+					From string `json:"from_utc"`
+				}
+				Budgets []struct {
+					Margin float64 `json:"margin_db"`
+				}
+				Radiation struct{ Caution string }
 			}
-			Budgets []struct {
-				Margin float64 `json:"margin_db"`
-			}
-			Radiation struct{ Caution string }
+		}
+		if err := json.Unmarshal(text, &page); err != nil {
+			t.Fatal(err)
+		}
+		if len(page.Uplinks) != 1 || page.Uplinks[0].Radiation.Caution != radiationCaution {
+			t.Fatalf("%s: uplinks %+v", file, page.Uplinks)
+		}
+		u := page.Uplinks[0]
+		if len(u.Works) == 0 {
+			continue
+		}
+		compared++
+		budget := askUplink(t, "budget", "--station", "Test Hill", "--uplink", "command", "--mode", u.Mode, "--step", "60s", "--pass", u.Works[0].From)
+		if len(budget.Pass.Closes) != len(u.Works) || budget.Pass.Closes[0].From != u.Works[0].From || math.Abs(u.Budgets[0].Margin-budget.Samples[0].Margin) > 1e-3 {
+			t.Errorf("%s: %+v, budget %+v", file, u, budget.Pass.Closes)
 		}
 	}
-	if err := json.Unmarshal(text, &page); err != nil {
-		t.Fatal(err)
-	}
-	if len(page.Uplinks) != 1 {
-		t.Fatalf("%d uplinks", len(page.Uplinks))
-	}
-	u := page.Uplinks[0]
-	if u.Mode != "quick" || len(u.Works) != len(budget.Pass.Closes) || u.Works[0].From != budget.Pass.Closes[0].From {
-		t.Errorf("the page has mode %s and %v, budget %v", u.Mode, u.Works, budget.Pass.Closes)
-	}
-	if math.Abs(u.Budgets[0].Margin-budget.Samples[0].Margin) > 1e-3 || u.Radiation.Caution != radiationCaution {
-		t.Errorf("margin at AOS %v, budget %v; caution %q", u.Budgets[0].Margin, budget.Samples[0].Margin, u.Radiation.Caution)
+	if compared < 2 {
+		t.Errorf("commanding works in %d passes", compared)
 	}
 	others, err := filepath.Glob("slantwise-report/passes/probe-a-saltmarsh-*.html")
 	if err != nil || len(others) == 0 {
