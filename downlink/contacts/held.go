@@ -60,11 +60,40 @@ func (p *Problem) tell(c Contact) string {
 // lead time of its station, of at least its least length, ends on whole steps.
 func (p *Problem) Available(candidate int) []Span {
 	w := &p.Candidates[candidate]
-	a := &p.Antennas[w.Antenna]
-	s := &p.Stations[a.Station]
+	s := &p.Stations[p.Antennas[w.Antenna].Station]
+	whole := w.Window
+	if s.Lead > 0 {
+		whole.From = max(whole.From, p.Now+s.Lead+w.SetUp)
+	}
 	step := p.Resolution()
 	var out []Span
-	for _, open := range p.open(w, s) {
+	for _, f := range p.standing(candidate, whole) {
+		f = Span{up(f.From, step), down(f.To, step)}
+		if f.Length() >= w.Least {
+			out = append(out, f)
+		}
+	}
+	return out
+}
+
+// Stands tells whether a contact could be where it is as far as its candidate alone
+// tells, lead time aside: so that one in force that an outage has hit does not.
+func (p *Problem) Stands(c Contact) bool {
+	for _, s := range p.standing(c.Candidate, p.Candidates[c.Candidate].Window) {
+		if s.Holds(c.Span) {
+			return true
+		}
+	}
+	return false
+}
+
+// standing returns the parts of a span of a candidate that are open and staffed.
+func (p *Problem) standing(candidate int, whole Span) []Span {
+	w := &p.Candidates[candidate]
+	a := &p.Antennas[w.Antenna]
+	s := &p.Stations[a.Station]
+	var out []Span
+	for _, open := range staffed(w, s, whole) {
 		var taken []Span
 		for _, list := range [][]Span{a.Closed, s.Closed} {
 			for _, t := range list {
@@ -72,22 +101,14 @@ func (p *Problem) Available(candidate int) []Span {
 			}
 		}
 		taken = append(taken, p.Spacecraft[w.Spacecraft].Closed...)
-		for _, f := range open.Without(taken) {
-			f = Span{up(f.From, step), down(f.To, step)}
-			if f.Length() >= w.Least {
-				out = append(out, f)
-			}
-		}
+		out = append(out, open.Without(taken)...)
 	}
 	return out
 }
 
-// open returns the parts of a window in which its station is staffed and can be booked.
-func (p *Problem) open(w *Candidate, s *Station) []Span {
-	whole := w.Window
-	if s.Lead > 0 {
-		whole.From = max(whole.From, p.Now+s.Lead+w.SetUp)
-	}
+// staffed returns the parts of a span in which a station is staffed from set-up to
+// tear-down.
+func staffed(w *Candidate, s *Station, whole Span) []Span {
 	if s.Staffed == nil {
 		return []Span{whole}
 	}

@@ -93,7 +93,7 @@ type Station struct {
 	Name    string
 	Zone    *time.Location // of its local day; nil: UTC
 	Lead    Ms             // least time from Now to the start of the set-up of a new contact
-	Notice  Ms             // a contact in force whose set-up starts sooner after Now cannot be dropped or changed
+	Notice  Ms             // a contact in force that still stands and whose set-up starts sooner after Now cannot be dropped or changed
 	Staffed []Span         // set-up to tear-down lie in one of them; nil: always
 	Closed  []Span         // outages and reserved times
 }

@@ -189,9 +189,22 @@ func (j *judge) held() {
 	for _, h := range j.p.InForce {
 		s := &j.p.Stations[j.p.Antennas[j.p.Candidates[h.Candidate].Antenna].Station]
 		begin := h.From - j.p.Candidates[h.Candidate].SetUp
-		if s.Notice > 0 && begin < j.p.Now+s.Notice && !has(h) {
+		if s.Notice > 0 && begin < j.p.Now+s.Notice && !has(h) && j.stands(h) {
 			j.breach(RuleHeld, []int{}, "%s begins %g s after now and can no longer be dropped or changed: station %q wants a notice of %g s",
 				tell(h), (begin - j.p.Now).Seconds(), s.Name, s.Notice.Seconds())
 		}
 	}
+}
+
+// stands tells whether a contact in force could still be held where it is: nothing of it
+// is closed, and staff is there.
+func (j *judge) stands(h contacts.Contact) bool {
+	alone := &judge{p: j.p, plan: []contacts.Contact{h}}
+	alone.single(0)
+	for _, b := range alone.out {
+		if b.Rule == RuleClosed || b.Rule == RuleStaff || b.Rule == RuleWindow {
+			return false
+		}
+	}
+	return true
 }

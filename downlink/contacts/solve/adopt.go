@@ -1,0 +1,64 @@
+package solve
+
+import (
+	"cmp"
+	"slices"
+
+	"slantwise/downlink/contacts"
+)
+
+// load puts a plan on the board in place of what is there.
+func (s *search) load(plan contacts.Plan) {
+	s.empty()
+	for _, c := range plan.Contacts {
+		if !slices.ContainsFunc(s.b.m.held, func(h contacts.Contact) bool { return h.Candidate == c.Candidate && h.Span == c.Span }) {
+			s.b.add(c)
+		}
+	}
+	s.b.log = s.b.log[:0]
+}
+
+// empty takes off all that can be.
+func (s *search) empty() {
+	for _, list := range s.b.antennas {
+		for _, x := range slices.Clone(list) {
+			if !s.isFixed(x) {
+				s.b.remove(x)
+			}
+		}
+	}
+}
+
+// adopt makes a plan of what the relaxed problem has chosen: contacts by their worth at
+// the prices, as far as they fit or a part of them, then the rest as the first plan. It
+// stays on the board where it is no worse than the best by much.
+func (s *search) adopt(list []chosen) {
+	s.empty()
+	s.pools(1)
+	m := s.b.m
+	type ranked struct {
+		chosen
+		rank float64
+	}
+	var order []ranked
+	for _, c := range list {
+		if c.window >= 0 {
+			order = append(order, ranked{c, s.density(c.window)})
+		}
+	}
+	slices.SortStableFunc(order, func(a, b ranked) int { return cmp.Compare(b.rank, a.rank) })
+	for _, x := range order {
+		w := &m.windows[x.window]
+		for _, o := range s.b.openings(w, contacts.Span{From: x.from, To: x.to}, nil) {
+			s.b.try(w, o, false)
+		}
+	}
+	s.greedy()
+	s.b.settle()
+	if s.b.total > s.bestValue {
+		s.keep()
+	} else {
+		s.load(s.best)
+	}
+	s.b.log = s.b.log[:0]
+}

@@ -1,0 +1,297 @@
+package solve
+
+import (
+	"math"
+	"math/rand/v2"
+	"slices"
+
+	"slantwise/downlink/contacts"
+)
+
+// search improves the plan on a board by emptying a part of it and filling it again.
+type search struct {
+	b *board
+	d *dual
+	r *rand.Rand
+
+	prices []float64 // the last that the bound has found, or nil
+	guide  []float64 // a share of them, drawn for each move
+	cell   ms
+
+	best      contacts.Plan
+	bestValue float64
+	heat      float64 // value that a move may lose
+
+	chain    chain
+	slots    []slot
+	refs     []int // window of each slot
+	gains    []float64
+	open     []contacts.Span
+	longest  []ms    // longest window of each antenna
+	requests [][]int // windows of each request
+}
+
+func newSearch(m *model, d *dual, seed uint64) *search {
+	s := &search{b: newBoard(m), d: d, r: rand.New(rand.NewPCG(seed, 1)), guide: make([]float64, len(d.rows)), longest: make([]ms, len(m.p.Antennas))}
+	shortest := contacts.Day
+	for _, w := range m.windows {
+		s.longest[w.antenna] = max(s.longest[w.antenna], w.to-w.from)
+		shortest = min(shortest, w.least)
+	}
+	// Cells of chains: whole steps, about a twentieth of the shortest contact.
+	s.cell = max(1, shortest/20/m.step) * m.step
+	if u := d.unit(); u > s.cell && u%m.step == 0 && u <= shortest {
+		s.cell = u
+	}
+	s.pools(1)
+	s.greedy()
+	s.keep()
+	return s
+}
+
+// pools sets the guide to a share of the prices; pools have theirs always, since what
+// they say is what a byte is worth.
+func (s *search) pools(share float64) {
+	for r := range s.guide {
+		price := 0.0
+		if s.prices != nil {
+			price = s.prices[r] * share
+		}
+		if reward := s.d.rows[r].reward; reward != nil {
+			price = reward[0].each / 2
+			if s.prices != nil {
+				price = max(s.prices[r], reward[0].each/100)
+			}
+		}
+		s.guide[r] = price
+	}
+}
+
+// keep notes the plan on the board if it is the best so far.
+func (s *search) keep() {
+	if s.best.Contacts == nil || s.b.total > s.bestValue+1e-9*math.Abs(s.bestValue) {
+		s.best, s.bestValue = s.b.plan(), s.b.total
+	}
+}
+
+// windowsIn returns the windows of an antenna that touch a span.
+func (s *search) windowsIn(antenna int, in contacts.Span) []int {
+	ws := s.b.m.windows
+	lo, _ := slices.BinarySearchFunc(ws, in.From-s.longest[antenna], func(w window, t ms) int {
+		if w.antenna < antenna || w.antenna == antenna && w.from < t {
+			return -1
+		}
+		return 1
+	})
+	var out []int
+	for ; lo < len(ws) && ws[lo].antenna == antenna && ws[lo].from < in.To; lo++ {
+		if ws[lo].to > in.From {
+			out = append(out, lo)
+		}
+	}
+	return out
+}
+
+// run makes a number of moves.
+func (s *search) run(moves int, stop func() bool) {
+	if len(s.b.m.windows) == 0 {
+		return
+	}
+	for range moves {
+		if stop() {
+			return
+		}
+		n, before := len(s.b.log), s.b.total
+		s.move()
+		s.b.settle()
+		if s.b.total < before-s.heat*s.r.Float64()-1e-12*math.Abs(before) {
+			s.b.undo(n)
+		} else {
+			s.b.log = s.b.log[:0]
+			s.keep()
+		}
+	}
+}
+
+// move empties and fills a part of the plan that is drawn at random.
+func (s *search) move() {
+	shares := []float64{0, 0, 0.5, 0.9, 1}
+	s.pools(shares[s.r.IntN(len(shares))])
+	i := s.r.IntN(len(s.b.m.windows))
+	w := s.b.m.windows[i]
+	reach := ms(float64(w.most+w.setUp+w.tearDown) * (1 + 7*s.r.Float64()))
+	middle := w.from + ms(s.r.Float64()*float64(w.to-w.from))
+	in := contacts.Span{From: middle - reach/2, To: middle + reach/2}
+	switch k := s.r.IntN(10); {
+	case k < 3:
+		s.replan([]int{w.antenna}, nil, in)
+	case k < 5:
+		s.replan(nil, []int{w.craft}, in)
+	case k < 7:
+		s.replan([]int{w.antenna, s.related(&w, in)}, []int{w.craft}, in)
+	default:
+		s.force(i)
+	}
+}
+
+// related draws another antenna that has windows of the same spacecraft or request.
+func (s *search) related(w *window, in contacts.Span) int {
+	k := s.r.IntN(len(s.b.m.windows))
+	for range 20 {
+		if o := &s.b.m.windows[k]; o.craft == w.craft && o.antenna != w.antenna && o.from < in.To && o.to > in.From {
+			return o.antenna
+		}
+		k = s.r.IntN(len(s.b.m.windows))
+	}
+	return s.b.m.windows[k].antenna
+}
+
+// replan empties antennas and spacecraft within a span and plans them anew, chain by
+// chain; then whatever has lost its place is tried elsewhere.
+func (s *search) replan(antennas, crafts []int, in contacts.Span) {
+	var lost []int
+	empty := func(list []*item) {
+		for _, x := range slices.Clone(list) {
+			if !s.isFixed(x) && x.From < in.To && x.To > in.From {
+				lost = append(lost, x.group)
+				s.b.remove(x)
+			}
+		}
+	}
+	for _, a := range antennas {
+		empty(near(s.b.antennas[a], in))
+	}
+	for _, c := range crafts {
+		empty(near(s.b.crafts[c], in))
+	}
+	// A little wider, so that what was cut off at an edge can come back.
+	in = contacts.Span{From: in.From - (in.To-in.From)/4, To: in.To + (in.To-in.From)/4}
+	var around []int
+	for _, k := range s.r.Perm(len(antennas) + len(crafts)) {
+		var list []int
+		if k < len(antennas) {
+			list = s.windowsIn(antennas[k], in)
+		} else {
+			list = s.craftWindows(crafts[k-len(antennas)], in)
+		}
+		around = append(around, list...)
+		s.replanChain(list, in, k >= len(antennas))
+	}
+	s.fill(around, contacts.Span{From: 0, To: s.b.m.p.Length}, 0.3)
+	s.elsewhere(lost)
+}
+
+// isFixed tells whether a contact must stay.
+func (s *search) isFixed(x *item) bool {
+	return slices.ContainsFunc(s.b.m.held, func(h contacts.Contact) bool { return h.Candidate == x.Candidate && h.Span == x.Span })
+}
+
+// near returns the part of a list that can touch a span.
+func near(list []*item, in contacts.Span) []*item {
+	lo := place(list, in.From)
+	for lo > 0 && list[lo-1].To > in.From {
+		lo--
+	}
+	return list[lo:place(list, in.To)]
+}
+
+// craftWindows returns the windows of a spacecraft that touch a span.
+func (s *search) craftWindows(craft int, in contacts.Span) []int {
+	var out []int
+	for a := range s.longest {
+		for _, i := range s.windowsIn(a, in) {
+			if s.b.m.windows[i].craft == craft {
+				out = append(out, i)
+			}
+		}
+	}
+	return out
+}
+
+// elsewhere tries groups that have lost contacts in all their windows.
+func (s *search) elsewhere(groups []int) {
+	slices.Sort(groups)
+	everywhere := contacts.Span{From: 0, To: s.b.m.p.Length}
+	for _, g := range slices.Compact(groups) {
+		s.fill(s.groupWindows(g), everywhere, 0.3)
+	}
+}
+
+// groupWindows returns the windows of a request or a pass.
+func (s *search) groupWindows(g int) []int {
+	m := s.b.m
+	if g >= len(m.p.Requests) {
+		return m.byCand[g-len(m.p.Requests)]
+	}
+	if s.requests == nil {
+		s.requests = make([][]int, len(m.p.Requests))
+		for i, w := range m.windows {
+			if w.group < len(m.p.Requests) {
+				s.requests[w.group] = append(s.requests[w.group], i)
+			}
+		}
+	}
+	return s.requests[g]
+}
+
+// force puts a contact into a window whatever is in its way, and tries that elsewhere.
+func (s *search) force(i int) {
+	b := s.b
+	w := &b.m.windows[i]
+	length := w.most
+	if w.group < len(b.m.p.Requests) && b.m.split {
+		left := b.m.p.Requests[w.group].Desired
+		for _, x := range b.groups[w.group] {
+			left -= x.Length()
+		}
+		if left > 0 {
+			length = min(length, max(w.least, left))
+		}
+	}
+	length = max(-floor(-w.least, b.m.step)*b.m.step, floor(length, b.m.step)*b.m.step)
+	if length > w.to-w.from {
+		return
+	}
+	room := floor(w.to-w.from-length, b.m.step)
+	from := w.from + ms(s.r.Int64N(int64(room)+1))*b.m.step
+	switch s.r.IntN(4) {
+	case 0:
+		from = w.from
+	case 1:
+		from = w.from + room*b.m.step
+	}
+	c := contacts.Contact{Candidate: w.candidate, Span: contacts.Span{From: from, To: from + length}}
+	busy := b.m.p.Busy(c)
+	lost := []int{w.group}
+	away := func(list []*item, blocks func(x *item) bool) {
+		for _, x := range slices.Clone(list) {
+			if blocks(x) && !s.isFixed(x) {
+				lost = append(lost, x.group)
+				b.remove(x)
+			}
+		}
+	}
+	away(near(b.antennas[w.antenna], contacts.Span{From: busy.From - contacts.Day, To: busy.To + contacts.Day}), func(x *item) bool { return x.busy.Overlap(busy) > 0 })
+	if b.m.p.Spacecraft[w.craft].AtOnce < 2 {
+		away(b.crafts[w.craft], func(x *item) bool {
+			gap := b.m.gap(w.candidate, x.Candidate)
+			return x.From < c.To+gap && c.From < x.To+gap
+		})
+	}
+	away(b.groups[w.group], func(*item) bool { return !b.m.split || s.r.IntN(3) == 0 })
+	if !b.fits(c) {
+		s.elsewhere(lost)
+		return
+	}
+	b.add(c)
+	in := contacts.Span{From: busy.From - 2*length, To: busy.To + 2*length}
+	list := s.windowsIn(w.antenna, in)
+	if s.r.IntN(2) == 0 {
+		s.replanChain(list, in, false)
+	}
+	s.fill(list, contacts.Span{From: 0, To: b.m.p.Length}, 0.3)
+	s.elsewhere(lost)
+	for _, x := range slices.Clone(near(b.antennas[w.antenna], in)) {
+		b.grow(x)
+	}
+}
