@@ -13,6 +13,7 @@ const DefaultAttitudeProbability = 0.9
 //	sun           z at the Sun, x on the side of the Earth's north pole in the plane of Sun and pole
 //	spin          z along an axis fixed among the stars; x turns about it with a phase that is not known
 //	yaw steering  z at the Earth's centre, y (the axis of the solar array) normal to the Sun, the Sun on the side of x
+//	history       as the records of a file tell
 type Attitude int
 
 // Attitudes.
@@ -24,11 +25,12 @@ const (
 	AttitudeSun                         // body z at the Sun
 	AttitudeSpin                        // body z along Body.SpinAxis, the phase not known
 	AttitudeYawSteering                 // body z at the Earth's centre, body y normal to the Sun
+	AttitudeHistory                     // by Body.History
 )
 
 // String returns the attitude as the scenario writes it.
 func (a Attitude) String() string {
-	return [...]string{"unstated", "nadir", "station", "tumbling", "sun", "spin", "yaw_steering"}[a]
+	return [...]string{"unstated", "nadir", "station", "tumbling", "sun", "spin", "yaw_steering", "history"}[a]
 }
 
 // NeedsSun tells whether the attitude follows the Sun.
@@ -37,7 +39,7 @@ func (a Attitude) NeedsSun() bool { return a == AttitudeSun || a == AttitudeYawS
 // HasBody tells whether the attitude knows the body's axes, but for a spin's phase.
 func (a Attitude) HasBody() bool {
 	switch a {
-	case AttitudeNadir, AttitudeSun, AttitudeSpin, AttitudeYawSteering:
+	case AttitudeNadir, AttitudeSun, AttitudeSpin, AttitudeYawSteering, AttitudeHistory:
 		return true
 	}
 	return false

@@ -5,6 +5,7 @@ import (
 	"time"
 
 	"slantwise/orbit"
+	"slantwise/orbit/attitude"
 	"slantwise/orbit/unit"
 )
 
@@ -19,6 +20,8 @@ type Body struct {
 
 	SpinAxis orbit.Vec3 // of AttitudeSpin: of length one, true equator and mean equinox of date
 	SpinGain SpinGain   // of AttitudeSpin: what the turning counts as
+
+	History *attitude.History // of AttitudeHistory
 }
 
 // BodyDirection is a direction in body axes. The zero value is body z.
@@ -90,7 +93,10 @@ func (v *bodyView) look(g *Geometry, s orbit.State) {
 		}
 		return
 	}
-	x, y, z := v.axes(g.Time, s)
+	x, y, z, err := v.axes(g.Time, s)
+	if err != nil {
+		return // told where the gain is asked for
+	}
 	d := orbit.Vec3{X: to.Dot(x), Y: to.Dot(y), Z: to.Dot(z)}
 	g.BodyOffZ, g.BodyAroundZ = polar(d.X, d.Y, d.Z)
 	g.OffBoresight, g.AroundBoresight = polar(d.Dot(v.a), d.Dot(v.b), d.Dot(v.c))
@@ -112,17 +118,22 @@ func (v *bodyView) spinAxis(t time.Time) orbit.Vec3 {
 	return orbit.TEMEToEarthFixed(v.body.SpinAxis, orbit.Vec3{}, t, v.bodies.earth).Position
 }
 
-// axes returns the body's axes in Earth-fixed components.
-func (v *bodyView) axes(t time.Time, s orbit.State) (x, y, z orbit.Vec3) {
+// axes returns the body's axes in Earth-fixed components; the error is that of a
+// history.
+func (v *bodyView) axes(t time.Time, s orbit.State) (x, y, z orbit.Vec3, err error) {
 	switch v.attitude {
+	case AttitudeHistory:
+		return v.body.History.BodyAxes(t, v.bodies.earth)
 	case AttitudeSun:
 		sun, _ := v.bodies.positions(t)
-		return sunAxes(sun.Sub(s.Position).Unit())
+		x, y, z = sunAxes(sun.Sub(s.Position).Unit())
 	case AttitudeYawSteering:
 		sun, _ := v.bodies.positions(t)
-		return yawAxes(s, sun.Sub(s.Position).Unit())
+		x, y, z = yawAxes(s, sun.Sub(s.Position).Unit())
+	default:
+		x, y, z = nadirAxes(s)
 	}
-	return nadirAxes(s)
+	return x, y, z, nil
 }
 
 // nadirAxes: z to the Earth's centre, y against the orbit's normal.

@@ -69,6 +69,9 @@ func (l *Link) noTransmitGain(g *Geometry) error {
 		unknown = math.IsNaN(g.BodyOffZ.Radians())
 	}
 	switch {
+	case unknown && l.view != nil && t.Attitude == AttitudeHistory:
+		_, _, _, err := t.Body.History.BodyAxes(g.Time, l.spec.Bodies.earth)
+		return fmt.Errorf("transmitter %q: %w", t.Name, err)
 	case unknown && t.Attitude.HasBody():
 		return fmt.Errorf("%s %q: attitude %s needs the Sun and the stars, and the link was made without the sky of a window", l.who(), t.Name, t.Attitude)
 	case unknown:

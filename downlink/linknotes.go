@@ -68,7 +68,7 @@ func (l *Link) noteCraftAntenna() {
 			return
 		}
 		l.note(Assumption, "attitude nadir: the boresight points at the Earth's centre (the geodetic nadir lies up to 0.2 deg from it)")
-	case AttitudeSun, AttitudeSpin, AttitudeYawSteering:
+	case AttitudeSun, AttitudeSpin, AttitudeYawSteering, AttitudeHistory:
 		l.noteBody()
 	case AttitudeTumbling:
 		l.noteProbability()
@@ -91,6 +91,9 @@ func (l *Link) noteBody() {
 		AttitudeSpin:        "body z is the spin axis, fixed among the stars; the phase of the spin is not known",
 		AttitudeYawSteering: "body z points at the Earth's centre, body y is normal to the Sun, and the Sun stands on the side of body x; turns at noon and midnight of the orbit are taken as fast as the law asks, which a spacecraft may not follow",
 	}[t.Attitude]
+	if t.Attitude == AttitudeHistory {
+		held = "the body is held by " + t.Body.History.Source()
+	}
 	where := "the boresight is body z"
 	if b := t.Body.Boresight; b.OffZ != 0 {
 		where = fmt.Sprintf("the boresight stands %g deg off body z and %g deg around it, from x toward y", asGiven(b.OffZ), asGiven(b.AroundZ))

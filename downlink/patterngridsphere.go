@@ -16,7 +16,7 @@ var (
 
 // finestCell is how wide a piece of a grid's cell is at most over which it is
 // integrated or counted.
-const finestCell = 5 * unit.Degree
+const finestCell = 15 * unit.Degree
 
 // integrate returns the share of the power that the grid radiates: the mean of the
 // gain over the sphere, nothing beyond its last angle. Within 1e-6 of a smooth

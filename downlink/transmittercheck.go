@@ -90,6 +90,9 @@ func (t *Transmitter) checkBody() []error {
 	if n := b.SpinAxis.Norm(); t.Attitude == AttitudeSpin && !(n > 1-1e-9 && n < 1+1e-9) {
 		faults = append(faults, &unit.RangeError{Quantity: "length of the spin axis", Value: n, Allowed: "1"})
 	}
+	if t.Attitude == AttitudeHistory && b.History == nil {
+		faults = append(faults, errors.New("attitude history has no records; give them"))
+	}
 	return faults
 }
 

@@ -21,6 +21,7 @@ var layers = []struct {
 	{"slantwise/orbit/elements", 2},
 	{"slantwise/orbit/fit", 2},
 	{"slantwise/orbit/oem", 3},
+	{"slantwise/orbit/attitude", 2},
 	{"slantwise/station", 3},
 	{"slantwise/station/pass", 4},
 	{"slantwise/station/mount", 4},

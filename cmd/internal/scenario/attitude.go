@@ -2,9 +2,11 @@ package scenario
 
 import (
 	"math"
+	"time"
 
 	"slantwise/downlink"
 	"slantwise/orbit"
+	"slantwise/orbit/attitude"
 	"slantwise/orbit/unit"
 )
 
@@ -14,20 +16,22 @@ var spinKeys = []string{"axis_right_ascension_deg", "axis_declination_deg", "cou
 var attitudes = map[string]downlink.Attitude{
 	"nadir": downlink.AttitudeNadir, "station": downlink.AttitudeStation, "tumbling": downlink.AttitudeTumbling,
 	"sun": downlink.AttitudeSun, "spin": downlink.AttitudeSpin, "yaw_steering": downlink.AttitudeYawSteering,
+	"history": downlink.AttitudeHistory,
 }
 
 // attitude reads how the antenna is held. It must be there where the pattern has a
 // direction and the spacecraft is flown.
 func (o object) attitude(t *downlink.Transmitter, n Need) {
-	word, given := o.word("attitude", "nadir", "station", "tumbling", "sun", "spin", "yaw_steering")
+	word, given := o.word("attitude", "nadir", "station", "tumbling", "sun", "spin", "yaw_steering", "history")
 	if given {
 		t.Attitude = attitudes[word]
 	}
 	directed := t.EIRP == nil && t.Pattern.Kind != downlink.Isotropic
 	if !o.has("attitude") && directed && n == NeedOrbits {
-		o.missing("attitude", "nadir, station, tumbling, sun, spin or yaw_steering, since the antenna's gain depends on the direction")
+		o.missing("attitude", "nadir, station, tumbling, sun, spin, yaw_steering or history, since the antenna's gain depends on the direction")
 	}
 	o.spin(t)
+	o.history(t)
 	if b := t.Body.Boresight; (t.Attitude == downlink.AttitudeStation || t.Attitude == downlink.AttitudeTumbling) && b.OffZ != 0 {
 		o.fault(o.get("antenna"), "antenna", "a boresight on the body has no effect with attitude: %s", "leave the antenna's boresight keys out", word)
 	}
@@ -69,6 +73,55 @@ func (o object) spin(t *downlink.Transmitter) {
 	t.Body.SpinGain = map[string]downlink.SpinGain{"exceeded": downlink.SpinExceeded, "mean": downlink.SpinMean, "worst": downlink.SpinWorst}[word]
 	if c.node != nil && !c.has("counts_as") {
 		c.assume("counts_as left out: a spin counts as the gain reached or exceeded with attitude_probability over a turn")
+	}
+}
+
+// history reads the attitude history of a spacecraft.
+func (o object) history(t *downlink.Transmitter) {
+	if t.Attitude != downlink.AttitudeHistory {
+		o.useless("unless attitude is history", "attitude_file")
+		return
+	}
+	if !o.has("attitude_file") {
+		o.missing("attitude_file", "a CCSDS attitude ephemeris message")
+		return
+	}
+	name, ok := o.text("attitude_file")
+	if !ok {
+		return
+	}
+	f := o.file("attitude_file", name)
+	if f == nil {
+		return
+	}
+	defer f.Close()
+	h, err := attitude.Read(f, o.r.earthTurn)
+	if err != nil {
+		o.fileFaults("attitude_file", name, err)
+		return
+	}
+	t.Body.History = h
+	var spans []string
+	for _, s := range h.Spans() {
+		spans = append(spans, s[0].Format(time.RFC3339)+" to "+s[1].Format(time.RFC3339))
+	}
+	o.assume("attitude_file %s understood as the attitude of %s, useable from %s: %s", quote(name), quote(h.Object), list(spans), h.Source())
+	if all := h.Spans(); !o.r.span.Start.IsZero() && (all[0][0].After(o.r.span.Start) || all[len(all)-1][1].Before(o.r.span.End)) {
+		o.warn("attitude_file %s does not hold the whole window: a budget outside its spans is refused", quote(name))
+	}
+	for _, w := range h.Warnings {
+		o.warn("attitude_file %s: %s", quote(name), w)
+	}
+}
+
+// fileFaults adds the faults of a file that a key names, each on its own.
+func (o object) fileFaults(key, name string, err error) {
+	list := []error{err}
+	if joined, ok := err.(interface{ Unwrap() []error }); ok {
+		list = joined.Unwrap()
+	}
+	for _, e := range list {
+		o.fault(o.get(key), key, "%s: %v", "", name, e)
 	}
 }
 

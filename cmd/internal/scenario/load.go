@@ -51,6 +51,7 @@ func (r *reader) scenario(root *tree.Node) *Scenario {
 	o := r.object(root, "", topKeys)
 	o.about = "scenario"
 	s := &Scenario{Window: r.window(o), Earth: r.earth(o)}
+	r.earthTurn, r.span = s.Earth, s.Window
 	s.Choice = r.choice(o)
 	s.Horizon = elevationKind(o, "horizon", "AOS and LOS are decided by")
 	s.Sets = r.elementFiles(o)

@@ -10,6 +10,7 @@ import (
 	"slantwise/cmd/internal/scenario/tree"
 	"slantwise/downlink/modem"
 	"slantwise/downlink/propagation"
+	"slantwise/orbit"
 )
 
 // reader turns the tree of a scenario into domain values and collects what is wrong
@@ -21,6 +22,8 @@ type reader struct {
 	asked         propagation.Exceedance // the percentage at which curves of the climate will be read; 0: at none
 	catalogue     *modem.Catalogue       // in which modes are looked up; nil: the standard one
 	codingsUnread bool                   // a file of its rows is at fault
+	earthTurn     orbit.EarthOrientation // of the scenario
+	span          Window                 // of the scenario
 	faults        faults
 	assumptions   []Note
 	warnings      []Note

@@ -9,7 +9,7 @@ import (
 
 var transmitterKeys = []string{
 	"name", "frequency_mhz", "power_w", "power_dbm", "power_dbw", "eirp_dbw", "eirp_dbm", "line_loss_db", "antenna",
-	"attitude", "attitude_probability", "spin", "polarization", "axial_ratio_db", "polarization_tilt_deg", "modes",
+	"attitude", "attitude_probability", "attitude_file", "spin", "polarization", "axial_ratio_db", "polarization_tilt_deg", "modes",
 	"other_polarization_in_use", "implementation_loss_db", "required_margin_db", "extra_losses", "allotted_bandwidth_mhz", "highest_data_rate_bps",
 	"eirp_is_greatest", "spectrum_peak_db_hz", "oscillator", "coherent",
 }
