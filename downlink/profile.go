@@ -46,6 +46,8 @@ type Profile struct {
 	// nil: where they stand or the beamwidth is not known.
 	SunInBeam, MoonInBeam []Interval
 
+	HalfBeamDeg float64 // from the axis to the half-power point; NaN where the beamwidth is not known
+
 	// BeamUnsure is while the beam is too narrow to be sure of: SureErrorDeg beyond the
 	// half-power point. Empty: never; nil: the orbit does not lead the beam.
 	BeamUnsure []Interval

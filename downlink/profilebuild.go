@@ -80,7 +80,10 @@ func newProfile(l *Link, n int) *Profile {
 	p := &Profile{Terms: l.terms, TermValues: make([][]float64, len(l.terms)),
 		NoiseParts: l.noise.parts, NoiseK: make([][]float64, len(l.noise.parts)),
 		AchievableLimit: make([]RateLimit, n), Usable: make([]bool, n),
-		DataRate: l.dataRate(), RequiredMarginDB: float64(l.spec.Transmitter.RequiredMargin)}
+		DataRate: l.dataRate(), RequiredMarginDB: float64(l.spec.Transmitter.RequiredMargin), HalfBeamDeg: math.NaN()}
+	if l.beamwidth > 0 {
+		p.HalfBeamDeg = (l.beamwidth / 2).Degrees()
+	}
 	columns := []*[]float64{&p.Seconds, &p.AzimuthDeg, &p.ElevationDeg, &p.ApparentElevationDeg, &p.RangeKm, &p.RangeRateKmS,
 		&p.OffBoresightDeg, &p.OrbitAlongDeg, &p.OrbitTotalDeg, &p.DopplerSpreadHz, &p.SureErrorDeg, &p.SunDeg, &p.MoonDeg, &p.sunUpDeg, &p.moonUpDeg, &p.DopplerHz, &p.ReceivedPowerDBm, &p.FluxDensityDBWM2, &p.SystemNoiseK, &p.GOverTDBK,
 		&p.CN0DBHz, &p.EbN0DB, &p.MarginDB, &p.MarginOverDB, &p.AchievableRateBps}

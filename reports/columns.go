@@ -79,7 +79,7 @@ func radioLaterColumns(p *Pass) []column {
 	if r.Plan != nil {
 		list = append(list, planColumns(r.Plan)...)
 	}
-	return list
+	return append(list, suretyColumns(p)...)
 }
 
 // ofLength keeps the columns that have a value for each sample.

@@ -34,6 +34,9 @@ func eventTable(p *Pass) budgetView {
 			}
 		}
 	}
+	if p.Surety != nil {
+		rows = append(rows, suretyRows(p.Surety, p.Radio != nil)...)
+	}
 	view.Parts = []budgetPart{{Rows: rows}}
 	return view
 }

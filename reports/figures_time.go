@@ -16,6 +16,9 @@ func timeFigures(p *Pass, fr *frame) []timeFigure {
 		list = append(list, planFigure(p, fr))
 	}
 	list = append(list, heightFigure(p))
+	if p.Radio != nil && p.Surety != nil {
+		list = append(list, beamFigure(p))
+	}
 	if p.Radio != nil {
 		list = append(list, pathFigure(p), noiseFigure(p, fr), dopplerFigure(p))
 		if finite(p.Profile.Volume.AchievableBytes) {

@@ -45,6 +45,9 @@ type rowView struct {
 	ModeSort, AchievableSort              string
 	ClearLeast, ClearVolume               string // empty: no clear sky beside it
 	Plan, PlanShare                       string // bytes at the rate plan and percent of free switching; empty: none
+	Sure                                  string // plus-minus of AOS and LOS; empty: not known
+	Narrow                                string // for how long the beam is too narrow to be sure of; empty: never
+	Vanish                                string // percent of probability that the pass takes place; empty: it does
 	Sun                                   string // for how long it is in the beam; empty: it is not
 	Verdict                               verdict
 	Cut                                   string
@@ -186,6 +189,15 @@ func newRowView(r *row, greatest float64) rowView {
 	}
 	if r.sunInBeam > 0 {
 		v.Sun = span(time.Duration(r.sunInBeam * float64(time.Second)))
+	}
+	if s := r.surety; s != nil {
+		v.Sure = edgesText(s.AOS, s.LOS)
+		if s.MayVanish {
+			v.Vanish = fixed(100*s.Existence, 0)
+		}
+	}
+	if r.beamUnsure > 0 {
+		v.Narrow = span(time.Duration(r.beamUnsure * float64(time.Second)))
 	}
 	if greatest > 0 && r.modeBytes > 0 {
 		v.Share = string(appendFixed(nil, 100*r.modeBytes/greatest, 1))

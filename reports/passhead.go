@@ -29,6 +29,7 @@ type headJSON struct {
 	Radio      *radioJSON   `json:"radio"`
 	Uplinks    []uplinkJSON `json:"uplinks"`
 	Notes      []noteJSON   `json:"notes"`
+	Surety     *suretyJSON  `json:"plus_minus"` // one standard deviation each; null: the position is taken as exact
 }
 
 type elementsJSON struct {
@@ -104,6 +105,7 @@ func passHead(p *Pass) headJSON {
 		Events:     []eventJSON{},
 		Notes:      []noteJSON{},
 		Uplinks:    uplinkHeads(p),
+		Surety:     suretyHead(p.Surety),
 	}
 	for _, ev := range events(p) {
 		h.Events = append(h.Events, eventJSON{ev.key, utcText(ev.at), number{ev.azimuthDeg, 4}, number{ev.elevationDeg, 4}})

@@ -24,6 +24,7 @@ type passView struct {
 	Warnings               []Note
 	Figures                []figureView
 	Budget, Noise          budgetView
+	Surety                 *suretyView // nil: the position is taken as exact
 	Uplinks                []uplinkView
 	Modes                  []modeView // empty where there was nothing to choose
 	Doubts                 []Note     // of single budgets
@@ -136,7 +137,7 @@ func newPassView(p *Pass) *passView {
 		"los":  "Still up when the window closes: the pass lasts longer than shown.",
 		"both": "Up during the whole window: the pass begins earlier and ends later than shown.",
 	}[q.Cut.String()]
-	v.Events = eventTable(p)
+	v.Events, v.Surety = eventTable(p), newSuretyView(p)
 	v.Uplinks = uplinkViews(p)
 	if p.Radio != nil {
 		v.Link = newLinkView(p)

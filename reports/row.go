@@ -24,6 +24,8 @@ type row struct {
 	path                       PathInfo
 	clearLeast, clearModeBytes float64 // under a clear sky
 	sunInBeam                  float64 // seconds
+	surety                     *Surety
+	beamUnsure                 float64 // seconds; NaN where it has no meaning
 	plan                       *Plan
 }
 
@@ -35,7 +37,13 @@ func newRow(page string, p *Pass) row {
 		aos: q.AOS, culmination: q.Culmination, los: q.LOS,
 		maxElevationDeg: q.MaxElevation.Degrees(), cut: q.Cut.String(), verdict: verdictOf(p),
 		least: none, greatest: none, required: none, modeBytes: none, achievableBytes: none,
-		clearLeast: none, clearModeBytes: none, sunInBeam: none,
+		clearLeast: none, clearModeBytes: none, sunInBeam: none, surety: p.Surety, beamUnsure: none,
+	}
+	if p.Surety != nil && p.Surety.Led {
+		r.beamUnsure = 0
+		for _, in := range p.Surety.Unsure {
+			r.beamUnsure += in.To.Sub(in.From).Seconds()
+		}
 	}
 	if p.Radio != nil {
 		r.link, r.mode = p.Radio.Transmitter+" to "+p.Radio.Antenna, p.Radio.Mode
@@ -95,6 +103,10 @@ var indexFields = []field{
 	{name: "plan_share_of_free_switching_percent", number: func(r *row) number { return r.planned(func(p *Plan) float64 { return 100 * p.ShareOfFree }, 2) }},
 	{name: "plan_share_of_shannon_percent", number: func(r *row) number { return r.planned(func(p *Plan) float64 { return 100 * p.ShareOfShannon }, 2) }},
 	{name: "plan_changes", number: func(r *row) number { return r.planned(func(p *Plan) float64 { return float64(p.Changes) }, 0) }},
+	{name: "aos_plus_minus_s", number: func(r *row) number { return r.sure(func(s *Surety) float64 { return s.AOS }, 3) }},
+	{name: "los_plus_minus_s", number: func(r *row) number { return r.sure(func(s *Surety) float64 { return s.LOS }, 3) }},
+	{name: "existence_probability", number: func(r *row) number { return r.sure(func(s *Surety) float64 { return s.Existence }, 4) }},
+	{name: "beam_too_narrow_s", number: func(r *row) number { return number{r.beamUnsure, 3} }},
 }
 
 // planned is a number of the rate plan; it does not exist without one.
@@ -103,6 +115,14 @@ func (r *row) planned(of func(*Plan) float64, decimals int) number {
 		return number{math.NaN(), 0}
 	}
 	return number{of(r.plan), decimals}
+}
+
+// sure is a number of the surety; it does not exist without one.
+func (r *row) sure(of func(*Surety) float64, decimals int) number {
+	if r.surety == nil {
+		return number{math.NaN(), 0}
+	}
+	return number{of(r.surety), decimals}
 }
 
 func (r *row) closedSeconds() float64 {

@@ -30,8 +30,12 @@ func (p *reportPlan) load(ctx context.Context, i int) (*reports.Pass, error) {
 	if out.Elements.Source.File != "" {
 		out.Elements.Source.File = filepath.Base(out.Elements.Source.File)
 	}
+	var err error
 	step := sampleStep(page.Duration())
 	if page.link == nil {
+		if out.Surety, err = p.surety(craft, site, page, nil); err != nil {
+			return nil, fmt.Errorf("%s over %s: %w", craft.Name, site.Site.Name, err)
+		}
 		out.Profile, out.Notes = geometryProfile(craft, site, page.AOS, page.LOS, step), p.pageNotes(page, nil)
 		return out, p.addUplinks(out, craft, page)
 	}
@@ -40,6 +44,9 @@ func (p *reportPlan) load(ctx context.Context, i int) (*reports.Pass, error) {
 		return nil, fmt.Errorf("%s over %s: %w", craft.Name, site.Site.Name, err)
 	}
 	out.Profile, out.Notes = best.profile, p.pageNotes(page, best.link)
+	if out.Surety, err = p.surety(craft, site, page, best); err != nil {
+		return nil, fmt.Errorf("%s over %s: %w", craft.Name, site.Site.Name, err)
+	}
 	for _, n := range best.limits {
 		out.Notes = append(out.Notes, reports.Note{Kind: noteKinds[n.Kind], About: "limits", Text: n.Text})
 	}
