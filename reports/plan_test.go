@@ -109,7 +109,7 @@ func TestPlanInTheFiles(t *testing.T) {
 		t.Fatal(err)
 	}
 	lines := strings.Split(string(index), "\n")
-	if !strings.HasSuffix(lines[1], ",60000000,80.00,10.00,2") || !strings.HasSuffix(lines[2], ",,,,") {
+	if !strings.HasSuffix(lines[1], ",60000000,80.00,10.00,2,,,,") || !strings.HasSuffix(lines[2], ",,,,,,,,") {
 		t.Errorf("index rows end with %q and %q", lines[1], lines[2])
 	}
 }
