@@ -132,6 +132,22 @@ func fromSeconds(s float64) time.Duration {
 	return time.Duration(math.Min(math.Round(s*1e9), math.MaxInt64/2))
 }
 
+// AscendingNodes lists the seconds after from, up to those of to, at which the mean
+// orbit comes to its ascending node, with the last one before from at the head. The true
+// node lies within the eccentricity's swing of it, some ten seconds on a low orbit.
+func (k *KeptOrbit) AscendingNodes(from, to time.Time) []float64 {
+	rate := k.turn.anomalyRate + k.turn.perigeeRate
+	latitude := k.turn.anomaly + k.turn.perigee + rate*from.Sub(k.elements.Epoch).Seconds()
+	period := 2 * math.Pi / rate
+	past := latitude / (2 * math.Pi)
+	first := (math.Floor(past) - past) * period
+	var out []float64
+	for i := 0; first+float64(i)*period <= to.Sub(from).Seconds(); i++ {
+		out = append(out, first+float64(i)*period)
+	}
+	return out
+}
+
 // LocalTimeOfNode returns the mean local solar time of the ascending node at t as an
 // angle, 180° at noon.
 func (k *KeptOrbit) LocalTimeOfNode(t time.Time) unit.Angle {

@@ -291,3 +291,28 @@ func BenchmarkKeptOrbitTenDays(b *testing.B) {
 		}
 	}
 }
+
+// The mean nodes against the nodes of SGP4, within the swing of an eccentricity of
+// 0.001: twice that of an orbit's arc, 2 e / 2π of a period.
+func TestAscendingNodesOfKeptOrbit(t *testing.T) {
+	el := keptCase(520, 0.001, 64)
+	k, err := KeepOrbit(el)
+	if err != nil {
+		t.Fatal(err)
+	}
+	from := keptEpoch.Add(3 * time.Hour)
+	nodes := k.AscendingNodes(from, from.Add(24*time.Hour))
+	if len(nodes) != 16 || nodes[0] > 0 || nodes[0] < -k.NodalPeriod().Seconds() {
+		t.Fatalf("%d nodes from %g s, want 16 from within a period before", len(nodes), nodes[0])
+	}
+	for _, s := range nodes {
+		near := from.Add(time.Duration(s * float64(time.Second)))
+		node, err := el.NextAscendingNode(near.Add(-time.Minute))
+		if err != nil {
+			t.Fatal(err)
+		}
+		if d := node.Sub(near).Abs(); d > 4*time.Second {
+			t.Errorf("the mean node at %s is %v from the node", near, d)
+		}
+	}
+}

@@ -11,8 +11,7 @@ import (
 // Family is how an antenna changes with its diameter. The zero value changes nothing
 // but the diameter.
 type Family struct {
-	SurfaceRMS   *unit.Length // the same for every diameter; nil: the antenna's own
-	SurfaceShare float64      // surface error as a share of the diameter, in place of it; 0: not stated
+	SurfaceShare float64 // surface error as a share of the diameter; 0: the antenna's own, the same for every diameter
 
 	Pointing *unit.Angle // pointing error without wind; nil: the antenna's own
 	Wind     *Wind       // what wind adds to it; nil: nothing
@@ -46,9 +45,6 @@ func (f *Family) Check() error {
 	bad := func(what string, v float64, u, allowed string) error {
 		return &unit.RangeError{Quantity: what, Value: v, Unit: u, Allowed: allowed}
 	}
-	if f.SurfaceRMS != nil && !(*f.SurfaceRMS >= 0 && *f.SurfaceRMS <= 1) {
-		return bad("surface error", f.SurfaceRMS.Metres()*1000, "mm", "0 to 1000 mm")
-	}
 	if !(f.SurfaceShare >= 0 && f.SurfaceShare <= 0.1) {
 		return bad("surface error as a share of the diameter", f.SurfaceShare, "", "0 to 0.1")
 	}
@@ -81,11 +77,8 @@ func (f *Family) Antenna(template *station.Antenna, d unit.Length) (*station.Ant
 	}
 	a := *template
 	a.Diameter = d
-	switch {
-	case f.SurfaceShare > 0:
+	if f.SurfaceShare > 0 {
 		a.SurfaceRMS = unit.Length(f.SurfaceShare * d.Metres())
-	case f.SurfaceRMS != nil:
-		a.SurfaceRMS = *f.SurfaceRMS
 	}
 	if f.Pointing != nil {
 		a.PointingRMS = *f.Pointing
@@ -100,4 +93,12 @@ func (f *Family) Antenna(template *station.Antenna, d unit.Length) (*station.Ant
 		a.Noise = &n
 	}
 	return &a, nil
+}
+
+// losses returns what pointing and surface take off an antenna's gain, in dB.
+func losses(a *station.Antenna, f unit.Frequency) (pointing, surface float64) {
+	if w, ok := a.BeamwidthAt(f); ok {
+		pointing = float64(station.PointingLoss(a.PointingRMS, w))
+	}
+	return pointing, float64(station.SurfaceLoss(a.SurfaceRMS, f))
 }

@@ -173,3 +173,16 @@ func (y *SiteYear) At(elevation unit.Angle) (slant unit.Length, fluxDB float64, 
 	}
 	return slant / unit.Length(n), fluxDB / n, true
 }
+
+// slantAt returns the distance at an elevation of a spacecraft at the mean radius at
+// which it is seen, over a sphere through the site.
+func (y *SiteYear) slantAt(elevation unit.Angle) unit.Length {
+	frame := y.Site.Frame()
+	site, radius := frame.Origin.Norm(), 0.0
+	for i, el := range y.ElevationDeg {
+		sin, cos := math.Sincos(el * math.Pi / 180)
+		radius += math.Hypot(y.RangeKm[i]*1000*cos, site+y.RangeKm[i]*1000*sin) / float64(len(y.ElevationDeg))
+	}
+	sin, cos := math.Sincos(elevation.Radians())
+	return unit.Length(math.Sqrt(radius*radius-site*site*cos*cos) - site*sin)
+}

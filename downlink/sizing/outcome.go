@@ -288,10 +288,7 @@ func (w *work) margins() error {
 	if m := spec.Needs.Margin; m != nil {
 		w.out.MarginDB = math.Inf(1)
 		for _, i := range spec.Sites {
-			_, flux, ok := spec.Flight.Sites[i].At(m.Elevation)
-			if !ok {
-				return fmt.Errorf("station %s: the spacecraft never passes %g deg of elevation within the contacts, at which a margin is asked for", spec.Flight.Sites[i].Site.Name, m.Elevation.Degrees())
-			}
+			flux := w.study.sites[i].marginFlux
 			p := w.study.sites[i].air.ladder.find(m.Elevation.Degrees())
 			cn0 := flux + w.variant.shift() + p.at(w.fronts[i].planned)
 			w.out.MarginDB = min(w.out.MarginDB, cn0-spec.Mode.NeedDBHz+float64(spec.Margin))

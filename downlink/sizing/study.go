@@ -5,6 +5,7 @@ import (
 	"fmt"
 	"math"
 
+	"slantwise/downlink"
 	"slantwise/downlink/rateplan"
 	"slantwise/downlink/recorder"
 	"slantwise/orbit/unit"
@@ -58,6 +59,8 @@ type siteStudy struct {
 	air   *air
 	place []place // of each sample
 	own   unit.Length
+
+	marginFlux float64 // dB(W/m²) at the elevation of the margin that is asked for
 }
 
 // NewStudy prepares a study. All faults of the sites come at once.
@@ -100,6 +103,9 @@ func (s *Study) prepare(i int) error {
 	if p.Weather != nil {
 		lowest = max(lowest, p.Weather.Lowest().Degrees())
 	}
+	if m := s.spec.Needs.Margin; m != nil {
+		lowest = min(lowest, m.Elevation.Degrees())
+	}
 	a, err := newAir(p, lowest)
 	if err != nil {
 		return err
@@ -113,6 +119,35 @@ func (s *Study) prepare(i int) error {
 		st.place[k] = a.ladder.find(max(el, lowest))
 	}
 	s.sites[i] = st
+	return s.prepareMargin(i)
+}
+
+// prepareMargin finds the flux density at the elevation at which a margin is asked for:
+// the mean over the passes through it, or where the contacts do not reach so low, that
+// of the orbit's distance there.
+func (s *Study) prepareMargin(i int) error {
+	m := s.spec.Needs.Margin
+	if m == nil {
+		return nil
+	}
+	y := &s.spec.Flight.Sites[i]
+	if _, flux, ok := y.At(m.Elevation); ok {
+		s.sites[i].marginFlux = flux
+		return nil
+	}
+	link, err := downlink.NewLink(s.spec.Places[i].Clear)
+	if err != nil {
+		return err
+	}
+	g, err := link.StatedGeometry(y.slantAt(m.Elevation), m.Elevation, nil, nil)
+	if err != nil {
+		return err
+	}
+	b, err := link.At(g)
+	if err != nil {
+		return err
+	}
+	s.sites[i].marginFlux = b.PowerFluxDensity
 	return nil
 }
 

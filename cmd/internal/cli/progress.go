@@ -64,3 +64,12 @@ func (p *progress) draw(w io.Writer, what string, total int) {
 		}
 	}
 }
+
+// shares is a progress that is told how much of a total is done.
+type shares struct{ *progress }
+
+// startShares begins a job whose total comes with what is told; the bar counts percent.
+func (e *Env) startShares(what string) shares { return shares{e.startProgress(what+", percent", 100)} }
+
+// tell sets how much is done.
+func (p shares) tell(done, total int) { p.done.Store(int64(100 * done / total)) }

@@ -100,15 +100,8 @@ func recorderPlan(s *scenario.Scenario, c *scenario.Spacecraft, tx *downlink.Tra
 	if err != nil {
 		return nil, nil, err
 	}
-	for _, d := range r.Data {
-		k := recorder.Class{Name: d.Name, OnBoard: d.OnBoard, OnBoardAge: d.OnBoardAge}
-		switch {
-		case d.BytesPerSecond > 0:
-			k.Made = recorder.ByTime(p.Length, d.BytesPerSecond)
-		case d.BytesPerOrbit > 0:
-			k.Made = recorder.ByOrbit(nodes, d.AfterNode, d.Lasting, d.BytesPerOrbit)
-		}
-		p.Classes = append(p.Classes, k)
+	for i := range r.Data {
+		p.Classes = append(p.Classes, r.Data[i].Class(nodes, p.Length))
 	}
 	for i := range stations {
 		if rate := stations[i].Line.BitsPerSecond(); rate > 0 {

@@ -60,6 +60,7 @@ Results go to stdout, words for people to stderr. Exit codes:
 		newLicence(env),
 		newRates(env),
 		newRecorder(env),
+		newDish(env),
 	)
 	completeFlags(root, env)
 	refuseUnknownTopics(root)

@@ -59,7 +59,7 @@ func (r *reader) scenario(root *tree.Node) *Scenario {
 	r.catalogue = r.codingFiles(o)
 	s.Spacecraft = r.spacecraft(o, s)
 	s.Stations = r.stations(o, s.Path.Environment)
-	r.sizing(o, s)
+	s.Sizing = r.sizing(o, s)
 	s.Licences = r.licences(o, s)
 	s.Control = r.control(o)
 	return s

@@ -86,6 +86,19 @@ func (o object) recorder() *Recorder {
 	return out
 }
 
+// Class is the data as a recorder takes them through a time of so many seconds, in which
+// orbits begin at nodes.
+func (d *RecorderData) Class(nodes []float64, length float64) recorder.Class {
+	k := recorder.Class{Name: d.Name, OnBoard: d.OnBoard, OnBoardAge: d.OnBoardAge}
+	switch {
+	case d.BytesPerSecond > 0:
+		k.Made = recorder.ByTime(length, d.BytesPerSecond)
+	case d.BytesPerOrbit > 0:
+		k.Made = recorder.ByOrbit(nodes, d.AfterNode, d.Lasting, d.BytesPerOrbit)
+	}
+	return k
+}
+
 func (o object) recorderData() []RecorderData {
 	items := o.objects("data", "kinds of data, the first of which is sent first", maxParts, recorderDataKeys)
 	if !o.has("data") {

@@ -32,6 +32,7 @@ type Scenario struct {
 	Stations   []Station        // in the order of the file
 
 	Licences []licence.Licence // what may be sent and received, in the order of the file
+	Sizing   *Sizing           // which dish is sought; nil: none
 	Control  Control           // tolerances and criteria; empty where none are given
 
 	Assumptions []Note // every default taken

@@ -1,0 +1,171 @@
+package sizing
+
+import (
+	"math"
+
+	"slantwise/orbit/unit"
+)
+
+// Verdict is what one requirement says.
+type Verdict struct {
+	Need
+	ReachedNow float64 // with the scenario's own antennas
+	MetNow     bool
+	Alone      Found // the diameter that it would need by itself
+}
+
+// Answer says whether the scenario's antennas suffice and what would.
+type Answer struct {
+	Now       *Outcome // the scenario's own antennas
+	Verdicts  []Verdict
+	Satisfied bool  // by the scenario's own
+	Together  Found // the least diameter that meets all
+	Binding   int   // among the verdicts: the one that asks for the most, or cannot be met; -1 where nothing is required
+	Trade     []*Outcome
+	Limit     Limit
+}
+
+// Limit is the diameter beyond which more dish stops helping.
+type Limit struct {
+	Peak      unit.Length // at which gain less pointing and surface loss is greatest; 0: it grows on beyond MostDiameter
+	By        string      // what takes more than the aperture gives beyond: "pointing" or "surface"
+	Saturated unit.Length // the least diameter of the range that brings 99 % of the most bytes; 0: nothing comes down
+}
+
+// MostDiameter is how far the limit is looked for.
+const MostDiameter unit.Length = 200
+
+// Answer evaluates a range of diameters and searches it for every requirement and for
+// all together. Progress is told how much of the work is done; nil: nobody asks.
+func (s *Study) Answer(r Range, progress func(done, total int)) (*Answer, error) {
+	if err := r.Check(); err != nil {
+		return nil, err
+	}
+	a := &Answer{Binding: -1}
+	grid, needs := r.Grid(), s.spec.Needs.List()
+	total := len(grid) + len(needs) + 3
+	tell := func(done int) {
+		if progress != nil {
+			progress(done, total)
+		}
+	}
+	var err error
+	if a.Now, err = s.Outcome(Variant{}); err != nil {
+		return nil, err
+	}
+	tell(1)
+	for i, d := range grid {
+		o, err := s.Outcome(Variant{Diameter: d})
+		if err != nil {
+			return nil, err
+		}
+		a.Trade = append(a.Trade, o)
+		tell(2 + i)
+	}
+	a.Satisfied = true
+	for i, n := range needs {
+		v := Verdict{Need: n, ReachedNow: n.Reached(a.Now), MetNow: n.Met(a.Now)}
+		if v.Alone, err = s.Least([]Need{n}, r); err != nil {
+			return nil, err
+		}
+		a.Verdicts = append(a.Verdicts, v)
+		a.Satisfied = a.Satisfied && v.MetNow
+		tell(2 + len(grid) + i)
+	}
+	if len(needs) > 0 {
+		if a.Together, err = s.Least(needs, r); err != nil {
+			return nil, err
+		}
+		a.Binding = binding(a.Verdicts, a.Together)
+	}
+	a.Limit, err = s.limit(a.Trade, r)
+	tell(total)
+	return a, err
+}
+
+// binding returns the requirement that decides: one that no diameter meets, the worst
+// missed of them; else the one that needs the greatest diameter. Where each is met by
+// some diameter and none meets all, the one that is missed worst where they come
+// nearest.
+func binding(verdicts []Verdict, together Found) int {
+	best, most := -1, math.Inf(-1)
+	for i := range verdicts {
+		v := &verdicts[i]
+		miss := v.Alone.Diameter.Metres()
+		switch {
+		case v.Alone.Nearest != nil:
+			miss = 1e6 - (&search{needs: []Need{v.Need}}).worst(v.Alone.Nearest)
+		case together.Nearest != nil:
+			miss = 1e3 - (&search{needs: []Need{v.Need}}).worst(together.Nearest)
+		}
+		if miss > most {
+			best, most = i, miss
+		}
+	}
+	return best
+}
+
+// limit finds where more dish stops helping.
+func (s *Study) limit(trade []*Outcome, r Range) (Limit, error) {
+	var l Limit
+	most := 0.0
+	for _, o := range trade {
+		most = max(most, o.BytesPerDay)
+	}
+	if most > 0 {
+		ask := None()
+		ask.BytesPerDay = 0.99 * most
+		f, err := s.Least(ask.List(), r)
+		if err != nil {
+			return l, err
+		}
+		l.Saturated = f.Diameter
+	}
+	gain := func(d float64) (total, pointing, surface float64, err error) {
+		least := math.Inf(1)
+		for _, i := range s.spec.Sites {
+			a, err := s.antenna(i, Variant{Diameter: unit.Length(d)})
+			if err != nil {
+				return 0, 0, 0, err
+			}
+			p, f := losses(a, s.spec.Places[i].Clear.Transmitter.Frequency)
+			if g := 20*math.Log10(d) - p - f; g < least {
+				least, pointing, surface = g, p, f
+			}
+		}
+		return least, pointing, surface, nil
+	}
+	low, high := math.Log(0.01), math.Log(MostDiameter.Metres())
+	const golden = 0.6180339887498949
+	for high-low > 1e-4 {
+		c, d := high-golden*(high-low), low+golden*(high-low)
+		gc, _, _, err := gain(math.Exp(c))
+		if err != nil {
+			return l, err
+		}
+		gd, _, _, err := gain(math.Exp(d))
+		if err != nil {
+			return l, err
+		}
+		if gc >= gd {
+			high = d
+		} else {
+			low = c
+		}
+	}
+	at := math.Exp((low + high) / 2)
+	if at > 0.99*MostDiameter.Metres() {
+		return l, nil
+	}
+	l.Peak = unit.Length(at)
+	_, p1, s1, err := gain(at)
+	if err != nil {
+		return l, err
+	}
+	_, p2, s2, err := gain(at * 1.01)
+	l.By = "surface"
+	if p2-p1 >= s2-s1 {
+		l.By = "pointing"
+	}
+	return l, err
+}
