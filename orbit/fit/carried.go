@@ -4,6 +4,8 @@ import (
 	"fmt"
 	"math"
 	"time"
+
+	"slantwise/orbit"
 )
 
 // carried refuses a fit that SGP4 does not carry, or that leaves elements open.
@@ -34,19 +36,28 @@ const leastDrag = 5e-5
 // tanks about to fall, are some 0.1.
 const mostDoubt = 0.05
 
-// dragCarried refuses a B* that is smaller than its own standard deviation: the set would be
-// better off with 0.
+// ownOrbit in m is an RMS under which the data are SGP4's own, or as good.
+const ownOrbit = 10
+
+// dragCarried refuses a B* that is smaller than its own standard deviation, since the set would be
+// better off with 0, and one well below 0 on a real low orbit: air does not push, but what SGP4
+// leaves out of the Earth's field looks like that over half a day.
 func dragCarried(r *Result) error {
 	if !r.DragFound {
 		return nil
 	}
-	doubt := r.sigma(atDrag)
-	if doubt <= math.Max(leastDrag, math.Min(mostDoubt, math.Abs(r.Elements.BStar))) {
-		return nil
+	refuse := func(what, next string) error {
+		return &Refusal{Why: SpanShortForDrag, Next: next,
+			Found: fmt.Sprintf("it comes out as %s ± %s per Earth radius%s", short(r.Elements.BStar), short(r.sigma(atDrag)), what)}
 	}
-	return &Refusal{Why: SpanShortForDrag,
-		Found: fmt.Sprintf("it comes out as %s ± %s per Earth radius", short(r.Elements.BStar), short(doubt)),
-		Next:  "give a longer span, or state B*: that of an earlier set, or 0"}
+	if r.sigma(atDrag) > math.Max(leastDrag, math.Min(mostDoubt, math.Abs(r.Elements.BStar))) {
+		return refuse("", "give a longer span, or state B*: that of an earlier set, or 0")
+	}
+	facts, err := r.Elements.Facts()
+	if err == nil && facts.Kind == orbit.NearEarth && r.Elements.BStar < -leastDrag && r.RMS > ownOrbit {
+		return refuse(", below 0, where air only brakes", "give a span of a day or more, look for a manoeuvre in it, or state B*: that of an earlier set, or 0")
+	}
+	return nil
 }
 
 // mostSpread in m is a standard deviation a revolution after the epoch with which a set

@@ -126,3 +126,41 @@ func TestUncertaintyIsShared(t *testing.T) {
 	}
 	all.Wait()
 }
+
+// The rule by age that a fit gives is within a fifth of the spread over the week that it is for.
+func TestAgeRule(t *testing.T) {
+	el := wagtail()
+	data := ephemeris(t, el, el.Epoch, 24*time.Hour, 5*time.Minute, false)
+	for i := range data {
+		data[i].Position = data[i].Position.Add(data[i].Position.Unit().Scale(245 * math.Sin(6*math.Pi*float64(i)/18.92)))
+	}
+	r, err := fit.Fit(context.Background(), data, fit.Options{BStar: &el.BStar})
+	if err != nil {
+		t.Fatal(err)
+	}
+	rule, err := r.Uncertainty.AgeRule()
+	if err != nil || rule.Validate() != nil {
+		t.Fatal(err, rule.Validate())
+	}
+	u := orbit.AgeUncertainty{Rule: rule, Epoch: r.Elements.Epoch}
+	for d := range 8 {
+		var along, want float64
+		for k := range 12 {
+			at := r.Elements.Epoch.Add(time.Duration(d)*day + time.Duration(k)*8*time.Minute)
+			s, err := r.Uncertainty.At(at)
+			if err != nil {
+				t.Fatal(err)
+			}
+			byAge, err := u.At(at)
+			if err != nil {
+				t.Fatal(err)
+			}
+			along += byAge.Along.Metres() / 12
+			want += s.Along.Metres() / 12
+		}
+		t.Logf("day %d: along %.0f m by the rule, %.0f m by the covariance", d, along, want)
+		if math.Abs(along/want-1) > 0.2 {
+			t.Errorf("day %d: along %g m by the rule, %g m by the covariance", d, along, want)
+		}
+	}
+}

@@ -12,7 +12,7 @@ import (
 	"slantwise/orbit/elements"
 )
 
-// samplePositions is half a day of an invented low orbit by numerical integration, Earth-fixed.
+// samplePositions is a day of an invented low orbit by numerical integration, Earth-fixed.
 //
 //go:embed testdata/positions.csv
 var samplePositions string
@@ -42,8 +42,8 @@ func TestElementsFitGivesTheDemoSetBack(t *testing.T) {
 
 func TestElementsFitTable(t *testing.T) {
 	code, out, errOut := fitRun(t, samplePositions, "-", "--name", "WAGTAIL 9", "--catalog-number", "99009", "--designator", "2026-101A")
-	for _, want := range []string{"standard input: SGP4 elements fitted to 145 positions of ", "\nepoch 2026-09-14T12:00:00.000Z, TEME, UTC\n",
-		"B* (fitted) ", "1/Earth radii\n", "residual ", "across m\n", "\nWAGTAIL 9\n1 99009U 26101A   26257.50000000  .00000000  00000-0 ", " m from the fit over the data\n"} {
+	for _, want := range []string{"standard input: SGP4 elements fitted to 289 positions of ", "\nepoch 2026-09-15T00:00:00.000Z, TEME, UTC\n",
+		"B* (fitted) ", "1/Earth radii\n", "residual ", "across m\n", "\nWAGTAIL 9\n1 99009U 26101A   26258.00000000  .00000000  00000-0 ", " m from the fit over the data\n"} {
 		if !strings.Contains(out, want) {
 			t.Errorf("exit %d, stderr %s\nwant %q in\n%s", code, errOut, want, out)
 		}
@@ -82,7 +82,7 @@ func TestElementsFitJSON(t *testing.T) {
 	if err := json.Unmarshal([]byte(out), &got); err != nil || code != ExitAnswer {
 		t.Fatalf("exit %d, %v in\n%s", code, err, out)
 	}
-	if got.EpochUTC != "2026-09-14T06:00:00.000Z" || got.BStar != "stated" || got.Elements["b_star_per_earth_radius"] != 4e-4 || got.Sigmas["b_star_per_earth_radius"] != 0 ||
+	if got.EpochUTC != "2026-09-14T12:00:00.000Z" || got.BStar != "stated" || got.Elements["b_star_per_earth_radius"] != 4e-4 || got.Sigmas["b_star_per_earth_radius"] != 0 ||
 		math.Abs(got.Elements["inclination_deg"]-97.45) > 0.01 || got.LeftOut == nil || len(got.TwoLine.Lines) != 2 {
 		t.Errorf("got %+v", got)
 	}
@@ -104,7 +104,7 @@ func TestElementsFitJSON(t *testing.T) {
 func TestElementsFitCSV(t *testing.T) {
 	code, out, _ := fitRun(t, samplePositions, "-", "--format", "csv")
 	lines := strings.Split(strings.TrimSpace(out), "\n")
-	if code != ExitAnswer || len(lines) != 146 || lines[0] != "utc,line,radial_m,along_m,across_m,radial_m_s,along_m_s,across_m_s,left_out,far_off" ||
+	if code != ExitAnswer || len(lines) != 290 || lines[0] != "utc,line,radial_m,along_m,across_m,radial_m_s,along_m_s,across_m_s,left_out,far_off" ||
 		!strings.HasPrefix(lines[1], "2026-09-14T00:00:00.000Z,3,") || !strings.HasSuffix(lines[1], ",,,,no,no") {
 		t.Errorf("exit %d, %d lines\n%s\n%s", code, len(lines), lines[0], lines[1])
 	}
@@ -157,6 +157,7 @@ func TestElementsFitRefusals(t *testing.T) {
 		"epoch":          {"", []string{"-", "--epoch", "noon"}, `--epoch: "noon" is neither last, middle, first nor an instant: `},
 		"table":          {head + "\n2026,teme,1,2,3\n", []string{"-"}, `standard input:2: utc: "2026" is no instant of 1957 to 2056`},
 		"too few":        {few, []string{"-"}, "standard input: the data do not carry B*: it "},
+		"half a day":     {samplePositions, []string{"-", "--to", "2026-09-14T12:00:00Z"}, "standard input: the data do not carry B*: it comes out as -0.002289 ± 0.0003"},
 		"nothing inside": {samplePositions, []string{"-", "--from", "2027-01-01T00:00:00Z"}, "standard input: too few data: there are none in the span; give positions, or a wider span"},
 		"residuals":      {samplePositions, []string{"-", "--most-rms-km", "0.1"}, "standard input: residuals beyond what SGP4 can carry: the RMS distance is 0."},
 		"many":           {"", []string{"--spacecraft", "Wagtail 1", "--step", "1ms"}, "2026-09-15T00:00:00.000Z to 2026-09-16T00:00:00.000Z in steps of 1ms are not 1 to 1000000 positions; give another --to or --step"},
@@ -167,5 +168,32 @@ func TestElementsFitRefusals(t *testing.T) {
 				t.Errorf("exit %d, %q\n got %swant slantwise: %s", code, out, errOut, c.want)
 			}
 		})
+	}
+}
+
+// What the report prints for a scenario is taken by one.
+func TestElementsFitRuleIsTaken(t *testing.T) {
+	_, out, _ := fitRun(t, samplePositions, "-")
+	at := strings.Index(out, "\nposition_uncertainty: {")
+	if at < 0 {
+		t.Fatalf("no rule in\n%s", out)
+	}
+	rule, _, _ := strings.Cut(out[at+1:], "\n")
+	t.Chdir(t.TempDir())
+	if code, _, errOut := invoke(t, "new", "a.yaml"); code != ExitAnswer {
+		t.Fatal(errOut)
+	}
+	text, err := os.ReadFile("a.yaml")
+	if err != nil {
+		t.Fatal(err)
+	}
+	if strings.Contains(string(text), "\nposition_uncertainty:") {
+		t.Fatal("the starting scenario has a rule of its own")
+	}
+	if err := os.WriteFile("a.yaml", append(text, []byte("\n"+rule+"\n")...), 0o600); err != nil {
+		t.Fatal(err)
+	}
+	if code, _, errOut := invoke(t, "check", "--scenario", "a.yaml"); code != ExitAnswer {
+		t.Errorf("%s: exit %d, %s", rule, code, errOut)
 	}
 }

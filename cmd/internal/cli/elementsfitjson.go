@@ -20,6 +20,7 @@ type fitAnswer struct {
 	Residuals  map[string]fitStats `json:"residuals"`
 	Covariance fitCovariance       `json:"covariance"`
 	Spread     []fitAhead          `json:"spread"`
+	AgeRule    map[string]number   `json:"position_uncertainty"` // as a scenario takes it; empty where there is none
 	TwoLine    fitTwoLine          `json:"two_line"`
 	FarOff     []fitDatum          `json:"far_off"`
 	LeftOut    []fitDatum          `json:"left_out"`
@@ -88,7 +89,7 @@ func (f *fitReport) answer() fitAnswer {
 	a := fitAnswer{
 		Object:   fitObject{r.Elements.Name, r.Elements.CatalogNumber, r.Elements.InternationalDesignator},
 		EpochUTC: utc(r.Elements.Epoch), Frame: orbit.TEME.String(), BStar: "stated",
-		Elements: map[string]number{}, Sigmas: map[string]number{}, Residuals: map[string]fitStats{},
+		Elements: map[string]number{}, Sigmas: map[string]number{}, Residuals: map[string]fitStats{}, AgeRule: map[string]number{},
 		Data: fitData{f.in.from, len(r.Residuals), r.Used, f.states, utc(f.first), utc(f.last)},
 		RMSM: num(r.RMS, 6), Spread: []fitAhead{}, FarOff: []fitDatum{}, LeftOut: []fitDatum{}, Notes: append([]string{}, f.notes...),
 		Covariance: fitCovariance{Parameters: fit.Parameters[:], DataPerIndependent: num(r.DataPerIndependent, 3), Redundancy: r.Redundancy,
@@ -114,6 +115,12 @@ func (f *fitReport) answer() fitAnswer {
 	for _, s := range f.ahead {
 		a.Spread = append(a.Spread, fitAhead{utc(s.at), num(s.days, 3), num(s.spread.Radial.Metres(), 3), num(s.spread.Along.Metres(), 3),
 			num(s.spread.Across.Metres(), 3), num(s.spread.RadialAlong, 6)})
+	}
+	if f.rule != (orbit.AgeRule{}) {
+		keys, km := f.ruleKeys()
+		for i, k := range keys {
+			a.AgeRule[k] = num(km[i], 6)
+		}
 	}
 	if f.twoLine.lines != "" {
 		a.TwoLine.Lines = strings.Split(strings.TrimSpace(f.twoLine.lines), "\n")

@@ -21,6 +21,7 @@ type fitReport struct {
 	states   int // data with a velocity
 	rejected int
 	ahead    []fitSpread
+	rule     orbit.AgeRule // that follows ahead; zero where there is none
 	twoLine  twoLineLoss
 	notes    []string
 }
@@ -58,6 +59,11 @@ func newFitReport(o *fitOptions, in *positions, r *fit.Result) (*fitReport, erro
 		f.notes = append(f.notes, "one state alone has no redundancy: the set passes through it, and nothing tells how good it is")
 	} else {
 		f.notes = append(f.notes, "spread "+r.Uncertainty.Basis())
+		rule, err := r.Uncertainty.AgeRule()
+		if err != nil {
+			f.notes = append(f.notes, "no rule by age: "+err.Error())
+		}
+		f.rule = rule
 		for _, d := range aheadDays {
 			at := r.Elements.Epoch.Add(time.Duration(d * 24 * float64(time.Hour)))
 			s, err := r.Uncertainty.At(at)
@@ -76,6 +82,19 @@ func newFitReport(o *fitOptions, in *positions, r *fit.Result) (*fitReport, erro
 	}
 	f.outlierNotes(o)
 	return f, f.inTwoLines()
+}
+
+// ruleKeys are the figures of the rule by age, under the keys of position_uncertainty in a
+// scenario.
+func (f *fitReport) ruleKeys() (keys []string, km []float64) {
+	for _, a := range []struct {
+		name string
+		g    orbit.Growth
+	}{{"along", f.rule.Along}, {"across", f.rule.Across}, {"radial", f.rule.Radial}} {
+		keys = append(keys, a.name+"_km", a.name+"_km_per_day", a.name+"_km_per_day2")
+		km = append(km, a.g.AtEpoch.Kilometres(), a.g.PerDay.Kilometres(), a.g.PerDay2.Kilometres())
+	}
+	return keys, km
 }
 
 func (f *fitReport) outlierNotes(o *fitOptions) {

@@ -5,6 +5,7 @@ import (
 	"strconv"
 	"strings"
 
+	"slantwise/orbit"
 	"slantwise/orbit/fit"
 )
 
@@ -119,8 +120,19 @@ func (f *fitReport) writeAhead(env *Env, width int) error {
 		rows = append(rows, []string{utc(a.at), fixed(a.days, 0), digits(a.spread.Radial.Metres(), 3), digits(a.spread.Along.Metres(), 3), digits(a.spread.Across.Metres(), 3)})
 	}
 	fmt.Fprintln(env.Out)
-	return writeTable(env.Out, width, []column{textColumn("spread, 1 sigma, at UTC"), numberColumn("days from epoch"), numberColumn("radial m"),
+	err := writeTable(env.Out, width, []column{textColumn("spread, 1 sigma, at UTC"), numberColumn("days from epoch"), numberColumn("radial m"),
 		numberColumn("along m"), numberColumn("across m")}, rows)
+	if err != nil || f.rule == (orbit.AgeRule{}) {
+		return err
+	}
+	keys, km := f.ruleKeys()
+	for i := range keys {
+		keys[i] += ": " + digits(km[i], 3)
+	}
+	if _, err := fmt.Fprintf(env.Out, "\nby age, as a scenario takes it:\nposition_uncertainty: {%s}\n", strings.Join(keys, ", ")); err != nil {
+		return fmt.Errorf("write the report: %w", err)
+	}
+	return nil
 }
 
 func (f *fitReport) writeTwoLines(env *Env) error {
