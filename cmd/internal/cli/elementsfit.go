@@ -18,6 +18,7 @@ import (
 // fitOptions are the flags of elements fit.
 type fitOptions struct {
 	file       string // empty: a spacecraft of the scenario
+	object     string // of an OEM with several
 	spacecraft string
 	from, to   time.Time
 	step       time.Duration
@@ -44,7 +45,8 @@ func newElementsFit(env *Env) *cobra.Command {
 		Use:   "fit [FILE]",
 		Short: "Fit an element set to positions, with residuals and what they leave open",
 		Long: `Find the SGP4 mean elements that follow positions best, by least squares. FILE (- is
-standard input) is a table as CSV with the columns
+standard input) is a CCSDS orbit ephemeris message (OEM, KVN or XML), whose states are
+taken as they stand, or a table as CSV with the columns
   utc                          ISO 8601 ending in Z
   x_km, y_km, z_km             position
   vx_km_s, vy_km_s, vz_km_s    velocity, where it is known
@@ -80,7 +82,8 @@ residuals show.`,
 	addTime(fs, &o.from, "from", "first instant of the data (left out: all of FILE, or the start of the window)")
 	addTime(fs, &o.to, "to", "last instant of the data (left out: all of FILE, or a day from the first)")
 	addDuration(fs, &o.step, "step", time.Minute, "between positions of a spacecraft")
-	fs.StringVar(&o.frame, "frame", "", "`FRAME` of the rows that name none")
+	fs.StringVar(&o.frame, "frame", "", "`FRAME` of the rows of a table that name none")
+	fs.StringVar(&o.object, "object", "", "`NAME` of the object, in an OEM of several")
 	fs.StringVar(&o.epoch, "epoch", "last", "epoch of the set: last, middle or first datum, or an instant `UTC`")
 	addNumber(fs, &o.bStar, "b-star", "drag term in 1/Earth radii, as stated (left out: fitted)")
 	fs.BoolVar(&o.positionsOnly, "positions-only", false, "leave the velocities of the data out")
@@ -105,6 +108,8 @@ func (o *fitOptions) check(given func(string) bool) error {
 		return inputErrorf("--step is about positions of a spacecraft, and FILE has its own")
 	case o.file == "" && o.frame != "":
 		return inputErrorf("--frame is about a FILE, which is not given")
+	case o.file == "" && o.object != "":
+		return inputErrorf("--object is about a FILE, which is not given; --spacecraft names one of the scenario")
 	case o.into != "" && o.convert == "":
 		return inputErrorf("--into needs --convert, which says in which format")
 	case o.loss && o.into == "":

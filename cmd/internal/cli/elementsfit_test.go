@@ -1,6 +1,7 @@
 package cli
 
 import (
+	"bytes"
 	_ "embed"
 	"encoding/json"
 	"math"
@@ -8,8 +9,11 @@ import (
 	"path/filepath"
 	"strings"
 	"testing"
+	"time"
 
+	"slantwise/orbit"
 	"slantwise/orbit/elements"
+	"slantwise/orbit/oem"
 )
 
 // samplePositions is a day of an invented low orbit by numerical integration, Earth-fixed.
@@ -195,5 +199,49 @@ func TestElementsFitRuleIsTaken(t *testing.T) {
 	}
 	if code, _, errOut := invoke(t, "check", "--scenario", "a.yaml"); code != ExitAnswer {
 		t.Errorf("%s: exit %d, %s", rule, code, errOut)
+	}
+}
+
+// The states of an OEM give the set back that they were made from, whatever frame and
+// notation they are written in.
+func TestElementsFitOEM(t *testing.T) {
+	sets, _, err := elements.Read(strings.NewReader(wagtailSet), "wagtail")
+	if err != nil {
+		t.Fatal(err)
+	}
+	el := sets[0]
+	eph, err := orbit.NewEphemeris(el, el.Epoch, el.Epoch.Add(24*time.Hour), orbit.EarthOrientation{})
+	if err != nil {
+		t.Fatal(err)
+	}
+	for name, c := range map[string]struct {
+		frame    orbit.Frame
+		notation oem.Notation
+	}{"J2000 as KVN": {orbit.J2000, oem.KVN}, "Earth-fixed as XML": {orbit.EarthFixed, oem.XML}} {
+		t.Run(name, func(t *testing.T) {
+			sampled, err := oem.Sample(eph, "WAGTAIL 1", "2026-001A", c.frame, 5*time.Minute, orbit.EarthOrientation{})
+			if err != nil {
+				t.Fatal(err)
+			}
+			var text bytes.Buffer
+			if err := oem.Write(&text, sampled, c.notation, oem.Header{Created: el.Epoch}); err != nil {
+				t.Fatal(err)
+			}
+			code, out, errOut := fitRun(t, text.String(), "-", "--catalog-number", "99001", "--epoch", "first", "--convert", "tle")
+			want, got := strings.Split(wagtailSet, "\n"), strings.Split(out, "\n")
+			if code != ExitAnswer || len(got) != 4 || got[0] != want[0] || got[1][:32] != want[1][:32] || got[2][:63] != want[2][:63] {
+				t.Errorf("exit %d, %s\n got\n%swant\n%s", code, errOut, out, wagtailSet)
+			}
+			code, _, errOut = fitRun(t, text.String(), "-", "--object", "WAGTAIL 2")
+			if code != ExitInput || !strings.Contains(errOut, `--object: "WAGTAIL 2" is not in standard input; did you mean "WAGTAIL 1"; it holds "WAGTAIL 1"`) {
+				t.Errorf("exit %d, %s", code, errOut)
+			}
+			if code, _, errOut = fitRun(t, text.String(), "-", "--frame", "teme"); code != ExitInput || !strings.Contains(errOut, "standard input is an OEM, which names its own") {
+				t.Errorf("exit %d, %s", code, errOut)
+			}
+		})
+	}
+	if code, _, errOut := fitRun(t, samplePositions, "-", "--object", "x"); code != ExitInput || !strings.Contains(errOut, "--object is about an OEM of several, and standard input is a table") {
+		t.Errorf("exit %d, %s", code, errOut)
 	}
 }
