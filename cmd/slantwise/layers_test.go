@@ -32,6 +32,7 @@ var layers = []struct {
 	{"slantwise/downlink/tolerance", 7},
 	{"slantwise/downlink/fluxdensity", 7},
 	{"slantwise/downlink/licence", 7},
+	{"slantwise/downlink/acceptance", 7},
 	{"slantwise/downlink/recorder", 7},
 	{"slantwise/downlink/passvolume", 7},
 	{"slantwise/downlink/tuning", 7},

@@ -61,6 +61,7 @@ Results go to stdout, words for people to stderr. Exit codes:
 		newRates(env),
 		newRecorder(env),
 		newDish(env),
+		newAcceptance(env),
 	)
 	completeFlags(root, env)
 	refuseUnknownTopics(root)
