@@ -14,6 +14,8 @@ type problem struct {
 	data   []Datum
 	base   orbit.Elements // the epoch and what is no unknown
 	active []int
+
+	progress func(data int) // may be nil
 }
 
 func newProblem(ctx context.Context, data []Datum, base orbit.Elements, drag bool) *problem {
@@ -63,6 +65,9 @@ func (pr *problem) lookBy(p parameters, share float64) (*point, error) {
 		if err := pr.ctx.Err(); err != nil {
 			return nil, err
 		}
+		if pr.progress != nil && i%progressEvery == progressEvery-1 {
+			pr.progress(progressEvery)
+		}
 		d := &pr.data[i]
 		state, err := b.at(d.Time, &partials)
 		if err != nil {
@@ -86,6 +91,9 @@ func (pr *problem) lookBy(p parameters, share float64) (*point, error) {
 	out.linear = gathered.solve()
 	return out, nil
 }
+
+// progressEvery is how many data pass between two words of progress.
+const progressEvery = 1000
 
 const (
 	mostRounds   = 60

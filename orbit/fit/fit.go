@@ -23,6 +23,9 @@ type Options struct {
 	// MostRMS is the RMS distance in m above which the fit is refused; 0: 5 km. SGP4 carries a
 	// real orbit to about a kilometre over days (AIAA 2006-6753; the factor is common practice).
 	MostRMS float64
+	// Progress, where there is one, is told how many data more were looked at in the last
+	// correction, which looks at all of them some three times.
+	Progress func(data int)
 }
 
 // Result is a fit.
@@ -41,13 +44,12 @@ type Result struct {
 	// the variance of the residuals and DataPerIndependent. Rows of what was not sought are 0.
 	// NaN where there is no redundancy.
 	Covariance         [unknowns][unknowns]float64
-	DataPerIndependent float64 // 1 or more
-	Redundancy         int     // numbers given less unknowns
-	Condition          float64 // of the scaled partials
-	Rounds             int     // of correction, the last problem's
-	Stalled            bool    // the correction ended where SGP4 is not smooth, within a few per cent of the least
-	Uncertainty        *Uncertainty
-	// nil where there is no redundancy
+	DataPerIndependent float64      // 1 or more
+	Redundancy         int          // numbers given less unknowns
+	Condition          float64      // of the scaled partials
+	Rounds             int          // of correction, the last problem's
+	Stalled            bool         // the correction ended where SGP4 is not smooth, within a few per cent of the least
+	Uncertainty        *Uncertainty // nil where there is no redundancy
 }
 
 const (
@@ -157,6 +159,7 @@ func (o *Options) settle(ctx context.Context, all []Datum, el orbit.Elements) (*
 	used, rejected := all, make([]bool, len(all))
 	for range mostRejections {
 		pr := newProblem(ctx, used, el, o.BStar == nil)
+		pr.progress = o.Progress
 		p, rounds, err := pr.correct(fromElements(&el))
 		if err != nil {
 			return nil, err

@@ -205,6 +205,18 @@ func TestOutliers(t *testing.T) {
 	}
 }
 
+func TestProgress(t *testing.T) {
+	el := wagtail()
+	told := 0
+	data := ephemeris(t, el, el.Epoch, 5000*time.Second, time.Second, true)
+	if _, err := fit.Fit(context.Background(), data, fit.Options{BStar: &el.BStar, Progress: func(n int) { told += n }}); err != nil {
+		t.Fatal(err)
+	}
+	if told < 5000 {
+		t.Errorf("told of %d data, there are %d", told, len(data))
+	}
+}
+
 func TestCancelled(t *testing.T) {
 	ctx, cancel := context.WithCancel(context.Background())
 	cancel()

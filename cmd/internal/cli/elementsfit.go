@@ -147,8 +147,10 @@ func runElementsFit(ctx context.Context, env *Env, o *fitOptions) error {
 	if err != nil {
 		return err
 	}
-	job := env.startProgress("fitting", len(in.data))
-	r, err := fit.Fit(ctx, in.data, o.fitting(in.data))
+	job := env.startProgress("fitting", 3*len(in.data))
+	how := o.fitting(in.data)
+	how.Progress = job.add
+	r, err := fit.Fit(ctx, in.data, how)
 	job.stop()
 	var refused *fit.Refusal
 	if errors.As(err, &refused) {
