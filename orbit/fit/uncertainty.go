@@ -27,14 +27,24 @@ type Uncertainty struct {
 // At returns the spread at t. It fails where SGP4 has no state there, by the errors of
 // orbit.Propagation.At.
 func (u *Uncertainty) At(t time.Time) (orbit.Spread, error) {
-	c, err := u.Covariance(t)
+	c, err := u.Whole(t)
 	if err != nil {
 		return orbit.Spread{}, err
+	}
+	return c.Spread(), nil
+}
+
+// Whole returns the covariance that At takes its spread from: that of the elements with
+// what lasts of the residuals on the positions. It fails as At does.
+func (u *Uncertainty) Whole(t time.Time) (orbit.Covariance, error) {
+	c, err := u.Covariance(t)
+	if err != nil {
+		return orbit.Covariance{}, err
 	}
 	for i, root := range u.lasting {
 		c[i][i] += root * root
 	}
-	return c.Spread(), nil
+	return c, nil
 }
 
 // Covariance returns what the covariance of the elements alone is at t, without the

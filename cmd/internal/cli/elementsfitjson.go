@@ -25,6 +25,14 @@ type fitAnswer struct {
 	FarOff     []fitDatum          `json:"far_off"`
 	LeftOut    []fitDatum          `json:"left_out"`
 	Notes      []string            `json:"notes"`
+	Position   []fitCovarianceAt   `json:"position_covariances"` // as a scenario takes them: covariances of its position_uncertainty
+}
+
+// fitCovarianceAt is the covariance at an instant in km², km²/s and km²/s²: radial, along,
+// across, then the velocities.
+type fitCovarianceAt struct {
+	UTC   string     `json:"utc"`
+	Lower [][]number `json:"lower_triangle_km_s"`
 }
 
 type fitObject struct {
@@ -112,7 +120,9 @@ func (f *fitReport) answer() fitAnswer {
 		}
 		a.Covariance.Matrix = append(a.Covariance.Matrix, out)
 	}
+	a.Position = []fitCovarianceAt{}
 	for _, s := range f.ahead {
+		a.Position = append(a.Position, covarianceOut(s))
 		a.Spread = append(a.Spread, fitAhead{utc(s.at), num(s.days, 3), num(s.spread.Radial.Metres(), 3), num(s.spread.Along.Metres(), 3),
 			num(s.spread.Across.Metres(), 3), num(s.spread.RadialAlong, 6)})
 	}
@@ -136,4 +146,18 @@ func (f *fitReport) answer() fitAnswer {
 		}
 	}
 	return a
+}
+
+// covarianceOut writes all digits that a velocity needs: its variances are a millionth of a
+// position's, and the matrix must stay positive.
+func covarianceOut(s fitSpread) fitCovarianceAt {
+	out := fitCovarianceAt{UTC: utc(s.at)}
+	for i := range 6 {
+		var row []number
+		for j := range i + 1 {
+			row = append(row, num(s.whole[i][j]/1e6, 30))
+		}
+		out.Lower = append(out.Lower, row)
+	}
+	return out
 }

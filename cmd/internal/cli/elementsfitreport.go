@@ -31,6 +31,7 @@ type fitSpread struct {
 	at     time.Time
 	days   float64 // after the epoch
 	spread orbit.Spread
+	whole  orbit.Covariance
 }
 
 // twoLineLoss is what the digits of a two-line set cost.
@@ -66,12 +67,12 @@ func newFitReport(o *fitOptions, in *positions, r *fit.Result) (*fitReport, erro
 		f.rule = rule
 		for _, d := range aheadDays {
 			at := r.Elements.Epoch.Add(time.Duration(d * 24 * float64(time.Hour)))
-			s, err := r.Uncertainty.At(at)
+			whole, err := r.Uncertainty.Whole(at)
 			if err != nil {
 				f.notes = append(f.notes, fmt.Sprintf("the spread is told up to %g days: %v", d, err))
 				break
 			}
-			f.ahead = append(f.ahead, fitSpread{at, d, s})
+			f.ahead = append(f.ahead, fitSpread{at, d, whole.Spread(), whole})
 		}
 	}
 	if r.DataPerIndependent > 1.5 {
