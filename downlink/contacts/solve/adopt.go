@@ -18,6 +18,25 @@ func (s *search) load(plan contacts.Plan) {
 	s.b.log = s.b.log[:0]
 }
 
+// begin puts what can stand of a plan on the board, in its order, and keeps it where
+// filling it up costs more in changes than it gains.
+func (s *search) begin(plan contacts.Plan) {
+	list := slices.Clone(plan.Contacts)
+	slices.SortFunc(list, func(a, b contacts.Contact) int {
+		return cmp.Or(cmp.Compare(a.From, b.From), cmp.Compare(a.Candidate, b.Candidate))
+	})
+	for _, c := range list {
+		for _, i := range s.b.m.byCand[c.Candidate] {
+			if w := &s.b.m.windows[i]; w.from <= c.From && c.To <= w.to && c.From%s.b.m.step == 0 && c.To%s.b.m.step == 0 && s.b.fits(c) {
+				s.b.add(c)
+				break
+			}
+		}
+	}
+	s.b.settle()
+	s.keep()
+}
+
 // empty takes off all that can be.
 func (s *search) empty() {
 	for _, list := range s.b.antennas {

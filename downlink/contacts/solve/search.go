@@ -31,7 +31,7 @@ type search struct {
 	requests [][]int // windows of each request
 }
 
-func newSearch(m *model, d *dual, seed uint64) *search {
+func newSearch(m *model, d *dual, seed uint64, start *contacts.Plan) *search {
 	s := &search{b: newBoard(m), d: d, r: rand.New(rand.NewPCG(seed, 1)), guide: make([]float64, len(d.rows)), longest: make([]ms, len(m.p.Antennas))}
 	shortest := contacts.Day
 	for _, w := range m.windows {
@@ -44,6 +44,9 @@ func newSearch(m *model, d *dual, seed uint64) *search {
 		s.cell = u
 	}
 	s.pools(1)
+	if start != nil {
+		s.begin(*start)
+	}
 	s.greedy()
 	s.keep()
 	return s

@@ -17,6 +17,9 @@ type Options struct {
 	Rounds  int // most rounds; 0: no end but the proof's or the context's
 	Workers int // goroutines; 0: two
 	Seed    uint64
+	// Start is a plan to begin with, as far as it keeps the rules: the plan in force. The
+	// greedy plan fills what it leaves. Nil: none.
+	Start *contacts.Plan
 	// GapGoal ends the search when the bound is at most this share above the value; 0: only
 	// a proof ends it.
 	GapGoal  float64
@@ -107,7 +110,7 @@ func newRun(ctx context.Context, m *model, o Options) *run {
 		r.o.Workers = 2
 	}
 	r.grids = r.d.grids()
-	r.search = newSearch(m, r.d, o.Seed)
+	r.search = newSearch(m, r.d, o.Seed, o.Start)
 	r.first = r.search.bestValue
 	r.ascent = newAscent(r.grids[0])
 	return r

@@ -87,21 +87,24 @@ func (m *model) addWindows(i int) {
 	if !m.split && slices.ContainsFunc(m.held, func(h contacts.Contact) bool { return m.group(h.Candidate) == m.group(i) }) {
 		return
 	}
-	spans := m.p.Available(i)
-	for _, f := range m.p.InForce {
-		if f.Candidate == i && m.p.Stands(f) && !slices.ContainsFunc(spans, func(s contacts.Span) bool { return s.Holds(f.Span) }) {
-			spans = append(spans, f.Span)
-		}
-	}
 	most := m.mostUseful(c)
-	for _, s := range spans {
+	add := func(s contacts.Span, least ms) {
 		for _, f := range s.Without(m.takenByFixed(i)) {
-			if f.Length() >= c.Least {
+			if f.Length() >= least {
 				m.windows = append(m.windows, window{
 					candidate: i, antenna: c.Antenna, craft: c.Spacecraft, group: m.group(i),
-					from: f.From, to: f.To, least: c.Least, most: min(most, f.Length()), setUp: c.SetUp, tearDown: c.TearDown,
+					from: f.From, to: f.To, least: least, most: min(max(most, least), f.Length()), setUp: c.SetUp, tearDown: c.TearDown,
 				})
 			}
+		}
+	}
+	spans := m.p.Available(i)
+	for _, s := range spans {
+		add(s, c.Least)
+	}
+	for _, f := range m.p.InForce {
+		if f.Candidate == i && m.p.Stands(f) && !slices.ContainsFunc(spans, func(s contacts.Span) bool { return s.Holds(f.Span) }) {
+			add(f.Span, f.Length()) // as it is, or not at all
 		}
 	}
 }
