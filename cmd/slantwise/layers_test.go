@@ -40,6 +40,7 @@ var layers = []struct {
 	{"slantwise/downlink/contacts", 8},
 	{"slantwise/downlink/contacts/verify", 9},
 	{"slantwise/downlink/contacts/instance", 9},
+	{"slantwise/downlink/contacts/change", 9},
 	{"slantwise/downlink/contacts/solve", 10},
 	{"slantwise/downlink/contacts/explain", 11},
 	{"slantwise/reports", 12},

@@ -18,7 +18,7 @@ type Problem struct {
 	Candidates []Candidate
 
 	Held    []Contact // must be in the plan, exactly so: fixed by agreement or under way
-	InForce []Contact // the plan in force, of which every change has a price
+	InForce []Contact // the plan in force, of which every change has a price; Held is part of it
 
 	Limits  []Limit
 	Shared  []Shared

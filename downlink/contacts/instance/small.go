@@ -166,6 +166,9 @@ func (s *small) values() {
 		c := &p.Candidates[0]
 		p.InForce = []contacts.Contact{{Candidate: 0, Span: contacts.Span{From: c.Window.From, To: c.Window.From + c.Least}}}
 		p.Weights.Change = 20
+		if d := &p.Candidates[1]; s.chance(3) && d.Antenna != c.Antenna && d.Spacecraft != c.Spacecraft && d.Request < 0 && c.Request < 0 {
+			p.Held = []contacts.Contact{{Candidate: 1, Span: contacts.Span{From: d.Window.From, To: d.Window.From + d.Least}, Fixed: true}}
+		}
 		if s.chance(3) {
 			p.Stations[p.Antennas[c.Antenna].Station].Notice = 12 * contacts.Minute
 		}

@@ -67,7 +67,7 @@ func newBoard(m *model) *board {
 		b.clashing[k.A] = append(b.clashing[k.A], clash{k.B, k.Spans})
 		b.clashing[k.B] = append(b.clashing[k.B], clash{k.A, k.Spans})
 	}
-	for _, c := range p.InForce {
+	for _, c := range m.before() {
 		b.inForce[c.Candidate] = append(b.inForce[c.Candidate], c.Span)
 	}
 	for _, list := range b.inForce {

@@ -115,7 +115,7 @@ func (b *builder) changes() {
 	m, d := b.d.m, b.d
 	each := m.p.Weights.Change
 	has := make([]bool, len(m.p.Candidates))
-	for _, c := range m.p.InForce {
+	for _, c := range m.before() {
 		has[c.Candidate] = true
 	}
 	charged := each > 0 && len(m.p.InForce) > 0

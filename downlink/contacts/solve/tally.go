@@ -89,6 +89,14 @@ func (t *tally) allowsRolling(s contacts.Span) bool {
 	return true
 }
 
+// together tells whether two contacts count against each other.
+func (t *tally) together(a, b contacts.Span) bool {
+	if r := t.l.Rolling; r > 0 {
+		return a.From < b.To+r && b.From < a.To+r
+	}
+	return slices.ContainsFunc(t.spans, func(s contacts.Span) bool { return s.Overlap(a) > 0 && s.Overlap(b) > 0 })
+}
+
 func begins(list []contacts.Span, in contacts.Span) int {
 	n := 0
 	for _, s := range list {

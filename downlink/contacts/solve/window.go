@@ -72,6 +72,20 @@ func fixed(p *contacts.Problem) []contacts.Contact {
 	return out
 }
 
+// before returns the plan in force with what is fixed; nothing where none is in force.
+func (m *model) before() []contacts.Contact {
+	if len(m.p.InForce) == 0 {
+		return nil
+	}
+	out := slices.Clone(m.p.InForce)
+	for _, h := range m.p.Held {
+		if !slices.ContainsFunc(out, func(c contacts.Contact) bool { return c.Candidate == h.Candidate && c.Span == h.Span }) {
+			out = append(out, h)
+		}
+	}
+	return out
+}
+
 // group returns the group of a candidate: its request, or the pass itself.
 func (m *model) group(candidate int) int {
 	if r := m.p.Candidates[candidate].Request; r >= 0 {

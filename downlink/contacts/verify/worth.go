@@ -122,8 +122,8 @@ func (j *judge) pieces(list []int, sameData, recorded bool) []piece {
 	return best
 }
 
-// changed counts the contacts that differ from the plan in force: in each window the
-// first of one is compared with the first of the other, and so on.
+// changed counts the contacts that differ from the plan in force and what is fixed: in
+// each window the first of one is compared with the first of the other, and so on.
 func (j *judge) changed() int {
 	if len(j.p.InForce) == 0 {
 		return 0
@@ -139,7 +139,13 @@ func (j *judge) changed() int {
 		}
 		return out
 	}
-	was, is := number(j.p.InForce), number(j.plan)
+	before := slices.Clone(j.p.InForce)
+	for _, h := range j.p.Held {
+		if !j.inForce(h) {
+			before = append(before, h)
+		}
+	}
+	was, is := number(before), number(j.plan)
 	n := 0
 	for k, s := range is {
 		if before, ok := was[k]; !ok || before != s {
