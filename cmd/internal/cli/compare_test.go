@@ -105,7 +105,7 @@ func TestCompareRefuses(t *testing.T) {
 	for _, c := range []struct{ name, want string }{
 		{"compare a.yaml", "takes two scenario files"},
 		{"compare a.yaml missing.yaml", "missing.yaml"},
-		{"compare a.yaml b.yaml --transmitter X-band", `it holds "downlink"`+"\n"},
+		{"compare a.yaml b.yaml --transmitter X-band", `it holds "downlink"` + "\n"},
 		{"compare a.yaml b.yaml --spacecraft Nobody", "Nobody"},
 		{"compare --scenario a.yaml a.yaml b.yaml", "--scenario does not go with compare"},
 	} {
