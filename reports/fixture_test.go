@@ -118,6 +118,12 @@ func fillRadio(p *Pass, s shape) {
 		Least: Moment{Value: math.Inf(1)}, Greatest: Moment{Value: math.Inf(-1)},
 	}
 	p.Radio = r
+	for i, name := range []string{"AOS", "culmination", "LOS"} {
+		// 550 km up over a plane site: off nadir toward the station, which stands 400 km below it.
+		r.Sights = append(r.Sights, Sight{name, downlink.Sightline{Time: s.aos.Add(time.Duration(i) * time.Minute),
+			Off: 45 * unit.Degree, OffNadir: 45 * unit.Degree, StationX: 400 * unit.Kilometre, StationY: 400 * unit.Kilometre,
+			EarthY: 6921 * unit.Kilometre, EarthRadius: 6533 * unit.Kilometre, BoresightY: 1, OnAxis: i == 2}})
+	}
 	f.Terms, f.TermValues = fixtureTerms, make([][]float64, len(fixtureTerms))
 	var best, chosen float64
 	var open time.Time

@@ -76,6 +76,10 @@ type Radio struct {
 
 	AOS, Culmination, LeastMargin downlink.Budget // LeastMargin counts only where there is a least margin
 
+	// Sights tell how the transmit antenna sees the station at the pass's instants; empty
+	// where its attitude tells no direction.
+	Sights []Sight
+
 	Path PathInfo
 
 	// ClearSky is the same pass under a clear sky: power, noise, margin, rate and volume

@@ -68,6 +68,7 @@ type radioJSON struct {
 	MoonInBeam       []intervalJSON `json:"moon_in_beam"`
 	ClearSky         *clearJSON     `json:"clear_sky"` // null where there is no other sky to compare with
 	Plan             *planJSON      `json:"plan"`      // null where none was made
+	Sights           []sightJSON    `json:"sights"`    // how the antenna sees the station; empty where its attitude tells no direction
 }
 
 type modeJSON struct {
@@ -122,6 +123,7 @@ func passHead(p *Pass) headJSON {
 func radioHead(p *Pass) *radioJSON {
 	r, f := p.Radio, p.Profile
 	h := &radioJSON{
+		Sights:      sightsJSON(r),
 		Transmitter: r.Transmitter, Antenna: r.Antenna, Mode: r.Mode,
 		FrequencyHz:      number{r.Frequency.Hertz(), 0},
 		DataRateBps:      number{f.DataRate.BitsPerSecond(), 0},

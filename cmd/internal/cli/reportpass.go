@@ -117,7 +117,23 @@ func reportRadio(s *scenario.Scenario, craft *reportCraft, page *reportPage, bes
 		}
 		*at.into = *b
 	}
+	r.Sights = sightsOf(c.link, craft, page)
 	return r, addPath(r, s, craft, page, best)
+}
+
+// sightsOf tells how the antenna sees the station at AOS, culmination and LOS.
+func sightsOf(l *downlink.Link, craft *reportCraft, page *reportPage) []reports.Sight {
+	var out []reports.Sight
+	e := craft.ephemeris
+	for _, at := range []struct {
+		name string
+		time time.Time
+	}{{"AOS", page.AOS}, {"culmination", page.Culmination}, {"LOS", page.LOS}} {
+		if s, ok := l.Sightline(at.time, e.StateAt(max(0, min(e.Seconds(at.time), e.Span())))); ok {
+			out = append(out, reports.Sight{Name: at.name, Sightline: s})
+		}
+	}
+	return out
 }
 
 // extremes returns the least and the greatest margin of a profile; NaN and no time
