@@ -135,3 +135,26 @@ func (e *Ephemeris) spanError(t time.Time) *SpanError {
 	}
 	return out
 }
+
+// Whole returns nil where there is a state at every instant of [from, to]; else why
+// there is none: what Truncated tells, or a *SpanError.
+func (e *Ephemeris) Whole(from, to time.Time) error {
+	a, b := e.Seconds(from), e.Seconds(to)
+	for _, s := range e.Spans() {
+		if a >= s.From && b <= s.To {
+			return nil
+		}
+	}
+	if e.truncated != nil {
+		return e.truncated
+	}
+	out := e.spanError(from)
+	out.Until = to
+	for _, g := range e.gaps {
+		if g.From.Before(to) && g.To.After(from) {
+			out.Reason = g.Reason
+			break
+		}
+	}
+	return out
+}

@@ -77,12 +77,20 @@ func earlier(a, b time.Time) time.Time {
 	return b
 }
 
+// Gaps returns the parts of [from, to] that lie outside the usable spans, shifted.
+func (t *Trajectory) Gaps(shift Shift, from, to time.Time) []Gap {
+	spans := t.Spans()
+	for i := range spans {
+		spans[i].From, spans[i].To = spans[i].From.Add(shift.Late+shift.Slip), spans[i].To.Add(shift.Late+shift.Slip)
+	}
+	return gapsBetween(spans, from, to)
+}
+
 // gapsBetween returns what the spans leave of [from, to].
 func gapsBetween(spans []TimeSpan, from, to time.Time) []Gap {
 	var gaps []Gap
 	add := func(a, b time.Time, reason string) {
-		a, b = later(a, from), earlier(b, to)
-		if a.Before(b) {
+		if a, b = later(a, from), earlier(b, to); a.Before(b) {
 			gaps = append(gaps, Gap{From: a.UTC(), To: b.UTC(), Reason: reason})
 		}
 	}

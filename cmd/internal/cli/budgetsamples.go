@@ -102,6 +102,9 @@ func budgetAt(s *scenario.Scenario, c *chosenLink, at time.Time) (*budgetResult,
 	end := at.Add(time.Second)
 	r.setElements(s.ElementsOver(c.spacecraft, at, end), at)
 	eph, err := s.Ephemeris(c.spacecraft, at, end, nil)
+	if err == nil {
+		err = eph.Whole(at, at)
+	}
 	if err != nil {
 		return nil, &InputError{Err: fmt.Errorf("spacecraft %s: %w", c.spacecraft.Name, err)}
 	}

@@ -54,8 +54,13 @@ func fly(s *scenario.Scenario) error {
 		e, err := s.Ephemeris(&c, s.Window.Start, s.Window.End, nil)
 		if err != nil {
 			faults = append(faults, fmt.Errorf("spacecraft %s: %w", c.Name, err))
-		} else if cut := e.Truncated(); cut != nil {
+			continue
+		}
+		if cut := e.Truncated(); cut != nil {
 			s.Warnings = append(s.Warnings, scenario.Note{About: "spacecraft " + c.Name, Text: "passes end where its orbit does: " + cut.Error()})
+		}
+		if bend := e.BendNote(); bend != "" {
+			s.Warnings = append(s.Warnings, scenario.Note{About: "spacecraft " + c.Name, Text: bend})
 		}
 	}
 	return errors.Join(faults...)

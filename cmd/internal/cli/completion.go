@@ -12,6 +12,7 @@ func completeFlags(cmd *cobra.Command, env *Env) {
 	fixed := map[string][]string{
 		"format":         {string(formatTable), string(formatCSV), string(formatJSON)},
 		"convert":        elementKinds(),
+		"notation":       {"kvn", "xml"},
 		"sort":           passOrders,
 		"horizon":        {"geometric", "apparent"},
 		"locked":         lockedWords,

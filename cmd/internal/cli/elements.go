@@ -69,7 +69,7 @@ now. --at names another instant.`,
 	addDuration(fs, &o.timeout, "timeout", 30*time.Second, "give up fetching after this time")
 	fs.StringVar(&o.into, "into", "", "write into this `FILE`, whole or not at all")
 	fs.BoolVar(&o.loss, "allow-loss", false, "let --into replace a file that holds more objects, newer sets or something else")
-	cmd.AddCommand(newElementsFit(env))
+	cmd.AddCommand(newElementsFit(env), newElementsTabulate(env))
 	return cmd
 }
 

@@ -220,6 +220,9 @@ func flownPositions(env *Env, o *fitOptions) (*positions, error) {
 		return nil, &InputError{Err: err}
 	}
 	p := &positions{from: "spacecraft " + craft.Name, like: craft.Elements.Elements}
+	if craft.Trajectory != nil {
+		p.like.Name = craft.Trajectory.Name
+	}
 	if p.like.Name == "" && p.like.CatalogNumber == 0 {
 		p.like.Name = craft.Name
 	}

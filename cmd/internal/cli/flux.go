@@ -138,9 +138,11 @@ func orbitRange(s *scenario.Scenario, c *scenario.Spacecraft) (fluxdensity.Orbit
 	if err != nil {
 		return fluxdensity.Orbit{}, err
 	}
-	for t := 0.0; t <= eph.Span(); t += radiusStep {
-		r := unit.Length(eph.PositionAt(t).Norm())
-		o.Perigee, o.Apogee = min(o.Perigee, r), max(o.Apogee, r)
+	for _, s := range eph.Spans() {
+		for t := s.From; t <= s.To; t += radiusStep {
+			r := unit.Length(eph.PositionAt(t).Norm())
+			o.Perigee, o.Apogee = min(o.Perigee, r), max(o.Apogee, r)
+		}
 	}
 	return o, nil
 }

@@ -141,8 +141,12 @@ func runPointing(ctx context.Context, env *Env, o pointingOptions) error {
 	if age < 0 {
 		side = "after"
 	}
-	env.note("the element set of %s has the epoch %s, %s days %s the middle of the span", printable(p.spacecraft.Name),
-		utc(p.elements.Epoch), fixed(age.Abs().Hours()/24, 2), side)
+	if p.spacecraft.Trajectory != nil {
+		env.note("%s flies on its ephemeris", printable(p.spacecraft.Name))
+	} else {
+		env.note("the element set of %s has the epoch %s, %s days %s the middle of the span", printable(p.spacecraft.Name),
+			utc(p.elements.Epoch), fixed(age.Abs().Hours()/24, 2), side)
+	}
 	if p.elements.Caution != "" {
 		env.note("warning: %s", printable(p.elements.Caution))
 	}
@@ -177,8 +181,8 @@ func newPointingRows(s *scenario.Scenario, o pointingOptions) (*pointing, error)
 	end := o.to.Add(time.Second) // a span of no length has no knots to look between
 	p.elements = s.ElementsOver(p.spacecraft, o.from, end)
 	p.ephemeris, err = s.Ephemeris(p.spacecraft, o.from, end, nil)
-	if err == nil && p.ephemeris.Seconds(o.to) > p.ephemeris.Span() {
-		err = p.ephemeris.Truncated()
+	if err == nil {
+		err = p.ephemeris.Whole(o.from, o.to)
 	}
 	if err != nil {
 		return nil, &InputError{Err: fmt.Errorf("spacecraft %s: %w", p.spacecraft.Name, err)}

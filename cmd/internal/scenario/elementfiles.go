@@ -4,19 +4,22 @@ import (
 	"errors"
 	"fmt"
 
+	"slantwise/cmd/internal/scenario/tree"
 	"slantwise/orbit"
 	"slantwise/orbit/elements"
 )
 
-// elementFiles reads every element set of the files that the scenario names.
-func (r *reader) elementFiles(o object) []orbit.Elements {
+// elementFiles reads every element set and ephemeris of the files that the scenario
+// names.
+func (r *reader) elementFiles(o object, earth orbit.EarthOrientation) ([]orbit.Elements, []TrajectoryFile) {
 	if !o.has("element_files") {
-		if r.need == NeedOrbits {
+		if r.need == NeedOrbits && !everyOneHasState(o) {
 			o.missing("element_files", "a list of files of element sets, relative to the scenario file")
 		}
-		return nil
+		return nil, nil
 	}
 	var sets []orbit.Elements
+	var tracks []TrajectoryFile
 	seen := map[string]bool{}
 	for i, n := range o.items("element_files", "file names", maxParts) {
 		name := fmt.Sprintf("element_files[%d]", i)
@@ -32,6 +35,20 @@ func (r *reader) elementFiles(o object) []orbit.Elements {
 		if r.need != NeedOrbits {
 			continue
 		}
+		told, is, err := r.src.trajectories(file, earth)
+		if err != nil {
+			r.elementFault(o, name, file, err)
+			continue
+		}
+		if is {
+			for _, w := range told.Warnings {
+				r.warnings = append(r.warnings, Note{About: "element file " + file, Text: w.String()})
+			}
+			for _, t := range told.Trajectories {
+				tracks = append(tracks, TrajectoryFile{Trajectory: t, Created: told.Created})
+			}
+			continue
+		}
 		found, warnings, err := r.src.elementSets(file)
 		if err != nil {
 			r.elementFault(o, name, file, err)
@@ -42,7 +59,21 @@ func (r *reader) elementFiles(o object) []orbit.Elements {
 		}
 		sets = append(sets, found...)
 	}
-	return sets
+	return sets, tracks
+}
+
+// everyOneHasState tells whether each spacecraft has an orbit of its own.
+func everyOneHasState(top object) bool {
+	all := top.get("spacecraft")
+	if all == nil || len(all.Items) == 0 {
+		return false
+	}
+	for _, craft := range all.Items {
+		if craft.Kind != tree.Map || craft.Get("state") == nil {
+			return false
+		}
+	}
+	return true
 }
 
 // elementFault passes on what is wrong with an element file. Faults of its text tell

@@ -11,15 +11,31 @@ import (
 // an ephemeris. scratch is rebuilt and returned where its memory may be used again;
 // nil makes a new one. After an error the scratch holds nothing.
 //
-// The error is that of orbit.NewEphemeris. Where the orbit ends inside the span, the
-// ephemeris ends there and tells why (Truncated).
+// The error is that of orbit.NewEphemeris or of Ephemeris.Follow, and a *orbit.SpanError
+// where the span lies after ValidUntil. Where the orbit ends inside the span, the
+// ephemeris ends there and tells why (Truncated); where it is not to be flown, it has gaps (Gaps).
 func (s *Scenario) Ephemeris(c *Spacecraft, from, to time.Time, scratch *orbit.Ephemeris) (*orbit.Ephemeris, error) {
 	if scratch == nil {
 		scratch = &orbit.Ephemeris{}
 	}
-	el := s.ElementsOver(c, from, to).Elements
-	if err := scratch.Rebuild(el, from, to, s.Earth); err != nil {
+	end := to
+	if u := c.ValidUntil; !u.IsZero() && u.Before(to) {
+		if !u.After(from) {
+			return nil, &orbit.SpanError{Object: c.Name, Time: from, Until: to, From: s.Window.Start, To: u, Reason: c.afterwards()}
+		}
+		end = u
+	}
+	var err error
+	if c.Trajectory != nil {
+		err = scratch.Follow(c.Trajectory, c.Shift, from, end, s.Earth)
+	} else {
+		err = scratch.Rebuild(s.ElementsOver(c, from, to).Elements, from, end, s.Earth)
+	}
+	if err != nil {
 		return nil, err
+	}
+	if end.Before(to) {
+		scratch.AddGap(orbit.Gap{From: end, To: to, Reason: c.afterwards()})
 	}
 	return scratch, nil
 }

@@ -54,7 +54,7 @@ func (r *reader) scenario(root *tree.Node) *Scenario {
 	r.earthTurn, r.span = s.Earth, s.Window
 	s.Choice = r.choice(o)
 	s.Horizon = elevationKind(o, "horizon", "AOS and LOS are decided by")
-	s.Sets = r.elementFiles(o)
+	s.Sets, s.Trajectories = r.elementFiles(o, s.Earth)
 	s.Path = r.path(o)
 	r.catalogue = r.codingFiles(o)
 	s.Spacecraft = r.spacecraft(o, s)

@@ -26,10 +26,13 @@ type Scenario struct {
 
 	Path PathChoice // which models of the path apply, and for what share of the year
 
-	Choice     elements.Choice
-	Sets       []orbit.Elements // every element set of the element files, in their order
-	Spacecraft []Spacecraft     // in the order of the file
-	Stations   []Station        // in the order of the file
+	Choice elements.Choice
+	Sets   []orbit.Elements // every element set of the element files, in their order
+	// Trajectories are the ephemerides of the element files, in their order.
+	Trajectories []TrajectoryFile
+
+	Spacecraft []Spacecraft // in the order of the file
+	Stations   []Station    // in the order of the file
 
 	Licences []licence.Licence // what may be sent and received, in the order of the file
 	Sizing   *Sizing           // which dish is sought; nil: none
@@ -51,6 +54,9 @@ type Spacecraft struct {
 	Elements     elements.Chosen        // for the middle of the window; zero where the element files stayed unread
 	Candidates   []orbit.Elements       // all sets of the object, in the order of the files
 	Choice       elements.Choice        // how Elements was chosen
+	Trajectory   *orbit.Trajectory      // flown in place of Elements, which then only describe it; nil: none
+	Shift        orbit.Shift            // of the orbit in time; Elements and Candidates have it already, Trajectory has not
+	ValidUntil   time.Time              // after it there are no passes; zero: no end is given
 	Transmitters []downlink.Transmitter // may be empty: passes and pointing only
 	Uplinks      []downlink.Receiver    // may be empty: nothing is known of commanding
 	Recorder     *Recorder              // nil: none is given
@@ -71,6 +77,11 @@ func (s *Spacecraft) Uplink(name string) *downlink.Receiver {
 // ElementsAt returns the element set to be used at t by the scenario's choice, with
 // its age at t.
 func (s *Spacecraft) ElementsAt(t time.Time) elements.Chosen {
+	if s.Trajectory != nil {
+		out := s.Elements // no age tells how good an ephemeris is
+		out.Age = out.Elements.Age(t)
+		return out
+	}
 	if chosen := elements.Choose(s.Candidates, s.Choice, t); len(chosen) > 0 {
 		return chosen[0]
 	}

@@ -9,7 +9,7 @@ import (
 	"slantwise/orbit/elements"
 )
 
-var spacecraftKeys = []string{"name", "element_set", "transmitters", "recorder", "rate_plan", "uplinks", "position_uncertainty"}
+var spacecraftKeys = []string{"name", "element_set", "state", "time_offset_s", "launch_slip_s", "valid_until_utc", "transmitters", "recorder", "rate_plan", "uplinks", "position_uncertainty"}
 
 // spacecraft reads the spacecraft, or takes every object of the element files where
 // the key is left out.
@@ -32,13 +32,13 @@ func (r *reader) spacecraft(top object, s *Scenario) []Spacecraft {
 		out[i].Uncertainty = o.craftUncertainty(all)
 		if r.need != NeedOrbits {
 			o.elementSetName()
+			o.shifts(&out[i])
+			if o.has("state") {
+				o.state(called[i], s.Earth)
+			}
 			continue
 		}
-		out[i].Candidates = o.candidates(called[i], s.Sets)
-		if len(out[i].Candidates) > 0 {
-			out[i].Elements = out[i].ElementsAt(middle)
-			o.tellAge(out[i].Elements)
-		}
+		o.orbitOf(&out[i], s, middle)
 	}
 	return out
 }
@@ -92,11 +92,11 @@ func (r *reader) everyObject(top object, s *Scenario, middle time.Time) []Spacec
 		top.missing("spacecraft", "at least one spacecraft with a transmitter")
 		return nil
 	}
-	if len(s.Sets) == 0 {
+	if len(s.Sets) == 0 && len(s.Trajectories) == 0 {
 		return nil // there is a fault for the element files already
 	}
 	chosen := elements.Choose(s.Sets, s.Choice, middle)
-	top.assume("spacecraft left out: all %d objects of the element files, without transmitter", len(chosen))
+	top.assume("spacecraft left out: all %d objects of the element files, without transmitter", len(chosen)+len(s.Trajectories))
 	all := top.uncertainty()
 	byObject := map[string][]orbit.Elements{}
 	for _, el := range s.Sets {
@@ -117,6 +117,14 @@ func (r *reader) everyObject(top object, s *Scenario, middle time.Time) []Spacec
 		named := top
 		named.about = "spacecraft " + name
 		named.tellAge(c)
+	}
+	for i := range s.Trajectories {
+		t := &s.Trajectories[i]
+		c := Spacecraft{Name: t.Name, Uncertainty: all, Choice: s.Choice}
+		named := top
+		named.about = "spacecraft " + t.Name
+		named.follow(&c, t, 1, s)
+		out = append(out, c)
 	}
 	return out
 }
