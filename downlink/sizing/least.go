@@ -63,13 +63,18 @@ type Found struct {
 // availability and gaps are exactly; bytes and latency are but for the plans being made
 // for one weather and counted in all.
 func (s *Study) Least(needs []Need, r Range) (Found, error) {
+	return s.LeastOf(needs, r, Variant{})
+}
+
+// LeastOf is Least with everything but the diameter changed as in a variant.
+func (s *Study) LeastOf(needs []Need, r Range, base Variant) (Found, error) {
 	if len(needs) == 0 {
 		return Found{}, errors.New("nothing is required; give a requirement")
 	}
 	if err := r.Check(); err != nil {
 		return Found{}, err
 	}
-	q := search{study: s, needs: needs, grid: r.Grid()}
+	q := search{study: s, needs: needs, grid: r.Grid(), base: base}
 	for _, n := range needs {
 		q.parts |= n.part
 	}
@@ -81,6 +86,14 @@ type search struct {
 	needs []Need
 	parts part
 	grid  []unit.Length
+	base  Variant
+}
+
+// at is the variant of a diameter.
+func (q *search) at(d unit.Length) Variant {
+	v := q.base
+	v.Diameter = d
+	return v
 }
 
 // met tells whether a variant meets all.
@@ -99,7 +112,7 @@ func (q *search) met(v Variant) (bool, error) {
 
 func (q *search) run() (Found, error) {
 	var f Found
-	ok, err := q.met(Variant{Diameter: q.grid[0]})
+	ok, err := q.met(q.at(q.grid[0]))
 	if err != nil {
 		return f, err
 	}
@@ -122,7 +135,7 @@ func (q *search) run() (Found, error) {
 // between returns the least diameter in (a, b] that meets all, where a does not; 0 where
 // none does.
 func (q *search) between(a, b unit.Length) (unit.Length, error) {
-	end, err := q.met(Variant{Diameter: b})
+	end, err := q.met(q.at(b))
 	if err != nil {
 		return 0, err
 	}
@@ -140,7 +153,7 @@ func (q *search) between(a, b unit.Length) (unit.Length, error) {
 		}
 	}
 	mid := unit.Length(math.Sqrt(a.Metres() * b.Metres()))
-	middle, err := q.met(Variant{Diameter: mid})
+	middle, err := q.met(q.at(mid))
 	if err != nil {
 		return 0, err
 	}
@@ -160,7 +173,7 @@ func (q *search) betweenKnown(a, b unit.Length, end bool) (unit.Length, error) {
 	}
 	for b.Metres()-a.Metres() > resolution*b.Metres() {
 		mid := unit.Length(math.Sqrt(a.Metres() * b.Metres()))
-		ok, err := q.met(Variant{Diameter: mid})
+		ok, err := q.met(q.at(mid))
 		if err != nil {
 			return 0, err
 		}
@@ -182,7 +195,7 @@ func (q *search) possible(a, b unit.Length) (bool, error) {
 	}
 	more += still
 	for _, d := range q.grid { // one that has as much more, and does not meet either, excludes it for nothing
-		o := q.study.known[Variant{Diameter: d}]
+		o := q.study.known[q.at(d)]
 		if d <= b || o == nil || q.parts&^o.done != 0 {
 			continue
 		}
@@ -199,7 +212,9 @@ func (q *search) possible(a, b unit.Length) (bool, error) {
 			break
 		}
 	}
-	return q.met(Variant{Diameter: a, Power: unit.DB(more)})
+	v := q.at(a)
+	v.Power += unit.DB(more)
+	return q.met(v)
 }
 
 // last returns the end of the stretch of diameters that meet all from d on.
@@ -208,7 +223,7 @@ func (q *search) last(d unit.Length) (unit.Length, error) {
 		if next <= d {
 			continue
 		}
-		ok, err := q.met(Variant{Diameter: next})
+		ok, err := q.met(q.at(next))
 		if err != nil {
 			return 0, err
 		}
@@ -218,7 +233,7 @@ func (q *search) last(d unit.Length) (unit.Length, error) {
 		}
 		for next.Metres()-d.Metres() > resolution*d.Metres() {
 			mid := unit.Length(math.Sqrt(next.Metres() * d.Metres()))
-			if ok, err = q.met(Variant{Diameter: mid}); err != nil {
+			if ok, err = q.met(q.at(mid)); err != nil {
 				return 0, err
 			}
 			if ok {
@@ -238,7 +253,7 @@ func (q *search) nearest() (*Outcome, error) {
 	var best *Outcome
 	at := 0
 	look := func(d unit.Length) (float64, error) {
-		o, err := q.study.outcome(Variant{Diameter: d}, q.parts)
+		o, err := q.study.outcome(q.at(d), q.parts)
 		if err != nil {
 			return 0, err
 		}

@@ -103,7 +103,10 @@ func (v *Variant) shift() float64 { return float64(v.Power - v.Pointing) }
 
 // usable tells whether a sample counts.
 func (w *work) usable(y *SiteYear, i int) bool {
-	return y.Open[i] && y.ElevationDeg[i] >= w.variant.LeastElevation.Degrees()
+	if raise := w.variant.Raise; raise > 0 && y.ElevationDeg[i] < (y.Site.MinimumElevation+raise).Degrees() {
+		return false
+	}
+	return y.Open[i]
 }
 
 // levels fills C/N0 of a site's samples, planned weather and clear sky; NaN where the
@@ -126,9 +129,16 @@ func (w *work) levels(site, from, to int, planned, clear []float64) {
 func (w *work) bytes() error {
 	s := w.study
 	w.days = make([]float64, int(math.Ceil(s.spec.Flight.Days)))
-	tracks := make([]rateplan.Track, len(s.turns))
-	clear := make([][]float64, len(s.turns))
-	for k, t := range s.turns {
+	turns := s.turns
+	if w.variant.thin > 1 {
+		turns = nil
+		for k := 0; k < len(s.turns); k += w.variant.thin {
+			turns = append(turns, s.turns[k])
+		}
+	}
+	tracks := make([]rateplan.Track, len(turns))
+	clear := make([][]float64, len(turns))
+	for k, t := range turns {
 		tracks[k], clear[k] = w.track(t)
 	}
 	if s.spec.Settles {
@@ -142,9 +152,9 @@ func (w *work) bytes() error {
 		if err != nil {
 			return err
 		}
-		w.count(s.turns[k], &tracks[k], clear[k], &plan, modes)
+		w.count(turns[k], &tracks[k], clear[k], &plan, modes)
 		if s.spec.Latency != nil && !math.IsNaN(s.spec.Needs.Latency) {
-			w.contacts = append(w.contacts, contactOf(&s.spec, s.turns[k], &tracks[k], &plan))
+			w.contacts = append(w.contacts, contactOf(&s.spec, turns[k], &tracks[k], &plan))
 		}
 	}
 	w.total()
@@ -204,6 +214,11 @@ func (w *work) total() {
 		}
 	}
 	days := w.study.spec.Flight.Days
+	if n := w.variant.thin; n > 1 { // so many times what the passes that were planned bring
+		planned := (len(w.study.turns) + n - 1) / n
+		days *= float64(planned) / float64(len(w.study.turns))
+		worst = math.NaN()
+	}
 	w.out.BytesPerDay = sum / days
 	w.out.ClearBytesPerDay /= days
 	w.out.WorstMonthBytesPerDay /= days

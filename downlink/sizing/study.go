@@ -157,8 +157,8 @@ type Variant struct {
 	Power    unit.DB          // added to the transmit power
 	Pointing unit.DB          // added to the loss of pointing
 	Noise    unit.Temperature // added to the system noise
-	// LeastElevation replaces the sites' own where it is higher; 0: not.
-	LeastElevation unit.Angle
+	Raise    unit.Angle       // added to every site's least elevation
+	thin     int              // every so many passes are planned, and stand for the others; 0: all
 }
 
 // Plans returns how often the passes of the year were planned.

@@ -168,12 +168,12 @@ func TestWhatMayNotBeUsedDoesNotCount(t *testing.T) {
 	s = c.study(t, None(), Family{})
 	before := math.Inf(1)
 	for _, el := range []float64{0, 5, 10, 20, 40} {
-		o, err := s.Outcome(Variant{Diameter: 3, LeastElevation: unit.Angle(el) * unit.Degree})
+		o, err := s.Outcome(Variant{Diameter: 3, Raise: unit.Angle(el) * unit.Degree})
 		if err != nil {
 			t.Fatal(err)
 		}
 		if o.BytesPerDay > before || o.BytesPerDay == 0 {
-			t.Errorf("from %g deg: %g bytes a day, before %g", el, o.BytesPerDay, before)
+			t.Errorf("raised by %g deg: %g bytes a day, before %g", el, o.BytesPerDay, before)
 		}
 		before = o.BytesPerDay
 	}

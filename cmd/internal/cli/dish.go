@@ -3,6 +3,7 @@ package cli
 import (
 	"context"
 	"fmt"
+	"slices"
 
 	"github.com/spf13/cobra"
 
@@ -10,13 +11,14 @@ import (
 )
 
 type dishOptions struct {
-	show   string
-	days   *float64 // nil: the scenario's
-	format format
+	show, axis string
+	days       *float64 // nil: the scenario's
+	diameter   *float64 // nil: see dishStudy.chosen
+	format     format
 }
 
 // What the command may write.
-var dishSheets = []string{"answer", "trade"}
+var dishSheets = []string{"answer", "trade", "map", "sensitivities", "chances", "limits"}
 
 func newDish(env *Env) *cobra.Command {
 	o := dishOptions{}
@@ -30,13 +32,24 @@ by the spacecraft's modes and rate rules, and what is sent counts by the statist
 the weather.
 
   --show answer  what each requirement says (JSON: the whole answer)
-  --show trade   bytes, margins, availability, gaps and price over the diameter`,
+  --show trade   bytes, margins, availability, gaps and price over the diameter
+  --show map     bytes a day over diameter and a second parameter, and where all is just met
+  --show sensitivities  what a dB, a kelvin and a degree cost, in bytes and in dish
+  --show chances the probability that the dish meets all, with the tolerances of design_control
+  --show limits  what the dish allows: power, rate, range, altitude, G/T, least elevation
+
+Sensitivities and chances are of the least dish that meets all, limits of the scenario's
+own dishes; --diameter-m asks about another.`,
 		Example: `  slantwise dish --days 28
-  slantwise dish --days 28 --show trade --format csv`,
+  slantwise dish --days 28 --show trade --format csv
+  slantwise dish --days 28 --show map --axis noise
+  slantwise dish --days 28 --show sensitivities --diameter-m 9`,
 		Args: noArgs,
 		RunE: func(cmd *cobra.Command, _ []string) error { return runDish(cmd.Context(), env, &o) },
 	}
-	cmd.Flags().StringVar(&o.show, "show", "answer", "`WHAT` to write: answer or trade")
+	cmd.Flags().StringVar(&o.show, "show", "answer", "`WHAT` to write: answer, trade, map, sensitivities, chances or limits")
+	cmd.Flags().StringVar(&o.axis, "axis", string(sizing.PowerAxis), "second parameter of the map: `power`, elevation, noise or frequency")
+	addNumber(cmd.Flags(), &o.diameter, "diameter-m", "ask about a dish of so many `METRES`")
 	addNumber(cmd.Flags(), &o.days, "days", "how many `DAYS` are flown, in place of the scenario's")
 	addFormat(cmd, &o.format)
 	return cmd
@@ -46,6 +59,9 @@ func runDish(ctx context.Context, env *Env, o *dishOptions) error {
 	show, err := pick("show", o.show, dishSheets, func(s *string) string { return *s })
 	if err != nil {
 		return inputErrorf("--show: %q is not allowed; it must be %s", o.show, quotedList(dishSheets))
+	}
+	if err := o.check(); err != nil {
+		return err
 	}
 	s, err := env.load(needOrbits)
 	if err != nil {
@@ -62,10 +78,58 @@ func runDish(ctx context.Context, env *Env, o *dishOptions) error {
 	if err != nil {
 		return err
 	}
-	if *show == "trade" {
-		return d.withNotes(d.tradeSheet(a)).write(env, o.format)
+	if *show == "answer" {
+		return d.writeAnswer(env, a, o.format)
 	}
-	return d.writeAnswer(env, a, o.format)
+	out, err := d.sheet(ctx, env, a, *show, o)
+	if err != nil {
+		return err
+	}
+	return d.withNotes(out).write(env, o.format)
+}
+
+// check says what is wrong with the flags.
+func (o *dishOptions) check() error {
+	if !slices.Contains(sizing.Axes, sizing.Axis(o.axis)) {
+		return inputErrorf("--axis: %q is not allowed; it must be power, elevation, noise or frequency", o.axis)
+	}
+	if m := o.diameter; m != nil && !(*m > 0 && *m <= 1000) {
+		return inputErrorf("--diameter-m: %g m is not allowed; it must be greater than 0 and at most 1000 m", *m)
+	}
+	return nil
+}
+
+// sheet is one of dishSheets but the answer.
+func (d *dishStudy) sheet(ctx context.Context, env *Env, a *sizing.Answer, show string, o *dishOptions) (*sheet, error) {
+	if (show == "chances" || show == "limits") && len(a.Verdicts) == 0 {
+		return nil, inputErrorf("sizing.requirements: nothing is required, and --show %s is about requirements; give one", show)
+	}
+	switch show {
+	case "map":
+		p, err := d.plane(env, sizing.Axis(o.axis))
+		if err != nil {
+			return nil, err
+		}
+		return mapSheet(p), nil
+	case "sensitivities":
+		list, err := d.study.Sensitivities(d.chosen(a, o.diameter), d.sizing.Range)
+		if err != nil {
+			return nil, &InputError{Err: err}
+		}
+		return sensitivitySheet(list), nil
+	case "chances":
+		c, err := d.chance(a, o.diameter)
+		if err != nil {
+			return nil, err
+		}
+		if c == nil {
+			return nil, inputErrorf("design_control: the scenario gives no tolerances, and without them there is no probability; add some")
+		}
+		return chanceSheet(c), nil
+	case "limits":
+		return d.limitSheet(ctx, env, a, o.diameter)
+	}
+	return d.tradeSheet(a), nil
 }
 
 func (d *dishStudy) answer(env *Env) (*sizing.Answer, error) {

@@ -146,10 +146,30 @@ func TestDishFormats(t *testing.T) {
 		{"--format csv", "name,required,reached,unit,satisfied,least_diameter_m,"},
 		{"--show trade --format csv", "diameter_m,bytes_per_day,clear_sky_bytes_per_day,"},
 		{"", "The least diameter that meets all is "},
+		{"--show map --axis power --format csv", "power_change_db,diameter_m,bytes_per_day,over_worst_share,just_met_diameter_m\n-6.000,1.0000,"},
+		{"--show map --axis frequency --format csv", "\n8180.000,"},
+		{"--show sensitivities --format csv", "1 K more noise,-"},
+		{"--show limits --diameter-m 3.7 --format csv", "greatest altitude,"},
+		{"--show chances --format csv", "\nassured,95.00,"},
 	} {
 		code, out, errOut := invoke(t, append([]string{"dish", "--scenario", file}, strings.Fields(c.args)...)...)
 		if code != 0 || !strings.Contains(out, c.want) {
 			t.Errorf("%s: exit code %d, %s%s", c.args, code, out, errOut)
+		}
+	}
+}
+
+func TestDishFlagsRefuse(t *testing.T) {
+	file := dishScenario(t, dishBlock+"    bytes_per_day: 2.0e9\n")
+	for _, c := range []struct{ args, want string }{
+		{"--show maps", "it must be \"answer\", \"trade\""},
+		{"--axis colour", "it must be power, elevation, noise or frequency"},
+		{"--diameter-m 0", "it must be greater than 0"},
+		{"--days 3", "days: 3 d"},
+	} {
+		code, _, errOut := invoke(t, append([]string{"dish", "--scenario", file}, strings.Fields(c.args)...)...)
+		if code != 2 || !strings.Contains(errOut, c.want) {
+			t.Errorf("%s: exit code %d, %q instead of %q", c.args, code, errOut, c.want)
 		}
 	}
 }

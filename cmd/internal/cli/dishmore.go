@@ -1,0 +1,235 @@
+package cli
+
+import (
+	"context"
+	"fmt"
+	"math"
+
+	"slantwise/downlink/sizing"
+	"slantwise/downlink/tolerance"
+	"slantwise/orbit/unit"
+)
+
+// chosen is the dish that maps, sensitivities and chances are about: the one that is
+// asked for, else the least that meets all, else the one that comes nearest, else the
+// greatest of the range.
+func (d *dishStudy) chosen(a *sizing.Answer, asked *float64) unit.Length {
+	switch {
+	case asked != nil:
+		return unit.Length(*asked)
+	case a.Together.Diameter > 0:
+		return a.Together.Diameter
+	case a.Together.Nearest != nil:
+		return a.Together.Nearest.Variant.Diameter
+	}
+	return d.sizing.Range.High
+}
+
+// sensitivitySheet is the sensitivities, the dearest first.
+func sensitivitySheet(list []sizing.Sensitivity) *sheet {
+	out := &sheet{name: "sensitivities", columns: []sheetColumn{
+		wordsAs("change", "change"), numbersAs("bytes_per_day", "bytes a day", 0), numbersAs("diameter_cm", "cm of dish", 2),
+	}}
+	for _, x := range list {
+		out.rows = append(out.rows, []any{x.Name, x.BytesPerDay, 100 * x.Diameter.Metres()})
+	}
+	return out
+}
+
+// mapAxes are how the values of a map's axis are named.
+var mapAxes = map[sizing.Axis]struct{ column, head, name, unit string }{
+	sizing.PowerAxis:     {"power_change_db", "power dB", "transmit power, change", "dB"},
+	sizing.ElevationAxis: {"least_elevation_raised_deg", "raised deg", "least elevation, raised by", "deg"},
+	sizing.NoiseAxis:     {"noise_added_k", "noise K", "system noise, added", "K"},
+	sizing.FrequencyAxis: {"frequency_mhz", "MHz", "frequency", "MHz"},
+}
+
+// mapSheet is a map, a row a cell.
+func mapSheet(p *sizing.Plane) *sheet {
+	axis := mapAxes[p.Axis]
+	out := &sheet{name: "map", columns: []sheetColumn{
+		numbersAs(axis.column, axis.head, 3), numbersAs("diameter_m", "diameter m", 4), numbersAs("bytes_per_day", "bytes a day", 0),
+		numbersAs("over_worst_share", "over, share", 4), numbersAs("just_met_diameter_m", "just met m", 4),
+	}}
+	for k, v := range p.Values {
+		for i, d := range p.Diameters {
+			over := p.Over[k][i]
+			if math.IsInf(over, 0) {
+				over = none
+			}
+			out.rows = append(out.rows, []any{v, d.Metres(), p.Bytes[k][i], over, p.Just[k]})
+		}
+	}
+	out.notes = append(out.notes, mapNote(p))
+	return out
+}
+
+func mapNote(p *sizing.Plane) string {
+	text := "latency and the worst week are not in the map"
+	if p.Planned > 1 {
+		text = fmt.Sprintf("every %d. pass is planned for the map; at the ends and in the middle of its diameters that is up to %.2f %% from the bytes of all passes; ", p.Planned, 100*p.Error) + text
+	}
+	if p.Axis == sizing.FrequencyAxis {
+		text += "; the antennas keep their areas and the spacecraft its pattern and power"
+	}
+	return text
+}
+
+func (d *dishStudy) plane(env *Env, axis sizing.Axis) (*sizing.Plane, error) {
+	bar := env.startShares("map of diameter and " + string(axis))
+	defer bar.stop()
+	p, err := d.study.Plane(axis, d.sizing.Range, d.refit, bar.tell)
+	if err != nil {
+		return nil, &InputError{Err: err}
+	}
+	return p, nil
+}
+
+// refit makes the places of the sites for another frequency; bands of antennas are those
+// of what would be built for it.
+func (d *dishStudy) refit(f unit.Frequency) ([]sizing.Place, error) {
+	tx := *d.transmitter
+	tx.Frequency = f
+	sky := newSkies(d.scenario)
+	var out []sizing.Place
+	for i := range d.links {
+		c, a := d.links[i], *d.links[i].antenna
+		a.Bands = nil
+		c.antenna = &a
+		p, err := d.place(sky, &c, &tx)
+		if err != nil {
+			return nil, fmt.Errorf("station %s at %g MHz: %w", c.station.Site.Name, f.Megahertz(), err)
+		}
+		out = append(out, p)
+	}
+	return out, nil
+}
+
+// tolerances makes the distribution of the scenario's design control; nil where it has
+// no tolerance.
+func (d *dishStudy) tolerances() (*tolerance.Chance, error) {
+	var items []tolerance.Item
+	for _, s := range d.scenario.Control.Spreads {
+		items = append(items, tolerance.Item{Name: s.Term, Favourable: s.Favourable, Adverse: s.Adverse, Law: s.Law, Source: s.Source})
+	}
+	if len(items) == 0 {
+		return nil, nil
+	}
+	c, err := tolerance.NewChance(items)
+	if err != nil {
+		return nil, &InputError{Err: fmt.Errorf("design control: %w", err)}
+	}
+	return c, nil
+}
+
+func (d *dishStudy) chance(a *sizing.Answer, asked *float64) (*sizing.Chance, error) {
+	of, err := d.tolerances()
+	if err != nil || of == nil || len(a.Verdicts) == 0 {
+		return nil, err
+	}
+	c, err := d.study.Chance(of, d.chosen(a, asked), d.sizing.Range)
+	if err != nil {
+		return nil, &InputError{Err: err}
+	}
+	return c, nil
+}
+
+// chanceSheet is the probability of a dish, then the dish of each probability.
+func chanceSheet(c *sizing.Chance) *sheet {
+	out := &sheet{name: "chances", columns: []sheetColumn{
+		wordsAs("row", "row"), numbersAs("probability_percent", "probability %", 2), numbersAs("diameter_m", "diameter m", 4), numbersAs("slack_db", "slack dB", 3),
+	}}
+	out.rows = append(out.rows, []any{"dish", 100 * c.Probability, c.Diameter.Metres(), float64(c.Slack)})
+	for _, x := range c.Assured {
+		out.rows = append(out.rows, []any{"assured", 100 * x.Probability, diameterOr(x.Diameter.Metres()), none})
+	}
+	out.notes = append(out.notes, "every tolerance of the design control, independent of one another; what was bought is one deviation for all links and the whole year")
+	return out
+}
+
+// limitSheet is what a dish allows, everything else as it is.
+func (d *dishStudy) limitSheet(ctx context.Context, env *Env, a *sizing.Answer, asked *float64) (*sheet, error) {
+	v := sizing.Variant{}
+	if asked != nil {
+		v.Diameter = unit.Length(*asked)
+	}
+	out := &sheet{name: "limits", columns: []sheetColumn{wordsAs("limit", "limit"), numbersAs("value", "value", 4), wordsAs("unit", "unit"), wordsAs("meaning", "meaning")}}
+	add := func(name string, value float64, u, meaning string) {
+		out.rows = append(out.rows, []any{name, value, u, meaning})
+	}
+	needs := d.sizing.Needs.List()
+	slack, err := d.study.Slack(needs, v)
+	if err != nil {
+		return nil, &InputError{Err: err}
+	}
+	add("slack", float64(slack), "dB", "so much worse every link may be until a requirement fails; negative: so much is missing")
+	if tx := d.transmitter; tx.EIRP != nil {
+		add("least EIRP", tx.EIRP.DBW()-float64(slack), "dBW", "with which all is just met")
+	} else {
+		add("least transmit power", tx.Power.Minus(slack).DBW(), "dBW", "with which all is just met")
+	}
+	if err := d.rateLimit(add, v); err != nil {
+		return nil, err
+	}
+	at := 30 * unit.Degree
+	if m := d.sizing.Needs.Margin; m != nil {
+		at = m.Elevation
+		d.rangeLimit(add, v, m)
+	}
+	for i := range d.links {
+		g, err := d.study.GOverT(i, v, at)
+		if err != nil {
+			return nil, &InputError{Err: err}
+		}
+		add("worst G/T, "+d.links[i].station.Site.Name, float64(g-slack), "dB/K", fmt.Sprintf("at %g deg under a clear sky, where the dish has %.2f dB/K", at.Degrees(), float64(g)))
+	}
+	raise, ok, err := d.study.HighestRaise(needs, v)
+	if err != nil {
+		return nil, &InputError{Err: err}
+	}
+	if !ok {
+		raise = unit.Angle(none)
+	}
+	add("least elevation raised by", raise.Degrees(), "deg", "at every site, with which all is just met")
+	km, err := d.altitudeLimit(ctx, env, needs, v)
+	if err != nil {
+		return nil, err
+	}
+	add("greatest altitude", km, "km", "of a mean orbit of the same kind, up to which all is met")
+	return out, nil
+}
+
+// rateLimit is the data rate that margin and availability allow the mode.
+func (d *dishStudy) rateLimit(add func(string, float64, string, string), v sizing.Variant) error {
+	radio := sizing.None()
+	radio.Margin, radio.MarginShare, radio.Availability = d.sizing.Needs.Margin, d.sizing.Needs.MarginShare, d.sizing.Needs.Availability
+	list := radio.List()
+	if len(list) == 0 {
+		return nil
+	}
+	slack, err := d.study.Slack(list, v)
+	if err != nil {
+		return &InputError{Err: err}
+	}
+	m, err := d.need(d.mode)
+	if err != nil {
+		return &InputError{Err: err}
+	}
+	add("data rate of mode "+d.mode.Name, m.InformationRate.BitsPerSecond()*slack.Ratio(), "bit/s", "with the same coding, at which margin and availability are just met")
+	return nil
+}
+
+// rangeLimit is the distance at which the margin is just there.
+func (d *dishStudy) rangeLimit(add func(string, float64, string, string), v sizing.Variant, m *sizing.MarginAt) {
+	o, err := d.study.Outcome(v)
+	if err != nil {
+		return // it was evaluated before
+	}
+	over := o.MarginDB - float64(m.Margin)
+	for i := range d.links {
+		if slant, _, ok := d.flight.Sites[i].At(m.Elevation); ok {
+			add("greatest range, "+d.links[i].station.Site.Name, slant.Kilometres()*math.Pow(10, over/20), "km",
+				fmt.Sprintf("at %g deg with the margin just there and the same air, where the orbit has %.0f km", m.Elevation.Degrees(), slant.Kilometres()))
+		}
+	}
+}
