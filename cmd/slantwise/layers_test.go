@@ -35,6 +35,7 @@ var layers = []struct {
 	{"slantwise/downlink/acceptance", 7},
 	{"slantwise/downlink/recorder", 7},
 	{"slantwise/downlink/passvolume", 7},
+	{"slantwise/downlink/linkset", 7},
 	{"slantwise/downlink/tuning", 7},
 	{"slantwise/downlink/sizing", 8},
 	{"slantwise/downlink/contacts", 8},

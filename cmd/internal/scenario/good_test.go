@@ -10,6 +10,7 @@ import (
 	"slantwise/cmd/internal/scenario"
 	"slantwise/downlink"
 	"slantwise/downlink/licence"
+	"slantwise/downlink/linkset"
 	"slantwise/downlink/propagation"
 	"slantwise/downlink/rateplan"
 	"slantwise/downlink/recorder"
@@ -142,6 +143,8 @@ func TestEverything(t *testing.T) {
 		{"noise of the spacecraft", craft.Uplinks[1].Noise.AntennaTemperature.Value(0), 250.0},
 		{"G/T of the spacecraft", *craft.Uplinks[2].GOverT, unit.DB(-24.5)},
 		{"no receive antenna", craft.Uplinks[2].AntennaUnknown, true},
+		{"link set", craft.LinkSets[2], scenario.LinkSet{Name: "half duplex", Links: []string{"S-band", "command"}, Rule: linkset.Rule{Order: linkset.InTurns, Change: 0.25, Turn: 10, UpShare: 0.2}}},
+		{"load first", craft.LinkSets[1].Rule, linkset.Rule{Order: linkset.UpFirst, Change: 1, UpBytes: 2e5}},
 		{"oscillator", *x.Oscillator, downlink.Oscillator{Offset: 850, Drift: -12.0 / 86400, Epoch: time.Date(2026, 9, 10, 0, 0, 0, 0, time.UTC)}},
 		{"ppm", math.Round(craft.Transmitters[1].Oscillator.Offset.Hertz()*1e6) / 1e6, -343.75},
 		{"fitted drift", math.Round(craft.Uplinks[0].Oscillator.Drift*2*86400*1e6) / 1e6, 13.0},

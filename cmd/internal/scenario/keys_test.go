@@ -38,7 +38,7 @@ func TestEveryKeyIsRead(t *testing.T) {
 	for _, keys := range [][]string{
 		topKeys, windowKeys, earthKeys, spacecraftKeys, transmitterKeys, spinKeys, patternKeys, modeKeys, lossDissipativeKeys,
 		stationKeys, antennaKeys, noiseKeys, stageKeys, sizingKeys, requirementKeys, marginAtKeys, marginShareKeys, familyKeys,
-		uplinkKeys, transmitKeys, oscillatorKeys, measuredKeys, coherentKeys, pathKeys, climateKeys, levelKeys, lognormalKeys, lowPathKeys,
+		uplinkKeys, transmitKeys, linkSetKeys, oscillatorKeys, measuredKeys, coherentKeys, pathKeys, climateKeys, levelKeys, lognormalKeys, lowPathKeys,
 		mountKeys,
 		ratePlanKeys, licenceKeys, sectorKeys, hoursKeys, recorderKeys, recorderDataKeys, craftUncertaintyKeys, covarianceKeys, stateKeys, controlKeys, toleranceKeys, criterionKeys,
 	} {

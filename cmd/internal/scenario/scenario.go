@@ -59,6 +59,7 @@ type Spacecraft struct {
 	ValidUntil   time.Time              // after it there are no passes; zero: no end is given
 	Transmitters []downlink.Transmitter // may be empty: passes and pointing only
 	Uplinks      []downlink.Receiver    // may be empty: nothing is known of commanding
+	LinkSets     []LinkSet              // how links share a pass; may be empty
 	Recorder     *Recorder              // nil: none is given
 	RatePlan     RatePlan               // one mode a pass where none is given
 	Uncertainty  *Uncertainty           // of its position; nil: the scenario states nothing

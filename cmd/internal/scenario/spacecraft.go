@@ -9,7 +9,7 @@ import (
 	"slantwise/orbit/elements"
 )
 
-var spacecraftKeys = []string{"name", "element_set", "state", "time_offset_s", "launch_slip_s", "valid_until_utc", "transmitters", "recorder", "rate_plan", "uplinks", "position_uncertainty"}
+var spacecraftKeys = []string{"name", "element_set", "state", "time_offset_s", "launch_slip_s", "valid_until_utc", "transmitters", "recorder", "rate_plan", "uplinks", "link_sets", "position_uncertainty"}
 
 // spacecraft reads the spacecraft, or takes every object of the element files where
 // the key is left out.
@@ -27,6 +27,7 @@ func (r *reader) spacecraft(top object, s *Scenario) []Spacecraft {
 		out[i] = Spacecraft{Name: called[i], Choice: s.Choice, Transmitters: r.transmitters(o)}
 		out[i].Uplinks = r.uplinks(o, out[i].Transmitters)
 		r.checkCoherent(o, &out[i])
+		out[i].LinkSets = o.linkSets(&out[i])
 		out[i].Recorder = o.recorder()
 		out[i].RatePlan = o.ratePlan(&out[i])
 		out[i].Uncertainty = o.craftUncertainty(all)
