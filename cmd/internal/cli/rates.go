@@ -14,6 +14,7 @@ import (
 
 type ratesOptions struct {
 	spacecraft, transmitter string
+	set                     string
 	stations, only          []string
 	pass                    time.Time
 	rules                   rateRules
@@ -42,17 +43,23 @@ schedules that change at the samples of the pass, a second apart.
                   statistics of its path, and of their sum, once with the weather of
                   each pass by itself and once with one weather for all
 
+With --set the passes are divided among the links of a link set of the scenario, each
+downlink by the schedule that it would have alone: what each link gets, and what it would
+get with the pass to itself.
+
 Bytes are the user's: coding, sync markers and frame headers are taken off. With a
 range of symbol rates the codings of the transmitter's modes are sent at any of them
 that fits the allotted bandwidth. Licences are kept to.`,
 		Example: `  slantwise rates --spacecraft "Wagtail 1" --station "Skerry Point" --pass 2026-09-15T00:50:00Z
   slantwise rates --spacecraft "Wagtail 1" --most-changes 2 --show passes --format csv
-  slantwise rates --spacecraft "Wagtail 1" --station "Skerry Point" --show volumes`,
+  slantwise rates --spacecraft "Wagtail 1" --station "Skerry Point" --show volumes
+  slantwise rates --spacecraft "Wagtail 1" --station "Skerry Point" --set "commands first"`,
 		Args: noArgs,
 	}
 	fs := cmd.Flags()
 	fs.StringVar(&o.spacecraft, "spacecraft", "", "`NAME` of the spacecraft")
 	fs.StringVar(&o.transmitter, "transmitter", "", "`NAME` of the transmitter")
+	fs.StringVar(&o.set, "set", "", "divide the passes among the links of the link set of this `NAME`")
 	fs.StringArrayVar(&o.stations, "station", nil, "`NAME` of a station (again for more; left out: all)")
 	fs.StringArrayVar(&o.only, "mode", nil, "`NAME` of a mode that may be sent (again for more; left out: all)")
 	addTime(fs, &o.pass, "pass", "the pass under way then, or the next one of the window")
@@ -78,6 +85,9 @@ func runRates(env *Env, o *ratesOptions) error {
 	craft, err := pick("spacecraft", o.spacecraft, s.Spacecraft, spacecraftName)
 	if err != nil {
 		return err
+	}
+	if o.set != "" {
+		return ratesOfSet(env, o, s, craft)
 	}
 	tx, err := pick("transmitter", o.transmitter, craft.Transmitters, transmitterName)
 	if err != nil {
