@@ -228,12 +228,23 @@ func (w *work) total() {
 // count adds the bytes of a plan: each stretch between two samples at its rate, by the
 // share of the year in which the weather leaves the mode what it needs.
 func (w *work) count(t Turn, track *rateplan.Track, clear []float64, plan *rateplan.Plan, modes []rateplan.Mode) {
+	day := &w.days[min(int(track.Seconds[0]/86400), len(w.days)-1)]
+	w.sent(t, track, clear, plan, modes, func(_ int, bytes, year, month float64) {
+		*day += bytes * (1 - year)
+		w.out.ClearBytesPerDay += bytes
+		w.out.WorstMonthBytesPerDay += bytes * (1 - month)
+	})
+}
+
+// sent calls add for each stretch of a plan in which data are sent: the sample of the
+// track at its end, the bytes, and the shares of the average year and of its worst month in which
+// the weather takes them.
+func (w *work) sent(t Turn, track *rateplan.Track, clear []float64, plan *rateplan.Plan, modes []rateplan.Mode, add func(i int, bytes, year, month float64)) {
 	if len(plan.Steps) == 0 {
 		return
 	}
 	st, f := &w.study.sites[t.Site], w.fronts[t.Site]
 	relock := w.study.spec.Rates.Rules().Relock.Seconds()
-	day := &w.days[min(int(track.Seconds[0]/86400), len(w.days)-1)]
 	starts := stepStarts(track, plan)
 	step, locked, running := -1, math.Inf(-1), false
 	for i := 1; i < len(track.Seconds); i++ {
@@ -261,9 +272,7 @@ func (w *work) count(t Turn, track *rateplan.Track, clear []float64, plan *ratep
 		}
 		bytes := seconds * mode.NetRate.BitsPerSecond() / 8
 		year, month := f.under(st.air, st.place[t.From+i], slack)
-		*day += bytes * (1 - year)
-		w.out.ClearBytesPerDay += bytes
-		w.out.WorstMonthBytesPerDay += bytes * (1 - month)
+		add(i, bytes, year, month)
 	}
 }
 

@@ -214,7 +214,7 @@ func (d *dishStudy) fly(ctx context.Context, env *Env, kept *orbit.KeptOrbit) er
 		}
 		c.link = link
 		spec.Sites = append(spec.Sites, sizing.FlightSite{Site: &c.station.Site, Link: link, Keep: func(p *downlink.Profile) error {
-			_, err := keepToLicences(s, c, p)
+			_, _, err := keepToLimits(s, c, p)
 			return err
 		}})
 	}
@@ -309,6 +309,9 @@ func (d *dishStudy) tell() {
 		d.note(downlink.Assumption, "%s", text)
 	}
 	d.note(downlink.Assumption, "the Sun and the Moon in the beam, interference and outages of the station are left out")
+	if slices.ContainsFunc(d.links, func(c chosenLink) bool { return c.antenna.Mount != nil }) {
+		d.note(downlink.Assumption, "contacts leave out what the mounts cannot follow, with the rates and the beam of the scenario's own diameters")
+	}
 	for i := range d.links {
 		c := &d.links[i]
 		if len(c.sky.missing) > 0 {

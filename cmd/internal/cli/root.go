@@ -62,6 +62,7 @@ Results go to stdout, words for people to stderr. Exit codes:
 		newRecorder(env),
 		newDish(env),
 		newAcceptance(env),
+		newSites(env),
 	)
 	completeFlags(root, env)
 	refuseUnknownTopics(root)
