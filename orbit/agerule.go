@@ -87,11 +87,13 @@ func (r AgeRule) String() string {
 	return axis("along", r.Along) + ", " + axis("across", r.Across) + ", " + axis("radially", r.Radial)
 }
 
-// AgeUncertainty is an AgeRule applied to an element set. It knows a spread at every
+// AgeUncertainty is an AgeRule applied to an element set, or to another orbit of one
+// instant. It knows a spread at every
 // instant.
 type AgeUncertainty struct {
 	Rule  AgeRule
 	Epoch time.Time // of the element set
+	Of    string    // what is of that instant, in words; empty: the element set
 }
 
 // At returns the spread at t.
@@ -102,5 +104,9 @@ func (u AgeUncertainty) At(t time.Time) (Spread, error) {
 
 // Basis names the rule, its figures and the epoch.
 func (u AgeUncertainty) Basis() string {
-	return "by the age of the element set of " + u.Epoch.UTC().Format(timeLayout) + ", one standard deviation, squares added: " + u.Rule.String()
+	of := u.Of
+	if of == "" {
+		of = "the element set"
+	}
+	return "by the age of " + of + " of " + u.Epoch.UTC().Format(timeLayout) + ", one standard deviation, squares added: " + u.Rule.String()
 }

@@ -87,7 +87,7 @@ func (o object) orbitOf(c *Spacecraft, s *Scenario, middle time.Time) {
 			o.fault(at, "element_set", "it stands beside state, which gives the orbit, too", "keep one of the two")
 		}
 		if el, ok := o.state(c.Name, s.Earth); ok {
-			c.Candidates = []orbit.Elements{el}
+			c.Candidates, c.Stated = []orbit.Elements{el}, true
 		}
 	default:
 		if t, among := matchTrajectory(s.Trajectories, ref); t != nil {
@@ -225,11 +225,7 @@ func (o object) follow(c *Spacecraft, t *TrajectoryFile, among int, s *Scenario)
 		if c.Uncertainty != nil {
 			u = *c.Uncertainty
 		}
-		u.Covariances = nil
-		for _, at := range t.Covariance {
-			at.Time = at.Time.Add(c.Shift.Late + c.Shift.Slip)
-			u.Covariances = append(u.Covariances, at)
-		}
+		u.Covariances, u.Source = t.Covariance, "ephemeris"
 		c.Uncertainty = &u
 		o.assume("the position is taken as uncertain as the %d covariances of the ephemeris say", len(t.Covariance))
 	}

@@ -3,6 +3,7 @@ package scenario
 import (
 	"fmt"
 	"math"
+	"slices"
 	"time"
 
 	"slantwise/cmd/internal/scenario/tree"
@@ -23,7 +24,8 @@ var (
 // Uncertainty is how uncertain a spacecraft's position is by the scenario.
 type Uncertainty struct {
 	Rule        orbit.AgeRule
-	Covariances []orbit.CovarianceAt // in place of the rule where there are any
+	Covariances []orbit.CovarianceAt // in place of the rule where there are any; the spacecraft's shift is not in their instants
+	Source      string               // where the covariances stand
 	Probability float64              // of the pointing loss; 0: the mean
 }
 
@@ -53,15 +55,27 @@ func (s *Scenario) AssumedUncertainty(c *Spacecraft, from, to time.Time) (u orbi
 
 func (s *Scenario) uncertaintyOver(c *Spacecraft, stated *Uncertainty, from, to time.Time) (orbit.Uncertainty, error) {
 	el := s.ElementsOver(c, from, to).Elements
+	shift := c.Shift.Late + c.Shift.Slip
 	if len(stated.Covariances) == 0 {
-		return orbit.AgeUncertainty{Rule: stated.Rule, Epoch: el.Epoch}, nil
+		u := orbit.AgeUncertainty{Rule: stated.Rule, Epoch: el.Epoch}
+		switch {
+		case c.Trajectory != nil: // the mean elements stand somewhere in it
+			u.Epoch, u.Of = c.Trajectory.Spans()[0].From.Add(shift), "the ephemeris, counted from its beginning,"
+		case c.Stated:
+			u.Of = "the state"
+		}
+		return u, nil
+	}
+	points := slices.Clone(stated.Covariances)
+	for i := range points {
+		points[i].Time = points[i].Time.Add(shift)
 	}
 	f, err := el.Facts()
 	if err != nil {
 		return nil, err
 	}
 	motion := 2 * math.Pi / f.Period.Seconds()
-	u, err := orbit.NewCovarianceUncertainty(stated.Covariances, motion, el.Eccentricity, from, to, "scenario")
+	u, err := orbit.NewCovarianceUncertainty(points, motion, el.Eccentricity, from, to, stated.Source)
 	if err != nil {
 		return nil, fmt.Errorf("spacecraft %s: %w", c.Name, err)
 	}
@@ -94,7 +108,7 @@ func (o object) craftUncertainty(all *Uncertainty) *Uncertainty {
 	if g.has("covariances") {
 		g.useless("beside covariances, which tell it", uncertaintyKeys[:len(uncertaintyKeys)-1]...)
 		g.probability(&u)
-		u.Covariances = g.covariances()
+		u.Covariances, u.Source = g.covariances(), "scenario"
 		return &u
 	}
 	if all == nil {
