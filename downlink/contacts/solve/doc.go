@@ -10,6 +10,11 @@
 // Mathematical Programming Study 2, 1974, from memory); subgradient steps look for the
 // prices that give the least (B. T. Polyak 1969, from memory).
 //
+// A problem of at most some hundred windows is then divided: a contact covers an instant
+// or not, a window is used or not, until the bound of each part is no better than the
+// best plan (branch and bound). What the prices leave out is then decided, too, so that
+// the optimum is proven for small problems with every rule.
+//
 // The bound holds for contacts at any instant, not only at whole steps, as long as times
 // of the problem are multiples of the grid on which chains are solved; where a finer
 // grid would be too large, every rounding is in favour of the bound. Rules that

@@ -83,7 +83,7 @@ func TestAgainstEveryPlan(t *testing.T) {
 				t.Fatalf("seed %d: %v", seed, err)
 			}
 			best, plan, ok := exhaustive(p)
-			r, err := Solve(context.Background(), p, Options{Rounds: 12, Workers: 1})
+			r, err := Solve(context.Background(), p, Options{Rounds: 40, Workers: 1})
 			if !ok {
 				if err == nil {
 					t.Errorf("seed %d, plain %v: solved, and no plan keeps the rules", seed, plain)

@@ -74,7 +74,7 @@ func (s *search) fillSlots(windows []int, in contacts.Span, craft bool, cell, fi
 				continue
 			}
 			at := len(s.gains)
-			s.gains = s.pointGains(s.gains, i, from, int(to-from), cell)
+			s.gains = s.d.cumulative(w, i, s.guide, from, int(to-from), cell, s.gains)
 			x.begin = s.gains[at:len(s.gains):len(s.gains)]
 			x.end = x.begin
 			last = max(last, x.to+x.tearDown)
@@ -82,30 +82,6 @@ func (s *search) fillSlots(windows []int, in contacts.Span, craft bool, cell, fi
 		}
 	}
 	return last
-}
-
-// pointGains appends the gain from cell from of a window to it and the n cells after.
-func (s *search) pointGains(out []float64, i int, from ms, n int, cell ms) []float64 {
-	w := &s.b.m.windows[i]
-	out = append(out, 0)
-	sum, at, next, done := 0.0, from*cell, (from+1)*cell, 0
-	for x := w.first; x < w.end && done < n; x++ {
-		q := &s.d.pieces[x]
-		if q.to <= at {
-			continue
-		}
-		slope, _ := s.d.slope(q, s.d.perMs[i], s.guide)
-		for at < q.to && done < n {
-			to := min(next, q.to)
-			sum += slope * float64(to-at)
-			if at = to; at == next {
-				out = append(out, sum)
-				next += cell
-				done++
-			}
-		}
-	}
-	return out
 }
 
 // sortSlots orders slots by their begin, with the windows that they stand for.

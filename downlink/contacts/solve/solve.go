@@ -99,7 +99,8 @@ type run struct {
 	ascent *ascent
 	grids  []*grid // from coarse to fine
 	level  int
-	done   int // rounds
+	tree   *tree // once the problem is being divided; nil before, and where it is too large
+	done   int   // rounds
 	first  float64
 	stop   Stop
 }
@@ -147,6 +148,10 @@ func (d *dual) grids() []*grid {
 const (
 	movesARound = 150
 	stepsARound = 8
+	nodesARound = 30
+
+	roundsBefore = 8   // before a problem is divided
+	treeWindows  = 400 // most windows of a problem that is
 )
 
 func (r *run) rounds() {
@@ -163,7 +168,7 @@ func (r *run) rounds() {
 
 // ended tells whether the search is over, and why.
 func (r *run) ended() bool {
-	value, bound := r.search.bestValue, r.ascent.bound
+	value, bound := r.search.bestValue, r.bound()
 	switch {
 	case bound-value <= tolerance*math.Abs(value):
 		r.stop = Proven
@@ -189,7 +194,7 @@ func (r *run) round() {
 	work := func() {
 		defer close(bound)
 		for range stepsARound {
-			if stop() {
+			if stop() || r.tree != nil && !r.tree.full {
 				return
 			}
 			if r.ascent.step(value, max(1, r.o.Workers-1)) && r.level+1 < len(r.grids) {
@@ -205,15 +210,30 @@ func (r *run) round() {
 	}
 	r.search.run(min(movesARound, 10*len(r.m.windows)), stop)
 	<-bound
+	if r.tree != nil {
+		r.tree.run(r.search, nodesARound, stop)
+		return
+	}
+	if r.done+1 >= roundsBefore && len(r.m.windows) <= treeWindows {
+		r.tree = newTree(r.d, r.ascent.best, r.ascent.bound)
+	}
 	r.search.prices = slices.Clone(r.ascent.best)
 	if k := r.done; k&(k-1) == 0 || k%16 == 0 {
 		r.search.adopt(r.ascent.last.chosen)
 	}
 }
 
+// bound returns the least that is proven.
+func (r *run) bound() float64 {
+	if r.tree == nil {
+		return r.ascent.bound
+	}
+	return min(r.ascent.bound, max(r.tree.bound(), r.search.bestValue))
+}
+
 func (r *run) tell() {
 	if r.o.Progress != nil {
-		r.o.Progress(Progress{r.done, r.search.bestValue, r.ascent.bound, gapPercent(r.search.bestValue, r.ascent.bound)})
+		r.o.Progress(Progress{r.done, r.search.bestValue, r.bound(), gapPercent(r.search.bestValue, r.bound())})
 	}
 }
 
@@ -242,7 +262,7 @@ func (r *run) result() (Result, error) {
 		return Result{}, fmt.Errorf("the plan found breaks rules, which is a fault of the solver: %w", err)
 	}
 	w := verify.Worth(p, plan)
-	bound := max(r.ascent.bound, w.Value)
+	bound := max(r.bound(), w.Value)
 	return Result{
 		Plan: plan, Worth: w, Value: w.Value, Bound: bound, GapPercent: gapPercent(w.Value, bound), Proven: r.stop == Proven,
 		Stop: r.stop, Rounds: r.done, First: r.first, Left: r.m.unpriced(),
