@@ -241,3 +241,28 @@ func TestImpossibleSensitivity(t *testing.T) {
 		}
 	}
 }
+
+// BenchmarkBothDirections is a downlink along a quarter of an hour at 1 s, and the same
+// with an uplink beside it: at most twice the time.
+func BenchmarkBothDirections(b *testing.B) {
+	down, up := mustLink(b, wagtail(b)), mustLink(b, command(b))
+	fly := func(b *testing.B, links ...*Link) {
+		b.ReportAllocs()
+		for b.Loop() {
+			for _, l := range links {
+				s := l.newScratch()
+				for i := range 900 {
+					x := float64(i)/450 - 1
+					s.geometry = Geometry{Elevation: deg(60 - 55*math.Abs(x)), Range: unit.Length(6e5 + 1.5e6*math.Abs(x)), OffBoresight: deg(20 + 45*math.Abs(x))}
+					if err := l.evaluate(s); err != nil {
+						b.Fatal(err)
+					}
+					sink += s.result.margin
+				}
+			}
+		}
+	}
+	b.Run("down", func(b *testing.B) { fly(b, down) })
+	b.Run("up", func(b *testing.B) { fly(b, up) })
+	b.Run("both", func(b *testing.B) { fly(b, down, up) })
+}

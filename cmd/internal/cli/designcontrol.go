@@ -1,6 +1,7 @@
 package cli
 
 import (
+	"slices"
 	"time"
 
 	"github.com/spf13/cobra"
@@ -90,7 +91,7 @@ func runDesignControl(env *Env, o *controlOptions) error {
 
 // designControl works the table of a budget out.
 func designControl(s *scenario.Scenario, c *chosenLink, b *downlink.Budget) (*tolerance.Table, error) {
-	items, err := tolerance.FromBudget(b, c.transmitter.ImplementationLoss, s.Control.Spreads)
+	items, err := tolerance.FromBudget(b, c.transmitter.ImplementationLoss, spreadsOf(s, c))
 	if err != nil {
 		return nil, err
 	}
@@ -130,6 +131,31 @@ func controlSheet(t *tolerance.Table, notes []downlink.Note) *sheet {
 	}
 	for _, n := range notes {
 		out.notes = append(out.notes, n.Kind.String()+": "+n.Text)
+	}
+	return out
+}
+
+// termsOfOneDirection are those that a budget of the other direction never has.
+var termsOfOneDirection = map[downlink.Direction][]string{
+	downlink.Down: {"EIRP", "transmit antenna gain", "feed loss"},
+	downlink.Up:   {"transmit line loss", "receive antenna gain"},
+}
+
+// spreadsOf are the scenario's tolerances without those of terms that only the other
+// direction has: of a spacecraft with uplinks one list serves both.
+func spreadsOf(s *scenario.Scenario, c *chosenLink) []tolerance.Spread {
+	if len(c.spacecraft.Uplinks) == 0 {
+		return s.Control.Spreads
+	}
+	other := termsOfOneDirection[downlink.Up]
+	if c.uplink != nil {
+		other = termsOfOneDirection[downlink.Down]
+	}
+	var out []tolerance.Spread
+	for _, x := range s.Control.Spreads {
+		if !slices.Contains(other, x.Term) || slices.ContainsFunc(c.link.Terms(), func(t downlink.TermInfo) bool { return t.Name == x.Term }) {
+			out = append(out, x)
+		}
 	}
 	return out
 }

@@ -65,6 +65,7 @@ func runLicence(env *Env, o *licenceOptions) error {
 		for t := range craft[i].Transmitters {
 			addBreaches(out, s, &craft[i], &craft[i].Transmitters[t])
 		}
+		addUplinkBreaches(out, s, &craft[i], stations)
 		for k := range stations {
 			if err := addBindings(out, s, &craft[i], &stations[k]); err != nil {
 				return err
@@ -235,7 +236,7 @@ func greatestEIRP(t *downlink.Transmitter) *unit.Level {
 
 // addBindings lists what licences take from the passes of a spacecraft over a station.
 func addBindings(out *sheet, s *scenario.Scenario, c *scenario.Spacecraft, st *scenario.Station) error {
-	if len(s.Licences) == 0 || len(c.Transmitters) == 0 {
+	if len(s.Licences) == 0 || len(c.Transmitters)+len(c.Uplinks) == 0 {
 		return nil
 	}
 	eph, found, err := passesOver(s, c, st)
@@ -244,9 +245,9 @@ func addBindings(out *sheet, s *scenario.Scenario, c *scenario.Spacecraft, st *s
 	}
 	for i := range found {
 		p := &found[i]
-		for t := range c.Transmitters {
-			name := c.Transmitters[t].Name
-			kept, err := licence.Keep(licencesFor(s, c.Name, name), st.Site.Name, passCourse(eph, st, p), licence.Downlink)
+		for _, end := range endsOver(c, st) {
+			name := end.name
+			kept, err := licence.Keep(licencesFor(s, c.Name, name), st.Site.Name, passCourse(eph, st, p), end.use)
 			if err != nil {
 				return err
 			}

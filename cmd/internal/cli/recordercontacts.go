@@ -1,6 +1,8 @@
 package cli
 
 import (
+	"fmt"
+
 	"slantwise/cmd/internal/scenario"
 	"slantwise/downlink"
 	"slantwise/downlink/licence"
@@ -32,10 +34,18 @@ func recorderContacts(s *scenario.Scenario, c *scenario.Spacecraft, tx *downlink
 		return nil, nil, err
 	}
 	var all []recorder.Contact
+	commands := newCommandLinks(s, c)
 	for i := range flights {
-		one, err := recorderContact(s, c, tx, &flights[i], plans[i])
+		f := &flights[i]
+		one, err := recorderContact(s, c, tx, f, plans[i])
 		if err != nil {
 			return nil, nil, err
+		}
+		if works, known, err := commands.works(s, f); err != nil {
+			return nil, nil, err
+		} else if one.Uplink && known && !works {
+			one.Uplink = false
+			notes = append(notes, fmt.Sprintf("pass over %s at %s: no uplink of the scenario closes in it, so that nothing is acknowledged", f.station.Site.Name, utc(f.pass.AOS)))
 		}
 		all = append(all, *one)
 	}

@@ -217,3 +217,39 @@ func TestReportHoldsUplinks(t *testing.T) {
 		t.Errorf("a station that cannot send commands: %v", err)
 	}
 }
+
+// TestLicenceOfAnUplink: the station's EIRP is over the licence's, and passes lose the
+// time under 12 deg of elevation to it.
+func TestLicenceOfAnUplink(t *testing.T) {
+	inUplinkScenario(t)
+	code, out, errOut := invoke(t, "licence", "--station", "Test Hill", "--format", "csv")
+	if code != ExitAnswer {
+		t.Fatalf("code %d: %s", code, errOut)
+	}
+	for _, want := range []string{"breach,command,EIRP at most 30 dBW,Probe A,command,Test Hill", "binds,command,least elevation to radiate 12 deg,Probe A,command,Test Hill"} {
+		if !strings.Contains(out, want) {
+			t.Errorf("no row %s in\n%s", want, out)
+		}
+	}
+}
+
+// TestNothingIsAcknowledgedWithoutUplink: with a deaf receiver the station's uplink: true
+// is of no use, and recorder says so.
+func TestNothingIsAcknowledgedWithoutUplink(t *testing.T) {
+	inUplinkScenario(t)
+	text, err := os.ReadFile("slantwise.yaml")
+	if err != nil {
+		t.Fatal(err)
+	}
+	const said = "no uplink of the scenario closes in it"
+	// One of the six passes stays under the 12 deg that the licence asks for.
+	for dbm, want := range map[string]int{"-130": 1, "-20": 6} {
+		if err := os.WriteFile("slantwise.yaml", []byte(strings.Replace(string(text), "sensitivity_dbm: -105", "sensitivity_dbm: "+dbm, 1)), 0o644); err != nil {
+			t.Fatal(err)
+		}
+		code, out, errOut := invoke(t, "recorder", "--station", "Test Hill", "--transmitter", "X-band")
+		if code != ExitAnswer || strings.Count(out+errOut, said) != want {
+			t.Errorf("%s dBm: code %d, %d passes, want %d", dbm, code, strings.Count(out+errOut, said), want)
+		}
+	}
+}
