@@ -79,7 +79,7 @@ func radioLaterColumns(p *Pass) []column {
 	if r.Plan != nil {
 		list = append(list, planColumns(r.Plan)...)
 	}
-	return append(list, suretyColumns(p)...)
+	return append(append(list, suretyColumns(p)...), mountColumns(p)...)
 }
 
 // ofLength keeps the columns that have a value for each sample.

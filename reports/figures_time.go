@@ -24,6 +24,7 @@ func timeFigures(p *Pass, fr *frame) []timeFigure {
 		if finite(p.Profile.Volume.AchievableBytes) {
 			list = append(list, volumeFigure(p))
 		}
+		list = append(list, mountFigures(p, fr)...)
 	}
 	list = append(list, uplinkFigures(p, fr)...)
 	kept := list[:0]

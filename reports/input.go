@@ -97,6 +97,8 @@ type Radio struct {
 	PathTotalDB           []float64 // the sum of PathParts, what is given back taken off
 
 	Plan *Plan // which mode is sent when; nil: none was made
+
+	Mount *Mount // nil: nothing is said of the antenna's mount
 }
 
 // PathInfo says what the numbers of the path are.

@@ -69,6 +69,7 @@ type radioJSON struct {
 	ClearSky         *clearJSON     `json:"clear_sky"` // null where there is no other sky to compare with
 	Plan             *planJSON      `json:"plan"`      // null where none was made
 	Sights           []sightJSON    `json:"sights"`    // how the antenna sees the station; empty where its attitude tells no direction
+	Mount            *mountJSON     `json:"mount,omitempty"`
 }
 
 type modeJSON struct {
@@ -137,7 +138,7 @@ func radioHead(p *Pass) *radioJSON {
 		Budgets:         []budgetJSON{},
 		Path:            pathOf(&r.Path),
 		SunInBeam:       intervals(f.SunInBeam), MoonInBeam: intervals(f.MoonInBeam),
-		ClearSky: clearOf(r), Plan: planOf(r.Plan),
+		ClearSky: clearOf(r), Plan: planOf(r.Plan), Mount: mountOf(r.Mount),
 	}
 	for _, m := range r.Modes {
 		h.Modes = append(h.Modes, modeJSON{m.Name, number{m.Rate.BitsPerSecond(), 0}, number{m.Closed.Seconds(), 3},

@@ -46,6 +46,7 @@ type linkView struct {
 	ModeRate                                        string
 	Sky                                             skyView
 	Plan                                            *planView
+	Mount                                           *mountView
 }
 
 // modeView is a line of the table of modes.
@@ -164,6 +165,7 @@ func newLinkView(p *Pass) *linkView {
 		AchievableVolume: withUnit(f.Volume.AchievableBytes, byteScales),
 		Sky:              newSkyView(p),
 		Plan:             newPlanView(p),
+		Mount:            newMountView(p),
 	}
 	if s := greatestOf(f.ReceivedPowerDBm); finite(s) {
 		l.Strongest = fixed(s, 1)

@@ -53,6 +53,7 @@ func (p *reportPlan) load(ctx context.Context, i int) (*reports.Pass, error) {
 	if out.Radio, err = reportRadio(p.scenario, craft, page, best); err != nil {
 		return nil, fmt.Errorf("%s over %s: %w", craft.Name, site.Site.Name, err)
 	}
+	out.Radio.Mount = reportMount(best.mount, best.profile)
 	if err := p.addRates(out, craft, page, best); err != nil {
 		return nil, fmt.Errorf("%s over %s: %w", craft.Name, site.Site.Name, err)
 	}
