@@ -54,6 +54,26 @@ func BenchmarkProfileWeek(b *testing.B) {
 		}
 		perSample(b, samples)
 	})
+	// The same with the body's axes worked out: yaw steering and a pattern in two angles.
+	spec.Transmitter.Attitude, spec.Transmitter.Pattern = AttitudeYawSteering, Pattern{Kind: GainGrid, Grid: bowl(b)}
+	spec.Bodies = NewBodies(start, end, orbit.EarthOrientation{})
+	held := mustLink(b, spec)
+	b.Run("body", func(b *testing.B) {
+		b.ReportAllocs()
+		samples := 0
+		for b.Loop() {
+			samples = 0
+			for i := range passes {
+				p, err := held.Profile(eph, passes[i].AOS, passes[i].LOS, time.Second)
+				if err != nil {
+					b.Fatal(err)
+				}
+				sink += p.Volume.ModeBytes
+				samples += len(p.Seconds)
+			}
+		}
+		perSample(b, samples)
+	})
 	b.Run("reference", func(b *testing.B) {
 		samples := 0
 		for b.Loop() {

@@ -57,6 +57,8 @@ func TestUnderstood(t *testing.T) {
 		`station Fellside: latitude_deg "54 30 36.0 S" understood as -54.51 deg`,
 		`station Fellside: longitude_deg "3°15'W" understood as -3.25 deg`,
 		`station Sluice: locator JO22ab understood as 52.06250 deg north, 4.04167 deg east, the middle of a rectangle of 5.7 by 4.63 km: the station may be up to 3.67 km away`,
+		// By erfa 2.0.0.1, pn06a and the equation of the equinoxes: 40.32554, -9.88415; the pole here is within 0.1 arcseconds.
+		`the spin axis of J2000 understood as right ascension 40.3256 deg and declination -9.8842 deg of date`,
 		`boresight_body [0, 3, 4] understood as 36.8699 deg off body z, 90 deg around it from x toward y`,
 	} {
 		if !strings.Contains(told, want) {

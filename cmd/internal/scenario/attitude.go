@@ -10,7 +10,7 @@ import (
 	"slantwise/orbit/unit"
 )
 
-var spinKeys = []string{"axis_right_ascension_deg", "axis_declination_deg", "counts_as"}
+var spinKeys = []string{"axis_right_ascension_deg", "axis_declination_deg", "axis_frame", "counts_as"}
 
 // attitudes are the words of the key, the first for one that is left out.
 var attitudes = map[string]downlink.Attitude{
@@ -64,16 +64,34 @@ func (o object) spin(t *downlink.Transmitter) {
 		return
 	}
 	c := o.child("spin", spinKeys)
-	ra := c.required("axis_right_ascension_deg", span{low: -180, high: 360, unit: "deg"}, "the right ascension of the spin axis, true equator and mean equinox of date")
+	ra := c.required("axis_right_ascension_deg", span{low: -180, high: 360, unit: "deg"}, "the right ascension of the spin axis")
 	dec := c.required("axis_declination_deg", span{low: -90, high: 90, unit: "deg"}, "the declination of the spin axis")
 	sinR, cosR := math.Sincos(ra * unit.Degree.Radians())
 	sinD, cosD := math.Sincos(dec * unit.Degree.Radians())
 	t.Body.SpinAxis = orbit.Vec3{X: cosD * cosR, Y: cosD * sinR, Z: sinD}
+	c.turnSpinAxis(t)
 	word, _ := c.word("counts_as", "exceeded", "mean", "worst")
 	t.Body.SpinGain = map[string]downlink.SpinGain{"exceeded": downlink.SpinExceeded, "mean": downlink.SpinMean, "worst": downlink.SpinWorst}[word]
 	if c.node != nil && !c.has("counts_as") {
 		c.assume("counts_as left out: a spin counts as the gain reached or exceeded with attitude_probability over a turn")
 	}
+}
+
+// turnSpinAxis brings the axis from the frame that it is given in to that of the window's
+// middle; precession moves it by 0.014 degrees a year.
+func (o object) turnSpinAxis(t *downlink.Transmitter) {
+	frame, _ := o.word("axis_frame", "of_date", "j2000")
+	if o.node != nil && !o.has("axis_frame") {
+		o.assume("axis_frame left out: the spin axis is given for the true equator and mean equinox of date")
+	}
+	turner, err := orbit.NewTurner(o.r.earthTurn)
+	if err != nil || frame != "j2000" || o.r.span.Start.IsZero() { // the Earth's own fault is told already
+		return
+	}
+	middle := o.r.span.Start.Add(o.r.span.Length() / 2)
+	axis, _ := turner.Between(orbit.J2000, orbit.TEME, t.Body.SpinAxis, orbit.Vec3{}, middle)
+	t.Body.SpinAxis = axis.Unit()
+	o.assume("the spin axis of J2000 understood as right ascension %.4f deg and declination %.4f deg of date", math.Atan2(axis.Y, axis.X)*180/math.Pi, math.Asin(axis.Unit().Z)*180/math.Pi)
 }
 
 // history reads the attitude history of a spacecraft.
