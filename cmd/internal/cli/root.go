@@ -63,6 +63,7 @@ Results go to stdout, words for people to stderr. Exit codes:
 		newDish(env),
 		newAcceptance(env),
 		newSites(env),
+		newFollow(env),
 	)
 	completeFlags(root, env)
 	refuseUnknownTopics(root)
