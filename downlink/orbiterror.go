@@ -150,7 +150,11 @@ func (l *Link) unsure(p *Profile) []Interval {
 // Earth's centre over its first day, less the site's own.
 func (l *Link) LeastHeight(track Track) unit.Length {
 	least := math.Inf(1)
+	gapped, _ := track.(interface{ Covers(s float64) bool })
 	for s := 0.0; s <= min(track.Span(), 86400); s += 30 {
+		if gapped != nil && !gapped.Covers(s) {
+			continue
+		}
 		p := track.StateAt(s).Position
 		least = min(least, p.Norm())
 	}

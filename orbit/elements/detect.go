@@ -104,6 +104,7 @@ func refusal(kind textKind, text string) Fault {
 	switch kind {
 	case kindOEM:
 		f.Problem = "an orbit ephemeris message (OEM) is valid, but not supported here"
+		f.Next = "name it under element_files of a scenario, which flies it; elements fit makes an element set of it"
 		f.Unsupported = true
 	case kindOtherMessage:
 		f.Problem = "this CCSDS message holds no SGP4 elements; it is not supported here"
