@@ -2,8 +2,10 @@ package reports
 
 import (
 	"bytes"
+	"encoding/json"
 	"fmt"
 	"html/template"
+	"math"
 
 	"github.com/go-echarts/go-echarts/v2/charts"
 	"github.com/go-echarts/go-echarts/v2/opts"
@@ -33,6 +35,13 @@ type CurveChart struct {
 	Title, Caption string
 	Quantity, Unit string
 	Curves         []Curve
+	Mark           *Mark // nil: none
+}
+
+// Mark is a place on the axis that stands out as an upright line.
+type Mark struct {
+	Name string
+	At   float64
 }
 
 // Curve is one line: a value at each point of the axis, NaN for a gap.
@@ -98,8 +107,27 @@ func (c *Curves) draw(one *CurveChart) drawing {
 		s := series{name: k.Name, dash: look.dash, symbol: look.symbol, values: k.Values, divisor: 1, decimals: 3}
 		line.MultiSeries = append(line.MultiSeries, lineSeries(s, points(c.X.Values, s, all)))
 	}
+	if m := one.Mark; m != nil {
+		line.MultiSeries = append(line.MultiSeries, lineSeries(series{name: m.Name, dash: solid, symbol: "diamond"}, upright(one, m.At)))
+		line.Legend.Show = opts.Bool(true)
+	}
 	line.Validate()
 	return drawing{ID: one.ID, Kind: "curve", Many: len(one.Curves) > len(fewDashes), Option: plain(line.JSON())}
+}
+
+// upright is a line from the least to the greatest value of a chart.
+func upright(one *CurveChart, at float64) json.RawMessage {
+	low, high := math.NaN(), math.NaN()
+	for _, k := range one.Curves {
+		if v := leastOf(k.Values); !(v >= low) {
+			low = v
+		}
+		if v := greatestOf(k.Values); !(v <= high) {
+			high = v
+		}
+	}
+	ends := series{values: []float64{low, high}, divisor: 1, decimals: 3}
+	return points([]float64{at, at}, ends, []int{0, 1})
 }
 
 // table writes the numbers of a chart, a row a point.

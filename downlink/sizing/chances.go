@@ -38,12 +38,24 @@ func (s *Study) Chance(of *tolerance.Chance, d unit.Length, r Range) (*Chance, e
 		out.Probability = math.NaN()
 	}
 	r.Steps = 12
+	if half := d / 2; half > r.Low && out.Probability >= assured[0] { // no dish that is so much worse meets all that often
+		worse, err := s.Meets(needs, Variant{Diameter: half, Power: unit.DB(of.Reached(assured[0]))})
+		if err != nil {
+			return nil, err
+		}
+		if !worse {
+			r.Low = half
+		}
+	}
 	for _, p := range assured {
 		f, err := s.LeastOf(needs, r, Variant{Power: unit.DB(math.Round(of.Reached(p)*1e4) / 1e4)})
 		if err != nil {
 			return nil, err
 		}
 		out.Assured = append(out.Assured, Assurance{p, f.Diameter})
+		if f.Diameter > 0 && f.Diameter < 0.99*r.High {
+			r.Low = f.Diameter // more probability never takes less
+		}
 	}
 	return out, nil
 }

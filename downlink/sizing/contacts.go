@@ -2,6 +2,7 @@ package sizing
 
 import (
 	"cmp"
+	"math"
 	"slices"
 )
 
@@ -39,6 +40,39 @@ func (f *Flight) Turns(sites []int) []Turn {
 		out = append(out, t)
 	}
 	return out
+}
+
+// sampled returns one of so many turns, spread over the year by the golden section so
+// that no rhythm of the passes catches it, and by site how many times the seconds of
+// those stand for all. All turns for 0 and 1.
+func (s *Study) sampled(oneOf int) (turns []Turn, weight []float64) {
+	weight = make([]float64, len(s.sites))
+	if oneOf <= 1 {
+		for i := range weight {
+			weight[i] = 1
+		}
+		return s.turns, weight
+	}
+	const golden = 0.6180339887498949
+	all, some := make([]float64, len(s.sites)), make([]float64, len(s.sites))
+	seen := make([]int, len(s.sites))
+	for _, t := range s.turns {
+		y := &s.spec.Flight.Sites[t.Site]
+		_, to := y.Samples(t.Pass)
+		seconds := y.Seconds[to-1] - y.Seconds[t.From]
+		all[t.Site] += seconds
+		if _, part := math.Modf(float64(seen[t.Site]) * golden); part*float64(oneOf) < 1 {
+			some[t.Site] += seconds
+			turns = append(turns, t)
+		}
+		seen[t.Site]++
+	}
+	for i := range weight {
+		if some[i] > 0 {
+			weight[i] = all[i] / some[i]
+		}
+	}
+	return turns, weight
 }
 
 // allSites lists the flight's sites.

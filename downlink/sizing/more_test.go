@@ -132,7 +132,7 @@ func TestPlane(t *testing.T) {
 		if err != nil {
 			t.Fatal(err)
 		}
-		if p.Planned < 2 || !(p.Error < 0.02) {
+		if p.Planned < 2 || !(p.Error < 0.03) {
 			t.Errorf("%s: every %d. pass, off by %.4f", axis, p.Planned, p.Error)
 		}
 		before := 0.0

@@ -129,13 +129,7 @@ func (w *work) levels(site, from, to int, planned, clear []float64) {
 func (w *work) bytes() error {
 	s := w.study
 	w.days = make([]float64, int(math.Ceil(s.spec.Flight.Days)))
-	turns := s.turns
-	if w.variant.thin > 1 {
-		turns = nil
-		for k := 0; k < len(s.turns); k += w.variant.thin {
-			turns = append(turns, s.turns[k])
-		}
-	}
+	turns, weight := s.sampled(w.variant.thin)
 	tracks := make([]rateplan.Track, len(turns))
 	clear := make([][]float64, len(turns))
 	for k, t := range turns {
@@ -152,7 +146,7 @@ func (w *work) bytes() error {
 		if err != nil {
 			return err
 		}
-		w.count(turns[k], &tracks[k], clear[k], &plan, modes)
+		w.count(turns[k], &tracks[k], clear[k], &plan, modes, weight[turns[k].Site])
 		if s.spec.Latency != nil && !math.IsNaN(s.spec.Needs.Latency) {
 			w.contacts = append(w.contacts, contactOf(&s.spec, turns[k], &tracks[k], &plan))
 		}
@@ -214,9 +208,7 @@ func (w *work) total() {
 		}
 	}
 	days := w.study.spec.Flight.Days
-	if n := w.variant.thin; n > 1 { // so many times what the passes that were planned bring
-		planned := (len(w.study.turns) + n - 1) / n
-		days *= float64(planned) / float64(len(w.study.turns))
+	if w.variant.thin > 1 {
 		worst = math.NaN()
 	}
 	w.out.BytesPerDay = sum / days
@@ -226,10 +218,12 @@ func (w *work) total() {
 }
 
 // count adds the bytes of a plan: each stretch between two samples at its rate, by the
-// share of the year in which the weather leaves the mode what it needs.
-func (w *work) count(t Turn, track *rateplan.Track, clear []float64, plan *rateplan.Plan, modes []rateplan.Mode) {
+// share of the year in which the weather leaves the mode what it needs, as many times as
+// the pass stands for.
+func (w *work) count(t Turn, track *rateplan.Track, clear []float64, plan *rateplan.Plan, modes []rateplan.Mode, weight float64) {
 	day := &w.days[min(int(track.Seconds[0]/86400), len(w.days)-1)]
 	w.sent(t, track, clear, plan, modes, func(_ int, bytes, year, month float64) {
+		bytes *= weight
 		*day += bytes * (1 - year)
 		w.out.ClearBytesPerDay += bytes
 		w.out.WorstMonthBytesPerDay += bytes * (1 - month)

@@ -76,11 +76,11 @@ func (s *Study) Plane(axis Axis, r Range, refit Refit, progress func(done, total
 			return nil, err
 		}
 		v.thin = p.Planned
-		bytes, over, err := of.row(p.Diameters, list, v)
+		bytes, over, just, err := of.row(p.Diameters, list, v)
 		if err != nil {
 			return nil, fmt.Errorf("%s %g: %w", axis, value, err)
 		}
-		p.Bytes, p.Over, p.Just = append(p.Bytes, bytes), append(p.Over, over), append(p.Just, crossing(p.Diameters, over))
+		p.Bytes, p.Over, p.Just = append(p.Bytes, bytes), append(p.Over, over), append(p.Just, just)
 		if progress != nil {
 			progress(k+1, len(p.Values))
 		}
@@ -108,29 +108,59 @@ func (s *Study) alongAxis(axis Axis, value float64, refit Refit) (*Study, Varian
 	return of, Variant{}, err
 }
 
-// row evaluates the diameters of one value.
-func (s *Study) row(diameters []unit.Length, needs []Need, v Variant) (bytes, over []float64, err error) {
+// row evaluates the diameters of one value, and where all needs are just met.
+func (s *Study) row(diameters []unit.Length, needs []Need, v Variant) (bytes, over []float64, just float64, err error) {
 	q := search{study: s, needs: needs, parts: planned}
 	for _, n := range needs {
 		q.parts |= n.part
 	}
+	each := make([][]float64, len(needs))
 	for _, d := range diameters {
 		v.Diameter = d
 		o, err := s.outcome(v, q.parts)
 		if err != nil {
-			return nil, nil, err
+			return nil, nil, 0, err
 		}
 		worst := math.NaN()
 		if len(needs) > 0 {
 			worst = q.worst(o)
 		}
 		bytes, over = append(bytes, o.BytesPerDay), append(over, worst)
+		for i := range needs {
+			each[i] = append(each[i], needs[i].Over(o))
+		}
 	}
-	return bytes, over, nil
+	if len(needs) == 0 {
+		return bytes, over, math.NaN(), nil
+	}
+	return bytes, over, together(diameters, over, each), nil
+}
+
+// together is where a row comes to meet all: the last of the needs' own crossings, each
+// straight between two diameters. Where needs are not met together there, as one has
+// failed again, the crossing of the worst.
+func together(diameters []unit.Length, worst []float64, each [][]float64) float64 {
+	last := 0.0
+	for _, over := range each {
+		c := crossing(diameters, over)
+		if math.IsNaN(c) {
+			return c
+		}
+		last = max(last, c)
+	}
+	for i, d := range diameters {
+		if d.Metres() >= last*(1-1e-12) {
+			if worst[i] >= 0 {
+				return last
+			}
+			break
+		}
+	}
+	return crossing(diameters, worst)
 }
 
 // crossing returns the first diameter at which a row comes to 0 from below, straight in
-// the logarithm of the diameter; the first one where it is met from there on.
+// the logarithm of the diameter; the first of all where it is over 0 there already.
 func crossing(diameters []unit.Length, over []float64) float64 {
 	if over[0] >= 0 {
 		return diameters[0].Metres()
@@ -166,4 +196,18 @@ func (s *Study) thinError(p *Plane, r Range) error {
 		}
 	}
 	return nil
+}
+
+// Level returns, by value, the diameter in m at which so many bytes a day are reached,
+// straight between those tried; NaN where none reaches them.
+func (p *Plane) Level(bytes float64) []float64 {
+	out := make([]float64, len(p.Values))
+	for k := range p.Values {
+		over := make([]float64, len(p.Diameters))
+		for i, b := range p.Bytes[k] {
+			over[i] = b - bytes
+		}
+		out[k] = crossing(p.Diameters, over)
+	}
+	return out
 }

@@ -7,8 +7,8 @@ import (
 	"slantwise/orbit/unit"
 )
 
-// meets tells whether a variant meets some needs.
-func (s *Study) meets(needs []Need, v Variant) (bool, error) {
+// Meets tells whether a variant meets some needs.
+func (s *Study) Meets(needs []Need, v Variant) (bool, error) {
 	q := search{study: s, needs: needs}
 	for _, n := range needs {
 		q.parts |= n.part
@@ -29,14 +29,14 @@ func (s *Study) Slack(needs []Need, v Variant) (unit.DB, error) {
 		return w
 	}
 	low, high := -1.0, 1.0
-	ok, err := s.meets(needs, with(0))
+	ok, err := s.Meets(needs, with(0))
 	if err != nil {
 		return 0, err
 	}
 	// Widen towards the edge, then halve.
 	if ok {
 		for low = 0; ; high *= 2 {
-			still, err := s.meets(needs, with(high))
+			still, err := s.Meets(needs, with(high))
 			if err != nil {
 				return 0, err
 			}
@@ -49,7 +49,7 @@ func (s *Study) Slack(needs []Need, v Variant) (unit.DB, error) {
 		}
 	} else {
 		for high = 0; ; low *= 2 {
-			met, err := s.meets(needs, with(low))
+			met, err := s.Meets(needs, with(low))
 			if err != nil {
 				return 0, err
 			}
@@ -63,7 +63,7 @@ func (s *Study) Slack(needs []Need, v Variant) (unit.DB, error) {
 	}
 	for high-low > 0.01 {
 		mid := (low + high) / 2
-		met, err := s.meets(needs, with(mid))
+		met, err := s.Meets(needs, with(mid))
 		if err != nil {
 			return 0, err
 		}
@@ -79,7 +79,7 @@ func (s *Study) Slack(needs []Need, v Variant) (unit.DB, error) {
 // HighestRaise returns by how much the least elevation may be raised until the needs are
 // met no more, to 0.05 degrees up to 60; ok is false where they are not met at all.
 func (s *Study) HighestRaise(needs []Need, v Variant) (raise unit.Angle, ok bool, err error) {
-	if ok, err = s.meets(needs, v); !ok || err != nil {
+	if ok, err = s.Meets(needs, v); !ok || err != nil {
 		return 0, false, err
 	}
 	low, high := 0.0, 60.0
@@ -87,7 +87,7 @@ func (s *Study) HighestRaise(needs []Need, v Variant) (raise unit.Angle, ok bool
 		mid := (low + high) / 2
 		w := v
 		w.Raise = unit.Angle(mid) * unit.Degree
-		met, err := s.meets(needs, w)
+		met, err := s.Meets(needs, w)
 		if err != nil {
 			return 0, false, err
 		}

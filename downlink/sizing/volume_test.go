@@ -34,7 +34,7 @@ func TestExpectedBytesAgainstDistribution(t *testing.T) {
 			if len(plan.Steps) == 0 {
 				continue
 			}
-			w.count(turn, &track, clear, &plan, modes)
+			w.count(turn, &track, clear, &plan, modes, 1)
 			for _, b := range w.days {
 				expected += b
 			}

@@ -90,6 +90,7 @@
     x.nameLocation = 'middle';
     x.nameGap = 26;
     forLines(o, p);
+    o.yAxis[0].axisLine.onZero = false;
     if (spec.many) { forMany(o, p); }
     underLegend(o, width);
   }

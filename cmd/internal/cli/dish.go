@@ -12,6 +12,7 @@ import (
 
 type dishOptions struct {
 	show, axis string
+	report     string   // folder; empty: none
 	days       *float64 // nil: the scenario's
 	diameter   *float64 // nil: see dishStudy.chosen
 	format     format
@@ -42,6 +43,7 @@ Sensitivities and chances are of the least dish that meets all, limits of the sc
 own dishes; --diameter-m asks about another.`,
 		Example: `  slantwise dish --days 28
   slantwise dish --days 28 --show trade --format csv
+  slantwise dish --days 28 --report dish
   slantwise dish --days 28 --show map --axis noise
   slantwise dish --days 28 --show sensitivities --diameter-m 9`,
 		Args: noArgs,
@@ -51,6 +53,7 @@ own dishes; --diameter-m asks about another.`,
 	cmd.Flags().StringVar(&o.axis, "axis", string(sizing.PowerAxis), "second parameter of the map: `power`, elevation, noise or frequency")
 	addNumber(cmd.Flags(), &o.diameter, "diameter-m", "ask about a dish of so many `METRES`")
 	addNumber(cmd.Flags(), &o.days, "days", "how many `DAYS` are flown, in place of the scenario's")
+	cmd.Flags().StringVar(&o.report, "report", "", "write a page with charts, and its numbers as CSV and JSON, into the folder `DIR`")
 	addFormat(cmd, &o.format)
 	return cmd
 }
@@ -77,6 +80,11 @@ func runDish(ctx context.Context, env *Env, o *dishOptions) error {
 	a, err := d.answer(env)
 	if err != nil {
 		return err
+	}
+	if o.report != "" {
+		if err := writeDishReport(ctx, env, d, a, o); err != nil {
+			return err
+		}
 	}
 	if *show == "answer" {
 		return d.writeAnswer(env, a, o.format)

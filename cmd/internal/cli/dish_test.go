@@ -159,6 +159,44 @@ func TestDishFormats(t *testing.T) {
 	}
 }
 
+// The report is a page with its numbers beside it, the same bytes again.
+func TestDishReport(t *testing.T) {
+	file := dishScenario(t, dishBlock+"    bytes_per_day: 2.0e9\n    margin_at_elevation: {elevation_deg: 20, margin_db: 3}\n")
+	dir := filepath.Join(t.TempDir(), "dish")
+	write := func() map[string]string {
+		code, _, errOut := invoke(t, "dish", "--scenario", file, "--report", dir)
+		if code != 0 {
+			t.Fatalf("exit code %d: %s", code, errOut)
+		}
+		out := map[string]string{}
+		for _, name := range []string{"index.html", "answer.json", "trade.csv", "trade.json", "map-power.csv", "map-frequency.json", "sensitivities.csv", "chances.json", "limits.csv", "requirements.json"} {
+			text, err := os.ReadFile(filepath.Join(dir, name))
+			if err != nil {
+				t.Fatal(err)
+			}
+			out[name] = string(text)
+		}
+		return out
+	}
+	first := write()
+	for name, want := range map[string]string{
+		"index.html": "The least diameter that meets all is", "answer.json": `"binding_requirement": "`, "trade.csv": "diameter_m,", "map-power.csv": "power_change_db,",
+		"sensitivities.csv": "1 dB less transmit power,-", "chances.json": `"probability_percent":`, "limits.csv": "greatest altitude,",
+	} {
+		if !strings.Contains(first[name], want) {
+			t.Errorf("%s lacks %q", name, want)
+		}
+	}
+	for name, text := range write() {
+		if text != first[name] {
+			t.Errorf("%s differs the second time", name)
+		}
+	}
+	if code, _, errOut := invoke(t, "dish", "--scenario", file, "--report", file); code != 2 || !strings.Contains(errOut, "name a folder") {
+		t.Errorf("a file for a folder: exit code %d, %s", code, errOut)
+	}
+}
+
 func TestDishFlagsRefuse(t *testing.T) {
 	file := dishScenario(t, dishBlock+"    bytes_per_day: 2.0e9\n")
 	for _, c := range []struct{ args, want string }{

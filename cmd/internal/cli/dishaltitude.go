@@ -26,11 +26,11 @@ func (d *dishStudy) altitudeLimit(ctx context.Context, env *Env, needs []sizing.
 		if err != nil {
 			return false, err
 		}
-		slack, err := of.study.Slack(needs, v)
+		ok, err := of.study.Meets(needs, v)
 		if err != nil {
 			return false, &InputError{Err: err}
 		}
-		return slack >= 0, nil
+		return ok, nil
 	}
 	ok, err := meets(own)
 	if err != nil || !ok {

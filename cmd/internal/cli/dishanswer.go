@@ -191,7 +191,7 @@ func (d *dishStudy) shortfalls(a *sizing.Answer) string {
 	var parts []string
 	for i := range a.Verdicts {
 		if v := &a.Verdicts[i]; !v.MetNow {
-			parts = append(parts, fmt.Sprintf("%s: %s of %s", requirementText(v.Kind), valueText(v.ReachedNow, v.Unit), valueText(v.Required, v.Unit)))
+			parts = append(parts, fmt.Sprintf("%s %s of %s", requirementText(v.Kind), valueText(v.ReachedNow, v.Unit), valueText(v.Required, v.Unit)))
 		}
 	}
 	return strings.Join(parts, "; ")
