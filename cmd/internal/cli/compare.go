@@ -10,6 +10,7 @@ import (
 
 	"slantwise/cmd/internal/scenario"
 	"slantwise/downlink"
+	"slantwise/orbit"
 	"slantwise/station/pass"
 )
 
@@ -39,7 +40,8 @@ their culminations, in the order of time, and a row tells what became of each:
 Shifts are AFTER less BEFORE. Margin and bytes are those of one transmitter: the one
 named, or the only one that the spacecraft has. The margin is the greatest along the
 pass in the transmitter's first mode; the bytes are those of the rate plan, within the
-licences.`,
+licences. Where a file states how uncertain the positions are, one standard deviation of
+AOS stands behind: what lies within it was to be expected.`,
 		Example: `  slantwise compare before.yaml after.yaml --station "My station" --changed
   slantwise compare before.yaml after.yaml --format csv > changes.csv`,
 		Args: func(cmd *cobra.Command, args []string) error {
@@ -81,6 +83,7 @@ func runCompare(env *Env, o *compareOptions) error {
 		numbersAs("aos_shift_s", "AOS by s", 3), numbersAs("los_shift_s", "LOS by s", 3), numbersAs("max_elevation_before_deg", "highest before deg", 2),
 		numbersAs("max_elevation_after_deg", "after deg", 2), numbersAs("margin_before_db", "margin before dB", 2), numbersAs("margin_after_db", "after dB", 2),
 		numbersAs("volume_before_bytes", "volume before B", 0), numbersAs("volume_after_bytes", "after B", 0),
+		numbersAs("aos_plus_minus_before_s", "AOS ± before s", 2), numbersAs("aos_plus_minus_after_s", "after s", 2),
 	}}
 	craft, err := inBoth("spacecraft", o.spacecraft, sides[0].Spacecraft, sides[1].Spacecraft, spacecraftName, out)
 	if err != nil {
@@ -151,7 +154,11 @@ func (o *compareOptions) compare(out *sheet, sides [2]*scenario.Scenario, c [2]*
 	var by [2]*comparedSide
 	for i := range sides {
 		var err error
-		if by[i], err = o.side(sides[i], c[i]); err != nil {
+		over := make([]scenario.Station, len(stations))
+		for k := range stations {
+			over[k] = *stations[k][i]
+		}
+		if by[i], err = o.side(sides[i], c[i], over); err != nil {
 			return err
 		}
 		for _, n := range by[i].notes {
@@ -160,20 +167,53 @@ func (o *compareOptions) compare(out *sheet, sides [2]*scenario.Scenario, c [2]*
 	}
 	for _, st := range stations {
 		var lists [2][]pass.Pass
+		var sure [2]func(*pass.Pass) float64
 		for i := range sides {
+			var eph *orbit.Ephemeris
 			var err error
-			if _, lists[i], err = passesOver(sides[i], c[i], st[i]); err != nil {
+			if eph, lists[i], err = passesOver(sides[i], c[i], st[i]); err != nil {
+				return err
+			}
+			if sure[i], err = plusMinusOfAOS(sides[i], c[i], st[i], eph); err != nil {
 				return err
 			}
 		}
 		for _, p := range pass.Align(lists[0], lists[1], o.apart) {
 			row, same := comparedRow(p, [2]compared{by[0].of(st[0], p.Before), by[1].of(st[1], p.After)})
+			row = append(row, sure[0](p.Before), sure[1](p.After))
 			if !same || !o.moved {
 				out.rows = append(out.rows, append([]any{c[0].Name, st[0].Site.Name}, row...))
 			}
 		}
 	}
 	return nil
+}
+
+// plusMinusOfAOS returns a function that tells one standard deviation of a pass's AOS in
+// s: a number that does not exist where the scenario states no uncertainty, or where the
+// pass may not take place at all.
+func plusMinusOfAOS(s *scenario.Scenario, c *scenario.Spacecraft, st *scenario.Station, eph *orbit.Ephemeris) (func(*pass.Pass) float64, error) {
+	if c.Uncertainty == nil {
+		return func(*pass.Pass) float64 { return none }, nil
+	}
+	uncertainty, _, err := s.AssumedUncertainty(c, s.Window.Start, s.Window.End)
+	if err != nil {
+		return nil, &InputError{Err: fmt.Errorf("spacecraft %s: %w", c.Name, err)}
+	}
+	gauge, err := pass.NewGauge(&st.Site, s.Horizon)
+	if err != nil {
+		return nil, err
+	}
+	return func(p *pass.Pass) float64 {
+		if p == nil {
+			return none
+		}
+		m, err := gauge.PlusMinus(eph, p, uncertainty)
+		if err != nil { // the uncertainty is not known there
+			return none
+		}
+		return m.AOS
+	}, nil
 }
 
 // comparedRow is what follows the names in a row, and whether the pass stayed as it was.
@@ -219,7 +259,7 @@ func (s *comparedSide) of(st *scenario.Station, p *pass.Pass) compared {
 }
 
 // side flies the transmitter of margins and bytes, if there is one.
-func (o *compareOptions) side(s *scenario.Scenario, c *scenario.Spacecraft) (*comparedSide, error) {
+func (o *compareOptions) side(s *scenario.Scenario, c *scenario.Spacecraft, stations []scenario.Station) (*comparedSide, error) {
 	out := &comparedSide{links: map[string]map[time.Time]compared{}}
 	tx, err := o.chosen(c)
 	if tx == nil || err != nil {
@@ -233,7 +273,7 @@ func (o *compareOptions) side(s *scenario.Scenario, c *scenario.Spacecraft) (*co
 	if err != nil {
 		return nil, err
 	}
-	flights, notes, err := rateFlights(s, c, tx, s.Stations)
+	flights, notes, err := rateFlights(s, c, tx, stations)
 	if err != nil {
 		return nil, err
 	}

@@ -16,14 +16,20 @@ import (
 )
 
 func newNew(env *Env) *cobra.Command {
-	return &cobra.Command{
+	launchDay := false
+	cmd := &cobra.Command{
 		Use:   "new [FILE]",
 		Short: "Write a commented scenario to start from",
 		Long: `Write a commented scenario to start from into FILE (slantwise.yaml where none is
 named), and a small file of element sets beside it. A folder that is not there is
-made; a file that is there is never replaced.`,
+made; a file that is there is never replaced.
+
+With --launch-day FILE is a folder: it gets the first day of an invented satellite, as
+four scenarios that differ in the orbit alone (the separation state as planned, after a
+late launch, an ephemeris from tracking, the first element set).`,
 		Example: `  slantwise new
-  slantwise new plans/summer.yaml`,
+  slantwise new plans/summer.yaml
+  slantwise new --launch-day first-day`,
 		Args: func(cmd *cobra.Command, args []string) error {
 			if len(args) > 1 {
 				return inputErrorf("new takes one FILE, not %d; see slantwise new --help", len(args))
@@ -32,12 +38,51 @@ made; a file that is there is never replaced.`,
 		},
 		RunE: func(_ *cobra.Command, args []string) error {
 			file := scenario.DefaultFile
+			if launchDay {
+				file = "launch-day"
+			}
 			if len(args) == 1 {
 				file = args[0]
+			}
+			if launchDay {
+				return runLaunchDay(env, file)
 			}
 			return runNew(env, file)
 		},
 	}
+	cmd.Flags().BoolVar(&launchDay, "launch-day", false, "write the scenarios of a launch day into a folder (launch-day where none is named)")
+	return cmd
+}
+
+// runLaunchDay writes the files of a launch day into a folder, all of them or none.
+func runLaunchDay(env *Env, folder string) error {
+	files, err := scenario.LaunchDay()
+	if err != nil {
+		return err
+	}
+	for _, f := range files {
+		if path := filepath.Join(folder, f.Name); exists(path) {
+			return taken(path)
+		}
+	}
+	if err := os.MkdirAll(folder, 0o777); err != nil {
+		return fmt.Errorf("making the folder %s: %w", folder, err)
+	}
+	for i, f := range files {
+		if err := createText(filepath.Join(folder, f.Name), f.Text); err != nil {
+			for _, made := range files[:i] {
+				os.Remove(filepath.Join(folder, made.Name)) // of no use alone
+			}
+			return err
+		}
+	}
+	_, err = fmt.Fprintf(env.Out, "wrote %d files into %s; next: slantwise passes --scenario %s --plus-minus\n", len(files), folder, filepath.Join(folder, files[0].Name))
+	return err
+}
+
+func exists(path string) bool {
+	_, err := os.Lstat(path)
+	return err == nil
 }
 
 func runNew(env *Env, file string) error {
@@ -51,7 +96,7 @@ func runNew(env *Env, file string) error {
 		return err
 	}
 	for _, path := range []string{file, elementFile} {
-		if _, err := os.Lstat(path); err == nil {
+		if exists(path) {
 			return taken(path)
 		}
 	}
