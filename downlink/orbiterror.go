@@ -4,6 +4,7 @@ import (
 	"errors"
 	"fmt"
 	"math"
+	"sync"
 	"time"
 
 	"slantwise/orbit"
@@ -43,6 +44,9 @@ func (l *Link) ledByOrbit() bool {
 	return l.spec.Orbit != nil && l.beamwidth > 0 && a.Kind != station.Fixed && a.Follows == station.FollowsPrediction
 }
 
+// sureQuantile is the same for every link, and is worked out for the first.
+var sureQuantile = sync.OnceValues(func() (*station.ErrorQuantile, error) { return station.NewErrorQuantile(SureProbability) })
+
 func (l *Link) prepareOrbitError() error {
 	o := l.spec.Orbit
 	if o == nil {
@@ -52,7 +56,7 @@ func (l *Link) prepareOrbitError() error {
 		return errors.New("the orbit's error needs the site of the station and an uncertainty; the link was made without")
 	}
 	var err error
-	if l.sure, err = station.NewErrorQuantile(SureProbability); err != nil {
+	if l.sure, err = sureQuantile(); err != nil {
 		return err
 	}
 	if o.Probability == 0 {

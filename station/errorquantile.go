@@ -23,23 +23,56 @@ func NewErrorQuantile(probability float64) (*ErrorQuantile, error) {
 		return nil, &unit.RangeError{Quantity: "probability of the pointing error", Value: probability, Allowed: "above 0 and below 1"}
 	}
 	q := &ErrorQuantile{probability: probability}
+	near := 1.0
 	for i := range q.factors {
 		minor := 0.5 * float64(i) / (quantileNodes - 1)
-		low, high := 0.0, 1.0
-		for errorProbability(high, 1-minor, minor) < probability {
-			high *= 2
-		}
-		for range 60 {
-			mid := (low + high) / 2
-			if errorProbability(mid, 1-minor, minor) < probability {
-				low = mid
-			} else {
-				high = mid
-			}
-		}
-		q.factors[i] = (low + high) / 2
+		near = solveError(probability, 1-minor, minor, near)
+		q.factors[i] = near
 	}
 	return q, nil
+}
+
+// solveError returns the s at which errorProbability(s, a, b) is p, sought about a value
+// near it: a bracket, then the rule of false position in the form that halves the kept
+// end (Illinois), which comes to the last digits in some ten steps.
+func solveError(p, a, b, near float64) float64 {
+	off := func(s float64) float64 { return errorProbability(s, a, b) - p }
+	low, high := near*0.98, near*1.02
+	atLow, atHigh := off(low), off(high)
+	for atLow > 0 {
+		high, atHigh = low, atLow
+		low /= 2
+		atLow = off(low)
+	}
+	for atHigh < 0 {
+		low, atLow = high, atHigh
+		high *= 2
+		atHigh = off(high)
+	}
+	for kept := 0; high-low > 1e-13*high; {
+		s := high - atHigh*(high-low)/(atHigh-atLow)
+		at := off(s)
+		switch {
+		case at == 0 || !(s > low && s < high):
+			return s
+		case at < 0:
+			low, atLow = s, at
+			if kept == 1 {
+				atHigh /= 2
+			}
+			kept = 1
+		default:
+			high, atHigh = s, at
+			if kept == 2 {
+				atLow /= 2
+			}
+			kept = 2
+		}
+		if math.Abs(at) < 1e-14 {
+			return s
+		}
+	}
+	return (low + high) / 2
 }
 
 // Probability returns the probability that q was made for.
