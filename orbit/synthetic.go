@@ -41,7 +41,7 @@ func (o *SyntheticOrbit) Elements() (Elements, error) {
 	}
 	axis := (h + wgs72RadiusKm) / wgs72RadiusKm
 	if perigee := (axis*(1-o.Eccentricity) - 1) * wgs72RadiusKm; !(perigee >= 100) {
-		return Elements{}, &unit.RangeError{Quantity: "perigee of the orbit", Value: perigee, Unit: "km", Allowed: "100 km or more", Next: "give a greater altitude or a smaller eccentricity"}
+		return Elements{}, &unit.RangeError{Quantity: "perigee of the orbit", Value: math.Round(perigee*1000) / 1000, Unit: "km", Allowed: "100 km or more", Next: "give a greater altitude or a smaller eccentricity"}
 	}
 	el := Elements{Name: o.Name, CatalogNumber: o.CatalogNumber, Classification: "U", Epoch: o.Epoch, Eccentricity: o.Eccentricity,
 		RAAN: o.RAAN.Wrapped(), ArgPerigee: o.ArgPerigee.Wrapped(), MeanAnomaly: o.MeanAnomaly.Wrapped()}

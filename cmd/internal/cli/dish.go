@@ -1,6 +1,7 @@
 package cli
 
 import (
+	"bytes"
 	"context"
 	"fmt"
 	"slices"
@@ -8,11 +9,14 @@ import (
 	"github.com/spf13/cobra"
 
 	"slantwise/downlink/sizing"
+	"slantwise/orbit"
+	"slantwise/orbit/elements"
 )
 
 type dishOptions struct {
 	show, axis string
 	report     string   // folder; empty: none
+	elementSet string   // file; empty: none
 	days       *float64 // nil: the scenario's
 	diameter   *float64 // nil: see dishStudy.chosen
 	format     format
@@ -54,6 +58,7 @@ own dishes; --diameter-m asks about another.`,
 	addNumber(cmd.Flags(), &o.diameter, "diameter-m", "ask about a dish of so many `METRES`")
 	addNumber(cmd.Flags(), &o.days, "days", "how many `DAYS` are flown, in place of the scenario's")
 	cmd.Flags().StringVar(&o.report, "report", "", "write a page with charts, and its numbers as CSV and JSON, into the folder `DIR`")
+	cmd.Flags().StringVar(&o.elementSet, "element-set", "", "write the element set of the orbit that is flown, without drag, into `FILE` as two lines, for anyone to check")
 	addFormat(cmd, &o.format)
 	return cmd
 }
@@ -76,6 +81,11 @@ func runDish(ctx context.Context, env *Env, o *dishOptions) error {
 	d, err := newDishStudy(ctx, env, s)
 	if err != nil {
 		return err
+	}
+	if o.elementSet != "" {
+		if err := d.writeElementSet(env, o.elementSet); err != nil {
+			return err
+		}
 	}
 	a, err := d.answer(env)
 	if err != nil {
@@ -148,6 +158,19 @@ func (d *dishStudy) answer(env *Env) (*sizing.Answer, error) {
 		return nil, &InputError{Err: err}
 	}
 	return a, nil
+}
+
+// writeElementSet writes the kept orbit's mean elements at their epoch.
+func (d *dishStudy) writeElementSet(env *Env, file string) error {
+	var b bytes.Buffer
+	warnings, err := elements.WriteTLE(&b, []orbit.Elements{d.kept.Elements()})
+	if err != nil {
+		return &InputError{Err: fmt.Errorf("spacecraft %s: %w", d.spacecraft.Name, err)}
+	}
+	for _, w := range warnings {
+		env.note("warning: %s", printable(w.String()))
+	}
+	return writeWhole(file, b.Bytes())
 }
 
 // withNotes gives a sheet the notes of the study.

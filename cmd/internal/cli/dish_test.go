@@ -197,6 +197,52 @@ func TestDishReport(t *testing.T) {
 	}
 }
 
+// A spacecraft that does not fly yet: its element set is written, and read again it is
+// the same orbit.
+func TestDishOfASyntheticOrbit(t *testing.T) {
+	file := dishScenario(t, dishBlock+"    bytes_per_day: 2.0e9\n")
+	text, err := os.ReadFile(file)
+	if err != nil {
+		t.Fatal(err)
+	}
+	changed := strings.Replace(string(text), "    element_set: \"99001\"\n", "    synthetic_orbit: {altitude_km: 520, eccentricity: 0.001, local_time_of_node_h: 22.5}\n", 1)
+	if changed == string(text) {
+		t.Fatal("the demo's first spacecraft has no element_set 99001")
+	}
+	if err := os.WriteFile(file, []byte(changed), 0o600); err != nil {
+		t.Fatal(err)
+	}
+	set := filepath.Join(filepath.Dir(file), "made.tle")
+	code, out, errOut := invoke(t, "dish", "--scenario", file, "--element-set", set)
+	if code != 0 || !strings.Contains(errOut, "local time is held at 22.50 h") {
+		t.Fatalf("exit code %d: %s%s", code, out, errOut)
+	}
+	before := out
+	code, out, errOut = invoke(t, "elements", set, "--format", "csv")
+	if code != 0 || !strings.Contains(out, "Wagtail 1") {
+		t.Errorf("exit code %d: %s%s", code, out, errOut)
+	}
+	lines, err := os.ReadFile(set)
+	if err != nil || !strings.Contains(string(lines), " 97.5021 ") || !strings.Contains(string(lines), " 15.14") {
+		t.Errorf("%v: %s", err, lines)
+	}
+	// The same orbit from the file.
+	back := strings.Replace(changed, "    synthetic_orbit: {altitude_km: 520, eccentricity: 0.001, local_time_of_node_h: 22.5}\n", "    element_set: \"Wagtail 1\"\n", 1)
+	back = strings.Replace(back, "element_files: [elements.tle]", "element_files: [made.tle]", 1)
+	back = back[:strings.Index(back, "  # A small satellite without")] + back[strings.Index(back, "# What a licence allows"):]
+	if err := os.WriteFile(file, []byte(back), 0o600); err != nil {
+		t.Fatal(err)
+	}
+	code, again, errOut := invoke(t, "dish", "--scenario", file)
+	if code != 0 {
+		t.Fatal(errOut)
+	}
+	head, _, _ := strings.Cut(before, "\n\n")
+	if !strings.HasPrefix(again, head) {
+		t.Errorf("from the file: %s\nfrom the orbit: %s", again, head)
+	}
+}
+
 func TestDishFlagsRefuse(t *testing.T) {
 	file := dishScenario(t, dishBlock+"    bytes_per_day: 2.0e9\n")
 	for _, c := range []struct{ args, want string }{

@@ -69,7 +69,7 @@ func everyOneHasState(top object) bool {
 		return false
 	}
 	for _, craft := range all.Items {
-		if craft.Kind != tree.Map || craft.Get("state") == nil {
+		if craft.Kind != tree.Map || craft.Get("state") == nil && craft.Get("synthetic_orbit") == nil {
 			return false
 		}
 	}

@@ -40,7 +40,7 @@ func TestEveryKeyIsRead(t *testing.T) {
 		stationKeys, antennaKeys, noiseKeys, stageKeys, sizingKeys, requirementKeys, marginAtKeys, marginShareKeys, familyKeys,
 		uplinkKeys, transmitKeys, linkSetKeys, oscillatorKeys, measuredKeys, coherentKeys, pathKeys, climateKeys, levelKeys, lognormalKeys, lowPathKeys,
 		mountKeys,
-		ratePlanKeys, licenceKeys, sectorKeys, hoursKeys, recorderKeys, recorderDataKeys, craftUncertaintyKeys, covarianceKeys, stateKeys, controlKeys, toleranceKeys, criterionKeys,
+		ratePlanKeys, licenceKeys, sectorKeys, hoursKeys, recorderKeys, recorderDataKeys, craftUncertaintyKeys, covarianceKeys, stateKeys, syntheticKeys, controlKeys, toleranceKeys, criterionKeys,
 	} {
 		for _, k := range keys {
 			if !found[k] && k != "end_utc" { // which stands in place of length_h

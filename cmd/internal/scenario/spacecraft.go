@@ -9,7 +9,7 @@ import (
 	"slantwise/orbit/elements"
 )
 
-var spacecraftKeys = []string{"name", "element_set", "state", "time_offset_s", "launch_slip_s", "valid_until_utc", "transmitters", "recorder", "rate_plan", "uplinks", "link_sets", "position_uncertainty"}
+var spacecraftKeys = []string{"name", "element_set", "state", "synthetic_orbit", "time_offset_s", "launch_slip_s", "valid_until_utc", "transmitters", "recorder", "rate_plan", "uplinks", "link_sets", "position_uncertainty"}
 
 // spacecraft reads the spacecraft, or takes every object of the element files where
 // the key is left out.
@@ -36,6 +36,9 @@ func (r *reader) spacecraft(top object, s *Scenario) []Spacecraft {
 			o.shifts(&out[i])
 			if o.has("state") {
 				o.state(called[i], s.Earth)
+			}
+			if o.has("synthetic_orbit") {
+				o.syntheticOrbit(called[i], s.Window.Start)
 			}
 			continue
 		}

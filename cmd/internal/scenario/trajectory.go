@@ -89,6 +89,14 @@ func (o object) orbitOf(c *Spacecraft, s *Scenario, middle time.Time) {
 		if el, ok := o.state(c.Name, s.Earth); ok {
 			c.Candidates, c.Stated = []orbit.Elements{el}, true
 		}
+		o.useless("beside state, which gives the orbit", "synthetic_orbit")
+	case o.has("synthetic_orbit"):
+		if at != nil {
+			o.fault(at, "element_set", "it stands beside synthetic_orbit, which gives the orbit, too", "keep one of the two")
+		}
+		if el, ok := o.syntheticOrbit(c.Name, s.Window.Start); ok {
+			c.Candidates, c.Stated = []orbit.Elements{el}, true
+		}
 	default:
 		if t, among := matchTrajectory(s.Trajectories, ref); t != nil {
 			o.follow(c, t, among, s)
