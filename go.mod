@@ -22,6 +22,8 @@ require (
 	pgregory.net/rapid v1.3.0
 )
 
+require github.com/arran4/golang-ical v0.3.4
+
 require (
 	github.com/fsnotify/fsnotify v1.9.0 // indirect
 	github.com/go-json-experiment/json v0.0.0-20260213210345-44df1a37e875 // indirect

@@ -47,10 +47,11 @@ var layers = []struct {
 	{"slantwise/reports", 12},
 	{"slantwise/cmd/internal/atomicfile", 12},
 	{"slantwise/cmd/internal/nearest", 12},
-	{"slantwise/cmd/internal/scenario", 13},
-	{"slantwise/cmd/internal/web", 14},
-	{"slantwise/cmd/internal/cli", 15},
-	{"slantwise/cmd/slantwise", 16},
+	{"slantwise/cmd/internal/planfiles", 13},
+	{"slantwise/cmd/internal/scenario", 14},
+	{"slantwise/cmd/internal/web", 15},
+	{"slantwise/cmd/internal/cli", 16},
+	{"slantwise/cmd/slantwise", 17},
 }
 
 // banned are imports that would carry a concern into a layer which must not know

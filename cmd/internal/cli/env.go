@@ -4,6 +4,7 @@ import (
 	"fmt"
 	"io"
 	"os"
+	"sync/atomic"
 	"time"
 
 	"github.com/spf13/pflag"
@@ -35,10 +36,11 @@ type Env struct {
 
 	overrides map[string]*pflag.Flag // flags that replace a scenario key, by key path
 	started   bool                   // the command line was understood and the command began
+	finishes  *atomic.Bool           // an interrupt makes the command finish with what it has
 }
 
 func newEnv(in io.Reader, out, errOut io.Writer) *Env {
-	return &Env{In: in, Out: out, Err: errOut, Now: time.Now}
+	return &Env{In: in, Out: out, Err: errOut, Now: time.Now, finishes: new(atomic.Bool)}
 }
 
 // need says what of the scenario a command uses.
@@ -83,6 +85,14 @@ func (e *Env) read(n need) (*scenario.Scenario, error) {
 		e.note("no --scenario and no %s here: this is the embedded demo (slantwise new writes a scenario to start from)", scenario.DefaultFile)
 	}
 	return s, nil
+}
+
+// patience is how long the command may take after an interrupt.
+func (e *Env) patience() time.Duration {
+	if e.finishes.Load() {
+		return patienceWithResult
+	}
+	return patience
 }
 
 // note writes a line for people to stderr.

@@ -63,6 +63,11 @@ func prepareExample(t *testing.T, command string) {
 			t.Fatal(errOut)
 		}
 	}
+	if command == "verify" || command == "explain" {
+		if code, _, errOut := invoke(t, "contacts", "--iterations", "1", "--save", "plan.csv"); code != ExitAnswer {
+			t.Fatal(errOut)
+		}
+	}
 	if err := os.WriteFile("positions.csv", []byte(samplePositions), 0o600); err != nil {
 		t.Fatal(err)
 	}

@@ -35,6 +35,9 @@ func Main(args []string, in io.Reader, out, errOut io.Writer) int {
 // patience is how long an interrupted command may take to tidy up.
 const patience = 500 * time.Millisecond
 
+// patienceWithResult is how long one may take that writes what it has found so far.
+const patienceWithResult = time.Minute
+
 // run executes the command line and returns the exit code. An interrupted command
 // that does not return within patience is left behind.
 func run(ctx context.Context, args []string, env *Env) int {
@@ -57,7 +60,7 @@ func run(ctx context.Context, args []string, env *Env) int {
 	case <-ctx.Done():
 		select {
 		case err = <-done:
-		case <-time.After(patience):
+		case <-time.After(env.patience()):
 			err = ctx.Err()
 		}
 	}

@@ -7,6 +7,7 @@ import (
 	"testing"
 	"time"
 
+	"slantwise/cmd/internal/planfiles"
 	"slantwise/cmd/internal/scenario"
 	"slantwise/downlink"
 	"slantwise/downlink/licence"
@@ -184,6 +185,19 @@ func TestEverything(t *testing.T) {
 			Upper: station.Axis{Low: -80 * unit.Degree, High: 80 * unit.Degree, Rate: degrees(4), Acceleration: unit.AngularAcceleration(degrees(2.5))},
 		}},
 		{"no mount", single.Mount, (*station.Mount)(nil)},
+		{"shift", s.ContactPlan.Stations[0].Shifts, []scenario.Shift{{Days: []time.Weekday{time.Monday, time.Friday}, From: 22 * time.Hour, To: 6*time.Hour + 30*time.Minute}}},
+		{"antenna of the plan", s.ContactPlan.Stations[0].Antennas[0], scenario.PlanAntenna{Name: "dish", Contract: "north", PerContact: 10, PerMinute: 1.5, SetUp: 3 * time.Minute, TearDown: 20 * time.Second}},
+		{"spacecraft of the plan", s.ContactPlan.Spacecraft[0], scenario.PlanSpacecraft{
+			Name: "Wagtail 1", Contract: "north", Transmitters: []string{"X-band"}, AtOnce: 2, Between: 20 * time.Second, Repoint: time.Minute,
+			Overlap: [2]time.Duration{10 * time.Second, time.Minute}, SameData: true, UplinkShare: 0.05, PerOrbit: 15 * time.Minute, Share: 1e9, ValuePerByte: 2,
+			Data:     []scenario.PlanData{{Name: "images", ValuePerByte: 3, Due: 6 * time.Hour, Fade: 12 * time.Hour}},
+			Commands: &scenario.PlanCommands{Lead: 10 * time.Minute, Valid: 24 * time.Hour, Loaded: []time.Time{time.Date(2026, 9, 14, 22, 0, 0, 0, time.UTC)}},
+		}},
+		{"budget", *s.ContactPlan.Limits[1].Price, 500.0},
+		{"local day", s.ContactPlan.Limits[0].Zone.String(), "Europe/London"},
+		{"shared", s.ContactPlan.Shared[0], scenario.PlanShared{Name: "front end", Station: "Skerry Point", Antennas: []string{"dish", "measured"}, AtOnce: 1, FromSetUp: true}},
+		{"closed, from a file", s.ContactPlan.Closed[3], planfiles.Outage{Place: "closed.csv: line 3", Spacecraft: "Pipit", Reason: "manoeuvre",
+			Start: time.Date(2026, 9, 15, 5, 0, 0, 0, time.UTC), End: time.Date(2026, 9, 15, 5, 30, 0, 0, time.UTC)}},
 		{"boresight", roof.Boresight, station.Direction{Azimuth: 10 * unit.Degree, Elevation: 90 * unit.Degree}},
 	} {
 		if !reflect.DeepEqual(tt.got, tt.want) {

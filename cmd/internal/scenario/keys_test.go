@@ -40,6 +40,7 @@ func TestEveryKeyIsRead(t *testing.T) {
 		stationKeys, antennaKeys, noiseKeys, stageKeys, sizingKeys, requirementKeys, marginAtKeys, marginShareKeys, familyKeys,
 		uplinkKeys, transmitKeys, linkSetKeys, oscillatorKeys, measuredKeys, coherentKeys, pathKeys, climateKeys, levelKeys, lognormalKeys, lowPathKeys,
 		mountKeys,
+		contactPlanKeys, planWeightKeys, planClosedKeys, planStationKeys, planAntennaKeys, shiftKeys, planCraftKeys, planDataKeys, planCommandsKeys, planLimitKeys, planSharedKeys,
 		ratePlanKeys, licenceKeys, sectorKeys, hoursKeys, recorderKeys, recorderDataKeys, craftUncertaintyKeys, covarianceKeys, stateKeys, syntheticKeys, controlKeys, toleranceKeys, criterionKeys,
 	} {
 		for _, k := range keys {

@@ -44,7 +44,7 @@ func build(root *tree.Node, src *source, req Request) (*Scenario, error) {
 	return s, nil
 }
 
-var topKeys = []string{"window", "earth", "element_files", "coding_files", "element_choice", "horizon", "path", "spacecraft", "stations", "sizing", "licence", "design_control", "position_uncertainty"}
+var topKeys = []string{"window", "earth", "element_files", "coding_files", "element_choice", "horizon", "path", "spacecraft", "stations", "sizing", "licence", "design_control", "position_uncertainty", "contact_plan"}
 
 // scenario reads everything; the value is of use only where no fault was noted.
 func (r *reader) scenario(root *tree.Node) *Scenario {
@@ -62,6 +62,7 @@ func (r *reader) scenario(root *tree.Node) *Scenario {
 	s.Sizing = r.sizing(o, s)
 	s.Licences = r.licences(o, s)
 	s.Control = r.control(o)
+	s.ContactPlan = r.contactPlan(o, s)
 	return s
 }
 

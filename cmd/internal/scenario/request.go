@@ -9,6 +9,7 @@ type Need int
 const (
 	NeedOrbits Need = iota // window and element sets must be there
 	NeedRadio              // a stated geometry: element files stay unread, a window is optional
+	NeedPlan               // windows from outside: element files stay unread, all else is optional
 )
 
 // Request says which scenario to read. Variables SLANTWISE_… of the environment

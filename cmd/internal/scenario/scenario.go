@@ -34,9 +34,10 @@ type Scenario struct {
 	Spacecraft []Spacecraft // in the order of the file
 	Stations   []Station    // in the order of the file
 
-	Licences []licence.Licence // what may be sent and received, in the order of the file
-	Sizing   *Sizing           // which dish is sought; nil: none
-	Control  Control           // tolerances and criteria; empty where none are given
+	Licences    []licence.Licence // what may be sent and received, in the order of the file
+	Sizing      *Sizing           // which dish is sought; nil: none
+	ContactPlan ContactPlan       // what the plan of contacts must respect
+	Control     Control           // tolerances and criteria; empty where none are given
 
 	Assumptions []Note // every default taken
 	Warnings    []Note // what may make an answer wrong: old elements, …

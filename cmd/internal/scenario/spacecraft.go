@@ -92,8 +92,10 @@ func (o object) tellAge(c elements.Chosen) {
 
 // everyObject makes a spacecraft without transmitter of each object found.
 func (r *reader) everyObject(top object, s *Scenario, middle time.Time) []Spacecraft {
-	if r.need != NeedOrbits {
+	if r.need == NeedRadio {
 		top.missing("spacecraft", "at least one spacecraft with a transmitter")
+	}
+	if r.need != NeedOrbits {
 		return nil
 	}
 	if len(s.Sets) == 0 && len(s.Trajectories) == 0 {

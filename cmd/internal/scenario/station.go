@@ -17,9 +17,10 @@ var stationKeys = []string{
 // stations reads the stations; around is the environment of those that state none.
 func (r *reader) stations(top object, around *propagation.Environment) []Station {
 	if !top.has("stations") {
-		if r.need == NeedOrbits {
+		switch r.need {
+		case NeedOrbits:
 			top.missing("stations", "at least one station")
-		} else {
+		case NeedRadio:
 			top.missing("stations", "at least one station with an antenna")
 		}
 		return nil
