@@ -35,6 +35,7 @@ func (s *search) begin(plan contacts.Plan) {
 	}
 	s.b.settle()
 	s.keep()
+	s.copy()
 }
 
 // empty takes off all that can be.
@@ -53,7 +54,7 @@ func (s *search) empty() {
 // stays on the board where it is no worse than the best by much.
 func (s *search) adopt(list []chosen) {
 	s.empty()
-	s.pools(1)
+	s.pools(full)
 	m := s.b.m
 	type ranked struct {
 		chosen
@@ -76,6 +77,7 @@ func (s *search) adopt(list []chosen) {
 	s.b.settle()
 	if s.b.total > s.bestValue {
 		s.keep()
+		s.copy()
 	} else {
 		s.load(s.best)
 	}

@@ -1,7 +1,6 @@
 package solve
 
 import (
-	"math"
 	"slices"
 
 	"slantwise/downlink/contacts"
@@ -59,7 +58,7 @@ func (d *dual) roundedGains(w *window, i int, prices []float64, cell ms, begin, 
 			to := min(next, d.pieces[x].to)
 			sum += slope * float64(to-at)
 			at = to
-			begin[k], end[k] = math.Min(begin[k], sum), math.Max(end[k], sum)
+			begin[k], end[k] = min(begin[k], sum), max(end[k], sum)
 			if at == next {
 				next += cell
 				if k++; k < len(begin) {

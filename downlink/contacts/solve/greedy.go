@@ -2,6 +2,7 @@ package solve
 
 import (
 	"cmp"
+	"math"
 	"slices"
 
 	"slantwise/downlink/contacts"
@@ -10,6 +11,9 @@ import (
 // density returns what a millisecond of a window is worth, with set-up and tear-down, if
 // all of it that is useful were taken.
 func (s *search) density(i int) float64 {
+	if v := s.densities[s.share][i]; !math.IsNaN(v) {
+		return v
+	}
 	w := &s.b.m.windows[i]
 	value := 0.0
 	at := w.from
@@ -20,7 +24,9 @@ func (s *search) density(i int) float64 {
 		at = q.to
 	}
 	value *= float64(w.most) / float64(w.to-w.from)
-	return (value - s.d.once(i, s.guide)) / float64(w.most+w.setUp+w.tearDown)
+	v := (value - s.d.once(i, s.guide)) / float64(w.most+w.setUp+w.tearDown)
+	s.densities[s.share][i] = v
+	return v
 }
 
 // fill tries windows, best first by density times a factor that spread draws from

@@ -34,6 +34,9 @@ var instances = []struct {
 	{"300 requests, windows of 8 h", 60 * time.Second, 3, func() (*contacts.Problem, error) {
 		return instance.Demand{Seed: 1, Requests: 300, Windows: 3000, Antennas: 15, Craft: 30, Days: 7, Split: true, Load: 0.9, Window: 8 * contacts.Hour}.Problem()
 	}},
+	{"300 requests, too many, windows of 8 h", 60 * time.Second, 3, func() (*contacts.Problem, error) {
+		return instance.Demand{Seed: 1, Requests: 300, Windows: 3000, Antennas: 15, Craft: 30, Days: 7, Split: true, Load: 1.2, Window: 8 * contacts.Hour}.Problem()
+	}},
 }
 
 // TestMeasure solves the instances within their time and tells how far it gets. It runs

@@ -79,6 +79,15 @@ func newGrid(d *dual, cell ms, exact bool) *grid {
 	return g
 }
 
+// size returns the number of cells that an evaluation works off.
+func (g *grid) size() int {
+	n := 0
+	for i := range g.clusters {
+		n += g.clusters[i].size
+	}
+	return n
+}
+
 func (g *grid) up(t ms) ms { return (t + g.cell - 1) / g.cell * g.cell }
 
 // floor returns the cell of an instant.

@@ -16,10 +16,14 @@ type search struct {
 
 	prices []float64 // the last that the bound has found, or nil
 	guide  []float64 // a share of them, drawn for each move
-	cell   ms
+	share  int       // which of shares that is
+	// densities are those found so far, by share and window; NaN: not yet
+	densities [][]float64
+	cell      ms
 
 	best      contacts.Plan
 	bestValue float64
+	ahead     bool    // the board holds the best plan, which best does not have yet
 	heat      float64 // value that a move may lose
 
 	chain    chain
@@ -43,22 +47,43 @@ func newSearch(m *model, d *dual, seed uint64, start *contacts.Plan) *search {
 	if u := d.unit(); u > s.cell && u%m.step == 0 && u <= shortest {
 		s.cell = u
 	}
-	s.pools(1)
+	for range shares {
+		s.densities = append(s.densities, make([]float64, len(m.windows)))
+	}
+	s.price(nil)
+	s.pools(full)
 	if start != nil {
 		s.begin(*start)
 	}
 	s.greedy()
 	s.keep()
+	s.copy()
 	return s
 }
 
-// pools sets the guide to a share of the prices; pools have theirs always, since what
-// they say is what a byte is worth.
-func (s *search) pools(share float64) {
+// shares of the prices by which moves are guided.
+var shares = [...]float64{0, 0.5, 0.9, 1}
+
+const full = len(shares) - 1
+
+// price takes over new prices.
+func (s *search) price(prices []float64) {
+	s.prices = prices
+	for _, list := range s.densities {
+		for i := range list {
+			list[i] = math.NaN()
+		}
+	}
+}
+
+// pools sets the guide to one of the shares of the prices; pools have theirs always, since
+// what they say is what a byte is worth.
+func (s *search) pools(share int) {
+	s.share = share
 	for r := range s.guide {
 		price := 0.0
 		if s.prices != nil {
-			price = s.prices[r] * share
+			price = s.prices[r] * shares[share]
 		}
 		if reward := s.d.rows[r].reward; reward != nil {
 			price = reward[0].each / 2
@@ -70,10 +95,21 @@ func (s *search) pools(share float64) {
 	}
 }
 
-// keep notes the plan on the board if it is the best so far.
+// keep notes the plan on the board if it is the best so far. Copying it is put off until
+// the board is about to leave it.
 func (s *search) keep() {
 	if s.best.Contacts == nil || s.b.total > s.bestValue+1e-9*math.Abs(s.bestValue) {
-		s.best, s.bestValue = s.b.plan(), s.b.total
+		s.bestValue, s.ahead = s.b.total, true
+		if s.best.Contacts == nil {
+			s.copy()
+		}
+	}
+}
+
+// copy copies the best plan off the board where it stands there alone.
+func (s *search) copy() {
+	if s.ahead {
+		s.best, s.ahead = s.b.plan(), false
 	}
 }
 
@@ -102,24 +138,26 @@ func (s *search) run(moves int, stop func() bool) {
 	}
 	for range moves {
 		if stop() {
-			return
+			break
 		}
 		n, before := len(s.b.log), s.b.total
 		s.move()
 		s.b.settle()
-		if s.b.total < before-s.heat*s.r.Float64()-1e-12*math.Abs(before) {
+		worse := s.b.total < before-1e-12*math.Abs(before)
+		if worse && (s.ahead || s.b.total < before-s.heat*s.r.Float64()) {
 			s.b.undo(n)
+			s.copy() // the next worse plan may be taken
 		} else {
 			s.b.log = s.b.log[:0]
 			s.keep()
 		}
 	}
+	s.copy()
 }
 
 // move empties and fills a part of the plan that is drawn at random.
 func (s *search) move() {
-	shares := []float64{0, 0, 0.5, 0.9, 1}
-	s.pools(shares[s.r.IntN(len(shares))])
+	s.pools(max(0, s.r.IntN(len(shares)+1)-1))
 	i := s.r.IntN(len(s.b.m.windows))
 	w := s.b.m.windows[i]
 	reach := ms(float64(w.most+w.setUp+w.tearDown) * (1 + 7*s.r.Float64()))

@@ -138,10 +138,11 @@ func (d *dual) grids() []*grid {
 	}
 	fine, coarse := cell(manyCells), cell(fewCells)
 	coarse = min(coarse, max(fine, shortest/4/unit*unit))
-	if coarse <= fine {
-		return []*grid{newGrid(d, fine, fine == unit)}
+	var out []*grid
+	for ; coarse > fine; coarse = coarse / 5 / unit * unit {
+		out = append(out, newGrid(d, coarse, false))
 	}
-	return []*grid{newGrid(d, coarse, false), newGrid(d, fine, fine == unit)}
+	return append(out, newGrid(d, fine, fine == unit))
 }
 
 // Work of a round.
@@ -189,15 +190,17 @@ func (r *run) ended() bool {
 func (r *run) round() {
 	value := r.search.bestValue
 	stop := func() bool { return r.ctx.Err() != nil }
-	r.search.heat = math.Abs(value) * 1e-4 / float64(1+r.done%8)
+	// A few hundredths of a contact may be lost by a move: measured, more and less help less.
+	r.search.heat = 0.03 * math.Abs(value) / float64(1+len(r.search.best.Contacts)) * 2 / float64(1+r.done%8)
 	bound := make(chan struct{})
+	steps, moves := r.steps(), r.moves()
 	work := func() {
 		defer close(bound)
-		for range stepsARound {
+		for range steps {
 			if stop() || r.tree != nil && !r.tree.full {
 				return
 			}
-			if r.ascent.step(value, max(1, r.o.Workers-1)) && r.level+1 < len(r.grids) {
+			if last := r.level+1 == len(r.grids); r.ascent.step(value, max(1, r.o.Workers-1)) && !last || !last && r.ascent.length < 0.05 {
 				r.level++
 				r.ascent.moved(r.grids[r.level])
 			}
@@ -208,7 +211,7 @@ func (r *run) round() {
 	} else {
 		work()
 	}
-	r.search.run(min(movesARound, 10*len(r.m.windows)), stop)
+	r.search.run(moves, stop)
 	<-bound
 	if r.tree != nil {
 		r.tree.run(r.search, nodesARound, stop)
@@ -217,10 +220,24 @@ func (r *run) round() {
 	if r.done+1 >= roundsBefore && len(r.m.windows) <= treeWindows {
 		r.tree = newTree(r.d, r.ascent.best, r.ascent.bound)
 	}
-	r.search.prices = slices.Clone(r.ascent.best)
+	r.search.price(slices.Clone(r.ascent.best))
 	if k := r.done; k&(k-1) == 0 || k%16 == 0 {
 		r.search.adopt(r.ascent.last.chosen)
 	}
+}
+
+// cost returns how much longer a step takes than on the coarsest grid.
+func (r *run) cost() int {
+	return max(1, r.grids[r.level].size()/max(1, r.grids[0].size()))
+}
+
+// steps returns the steps of the bound in a round.
+func (r *run) steps() int { return max(1, stepsARound/r.cost()) }
+
+// moves returns the moves of the search in a round, so many that they take about as long.
+func (r *run) moves() int {
+	moves := max(movesARound, len(r.m.windows)/70) * max(1, r.cost()/stepsARound)
+	return min(moves, 10*len(r.m.windows))
 }
 
 // bound returns the least that is proven.
