@@ -1,6 +1,7 @@
 package sizing
 
 import (
+	"errors"
 	"math"
 	"testing"
 
@@ -150,6 +151,29 @@ func TestPlane(t *testing.T) {
 			}
 			before = just
 		}
+	}
+}
+
+// Frequencies that cannot be had are left out and told.
+func TestPlaneLeavesOut(t *testing.T) {
+	c := usualCase()
+	c.days, c.clear = 7, true
+	s := c.study(t, None(), Family{})
+	refit := func(f unit.Frequency) ([]Place, error) {
+		if f > 9*unit.Gigahertz {
+			return nil, errors.New("no such table")
+		}
+		p := c.place(t, 0)
+		p.Clear.Transmitter.Frequency = f
+		return []Place{p}, nil
+	}
+	p, err := s.Plane(FrequencyAxis, Range{Low: 1, High: 2}, refit, nil)
+	if err != nil || len(p.Values) != 4 || len(p.Bytes) != 4 || len(p.LeftOut) != 4 {
+		t.Errorf("%+v, %v", p, err)
+	}
+	never := func(unit.Frequency) ([]Place, error) { return nil, errors.New("no such table") }
+	if _, err := s.Plane(FrequencyAxis, Range{Low: 1, High: 2}, never, nil); err == nil {
+		t.Error("no frequency at all: no error")
 	}
 }
 

@@ -3,6 +3,7 @@ package sizing
 import (
 	"fmt"
 	"math"
+	"strings"
 
 	"slantwise/orbit/unit"
 )
@@ -49,8 +50,9 @@ type Plane struct {
 	Over      [][]float64 // likewise: least share by which the requirements are surpassed, decibels as tenths; NaN without any
 	Just      []float64   // by value: the diameter in m at which all are just met, straight between those tried; NaN: none
 
-	Planned int     // every so many passes were planned
-	Error   float64 // greatest share by which that misses the bytes of all passes, at the ends and in the middle of the diameters
+	Planned int      // every so many passes were planned
+	LeftOut []string // values of the axis for which the links cannot be made, and why
+	Error   float64  // greatest share by which that misses the bytes of all passes, at the ends and in the middle of the diameters
 }
 
 // Refit makes the places of the sites for another frequency.
@@ -66,24 +68,30 @@ func (s *Study) Plane(axis Axis, r Range, refit Refit, progress func(done, total
 		return nil, err
 	}
 	r.Steps = 13
-	p := &Plane{Axis: axis, Diameters: r.Grid(), Values: axis.values(s), Planned: max(1, len(s.turns)/thinnedTo)}
+	p := &Plane{Axis: axis, Diameters: r.Grid(), Planned: max(1, len(s.turns)/thinnedTo)}
 	needs := s.spec.Needs
 	needs.Latency, needs.WorstWeekBytesPerDay = math.NaN(), math.NaN()
 	list := needs.List()
-	for k, value := range p.Values {
+	values := axis.values(s)
+	for k, value := range values {
 		of, v, err := s.alongAxis(axis, value, refit)
-		if err != nil {
-			return nil, err
+		if err != nil { // a table that does not reach a frequency, as an antenna's noise
+			p.LeftOut = append(p.LeftOut, fmt.Sprintf("%g: %v", value, err))
+			continue
 		}
 		v.thin = p.Planned
 		bytes, over, just, err := of.row(p.Diameters, list, v)
 		if err != nil {
 			return nil, fmt.Errorf("%s %g: %w", axis, value, err)
 		}
+		p.Values = append(p.Values, value)
 		p.Bytes, p.Over, p.Just = append(p.Bytes, bytes), append(p.Over, over), append(p.Just, just)
 		if progress != nil {
-			progress(k+1, len(p.Values))
+			progress(k+1, len(values))
 		}
+	}
+	if len(p.Values) == 0 {
+		return nil, fmt.Errorf("map over %s: %s", axis, strings.Join(p.LeftOut, "; "))
 	}
 	return p, s.thinError(p, r)
 }

@@ -69,6 +69,9 @@ func mapNote(p *sizing.Plane) string {
 	if p.Planned > 1 {
 		text = fmt.Sprintf("every %d. pass is planned for the map; at the ends and in the middle of its diameters that is up to %.2f %% from the bytes of all passes; ", p.Planned, 100*p.Error) + text
 	}
+	for _, left := range p.LeftOut {
+		text += "; left out " + left
+	}
 	if p.Axis == sizing.FrequencyAxis {
 		text += "; the antennas keep their areas and the spacecraft its pattern and power"
 	}
