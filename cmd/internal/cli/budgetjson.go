@@ -31,7 +31,7 @@ type budgetJSON struct {
 	FrequencyMHz nano             `json:"frequency_mhz"`
 	Antenna      string           `json:"antenna"`
 	Mode         *string          `json:"mode"`
-	Elements     *budgetElements  `json:"elements"`
+	Orbit        *orbitJSON       `json:"elements"`                 // what was flown; null for a stated geometry
 	Uncertainty  *string          `json:"position_uncertainty"`     // where its figures come from; null: the position is taken as exact
 	NarrowFrom   *string          `json:"beam_too_narrow_from_utc"` // for a pass overhead; null: not known, or not within 30 days of the window
 	Pass         *budgetPass      `json:"pass"`
@@ -46,12 +46,6 @@ type budgetPath struct {
 	ClearSky        bool     `json:"clear_sky"`
 	ExceededPercent *float64 `json:"exceeded_percent"` // null for a clear sky
 	Missing         []string `json:"missing"`          // parts that the scenario does not state
-}
-
-type budgetElements struct {
-	CatalogNumber int    `json:"catalog_number"`
-	EpochUTC      string `json:"epoch_utc"`
-	AgeDays       number `json:"age_days"`
 }
 
 type budgetPass struct {
@@ -148,8 +142,8 @@ func budgetOut(r *budgetResult) budgetJSON {
 	if p := r.scenario.Path.Exceedance.Percents(); !r.scenario.Path.ClearSky {
 		out.Path.ExceededPercent = &p
 	}
-	if e := r.elements; e != nil {
-		out.Elements = &budgetElements{e.CatalogNumber, utc(e.Epoch), num(e.Age.Hours()/24, 4)}
+	if r.flown != nil {
+		out.Orbit = r.flown.json(4)
 	}
 	if r.orbit != nil {
 		basis := r.orbit.Uncertainty.Basis()

@@ -18,7 +18,7 @@ import (
 type budgetResult struct {
 	*chosenLink
 	scenario *scenario.Scenario
-	elements *elements.Chosen // nil for a stated geometry
+	flown    *orbitHead       // nil for a stated geometry
 	pass     *pass.Pass       // nil for one instant or a stated geometry
 	volume   *downlink.Volume // of the pass
 	// clearVolume is the pass under a clear sky; nil where volume is that already.
@@ -100,7 +100,7 @@ func (r *budgetResult) underTheHorizon(g downlink.Geometry, blocked error) (*dow
 func budgetAt(s *scenario.Scenario, c *chosenLink, at time.Time) (*budgetResult, error) {
 	r := newBudgetResult(s, c, true)
 	end := at.Add(time.Second)
-	r.setElements(s.ElementsOver(c.spacecraft, at, end), at)
+	r.setOrbit(s.ElementsOver(c.spacecraft, at, end), at)
 	eph, err := s.Ephemeris(c.spacecraft, at, end, nil)
 	if err == nil {
 		err = eph.Whole(at, at)
@@ -145,7 +145,7 @@ func budgetOfPass(s *scenario.Scenario, c *chosenLink, at time.Time, step time.D
 	if r.pass == nil {
 		return r, nil
 	}
-	r.setElements(c.spacecraft.Elements, r.pass.AOS)
+	r.setOrbit(c.spacecraft.Elements, r.pass.AOS)
 	return r, r.fly(eph, step)
 }
 
@@ -198,10 +198,9 @@ func volumeStep(pass time.Duration) time.Duration {
 	return max(time.Second, pass/most).Round(time.Millisecond)
 }
 
-// setElements keeps the element set, its age told at an instant.
-func (r *budgetResult) setElements(c elements.Chosen, at time.Time) {
-	c.Age = c.Elements.Age(at)
-	r.elements = &c
+// setOrbit keeps what is flown, its age told at an instant.
+func (r *budgetResult) setOrbit(c elements.Chosen, at time.Time) {
+	r.flown = newOrbitHead(r.spacecraft, c, at)
 	if c.Caution != "" {
 		r.warn("elements: %s", c.Caution)
 	}

@@ -39,12 +39,8 @@ func (r *budgetResult) writeHead(w *bufio.Writer) {
 	if m := r.link.Mode(); m != nil {
 		line("mode %s: %s, coding %s, %s of information", m.Name, m.Modulation, m.Coding, rateText(float64(m.InformationRate)))
 	}
-	if e := r.elements; e != nil {
-		when := "old"
-		if e.Age < 0 {
-			when = "ahead"
-		}
-		line("element set %d of %s, %.2f days %s", e.CatalogNumber, utc(e.Epoch), e.Age.Abs().Hours()/24, when)
+	if r.flown != nil {
+		line("%s", r.flown)
 	}
 	for _, l := range r.pathHead() {
 		line("%s", l)

@@ -70,9 +70,17 @@ func checkTable(env *Env, s *scenario.Scenario) error {
 	width := env.outWidth()
 	var craft, stations, notes [][]string
 	for _, c := range s.Spacecraft {
+		flies := c.Orbit.String()
+		var number, epoch, age, sets string
+		if c.Orbit.HasNumber() {
+			flies = c.Elements.Name
+			number, sets = fmt.Sprintf("%05d", c.Elements.CatalogNumber), fmt.Sprint(c.Elements.Among)
+		}
+		if c.Orbit.HasEpoch() {
+			epoch, age = utc(c.Elements.Epoch), fixed(c.Elements.Age.Hours()/24, 2)
+		}
 		craft = append(craft, []string{
-			c.Name, c.Elements.Name, fmt.Sprintf("%05d", c.Elements.CatalogNumber), utc(c.Elements.Epoch),
-			fixed(c.Elements.Age.Hours()/24, 2), fmt.Sprint(c.Elements.Among), fmt.Sprint(len(c.Transmitters)),
+			c.Name, flies, number, epoch, age, sets, fmt.Sprint(len(c.Transmitters)), fmt.Sprint(len(c.Uplinks)),
 		})
 	}
 	for _, st := range s.Stations {
@@ -89,8 +97,8 @@ func checkTable(env *Env, s *scenario.Scenario) error {
 		return err
 	}
 	return errors.Join(
-		writeTable(env.Out, width, []column{textColumn("spacecraft"), textColumn("element set"), numberColumn("number"),
-			textColumn("epoch UTC"), numberColumn("age d"), numberColumn("sets"), numberColumn("transmitters")}, craft),
+		writeTable(env.Out, width, []column{textColumn("spacecraft"), textColumn("orbit"), numberColumn("number"),
+			textColumn("epoch UTC"), numberColumn("age d"), numberColumn("sets"), numberColumn("transmitters"), numberColumn("uplinks")}, craft),
 		newLine(env.Out),
 		writeTable(env.Out, width, []column{textColumn("station"), numberColumn("latitude deg"), numberColumn("longitude deg"),
 			numberColumn("altitude m"), numberColumn("antennas")}, stations),

@@ -14,14 +14,15 @@ type checkAnswer struct {
 }
 
 type checkSpacecraft struct {
-	Name          string   `json:"name"`
-	ElementSet    string   `json:"element_set"`
-	CatalogNumber int      `json:"catalog_number"`
-	EpochUTC      string   `json:"epoch_utc"`
-	AgeDays       number   `json:"age_days"` // at the middle of the window
-	Sets          int      `json:"sets"`
-	Transmitters  []string `json:"transmitters"`
-	Uplinks       []string `json:"uplinks"`
+	Name          string     `json:"name"`
+	ElementSet    *string    `json:"element_set"` // what an element set has, null for another orbit
+	CatalogNumber *int       `json:"catalog_number"`
+	EpochUTC      *string    `json:"epoch_utc"`
+	AgeDays       number     `json:"age_days"` // at the middle of the window
+	Sets          *int       `json:"sets"`
+	Transmitters  []string   `json:"transmitters"`
+	Uplinks       []string   `json:"uplinks"`
+	Orbit         *orbitJSON `json:"orbit"`
 }
 
 type checkStation struct {
@@ -52,11 +53,13 @@ func checkResult(s *scenario.Scenario) checkAnswer {
 		for _, t := range c.Transmitters {
 			names = append(names, t.Name)
 		}
-		a.Spacecraft = append(a.Spacecraft, checkSpacecraft{
-			Name: c.Name, ElementSet: c.Elements.Name, CatalogNumber: c.Elements.CatalogNumber,
-			EpochUTC: utc(c.Elements.Epoch), AgeDays: num(c.Elements.Age.Hours()/24, 3),
-			Sets: c.Elements.Among, Transmitters: names, Uplinks: append([]string{}, uplinkNames(&c)...),
-		})
+		flown := newOrbitHead(&c, c.Elements, s.Window.Start.Add(s.Window.Length()/2)).json(3)
+		row := checkSpacecraft{Name: c.Name, CatalogNumber: flown.CatalogNumber, EpochUTC: flown.EpochUTC, AgeDays: flown.AgeDays,
+			Transmitters: names, Uplinks: append([]string{}, uplinkNames(&c)...), Orbit: flown}
+		if c.Orbit == scenario.OnElementSet {
+			row.ElementSet, row.Sets = &c.Elements.Name, &c.Elements.Among
+		}
+		a.Spacecraft = append(a.Spacecraft, row)
 	}
 	for _, st := range s.Stations {
 		names := []string{}

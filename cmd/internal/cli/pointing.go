@@ -98,6 +98,7 @@ type pointing struct {
 	station     *scenario.Station
 	transmitter *downlink.Transmitter // nil: none
 	elements    elements.Chosen
+	flown       *orbitHead
 	frame       station.Frame
 	refraction  *station.Refraction
 	ephemeris   *orbit.Ephemeris
@@ -137,15 +138,16 @@ func runPointing(ctx context.Context, env *Env, o pointingOptions) error {
 		return err
 	}
 	middle := o.from.Add(o.to.Sub(o.from) / 2)
-	age, side := middle.Sub(p.elements.Epoch), "before"
-	if age < 0 {
-		side = "after"
-	}
-	if p.spacecraft.Trajectory != nil {
-		env.note("%s flies on its ephemeris", printable(p.spacecraft.Name))
-	} else {
-		env.note("the element set of %s has the epoch %s, %s days %s the middle of the span", printable(p.spacecraft.Name),
+	p.flown = newOrbitHead(p.spacecraft, p.elements, middle)
+	if p.flown.kind.HasEpoch() {
+		age, side := p.flown.elements.Age, "before"
+		if age < 0 {
+			side = "after"
+		}
+		env.note("the %s of %s has the epoch %s, %s days %s the middle of the span", p.flown.kind, printable(p.spacecraft.Name),
 			utc(p.elements.Epoch), fixed(age.Abs().Hours()/24, 2), side)
+	} else {
+		env.note("%s flies on the %s", printable(p.spacecraft.Name), printable(p.flown.String()))
 	}
 	if p.elements.Caution != "" {
 		env.note("warning: %s", printable(p.elements.Caution))

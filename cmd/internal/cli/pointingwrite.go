@@ -3,6 +3,7 @@ package cli
 import (
 	"bufio"
 	"context"
+	"encoding/json"
 	"fmt"
 	"io"
 	"math"
@@ -113,8 +114,17 @@ func (p *pointing) writeJSON(ctx context.Context, w io.Writer) error {
 	if err != nil {
 		return err
 	}
-	fmt.Fprintf(out, "{\n  \"spacecraft\": %s,\n  \"station\": %s,\n  \"transmitter\": %s,\n  \"frequency_hz\": %s,\n  \"element_set_epoch_utc\": \"%s\",\n  \"rows\": [",
-		jsonField(p.spacecraft.Name), jsonField(p.station.Site.Name), transmitter, carrier, utc(p.elements.Epoch))
+	flown := p.flown.json(4)
+	head, err := json.Marshal(flown)
+	if err != nil {
+		return fmt.Errorf("write the JSON: %w", err)
+	}
+	epoch := "null"
+	if flown.EpochUTC != nil {
+		epoch = jsonField(*flown.EpochUTC)
+	}
+	fmt.Fprintf(out, "{\n  \"spacecraft\": %s,\n  \"station\": %s,\n  \"transmitter\": %s,\n  \"frequency_hz\": %s,\n  \"element_set_epoch_utc\": %s,\n  \"orbit\": %s,\n  \"rows\": [",
+		jsonField(p.spacecraft.Name), jsonField(p.station.Site.Name), transmitter, carrier, epoch, head)
 	var b []byte
 	var day dayStamp
 	separator := "\n"

@@ -56,7 +56,7 @@ type Spacecraft struct {
 	Candidates   []orbit.Elements       // all sets of the object, in the order of the files
 	Choice       elements.Choice        // how Elements was chosen
 	Trajectory   *orbit.Trajectory      // flown in place of Elements, which then only describe it; nil: none
-	Stated       bool                   // Candidates holds a state vector's elements alone
+	Orbit        OrbitKind              // what it flies on
 	Shift        orbit.Shift            // of the orbit in time; Elements and Candidates have it already, Trajectory has not
 	ValidUntil   time.Time              // after it there are no passes; zero: no end is given
 	Transmitters []downlink.Transmitter // may be empty: passes and pointing only

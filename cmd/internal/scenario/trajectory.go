@@ -87,7 +87,7 @@ func (o object) orbitOf(c *Spacecraft, s *Scenario, middle time.Time) {
 			o.fault(at, "element_set", "it stands beside state, which gives the orbit, too", "keep one of the two")
 		}
 		if el, ok := o.state(c.Name, s.Earth); ok {
-			c.Candidates, c.Stated = []orbit.Elements{el}, true
+			c.Candidates, c.Orbit = []orbit.Elements{el}, OnState
 		}
 		o.useless("beside state, which gives the orbit", "synthetic_orbit")
 	case o.has("synthetic_orbit"):
@@ -95,7 +95,7 @@ func (o object) orbitOf(c *Spacecraft, s *Scenario, middle time.Time) {
 			o.fault(at, "element_set", "it stands beside synthetic_orbit, which gives the orbit, too", "keep one of the two")
 		}
 		if el, ok := o.syntheticOrbit(c.Name, s.Window.Start); ok {
-			c.Candidates, c.Stated = []orbit.Elements{el}, true
+			c.Candidates, c.Orbit = []orbit.Elements{el}, OnSyntheticOrbit
 		}
 	default:
 		if t, among := matchTrajectory(s.Trajectories, ref); t != nil {
@@ -218,7 +218,7 @@ func (o object) vector(key string, in span) (v orbit.Vec3, ok bool) {
 
 // follow makes a spacecraft fly on an ephemeris.
 func (o object) follow(c *Spacecraft, t *TrajectoryFile, among int, s *Scenario) {
-	c.Trajectory = &t.Trajectory
+	c.Trajectory, c.Orbit = &t.Trajectory, OnEphemeris
 	spans := t.Spans()
 	o.assume("the ephemeris of %s (%s) is flown, segments: %d, from %s to %s", t.Name, t.ID, len(t.Segments), stampOf(spans[0].From), stampOf(spans[len(spans)-1].To))
 	if among > 1 {

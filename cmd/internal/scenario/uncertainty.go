@@ -61,8 +61,8 @@ func (s *Scenario) uncertaintyOver(c *Spacecraft, stated *Uncertainty, from, to 
 		switch {
 		case c.Trajectory != nil: // the mean elements stand somewhere in it
 			u.Epoch, u.Of = c.Trajectory.Spans()[0].From.Add(shift), "the ephemeris, counted from its beginning,"
-		case c.Stated:
-			u.Of = "the state"
+		case c.Orbit != OnElementSet:
+			u.Of = "the " + c.Orbit.String()
 		}
 		return u, nil
 	}
