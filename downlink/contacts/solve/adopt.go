@@ -54,7 +54,7 @@ func (s *search) empty() {
 // stays on the board where it is no worse than the best by much.
 func (s *search) adopt(list []chosen) {
 	s.empty()
-	s.pools(full)
+	s.guideBy(full)
 	m := s.b.m
 	type ranked struct {
 		chosen

@@ -182,14 +182,17 @@ func (b *board) changeCost(candidate int) float64 {
 	return b.m.p.Weights.Change * float64(n)
 }
 
-// plan returns what is on the board.
+// plan returns what is on the board, antenna by antenna.
 func (b *board) plan() contacts.Plan {
-	out := []contacts.Contact{}
+	n := 0
+	for _, list := range b.antennas {
+		n += len(list)
+	}
+	out := make([]contacts.Contact, 0, n)
 	for _, list := range b.antennas {
 		for _, x := range list {
 			out = append(out, x.Contact)
 		}
 	}
-	b.m.p.Sort(out)
 	return contacts.Plan{Contacts: out}
 }

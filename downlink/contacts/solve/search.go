@@ -14,9 +14,9 @@ type search struct {
 	d *dual
 	r *rand.Rand
 
-	prices []float64 // the last that the bound has found, or nil
-	guide  []float64 // a share of them, drawn for each move
-	share  int       // which of shares that is
+	guides [len(shares)][]float64 // shares of the prices that the bound has found last
+	guide  []float64              // one of them, drawn for each move
+	share  int                    // which one
 	// densities are those found so far, by share and window; NaN: not yet
 	densities [][]float64
 	cell      ms
@@ -36,7 +36,7 @@ type search struct {
 }
 
 func newSearch(m *model, d *dual, seed uint64, start *contacts.Plan) *search {
-	s := &search{b: newBoard(m), d: d, r: rand.New(rand.NewPCG(seed, 1)), guide: make([]float64, len(d.rows)), longest: make([]ms, len(m.p.Antennas))}
+	s := &search{b: newBoard(m), d: d, r: rand.New(rand.NewPCG(seed, 1)), longest: make([]ms, len(m.p.Antennas))}
 	shortest := contacts.Day
 	for _, w := range m.windows {
 		s.longest[w.antenna] = max(s.longest[w.antenna], w.to-w.from)
@@ -51,7 +51,7 @@ func newSearch(m *model, d *dual, seed uint64, start *contacts.Plan) *search {
 		s.densities = append(s.densities, make([]float64, len(m.windows)))
 	}
 	s.price(nil)
-	s.pools(full)
+	s.guideBy(full)
 	if start != nil {
 		s.begin(*start)
 	}
@@ -66,34 +66,32 @@ var shares = [...]float64{0, 0.5, 0.9, 1}
 
 const full = len(shares) - 1
 
-// price takes over new prices.
+// price takes over new prices; nil: none yet. Pools have theirs in full in every share,
+// since what they say is what a byte is worth.
 func (s *search) price(prices []float64) {
-	s.prices = prices
-	for _, list := range s.densities {
-		for i := range list {
-			list[i] = math.NaN()
-		}
-	}
-}
-
-// pools sets the guide to one of the shares of the prices; pools have theirs always, since
-// what they say is what a byte is worth.
-func (s *search) pools(share int) {
-	s.share = share
-	for r := range s.guide {
-		price := 0.0
-		if s.prices != nil {
-			price = s.prices[r] * shares[share]
-		}
-		if reward := s.d.rows[r].reward; reward != nil {
-			price = reward[0].each / 2
-			if s.prices != nil {
-				price = max(s.prices[r], reward[0].each/100)
+	for k, share := range shares {
+		guide := make([]float64, len(s.d.rows))
+		for r := range guide {
+			reward := s.d.rows[r].reward
+			switch {
+			case prices == nil && reward != nil:
+				guide[r] = reward[0].each / 2
+			case reward != nil:
+				guide[r] = max(prices[r], reward[0].each/100)
+			case prices != nil:
+				guide[r] = prices[r] * share
 			}
 		}
-		s.guide[r] = price
+		s.guides[k] = guide
+		for i := range s.densities[k] {
+			s.densities[k][i] = math.NaN()
+		}
 	}
+	s.guideBy(s.share)
 }
+
+// guideBy guides what follows by one of the shares of the prices.
+func (s *search) guideBy(share int) { s.share, s.guide = share, s.guides[share] }
 
 // keep notes the plan on the board if it is the best so far. Copying it is put off until
 // the board is about to leave it.
@@ -144,10 +142,13 @@ func (s *search) run(moves int, stop func() bool) {
 		s.move()
 		s.b.settle()
 		worse := s.b.total < before-1e-12*math.Abs(before)
-		if worse && (s.ahead || s.b.total < before-s.heat*s.r.Float64()) {
+		switch {
+		case worse && s.b.total < before-s.heat*s.r.Float64():
+			s.b.undo(n)
+		case worse && s.ahead:
 			s.b.undo(n)
 			s.copy() // the next worse plan may be taken
-		} else {
+		default:
 			s.b.log = s.b.log[:0]
 			s.keep()
 		}
@@ -157,7 +158,7 @@ func (s *search) run(moves int, stop func() bool) {
 
 // move empties and fills a part of the plan that is drawn at random.
 func (s *search) move() {
-	s.pools(max(0, s.r.IntN(len(shares)+1)-1))
+	s.guideBy(max(0, s.r.IntN(len(shares)+1)-1))
 	i := s.r.IntN(len(s.b.m.windows))
 	w := s.b.m.windows[i]
 	reach := ms(float64(w.most+w.setUp+w.tearDown) * (1 + 7*s.r.Float64()))

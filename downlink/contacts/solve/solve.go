@@ -272,6 +272,7 @@ func gapPercent(value, bound float64) float64 {
 func (r *run) result() (Result, error) {
 	p := r.m.p
 	plan := r.search.best
+	p.Sort(plan.Contacts)
 	for i, c := range plan.Contacts {
 		plan.Contacts[i].Fixed = slices.ContainsFunc(p.Held, func(h contacts.Contact) bool { return h.Candidate == c.Candidate && h.Span == c.Span })
 	}

@@ -152,7 +152,7 @@ func (t *tree) lower(s *search, n *node) bool {
 func (t *tree) offer(s *search, n *node) {
 	log := len(s.b.log)
 	s.empty()
-	s.pools(full)
+	s.guideBy(full)
 	list := make([]contacts.Contact, 0, len(n.chosen))
 	for _, c := range n.chosen {
 		list = append(list, t.g.d.m.contact(n, c))

@@ -69,6 +69,7 @@ func (t *Trials) Take(candidate int) (Trial, bool) {
 		}
 	}
 	if found {
+		t.s.b.m.p.Sort(best.Plan.Contacts)
 		best.Value = verify.Worth(t.s.b.m.p, best.Plan).Value
 	}
 	return best, found
@@ -107,7 +108,7 @@ func (t *Trials) place(i int, c contacts.Contact) bool {
 	s := t.s
 	b := s.b
 	w := &b.m.windows[i]
-	s.pools(0)
+	s.guideBy(0)
 	lost := s.displace(w, c)
 	for _, x := range slices.Clone(b.groups[w.group]) {
 		if !b.m.split && !s.isFixed(x) {
