@@ -49,13 +49,18 @@ The search ends with the proof, with --time-limit, counted from the start of the
 or after so many --iterations: then the plan is the same on every machine. An interrupt
 ends it, too, and the best plan so far is written.
 
+--calendar and --calendars write iCalendar files (RFC 5545). A file that is there is
+revised: events keep their UID, SEQUENCE counts the exports, a dropped contact follows as
+cancelled. Events begin and end on whole seconds, rounded outwards.
+
 With --in-force a plan is planned again: what is fixed or under way at --now stays, other
 changes cost what the scenario's weights say, and the changes are listed.
 
 Exit codes beside those of slantwise --help: contacts verify gives 1 where the plan breaks
 a rule.`,
 		Example: `  slantwise contacts --iterations 10
-  slantwise contacts --iterations 10 --save plan.csv`,
+  slantwise contacts --iterations 10 --save plan.csv --calendar plan.ics --pointing pointing
+  slantwise contacts --iterations 10 --now 2026-09-15T12:00:00Z --in-force plan.csv --save later.csv`,
 		Args: noArgs,
 		RunE: func(cmd *cobra.Command, _ []string) error { return runContacts(cmd.Context(), env, &o) },
 	}
@@ -80,7 +85,7 @@ a rule.`,
 		}
 		return nil
 	}
-	cmd.AddCommand(newContactsVerify(env, &o.planSource), newContactsSchema(env))
+	cmd.AddCommand(newContactsVerify(env, &o.planSource), newContactsExplain(env, &o.planSource), newContactsCompare(env), newContactsSchema(env))
 	return cmd
 }
 
@@ -93,6 +98,7 @@ func runContacts(ctx context.Context, env *Env, o *contactsOptions) error {
 	if o.change != nil {
 		p.Weights.Change = *o.change
 	}
+	p.keepPast()
 	force, err := p.carry(o.inForce)
 	if err != nil {
 		return err
@@ -114,7 +120,7 @@ func runContacts(ctx context.Context, env *Env, o *contactsOptions) error {
 		env.note("stopped: the plan is the best one so far, whole")
 	}
 	a := newPlanAnswer(p, &result, force)
-	if err := a.writeFiles(env, &o.files); err != nil {
+	if err := a.writeFiles(context.WithoutCancel(ctx), &o.files); err != nil {
 		return err
 	}
 	return a.write(env, o.format)
@@ -171,8 +177,11 @@ func (o *planSource) problem(ctx context.Context, env *Env) (*planProblem, error
 		if err := p.AddWindows(rows); err != nil {
 			return nil, &InputError{Err: err}
 		}
-	} else if err := p.passes(ctx, env); err != nil {
-		return nil, err
+	} else {
+		if err := p.passes(ctx, env); err != nil {
+			return nil, err
+		}
+		p.clashes()
 	}
 	return p, o.finish(p)
 }

@@ -4,10 +4,14 @@ import (
 	"encoding/csv"
 	"encoding/json"
 	"os"
+	"slices"
 	"strings"
 	"testing"
+	"time"
 
 	"slantwise/cmd/internal/planfiles"
+	"slantwise/cmd/internal/scenario"
+	"slantwise/downlink/contacts"
 )
 
 const threeWindows = `request,spacecraft,station,antenna,window_start_utc,window_end_utc,minimum_s,desired_s,setup_s,teardown_s,value_per_s
@@ -16,7 +20,7 @@ r2,S2,G,A,2026-03-10T00:00:00Z,2026-03-10T00:12:00Z,60,600,120,30,2
 r3,S1,H,B,2026-03-10T00:00:00Z,2026-03-10T00:12:00Z,60,300,120,30,2.5
 `
 
-func writeFiles(t *testing.T, files map[string]string) {
+func writeInto(t *testing.T, files map[string]string) {
 	t.Helper()
 	t.Chdir(t.TempDir())
 	for name, text := range files {
@@ -29,7 +33,7 @@ func writeFiles(t *testing.T, files map[string]string) {
 // The three requests hinder each other only by antenna A, free for r1 after 00:12:30, and
 // by S1: all get what they desire, 600 + 1200 + 750 (by hand).
 func TestContactsWindows(t *testing.T) {
-	writeFiles(t, map[string]string{"w.csv": threeWindows})
+	writeInto(t, map[string]string{"w.csv": threeWindows})
 	code, out, errOut := invoke(t, "contacts", "--windows", "w.csv", "--format", "json")
 	if code != ExitAnswer {
 		t.Fatalf("%d %s", code, errOut)
@@ -64,7 +68,7 @@ func TestContactsWindows(t *testing.T) {
 // A plan by hand in which antenna A is not torn down and set up between r2 and r1, and S1
 // is at two stations at a time.
 func TestContactsVerifyFinds(t *testing.T) {
-	writeFiles(t, map[string]string{"w.csv": threeWindows, "plan.csv": `request,station,antenna,spacecraft,start_utc,end_utc
+	writeInto(t, map[string]string{"w.csv": threeWindows, "plan.csv": `request,station,antenna,spacecraft,start_utc,end_utc
 r2,G,A,S2,2026-03-10T00:00:00Z,2026-03-10T00:10:00Z
 r1,G,A,S1,2026-03-10T00:11:00Z,2026-03-10T00:21:00Z
 r3,H,B,S1,2026-03-10T00:07:00Z,2026-03-10T00:12:00Z
@@ -82,7 +86,7 @@ r3,H,B,S1,2026-03-10T00:07:00Z,2026-03-10T00:12:00Z
 
 func TestContactsFaults(t *testing.T) {
 	swap := func(old, now string) string { return strings.Replace(threeWindows, old, now, 1) }
-	const scenario = `window: {start_utc: 2026-03-10T00:00:00Z, length_h: 1}
+	const rules = `window: {start_utc: 2026-03-10T00:00:00Z, length_h: 1}
 stations: [{name: G, latitude_deg: 55, longitude_deg: -4, altitude_m: 100, minimum_elevation_deg: 5, antennas: [{name: A, kind: dish, gain_dbi: 30, beamwidth_deg: 3, g_over_t_db_k: 10}]}]
 spacecraft: [{name: S1, transmitters: [{name: X, frequency_mhz: 8200, eirp_dbw: 3}]}]
 contact_plan: {setup_s: 0, teardown_s: 0, budget: 0, stations: [{name: G, antennas: [{name: A, price_per_contact: 5}]}]}
@@ -104,12 +108,12 @@ contact_plan: {setup_s: 0, teardown_s: 0, budget: 0, stations: [{name: G, antenn
 		{"fixed contradict", map[string]string{"w.csv": threeWindows, "f.csv": head + "G,A,S2,r2,2026-03-10T00:00:00Z,2026-03-10T00:10:00Z,true\nG,A,S1,r1,2026-03-10T00:05:00Z,2026-03-10T00:15:00Z,true\n"},
 			[]string{"--in-force", "f.csv"}, ExitInput, []string{"f.csv", `"r2 G A`, `"r1 G A`, "contradict each other", `antenna "A" serves one at a time`}},
 		{"nothing can serve", map[string]string{"w.csv": threeWindows, "o.csv": "station,start_utc,end_utc,reason\nH,2026-03-10T00:00:00Z,2026-03-10T00:08:00Z,a\nH,2026-03-10T00:05:00Z,2026-03-10T01:00:00Z,b\n"}, []string{"--closed", "o.csv"}, ExitAnswer, []string{`request "r3" cannot be served: closed times`}},
-		{"a budget of zero", map[string]string{"w.csv": threeWindows, "s.yaml": scenario}, []string{"--scenario", "s.yaml"}, ExitAnswer, []string{"budget: 0: only contacts without a price can be taken", "value 750"}},
+		{"a budget of zero", map[string]string{"w.csv": threeWindows, "s.yaml": rules}, []string{"--scenario", "s.yaml"}, ExitAnswer, []string{"budget: 0: only contacts without a price can be taken", "value 750"}},
 		{"a window alone", map[string]string{"w.csv": threeWindows, "s.yaml": "window: {start_utc: 2026-03-10T00:00:00Z, length_h: 1}\n"}, []string{"--scenario", "s.yaml"}, ExitAnswer, []string{"value 2550"}},
 		{"iterations", map[string]string{"w.csv": threeWindows}, []string{"--iterations", "-1"}, ExitInput, []string{"--iterations: -1 is not allowed"}},
 	} {
 		t.Run(tt.name, func(t *testing.T) {
-			writeFiles(t, tt.files)
+			writeInto(t, tt.files)
 			code, _, errOut := invoke(t, append([]string{"contacts", "--windows", "w.csv"}, tt.args...)...)
 			if code != tt.code {
 				t.Errorf("code %d, want %d", code, tt.code)
@@ -120,6 +124,97 @@ contact_plan: {setup_s: 0, teardown_s: 0, budget: 0, stations: [{name: G, antenn
 				}
 			}
 		})
+	}
+}
+
+// At 00:05 r2 is under way and stays; H is closed for the rest, so that r3 is dropped and
+// nothing new begins before then. The calendar keeps what it said of r1 and r2 and tells
+// that r3 is off.
+func TestContactsAgain(t *testing.T) {
+	writeInto(t, map[string]string{"w.csv": threeWindows, "o.csv": "station,start_utc,end_utc\nH,2026-03-10T00:05:00Z,2026-03-10T01:00:00Z\n"})
+	run := func(args ...string) string {
+		t.Helper()
+		code, out, errOut := invoke(t, append([]string{"contacts", "--windows", "w.csv", "--format", "json", "--calendar", "p.ics", "--calendars", "all"}, args...)...)
+		if code != ExitAnswer {
+			t.Fatalf("%d %s", code, errOut)
+		}
+		return out
+	}
+	run("--save", "first.csv")
+	out := run("--in-force", "first.csv", "--now", "2026-03-10T00:05:00Z", "--closed", "o.csv", "--save", "second.csv")
+	var got struct {
+		Value    float64
+		Contacts []struct {
+			Request string
+			Start   string `json:"start_utc"`
+			Fixed   bool
+		}
+		Changes []struct{ Kind, Request string }
+	}
+	if err := json.Unmarshal([]byte(out), &got); err != nil {
+		t.Fatal(err)
+	}
+	if got.Value != 1800 || len(got.Contacts) != 2 || !got.Contacts[0].Fixed || got.Contacts[0].Request != "r2" || got.Contacts[1].Fixed {
+		t.Errorf("%+v", got)
+	}
+	kinds := map[string]string{}
+	for _, c := range got.Changes {
+		kinds[c.Request] = c.Kind
+	}
+	if kinds["r1"] != "kept" || kinds["r2"] != "kept" || kinds["r3"] != "dropped" {
+		t.Errorf("%+v", kinds)
+	}
+	for _, file := range []string{"p.ics", "all/H_S1.ics"} {
+		text, err := os.ReadFile(file)
+		if err != nil || strings.Count(string(text), "STATUS:CANCELLED") != 1 || !strings.Contains(string(text), "SEQUENCE:1\r\n") {
+			t.Errorf("%s: %v\n%s", file, err, text)
+		}
+	}
+	code, out, errOut := invoke(t, "contacts", "compare", "first.csv", "second.csv", "--changed", "--format", "csv")
+	if code != ExitAnswer || strings.Count(out, "\n") != 2 || !strings.Contains(out, "\ndropped,r3,S1,H,B,") || !strings.Contains(errOut, "2 kept, 0 moved, 1 dropped, 0 added") {
+		t.Errorf("%d %s %s", code, out, errOut)
+	}
+}
+
+// r1 cannot have the first minutes: r2 has the antenna. Where r3 is not in the plan it can
+// be added for nothing.
+func TestContactsExplain(t *testing.T) {
+	writeInto(t, map[string]string{"w.csv": threeWindows, "plan.csv": `request,station,antenna,spacecraft,start_utc,end_utc
+r2,G,A,S2,2026-03-10T00:00:00Z,2026-03-10T00:10:00Z
+r1,G,A,S1,2026-03-10T00:20:00Z,2026-03-10T00:30:00Z
+`})
+	code, out, errOut := invoke(t, "contacts", "explain", "plan.csv", "--windows", "w.csv", "--format", "csv")
+	if code != ExitAnswer || strings.Count(out, "\n") != 2 || !strings.Contains(out, "\nr3 H B 2026-03-10T00:00:00Z,yes,750,-750,") {
+		t.Errorf("%d %s %s", code, out, errOut)
+	}
+}
+
+// A shift from 22:00 to 06:00 over the night of 28 to 29 March 2026 in London lasts seven
+// hours, since clocks go forward at 01:00 UTC (tz database); the next one lasts eight. On the
+// other side of the date line, Kiritimati, UTC+14, has Sunday from Saturday 10:00 UTC.
+func TestShifts(t *testing.T) {
+	zone := func(name string) *time.Location {
+		z, err := time.LoadLocation(name)
+		if err != nil {
+			t.Fatal(err)
+		}
+		return z
+	}
+	p := &contacts.Problem{Start: time.Date(2026, 3, 28, 12, 0, 0, 0, time.UTC), Length: 48 * contacts.Hour}
+	night := []scenario.Shift{{From: 22 * time.Hour, To: 6 * time.Hour}}
+	var got []contacts.Span
+	for _, s := range staffed(p, night, zone("Europe/London")) {
+		if s.From >= 0 {
+			got = append(got, s)
+		}
+	}
+	want := []contacts.Span{{From: 10 * contacts.Hour, To: 17 * contacts.Hour}, {From: 33 * contacts.Hour, To: 41 * contacts.Hour}}
+	if !slices.Equal(got, want) {
+		t.Errorf("London: %v, want %v", got, want)
+	}
+	sunday := []scenario.Shift{{Days: []time.Weekday{time.Sunday}, To: 24 * time.Hour}}
+	if got := staffed(p, sunday, zone("Pacific/Kiritimati")); !slices.Equal(got, []contacts.Span{{From: -2 * contacts.Hour, To: 22 * contacts.Hour}}) {
+		t.Errorf("Kiritimati: %v", got)
 	}
 }
 
@@ -136,7 +231,7 @@ func TestContactsSchema(t *testing.T) {
 	if err := json.Unmarshal([]byte(out), &schema); err != nil || code != ExitAnswer {
 		t.Fatal(code, err)
 	}
-	writeFiles(t, map[string]string{"w.csv": threeWindows})
+	writeInto(t, map[string]string{"w.csv": threeWindows})
 	_, out, _ = invoke(t, "contacts", "--windows", "w.csv", "--format", "json")
 	var answer map[string]any
 	if err := json.Unmarshal([]byte(out), &answer); err != nil {

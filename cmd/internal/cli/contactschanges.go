@@ -25,6 +25,43 @@ func (f *forcePlan) start() *contacts.Plan {
 	return &f.carried
 }
 
+// keepPast lets no new contact begin before the instant of planning, where that lies in
+// the window, and lets outages close what is still to come.
+func (p *planProblem) keepPast() {
+	if p.Now <= 0 {
+		return
+	}
+	coming := func(spans []contacts.Span) (out []contacts.Span) {
+		for _, s := range spans {
+			if s.From = max(s.From, p.Now); s.Length() > 0 {
+				out = append(out, s)
+			}
+		}
+		return out
+	}
+	for i := range p.Stations {
+		p.Stations[i].Lead = max(p.Stations[i].Lead, 1)
+		p.Stations[i].Closed = coming(p.Stations[i].Closed)
+	}
+	for i := range p.Antennas {
+		p.Antennas[i].Closed = coming(p.Antennas[i].Closed)
+	}
+	for i := range p.Spacecraft {
+		p.Spacecraft[i].Closed = coming(p.Spacecraft[i].Closed)
+	}
+}
+
+// breakOff gives up what is under way and cannot go on, since something has closed.
+func (p *planProblem) breakOff() {
+	p.Held = slices.DeleteFunc(p.Held, func(c contacts.Contact) bool {
+		stops := p.Busy(c).From <= p.Now && p.Busy(c).To > p.Now && !p.Stands(c)
+		if stops {
+			p.note("%s is under way and cannot go on: what it needs is closed", p.Candidates[c.Candidate].Name)
+		}
+		return stops
+	})
+}
+
 // carry takes the plan of a file into the problem: what is fixed or under way is held,
 // every change of the rest has its price. Without a file there is none.
 func (p *planProblem) carry(file string) (*forcePlan, error) {
@@ -42,6 +79,7 @@ func (p *planProblem) carry(file string) (*forcePlan, error) {
 	for _, lost := range change.Carry(old, plan, p.Problem) {
 		p.note("%s cannot stay: %s", lost.Name, lost.Why)
 	}
+	p.breakOff()
 	if err := p.Check(); err != nil {
 		return nil, &InputError{Err: fmt.Errorf("with the plan of %s: %w", file, err)}
 	}

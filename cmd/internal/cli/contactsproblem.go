@@ -167,7 +167,7 @@ func staffed(p *contacts.Problem, shifts []scenario.Shift, zone *time.Location) 
 			if s.To <= s.From {
 				end++
 			}
-			if span := (contacts.Span{From: at(day, s.From), To: at(end, s.To)}); span.Length() > 0 {
+			if span := (contacts.Span{From: at(day, s.From), To: at(end, s.To)}); span.Length() > 0 && span.From < p.Length {
 				out = append(out, span)
 			}
 		}

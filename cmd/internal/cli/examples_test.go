@@ -63,9 +63,17 @@ func prepareExample(t *testing.T, command string) {
 			t.Fatal(errOut)
 		}
 	}
-	if command == "verify" || command == "explain" {
+	switch command {
+	case "contacts", "verify", "explain":
 		if code, _, errOut := invoke(t, "contacts", "--iterations", "1", "--save", "plan.csv"); code != ExitAnswer {
 			t.Fatal(errOut)
+		}
+	case "compare":
+		if err := os.WriteFile("plan.csv", []byte(samplePlan), 0o600); err != nil {
+			t.Fatal(err)
+		}
+		if err := os.Link("plan.csv", "later.csv"); err != nil {
+			t.Fatal(err)
 		}
 	}
 	if err := os.WriteFile("positions.csv", []byte(samplePositions), 0o600); err != nil {
@@ -77,6 +85,9 @@ func prepareExample(t *testing.T, command string) {
 		t.Fatal(err)
 	}
 }
+
+// samplePlan is a plan by hand.
+const samplePlan = "station,antenna,spacecraft,start_utc,end_utc\nG,A,S,2026-03-10T00:00:00Z,2026-03-10T00:10:00Z\n"
 
 // words splits a line as a shell does, as far as the examples need it: at blanks, not
 // within double quotes, up to a comment or a redirection.
