@@ -27,7 +27,8 @@ var assured = []float64{0.5, 0.8, 0.9, 0.95, 0.99}
 
 // Chance asks about a dish, and for the diameters of some probabilities. The deviation
 // of the table is taken as one for all links and the whole year: what was bought.
-func (s *Study) Chance(of *tolerance.Chance, d unit.Length, r Range) (*Chance, error) {
+// Progress is told how much of the work is done; nil: nobody asks.
+func (s *Study) Chance(of *tolerance.Chance, d unit.Length, r Range, progress func(done, total int)) (*Chance, error) {
 	needs := s.spec.Needs.List()
 	slack, err := s.Slack(needs, Variant{Diameter: d})
 	if err != nil {
@@ -47,7 +48,10 @@ func (s *Study) Chance(of *tolerance.Chance, d unit.Length, r Range) (*Chance, e
 			r.Low = half
 		}
 	}
-	for _, p := range assured {
+	for i, p := range assured {
+		if progress != nil {
+			progress(1+i, 1+len(assured))
+		}
 		f, err := s.LeastOf(needs, r, Variant{Power: unit.DB(math.Round(of.Reached(p)*1e4) / 1e4)})
 		if err != nil {
 			return nil, err

@@ -42,9 +42,16 @@ func (f *Flight) Turns(sites []int) []Turn {
 	return out
 }
 
-// sampled returns one of so many turns, spread over the year by the golden section so
-// that no rhythm of the passes catches it, and by site how many times the seconds of
-// those stand for all. All turns for 0 and 1.
+// stands tells whether the i-th pass stands for one of so many, spread over the year by
+// the golden section so that no rhythm of the passes catches it; all do for 0 and 1.
+func stands(i, oneOf int) bool {
+	const golden = 0.6180339887498949
+	_, part := math.Modf(float64(i) * golden)
+	return part*float64(oneOf) < 1 || oneOf <= 1
+}
+
+// sampled returns the turns that stand for one of so many, and by site how many times
+// their seconds stand for all.
 func (s *Study) sampled(oneOf int) (turns []Turn, weight []float64) {
 	weight = make([]float64, len(s.sites))
 	if oneOf <= 1 {
@@ -53,7 +60,6 @@ func (s *Study) sampled(oneOf int) (turns []Turn, weight []float64) {
 		}
 		return s.turns, weight
 	}
-	const golden = 0.6180339887498949
 	all, some := make([]float64, len(s.sites)), make([]float64, len(s.sites))
 	seen := make([]int, len(s.sites))
 	for _, t := range s.turns {
@@ -61,7 +67,7 @@ func (s *Study) sampled(oneOf int) (turns []Turn, weight []float64) {
 		_, to := y.Samples(t.Pass)
 		seconds := y.Seconds[to-1] - y.Seconds[t.From]
 		all[t.Site] += seconds
-		if _, part := math.Modf(float64(seen[t.Site]) * golden); part*float64(oneOf) < 1 {
+		if stands(seen[t.Site], oneOf) {
 			some[t.Site] += seconds
 			turns = append(turns, t)
 		}

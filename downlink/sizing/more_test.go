@@ -55,7 +55,7 @@ func TestChance(t *testing.T) {
 	if err != nil {
 		t.Fatal(err)
 	}
-	got, err := s.Chance(table, f.Diameter, r)
+	got, err := s.Chance(table, f.Diameter, r, nil)
 	if err != nil {
 		t.Fatal(err)
 	}
@@ -88,7 +88,7 @@ func TestSensitivities(t *testing.T) {
 	if err != nil {
 		t.Fatal(err)
 	}
-	list, err := s.Sensitivities(f.Diameter, r)
+	list, err := s.Sensitivities(f.Diameter, r, nil)
 	if err != nil {
 		t.Fatal(err)
 	}

@@ -30,14 +30,17 @@ var changes = []struct {
 
 // Sensitivities changes one thing after the other at a diameter, the dearest first by
 // the bytes. Without requirements the diameters are NaN.
-func (s *Study) Sensitivities(d unit.Length, r Range) ([]Sensitivity, error) {
+func (s *Study) Sensitivities(d unit.Length, r Range, progress func(done, total int)) ([]Sensitivity, error) {
 	base, err := s.Outcome(Variant{Diameter: d})
 	if err != nil {
 		return nil, err
 	}
 	needs := s.spec.Needs.List()
 	var out []Sensitivity
-	for _, c := range changes {
+	for i, c := range changes {
+		if progress != nil {
+			progress(i, len(changes))
+		}
 		v := Variant{Diameter: d}
 		c.apply(&v)
 		o, err := s.outcome(v, planned)

@@ -130,13 +130,13 @@ func (d *dishStudy) sheet(ctx context.Context, env *Env, a *sizing.Answer, show 
 		}
 		return mapSheet(p), nil
 	case "sensitivities":
-		list, err := d.study.Sensitivities(d.chosen(a, o.diameter), d.sizing.Range)
+		list, err := d.sensitivities(env, a, o.diameter)
 		if err != nil {
-			return nil, &InputError{Err: err}
+			return nil, err
 		}
 		return sensitivitySheet(list), nil
 	case "chances":
-		c, err := d.chance(a, o.diameter)
+		c, err := d.chance(env, a, o.diameter)
 		if err != nil {
 			return nil, err
 		}

@@ -25,6 +25,17 @@ func (d *dishStudy) chosen(a *sizing.Answer, asked *float64) unit.Length {
 	return d.sizing.Range.High
 }
 
+// sensitivities changes one thing after the other.
+func (d *dishStudy) sensitivities(env *Env, a *sizing.Answer, asked *float64) ([]sizing.Sensitivity, error) {
+	bar := env.startShares("sensitivities")
+	defer bar.stop()
+	list, err := d.study.Sensitivities(d.chosen(a, asked), d.sizing.Range, bar.tell)
+	if err != nil {
+		return nil, &InputError{Err: err}
+	}
+	return list, nil
+}
+
 // sensitivitySheet is the sensitivities, the dearest first.
 func sensitivitySheet(list []sizing.Sensitivity) *sheet {
 	out := &sheet{name: "sensitivities", columns: []sheetColumn{
@@ -125,12 +136,14 @@ func (d *dishStudy) tolerances() (*tolerance.Chance, error) {
 	return c, nil
 }
 
-func (d *dishStudy) chance(a *sizing.Answer, asked *float64) (*sizing.Chance, error) {
+func (d *dishStudy) chance(env *Env, a *sizing.Answer, asked *float64) (*sizing.Chance, error) {
 	of, err := d.tolerances()
 	if err != nil || of == nil || len(a.Verdicts) == 0 {
 		return nil, err
 	}
-	c, err := d.study.Chance(of, d.chosen(a, asked), d.sizing.Range)
+	bar := env.startShares("probabilities")
+	defer bar.stop()
+	c, err := d.study.Chance(of, d.chosen(a, asked), d.sizing.Range, bar.tell)
 	if err != nil {
 		return nil, &InputError{Err: err}
 	}

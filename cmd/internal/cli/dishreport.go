@@ -36,10 +36,10 @@ func writeDishReport(ctx context.Context, env *Env, d *dishStudy, a *sizing.Answ
 		r.planes = append(r.planes, p)
 	}
 	var err error
-	if r.sensitivities, err = d.study.Sensitivities(d.chosen(a, o.diameter), d.sizing.Range); err != nil {
-		return &InputError{Err: err}
+	if r.sensitivities, err = d.sensitivities(env, a, o.diameter); err != nil {
+		return err
 	}
-	if r.chance, err = d.chance(a, o.diameter); err != nil {
+	if r.chance, err = d.chance(env, a, o.diameter); err != nil {
 		return err
 	}
 	if len(a.Verdicts) > 0 {
