@@ -14,6 +14,7 @@ func completeFlags(cmd *cobra.Command, env *Env) {
 		"convert":        elementKinds(),
 		"notation":       {"kvn", "xml"},
 		"sort":           passOrders,
+		"axis":           {"power", "elevation", "noise", "frequency"},
 		"horizon":        {"geometric", "apparent"},
 		"locked":         lockedWords,
 		"element-choice": {"newest", "nearest"},
