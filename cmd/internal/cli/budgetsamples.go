@@ -101,10 +101,7 @@ func budgetAt(s *scenario.Scenario, c *chosenLink, at time.Time) (*budgetResult,
 	r := newBudgetResult(s, c, true)
 	end := at.Add(time.Second)
 	r.setOrbit(s.ElementsOver(c.spacecraft, at, end), at)
-	eph, err := s.Ephemeris(c.spacecraft, at, end, nil)
-	if err == nil {
-		err = eph.Whole(at, at)
-	}
+	eph, err := s.EphemerisAt(c.spacecraft, at, at)
 	if err != nil {
 		return nil, &InputError{Err: fmt.Errorf("spacecraft %s: %w", c.spacecraft.Name, err)}
 	}
@@ -126,6 +123,9 @@ const mostBudgets = 200_000
 func budgetOfPass(s *scenario.Scenario, c *chosenLink, at time.Time, step time.Duration) (*budgetResult, error) {
 	r := newBudgetResult(s, c, true)
 	eph, err := s.Ephemeris(c.spacecraft, s.Window.Start, s.Window.End, nil)
+	if ended(err) {
+		return r, nil // no passes, and the scenario's warning says why
+	}
 	if err != nil {
 		return nil, &InputError{Err: fmt.Errorf("spacecraft %s: %w", c.spacecraft.Name, err)}
 	}

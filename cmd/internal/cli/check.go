@@ -52,6 +52,9 @@ func fly(s *scenario.Scenario) error {
 	var faults []error
 	for _, c := range s.Spacecraft {
 		e, err := s.Ephemeris(&c, s.Window.Start, s.Window.End, nil)
+		if ended(err) {
+			continue // the scenario warns of it
+		}
 		if err != nil {
 			faults = append(faults, fmt.Errorf("spacecraft %s: %w", c.Name, err))
 			continue

@@ -118,6 +118,9 @@ func licensedAt(s *scenario.Scenario, c *chosenLink, g, later downlink.Geometry,
 	if len(licences) == 0 {
 		return nil, nil
 	}
+	if seconds == 0 { // the orbit ends here: where it stands says enough
+		later, seconds = g, 1
+	}
 	course := licence.Course{
 		Start: g.Time, Seconds: []float64{0, seconds},
 		AzimuthDeg:   []float64{g.Azimuth.Degrees(), later.Azimuth.Degrees()},

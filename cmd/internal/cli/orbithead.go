@@ -1,6 +1,7 @@
 package cli
 
 import (
+	"errors"
 	"fmt"
 	"math"
 	"path/filepath"
@@ -80,4 +81,11 @@ func (h *orbitHead) json(decimals int) *orbitJSON {
 		out.FromUTC, out.ToUTC = text(h.from), text(h.to)
 	}
 	return out
+}
+
+// ended tells whether an orbit was given up, by the scenario's own word, before the time
+// asked for: that is an answer, no fault.
+func ended(err error) bool {
+	var e *scenario.EndedError
+	return errors.As(err, &e)
 }

@@ -154,6 +154,9 @@ func (p *passSearch) search(ctx context.Context, env *Env, s *scenario.Scenario,
 		Spacecraft: len(p.spacecraft),
 		Ephemeris: func(i int, scratch *orbit.Ephemeris) (*orbit.Ephemeris, error) {
 			e, err := s.Ephemeris(&p.spacecraft[i], p.window.From, p.window.To, scratch)
+			if ended(err) {
+				return nil, nil // no passes, and the scenario's warning says why
+			}
 			if err != nil {
 				faults[i] = err
 				return nil, nil

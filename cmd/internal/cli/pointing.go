@@ -182,11 +182,7 @@ func newPointingRows(s *scenario.Scenario, o pointingOptions) (*pointing, error)
 	}
 	end := o.to.Add(time.Second) // a span of no length has no knots to look between
 	p.elements = s.ElementsOver(p.spacecraft, o.from, end)
-	p.ephemeris, err = s.Ephemeris(p.spacecraft, o.from, end, nil)
-	if err == nil {
-		err = p.ephemeris.Whole(o.from, o.to)
-	}
-	if err != nil {
+	if p.ephemeris, err = s.EphemerisAt(p.spacecraft, o.from, o.to); err != nil {
 		return nil, &InputError{Err: fmt.Errorf("spacecraft %s: %w", p.spacecraft.Name, err)}
 	}
 	return p, nil

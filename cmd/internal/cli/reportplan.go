@@ -108,6 +108,9 @@ func (p *reportPlan) fly() error {
 	for i := range p.craft {
 		c := &p.craft[i]
 		e, err := p.scenario.Ephemeris(c.Spacecraft, w.Start, w.End, nil)
+		if ended(err) {
+			continue // no passes, and the scenario's warning says why
+		}
 		if err != nil {
 			faults = append(faults, fmt.Errorf("spacecraft %s: %w", c.Name, err))
 			continue

@@ -219,6 +219,9 @@ func shiftCourse(eph *orbit.Ephemeris, st *scenario.Station, carrier *tunedCarri
 // passesOver flies a spacecraft through the window and finds its passes over a station.
 func passesOver(s *scenario.Scenario, craft *scenario.Spacecraft, st *scenario.Station) (*orbit.Ephemeris, []pass.Pass, error) {
 	eph, err := s.Ephemeris(craft, s.Window.Start, s.Window.End, nil)
+	if ended(err) {
+		return nil, nil, nil // no passes, and the scenario's warning says why
+	}
 	if err != nil {
 		return nil, nil, &InputError{Err: fmt.Errorf("spacecraft %s: %w", craft.Name, err)}
 	}
