@@ -59,7 +59,7 @@ changes cost what the scenario's weights say, and the changes are listed.
 Exit codes beside those of slantwise --help: contacts verify gives 1 where the plan breaks
 a rule.`,
 		Example: `  slantwise contacts --iterations 10
-  slantwise contacts --iterations 10 --save plan.csv --calendar plan.ics --pointing pointing
+  slantwise contacts --iterations 10 --save plan.csv --calendar plan.ics --page plan.html
   slantwise contacts --iterations 10 --now 2026-09-15T12:00:00Z --in-force plan.csv --save later.csv`,
 		Args: noArgs,
 		RunE: func(cmd *cobra.Command, _ []string) error { return runContacts(cmd.Context(), env, &o) },
@@ -90,7 +90,7 @@ a rule.`,
 }
 
 func runContacts(ctx context.Context, env *Env, o *contactsOptions) error {
-	began := time.Now()
+	began, whole := time.Now(), ctx
 	p, err := o.problem(ctx, env)
 	if err != nil {
 		return err
@@ -120,7 +120,7 @@ func runContacts(ctx context.Context, env *Env, o *contactsOptions) error {
 		env.note("stopped: the plan is the best one so far, whole")
 	}
 	a := newPlanAnswer(p, &result, force)
-	if err := a.writeFiles(context.WithoutCancel(ctx), &o.files); err != nil {
+	if err := a.writeFiles(whole, &o.files); err != nil {
 		return err
 	}
 	return a.write(env, o.format)

@@ -189,6 +189,60 @@ r1,G,A,S1,2026-03-10T00:20:00Z,2026-03-10T00:30:00Z
 	}
 }
 
+// The page, and beside it the plan as CSV and all numbers as JSON, from the demo; twice the
+// same bytes. The plan's rows as the recorder and the page count them add up to the plan's
+// own bytes.
+func TestContactsPage(t *testing.T) {
+	writeInto(t, nil)
+	for _, name := range []string{"a.html", "b.html"} {
+		if code, _, errOut := invoke(t, "contacts", "--iterations", "3", "--page", name, "--pointing", "pointing"); code != ExitAnswer {
+			t.Fatal(errOut)
+		}
+	}
+	read := func(name string) string {
+		text, err := os.ReadFile(name)
+		if err != nil {
+			t.Fatal(err)
+		}
+		return string(text)
+	}
+	same := strings.NewReplacer("a.csv", "b.csv", "a.json", "b.json").Replace(read("a.html")) == read("b.html")
+	if !same || read("a.json") != read("b.json") {
+		t.Error("two runs differ")
+	}
+	var got struct {
+		Worth    struct{ Bytes float64 }
+		Contacts []struct{ Contact string }
+		Windows  []struct{ Why string } `json:"windows_not_taken"`
+		Volumes  []struct{ Bytes float64 }
+		Recorder []struct {
+			Points []struct {
+				Stored float64 `json:"stored_bytes"`
+			}
+		} `json:"recorders"`
+	}
+	if err := json.Unmarshal([]byte(read("a.json")), &got); err != nil {
+		t.Fatal(err)
+	}
+	sum := 0.0
+	for _, v := range got.Volumes {
+		sum += v.Bytes
+	}
+	if d := sum - got.Worth.Bytes; d < -1 || d > 1 || sum == 0 { // 1 B of some 200 GB: rows are written to 1 mB
+		t.Errorf("volumes add up to %f B, the plan has %f B", sum, got.Worth.Bytes)
+	}
+	if len(got.Recorder) != 1 || len(got.Recorder[0].Points) < 10 || len(got.Windows) == 0 || got.Windows[0].Why == "" {
+		t.Errorf("%+v", got)
+	}
+	files, err := os.ReadDir("pointing")
+	if err != nil || len(files) != len(got.Contacts) { // in the demo every contact has one link
+		t.Errorf("%v: %d pointing files for %d contacts", err, len(files), len(got.Contacts))
+	}
+	if head, _, _ := strings.Cut(read("pointing/"+files[0].Name()), "\n"); head != strings.Join(pointingColumns, ",") {
+		t.Errorf("columns %s", head)
+	}
+}
+
 // A shift from 22:00 to 06:00 over the night of 28 to 29 March 2026 in London lasts seven
 // hours, since clocks go forward at 01:00 UTC (tz database); the next one lasts eight. On the
 // other side of the date line, Kiritimati, UTC+14, has Sunday from Saturday 10:00 UTC.

@@ -16,13 +16,14 @@ import (
 
 // planOutputs are the files that a plan is written to beside standard output.
 type planOutputs struct {
-	save, calendar, calendars, pointing string
+	save, calendar, calendars, pointing, page string
 }
 
 func (f *planOutputs) add(fs *pflag.FlagSet) {
 	fs.StringVar(&f.save, "save", "", "CSV `FILE` to write the plan to, too")
 	fs.StringVar(&f.calendar, "calendar", "", "iCalendar `FILE` to write; one that is there is revised: events keep their UID, dropped ones are cancelled")
 	fs.StringVar(&f.calendars, "calendars", "", "`FOLDER` of calendars to write or revise, one for each station and spacecraft")
+	fs.StringVar(&f.page, "page", "", "HTML `FILE` to write the plan to over time, with a CSV and a JSON file of its numbers beside it")
 	fs.StringVar(&f.pointing, "pointing", "", "`FOLDER` to write a pointing file for each contact to, a row a second")
 }
 
@@ -45,8 +46,13 @@ func (a *planAnswer) writeFiles(ctx context.Context, f *planOutputs) error {
 			return err
 		}
 	}
+	if f.page != "" {
+		if err := a.writePage(ctx, f.page); err != nil {
+			return err
+		}
+	}
 	if f.pointing != "" {
-		return a.writePointing(ctx, f.pointing)
+		return a.writePointing(context.WithoutCancel(ctx), f.pointing)
 	}
 	return nil
 }
