@@ -71,7 +71,7 @@ func smallCases() uint64 {
 	if testing.Short() {
 		return 300
 	}
-	return 1500
+	return 1000
 }
 
 func TestAgainstEveryPlan(t *testing.T) {

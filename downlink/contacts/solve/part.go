@@ -87,14 +87,9 @@ func (g *grid) evaluateNode(n *node, prices []float64) (answer, bool) {
 		c := g.clusterOf(x.window)
 		inCluster[c] = append(inCluster[c], k)
 	}
-	bonus := 1.0
-	for i := range g.d.m.windows {
-		bonus += math.Abs(g.d.base[i])
-	}
-	bonus += 4 * math.Abs(n.bound)
 	a := answer{value: g.d.constant, usage: make([]float64, len(g.d.rows))}
 	for c, parts := range inCluster {
-		if !g.solveParts(w, &g.clusters[c], n, parts, prices, bonus, &a) {
+		if !g.solveParts(w, &g.clusters[c], n, parts, prices, &a) {
 			return a, false
 		}
 	}
@@ -125,8 +120,9 @@ func (g *grid) clusterOf(window int) int {
 	return g.home[window]
 }
 
-// solveParts solves a chain of parts; forced ones gain a bonus that outweighs all else.
-func (g *grid) solveParts(w *worker, c *cluster, n *node, parts []int, prices []float64, bonus float64, a *answer) bool {
+// solveParts solves a chain of parts; forced ones gain a bonus that outweighs all that
+// contacts can gain or lose at these prices, however high they are.
+func (g *grid) solveParts(w *worker, c *cluster, n *node, parts []int, prices []float64, a *answer) bool {
 	base := floor(c.origin, g.cell)
 	w.slots = w.slots[:0]
 	order := slices.Clone(parts)
@@ -138,7 +134,7 @@ func (g *grid) solveParts(w *worker, c *cluster, n *node, parts []int, prices []
 	if len(w.gains) < size {
 		w.gains = make([]float64, size)
 	}
-	at, forced := 0, 0
+	at, bonus := 0, 1.0
 	for _, k := range order {
 		x := &n.parts[k]
 		win := &g.d.m.windows[x.window]
@@ -147,14 +143,17 @@ func (g *grid) solveParts(w *worker, c *cluster, n *node, parts []int, prices []
 		least, most := g.lengths(win)
 		s := slot{from: int(from - base), to: int(to - base), least: int(least / g.cell), most: int(most / g.cell),
 			setUp: int(win.setUp / g.cell), tearDown: int(win.tearDown / g.cell), fixed: g.d.once(x.window, prices)}
-		if x.forced {
-			s.fixed -= bonus
-			forced++
-		}
 		s.begin, s.end = w.gains[at:at+cells], w.gains[at+cells:at+2*cells]
 		at += 2 * cells
-		g.d.partGains(win, x, prices, g.cell, s.begin, s.end)
+		bonus += 2 * (g.d.partGains(win, x, prices, g.cell, s.begin, s.end) + math.Abs(s.fixed)) * float64(1+cells/s.least)
 		w.slots = append(w.slots, s)
+	}
+	forced := 0
+	for i, k := range order {
+		if n.parts[k].forced {
+			w.slots[i].fixed -= bonus
+			forced++
+		}
 	}
 	value, picks := w.chain.run(w.slots, c.cells)
 	taken := map[int]bool{}
@@ -172,10 +171,12 @@ func (g *grid) solveParts(w *worker, c *cluster, n *node, parts []int, prices []
 	return true
 }
 
-// partGains fills in the gains of a part: begins after b1 and ends before e0 are barred.
-func (d *dual) partGains(w *window, x *part, prices []float64, cell ms, begin, end []float64) {
+// partGains fills in the gains of a part: begins after b1 and ends before e0 are barred. It
+// returns by how much gains differ.
+func (d *dual) partGains(w *window, x *part, prices []float64, cell ms, begin, end []float64) (span float64) {
 	d.cumulative(w, x.window, prices, x.b0/cell, len(begin)-1, cell, begin[:0])
 	copy(end, begin)
+	span = slices.Max(begin) - slices.Min(begin)
 	for i := range begin {
 		t := x.b0 + ms(i)*cell
 		if t > x.b1 {
@@ -185,4 +186,5 @@ func (d *dual) partGains(w *window, x *part, prices []float64, cell ms, begin, e
 			end[i] = math.Inf(-1)
 		}
 	}
+	return span
 }

@@ -48,13 +48,15 @@ func newTree(d *dual, prices []float64, bound float64) *tree {
 
 // keepsToTimes tells whether some best plan begins and ends contacts only at sums of the
 // problem's own times: where nothing but the order on antennas and spacecraft ties
-// contacts, times are the solution of a network flow's dual, which is whole.
+// contacts, times are the solution of a network flow's dual, which is whole. A limit by
+// days is not of that kind: a contact may begin just before midnight.
 func (m *model) keepsToTimes() bool {
 	if m.split || len(m.p.InForce) > 0 {
 		return false
 	}
 	for k := range m.p.Limits {
-		if m.p.Limits[k].Contacts == nil || m.p.Limits[k].Time != nil || m.p.Limits[k].Price != nil {
+		l := &m.p.Limits[k]
+		if l.Time != nil || l.Price != nil || l.Rolling > 0 || len(l.Spans) > 0 {
 			return false
 		}
 	}
