@@ -42,7 +42,7 @@ func (s *search) begin(plan contacts.Plan) {
 func (s *search) empty() {
 	for _, list := range s.b.antennas {
 		for _, x := range slices.Clone(list) {
-			if !s.isFixed(x) {
+			if !x.must {
 				s.b.remove(x)
 			}
 		}

@@ -12,6 +12,7 @@ type item struct {
 	contacts.Contact
 	busy  contacts.Span
 	group int
+	must  bool    // it cannot be taken off
 	value float64 // what it adds to its spacecraft
 }
 
@@ -75,7 +76,7 @@ func newBoard(m *model) *board {
 		b.total -= p.Weights.Change * float64(len(list))
 	}
 	for _, h := range m.held {
-		b.add(h)
+		b.add(h).must = true
 	}
 	b.log = b.log[:0]
 	return b

@@ -35,7 +35,7 @@ func (s *search) force(i int) {
 	c := contacts.Contact{Candidate: w.candidate, Span: contacts.Span{From: from, To: from + length}}
 	lost := append(s.displace(w, c), w.group)
 	for _, x := range slices.Clone(b.groups[w.group]) {
-		if !s.isFixed(x) && (!b.m.split || s.r.IntN(3) == 0) {
+		if !x.must && (!b.m.split || s.r.IntN(3) == 0) {
 			b.remove(x)
 		}
 	}
@@ -64,7 +64,7 @@ func (s *search) displace(w *window, c contacts.Contact) []int {
 	var lost []int
 	away := func(list []*item, blocks func(x *item) bool) {
 		for _, x := range slices.Clone(list) {
-			if blocks(x) && !s.isFixed(x) {
+			if blocks(x) && !x.must {
 				lost = append(lost, x.group)
 				b.remove(x)
 			}

@@ -135,7 +135,7 @@ func (b *board) addPaying(c contacts.Contact) bool {
 // grow lengthens a contact into the free time around it as far as that pays.
 func (b *board) grow(x *item) {
 	w := b.windowOf(x)
-	if w == nil || x.Fixed {
+	if w == nil || x.must {
 		return
 	}
 	old := x.Contact
@@ -191,7 +191,7 @@ func (b *board) settle() {
 		for again := true; again; {
 			again = false
 			for _, x := range b.crafts[s] {
-				if !x.Fixed && !b.commanded(x.Contact) {
+				if !x.must && !b.commanded(x.Contact) {
 					b.remove(x)
 					again = true
 					break

@@ -194,7 +194,7 @@ func (s *search) replan(antennas, crafts []int, in contacts.Span) {
 	var lost []int
 	empty := func(list []*item) {
 		for _, x := range slices.Clone(list) {
-			if !s.isFixed(x) && x.From < in.To && x.To > in.From {
+			if !x.must && x.From < in.To && x.To > in.From {
 				lost = append(lost, x.group)
 				s.b.remove(x)
 			}
@@ -221,11 +221,6 @@ func (s *search) replan(antennas, crafts []int, in contacts.Span) {
 	}
 	s.fill(around, contacts.Span{From: 0, To: s.b.m.p.Length}, 0.3)
 	s.elsewhere(lost)
-}
-
-// isFixed tells whether a contact must stay.
-func (s *search) isFixed(x *item) bool {
-	return slices.ContainsFunc(s.b.m.held, func(h contacts.Contact) bool { return h.Candidate == x.Candidate && h.Span == x.Span })
 }
 
 // near returns the part of a list that can touch a span.

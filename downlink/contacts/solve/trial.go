@@ -111,7 +111,7 @@ func (t *Trials) place(i int, c contacts.Contact) bool {
 	s.guideBy(0)
 	lost := s.displace(w, c)
 	for _, x := range slices.Clone(b.groups[w.group]) {
-		if !b.m.split && !s.isFixed(x) {
+		if !b.m.split && !x.must {
 			lost = append(lost, x.group)
 			b.remove(x)
 		}
@@ -143,7 +143,7 @@ func (t *Trials) inTheWay(w *window, c contacts.Contact) *item {
 	var best *item
 	weigh := func(list []*item) {
 		for _, x := range list {
-			if !t.s.isFixed(x) && x.Span != c.Span && (best == nil || x.value < best.value) {
+			if !x.must && x.Span != c.Span && (best == nil || x.value < best.value) {
 				best = x
 			}
 		}

@@ -32,13 +32,26 @@ type model struct {
 	groups  int
 	station []int // of each candidate
 	held    []contacts.Contact
+	heldBy  map[int][]contacts.Contact // held ones, by antenna, and by -1 - spacecraft
+	heldIn  map[int]bool               // groups that have one
+	inForce map[int][]contacts.Contact
 	split   bool
 }
 
 // newModel prepares a problem that has passed its check.
 func newModel(p *contacts.Problem) *model {
 	m := &model{p: p, step: p.Resolution(), split: p.Split, groups: len(p.Requests) + len(p.Candidates)}
-	m.held = fixed(p)
+	m.held, m.heldBy = fixed(p), map[int][]contacts.Contact{}
+	m.heldIn, m.inForce = map[int]bool{}, map[int][]contacts.Contact{}
+	for _, f := range p.InForce {
+		m.inForce[f.Candidate] = append(m.inForce[f.Candidate], f)
+	}
+	for _, h := range m.held {
+		c := &p.Candidates[h.Candidate]
+		m.heldBy[c.Antenna] = append(m.heldBy[c.Antenna], h)
+		m.heldBy[-1-c.Spacecraft] = append(m.heldBy[-1-c.Spacecraft], h)
+		m.heldIn[m.group(h.Candidate)] = true
+	}
 	for i := range p.Candidates {
 		m.station = append(m.station, p.Antennas[p.Candidates[i].Antenna].Station)
 	}
@@ -62,8 +75,7 @@ func fixed(p *contacts.Problem) []contacts.Contact {
 	for _, c := range p.InForce {
 		s := &p.Stations[p.Antennas[p.Candidates[c.Candidate].Antenna].Station]
 		late := s.Notice > 0 && p.Busy(c).From < p.Now+s.Notice && p.Stands(c)
-		known := slices.ContainsFunc(out, func(h contacts.Contact) bool { return h.Candidate == c.Candidate && h.Span == c.Span })
-		if late && !known {
+		if late && !slices.ContainsFunc(out, func(h contacts.Contact) bool { return h.Candidate == c.Candidate && h.Span == c.Span }) {
 			c.Fixed = false // it stays, and is not held by anyone
 			out = append(out, c)
 		}
@@ -98,7 +110,7 @@ func (m *model) group(candidate int) int {
 // force may stay although its station could no longer book it.
 func (m *model) addWindows(i int) {
 	c := &m.p.Candidates[i]
-	if !m.split && slices.ContainsFunc(m.held, func(h contacts.Contact) bool { return m.group(h.Candidate) == m.group(i) }) {
+	if !m.split && m.heldIn[m.group(i)] {
 		return
 	}
 	most := m.mostUseful(c)
@@ -116,8 +128,8 @@ func (m *model) addWindows(i int) {
 	for _, s := range spans {
 		add(s, c.Least)
 	}
-	for _, f := range m.p.InForce {
-		if f.Candidate == i && m.p.Stands(f) && !slices.ContainsFunc(spans, func(s contacts.Span) bool { return s.Holds(f.Span) }) {
+	for _, f := range m.inForce[i] {
+		if m.p.Stands(f) && !slices.ContainsFunc(spans, func(s contacts.Span) bool { return s.Holds(f.Span) }) {
 			add(f.Span, f.Length()) // as it is, or not at all
 		}
 	}
@@ -138,13 +150,12 @@ func (m *model) takenByFixed(i int) []contacts.Span {
 	c := &m.p.Candidates[i]
 	craft := &m.p.Spacecraft[c.Spacecraft]
 	var out []contacts.Span
-	for _, h := range m.held {
-		o := &m.p.Candidates[h.Candidate]
-		if o.Antenna == c.Antenna {
-			b := m.p.Busy(h)
-			out = append(out, contacts.Span{From: b.From - c.TearDown, To: b.To + c.SetUp})
-		}
-		if o.Spacecraft == c.Spacecraft && craft.AtOnce < 2 {
+	for _, h := range m.heldBy[c.Antenna] {
+		b := m.p.Busy(h)
+		out = append(out, contacts.Span{From: b.From - c.TearDown, To: b.To + c.SetUp})
+	}
+	if craft.AtOnce < 2 {
+		for _, h := range m.heldBy[-1-c.Spacecraft] {
 			gap := m.gap(i, h.Candidate)
 			out = append(out, contacts.Span{From: h.From - gap, To: h.To + gap})
 		}
