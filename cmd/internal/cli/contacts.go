@@ -18,13 +18,13 @@ type planSource struct {
 	split   bool
 	now     time.Time
 	closed  []string
+	inForce string
 }
 
 type contactsOptions struct {
 	planSource
 	limit      time.Duration
 	iterations int
-	inForce    string
 	change     *float64
 	files      planOutputs
 	format     format
@@ -72,7 +72,7 @@ a rule.`,
 	fs := cmd.Flags()
 	addDuration(fs, &o.limit, "time-limit", 20*time.Second, "how long the command may search, as 60s")
 	fs.IntVar(&o.iterations, "iterations", 0, "end after so many `ROUNDS`, with the same plan everywhere (without --time-limit there is no other end)")
-	fs.StringVar(&o.inForce, "in-force", "", "`FILE` of the plan in force, as --save writes it")
+	ps.StringVar(&o.inForce, "in-force", "", "`FILE` of the plan in force, as --save writes it")
 	addNumber(fs, &o.change, "change-price", "value that each change against the plan in force costs, in place of the scenario's weight")
 	o.files.add(fs)
 	addFormat(cmd, &o.format)
@@ -98,11 +98,6 @@ func runContacts(ctx context.Context, env *Env, o *contactsOptions) error {
 	if o.change != nil {
 		p.Weights.Change = *o.change
 	}
-	p.keepPast()
-	force, err := p.carry(o.inForce)
-	if err != nil {
-		return err
-	}
 	for _, why := range p.Unserved() {
 		p.note("%v", why)
 	}
@@ -112,14 +107,14 @@ func runContacts(ctx context.Context, env *Env, o *contactsOptions) error {
 		defer cancel()
 	}
 	env.finishes.Store(true) // an interrupt from here on ends the search, not the command
-	result, err := solve.Solve(ctx, p.Problem, solve.Options{Rounds: o.iterations, Start: force.start(), Progress: env.tellSearch()})
+	result, err := solve.Solve(ctx, p.Problem, solve.Options{Rounds: o.iterations, Start: p.force.start(), Progress: env.tellSearch()})
 	if err != nil {
 		return &InputError{Err: err}
 	}
 	if result.Stop == solve.Cancelled {
 		env.note("stopped: the plan is the best one so far, whole")
 	}
-	a := newPlanAnswer(p, &result, force)
+	a := newPlanAnswer(p, &result)
 	if err := a.writeFiles(whole, &o.files); err != nil {
 		return err
 	}
@@ -210,5 +205,6 @@ func (o *planSource) finish(p *planProblem) error {
 	if err := p.Check(); err != nil {
 		return &InputError{Err: err}
 	}
-	return nil
+	p.keepPast()
+	return p.carry(o.inForce)
 }

@@ -243,6 +243,23 @@ func TestContactsPage(t *testing.T) {
 	}
 }
 
+// The files of a planning day are sound, and its two scenarios differ in the element file
+// alone.
+func TestPlanningDay(t *testing.T) {
+	writeInto(t, nil)
+	if code, _, errOut := invoke(t, "new", "--planning-day", "day"); code != ExitAnswer {
+		t.Fatal(errOut)
+	}
+	for _, name := range []string{"day/yesterday.yaml", "day/today.yaml"} {
+		if code, _, errOut := invoke(t, "check", "--scenario", name); code != ExitAnswer {
+			t.Errorf("%s: %s", name, errOut)
+		}
+	}
+	if code, _, errOut := invoke(t, "new", "--planning-day", "day"); code != ExitInput || !strings.Contains(errOut, "yesterday.yaml") {
+		t.Errorf("over files that are there: %d %s", code, errOut)
+	}
+}
+
 // A shift from 22:00 to 06:00 over the night of 28 to 29 March 2026 in London lasts seven
 // hours, since clocks go forward at 01:00 UTC (tz database); the next one lasts eight. On the
 // other side of the date line, Kiritimati, UTC+14, has Sunday from Saturday 10:00 UTC.

@@ -18,9 +18,9 @@ type planAnswer struct {
 	changes []change.Difference // against the plan in force; nil: there is none
 }
 
-func newPlanAnswer(p *planProblem, r *solve.Result, force *forcePlan) *planAnswer {
+func newPlanAnswer(p *planProblem, r *solve.Result) *planAnswer {
 	a := &planAnswer{p: p, result: r, rows: p.Rows(r.Plan, r.Worth)}
-	if force != nil {
+	if force := p.force; force != nil {
 		a.changes = change.Compare(force.problem, force.plan, p.Problem, r.Plan)
 	}
 	return a

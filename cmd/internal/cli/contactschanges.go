@@ -64,39 +64,58 @@ func (p *planProblem) breakOff() {
 
 // carry takes the plan of a file into the problem: what is fixed or under way is held,
 // every change of the rest has its price. Without a file there is none.
-func (p *planProblem) carry(file string) (*forcePlan, error) {
+func (p *planProblem) carry(file string) error {
 	if file == "" {
-		return nil, nil
+		return nil
 	}
 	rows, err := readPlanFile(file, planfiles.Plan)
 	if err != nil {
-		return nil, err
+		return err
 	}
-	old, plan, err := planOfRows(rows)
+	old, plan, err := planOfRows(rows, p.Start)
 	if err != nil {
-		return nil, &InputError{Err: err}
+		return &InputError{Err: err}
 	}
+	p.lend(old)
 	for _, lost := range change.Carry(old, plan, p.Problem) {
 		p.note("%s cannot stay: %s", lost.Name, lost.Why)
 	}
 	p.breakOff()
 	if err := p.Check(); err != nil {
-		return nil, &InputError{Err: fmt.Errorf("with the plan of %s: %w", file, err)}
+		return &InputError{Err: fmt.Errorf("with the plan of %s: %w", file, err)}
 	}
 	carried := append(slices.Clone(p.Held), p.InForce...)
 	p.Sort(carried)
-	return &forcePlan{old, plan, contacts.Plan{Contacts: carried}}, nil
+	p.force = &forcePlan{old, plan, contacts.Plan{Contacts: carried}}
+	return nil
+}
+
+// lend gives the windows of a plan of a file what the file does not tell: directions,
+// volumes and values of the window with which each shares the most time.
+func (p *planProblem) lend(old *contacts.Problem) {
+	for i := range old.Candidates {
+		w := &old.Candidates[i]
+		most := contacts.Ms(0)
+		for k := range p.Candidates {
+			c := &p.Candidates[k]
+			shared := c.Window.Overlap(w.Window)
+			if shared > most && p.sameOwners(c, old, w) {
+				most = shared
+				w.Course, w.Links, w.Uplink, w.Downlink, w.PerSecond = c.Course, c.Links, c.Uplink, c.Downlink, c.PerSecond
+			}
+		}
+	}
+}
+
+// sameOwners tells whether two candidates are of the same spacecraft and antenna.
+func (p *planProblem) sameOwners(c *contacts.Candidate, old *contacts.Problem, w *contacts.Candidate) bool {
+	a, b := &p.Antennas[c.Antenna], &old.Antennas[w.Antenna]
+	return a.Name == b.Name && p.Stations[a.Station].Name == old.Stations[b.Station].Name && p.Spacecraft[c.Spacecraft].Name == old.Spacecraft[w.Spacecraft].Name
 }
 
 // planOfRows makes a problem whose windows are the contacts of a plan.
-func planOfRows(rows []planfiles.PlanRow) (*contacts.Problem, contacts.Plan, error) {
-	p := &contacts.Problem{}
-	for i, r := range rows {
-		if i == 0 || r.Start.Before(p.Start) {
-			p.Start = r.Start
-		}
-	}
-	p.Start = p.Start.Truncate(time.Second)
+func planOfRows(rows []planfiles.PlanRow, start time.Time) (*contacts.Problem, contacts.Plan, error) {
+	p := &contacts.Problem{Start: start}
 	b := rowNames{map[string]int{}, map[string]int{}, map[string]int{}, map[[2]string]int{}}
 	plain := make([]contacts.PlanRow, len(rows))
 	for i := range rows {

@@ -2,6 +2,7 @@ package cli
 
 import (
 	"math"
+	"time"
 
 	"github.com/spf13/cobra"
 
@@ -47,7 +48,13 @@ func readFiledPlan(file string) (*filedPlan, error) {
 	if err != nil {
 		return nil, err
 	}
-	p, plan, err := planOfRows(rows)
+	start := time.Time{}
+	for _, r := range rows {
+		if start.IsZero() || r.Start.Before(start) {
+			start = r.Start
+		}
+	}
+	p, plan, err := planOfRows(rows, start.Truncate(time.Second))
 	if err != nil {
 		return nil, &InputError{Err: err}
 	}

@@ -18,6 +18,7 @@ type planProblem struct {
 	scenario *scenario.Scenario
 	plan     *scenario.ContactPlan
 	flown    []planPass // by candidate; empty for windows from outside
+	force    *forcePlan // nil: there is none
 	notes    []string
 }
 

@@ -16,7 +16,7 @@ import (
 )
 
 func newNew(env *Env) *cobra.Command {
-	launchDay := false
+	launchDay, planningDay := false, false
 	cmd := &cobra.Command{
 		Use:   "new [FILE]",
 		Short: "Write a commented scenario to start from",
@@ -26,10 +26,13 @@ made; a file that is there is never replaced.
 
 With --launch-day FILE is a folder: it gets the first day of an invented satellite, as
 four scenarios that differ in the orbit alone (the separation state as planned, after a
-late launch, an ephemeris from tracking, the first element set).`,
+late launch, an ephemeris from tracking, the first element set). With --planning-day it
+gets a day of contact planning on the demo's spacecraft: yesterday's and today's element
+sets, rules of the plan, and an outage as a calendar.`,
 		Example: `  slantwise new
   slantwise new plans/summer.yaml
-  slantwise new --launch-day first-day`,
+  slantwise new --launch-day first-day
+  slantwise new --planning-day day`,
 		Args: func(cmd *cobra.Command, args []string) error {
 			if len(args) > 1 {
 				return inputErrorf("new takes one FILE, not %d; see slantwise new --help", len(args))
@@ -38,25 +41,35 @@ late launch, an ephemeris from tracking, the first element set).`,
 		},
 		RunE: func(_ *cobra.Command, args []string) error {
 			file := scenario.DefaultFile
-			if launchDay {
+			switch {
+			case launchDay && planningDay:
+				return inputErrorf("--launch-day and --planning-day write a folder each; give one of them")
+			case launchDay:
 				file = "launch-day"
+			case planningDay:
+				file = "planning-day"
 			}
 			if len(args) == 1 {
 				file = args[0]
 			}
-			if launchDay {
-				return runLaunchDay(env, file)
+			switch {
+			case launchDay:
+				return writeDay(env, file, scenario.LaunchDay, "passes --plus-minus")
+			case planningDay:
+				return writeDay(env, file, scenario.PlanningDay, "contacts --iterations 10")
 			}
 			return runNew(env, file)
 		},
 	}
 	cmd.Flags().BoolVar(&launchDay, "launch-day", false, "write the scenarios of a launch day into a folder (launch-day where none is named)")
+	cmd.Flags().BoolVar(&planningDay, "planning-day", false, "write the files of a day of contact planning into a folder (planning-day where none is named)")
 	return cmd
 }
 
-// runLaunchDay writes the files of a launch day into a folder, all of them or none.
-func runLaunchDay(env *Env, folder string) error {
-	files, err := scenario.LaunchDay()
+// writeDay writes the files of a day into a folder, all of them or none, and says how to
+// go on.
+func writeDay(env *Env, folder string, day func() ([]scenario.File, error), next string) error {
+	files, err := day()
 	if err != nil {
 		return err
 	}
@@ -76,7 +89,7 @@ func runLaunchDay(env *Env, folder string) error {
 			return err
 		}
 	}
-	_, err = fmt.Fprintf(env.Out, "wrote %d files into %s; next: slantwise passes --scenario %s --plus-minus\n", len(files), folder, filepath.Join(folder, files[0].Name))
+	_, err = fmt.Fprintf(env.Out, "wrote %d files into %s; next: slantwise %s --scenario %s\n", len(files), folder, next, filepath.Join(folder, files[0].Name))
 	return err
 }
 
