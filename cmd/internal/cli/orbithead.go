@@ -1,7 +1,6 @@
 package cli
 
 import (
-	"errors"
 	"fmt"
 	"math"
 	"path/filepath"
@@ -81,11 +80,4 @@ func (h *orbitHead) json(decimals int) *orbitJSON {
 		out.FromUTC, out.ToUTC = text(h.from), text(h.to)
 	}
 	return out
-}
-
-// ended tells whether an orbit was given up, by the scenario's own word, before the time
-// asked for: that is an answer, no fault.
-func ended(err error) bool {
-	var e *scenario.EndedError
-	return errors.As(err, &e)
 }

@@ -50,6 +50,10 @@ func rateFlights(s *scenario.Scenario, c *scenario.Spacecraft, tx *downlink.Tran
 		for k := range found {
 			f := rateFlight{station: st, link: link, eph: eph, pass: &found[k]}
 			told, err := f.fly(s)
+			if untold(err) {
+				notes = append(notes, fmt.Sprintf("no contact over %s at %s: %v", st.Site.Name, utc(f.pass.AOS), err))
+				continue
+			}
 			if err != nil {
 				return nil, nil, err
 			}
@@ -84,7 +88,9 @@ func linkOver(sky *skies, c *scenario.Spacecraft, st *scenario.Station, tx *down
 	if len(st.Antennas) == 0 {
 		return nil, "it has no antenna"
 	}
-	found := linksBetween(sky, &scenario.Spacecraft{Name: c.Name, Transmitters: []downlink.Transmitter{*tx}}, &reportSite{Station: st}, tx.Modes[0].Name)
+	alone := *c // its orbit and how uncertain that is stay
+	alone.Transmitters = []downlink.Transmitter{*tx}
+	found := linksBetween(sky, &alone, &reportSite{Station: st}, tx.Modes[0].Name)
 	if len(found.links) == 0 {
 		return nil, "no antenna takes the transmitter"
 	}

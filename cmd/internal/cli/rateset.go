@@ -143,6 +143,7 @@ func addUpSpans(s *scenario.Scenario, sky *skies, c *scenario.Spacecraft, u *dow
 	if len(u.Modes) == 0 {
 		return nil, inputErrorf("uplink %q has no mode, so that nothing is known of when it works", u.Name)
 	}
+	notes := []string{"uplink " + u.Name + ": in each pass the one mode that would carry the most bytes from AOS to LOS, framing not taken off"}
 	byStation := map[string][]chosenLink{}
 	for i := range all {
 		f := &all[i]
@@ -158,6 +159,11 @@ func addUpSpans(s *scenario.Scenario, sky *skies, c *scenario.Spacecraft, u *dow
 			byStation[f.station.Site.Name] = links
 		}
 		best, err := bestUp(s, links, eph, f.pass)
+		if untold(err) {
+			notes = append(notes, fmt.Sprintf("pass over %s at %s: %v", f.station.Site.Name, utc(f.pass.AOS), err))
+			f.links = append(f.links, linkset.Link{Name: u.Name, Up: true})
+			continue
+		}
 		if err != nil {
 			return nil, err
 		}
@@ -167,7 +173,7 @@ func addUpSpans(s *scenario.Scenario, sky *skies, c *scenario.Spacecraft, u *dow
 		}
 		f.links = append(f.links, link)
 	}
-	return []string{"uplink " + u.Name + ": in each pass the one mode that would carry the most bytes from AOS to LOS, framing not taken off"}, nil
+	return notes, nil
 }
 
 func bestUp(s *scenario.Scenario, links []chosenLink, eph *orbit.Ephemeris, p *pass.Pass) (best *downlink.Profile, err error) {

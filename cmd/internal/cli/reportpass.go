@@ -30,16 +30,16 @@ func (p *reportPlan) load(ctx context.Context, i int) (*reports.Pass, error) {
 	if out.Elements.Source.File != "" {
 		out.Elements.Source.File = filepath.Base(out.Elements.Source.File)
 	}
-	var err error
 	step := sampleStep(page.Duration())
 	if page.link == nil {
-		if out.Surety, err = p.surety(craft, site, page, nil); err != nil {
-			return nil, fmt.Errorf("%s over %s: %w", craft.Name, site.Site.Name, err)
-		}
-		out.Profile, out.Notes = geometryProfile(craft, site, page.AOS, page.LOS, step), p.pageNotes(page, nil)
-		return out, p.addUplinks(out, craft, page)
+		return out, p.addGeometry(out, craft, site, page)
 	}
 	best, err := page.bestMode(p.scenario, craft, step)
+	if untold(err) {
+		about := fmt.Sprintf("transmitter %s, antenna %s", page.link.transmitter.Name, page.link.antenna.Name)
+		out.Notes = []reports.Note{{Kind: reports.Warning, About: about, Text: "no budget: " + err.Error()}}
+		return out, p.addGeometry(out, craft, site, page)
+	}
 	if err != nil {
 		return nil, fmt.Errorf("%s over %s: %w", craft.Name, site.Site.Name, err)
 	}
@@ -61,6 +61,22 @@ func (p *reportPlan) load(ctx context.Context, i int) (*reports.Pass, error) {
 		return nil, fmt.Errorf("%s over %s, uplink: %w", craft.Name, site.Site.Name, err)
 	}
 	return out, nil
+}
+
+// addGeometry fills a page that has no budget of a downlink.
+func (p *reportPlan) addGeometry(out *reports.Pass, craft *reportCraft, site *reportSite, page *reportPage) error {
+	var err error
+	if out.Surety, err = p.surety(craft, site, page, nil); untold(err) {
+		out.Notes = append(out.Notes, reports.Note{Kind: reports.Warning, About: "plus-minus", Text: err.Error()})
+	} else if err != nil {
+		return fmt.Errorf("%s over %s: %w", craft.Name, site.Site.Name, err)
+	}
+	out.Profile = geometryProfile(craft, site, page.AOS, page.LOS, sampleStep(page.Duration()))
+	out.Notes = append(out.Notes, p.pageNotes(page, nil)...)
+	if err := p.addUplinks(out, craft, page); err != nil {
+		return fmt.Errorf("%s over %s, uplink: %w", craft.Name, site.Site.Name, err)
+	}
+	return nil
 }
 
 // mostReportSamples is how many samples a page has, about: a second apart up to two

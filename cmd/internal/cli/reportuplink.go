@@ -42,7 +42,12 @@ func (p *reportPlan) uplinksBetween(k *skies, craft *reportCraft, st *reportSite
 func (p *reportPlan) addUplinks(out *reports.Pass, craft *reportCraft, page *reportPage) error {
 	step := sampleStep(page.Duration())
 	for i := range p.uplinks[page.Spacecraft][page.Site] {
-		best, err := (&reportPage{Found: page.Found, link: &reportLink{modes: p.uplinks[page.Spacecraft][page.Site][i].modes}}).bestMode(p.scenario, craft, step)
+		modes := p.uplinks[page.Spacecraft][page.Site][i].modes
+		best, err := (&reportPage{Found: page.Found, link: &reportLink{modes: modes}}).bestMode(p.scenario, craft, step)
+		if untold(err) {
+			out.Notes = append(out.Notes, reports.Note{Kind: reports.Warning, About: "uplink " + modes[0].uplink.Name, Text: "no budget: " + err.Error()})
+			continue
+		}
 		if err != nil {
 			return err
 		}
