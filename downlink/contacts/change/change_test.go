@@ -61,7 +61,7 @@ func replanned(t testing.TB, p *contacts.Problem, plan contacts.Plan, price floa
 
 func TestReplanAfterAnOutage(t *testing.T) {
 	p := network(t)
-	first := solved(t, p, 3)
+	first := solved(t, p, 1)
 	dear := 0.0
 	changes := map[bool]int{}
 	for _, free := range []bool{true, false} {

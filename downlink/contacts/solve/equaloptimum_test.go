@@ -23,7 +23,10 @@ func middling(seed uint64, requests, windows int, split bool) instance.Demand {
 func TestSameOptimum(t *testing.T) {
 	needSolver(t, "glpsol")
 	proven, ended := 0, 0
-	const cases = 10
+	cases := 10
+	if testing.Short() {
+		cases = 2
+	}
 	for seed := range uint64(cases) {
 		split := seed%2 == 1
 		windows, copies := 12, 1

@@ -69,7 +69,7 @@ func (e *everyPlan) from(i int, t contacts.Ms, plan []contacts.Contact) {
 // smallCases is how many random problems are solved by trial of all plans.
 func smallCases() uint64 {
 	if testing.Short() {
-		return 300
+		return 100
 	}
 	return 1000
 }

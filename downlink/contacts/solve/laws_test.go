@@ -82,6 +82,9 @@ func TestLessIsNeverMore(t *testing.T) {
 }
 
 func TestShiftInTimeChangesNothing(t *testing.T) {
+	if testing.Short() {
+		t.Skip("some seconds")
+	}
 	two := 2
 	for seed := range uint64(seeds) {
 		with := func(shift contacts.Ms) *contacts.Problem {
