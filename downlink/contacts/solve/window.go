@@ -136,10 +136,10 @@ func (m *model) addWindows(i int) {
 }
 
 // mostUseful returns the length beyond which a contact is worth no more. Where overlaps
-// have a least length, longer contacts may help others.
+// have a least length, or commands an age, longer contacts may help others.
 func (m *model) mostUseful(c *contacts.Candidate) ms {
 	most := c.LongestContact()
-	if c.Request >= 0 && m.p.Spacecraft[c.Spacecraft].HandOver.Least == 0 {
+	if s := &m.p.Spacecraft[c.Spacecraft]; c.Request >= 0 && s.HandOver.Least == 0 && s.Command == nil {
 		most = min(most, max(c.Least, m.p.Requests[c.Request].Desired))
 	}
 	return most
