@@ -101,6 +101,9 @@ func runContacts(ctx context.Context, env *Env, o *contactsOptions) error {
 	for _, why := range p.Unserved() {
 		p.note("%v", why)
 	}
+	for _, r := range p.Remarks() {
+		p.note("%s", r)
+	}
 	if o.limit > 0 {
 		var cancel context.CancelFunc
 		ctx, cancel = context.WithDeadline(ctx, began.Add(o.limit))

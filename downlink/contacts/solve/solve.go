@@ -77,6 +77,7 @@ func Solve(ctx context.Context, p *contacts.Problem, o Options) (Result, error) 
 	}
 	r := newRun(ctx, m, o)
 	r.rounds()
+	r.search.best = restored(p, r.search.best)
 	return r.result()
 }
 
