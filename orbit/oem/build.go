@@ -111,6 +111,10 @@ func (b *builder) closeSegment() {
 	}
 	s := segment{object: m.object, line: m.line}
 	s.Frame, s.States, s.Interpolation = m.frame, b.states, how
+	if problem := contradiction(s.States); problem != "" {
+		b.fault(m.line, "segment", "", problem, "check the velocities: their units, signs and frame, and that they are given")
+		return
+	}
 	if !b.usable(m, &s) {
 		return
 	}

@@ -143,7 +143,7 @@ func TestLeapSeconds(t *testing.T) {
 
 func TestBadMessages(t *testing.T) {
 	second := strings.NewReplacer("00:00:00\n", "00:02:00\n", "00:03:00\n", "00:06:00\n").Replace(metaText)
-	secondData := "2026-09-14T00:02:00 6985 450 0 -0.5 7.48 0\n2026-09-14T00:06:00 6870 1340 0 -1.4 7.3 0\n"
+	secondData := "2026-09-14T00:02:00 6985 450 0 -0.5 7.48 0\n2026-09-14T00:06:00 6640 2214 0 -2.39 7.1 0\n"
 	cov := "COVARIANCE_START\nEPOCH = 2026-09-14T00:01:00\nCOV_REF_FRAME = RTN\n1e-4\n0 1e-4\n0 0 1e-4\n0 0 0 1e-10\n0 0 0 0 1e-10\n0 0 0 0 0 1e-10\nCOVARIANCE_STOP\n"
 	swap := func(old, new string) string { return strings.Replace(metaText, old, new, 1) }
 	for _, c := range []struct{ name, text, want string }{

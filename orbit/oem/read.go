@@ -31,7 +31,7 @@ type File struct {
 var versionLine = regexp.MustCompile(`^\s*CCSDS_OEM_VERS\s*=`)
 
 // xmlRoot finds the element oem before any other but ndm.
-var xmlRoot = regexp.MustCompile(`^(?:\s|<\?[^>]*>|<!--(?s:.*?)-->|<ndm\b[^>]*>)*<oem\b`)
+var xmlRoot = regexp.MustCompile(`^(?:\s|<\?[^>]*>|<!--(?s:.*?)-->|<!DOCTYPE[^>\[]*(?:\[[^\]]*\]\s*)?>|<ndm\b[^>]*>)*<oem\b`)
 
 // Looks tells whether a text is an OEM by its beginning.
 func Looks(text []byte) bool {

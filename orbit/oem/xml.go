@@ -48,6 +48,7 @@ type xmlReader struct {
 	dec   *xml.Decoder
 	open  []string
 	text  strings.Builder
+	units string // as the element that is open states them
 	state xmlState
 }
 
@@ -74,6 +75,12 @@ func (r *xmlReader) start(t *xml.StartElement) {
 	}
 	r.open = append(r.open, name)
 	r.text.Reset()
+	r.units = ""
+	for _, a := range t.Attr {
+		if a.Name.Local == "units" {
+			r.units = strings.TrimSpace(a.Value)
+		}
+	}
 	switch name {
 	case "oem":
 		version := ""
@@ -143,12 +150,30 @@ func (r *xmlReader) leaf(line int, parent, name, text string) {
 	case name == "COV_REF_FRAME" && parent == "covarianceMatrix":
 		r.b.covarianceKey(line, name, text)
 	default:
+		if unit := unitOf(name); r.units != "" && !strings.EqualFold(r.units, unit) {
+			r.b.fault(line, name, short(r.units), "is not the unit of an OEM: "+unit, "turn the numbers into it")
+		}
+		if _, twice := r.state.values[name]; twice {
+			r.b.fault(line, name, short(text), "stands twice in one "+parent, "keep one of the two")
+		}
 		v, ok := number(text)
 		if !ok {
 			r.b.fault(line, name, short(text), "is not a finite number", "write it in decimals")
 		}
 		r.state.values[name] = v
 	}
+}
+
+// unitOf returns the unit of an element of a state or covariance (CCSDS 502.0-B).
+func unitOf(name string) string {
+	rates := strings.Count(name, "_DOT")
+	switch {
+	case strings.HasSuffix(name, "_DDOT"):
+		return "km/s**2"
+	case !strings.HasPrefix(name, "C"):
+		return [...]string{"km", "km/s"}[min(rates, 1)]
+	}
+	return [...]string{"km**2", "km**2/s", "km**2/s**2"}[min(rates, 2)]
 }
 
 func (r *xmlReader) stateVector() {
