@@ -32,6 +32,9 @@ func drawSky(p *Pass, fr *frame) drawing {
 		line.MultiSeries = append(line.MultiSeries, maskSeries(p.Horizon))
 	}
 	line.MultiSeries = append(line.MultiSeries, eventMarks(p))
+	if bodies := bodyMarks(p); bodies != nil {
+		line.MultiSeries = append(line.MultiSeries, *bodies)
+	}
 	line.Validate()
 	m := plain(line.JSON())
 	// The binding leaves out a minimum of 0, and the axes must not choose their own.
@@ -91,6 +94,35 @@ func eventMarks(p *Pass) charts.SingleSeries {
 	}
 }
 
+// bodyMarks puts the Sun and the Moon where they stand at the culmination; nil where
+// neither is up.
+func bodyMarks(p *Pass) *charts.SingleSeries {
+	if p.Ground == nil {
+		return nil
+	}
+	var data []any
+	for _, b := range p.Ground.Sky {
+		if b.ElevationDeg < 0 {
+			continue
+		}
+		symbol := "diamond"
+		if b.Name == "Sun" {
+			symbol = "emptyCircle"
+		}
+		data = append(data, map[string]any{
+			"name": b.Name, "value": []number{{b.ElevationDeg, 2}, {b.AzimuthDeg, 2}}, "symbol": symbol,
+			"label": map[string]any{"position": "bottom", "show": true},
+		})
+	}
+	if data == nil {
+		return nil
+	}
+	return &charts.SingleSeries{
+		Name: "Sun and Moon", Type: "scatter", CoordSystem: "polar", Data: data, SymbolSize: 15,
+		Label: &opts.Label{Show: opts.Bool(true), Formatter: "{b}"},
+	}
+}
+
 // together tells whether two events are so close that their labels would cover each
 // other, as of a spacecraft that stands still.
 func together(a, b event) bool {
@@ -118,5 +150,11 @@ func skyText(p *Pass) string {
 		text += []string{" begins in the ", ", culminates in the ", " and ends in the "}[i] +
 			compass(e.azimuthDeg) + " at azimuth " + fixed(e.azimuthDeg, 0) + " deg, elevation " + fixed(e.elevationDeg, 1) + " deg"
 	}
-	return text + "."
+	text += "."
+	if p.Ground != nil {
+		for _, b := range p.Ground.Sky {
+			text += " " + b.String()
+		}
+	}
+	return text
 }

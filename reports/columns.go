@@ -46,7 +46,8 @@ func columns(p *Pass) []column {
 }
 
 // laterColumns lists the columns that came to stand behind all of columns: the path's,
-// the noise's, those of the pass under a clear sky, the rate plan's, and the uplinks'.
+// the noise's, those of the pass under a clear sky, the rate plan's, the uplinks', and
+// those of the ground.
 func laterColumns(p *Pass) []column {
 	var list []column
 	if p.Radio != nil {
@@ -55,7 +56,7 @@ func laterColumns(p *Pass) []column {
 	for i := range p.Uplinks {
 		list = append(list, uplinkColumns(&p.Uplinks[i])...)
 	}
-	return ofLength(list, len(p.Profile.Seconds))
+	return ofLength(append(list, groundColumns(p)...), len(p.Profile.Seconds))
 }
 
 func radioLaterColumns(p *Pass) []column {

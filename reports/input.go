@@ -40,6 +40,7 @@ type Pass struct {
 	Horizon    []Direction // the least elevation that sees the sky, azimuth rising; empty: a bare horizon
 	Elements   Elements
 	Pass       pass.Pass
+	Ground     *Ground // nil: no map
 	Surety     *Surety // nil: the position is taken as exact
 
 	// Profile holds the samples, from AOS to LOS. Without a radio only the columns of

@@ -30,6 +30,7 @@ type headJSON struct {
 	Uplinks    []uplinkJSON `json:"uplinks"`
 	Notes      []noteJSON   `json:"notes"`
 	Surety     *suretyJSON  `json:"plus_minus"` // one standard deviation each; null: the position is taken as exact
+	Ground     *groundJSON  `json:"ground"`     // at the culmination; null: no map
 }
 
 type elementsJSON struct {
@@ -108,6 +109,7 @@ func passHead(p *Pass) headJSON {
 		Notes:      []noteJSON{},
 		Uplinks:    uplinkHeads(p),
 		Surety:     suretyHead(p.Surety),
+		Ground:     groundHead(p.Ground),
 	}
 	for _, ev := range events(p) {
 		h.Events = append(h.Events, eventJSON{ev.key, utcText(ev.at), number{ev.azimuthDeg, 4}, number{ev.elevationDeg, 4}})

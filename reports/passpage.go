@@ -23,6 +23,7 @@ type passView struct {
 	HasZone                bool
 	Warnings               []Note
 	Figures                []figureView
+	Ground                 *groundView
 	Sights                 []sightView // empty where there is none to draw
 	Budget, Noise          budgetView
 	Surety                 *suretyView // nil: the position is taken as exact
@@ -85,7 +86,7 @@ func passPage(w *writer, i int, p *Pass) ([]byte, error) {
 	v.addNotes(p.Notes)
 	fr := newFrame(p)
 	drawings, views := figures(p, fr)
-	v.Figures, v.Sights = views, sightViews(p)
+	v.Figures, v.Ground, v.Sights = views, newGroundView(p), sightViews(p)
 	data, err := marshalDrawings(map[string]any{
 		"drawings": drawings,
 		"offsets":  offsets(p.Pass.AOS, p.Pass.LOS, p.Site.TimeZone, fr.base),

@@ -30,7 +30,7 @@ func TestReportMount(t *testing.T) {
 			t.Errorf("the page does not say %q", want)
 		}
 	}
-	if head, _, _ := strings.Cut(read(stem+".csv"), "\n"); !strings.HasSuffix(strings.TrimSpace(head), "lower_axis_deg,upper_axis_deg,following_error_deg") {
+	if head, _, _ := strings.Cut(read(stem+".csv"), "\n"); !strings.HasSuffix(strings.TrimSpace(head), "lower_axis_deg,upper_axis_deg,following_error_deg,ground_latitude_deg,ground_longitude_deg,height_km,sunlit") {
 		t.Errorf("columns %s", head)
 	}
 	var j struct {

@@ -44,6 +44,7 @@ func (p *reportPlan) load(ctx context.Context, i int) (*reports.Pass, error) {
 		return nil, fmt.Errorf("%s over %s: %w", craft.Name, site.Site.Name, err)
 	}
 	out.Profile, out.Notes = best.profile, p.pageNotes(page, best.link)
+	out.Ground = p.ground(out, craft, site, page)
 	if out.Surety, err = p.surety(craft, site, page, best); err != nil {
 		return nil, fmt.Errorf("%s over %s: %w", craft.Name, site.Site.Name, err)
 	}
@@ -72,6 +73,7 @@ func (p *reportPlan) addGeometry(out *reports.Pass, craft *reportCraft, site *re
 		return fmt.Errorf("%s over %s: %w", craft.Name, site.Site.Name, err)
 	}
 	out.Profile = geometryProfile(craft, site, page.AOS, page.LOS, sampleStep(page.Duration()))
+	out.Ground = p.ground(out, craft, site, page)
 	out.Notes = append(out.Notes, p.pageNotes(page, nil)...)
 	if err := p.addUplinks(out, craft, page); err != nil {
 		return fmt.Errorf("%s over %s, uplink: %w", craft.Name, site.Site.Name, err)

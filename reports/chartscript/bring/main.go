@@ -1,5 +1,5 @@
-// Command bring fetches the chart script that report pages draw with and puts it
-// where the program embeds it. It is run by go generate in the folder reports.
+// Command bring fetches the chart script that report pages draw with and the coastline
+// of their maps, and puts them where the program embeds them. It is run by go generate in the folder reports.
 //
 // The script is a convenience: without it the program builds, and its pages ask a
 // public address for the script. So a machine without npm, or without a network, is
@@ -28,7 +28,7 @@ const patience = 5 * time.Minute
 func main() {
 	if err := bring(); err != nil {
 		fmt.Fprintln(os.Stderr, "chart script not brought:", err)
-		fmt.Fprintln(os.Stderr, "Reports work without it: their pages then load the script from a public address, and their tables need none.")
+		fmt.Fprintln(os.Stderr, "Reports work without it: their pages then load the script from a public address, their maps have no coastline, and their tables need neither.")
 		if os.Getenv("CI") == "true" {
 			os.Exit(1)
 		}
@@ -51,7 +51,10 @@ func bring() error {
 	if err := bundle(ctx); err != nil {
 		return err
 	}
-	return licence()
+	if err := licence(); err != nil {
+		return err
+	}
+	return coastline()
 }
 
 // run runs a command in the project folder; what it prints is shown if it fails.
