@@ -22,7 +22,11 @@ require (
 	pgregory.net/rapid v1.3.0
 )
 
-require github.com/arran4/golang-ical v0.3.4
+require (
+	codeberg.org/go-fonts/dejavu v0.4.0
+	codeberg.org/go-pdf/fpdf v0.12.0
+	github.com/arran4/golang-ical v0.3.4
+)
 
 require (
 	github.com/fsnotify/fsnotify v1.9.0 // indirect

@@ -23,6 +23,7 @@ type indexView struct {
 	Warnings              []Note
 	Assumptions, Defaults []Note
 	CSV, JSON             template.URL
+	PDF                   string   // the file beside the page; empty: none
 	Sky                   string   // what the path in the numbers is; empty: no row has one
 	Lacks                 []string // what is missing where
 }
@@ -57,7 +58,8 @@ type rowView struct {
 // bestCount is how many passes the index names first.
 const bestCount = 6
 
-func indexPage(w *writer, rows []row) ([]byte, error) {
+// newIndexView fills in what the index says.
+func newIndexView(w *writer, rows []row) *indexView {
 	r := w.report
 	v := &indexView{
 		pageView: w.page("", r.Title+": passes and downlinks"),
@@ -65,6 +67,9 @@ func indexPage(w *writer, rows []row) ([]byte, error) {
 		Spacecraft: distinct(rows, func(r *row) string { return r.spacecraft }),
 		Stations:   distinct(rows, func(r *row) string { return r.station }),
 		CSV:        indexCSVFile, JSON: indexJSONFile, Chart: len(rows) > 0,
+	}
+	if w.options.PDF {
+		v.PDF = paperFile
 	}
 	v.addRows(rows)
 	v.addSky(rows)
@@ -78,8 +83,12 @@ func indexPage(w *writer, rows []row) ([]byte, error) {
 			v.Defaults = append(v.Defaults, n)
 		}
 	}
+	return v
+}
+
+func indexPage(w *writer, v *indexView, rows []row) ([]byte, error) {
 	if v.Chart {
-		data, err := marshalDrawings(map[string]any{"drawings": []drawing{drawOverview(r, rows)}, "offsets": nil})
+		data, err := marshalDrawings(map[string]any{"drawings": []drawing{drawOverview(w.report, rows)}, "offsets": nil})
 		if err != nil {
 			return nil, err
 		}

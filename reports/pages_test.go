@@ -260,7 +260,8 @@ func TestLargeIndexShowsAll(t *testing.T) {
 		rows[i].aos = rows[i].aos.Add(time.Duration(i) * 4 * time.Minute)
 		rows[i].culmination = rows[i].culmination.Add(time.Duration(i) * 4 * time.Minute)
 	}
-	index, err := indexPage(newWriter(r, Options{OneFile: true}, chartScript(), nil), rows)
+	w := newWriter(r, Options{OneFile: true}, chartScript(), nil)
+	index, err := indexPage(w, newIndexView(w, rows), rows)
 	if err != nil {
 		t.Fatal(err)
 	}

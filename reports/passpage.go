@@ -32,6 +32,7 @@ type passView struct {
 	Doubts                 []Note     // of single budgets
 	Assumptions, Defaults  []Note
 	CSV, JSON              template.URL
+	PDF                    string // the file beside the page; empty: none
 	Stem                   string
 }
 
@@ -97,6 +98,9 @@ func passPage(w *writer, i int, p *Pass) ([]byte, error) {
 	}
 	v.Data = dataElement(data)
 	v.CSV, v.JSON = template.URL(v.Stem+".csv"), template.URL(v.Stem+".json")
+	if w.options.PDF {
+		v.PDF = v.Stem + ".pdf"
+	}
 	if w.options.OneFile {
 		if v.CSV, v.JSON, err = inlineFiles(p); err != nil {
 			return nil, err

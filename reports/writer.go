@@ -20,11 +20,14 @@ const (
 	scriptFile    = "page.js"
 	styleFile     = "page.css"
 	contentsFile  = "contents.txt"
+	paperFile     = "passes.pdf"
 )
 
 // Options say how a report is written.
 type Options struct {
 	OneFile  bool                  // each page holds everything inside, to be mailed
+	PDF      bool                  // a PDF beside each page
+	Version  string                // of the program, for the files that name it
 	Workers  int                   // 0: as many as the machine runs at once
 	Progress func(done, total int) // passes written; may be nil; never called by two goroutines at a time
 }
@@ -100,6 +103,15 @@ func (w *writer) pass(ctx context.Context, i int, r *row) error {
 		return err
 	}
 	stem := passFolder + "/" + w.names[i]
+	if w.options.PDF {
+		sheet, err := passPaper(w, p)
+		if err != nil {
+			return err
+		}
+		if err := w.put(stem+".pdf", sheet); err != nil {
+			return err
+		}
+	}
 	if err := w.put(stem+".html", page); err != nil || w.options.OneFile {
 		return err
 	}
@@ -120,11 +132,17 @@ var buffers = sync.Pool{New: func() any { return new([]byte) }}
 
 // shared writes the index and what the pages have in common.
 func (w *writer) shared(rows []row) error {
-	index, err := indexPage(w, rows)
+	v := newIndexView(w, rows)
+	index, err := indexPage(w, v, rows)
 	if err != nil {
 		return err
 	}
 	files := map[string][]byte{indexFile: index}
+	if w.options.PDF {
+		if files[paperFile], err = indexPaper(w, v, rows); err != nil {
+			return err
+		}
+	}
 	if !w.options.OneFile {
 		if files[indexCSVFile], err = indexCSV(rows); err != nil {
 			return err

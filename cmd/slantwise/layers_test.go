@@ -44,6 +44,8 @@ var layers = []struct {
 	{"slantwise/downlink/contacts/change", 9},
 	{"slantwise/downlink/contacts/solve", 10},
 	{"slantwise/downlink/contacts/explain", 11},
+	{"slantwise/reports/drawing", 5},
+	{"slantwise/reports/paper", 6},
 	{"slantwise/reports", 12},
 	{"slantwise/cmd/internal/atomicfile", 12},
 	{"slantwise/cmd/internal/nearest", 12},
