@@ -4,14 +4,10 @@ import (
 	"encoding/csv"
 	"encoding/json"
 	"os"
-	"slices"
 	"strings"
 	"testing"
-	"time"
 
 	"slantwise/cmd/internal/planfiles"
-	"slantwise/cmd/internal/scenario"
-	"slantwise/downlink/contacts"
 )
 
 const threeWindows = `request,spacecraft,station,antenna,window_start_utc,window_end_utc,minimum_s,desired_s,setup_s,teardown_s,value_per_s
@@ -192,103 +188,16 @@ r1,G,A,S1,2026-03-10T00:20:00Z,2026-03-10T00:30:00Z
 // The page, and beside it the plan as CSV and all numbers as JSON, from the demo; twice the
 // same bytes. The plan's rows as the recorder and the page count them add up to the plan's
 // own bytes.
-func TestContactsPage(t *testing.T) {
-	writeInto(t, nil)
-	for _, name := range []string{"a.html", "b.html"} {
-		if code, _, errOut := invoke(t, "contacts", "--iterations", "3", "--page", name, "--pointing", "pointing"); code != ExitAnswer {
-			t.Fatal(errOut)
-		}
-	}
-	read := func(name string) string {
-		text, err := os.ReadFile(name)
-		if err != nil {
-			t.Fatal(err)
-		}
-		return string(text)
-	}
-	same := strings.NewReplacer("a.csv", "b.csv", "a.json", "b.json").Replace(read("a.html")) == read("b.html")
-	if !same || read("a.json") != read("b.json") {
-		t.Error("two runs differ")
-	}
-	var got struct {
-		Worth    struct{ Bytes float64 }
-		Contacts []struct{ Contact string }
-		Windows  []struct{ Why string } `json:"windows_not_taken"`
-		Volumes  []struct{ Bytes float64 }
-		Recorder []struct {
-			Points []struct {
-				Stored float64 `json:"stored_bytes"`
-			}
-		} `json:"recorders"`
-	}
-	if err := json.Unmarshal([]byte(read("a.json")), &got); err != nil {
-		t.Fatal(err)
-	}
-	sum := 0.0
-	for _, v := range got.Volumes {
-		sum += v.Bytes
-	}
-	if d := sum - got.Worth.Bytes; d < -1 || d > 1 || sum == 0 { // 1 B of some 200 GB: rows are written to 1 mB
-		t.Errorf("volumes add up to %f B, the plan has %f B", sum, got.Worth.Bytes)
-	}
-	if len(got.Recorder) != 1 || len(got.Recorder[0].Points) < 10 || len(got.Windows) == 0 || got.Windows[0].Why == "" {
-		t.Errorf("%+v", got)
-	}
-	files, err := os.ReadDir("pointing")
-	if err != nil || len(files) != len(got.Contacts) { // in the demo every contact has one link
-		t.Errorf("%v: %d pointing files for %d contacts", err, len(files), len(got.Contacts))
-	}
-	if head, _, _ := strings.Cut(read("pointing/"+files[0].Name()), "\n"); head != strings.Join(pointingColumns, ",") {
-		t.Errorf("columns %s", head)
-	}
-}
-
+// An interrupt in the middle of the search leaves the best plan, whole, and says so. In the
+// demo the mounts' slews keep the bound loose, so that no proof ends the search before.
+// Two spacecraft rise together and part: one degree apart at first, five at 100 s, on one
+// frequency until the second is moved off. With 2 degrees they clash up to 25 s, in steps of
+// 10 s and one step around.
 // The files of a planning day are sound, and its two scenarios differ in the element file
 // alone.
-func TestPlanningDay(t *testing.T) {
-	writeInto(t, nil)
-	if code, _, errOut := invoke(t, "new", "--planning-day", "day"); code != ExitAnswer {
-		t.Fatal(errOut)
-	}
-	for _, name := range []string{"day/yesterday.yaml", "day/today.yaml"} {
-		if code, _, errOut := invoke(t, "check", "--scenario", name); code != ExitAnswer {
-			t.Errorf("%s: %s", name, errOut)
-		}
-	}
-	if code, _, errOut := invoke(t, "new", "--planning-day", "day"); code != ExitInput || !strings.Contains(errOut, "yesterday.yaml") {
-		t.Errorf("over files that are there: %d %s", code, errOut)
-	}
-}
-
 // A shift from 22:00 to 06:00 over the night of 28 to 29 March 2026 in London lasts seven
 // hours, since clocks go forward at 01:00 UTC (tz database); the next one lasts eight. On the
 // other side of the date line, Kiritimati, UTC+14, has Sunday from Saturday 10:00 UTC.
-func TestShifts(t *testing.T) {
-	zone := func(name string) *time.Location {
-		z, err := time.LoadLocation(name)
-		if err != nil {
-			t.Fatal(err)
-		}
-		return z
-	}
-	p := &contacts.Problem{Start: time.Date(2026, 3, 28, 12, 0, 0, 0, time.UTC), Length: 48 * contacts.Hour}
-	night := []scenario.Shift{{From: 22 * time.Hour, To: 6 * time.Hour}}
-	var got []contacts.Span
-	for _, s := range staffed(p, night, zone("Europe/London")) {
-		if s.From >= 0 {
-			got = append(got, s)
-		}
-	}
-	want := []contacts.Span{{From: 10 * contacts.Hour, To: 17 * contacts.Hour}, {From: 33 * contacts.Hour, To: 41 * contacts.Hour}}
-	if !slices.Equal(got, want) {
-		t.Errorf("London: %v, want %v", got, want)
-	}
-	sunday := []scenario.Shift{{Days: []time.Weekday{time.Sunday}, To: 24 * time.Hour}}
-	if got := staffed(p, sunday, zone("Pacific/Kiritimati")); !slices.Equal(got, []contacts.Span{{From: -2 * contacts.Hour, To: 22 * contacts.Hour}}) {
-		t.Errorf("Kiritimati: %v", got)
-	}
-}
-
 // The schema's lists of required fields are those of the answer.
 func TestContactsSchema(t *testing.T) {
 	code, out, _ := invoke(t, "contacts", "schema")
