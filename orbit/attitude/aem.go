@@ -242,7 +242,7 @@ func (i *interpreter) reader(b *block) func(v []float64) (Quaternion, string) {
 		return nil
 	}
 	if strings.HasPrefix(kind, "SPIN") {
-		i.fault(e.line, "ATTITUDE_TYPE %s is not read here, since no source was found for the zero of its phase; QUATERNION and EULER_ANGLE are, and attitude: spin takes the axis with the phase left open", kind)
+		i.fault(e.line, "ATTITUDE_TYPE %s is not read: from which direction its spin angle counts is not settled here; write the attitude as QUATERNION or EULER_ANGLE, or give attitude: spin, which takes the axis and leaves the phase open", kind)
 		return nil
 	}
 	if _, ok := columnsOf[kind]; !ok {

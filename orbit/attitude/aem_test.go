@@ -209,7 +209,7 @@ func TestBadMessages(t *testing.T) {
 		"two bodies":              {message("REF_FRAME_A = SC_BODY_1\nREF_FRAME_B = SC_BODY_2\n"+quats, good), "one must be the body"},
 		"direction":               {message(inITRF+"ATTITUDE_DIR = UP\n"+quats, good), "it must be A2B or B2A"},
 		"time system":             {strings.Replace(message(head, good), "= UTC", "= TAI", 1), `TIME_SYSTEM "TAI" is not read here`},
-		"spin":                    {message(inITRF+"ATTITUDE_TYPE = SPIN\n", good), "attitude: spin takes the axis"},
+		"spin":                    {message(inITRF+"ATTITUDE_TYPE = SPIN\n", good), "attitude: spin, which takes the axis"},
 		"type":                    {message(inITRF+"ATTITUDE_TYPE = MATRIX\n", good), "is not known"},
 		"sequence":                {message(inITRF+"ATTITUDE_TYPE = EULER_ANGLE\nEULER_ROT_SEQ = 332\n", good), "none twice in a row"},
 		"no sequence":             {message(inITRF+"ATTITUDE_TYPE = EULER_ANGLE\n", good), "EULER_ROT_SEQ"},

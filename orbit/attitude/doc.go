@@ -10,7 +10,7 @@
 //
 // Read are the types QUATERNION and EULER_ANGLE, with rates or derivatives, which are
 // not used; times in UTC; frames EME2000 (J2000), GCRF, ICRF, TOD, TEME and ITRF. Left out are
-// SPIN records, whose zero of the phase no source was found for, and frames that turn
+// SPIN records, whose zero of the phase is not settled here, and frames that turn
 // with the orbit.
 //
 // Sources: data lines and keywords of CCSDS 504.0-B-1 and B-2 as public readers of the

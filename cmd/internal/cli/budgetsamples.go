@@ -3,10 +3,12 @@ package cli
 import (
 	"errors"
 	"fmt"
+	"slices"
 	"time"
 
 	"slantwise/cmd/internal/scenario"
 	"slantwise/downlink"
+	"slantwise/downlink/linkset"
 	"slantwise/downlink/propagation"
 	"slantwise/orbit"
 	"slantwise/orbit/elements"
@@ -146,7 +148,19 @@ func budgetOfPass(s *scenario.Scenario, c *chosenLink, at time.Time, step time.D
 		return r, nil
 	}
 	r.setOrbit(c.spacecraft.Elements, r.pass.AOS)
+	r.tellSets()
 	return r, r.fly(eph, step)
+}
+
+// tellSets says which link sets leave the link less of the pass than its volume here.
+func (r *budgetResult) tellSets() {
+	for i := range r.spacecraft.LinkSets {
+		set := &r.spacecraft.LinkSets[i]
+		if slices.Contains(set.Links, r.transmitter.Name) && set.Rule.Order != linkset.Together {
+			r.notes = append(r.notes, downlink.Note{Kind: downlink.Assumption,
+				Text: fmt.Sprintf("the volume is that of %s alone; in the link set %s it has a share of the pass: slantwise rates --set %q", r.transmitter.Name, set.Name, set.Name)})
+		}
+	}
 }
 
 func (r *budgetResult) fly(eph *orbit.Ephemeris, step time.Duration) error {

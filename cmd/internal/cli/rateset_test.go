@@ -88,3 +88,18 @@ func TestLinkSetWrongly(t *testing.T) {
 		t.Errorf("code %d: %s", code, errOut)
 	}
 }
+
+// A budget's volume is that of its link alone, and says so where a set leaves it less.
+func TestBudgetTellsItsLinkSets(t *testing.T) {
+	const told = `in the link set half duplex it has a share of the pass: slantwise rates --set "half duplex"`
+	for transmitter, want := range map[string]bool{"UHF": true, "X-band": false} {
+		link := []string{"budget", "--spacecraft", "Pipit 2", "--station", "Reedmere", "--antenna", "crossed yagi", "--transmitter", transmitter}
+		if !want { // in another set, of another order
+			link = []string{"budget", "--spacecraft", "Wagtail 1", "--station", "Skerry Point", "--mode", "fast"}
+		}
+		code, out, errOut := invoke(t, link...)
+		if code != ExitAnswer || strings.Contains(out, told) != want {
+			t.Errorf("%s: exit code %d; told %t, want %t\n%s", transmitter, code, !want, want, errOut)
+		}
+	}
+}
