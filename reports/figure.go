@@ -10,7 +10,8 @@ import (
 type figureView struct {
 	ID, Title, Caption string
 	Table              template.HTML
-	Many               bool // many lines: a higher drawing
+	Many               bool          // many lines: a higher drawing
+	Drawing            template.HTML // the chart itself on a page without script; else empty
 }
 
 // figures returns the charts of a pass and what the page shows of them.
@@ -20,7 +21,7 @@ func figures(p *Pass, fr *frame) ([]drawing, []figureView) {
 	var views []figureView
 	for _, fig := range timeFigures(p, fr) {
 		drawings = append(drawings, fr.draw(&fig))
-		views = append(views, figureView{fig.id, fig.title, fig.caption, fig.table(p, rows), fig.many})
+		views = append(views, figureView{ID: fig.id, Title: fig.title, Caption: fig.caption, Table: fig.table(p, rows), Many: fig.many})
 	}
 	// The sky is twice as high as the others: with an odd one after it the columns end
 	// level.

@@ -23,9 +23,10 @@ type indexView struct {
 	Warnings              []Note
 	Assumptions, Defaults []Note
 	CSV, JSON             template.URL
-	PDF                   string   // the file beside the page; empty: none
-	Sky                   string   // what the path in the numbers is; empty: no row has one
-	Lacks                 []string // what is missing where
+	PDF                   string        // the file beside the page; empty: none
+	Drawing               template.HTML // the overview on a page without script; else empty
+	Sky                   string        // what the path in the numbers is; empty: no row has one
+	Lacks                 []string      // what is missing where
 }
 
 // stateCounts says how many passes there are, and how many pages of each kind: a pass
@@ -87,7 +88,11 @@ func newIndexView(w *writer, rows []row) *indexView {
 }
 
 func indexPage(w *writer, v *indexView, rows []row) ([]byte, error) {
-	if v.Chart {
+	if v.Chart && w.options.Static {
+		o := overviewSketch(w.report, rows)
+		s := sketch{wide: true, tall: o.Height(), draw: o.Draw}
+		v.Drawing = s.markup(overviewCaption)
+	} else if v.Chart {
 		data, err := marshalDrawings(map[string]any{"drawings": []drawing{drawOverview(w.report, rows)}, "offsets": nil})
 		if err != nil {
 			return nil, err

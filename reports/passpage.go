@@ -88,6 +88,10 @@ func passPage(w *writer, i int, p *Pass) ([]byte, error) {
 	fr := newFrame(p)
 	drawings, views := figures(p, fr)
 	v.Figures, v.Ground, v.Sights = views, newGroundView(p), sightViews(p)
+	if w.options.Static {
+		addStatic(v.Figures, sketches(p, fr))
+		drawings = nil
+	}
 	data, err := marshalDrawings(map[string]any{
 		"drawings": drawings,
 		"offsets":  offsets(p.Pass.AOS, p.Pass.LOS, p.Site.TimeZone, fr.base),
@@ -96,7 +100,9 @@ func passPage(w *writer, i int, p *Pass) ([]byte, error) {
 	if err != nil {
 		return nil, err
 	}
-	v.Data = dataElement(data)
+	if !w.options.Static {
+		v.Data = dataElement(data)
+	}
 	v.CSV, v.JSON = template.URL(v.Stem+".csv"), template.URL(v.Stem+".json")
 	if w.options.PDF {
 		v.PDF = v.Stem + ".pdf"

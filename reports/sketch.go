@@ -13,6 +13,7 @@ type sketch struct {
 	id, title, caption string
 	high               bool // many lines, or the sky
 	wide               bool
+	tall               float64 // points; 0: by high
 	draw               func(c vector.Canvas, w, h float64)
 }
 
@@ -144,6 +145,19 @@ func skySketch(p *Pass, fr *frame) *vector.Sky {
 			one.Lines = []string{e.short, clock(e.at)}
 		}
 		s.Events = append(s.Events, one)
+	}
+	if p.Ground == nil {
+		return s
+	}
+	for _, b := range p.Ground.Sky { // at the culmination
+		if b.ElevationDeg < 0 {
+			continue
+		}
+		symbol := vector.Diamond
+		if b.Name == "Sun" {
+			symbol = vector.Ring
+		}
+		s.Events = append(s.Events, vector.Event{At: vector.Place{Azimuth: b.AzimuthDeg, Elevation: b.ElevationDeg}, Symbol: symbol, Lines: []string{b.Name}})
 	}
 	return s
 }

@@ -28,11 +28,20 @@ type pageView struct {
 	Data    template.HTML
 	Public  string // the address that the chart script comes from; empty when it is with the page
 	OneFile bool
+	Static  bool // no script at all
 }
 
 // page fills in what every page has; root is the way to the index.
 func (w *writer) page(root, title string) pageView {
-	v := pageView{Title: title, Root: root, OneFile: w.options.OneFile}
+	v := pageView{Title: title, Root: root, OneFile: w.options.OneFile, Static: w.options.Static}
+	if v.Static {
+		v.Style = template.HTML(`<link rel="stylesheet" href="` + root + styleFile + `">`)
+		if v.OneFile {
+			v.Style = template.HTML("<style>" + styleSheet + "</style>")
+		}
+		v.Policy = policy([]string{"'none'"})
+		return v
+	}
 	var scripts strings.Builder
 	var sources []string
 	switch {

@@ -26,6 +26,7 @@ const (
 // Options say how a report is written.
 type Options struct {
 	OneFile  bool                  // each page holds everything inside, to be mailed
+	Static   bool                  // pages without script, their charts drawn in them
 	PDF      bool                  // a PDF beside each page
 	Version  string                // of the program, for the files that name it
 	Workers  int                   // 0: as many as the machine runs at once
@@ -150,8 +151,11 @@ func (w *writer) shared(rows []row) error {
 		if files[indexJSONFile], err = indexJSON(rows); err != nil {
 			return err
 		}
-		files[styleFile], files[scriptFile] = []byte(styleSheet), []byte(pageScript)
-		if w.chart.code != "" {
+		files[styleFile] = []byte(styleSheet)
+		if !w.options.Static {
+			files[scriptFile] = []byte(pageScript)
+		}
+		if w.chart.code != "" && !w.options.Static {
 			files[chartFile], files[licenceFile] = []byte(w.chart.code), []byte(w.chart.licence)
 		}
 	}

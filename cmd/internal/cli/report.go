@@ -15,7 +15,7 @@ import (
 // reportOptions is what the command line says.
 type reportOptions struct {
 	into                 string
-	oneFile, pdf         bool
+	oneFile, pdf, static bool
 	spacecraft, stations []string
 	mode                 string
 	workers              int
@@ -50,6 +50,7 @@ is refused. Standard output names the file to open.`,
 		Example: `  slantwise report
   slantwise report --station "Skerry Point" --mode fast --into friday
   slantwise report --pdf --spacecraft "Wagtail 1" --into print
+  slantwise report --static --station "Skerry Point" --into plain
   slantwise report --one-file --spacecraft "Wagtail 1"   # pages to be mailed`,
 		Args: noArgs,
 		RunE: func(cmd *cobra.Command, _ []string) error {
@@ -62,6 +63,7 @@ is refused. Standard output names the file to open.`,
 	fs := cmd.Flags()
 	fs.StringVar(&o.into, "into", "slantwise-report", "write into this `FOLDER`")
 	fs.BoolVar(&o.oneFile, "one-file", false, "put everything inside each page, to be mailed")
+	fs.BoolVar(&o.static, "static", false, "pages without script, their charts drawn in them: for mail and closed machines")
 	fs.BoolVar(&o.pdf, "pdf", false, "put a PDF beside each page, for print")
 	fs.StringArrayVar(&o.spacecraft, "spacecraft", nil, "only this spacecraft, by `NAME`; may be repeated")
 	fs.StringArrayVar(&o.stations, "station", nil, "only this station, by `NAME`; may be repeated")
@@ -84,7 +86,7 @@ func runReport(ctx context.Context, env *Env, o reportOptions) error {
 	}
 	bar := env.startProgress("pages", len(plan.pages))
 	index, err := reports.Write(ctx, o.into, plan.report(), reports.Options{
-		OneFile: o.oneFile, PDF: o.pdf, Version: version(), Workers: o.workers, Progress: func(int, int) { bar.add(1) },
+		OneFile: o.oneFile, PDF: o.pdf, Static: o.static, Version: version(), Workers: o.workers, Progress: func(int, int) { bar.add(1) },
 	})
 	bar.stop()
 	var folder *reports.FolderError
