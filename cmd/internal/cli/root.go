@@ -64,6 +64,7 @@ Results go to stdout, words for people to stderr. Exit codes:
 		newAcceptance(env),
 		newSites(env),
 		newFollow(env),
+		newLog(env),
 		newContacts(env),
 	)
 	completeFlags(root, env)

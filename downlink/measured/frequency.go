@@ -1,0 +1,44 @@
+package measured
+
+import (
+	"fmt"
+	"math"
+)
+
+// FitFrequency fits measured less predicted frequency: an offset of the transmitter at
+// the middle of the samples, with drift its change a second, and how much later than the
+// elements say the spacecraft flies (greater than 0: late). The time offset is taken to
+// first order in the rate of the frequency, which holds for some seconds.
+func FitFrequency(points []Point, drift bool) (*Fit, error) {
+	var t, y, rate []float64
+	var rows []int
+	for i := range points {
+		p := &points[i]
+		r := p.Residual(FrequencyHz)
+		if p.State == Outside || p.State == Dropout || math.IsNaN(r) || math.IsNaN(p.FrequencyRateHzS) {
+			continue
+		}
+		t, y, rate, rows = append(t, p.At.Sub(points[0].At).Seconds()), append(y, r), append(rate, p.FrequencyRateHzS), append(rows, i)
+	}
+	if len(t) == 0 {
+		return nil, fmt.Errorf("fit of the frequency: %w: none is within a pass", errTooFew)
+	}
+	middle := (t[0] + t[len(t)-1]) / 2
+	names := []Parameter{{Name: "transmitter offset", Unit: "Hz"}, {Name: "time offset of the elements", Unit: "s"}}
+	if drift {
+		names = append(names, Parameter{Name: "transmitter drift", Unit: "Hz/s"})
+	}
+	x := make([][]float64, len(t))
+	for i := range t {
+		x[i] = []float64{1, -rate[i]}
+		if drift {
+			x[i] = append(x[i], t[i]-middle)
+		}
+	}
+	f, err := solve(t, y, x, names)
+	if err != nil {
+		return nil, fmt.Errorf("fit of the frequency: %w", err)
+	}
+	f.mark(points, rows)
+	return f, nil
+}

@@ -1,0 +1,141 @@
+package measured
+
+import (
+	"fmt"
+	"math"
+	"time"
+
+	"slantwise/downlink"
+	"slantwise/orbit"
+	"slantwise/orbit/unit"
+	"slantwise/station"
+)
+
+// State tells how a sample is used.
+type State int
+
+// States.
+const (
+	Used      State = iota
+	Outside         // the spacecraft is below the horizon, or the orbit does not cover the instant
+	Dropout         // not locked, or far below the rest
+	Saturated       // the receiver shows its greatest value though the signal changes
+	Wet             // it rained, or the samples look like rain
+	Outlier         // farther from the fit than the noise explains
+)
+
+// String returns the state in a word.
+func (s State) String() string {
+	return [...]string{"used", "outside any pass", "dropout", "saturated", "wet", "outlier"}[s]
+}
+
+// Point is a sample over what was predicted for its instant.
+type Point struct {
+	Sample
+	State                State
+	AzimuthDeg           float64
+	ElevationDeg         float64
+	PredictedFrequencyHz float64
+	FrequencyRateHzS     float64 // of the predicted frequency
+	PowerDBm, CN0DBHz    float64 // predicted; NaN outside
+	EbN0DB               float64
+}
+
+// Predicted returns what was predicted for a quantity, NaN where nothing was; for
+// relative power it is the power, whose changes compare.
+func (p *Point) Predicted(q Quantity) float64 {
+	switch q {
+	case PowerDBm, RelativePowerDB:
+		return p.PowerDBm
+	case CN0DBHz:
+		return p.CN0DBHz
+	case EbN0DB:
+		return p.EbN0DB
+	case FrequencyHz:
+		return p.PredictedFrequencyHz
+	case AzimuthDeg:
+		return p.AzimuthDeg
+	case ElevationDeg:
+		return p.ElevationDeg
+	}
+	return math.NaN()
+}
+
+// Residual returns measured less predicted, an azimuth the short way round.
+func (p *Point) Residual(q Quantity) float64 {
+	d := p.Get(q) - p.Predicted(q)
+	if q == AzimuthDeg {
+		d = math.Remainder(d, 360)
+	}
+	return d
+}
+
+// Prediction is what samples are put over.
+type Prediction struct {
+	Link       *downlink.Link // nil: only frequencies and angles of Carrier
+	Orbit      *orbit.Ephemeris
+	Frame      station.Frame
+	Refraction *station.Refraction                 // nil: angles are geometric
+	Carrier    func(time.Time) unit.Frequency      // transmitted
+	Least      func(azimuth unit.Angle) unit.Angle // horizon; nil: 0
+}
+
+// Over puts the samples over the prediction. Samples outside any pass stay in the list
+// as Outside. It fails where a budget has no value.
+func (p *Prediction) Over(samples []Sample) ([]Point, error) {
+	out := make([]Point, len(samples))
+	for i := range samples {
+		pt := &out[i]
+		*pt = Point{Sample: samples[i], AzimuthDeg: math.NaN(), ElevationDeg: math.NaN(), PredictedFrequencyHz: math.NaN(),
+			FrequencyRateHzS: math.NaN(), PowerDBm: math.NaN(), CN0DBHz: math.NaN(), EbN0DB: math.NaN()}
+		state, err := p.Orbit.At(pt.At)
+		if err != nil {
+			pt.State = Outside
+			continue
+		}
+		look := p.Frame.Look(state)
+		elevation := look.Elevation
+		if p.Refraction != nil {
+			if seen, ok := p.Refraction.Apparent(elevation); ok {
+				elevation = seen
+			}
+		}
+		pt.AzimuthDeg, pt.ElevationDeg = look.Azimuth.Degrees(), elevation.Degrees()
+		pt.PredictedFrequencyHz, pt.FrequencyRateHzS = p.frequency(pt.At)
+		least := unit.Angle(0)
+		if p.Least != nil {
+			least = p.Least(look.Azimuth)
+		}
+		if look.Elevation < min(least, 0) {
+			pt.State = Outside
+			continue
+		}
+		if pt.Get(Locked) == 0 {
+			pt.State = Dropout
+		}
+		if p.Link == nil {
+			continue
+		}
+		g, _ := p.Link.GeometryOf(pt.At, state)
+		b, err := p.Link.At(g)
+		if err != nil {
+			return nil, fmt.Errorf("prediction for %s: %w", pt.At.Format(time.RFC3339), err)
+		}
+		pt.PowerDBm, pt.CN0DBHz, pt.EbN0DB = b.ReceivedPowerDBm, float64(b.CN0), float64(b.EbN0)
+	}
+	return out, nil
+}
+
+// frequency returns what is received to first order, f (1 - ṙ/c), and how fast it changes;
+// the rate is NaN at the ends of the orbit.
+func (p *Prediction) frequency(t time.Time) (f, rate float64) {
+	at := func(t time.Time) float64 {
+		s, err := p.Orbit.At(t)
+		if err != nil {
+			return math.NaN()
+		}
+		return p.Carrier(t).Hertz() * (1 - float64(p.Frame.Look(s).RangeRate)/unit.SpeedOfLight)
+	}
+	const half = 500 * time.Millisecond
+	return at(t), at(t.Add(half)) - at(t.Add(-half))
+}
