@@ -44,6 +44,11 @@ station takes, and a page of geometry where there is none. Volumes and margins a
 those of one mode of the transmitter: the one that brings the most bytes in the pass,
 or --mode.
 
+With --pdf each page has a PDF of A4 beside it, and the window has passes.pdf: the same
+words and numbers, charts as vectors, and text that can be searched; no browser is needed
+for them. With --static the pages have no script: the same charts are drawn into them, for
+mail and closed machines.
+
 The folder appears whole or not at all. In a folder with an earlier report the files
 of that report are replaced, and all others stay; a folder that holds something else
 is refused. Standard output names the file to open.`,
