@@ -47,7 +47,7 @@ is named or lies here, it is the time that the windows span.
 
 The search ends with the proof, with --time-limit, counted from the start of the command,
 or after so many --iterations: then the plan is the same on every machine. An interrupt
-ends it, too, and the best plan so far is written.
+ends it, too: the best plan so far is written whole, which is said, and the exit code is 0.
 
 --calendar and --calendars write iCalendar files (RFC 5545). A file that is there is
 revised: events keep their UID, SEQUENCE counts the exports, a dropped contact follows as
@@ -136,13 +136,22 @@ func (e *Env) tellSearch() func(solve.Progress) {
 	}
 }
 
+// scenario reads the scenario. Windows from outside need none: then nothing of the demo
+// counts, and it stays unsaid.
+func (o *planSource) scenario(env *Env) (*scenario.Scenario, error) {
+	if o.windows == "" {
+		return env.load(needOrbits)
+	}
+	s, err := env.open(scenario.NeedPlan) // no spacecraft is flown
+	if err == nil && !s.Demo {
+		env.warn(s)
+	}
+	return s, err
+}
+
 // problem makes the problem of the flags and the scenario.
 func (o *planSource) problem(ctx context.Context, env *Env) (*planProblem, error) {
-	need := needOrbits
-	if o.windows != "" {
-		need = scenario.NeedPlan // no spacecraft is flown
-	}
-	s, err := env.load(need)
+	s, err := o.scenario(env)
 	if err != nil {
 		return nil, err
 	}

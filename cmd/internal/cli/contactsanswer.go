@@ -146,6 +146,7 @@ func (a *planAnswer) writeTable(env *Env) error {
 // tell says what the plan is worth and what is proven, for people.
 func (a *planAnswer) tell(env *Env) {
 	r := a.result
+	env.note("%s", a.gain())
 	env.note("value %s, and no plan is worth more than %s: %s", fixed(r.Value, 0), fixed(r.Bound, 0), gapText(r))
 	if w := r.Worth; w.Share != 0 || w.Price != 0 || w.Changes != 0 {
 		env.note("value = contacts %s + share %s - price %s (%s of money) - changes %s (%d)", fixed(w.Contacts, 0), fixed(w.Share, 0), fixed(w.Price, 0), fixed(w.Money, 2), fixed(w.Changes, 0), w.Changed)
@@ -163,9 +164,33 @@ func (a *planAnswer) tell(env *Env) {
 	}
 }
 
+// gain says what the plan is for: its contacts, and the bytes they bring down, or how
+// long they last where no bytes are known.
+func (a *planAnswer) gain() string {
+	bytes, known, length := 0.0, false, contacts.Ms(0)
+	for i := range a.rows {
+		bytes += a.rows[i].VolumeBytes
+		known = known || a.rows[i].HasVolume
+	}
+	list := a.result.Plan.Contacts
+	for _, c := range list {
+		length += c.Length()
+	}
+	switch n := counted(len(list), "contact", "contacts"); {
+	case len(list) == 0:
+		return "0 contacts"
+	case known && len(list) == 1:
+		return n + " brings down " + bytesText(bytes)
+	case known:
+		return n + " bring down " + bytesText(bytes)
+	default:
+		return fmt.Sprintf("%s, %s min in all", n, fixed(length.Seconds()/60, 1))
+	}
+}
+
 func gapText(r *solve.Result) string {
 	if r.Proven {
-		return fmt.Sprintf("the plan is proven to be the best one (%d rounds)", r.Rounds)
+		return fmt.Sprintf("the plan is proven to be the best one (%s)", counted(r.Rounds, "round", "rounds"))
 	}
-	return fmt.Sprintf("a gap of %s %% stays open; ended by %s after %d rounds", fixed(r.GapPercent, 3), r.Stop, r.Rounds)
+	return fmt.Sprintf("a gap of %s %% stays open; ended by %s after %s", fixed(r.GapPercent, 3), r.Stop, counted(r.Rounds, "round", "rounds"))
 }

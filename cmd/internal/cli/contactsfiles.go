@@ -47,7 +47,12 @@ func (o *planSource) horizon(env *Env, s *scenario.Scenario, rows []windowRow) e
 	if !s.Demo && s.Window.Start.IsZero() {
 		return inputErrorf("window: the scenario holds none; give one that holds the windows of %s", o.windows)
 	}
-	if !s.Demo || given {
+	if !s.Demo {
+		return nil
+	}
+	s.Spacecraft, s.Stations, s.ContactPlan = nil, nil, scenario.ContactPlan{Step: s.ContactPlan.Step, Least: s.ContactPlan.Least}
+	if given {
+		env.note("no scenario was named: the horizon is %s to %s, without other rules", utc(s.Window.Start), utc(s.Window.End))
 		return nil
 	}
 	var first, last time.Time
@@ -59,7 +64,6 @@ func (o *planSource) horizon(env *Env, s *scenario.Scenario, rows []windowRow) e
 			last = r.End
 		}
 	}
-	s.Spacecraft, s.Stations, s.ContactPlan = nil, nil, scenario.ContactPlan{Step: s.ContactPlan.Step, Least: s.ContactPlan.Least}
 	if !last.After(first) {
 		if len(rows) > 0 {
 			return nil // the rows are at fault, and say so themselves

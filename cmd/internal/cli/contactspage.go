@@ -98,8 +98,11 @@ func (a *planAnswer) writePage(ctx context.Context, file string) error {
 func (a *planAnswer) timeline(ctx context.Context) (*reports.Timeline, *planPage, error) {
 	p, r := a.p, a.result
 	t := &reports.Timeline{
-		Head: "Contact plan", From: p.At(0), To: p.At(p.Length), Answer: fmt.Sprintf("Value %.6g, and no plan is worth more than %.6g: %s.", r.Value, r.Bound, gapText(r)),
-		Lines: []string{fmt.Sprintf("Planned at %s for %s to %s.", utc(p.At(p.Now)), utc(p.At(0)), utc(p.At(p.Length)))}, Notes: p.notes,
+		Head: "Contact plan", From: p.At(0), To: p.At(p.Length), Answer: a.gain() + "; " + gapText(r) + ".",
+		Lines: []string{
+			fmt.Sprintf("Value %.6g, and no plan is worth more than %.6g.", r.Value, r.Bound),
+			fmt.Sprintf("Planned at %s for %s to %s.", utc(p.At(p.Now)), utc(p.At(0)), utc(p.At(p.Length))),
+		}, Notes: p.notes,
 	}
 	if !r.Proven && len(r.Left) > 0 {
 		t.Lines = append(t.Lines, "The bound does not know of some rules that the plan keeps, and may be loose by them: "+strings.Join(r.Left, ", ")+".")

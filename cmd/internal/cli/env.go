@@ -61,6 +61,12 @@ func (e *Env) load(n need) (*scenario.Scenario, error) {
 	if err != nil {
 		return nil, err
 	}
+	e.warn(s)
+	return s, nil
+}
+
+// warn says what a scenario warns of.
+func (e *Env) warn(s *scenario.Scenario) {
 	for i, w := range s.Warnings {
 		if i == warningLimit {
 			e.note("warning: and %d more; slantwise check lists them all", len(s.Warnings)-i)
@@ -68,7 +74,6 @@ func (e *Env) load(n need) (*scenario.Scenario, error) {
 		}
 		e.note("warning: %s", printable(w.String()))
 	}
-	return s, nil
 }
 
 // warningLimit is how many warnings a command tells; a thousand old element sets
@@ -77,12 +82,21 @@ const warningLimit = 10
 
 // read is load without the warnings, for a command that tells them itself.
 func (e *Env) read(n need) (*scenario.Scenario, error) {
-	s, err := scenario.Load(scenario.Request{Path: e.Scenario, Flags: e.overrides, Need: n})
+	s, err := e.open(n)
 	if err != nil {
-		return nil, &InputError{Err: err}
+		return nil, err
 	}
 	if s.Demo {
 		e.note("no --scenario and no %s here: this is the embedded demo (slantwise new writes a scenario to start from)", scenario.DefaultFile)
+	}
+	return s, nil
+}
+
+// open is read without a word, for a command that may not use what the demo says.
+func (e *Env) open(n need) (*scenario.Scenario, error) {
+	s, err := scenario.Load(scenario.Request{Path: e.Scenario, Flags: e.overrides, Need: n})
+	if err != nil {
+		return nil, &InputError{Err: err}
 	}
 	return s, nil
 }
