@@ -62,7 +62,7 @@ func (d *dishStudy) tell() {
 	for _, text := range rulesNotes(&d.spacecraft.RatePlan, d.transmitter) {
 		d.note(downlink.Assumption, "%s", text)
 	}
-	d.note(downlink.Assumption, "the Sun and the Moon in the beam, interference and outages of the station are left out")
+	d.note(downlink.Assumption, "the Sun and the Moon in the beam, interference, outages of the station and what a mount cannot follow are left out (slantwise follow --help tells the last)")
 	if slices.ContainsFunc(d.links, func(c chosenLink) bool { return c.antenna.Mount != nil }) {
 		d.note(downlink.Assumption, "contacts leave out what the mounts cannot follow, with the rates and the beam of the scenario's own diameters")
 	}
