@@ -55,3 +55,6 @@ func contentHash(code string) string {
 	sum := sha256.Sum256([]byte(code))
 	return "'sha256-" + base64.StdEncoding.EncodeToString(sum[:]) + "'"
 }
+
+// StyleSheet returns the style sheet of all pages, for a page that is made elsewhere.
+func StyleSheet() string { return styleSheet }

@@ -53,6 +53,7 @@ Results go to stdout, words for people to stderr. Exit codes:
 		newBudget(env),
 		newPath(env),
 		newReport(env),
+		newServe(env),
 		newModes(env),
 		newTuning(env),
 		newFlux(env),

@@ -1,0 +1,40 @@
+package web
+
+import (
+	"bytes"
+	"crypto/rand"
+	_ "embed"
+	"html/template"
+	"net/http"
+)
+
+//go:embed page/live.html
+var pageText string
+
+//go:embed page/live.js
+var pageScript string
+
+//go:embed page/live.css
+var pageStyle string
+
+var pageTemplate = template.Must(template.New("live").Parse(pageText))
+
+// page writes the page, its script and style inside under a nonce of its own.
+func (s *Server) page(w http.ResponseWriter, _ *http.Request) {
+	nonce := rand.Text()
+	var b bytes.Buffer
+	err := pageTemplate.Execute(&b, struct {
+		Nonce  string
+		Style  template.CSS
+		Script template.JS
+	}{nonce, template.CSS(s.config.Style + pageStyle), template.JS(pageScript)})
+	if err != nil {
+		fail(w, err)
+		return
+	}
+	h := w.Header()
+	h.Set("Content-Security-Policy", "default-src 'none'; script-src 'nonce-"+nonce+"'; style-src 'nonce-"+nonce+
+		"'; connect-src 'self'; img-src data:; base-uri 'none'; form-action 'none'; frame-ancestors 'none'")
+	h.Set("Content-Type", "text/html; charset=utf-8")
+	w.Write(b.Bytes()) // a client that has gone gets nothing
+}
