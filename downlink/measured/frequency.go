@@ -3,6 +3,7 @@ package measured
 import (
 	"fmt"
 	"math"
+	"time"
 )
 
 // FitFrequency fits measured less predicted frequency: an offset of the transmitter at
@@ -39,6 +40,7 @@ func FitFrequency(points []Point, drift bool) (*Fit, error) {
 	if err != nil {
 		return nil, fmt.Errorf("fit of the frequency: %w", err)
 	}
+	f.Middle = points[0].At.Add(time.Duration(middle * float64(time.Second)))
 	f.mark(points, rows)
 	return f, nil
 }

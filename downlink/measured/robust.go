@@ -5,6 +5,7 @@ import (
 	"fmt"
 	"math"
 	"slices"
+	"time"
 
 	"gonum.org/v1/gonum/mat"
 	"gonum.org/v1/gonum/stat/distuv"
@@ -25,8 +26,9 @@ type Fit struct {
 	Scale       float64     // standard deviation of a sample, in its unit
 	PerSecond   float64     // correlation of the noise over one second
 	Used        int
-	Outliers    []int    // rows, not used
-	Advice      []string // what the data cannot tell apart
+	Middle      time.Time // of a fit of the frequency: when the offset holds
+	Outliers    []int     // rows, not used
+	Advice      []string  // what the data cannot tell apart
 }
 
 // tooAlike is the correlation above which two parameters are said to be one.

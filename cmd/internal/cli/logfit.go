@@ -70,9 +70,20 @@ func runLogFit(env *Env, in *logInput, f format) error {
 		points := append([]measured.Point(nil), o.points...)
 		fit, err := measured.FitFrequency(points, true)
 		add(measured.FrequencyHz, fit, err)
+		if err == nil {
+			out.notes = append(out.notes, o.oscillatorOffer(fit))
+		}
 		out.notes = append(out.notes, leftOut(measured.FrequencyHz, points)...)
 	}
 	return out.write(env, f)
+}
+
+// oscillatorOffer says what the scenario would state for the transmitter by the fit.
+func (o *overLog) oscillatorOffer(fit *measured.Fit) string {
+	at := fit.Middle
+	had := o.transmitter.Oscillator.OffsetAt(at).Hertz()
+	return fmt.Sprintf("offered for transmitter %s: oscillator: {measured: [{at_utc: %s, offset_hz: %s}]}, a row a log; the scenario has %s Hz then", o.transmitter.Name,
+		utc(at), fixed(had+fit.Parameters[0].Value, 1), fixed(had, 1))
 }
 
 // leftOut counts and names the samples that a fit did not use.
