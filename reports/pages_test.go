@@ -228,7 +228,7 @@ var pdfPage = regexp.MustCompile(`/Type\s*/Page[^s]`)
 func TestPrintsOnA4(t *testing.T) {
 	ctx := browser(t)
 	root := onDisk(t, goldenReport(), Options{})
-	for name, want := range map[string]int{"index.html": 2, firstPage: 5} {
+	for name, want := range map[string]int{"index.html": 2, firstPage: 6} {
 		show(t, ctx, root+name, screen{1440, "dark"})
 		yes := true
 		pdf, err := chromedp.Run(ctx, chromedp.PrintToPDF(func(p *page.PrintToPDFParams) { p.PreferCSSPageSize = &yes }))
