@@ -54,8 +54,12 @@ type Pass struct {
 // Direction is a point of the sky.
 type Direction struct{ AzimuthDeg, ElevationDeg float64 }
 
-// Elements tells which element set a pass was computed from.
+// Elements tells which orbit a pass was computed from.
 type Elements struct {
+	// InPlace says what stands in place of an element set, as "ephemeris of ..."; empty for
+	// an element set. Then there is no catalogue number, and of an ephemeris no epoch.
+	InPlace       string
+	NoEpoch       bool
 	Name          string
 	CatalogNumber int
 	Epoch         time.Time

@@ -88,7 +88,11 @@ func (v *passView) answerOn(d *paper.Document) {
 	if s := v.Surety; s != nil {
 		fact("By the orbit’s error", strings.TrimPrefix(s.Edges+", highest ±"+s.Elevation+"°", ", "), "one standard deviation")
 	}
-	fact("Age of the element set", v.Element.Age, "at AOS, epoch "+v.Element.Epoch+" UTC")
+	if v.Element.InPlace != "" {
+		fact("Orbit", v.Element.InPlace, "")
+	} else {
+		fact("Age of the element set", v.Element.Age, "at AOS, epoch "+v.Element.Epoch+" UTC")
+	}
 	d.Table(paper.Table{Corner: "In short", Heads: []string{""}, Rows: rows, Left: true, First: 0.35})
 	if l := v.Link; l != nil {
 		l.Sky.on(d)
@@ -181,6 +185,9 @@ func (v *passView) assumptionsOn(d *paper.Document) {
 		text += " from " + v.Element.From
 	}
 	text += ", epoch " + v.Element.Epoch + " UTC, " + v.Element.Age + " old at AOS. An element set errs by about a kilometre along the track when it is fresh and by more each day."
+	if v.Element.InPlace != "" {
+		text = "Flown by this orbit: " + v.Element.InPlace + ". How far it is off is not known from it alone."
+	}
 	if v.Surety != nil {
 		text += " Here the position is uncertain " + v.Surety.Basis + "."
 	}

@@ -1,6 +1,8 @@
 package reports
 
 import (
+	"math"
+
 	"slantwise/downlink"
 	"slantwise/station"
 )
@@ -34,11 +36,25 @@ type headJSON struct {
 }
 
 type elementsJSON struct {
-	Name          string `json:"name"`
-	CatalogNumber int    `json:"catalog_number"`
-	EpochUTC      string `json:"epoch_utc"`
-	AgeHours      number `json:"age_at_aos_h"`
-	File          string `json:"file"`
+	Name          string  `json:"name"`
+	CatalogNumber *int    `json:"catalog_number"`
+	EpochUTC      *string `json:"epoch_utc"`
+	AgeHours      number  `json:"age_at_aos_h"`
+	File          string  `json:"file"`
+	InPlace       string  `json:"in_place,omitempty"` // what is flown in place of an element set
+}
+
+// elementsHead leaves null what the kind of orbit does not have.
+func elementsHead(e *Elements) elementsJSON {
+	h := elementsJSON{Name: e.Name, AgeHours: number{math.NaN(), 3}, File: e.Source.File, InPlace: e.InPlace}
+	if e.InPlace == "" {
+		h.CatalogNumber = &e.CatalogNumber
+	}
+	if !e.NoEpoch {
+		text := utcText(e.Epoch)
+		h.EpochUTC, h.AgeHours = &text, number{e.Age.Hours(), 3}
+	}
+	return h
 }
 
 type eventJSON struct {
@@ -98,11 +114,10 @@ type noteJSON struct {
 var noteKinds = [...]string{Warning: "warning", Assumption: "assumption", Default: "default"}
 
 func passHead(p *Pass) headJSON {
-	e := p.Elements
 	h := headJSON{
 		Spacecraft: p.Spacecraft,
 		Station:    p.Site.Name,
-		Elements:   elementsJSON{e.Name, e.CatalogNumber, utcText(e.Epoch), number{e.Age.Hours(), 3}, e.Source.File},
+		Elements:   elementsHead(&p.Elements),
 		Cut:        p.Pass.Cut.String(),
 		DurationS:  number{p.Pass.Duration().Seconds(), 3},
 		Events:     []eventJSON{},

@@ -71,7 +71,9 @@ func modeViews(modes []ModeResult) []modeView {
 	return list
 }
 
-type elementView struct{ Name, Epoch, Age, From string }
+type elementView struct {
+	Name, Epoch, Age, From, InPlace string
+}
 
 // passPage renders the page of a pass.
 func passPage(w *writer, i int, p *Pass) ([]byte, error) {
@@ -137,7 +139,7 @@ func newPassView(p *Pass) *passView {
 		Highest:  fixed(q.MaxElevation.Degrees(), 1), HighestToward: direction(q.CulminationAzimuth.Degrees()),
 		Verdict: verdictOf(p),
 		HasZone: p.Site.TimeZone != nil,
-		Element: elementView{p.Elements.Name, dayClock(p.Elements.Epoch), age(p.Elements.Age), p.Elements.Source.File},
+		Element: elementView{p.Elements.Name, dayClock(p.Elements.Epoch), age(p.Elements.Age), p.Elements.Source.File, p.Elements.InPlace},
 	}
 	if v.Begin[:10] != v.End[:10] {
 		v.EndClock = v.End

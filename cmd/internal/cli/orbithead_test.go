@@ -1,6 +1,7 @@
 package cli
 
 import (
+	"os"
 	"path/filepath"
 	"strings"
 	"testing"
@@ -29,6 +30,23 @@ func TestAnswersSayWhatIsFlown(t *testing.T) {
 		_, out, errOut := invoke(t, append(append([]string{"pointing"}, link...), at...)...)
 		if !strings.Contains(out, c.json) || !strings.Contains(errOut, c.told) {
 			t.Errorf("pointing on %s: want %s and %q\n%.600s\n%s", c.file, c.json, c.told, out, errOut)
+		}
+	}
+	for file, told := range map[string]string{"slipped": "Flown by this orbit: state of 2026-09-15T06:23:00.000Z", "tracked": "Flown by this orbit: ephemeris of Sandpiper 1 (2026-777A), 2026-09-15T06:23:00.000Z to 2026-09-16T06:30:00.000Z, tracked.oem"} {
+		into := filepath.Join(t.TempDir(), file)
+		if code, _, errOut := invoke(t, "report", "--scenario", filepath.Join(day, file+".yaml"), "--station", "Hoarfjord", "--spacecraft", "Sandpiper 1", "--into", into); code != ExitAnswer {
+			t.Fatalf("report on %s: exit code %d\n%s", file, code, errOut)
+		}
+		pages, _ := filepath.Glob(filepath.Join(into, "passes", "*.html"))
+		if len(pages) == 0 {
+			t.Fatalf("report on %s: no pages", file)
+		}
+		page, err := os.ReadFile(pages[0])
+		if err != nil {
+			t.Fatal(err)
+		}
+		if !strings.Contains(string(page), told) || strings.Contains(string(page), "Age of the element set") {
+			t.Errorf("the page on %s does not say %q, or speaks of an element set", file, told)
 		}
 	}
 	_, out, _ := invoke(t, "check", "--scenario", filepath.Join(day, "tracked.yaml"), "--format", "json")

@@ -26,6 +26,9 @@ func (p *reportPlan) load(ctx context.Context, i int) (*reports.Pass, error) {
 			Name: el.Name, CatalogNumber: el.CatalogNumber, Epoch: el.Epoch, Age: el.Elements.Age(page.AOS), Source: el.Source,
 		},
 	}
+	if !craft.Orbit.HasNumber() {
+		out.Elements.InPlace, out.Elements.NoEpoch = newOrbitHead(craft.Spacecraft, el, page.AOS).String(), !craft.Orbit.HasEpoch()
+	}
 	// Only the file's name: where it lies on this machine is nobody's business.
 	if out.Elements.Source.File != "" {
 		out.Elements.Source.File = filepath.Base(out.Elements.Source.File)
