@@ -181,9 +181,11 @@ func (o *planSource) problem(ctx context.Context, env *Env) (*planProblem, error
 		p.Split = true
 	}
 	if o.windows != "" {
+		known := len(p.Antennas)
 		if err := p.AddWindows(rows); err != nil {
 			return nil, &InputError{Err: err}
 		}
+		tellStrangeAntennas(env, p, known)
 	} else {
 		if err := p.passes(ctx, env); err != nil {
 			return nil, err
@@ -191,6 +193,21 @@ func (o *planSource) problem(ctx context.Context, env *Env) (*planProblem, error
 		p.clashes()
 	}
 	return p, o.finish(p)
+}
+
+// tellStrangeAntennas names the antennas of the windows that the scenario does not have:
+// someone else's, or a name written otherwise.
+func tellStrangeAntennas(env *Env, p *planProblem, known int) {
+	if known == 0 {
+		return
+	}
+	var strange []string
+	for _, a := range p.Antennas[known:] {
+		strange = append(strange, p.Stations[a.Station].Name+" "+a.Name)
+	}
+	if len(strange) > 0 {
+		env.note("warning: the scenario does not have %s of the windows: counted as antennas of their own, without the scenario's rules", quotedList(strange))
+	}
 }
 
 // finish takes limits and outages into a problem that has its candidates.

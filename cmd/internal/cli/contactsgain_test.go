@@ -33,3 +33,21 @@ func TestContactsSayWhatThePlanBrings(t *testing.T) {
 		}
 	}
 }
+
+// TestContactsTellsStrangeAntennas: a name that the scenario does not have is told.
+func TestContactsTellsStrangeAntennas(t *testing.T) {
+	t.Chdir(t.TempDir())
+	text := "request,spacecraft,station,antenna,window_start_utc,window_end_utc,minimum_s,desired_s,setup_s,teardown_s,value_per_s\n" +
+		"R1,My spacecraft,My station,dish,2026-09-15T01:00:00Z,2026-09-15T02:00:00Z,300,600,0,0,1\n" +
+		"R2,My spacecraft,My station,dihs,2026-09-15T03:00:00Z,2026-09-15T04:00:00Z,300,600,0,0,1\n"
+	if err := os.WriteFile("w.csv", []byte(text), 0o600); err != nil {
+		t.Fatal(err)
+	}
+	if code, _, errOut := invoke(t, "new"); code != ExitAnswer {
+		t.Fatal(errOut)
+	}
+	code, _, errOut := invoke(t, "contacts", "--windows", "w.csv")
+	if code != ExitAnswer || !strings.Contains(errOut, `the scenario does not have "My station dihs" of the windows`) || strings.Contains(errOut, "station dish") {
+		t.Errorf("code %d, %s", code, errOut)
+	}
+}
