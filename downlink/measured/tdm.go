@@ -10,10 +10,10 @@ import (
 
 // tdmSegment is what the metadata of a segment say.
 type tdmSegment struct {
-	system, angles  string
-	reference, mode string
-	offset          float64 // Hz, added to RECEIVE_FREQ
-	line            int
+	system, angles string
+	mode           string
+	offset         float64 // Hz, added to RECEIVE_FREQ
+	line           int
 }
 
 // tdm gathers data lines.
