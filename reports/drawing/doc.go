@@ -6,5 +6,5 @@
 //
 // The chart script of the pages was measured in a JavaScript engine in Go at 0.3 s to compile
 // and 0.1 to 0.5 s a chart; a report of two dozen passes has two hundred charts, so that the
-// static ones have a painter of their own, which needs some tens of microseconds and no script.
+// static ones have a painter of their own, which needs no script.
 package drawing
