@@ -79,8 +79,8 @@ func TestCurvesPageDraws(t *testing.T) {
 	seen := observe(t, ctx)
 	show(t, ctx, "file://"+file, screen{width: 1440, scheme: "light"})
 	texts := ask[string](t, ctx, `Array.from(document.querySelectorAll('#attenuation svg text')).map(function (t) { return t.textContent; }).join('|')`)
-	if len(seen.said) > 0 {
-		t.Errorf("the page says %q", seen.said)
+	if len(seen.Said()) > 0 {
+		t.Errorf("the page says %q", seen.Said())
 	}
 	for _, want := range []string{"attenuation, dB", "total", "rain", "elevation, deg"} {
 		if !strings.Contains("|"+texts+"|", "|"+want+"|") {

@@ -91,8 +91,8 @@ func TestDishPageDraws(t *testing.T) {
 	seen := observe(t, ctx)
 	show(t, ctx, "file://"+file, screen{width: 375, scheme: "dark"})
 	texts := ask[string](t, ctx, `Array.from(document.querySelectorAll('#bytes svg text')).map(function (t) { return t.textContent; }).join('|')`)
-	if len(seen.said) > 0 {
-		t.Errorf("the page says %q", seen.said)
+	if len(seen.Said()) > 0 {
+		t.Errorf("the page says %q", seen.Said())
 	}
 	for _, want := range []string{"bytes a day, GB", "mean", "required", "least that meets all", "diameter, m"} {
 		if !strings.Contains("|"+texts+"|", "|"+want+"|") {

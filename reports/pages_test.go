@@ -5,14 +5,14 @@ import (
 	"context"
 	"os"
 	"path/filepath"
-	"regexp"
 	"strings"
 	"testing"
 	"time"
 
-	"github.com/chromedp/cdproto/page"
 	"github.com/chromedp/chromedp"
 	"github.com/chromedp/chromedp/kb"
+
+	"slantwise/reports/viewing"
 )
 
 // The file of the first pass of goldenReport.
@@ -53,24 +53,6 @@ func toDisk(t *testing.T, r *Report, o Options, chart script) string {
 	return "file://" + filepath.ToSlash(dir) + "/"
 }
 
-// quiet fails when a page said anything or asked for something that is no file.
-func (o *observed) quiet(t *testing.T) {
-	t.Helper()
-	o.mutex.Lock()
-	defer o.mutex.Unlock()
-	for _, s := range o.said {
-		t.Errorf("the page said: %s", s)
-	}
-	if len(o.asked) == 0 {
-		t.Error("no request was seen, not even that for the page")
-	}
-	for _, a := range o.asked {
-		if !strings.HasPrefix(a, "file://") && !strings.HasPrefix(a, "data:") {
-			t.Errorf("the page asked for %s", a)
-		}
-	}
-}
-
 // emptyDrawings counts the charts of a page with no line or symbol in them.
 const emptyDrawings = `[...document.querySelectorAll('.drawing')].filter(d => d.querySelectorAll('svg path').length < 3).length`
 
@@ -98,7 +80,7 @@ func TestPagesDrawAtAnyWidth(t *testing.T) {
 			}
 		}
 	}
-	o.quiet(t)
+	o.Quiet(t, "file://")
 }
 
 func TestCursorGoesThroughAllCharts(t *testing.T) {
@@ -164,7 +146,7 @@ func TestIndexSortsAndFilters(t *testing.T) {
 	if got := ask[float64](t, ctx, `Number(document.querySelector('#pass-table tbody tr').cells[8].dataset.v)`); got != most {
 		t.Errorf("sorted by volume the first row has %v bytes, the most are %v", got, most)
 	}
-	o.quiet(t)
+	o.Quiet(t, "file://")
 }
 
 func TestOneFileStandsAlone(t *testing.T) {
@@ -183,7 +165,7 @@ func TestOneFileStandsAlone(t *testing.T) {
 	if got := ask[int](t, ctx, emptyDrawings); got != 0 {
 		t.Errorf("%d charts are empty", got)
 	}
-	o.quiet(t)
+	o.Quiet(t, "file://")
 }
 
 func TestNamesShowAsTextInTheBrowser(t *testing.T) {
@@ -208,7 +190,7 @@ func TestNamesShowAsTextInTheBrowser(t *testing.T) {
 			t.Errorf("%s: the page is %d px wide on a screen of 375", name, got)
 		}
 	}
-	o.quiet(t)
+	o.Quiet(t, "file://")
 }
 
 // Where the public script cannot be had, the page says so and opens its tables.
@@ -223,19 +205,13 @@ func TestPageSaysWhatIsMissing(t *testing.T) {
 	}
 }
 
-var pdfPage = regexp.MustCompile(`/Type\s*/Page[^s]`)
-
 func TestPrintsOnA4(t *testing.T) {
 	ctx := browser(t)
 	root := onDisk(t, goldenReport(), Options{})
 	for name, want := range map[string]int{"index.html": 2, firstPage: 6} {
 		show(t, ctx, root+name, screen{1440, "dark"})
-		yes := true
-		pdf, err := chromedp.Run(ctx, chromedp.PrintToPDF(func(p *page.PrintToPDFParams) { p.PreferCSSPageSize = &yes }))
-		if err != nil {
-			t.Fatal(err)
-		}
-		if got := len(pdfPage.FindAll(pdf, -1)); got != want {
+		pdf, got := viewing.Print(t, ctx)
+		if got != want {
 			t.Errorf("%s prints on %d pages, want %d", name, got, want)
 		}
 		if !bytes.Contains(pdf, []byte("/MediaBox [0 0 594.95996 841.91998]")) && !bytes.Contains(pdf, []byte("/MediaBox [0 0 595")) && !bytes.Contains(pdf, []byte("/MediaBox [0 0 594")) {

@@ -47,6 +47,7 @@ var layers = []struct {
 	{"slantwise/downlink/contacts/explain", 11},
 	{"slantwise/reports/drawing", 5},
 	{"slantwise/reports/paper", 6},
+	{"slantwise/reports/viewing", 0}, // for tests alone
 	{"slantwise/reports", 12},
 	{"slantwise/cmd/internal/atomicfile", 12},
 	{"slantwise/cmd/internal/nearest", 12},
