@@ -36,6 +36,7 @@ type Env struct {
 
 	overrides map[string]*pflag.Flag // flags that replace a scenario key, by key path
 	started   bool                   // the command line was understood and the command began
+	opened    func(file string)      // told of each file that a scenario is read from; nil: nobody asks
 	finishes  *atomic.Bool           // an interrupt makes the command finish with what it has
 }
 
@@ -94,7 +95,7 @@ func (e *Env) read(n need) (*scenario.Scenario, error) {
 
 // open is read without a word, for a command that may not use what the demo says.
 func (e *Env) open(n need) (*scenario.Scenario, error) {
-	s, err := scenario.Load(scenario.Request{Path: e.Scenario, Flags: e.overrides, Need: n})
+	s, err := scenario.Load(scenario.Request{Path: e.Scenario, Flags: e.overrides, Need: n, Opened: e.opened})
 	if err != nil {
 		return nil, &InputError{Err: err}
 	}

@@ -85,18 +85,9 @@ func runServe(ctx context.Context, env *Env, o *serveOptions) error {
 	if err != nil {
 		return err
 	}
-	source := web.Source{
-		Load: func(ctx context.Context) (web.Model, error) {
-			s, err := scenario.Load(scenario.Request{Path: env.Scenario, Flags: env.overrides, Need: needOrbits})
-			if err != nil {
-				return nil, err
-			}
-			return newLiveModel(ctx, s)
-		},
-	}
-	files := newWatchedFiles(env.Scenario)
-	source.Stamp = files.stamp
-	stamp := files.stamp()
+	var files watchedFiles
+	env.opened = files.opened
+	files.restart()
 	s, err := env.load(needOrbits)
 	if err != nil {
 		return err
@@ -105,8 +96,19 @@ func runServe(ctx context.Context, env *Env, o *serveOptions) error {
 	if err != nil {
 		return err
 	}
+	source := web.Source{
+		Changed: files.changed,
+		Load: func(ctx context.Context) (web.Model, error) {
+			files.restart()
+			s, err := env.open(needOrbits)
+			if err != nil {
+				return nil, err
+			}
+			return newLiveModel(ctx, s)
+		},
+	}
 	c := web.Config{
-		Source: source, First: model, Stamp: stamp, Style: reports.StyleSheet(), Host: host,
+		Source: source, First: model, Style: reports.StyleSheet(), Host: host,
 		Clock: web.Clock{Wall: env.Now, Began: env.Now(), Start: o.clock, Speed: o.speed},
 	}
 	env.startClock(s, &c.Clock)

@@ -7,6 +7,8 @@ import (
 	"net"
 	"net/http"
 	"os"
+	"path/filepath"
+	"regexp"
 	"strings"
 	"testing"
 	"time"
@@ -145,48 +147,78 @@ func within(t *testing.T, what string, got, want, tolerance float64) {
 	}
 }
 
-// TestServedScenarioTurnsInvalid breaks the file while it is served, and mends it.
+// TestServedScenarioTurnsInvalid breaks each file of a scenario while it is served, and
+// mends it. The files lie in other folders than the scenario's, as those of a team do.
 func TestServedScenarioTurnsInvalid(t *testing.T) {
+	apart := t.TempDir()
 	t.Chdir(t.TempDir())
 	if code, _, errOut := invoke(t, "new"); code != ExitAnswer {
 		t.Fatal(errOut)
 	}
-	good, err := os.ReadFile("slantwise.yaml")
-	if err != nil {
-		t.Fatal(err)
+	read := func(file string) string {
+		t.Helper()
+		text, err := os.ReadFile(file)
+		if err != nil {
+			t.Fatal(err)
+		}
+		return string(text)
 	}
+	write := func(file, text string) {
+		t.Helper()
+		if err := os.WriteFile(file, []byte(text), 0o600); err != nil {
+			t.Fatal(err)
+		}
+	}
+	elementFile, mask, skyline := filepath.Join(apart, "elements.tle"), filepath.Join(apart, "skyline.csv"), "azimuth_deg,elevation_deg\n0,5\n180,8\n"
+	good := strings.Replace(read("slantwise.yaml"), "'slantwise.tle'", "'"+elementFile+"'", 1)
+	good = regexp.MustCompile(`horizon_mask: .*`).ReplaceAllString(good, "horizon_mask_file: '"+mask+"'")
+	sets := read("slantwise.tle")
+	write("slantwise.yaml", good)
+	write(elementFile, sets)
+	write(mask, skyline)
 	at := serve(t)
 	type state struct {
 		web.State
 		Fault      string
 		Generation int
 	}
-	await := func(what string, ok func(*state) bool) {
+	generation := 1
+	await := func(what, fault string) {
 		t.Helper()
 		var s state
-		for range 100 {
+		for range 200 {
 			s = state{}
 			if code := ask(t, at+"api/state", nil, &s); code != http.StatusOK {
 				t.Fatalf("status %d", code)
 			}
-			if ok(&s) {
+			if len(s.Spacecraft) == 0 {
+				t.Fatalf("%s: the last good state is gone", what)
+			}
+			if (fault == "") == (s.Fault == "") && strings.Contains(s.Fault, fault) && s.Generation == generation {
 				return
 			}
-			time.Sleep(100 * time.Millisecond)
+			time.Sleep(50 * time.Millisecond)
 		}
-		t.Fatalf("%s: not within 10 s; fault %q, generation %d", what, s.Fault, s.Generation)
+		t.Fatalf("%s: not within 10 s; fault %q, generation %d, want %q, %d", what, s.Fault, s.Generation, fault, generation)
 	}
-	write := func(text string) {
-		if err := os.WriteFile("slantwise.yaml", []byte(text), 0o600); err != nil {
-			t.Fatal(err)
-		}
+	for _, row := range []struct{ what, file, bad, fault, good string }{
+		{"an unknown key", "slantwise.yaml", "wrong_key: 1\n" + good, "wrong_key", good + "\n# mended\n"},
+		{"elements in another folder", elementFile, strings.Replace(sets, "1 ", "1 x", 1), "elements.tle", sets},
+		{"a mask in another folder", mask, skyline + "north,5\n", "skyline.csv", skyline + "270,4\n"},
+	} {
+		write(row.file, row.bad)
+		await(row.what, row.fault)
+		write(row.file, row.good)
+		generation++
+		await(row.what+", mended", "")
 	}
-	write("wrong_key: 1\n" + string(good))
-	await("wrong", func(s *state) bool {
-		return strings.Contains(s.Fault, "wrong_key") && len(s.Spacecraft) > 0 && s.Generation == 1
-	})
-	write(string(good) + "\n# mended\n")
-	await("right again", func(s *state) bool { return s.Fault == "" && s.Generation == 2 })
+	if err := os.Remove(elementFile); err != nil {
+		t.Fatal(err)
+	}
+	await("a file that is gone", "elements.tle")
+	write(elementFile, sets)
+	generation++
+	await("a file that is back", "")
 }
 
 func TestServeRefuses(t *testing.T) {

@@ -1,58 +1,56 @@
 package cli
 
 import (
-	"crypto/sha256"
-	"fmt"
-	"hash"
+	"io/fs"
 	"os"
-	"path/filepath"
-
-	"slantwise/cmd/internal/scenario"
+	"sync"
 )
 
-// mostWatched is how many files of the scenario's folder are looked at for changes.
-const mostWatched = 10_000
-
-// watchedFiles tells whether a file in the scenario's folder, or below it, has changed.
-type watchedFiles struct{ folder, file string }
-
-func newWatchedFiles(named string) watchedFiles {
-	if named == "" {
-		named = scenario.DefaultFile
-	}
-	return watchedFiles{folder: filepath.Dir(named), file: filepath.Base(named)}
+// watchedFiles are the files of the machine that the scenario was read from, wherever
+// they lie, as they were just before they were read; nil stands for one that was not there.
+type watchedFiles struct {
+	mutex sync.Mutex
+	seen  map[string]fs.FileInfo
 }
 
-// stamp is a digest of names, sizes and times of the scenario file and of the files
-// of its folder and of the folders right below that one.
-func (f watchedFiles) stamp() string {
-	sum, left := sha256.New(), mostWatched
-	stampFile(sum, filepath.Join(f.folder, f.file))
-	stampFolder(sum, f.folder, 1, &left)
-	return string(sum.Sum(nil))
+// restart forgets all files before the scenario is read again.
+func (w *watchedFiles) restart() {
+	w.mutex.Lock()
+	defer w.mutex.Unlock()
+	w.seen = map[string]fs.FileInfo{}
 }
 
-func stampFolder(sum hash.Hash, folder string, below int, left *int) {
-	entries, err := os.ReadDir(folder)
-	if err != nil { // what cannot be read does not change
-		return
+// opened keeps how a file is before it is read.
+func (w *watchedFiles) opened(file string) {
+	w.mutex.Lock()
+	defer w.mutex.Unlock()
+	if _, known := w.seen[file]; !known {
+		w.seen[file] = lookAt(file)
 	}
-	for _, e := range entries {
-		if *left--; *left < 0 {
-			return
+}
+
+// changed tells whether a file is another one now, or of another size or time, has come
+// or has gone.
+func (w *watchedFiles) changed() bool {
+	w.mutex.Lock()
+	defer w.mutex.Unlock()
+	for file, before := range w.seen {
+		now := lookAt(file)
+		if (now == nil) != (before == nil) {
+			return true
 		}
-		path := filepath.Join(folder, e.Name())
-		switch {
-		case !e.IsDir():
-			stampFile(sum, path)
-		case below > 0:
-			stampFolder(sum, path, below-1, left)
+		if now != nil && (!os.SameFile(now, before) || now.Size() != before.Size() || !now.ModTime().Equal(before.ModTime())) {
+			return true
 		}
 	}
+	return false
 }
 
-func stampFile(sum hash.Hash, path string) {
-	if info, err := os.Stat(path); err == nil && info.Mode().IsRegular() {
-		fmt.Fprintf(sum, "%q %d %d\n", path, info.Size(), info.ModTime().UnixNano())
+// lookAt follows links and returns nil for what cannot be looked at.
+func lookAt(file string) fs.FileInfo {
+	info, err := os.Stat(file)
+	if err != nil {
+		return nil
 	}
+	return info
 }

@@ -11,7 +11,7 @@ import (
 // Load reads and checks the scenario of a request. All faults come at once, joined
 // with errors.Join; most are *Fault.
 func Load(req Request) (*Scenario, error) {
-	src, err := find(req.Path)
+	src, err := find(req)
 	if err != nil {
 		return nil, err
 	}

@@ -18,4 +18,7 @@ type Request struct {
 	Path  string                 // empty: DefaultFile in the working folder, else the embedded demo
 	Flags map[string]*pflag.Flag // flags that replace scalars, by key path ("window.length_h"); only changed ones count
 	Need  Need
+	// Opened is called with each file of the machine that is looked for, there or not,
+	// just before; nil: nobody asks. The embedded demo has none but DefaultFile.
+	Opened func(file string)
 }

@@ -25,15 +25,23 @@ type source struct {
 	files  fs.FS  // nil: the file system of the machine
 	format tree.Format
 	text   []byte
+	opened func(file string) // told of each file before it is read
 }
 
 // find reads the scenario file of a request.
-func find(file string) (*source, error) {
+func find(req Request) (*source, error) {
+	file, opened := req.Path, req.Opened
+	if opened == nil {
+		opened = func(string) {}
+	}
 	if file == "" {
-		if _, err := os.Stat(DefaultFile); errors.Is(err, fs.ErrNotExist) {
+		file = DefaultFile
+	}
+	opened(file)
+	if req.Path == "" {
+		if _, err := os.Stat(file); errors.Is(err, fs.ErrNotExist) {
 			return demo()
 		}
-		file = DefaultFile
 	}
 	format, err := formatOf(file)
 	if err != nil {
@@ -61,7 +69,7 @@ func find(file string) (*source, error) {
 	if len(text) > maxFile {
 		return nil, tooBig(file)
 	}
-	return &source{label: file, dir: filepath.Dir(file), format: format, text: text}, nil
+	return &source{label: file, dir: filepath.Dir(file), format: format, text: text, opened: opened}, nil
 }
 
 func tooBig(path string) error {
@@ -98,7 +106,7 @@ func unreadable(path string, err error) error {
 // elementSets reads an element file that the scenario names.
 func (s *source) elementSets(name string) ([]orbit.Elements, []elements.Warning, error) {
 	if s.files == nil {
-		return elements.ReadFile(s.place(name))
+		return elements.ReadFile(s.told(name))
 	}
 	f, err := s.files.Open(s.place(name))
 	if err != nil {
@@ -111,9 +119,18 @@ func (s *source) elementSets(name string) ([]orbit.Elements, []elements.Warning,
 // open opens a file that the scenario names.
 func (s *source) open(name string) (fs.File, error) {
 	if s.files == nil {
-		return os.Open(s.place(name))
+		return os.Open(s.told(name))
 	}
 	return s.files.Open(s.place(name))
+}
+
+// told is place for a file of the machine that is about to be read.
+func (s *source) told(name string) string {
+	file := s.place(name)
+	if s.opened != nil {
+		s.opened(file)
+	}
+	return file
 }
 
 func (s *source) place(name string) string {

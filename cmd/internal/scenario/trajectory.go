@@ -23,7 +23,7 @@ const mostShift = 86400 // s
 // cannot be read.
 func (s *source) trajectories(name string, earth orbit.EarthOrientation) (*oem.File, bool, error) {
 	if s.files == nil {
-		if place := s.place(name); oem.LooksFile(place) {
+		if place := s.told(name); oem.LooksFile(place) {
 			f, err := oem.ReadFile(place, earth)
 			return f, true, err
 		}

@@ -56,7 +56,7 @@ func (s *Server) getDetail(w http.ResponseWriter, r *http.Request) {
 	}
 	defer func() { <-s.questions }()
 	m, _, _ := s.keeper.now()
-	ctx, stop := context.WithTimeout(r.Context(), patience)
+	ctx, stop := context.WithTimeout(r.Context(), s.limits.patience)
 	defer stop()
 	d, err := m.Detail(ctx, r.PathValue("id"))
 	switch {
@@ -97,7 +97,7 @@ func (s *Server) whatIf(w http.ResponseWriter, r *http.Request) {
 		return
 	}
 	defer func() { <-s.questions }()
-	ctx, stop := context.WithTimeout(r.Context(), patience)
+	ctx, stop := context.WithTimeout(r.Context(), s.limits.patience)
 	defer stop()
 	m, _, _ := s.keeper.now()
 	a, err := m.WhatIf(ctx, &q)
@@ -116,7 +116,7 @@ func (s *Server) whatIf(w http.ResponseWriter, r *http.Request) {
 
 // turn waits for one of the few places where answers are worked out.
 func (s *Server) turn(w http.ResponseWriter, r *http.Request) bool {
-	late := time.NewTimer(patience)
+	late := time.NewTimer(s.limits.patience)
 	defer late.Stop()
 	select {
 	case s.questions <- struct{}{}:
@@ -153,4 +153,12 @@ func refuse(w http.ResponseWriter, code int, text string) {
 	}{text})
 }
 
-func fail(w http.ResponseWriter, err error) { refuse(w, http.StatusInternalServerError, err.Error()) }
+// fail says that an answer could not be made.
+func fail(w http.ResponseWriter, err error) {
+	if errors.Is(err, context.DeadlineExceeded) {
+		w.Header().Set("Retry-After", "2")
+		refuse(w, http.StatusServiceUnavailable, "the answer takes too long and was given up; ask again in a moment")
+		return
+	}
+	refuse(w, http.StatusInternalServerError, err.Error())
+}

@@ -10,14 +10,13 @@ import (
 type Source struct {
 	// Load reads and checks; the faults are those of the error, a line each.
 	Load func(context.Context) (Model, error)
-	// Stamp changes whenever a file of the scenario does. It is cheap.
-	Stamp func() string
+	// Changed tells whether a file has changed since Load began to read it. It is cheap.
+	Changed func() bool
 }
 
 // keeper holds the last good model and what is wrong with a later one.
 type keeper struct {
 	source Source
-	stamp  string
 
 	mu         sync.RWMutex
 	model      Model
@@ -33,15 +32,13 @@ func (k *keeper) now() (m Model, generation int, fault string) {
 
 // look reads again where a file has changed.
 func (k *keeper) look(ctx context.Context) {
-	stamp := k.source.Stamp()
-	if stamp == k.stamp {
+	if !k.source.Changed() {
 		return
 	}
 	m, err := k.source.Load(ctx)
 	if ctx.Err() != nil {
 		return
 	}
-	k.stamp = stamp
 	k.mu.Lock()
 	defer k.mu.Unlock()
 	if err != nil {

@@ -3,28 +3,37 @@ package web
 import (
 	"context"
 	"errors"
+	"fmt"
 	"net"
 	"net/http"
 	"time"
 )
 
-// Limits of the server.
-const (
-	maxConnections = 512
-	maxListeners   = 256                    // pages that listen at a time
-	maxBody        = 4 << 10                // bytes of a question
-	maxQuestions   = 2                      // answered at a time
-	patience       = 2 * time.Second        // of a question for its turn and its answer
-	slowest        = 10 * time.Second       // a client may take to take an answer
-	beatEvery      = time.Second            // between two states
-	lookEvery      = 500 * time.Millisecond // for changed files
-)
+// maxBody is the longest question, in bytes.
+const maxBody = 4 << 10
+
+// limits of a server.
+type limits struct {
+	connections int           // at a time
+	listeners   int           // pages that listen at a time
+	questions   int           // answered at a time
+	patience    time.Duration // of a question for its turn and its answer
+	slowest     time.Duration // a client may take to ask, and to take an answer
+	beat        time.Duration // between two states
+	look        time.Duration // between two looks for changed files
+}
+
+func usualLimits() limits {
+	return limits{
+		connections: 512, listeners: 256, questions: 2,
+		patience: 2 * time.Second, slowest: 10 * time.Second, beat: time.Second, look: 200 * time.Millisecond,
+	}
+}
 
 // Config is what a server is made of.
 type Config struct {
 	Source Source
-	First  Model  // the scenario as Source has loaded it just now
-	Stamp  string // of Source before that
+	First  Model // the scenario as Source has loaded it just now
 	Clock  Clock
 	Style  string // the style sheet of the pages
 	Host   string // that it listens on, without the port
@@ -34,6 +43,7 @@ type Config struct {
 // Server serves the live page.
 type Server struct {
 	config    Config
+	limits    limits
 	keeper    keeper
 	hub       hub
 	questions chan struct{}
@@ -41,10 +51,12 @@ type Server struct {
 }
 
 // New prepares a server.
-func New(c Config) *Server {
+func New(c Config) *Server { return newServer(c, usualLimits()) }
+
+func newServer(c Config, l limits) *Server {
 	return &Server{
-		config: c, keeper: keeper{source: c.Source, model: c.First, stamp: c.Stamp, generation: 1},
-		hub: hub{listeners: map[chan []byte]struct{}{}}, questions: make(chan struct{}, maxQuestions), closing: make(chan struct{}),
+		config: c, limits: l, keeper: keeper{source: c.Source, model: c.First, generation: 1},
+		hub: hub{most: l.listeners, listeners: map[chan []byte]struct{}{}}, questions: make(chan struct{}, l.questions), closing: make(chan struct{}),
 	}
 }
 
@@ -64,16 +76,20 @@ func (s *Server) Handler(port string) http.Handler {
 
 // Serve answers on l until ctx ends, and closes it. It serves once.
 func (s *Server) Serve(ctx context.Context, l net.Listener) error {
-	_, port, err := net.SplitHostPort(l.Addr().String())
+	host, port, err := net.SplitHostPort(l.Addr().String())
 	if err != nil {
 		return err
 	}
+	if s.config.Token == "" && !(Loopback(host) && Loopback(s.config.Host)) {
+		l.Close()
+		return fmt.Errorf("%s can be reached by others, and no token is asked for", l.Addr())
+	}
 	ctx, stop := context.WithCancel(ctx)
 	defer stop()
-	go s.keeper.watch(ctx, lookEvery)
-	go s.beat(ctx, beatEvery)
+	go s.keeper.watch(ctx, s.limits.look)
+	go s.beat(ctx, s.limits.beat)
 	h := &http.Server{
-		Handler: s.Handler(port), ReadHeaderTimeout: slowest, ReadTimeout: slowest, WriteTimeout: slowest,
+		Handler: s.Handler(port), ReadHeaderTimeout: s.limits.slowest, ReadTimeout: s.limits.slowest, WriteTimeout: s.limits.slowest,
 		IdleTimeout: time.Minute, MaxHeaderBytes: 16 << 10,
 	}
 	closed := make(chan struct{})
@@ -82,7 +98,7 @@ func (s *Server) Serve(ctx context.Context, l net.Listener) error {
 		h.Close()
 		close(closed)
 	})
-	err = h.Serve(&limitListener{Listener: l, places: make(chan struct{}, maxConnections)})
+	err = h.Serve(&limitListener{Listener: l, places: make(chan struct{}, s.limits.connections)})
 	stop()
 	<-closed
 	if errors.Is(err, http.ErrServerClosed) {

@@ -42,7 +42,7 @@ var start = time.Date(2026, 9, 15, 0, 50, 0, 0, time.UTC)
 
 func config() Config {
 	return Config{
-		Source: Source{Load: func(context.Context) (Model, error) { return &fakeModel{}, nil }, Stamp: func() string { return "" }},
+		Source: Source{Load: func(context.Context) (Model, error) { return &fakeModel{}, nil }, Changed: func() bool { return false }},
 		First:  &fakeModel{name: "first"}, Host: "127.0.0.1",
 		Clock: Clock{Wall: func() time.Time { return start }, Began: start, Start: start, Speed: 1},
 	}
@@ -186,9 +186,9 @@ func TestToken(t *testing.T) {
 
 // TestReload turns the scenario wrong and right again while it is served.
 func TestReload(t *testing.T) {
-	stamp, bad := "1", false
-	k := keeper{model: &fakeModel{name: "first"}, stamp: "1", generation: 1, source: Source{
-		Stamp: func() string { return stamp },
+	changed, bad := false, false
+	k := keeper{model: &fakeModel{name: "first"}, generation: 1, source: Source{
+		Changed: func() bool { return changed },
 		Load: func(context.Context) (Model, error) {
 			if bad {
 				return nil, errors.New("slantwise.yaml line 3: wrong")
@@ -197,17 +197,17 @@ func TestReload(t *testing.T) {
 		},
 	}}
 	for _, step := range []struct {
-		stamp      string
+		changed    bool
 		bad        bool
 		name       string
 		generation int
 		fault      string
 	}{
-		{"1", true, "first", 1, ""},
-		{"2", true, "first", 1, "slantwise.yaml line 3: wrong"},
-		{"3", false, "second", 2, ""},
+		{false, true, "first", 1, ""},
+		{true, true, "first", 1, "slantwise.yaml line 3: wrong"},
+		{true, false, "second", 2, ""},
 	} {
-		stamp, bad = step.stamp, step.bad
+		changed, bad = step.changed, step.bad
 		k.look(t.Context())
 		m, generation, fault := k.now()
 		if m.(*fakeModel).name != step.name || generation != step.generation || fault != step.fault {
@@ -218,7 +218,7 @@ func TestReload(t *testing.T) {
 
 // TestSlowListenerHoldsNobody has one page that reads nothing beside one that reads.
 func TestSlowListenerHoldsNobody(t *testing.T) {
-	h := hub{listeners: map[chan []byte]struct{}{}}
+	h := hub{most: 3, listeners: map[chan []byte]struct{}{}}
 	slow, quick := h.join(), h.join()
 	for i := range 100 {
 		h.tell([]byte{byte(i)})
@@ -229,9 +229,7 @@ func TestSlowListenerHoldsNobody(t *testing.T) {
 	if got := <-slow; got[0] != 99 {
 		t.Errorf("the slow one gets %d, want the newest, 99", got[0])
 	}
-	for range maxListeners - 2 {
-		h.join()
-	}
+	h.join()
 	if h.join() != nil {
 		t.Error("a listener beyond the limit got in")
 	}

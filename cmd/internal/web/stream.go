@@ -10,6 +10,7 @@ import (
 // hub hands each state to all who listen. Who is slow misses states and holds nobody.
 type hub struct {
 	mu        sync.Mutex
+	most      int // listeners at a time
 	listeners map[chan []byte]struct{}
 }
 
@@ -17,7 +18,7 @@ type hub struct {
 func (h *hub) join() chan []byte {
 	h.mu.Lock()
 	defer h.mu.Unlock()
-	if len(h.listeners) >= maxListeners {
+	if len(h.listeners) >= h.most {
 		return nil
 	}
 	c := make(chan []byte, 1)
@@ -89,7 +90,7 @@ func (s *Server) events(w http.ResponseWriter, r *http.Request) {
 	w.Header().Set("Content-Type", "text/event-stream")
 	out := http.NewResponseController(w)
 	send := func(b []byte) bool {
-		if out.SetWriteDeadline(time.Now().Add(slowest)) != nil {
+		if out.SetWriteDeadline(time.Now().Add(s.limits.slowest)) != nil {
 			return false
 		}
 		if _, err := w.Write(b); err != nil {
