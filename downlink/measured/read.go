@@ -43,12 +43,23 @@ var tdmKVN = regexp.MustCompile(`^\s*(COMMENT[^\n]*\s+)*CCSDS_TDM_VERS\s*=`)
 // called as the quantities, or otherwise where columns maps our name to theirs. The
 // error holds all faults with file and line.
 func Read(r io.Reader, name string, columns map[string]string) (*Log, error) {
+	f := &faults{name: name}
+	return read(r, own(columns, f), f)
+}
+
+// ReadLaidOut reads a log as Read does, a table by a layout. Columns that the layout does not name and
+// that are called as a quantity are that.
+func ReadLaidOut(r io.Reader, name string, lay *Layout) (*Log, error) {
+	return read(r, lay, &faults{name: name})
+}
+
+func read(r io.Reader, lay *Layout, f *faults) (*Log, error) {
+	name := f.name
 	data, err := io.ReadAll(io.LimitReader(r, MaxSize+1))
 	if err != nil {
 		return nil, fmt.Errorf("%s: reading measurements: %w", name, err)
 	}
 	data = bytes.TrimPrefix(data, []byte("\uFEFF"))
-	f := &faults{name: name}
 	l := &Log{Name: name}
 	switch head := strings.TrimSpace(string(data[:min(len(data), 4096)])); {
 	case len(data) > MaxSize:
@@ -60,7 +71,7 @@ func Read(r io.Reader, name string, columns map[string]string) (*Log, error) {
 	case strings.HasPrefix(head, "<"):
 		readXML(data, l, f)
 	default:
-		readTable(data, columns, l, f)
+		readTable(data, lay, l, f)
 	}
 	if len(f.list) == 0 {
 		l.tidy(f)

@@ -4,6 +4,7 @@ import (
 	"math"
 	"strings"
 	"testing"
+	"time"
 )
 
 const goodTable = `utc,cn0_dbhz,received_power_dbw,frequency_khz,locked,mood
@@ -117,6 +118,62 @@ func FuzzRead(f *testing.F) {
 				if math.IsInf(v, 0) {
 					t.Fatalf("%v is %v", Quantity(q), v)
 				}
+			}
+		}
+	})
+}
+
+func TestLaidOutTable(t *testing.T) {
+	lay := &Layout{Separator: ';', TimeColumn: "When", Times: TimePlain, ClockAhead: 250 * time.Millisecond, Missing: []string{"-999"}, Columns: []LayoutColumn{
+		{Column: "AGC", Holds: "relative_power_db", Scale: -0.5, Add: 12}, {Column: "Tone", Holds: "frequency_khz", Add: 437000},
+		{Column: "State", Holds: "locked", Yes: "LOCK"}, {Holds: "rain_mm_h", Constant: 0.5}}}
+	const text = "When;AGC;Tone;State\n2026-09-15 00:50:00.25;-40;0.5;LOCK\n2026-09-15 00:50:01.25;-999;;-\n"
+	if !lay.Fits([]byte(text)) || lay.Fits([]byte(goodTable)) {
+		t.Error("a table is known by its columns")
+	}
+	l, err := ReadLaidOut(strings.NewReader(text), "log", lay)
+	if err != nil {
+		t.Fatal(err)
+	}
+	a, b := l.Samples[0], l.Samples[1]
+	if !a.At.Equal(time.Date(2026, 9, 15, 0, 50, 0, 0, time.UTC)) || a.Get(RelativePowerDB) != 32 || a.Get(FrequencyHz) != 437000500 || a.Get(Locked) != 1 || a.Get(RainMmH) != 0.5 {
+		t.Errorf("first row: %v %v", a.At, a.Values)
+	}
+	if !math.IsNaN(b.Get(RelativePowerDB)) || !math.IsNaN(b.Get(FrequencyHz)) || b.Get(Locked) != 0 {
+		t.Errorf("second row: %v", b.Values)
+	}
+	lay.Times = TimeUnix
+	l, err = ReadLaidOut(strings.NewReader("When;AGC;Tone;State\n1789433400.5;-40;0.5;LOCK\n"), "log", lay)
+	if err != nil || !l.Samples[0].At.Equal(time.Date(2026, 9, 15, 0, 50, 0, 250e6, time.UTC)) {
+		t.Errorf("seconds since 1970: %v %v", l, err)
+	}
+	for _, c := range []struct{ text, want string }{
+		{"When;AGC;Tone\n", `no column "State"`}, {"When;AGC;Tone;State\n1e99;1;1;1\n", "seconds since 1970"}, {"When;AGC;Tone;State;rain_mm_h\n", "hold the same quantity"},
+	} {
+		if _, err := ReadLaidOut(strings.NewReader(c.text), "log", lay); err == nil || !strings.Contains(err.Error(), c.want) {
+			t.Errorf("%q: %v, want %q in it", c.text, err, c.want)
+		}
+	}
+}
+
+// FuzzLayout: a table that is laid out is read without a panic, and what is accepted is finite or absent.
+func FuzzLayout(f *testing.F) {
+	f.Add("When;AGC;State\n2026-09-15 00:50:00;-40;LOCK\n", ";", 1, -0.5)
+	f.Add("When\tAGC\tState\n1789433400.5\t-40\tLOCK\n", "\t", 2, 1e300)
+	f.Add("When,AGC,State,When\n\"\n", ",", 0, 0.0)
+	f.Fuzz(func(t *testing.T, text, separator string, form int, scale float64) {
+		lay := &Layout{TimeColumn: "When", Times: TimeForm(form), Missing: []string{"-"}, Columns: []LayoutColumn{{Column: "AGC", Holds: "relative_power_db", Scale: scale}, {Column: "State", Holds: "locked", Yes: "LOCK"}}}
+		for _, c := range separator {
+			lay.Separator = c
+		}
+		lay.Fits([]byte(text))
+		l, err := ReadLaidOut(strings.NewReader(text), "fuzz", lay)
+		if err != nil {
+			return
+		}
+		for _, s := range l.Samples {
+			if v := s.Get(RelativePowerDB); math.IsInf(v, 0) || math.Abs(v) > 300 {
+				t.Fatalf("relative power %v", v)
 			}
 		}
 	})

@@ -1,7 +1,6 @@
 package measured
 
 import (
-	"bytes"
 	"encoding/csv"
 	"errors"
 	"fmt"
@@ -11,7 +10,6 @@ import (
 	"sort"
 	"strconv"
 	"strings"
-	"time"
 )
 
 // column is a name that a table may use: its quantity and how to come to its unit.
@@ -39,16 +37,21 @@ func ColumnNames() []string {
 	return out
 }
 
-func readTable(data []byte, renamed map[string]string, l *Log, f *faults) {
-	r := csv.NewReader(bytes.NewReader(data))
-	r.FieldsPerRecord, r.Comment, r.TrimLeadingSpace = -1, '#', true
+// use is how a field comes to its quantity.
+type use struct {
+	column
+	yes string // of Layout
+}
+
+func readTable(data []byte, lay *Layout, l *Log, f *faults) {
+	r := lay.reader(string(data))
 	head, err := r.Read()
 	if err != nil {
 		f.add(1, "there is no row of column names; begin with utc and one of %s", strings.Join(ColumnNames(), ", "))
 		return
 	}
-	head = slices.Clone(head)
-	use, at := tableColumns(head, renamed, l, f)
+	t := &table{lay: lay, head: slices.Clone(head), log: l, f: f}
+	t.columns()
 	for {
 		row, err := r.Read()
 		if errors.Is(err, io.EOF) {
@@ -63,7 +66,7 @@ func readTable(data []byte, renamed map[string]string, l *Log, f *faults) {
 			f.add(line, "%w; mend the quotes", err)
 			return
 		}
-		if at < 0 {
+		if t.at < 0 {
 			return
 		}
 		line, _ := r.FieldPos(0)
@@ -71,73 +74,108 @@ func readTable(data []byte, renamed map[string]string, l *Log, f *faults) {
 			f.add(line, "%d fields where the first row has %d columns; the row may be cut off", len(row), len(head))
 			continue
 		}
-		readRow(row, line, at, use, l, f)
+		t.row(row, line)
 	}
 }
 
-// tableColumns finds which column holds what; at is that of the time, -1 without one.
-func tableColumns(head []string, renamed map[string]string, l *Log, f *faults) (use map[int]column, at int) {
-	ours := map[string]string{}
-	for our, their := range renamed {
-		if _, ok := columnsByName[our]; !ok && our != "utc" {
-			f.add(1, "column %q is not one that is known; it must be utc or one of %s", our, strings.Join(ColumnNames(), ", "))
-		}
-		if !slices.Contains(head, their) {
-			f.add(1, "there is no column %q, which stands for %s; the file has %s", their, our, strings.Join(head, ", "))
-		}
-		ours[their] = our
-	}
-	use, at = map[int]column{}, -1
+// table is a table that is being read.
+type table struct {
+	lay   *Layout
+	head  []string
+	uses  map[int]use
+	fixed map[Quantity]float64
+	at    int // the column of times, -1 without one
+	log   *Log
+	f     *faults
+}
+
+// columns finds which column holds what.
+func (t *table) columns() {
+	f := t.f
+	listed := map[string]use{}
 	taken := map[Quantity]string{}
-	for i, name := range head {
-		our, ok := ours[name]
-		if !ok {
-			our = strings.ToLower(strings.TrimSpace(name))
-		}
-		c, known := columnsByName[our]
-		switch {
-		case our == "utc" && at >= 0:
-			f.add(1, "there are two columns of times; leave one out")
-		case our == "utc":
-			at = i
-		case !known:
-			l.Notes = append(l.Notes, fmt.Sprintf("column %q is not known and not used", name))
-		case taken[c.q] != "":
-			f.add(1, "columns %q and %q hold the same quantity, perhaps in two units; keep one of them", taken[c.q], name)
-		default:
-			taken[c.q], use[i] = name, c
+	t.uses, t.fixed, t.at = map[int]use{}, map[Quantity]float64{}, -1
+	for _, n := range t.lay.named() {
+		if n != "utc" && !slices.Contains(t.head, n) {
+			f.add(1, "there is no column %q; the file has %s", n, strings.Join(t.head, ", "))
 		}
 	}
-	if at < 0 {
-		f.add(1, "there is no column utc; name the one with the times so, or map it")
-	}
-	if len(use) == 0 {
-		f.add(1, "no column holds a measurement; name one of %s", strings.Join(ColumnNames(), ", "))
-	}
-	return use, at
-}
-
-func readRow(row []string, line, at int, use map[int]column, l *Log, f *faults) {
-	t, err := time.Parse(time.RFC3339Nano, row[at])
-	if err != nil || !strings.HasSuffix(row[at], "Z") || t.Year() < 1957 || t.Year() > 2200 {
-		f.add(line, "utc: %q is not a time; write UTC as 2026-03-10T14:05:00Z", row[at])
-		return
-	}
-	s := newSample(t, line)
-	for i, text := range row {
-		c, ok := use[i]
-		if text = strings.TrimSpace(text); !ok || text == "" {
+	for _, c := range t.lay.Columns {
+		u := use{columnsByName[c.Holds], c.Yes}
+		if c.Column == "" {
+			t.fixed[u.q], taken[u.q] = c.Constant*u.scale+u.shift, "constant "+c.Holds
 			continue
 		}
-		v, err := parseValue(c.q, text)
-		if err == nil {
-			err = s.set(c.q, v*c.scale+c.shift)
+		scale := c.Scale
+		if scale == 0 {
+			scale = 1
 		}
-		if err != nil {
-			f.add(line, "%w", err)
+		u.scale, u.shift = scale*u.scale, c.Add*u.scale+u.shift
+		listed[c.Column] = u
+	}
+	for i, name := range t.head {
+		u, ok := listed[name]
+		if !ok {
+			u.column, ok = columnsByName[strings.ToLower(strings.TrimSpace(name))]
+		}
+		isTime := name == t.lay.TimeColumn || t.lay.TimeColumn == "utc" && strings.ToLower(strings.TrimSpace(name)) == "utc"
+		switch {
+		case isTime && t.at >= 0:
+			f.add(1, "there are two columns of times; leave one out")
+		case isTime:
+			t.at = i
+		case !ok:
+			t.log.Notes = append(t.log.Notes, fmt.Sprintf("column %q is not known and not used", name))
+		case taken[u.q] != "":
+			f.add(1, "columns %q and %q hold the same quantity, perhaps in two units; keep one of them", taken[u.q], name)
+		default:
+			taken[u.q], t.uses[i] = name, u
 		}
 	}
-	l.Samples = append(l.Samples, s)
+	if t.at < 0 && t.lay.TimeColumn == "utc" {
+		f.add(1, "there is no column utc; name the one with the times so, or map it")
+	}
+	if len(t.uses) == 0 {
+		f.add(1, "no column holds a measurement; name one of %s", strings.Join(ColumnNames(), ", "))
+	}
+}
+
+func (t *table) row(row []string, line int) {
+	at, err := t.lay.instant(strings.TrimSpace(row[t.at]))
+	if err != nil {
+		t.f.add(line, "%w", err)
+		return
+	}
+	s := newSample(at, line)
+	for q, v := range t.fixed {
+		s.Values[q] = v
+	}
+	for i, text := range row {
+		u, ok := t.uses[i]
+		if text = strings.TrimSpace(text); !ok || text == "" || slices.Contains(t.lay.Missing, text) {
+			continue
+		}
+		v, err := u.value(text)
+		if err == nil {
+			err = s.set(u.q, v)
+		}
+		if err != nil {
+			t.f.add(line, "%w", err)
+		}
+	}
+	t.log.Samples = append(t.log.Samples, s)
+}
+
+// value reads a field.
+func (u use) value(text string) (float64, error) {
+	if u.yes != "" {
+		if text == u.yes {
+			return 1, nil
+		}
+		return 0, nil
+	}
+	v, err := parseValue(u.q, text)
+	return v*u.scale + u.shift, err
 }
 
 func parseValue(q Quantity, text string) (float64, error) {

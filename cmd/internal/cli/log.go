@@ -1,12 +1,7 @@
 package cli
 
 import (
-	"bytes"
-	"crypto/sha256"
-	"encoding/hex"
 	"fmt"
-	"io"
-	"os"
 	"strings"
 	"time"
 
@@ -29,8 +24,9 @@ logbook.
 
 A table has a column utc (ISO 8601 ending in Z) and any of
   ` + strings.Join(measured.ColumnNames(), ", ") + `
-in any order; --column OURS=THEIRS maps other names. Unknown columns and keywords are
-told and not used. The same quantity in two units is refused.`,
+in any order; --column OURS=THEIRS maps other names, and the scenario's measurements tell
+what other tables hold. Unknown columns and keywords are told and not used. The same
+quantity in two units is refused.`,
 		Example: `  slantwise log rehearse --spacecraft "Wagtail 1" --station "Skerry Point" --mode safe --into rehearsal.csv`,
 		Args:    noArgs,
 		RunE:    func(cmd *cobra.Command, _ []string) error { return cmd.Help() },
@@ -43,12 +39,14 @@ told and not used. The same quantity in two units is refused.`,
 type logInput struct {
 	file    string
 	columns []string
+	table   string
 	who     linkNames
 }
 
 func (in *logInput) addTo(cmd *cobra.Command) {
 	addLinkNames(cmd, &in.who)
 	cmd.Flags().StringArrayVar(&in.columns, "column", nil, "`OURS=THEIRS`: the table calls the column OURS THEIRS; may be repeated")
+	cmd.Flags().StringVar(&in.table, "table", "", "`NAME` of the kind of table in the scenario's measurements (left out: the one whose columns it has)")
 	cmd.Args = func(cmd *cobra.Command, args []string) error {
 		if len(args) != 1 {
 			return inputErrorf("%s takes one FILE of measurements, %d are given", cmd.CommandPath(), len(args))
@@ -56,35 +54,6 @@ func (in *logInput) addTo(cmd *cobra.Command) {
 		in.file = args[0]
 		return nil
 	}
-}
-
-// readLog reads the file; digest tells it from others.
-func (in *logInput) readLog(env *Env) (l *measured.Log, digest string, err error) {
-	columns := map[string]string{}
-	for _, c := range in.columns {
-		ours, theirs, ok := strings.Cut(c, "=")
-		if !ok {
-			return nil, "", inputErrorf("--column: %q is not OURS=THEIRS, as in cn0_dbhz=Signal", c)
-		}
-		columns[ours] = theirs
-	}
-	f, err := os.Open(in.file)
-	if err != nil {
-		return nil, "", &InputError{Err: err}
-	}
-	defer f.Close()
-	data, err := io.ReadAll(io.LimitReader(f, measured.MaxSize+1))
-	if err != nil {
-		return nil, "", fmt.Errorf("%s: %w", in.file, err)
-	}
-	if l, err = measured.Read(bytes.NewReader(data), in.file, columns); err != nil {
-		return nil, "", &InputError{Err: err}
-	}
-	for _, n := range l.Notes {
-		env.note("%s: %s", printable(in.file), printable(n))
-	}
-	sum := sha256.Sum256(data)
-	return l, hex.EncodeToString(sum[:]), nil
 }
 
 // overLog is a log over its prediction.
@@ -98,11 +67,11 @@ type overLog struct {
 }
 
 func (in *logInput) over(env *Env) (*overLog, error) {
-	l, digest, err := in.readLog(env)
+	s, err := env.load(needOrbits)
 	if err != nil {
 		return nil, err
 	}
-	s, err := env.load(needOrbits)
+	l, digest, err := in.readLog(env, s)
 	if err != nil {
 		return nil, err
 	}

@@ -148,16 +148,16 @@ func runLogWhose(env *Env, o *whoseOptions) error {
 	for _, w := range warnings {
 		env.note("warning: %s", printable(w.String()))
 	}
-	l, _, err := o.in.readLog(env)
+	s, err := env.load(needOrbits)
+	if err != nil {
+		return err
+	}
+	l, _, err := o.in.readLog(env, s)
 	if err != nil {
 		return err
 	}
 	if !l.Has(measured.FrequencyHz) {
 		return inputErrorf("%s: there is no frequency in it; give a column frequency_hz", o.in.file)
-	}
-	s, err := env.load(needOrbits)
-	if err != nil {
-		return err
 	}
 	craft, err := pick("spacecraft", o.in.who.spacecraft, s.Spacecraft, spacecraftName)
 	if err != nil {

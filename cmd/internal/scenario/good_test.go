@@ -12,6 +12,7 @@ import (
 	"slantwise/downlink"
 	"slantwise/downlink/licence"
 	"slantwise/downlink/linkset"
+	tables "slantwise/downlink/measured"
 	"slantwise/downlink/propagation"
 	"slantwise/downlink/rateplan"
 	"slantwise/downlink/recorder"
@@ -198,6 +199,8 @@ func TestEverything(t *testing.T) {
 		{"shared", s.ContactPlan.Shared[0], scenario.PlanShared{Name: "front end", Station: "Skerry Point", Antennas: []string{"dish", "measured"}, AtOnce: 1, FromSetUp: true}},
 		{"closed, from a file", s.ContactPlan.Closed[3], planfiles.Outage{Place: "closed.csv: line 3", Spacecraft: "Pipit", Reason: "manoeuvre",
 			Start: time.Date(2026, 9, 15, 5, 0, 0, 0, time.UTC), End: time.Date(2026, 9, 15, 5, 30, 0, 0, time.UTC)}},
+		{"a kind of table", s.Measurements[0], tables.Layout{Name: "receiver log", Separator: ';', TimeColumn: "When", Times: tables.TimePlain, ClockAhead: 250 * time.Millisecond, Missing: []string{"n/a", "-999"},
+			Columns: []tables.LayoutColumn{{Column: "AGC", Holds: "relative_power_db", Scale: -0.5, Add: 12}, {Column: "State", Holds: "locked", Scale: 1, Yes: "LOCK"}, {Holds: "rain_mm_h", Scale: 1}}}},
 		{"boresight", roof.Boresight, station.Direction{Azimuth: 10 * unit.Degree, Elevation: 90 * unit.Degree}},
 	} {
 		if !reflect.DeepEqual(tt.got, tt.want) {

@@ -39,7 +39,7 @@ func TestEveryKeyIsRead(t *testing.T) {
 		topKeys, windowKeys, earthKeys, spacecraftKeys, transmitterKeys, spinKeys, patternKeys, modeKeys, lossDissipativeKeys,
 		stationKeys, antennaKeys, noiseKeys, stageKeys, sizingKeys, requirementKeys, marginAtKeys, marginShareKeys, familyKeys,
 		uplinkKeys, transmitKeys, linkSetKeys, oscillatorKeys, measuredKeys, coherentKeys, pathKeys, climateKeys, levelKeys, lognormalKeys, lowPathKeys,
-		mountKeys,
+		mountKeys, measurementKeys, measurementColumnKeys,
 		contactPlanKeys, planWeightKeys, planClosedKeys, planStationKeys, planAntennaKeys, shiftKeys, planCraftKeys, planDataKeys, planCommandsKeys, planLimitKeys, planSharedKeys,
 		ratePlanKeys, licenceKeys, sectorKeys, hoursKeys, recorderKeys, recorderDataKeys, craftUncertaintyKeys, covarianceKeys, stateKeys, syntheticKeys, controlKeys, toleranceKeys, criterionKeys,
 	} {

@@ -44,7 +44,7 @@ func build(root *tree.Node, src *source, req Request) (*Scenario, error) {
 	return s, nil
 }
 
-var topKeys = []string{"window", "earth", "element_files", "coding_files", "element_choice", "horizon", "path", "spacecraft", "stations", "sizing", "licence", "design_control", "position_uncertainty", "contact_plan"}
+var topKeys = []string{"window", "earth", "element_files", "coding_files", "element_choice", "horizon", "path", "spacecraft", "stations", "sizing", "licence", "design_control", "position_uncertainty", "contact_plan", "measurements"}
 
 // scenario reads everything; the value is of use only where no fault was noted.
 func (r *reader) scenario(root *tree.Node) *Scenario {
@@ -63,6 +63,7 @@ func (r *reader) scenario(root *tree.Node) *Scenario {
 	s.Licences = r.licences(o, s)
 	s.Control = r.control(o)
 	s.ContactPlan = r.contactPlan(o, s)
+	s.Measurements = r.measurements(o)
 	return s
 }
 

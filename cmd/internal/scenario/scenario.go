@@ -5,6 +5,7 @@ import (
 
 	"slantwise/downlink"
 	"slantwise/downlink/licence"
+	"slantwise/downlink/measured"
 	"slantwise/downlink/propagation"
 	"slantwise/orbit"
 	"slantwise/orbit/elements"
@@ -38,6 +39,9 @@ type Scenario struct {
 	Sizing      *Sizing           // which dish is sought; nil: none
 	ContactPlan ContactPlan       // what the plan of contacts must respect
 	Control     Control           // tolerances and criteria; empty where none are given
+
+	// Measurements are kinds of tables that receivers write, in the order of the file.
+	Measurements []measured.Layout
 
 	Assumptions []Note // every default taken
 	Warnings    []Note // what may make an answer wrong: old elements, …
