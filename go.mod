@@ -24,7 +24,6 @@ require (
 
 require (
 	codeberg.org/go-fonts/dejavu v0.4.0
-	codeberg.org/go-pdf/fpdf v0.12.0
 	github.com/arran4/golang-ical v0.3.4
 	modernc.org/sqlite v1.62.0
 )

@@ -46,6 +46,7 @@ var layers = []struct {
 	{"slantwise/downlink/contacts/solve", 10},
 	{"slantwise/downlink/contacts/explain", 11},
 	{"slantwise/reports/drawing", 5},
+	{"slantwise/reports/paper/pdf", 5},
 	{"slantwise/reports/paper", 6},
 	{"slantwise/reports/viewing", 0}, // for tests alone
 	{"slantwise/reports", 12},

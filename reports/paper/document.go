@@ -1,13 +1,11 @@
 package paper
 
 import (
-	"bytes"
 	"fmt"
+	"strings"
 	"time"
 
-	"codeberg.org/go-fonts/dejavu/dejavusanscondensed"
-	"codeberg.org/go-fonts/dejavu/dejavusanscondensedbold"
-	"codeberg.org/go-pdf/fpdf"
+	"slantwise/reports/paper/pdf"
 )
 
 // Page and text, in points: A4 upright.
@@ -20,7 +18,6 @@ const (
 	smallSize  = 7.5
 	lineHeight = 12.0
 	bottom     = pageHeight - margin - 14
-	family     = "body"
 )
 
 // Info is what a file says about itself.
@@ -30,25 +27,40 @@ type Info struct {
 	Creator  string    // program and version
 	Date     time.Time // of the content: files carry no clock
 	Contents int       // how many lines the list of contents has; 0: no list
+	Foot     string    // what more stands at the foot of each page: the age of the elements; may be empty
 }
 
-// Document is a file in the making. Its methods remember the first error; Bytes returns it.
+// Document is a file in the making. Texts may hold any runes: a letter that the font lacks stands as
+// an empty box, and a line at the end of the document tells which.
 type Document struct {
-	pdf    *fpdf.Fpdf
+	file   *pdf.File
+	fonts  [2]*pdf.Font // upright and bold
 	info   Info
-	listed []entry // of the list of contents
-	listAt []place // where its parts stand; empty: no list
+	pages  []*pdf.Page
+	page   *pdf.Page // the one that is written on
+	y      float64   // how far down it
+	listed []entry   // of the list of contents
+	listAt []place   // where its parts stand; empty: no list
+	set    setting
+	boxes  map[rune]bool // letters that the font lacks
+}
+
+// setting is how text is set.
+type setting struct {
+	font *pdf.Font
+	size float64
+	tone pdf.Colour
 }
 
 // entry is a line of the list of contents.
 type entry struct {
 	text string
 	page int
-	link int
+	to   *pdf.Target
 }
 
 type place struct {
-	page int
+	page *pdf.Page
 	y    float64
 }
 
@@ -61,60 +73,54 @@ const (
 
 // New returns a document without pages.
 func New(info Info) *Document {
-	p := fpdf.New("P", "pt", "A4", "")
-	p.SetCatalogSort(true)
-	p.SetCreationDate(info.Date.UTC())
-	p.SetModificationDate(info.Date.UTC())
-	p.SetTitle(info.Title, true)
-	p.SetSubject(info.Subject, true)
-	p.SetCreator(info.Creator, true)
-	p.SetProducer(info.Creator, true)
-	p.SetLang("en")
-	p.SetDisplayMode("fullwidth", "continuous")
-	p.AddUTF8FontFromBytes(family, "", dejavusanscondensed.TTF)
-	p.AddUTF8FontFromBytes(family, "B", dejavusanscondensedbold.TTF)
-	p.SetMargins(margin, margin, margin)
-	p.SetAutoPageBreak(false, margin)
-	p.SetCellMargin(0)
-	p.AliasNbPages("{all}")
-	d := &Document{pdf: p, info: info}
-	p.SetFooterFunc(d.footer)
+	d := &Document{info: info, boxes: map[rune]bool{}}
+	both := faces()
+	file, fonts := pdf.New(pdf.Info{Title: info.Title, Subject: info.Subject, Creator: info.Creator, Date: info.Date, Language: "en"}, both[:]...)
+	d.file, d.fonts = file, [2]*pdf.Font(fonts)
 	return d
 }
 
-func (d *Document) footer() {
-	p := d.pdf
-	d.font("", smallSize, soft)
-	p.SetXY(margin, pageHeight-margin)
-	p.CellFormat(fieldWidth*0.8, 10, d.fit(d.info.Title+" · "+d.info.Creator, fieldWidth*0.8), "", 0, "L", false, 0, "")
-	p.CellFormat(fieldWidth*0.2, 10, fmt.Sprintf("page %d of {all}", p.PageNo()), "", 0, "R", false, 0, "")
-}
-
-// colour is red, green, blue.
-type colour [3]int
-
 // The colours are those of the pages in print.
 var (
-	ink  = colour{0x16, 0x19, 0x1d}
-	soft = colour{0x54, 0x5b, 0x64}
-	rule = colour{0xd6, 0xda, 0xde}
-	wash = colour{0xf3, 0xf5, 0xf7}
+	ink  = pdf.Colour{0x16, 0x19, 0x1d}
+	soft = pdf.Colour{0x54, 0x5b, 0x64}
+	rule = pdf.Colour{0xd6, 0xda, 0xde}
+	wash = pdf.Colour{0xf3, 0xf5, 0xf7}
 )
 
-func (d *Document) font(style string, size float64, c colour) {
-	d.pdf.SetFont(family, style, size)
-	d.pdf.SetTextColor(c[0], c[1], c[2])
+// font sets what text is written in; style "B" is bold.
+func (d *Document) font(style string, size float64, c pdf.Colour) {
+	i := 0
+	if style == "B" {
+		i = 1
+	}
+	d.set = setting{d.fonts[i], size, c}
+}
+
+// width returns how wide a text is as it is set.
+func (d *Document) width(text string) float64 { return d.set.font.Width(text, d.set.size) }
+
+// put writes a line on its base line.
+func (d *Document) put(x, y float64, text string) {
+	for _, r := range text {
+		if r >= 0x7f && !d.set.font.Has(r) {
+			d.boxes[r] = true
+		}
+	}
+	d.page.Fill(d.set.tone)
+	d.page.Text(x, y, d.set.font, d.set.size, text)
 }
 
 // Page begins a page.
 func (d *Document) Page() {
-	d.pdf.AddPage()
-	d.pdf.SetXY(margin, margin)
+	d.page = d.file.Page(pageWidth, pageHeight)
+	d.pages = append(d.pages, d.page)
+	d.y = margin
 }
 
 // room begins a page where less than h points are left on this one.
 func (d *Document) room(h float64) {
-	if d.pdf.PageNo() == 0 || d.pdf.GetY()+h > bottom {
+	if d.page == nil || d.y+h > bottom {
 		d.Page()
 	}
 }
@@ -123,12 +129,12 @@ func (d *Document) room(h float64) {
 func (d *Document) Title(text, under string) {
 	d.room(40)
 	d.font("B", 16, ink)
-	d.pdf.MultiCell(fieldWidth, 19, text, "", "L", false)
+	d.block(text, 19)
 	if under != "" {
 		d.font("", textSize+1, soft)
-		d.pdf.MultiCell(fieldWidth, lineHeight+2, under, "", "L", false)
+		d.block(under, lineHeight+2)
 	}
-	d.pdf.Ln(4)
+	d.y += 4
 }
 
 // List leaves room for the list of contents: on this page where it fits, else on pages of its own.
@@ -137,54 +143,77 @@ func (d *Document) List() {
 	if n == 0 {
 		return
 	}
-	if need := listHead + listLine*float64(n); d.pdf.GetY()+need <= bottom {
-		d.listAt = []place{{d.pdf.PageNo(), d.pdf.GetY()}}
-		d.pdf.SetXY(margin, d.pdf.GetY()+need)
+	d.room(0)
+	if need := listHead + listLine*float64(n); d.y+need <= bottom {
+		d.listAt = []place{{d.page, d.y}}
+		d.y += need
 		return
 	}
 	for range (n + listLines - 1) / listLines {
 		d.Page()
-		d.listAt = append(d.listAt, place{d.pdf.PageNo(), margin})
+		d.listAt = append(d.listAt, place{d.page, margin})
 	}
 	d.Page()
 }
 
 // Chapter puts a line into the list of contents and the bookmarks, at this place.
 func (d *Document) Chapter(text string) {
-	link := d.pdf.AddLink()
-	d.pdf.SetLink(link, d.pdf.GetY(), d.pdf.PageNo())
-	d.pdf.Bookmark(text, 0, d.pdf.GetY())
-	d.listed = append(d.listed, entry{text, d.pdf.PageNo(), link})
+	d.room(0)
+	to := d.page.Target(d.y)
+	d.file.Bookmark(text, to)
+	d.listed = append(d.listed, entry{text, len(d.pages), to})
 }
 
 // writeList fills the room that List left.
 func (d *Document) writeList() {
-	last := d.pdf.PageNo()
 	for i, e := range d.listed {
 		if at := i / listLines; i%listLines == 0 && at < len(d.listAt) {
-			d.pdf.SetPage(d.listAt[at].page)
-			d.pdf.SetXY(margin, d.listAt[at].y)
+			d.page, d.y = d.listAt[at].page, d.listAt[at].y
 			d.font("B", 11.5, ink)
-			d.pdf.CellFormat(fieldWidth, listHead, "Contents", "", 1, "L", false, 0, "")
+			d.put(margin, d.y+13, "Contents")
+			d.y += listHead
 		}
 		d.font("", textSize, ink)
-		d.pdf.CellFormat(fieldWidth-40, listLine, d.fit(e.text, fieldWidth-40), "", 0, "L", false, e.link, "")
-		d.pdf.CellFormat(40, listLine, fmt.Sprint(e.page), "", 1, "R", false, e.link, "")
+		d.put(margin, d.y+10, d.fit(e.text, fieldWidth-40))
+		d.right(margin+fieldWidth, d.y+10, fmt.Sprint(e.page))
+		d.page.Link(margin, d.y, fieldWidth, listLine, e.to)
+		d.y += listLine
 	}
-	d.pdf.SetPage(last)
 }
 
-// Bytes ends the document and returns the file.
+// right writes a line that ends at x.
+func (d *Document) right(x, y float64, text string) { d.put(x-d.width(text), y, text) }
+
+// foot writes the foot of every page: what the document is, what made it, and which page of how many.
+func (d *Document) foot() {
+	parts := []string{d.info.Title}
+	for _, s := range []string{d.info.Subject, d.info.Creator} {
+		if s != "" {
+			parts = append(parts, s)
+		}
+	}
+	text := strings.Join(parts, " · ")
+	for i, p := range d.pages {
+		d.page = p
+		d.font("", smallSize, soft)
+		d.put(margin, pageHeight-margin+7, d.fit(text, fieldWidth*0.86))
+		d.right(margin+fieldWidth, pageHeight-margin+7, fmt.Sprintf("page %d of %d", i+1, len(d.pages)))
+		if d.info.Foot != "" {
+			d.put(margin, pageHeight-margin+16, d.fit(d.info.Foot, fieldWidth))
+		}
+	}
+}
+
+// Bytes ends the document and returns the file. It fails where the list of contents has more lines
+// than were told.
 func (d *Document) Bytes() ([]byte, error) {
+	d.tellBoxes()
 	if len(d.listAt) > 0 {
 		if len(d.listed) > d.info.Contents {
 			return nil, fmt.Errorf("paper: %d lines for a list of contents of %d", len(d.listed), d.info.Contents)
 		}
 		d.writeList()
 	}
-	var out bytes.Buffer
-	if err := d.pdf.Output(&out); err != nil {
-		return nil, fmt.Errorf("paper: %w", err)
-	}
-	return out.Bytes(), nil
+	d.foot()
+	return d.file.Bytes(), nil
 }

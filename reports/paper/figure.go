@@ -1,6 +1,9 @@
 package paper
 
-import "slantwise/reports/drawing"
+import (
+	"slantwise/reports/drawing"
+	"slantwise/reports/paper/pdf"
+)
 
 // Figure is a chart with its title and caption.
 type Figure struct {
@@ -11,6 +14,13 @@ type Figure struct {
 }
 
 const gutter = 20.0
+
+// Sizes of a figure's words.
+const (
+	captionSize = smallSize - 0.5
+	captionLine = 8.5
+	titleRoom   = 16.0
+)
 
 // Figures writes charts two beside each other, wide ones alone.
 func (d *Document) Figures(list []Figure) {
@@ -28,26 +38,25 @@ func (d *Document) Figures(list []Figure) {
 			high = max(high, d.figureHeight(f, width))
 		}
 		d.room(high)
-		y := d.pdf.GetY()
 		for i, f := range row {
-			d.figure(f, margin+float64(i)*(width+gutter), y, width)
+			d.figure(f, margin+float64(i)*(width+gutter), d.y, width)
 		}
-		d.pdf.SetXY(margin, y+high)
+		d.y += high
 	}
 }
 
 func (d *Document) figureHeight(f Figure, width float64) float64 {
-	d.font("", smallSize-0.5, soft)
-	return 16 + f.Height + 3 + 8.5*float64(len(d.pdf.SplitText(f.Caption, width))) + 10
+	d.font("", captionSize, soft)
+	return titleRoom + f.Height + 3 + captionLine*float64(len(d.split(f.Caption, width))) + 10
 }
 
 func (d *Document) figure(f Figure, x, y, width float64) {
 	d.font("B", textSize, ink)
-	d.pdf.Text(x, y+10, d.fit(f.Title, width))
-	f.Draw(canvas{d, x, y + 16}, width, f.Height)
-	d.font("", smallSize-0.5, soft)
-	for i, line := range d.pdf.SplitText(f.Caption, width) {
-		d.pdf.Text(x, y+16+f.Height+9+8.5*float64(i), line)
+	d.put(x, y+10, d.fit(f.Title, width))
+	f.Draw(canvas{d, x, y + titleRoom}, width, f.Height)
+	d.font("", captionSize, soft)
+	for i, line := range d.split(f.Caption, width) {
+		d.put(x, y+titleRoom+f.Height+9+captionLine*float64(i), line)
 	}
 }
 
@@ -58,57 +67,50 @@ type canvas struct {
 }
 
 // tones are the colours of the pages in print; they differ in grey too.
-var tones = [...]colour{
+var tones = [...]pdf.Colour{
 	drawing.Ink: ink, drawing.Soft: soft, drawing.Rule: rule, drawing.First: {0x0a, 0x4a, 0x86},
 	drawing.Second: {0xb6, 0x5a, 0x00}, drawing.Hatch: {0x7a, 0x82, 0x8b}, drawing.Paper: {255, 255, 255},
 }
 
-func (c canvas) stroke(s *drawing.Stroke) {
-	p, t := c.d.pdf, tones[s.Tone]
-	p.SetDrawColor(t[0], t[1], t[2])
-	p.SetLineWidth(s.Width)
-	p.SetDashPattern(s.Dash, 0)
-	p.SetLineJoinStyle("round")
+func (c canvas) pen(s *drawing.Stroke) { c.d.page.Pen(tones[s.Tone], s.Width, s.Dash...) }
+
+func (c canvas) path(points []drawing.Point) {
+	p := c.d.page
+	p.Move(c.x+points[0].X, c.y+points[0].Y)
+	for _, q := range points[1:] {
+		p.Line(c.x+q.X, c.y+q.Y)
+	}
 }
 
 // Line implements drawing.Canvas.
 func (c canvas) Line(points []drawing.Point, s drawing.Stroke) {
-	c.stroke(&s)
-	p := c.d.pdf
-	p.MoveTo(c.x+points[0].X, c.y+points[0].Y)
-	for _, q := range points[1:] {
-		p.LineTo(c.x+q.X, c.y+q.Y)
-	}
-	p.DrawPath("D")
-	p.SetDashPattern(nil, 0)
+	c.pen(&s)
+	c.path(points)
+	c.d.page.Draw()
 }
 
-// how returns how a closed shape is painted.
-func (c canvas) how(fill drawing.Tone, s *drawing.Stroke) string {
-	t := tones[fill]
-	c.d.pdf.SetFillColor(t[0], t[1], t[2])
-	if s == nil {
-		return "F"
+// colours sets how a closed shape is painted, and tells whether it has an edge.
+func (c canvas) colours(fill drawing.Tone, s *drawing.Stroke) bool {
+	c.d.page.Fill(tones[fill])
+	if s != nil {
+		c.pen(s)
 	}
-	c.stroke(s)
-	return "FD"
+	return s != nil
 }
 
 // Area implements drawing.Canvas.
 func (c canvas) Area(points []drawing.Point, fill drawing.Tone, s *drawing.Stroke) {
-	how, p := c.how(fill, s), c.d.pdf
-	p.MoveTo(c.x+points[0].X, c.y+points[0].Y)
-	for _, q := range points[1:] {
-		p.LineTo(c.x+q.X, c.y+q.Y)
-	}
-	p.ClosePath()
-	p.DrawPath(how)
+	edge := c.colours(fill, s)
+	c.path(points)
+	c.d.page.Close()
+	c.d.page.Paint(edge)
 }
 
 // Disc implements drawing.Canvas.
 func (c canvas) Disc(at drawing.Point, r float64, fill drawing.Tone, s *drawing.Stroke) {
-	how := c.how(fill, s)
-	c.d.pdf.Circle(c.x+at.X, c.y+at.Y, r, how)
+	edge := c.colours(fill, s)
+	c.d.page.Circle(c.x+at.X, c.y+at.Y, r)
+	c.d.page.Paint(edge)
 }
 
 // Write implements drawing.Canvas.
@@ -118,12 +120,9 @@ func (c canvas) Write(t drawing.Text) {
 		style = "B"
 	}
 	c.d.font(style, t.Size, tones[t.Tone])
-	x := c.x + t.At.X - [...]float64{drawing.Start: 0, drawing.Middle: 0.5, drawing.End: 1}[t.Align]*c.d.pdf.GetStringWidth(t.Text)
-	c.d.pdf.Text(x, c.y+t.At.Y, t.Text)
+	x := c.x + t.At.X - [...]float64{drawing.Start: 0, drawing.Middle: 0.5, drawing.End: 1}[t.Align]*c.d.width(t.Text)
+	c.d.put(x, c.y+t.At.Y, t.Text)
 }
 
 // Width implements drawing.Canvas.
-func (c canvas) Width(text string, size float64) float64 {
-	c.d.pdf.SetFont(family, "", size)
-	return c.d.pdf.GetStringWidth(text)
-}
+func (c canvas) Width(text string, size float64) float64 { return c.d.fonts[0].Width(text, size) }

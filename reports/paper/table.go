@@ -12,51 +12,43 @@ type Table struct {
 	Corner string
 	Heads  []string
 	Rows   []Row
-	First  float64 // share of the width that the names have; 0: 0.4
+	First  float64 // share of the width that the names have where all fits; 0: 0.4
 	Left   bool    // texts, set at the left of their columns
 }
 
+// Heights of the lines of a table, and its sizes of text.
+const (
+	cellLine   = 10.5
+	remarkLine = 8.5
+	cellRoom   = 3.5
+	cellSize   = smallSize + 0.5
+	remarkSize = smallSize - 1
+)
+
+// Between columns.
+const (
+	nameGap = 6.0
+	cellGap = 5.0
+)
+
 // Table writes a table; its head comes again on each page.
 func (d *Document) Table(t Table) {
-	first := fieldWidth * 0.4
-	if t.First > 0 {
-		first = fieldWidth * t.First
-	}
-	wide := (fieldWidth - first) / float64(max(1, len(t.Heads)))
-	side := "R"
-	if t.Left {
-		side = "L"
-	}
-	head := func() {
-		d.rowOf(Row{Name: t.Corner, Cells: t.Heads, Result: true}, first, wide, side)
-	}
+	columns := d.columns(&t)
+	head := Row{Name: t.Corner, Cells: t.Heads, Result: true}
 	d.room(50)
-	head()
+	d.row(&t, head, columns)
 	for _, r := range t.Rows {
-		if d.pdf.GetY()+d.heightOf(r, first, wide) > bottom {
-			d.Page()
-			head()
+		high := d.layRow(r, columns).high
+		if len(r.Cells) == 0 {
+			high += cellLine + cellRoom // never a heading alone at the foot of a page
 		}
-		d.rowOf(r, first, wide, side)
+		if d.y+high > bottom {
+			d.Page()
+			d.row(&t, head, columns)
+		}
+		d.row(&t, r, columns)
 	}
-	d.pdf.Ln(5)
-}
-
-// parts are the lines of a row by column.
-func (d *Document) parts(r Row, first, wide float64) (names, remarks []string, cells [][]string) {
-	d.font(r.style(), smallSize+0.5, ink)
-	if len(r.Cells) == 0 {
-		first = fieldWidth
-	}
-	names = d.pdf.SplitText(r.Name, first-6)
-	for _, c := range r.Cells {
-		cells = append(cells, d.pdf.SplitText(c, wide-4))
-	}
-	if r.Remark != "" {
-		d.font("", smallSize-1, soft)
-		remarks = d.pdf.SplitText(r.Remark, first-6)
-	}
-	return names, remarks, cells
+	d.y += 5
 }
 
 func (r Row) style() string {
@@ -66,45 +58,66 @@ func (r Row) style() string {
 	return ""
 }
 
-// Heights of the lines of a table.
-const (
-	cellLine   = 10.5
-	remarkLine = 8.5
-	cellRoom   = 3.5
-)
-
-func (d *Document) heightOf(r Row, first, wide float64) float64 {
-	names, remarks, cells := d.parts(r, first, wide)
-	high := float64(len(names))*cellLine + float64(len(remarks))*remarkLine
-	for _, c := range cells {
-		high = max(high, float64(len(c))*cellLine)
-	}
-	return high + cellRoom
+// laid is a row in lines.
+type laid struct {
+	names, remarks []string
+	cells          [][]string
+	high           float64
 }
 
-func (d *Document) rowOf(r Row, first, wide float64, side string) {
-	names, remarks, cells := d.parts(r, first, wide)
-	high, y := d.heightOf(r, first, wide), d.pdf.GetY()
+func (d *Document) layRow(r Row, columns []float64) laid {
+	var l laid
+	first := columns[0]
+	d.font(r.style(), cellSize, ink)
 	if len(r.Cells) == 0 {
-		d.pdf.SetFillColor(wash[0], wash[1], wash[2])
-		d.pdf.Rect(margin, y, fieldWidth, high, "F")
+		first = fieldWidth
 	}
-	d.font(r.style(), smallSize+0.5, ink)
-	for i, line := range names {
-		d.pdf.Text(margin+1, y+8.5+float64(i)*cellLine, line)
+	l.names = d.split(r.Name, first-nameGap)
+	most := 0
+	for k, c := range r.Cells {
+		lines := d.split(c, columns[k+1]-cellGap)
+		l.cells = append(l.cells, lines)
+		most = max(most, len(lines))
 	}
-	for k, c := range cells {
-		for i, line := range c {
-			d.pdf.SetXY(margin+first+float64(k)*wide, y+1+float64(i)*cellLine)
-			d.pdf.CellFormat(wide-1, cellLine, line, "", 0, side, false, 0, "")
+	if r.Remark != "" {
+		d.font("", remarkSize, soft)
+		l.remarks = d.split(r.Remark, first-nameGap)
+	}
+	l.high = max(float64(len(l.names))*cellLine+float64(len(l.remarks))*remarkLine, float64(most)*cellLine) + cellRoom
+	return l
+}
+
+func (d *Document) row(t *Table, r Row, columns []float64) {
+	l := d.layRow(r, columns)
+	y := d.y
+	if len(r.Cells) == 0 {
+		d.page.Fill(wash)
+		d.page.Rectangle(margin, y, fieldWidth, l.high)
+		d.page.Paint(false)
+	}
+	d.font(r.style(), cellSize, ink)
+	for i, line := range l.names {
+		d.put(margin+1, y+8.5+float64(i)*cellLine, line)
+	}
+	x := margin + columns[0]
+	for k, lines := range l.cells {
+		for i, line := range lines {
+			base := y + 8.5 + float64(i)*cellLine
+			if t.Left {
+				d.put(x, base, line)
+			} else {
+				d.right(x+columns[k+1]-1, base, line)
+			}
 		}
+		x += columns[k+1]
 	}
-	d.font("", smallSize-1, soft)
-	for i, line := range remarks {
-		d.pdf.Text(margin+1, y+7.5+float64(len(names))*cellLine+float64(i)*remarkLine, line)
+	d.font("", remarkSize, soft)
+	for i, line := range l.remarks {
+		d.put(margin+1, y+7.5+float64(len(l.names))*cellLine+float64(i)*remarkLine, line)
 	}
-	d.pdf.SetDrawColor(rule[0], rule[1], rule[2])
-	d.pdf.SetLineWidth(0.5)
-	d.pdf.Line(margin, y+high, margin+fieldWidth, y+high)
-	d.pdf.SetXY(margin, y+high)
+	d.page.Pen(rule, 0.5)
+	d.page.Move(margin, y+l.high)
+	d.page.Line(margin+fieldWidth, y+l.high)
+	d.page.Draw()
+	d.y = y + l.high
 }

@@ -1,84 +1,169 @@
 package paper
 
+import (
+	"fmt"
+	"slices"
+	"strings"
+)
+
 // Heading writes the head of a section, with room for what comes under it.
 func (d *Document) Heading(text string) {
 	d.room(60)
-	d.pdf.Ln(6)
+	d.y += 6
 	d.font("B", 11.5, ink)
-	d.pdf.MultiCell(fieldWidth, 15, text, "", "L", false)
-	d.pdf.Ln(2)
+	d.block(text, 15)
+	d.y += 2
 }
 
 // Paragraph writes text over the whole width.
-func (d *Document) Paragraph(text string) { d.write("", textSize, ink, text) }
+func (d *Document) Paragraph(text string) {
+	d.font("", textSize, ink)
+	d.block(text, lineHeight)
+	d.y += 3
+}
 
 // Answer writes the sentence that is looked for first.
-func (d *Document) Answer(text string) { d.write("B", textSize+2, ink, text) }
+func (d *Document) Answer(text string) {
+	d.font("B", textSize+2, ink)
+	d.block(text, (textSize+2)*lineHeight/textSize)
+	d.y += 3
+}
 
 // Small writes what stands back.
-func (d *Document) Small(text string) { d.write("", smallSize, soft, text) }
+func (d *Document) Small(text string) {
+	d.font("", smallSize, soft)
+	d.block(text, smallSize*lineHeight/textSize)
+	d.y += 3
+}
 
-func (d *Document) write(style string, size float64, c colour, text string) {
-	high := size * lineHeight / textSize
-	d.font(style, size, c)
-	lines := d.pdf.SplitText(text, fieldWidth)
-	for _, line := range lines {
+// drop is how far under the top of a line of a height its base line lies.
+func drop(high, size float64) float64 { return high/2 + 0.35*size }
+
+// block writes text over the whole width in lines of a height.
+func (d *Document) block(text string, high float64) {
+	set := d.set
+	for _, line := range d.split(text, fieldWidth) {
 		d.room(high)
-		d.font(style, size, c)
-		d.pdf.CellFormat(fieldWidth, high, line, "", 1, "L", false, 0, "")
+		d.set = set
+		d.put(margin, d.y+drop(high, set.size), line)
+		d.y += high
 	}
-	d.pdf.Ln(3)
 }
 
 // Caution writes text in a frame with a bar at its side: it must not be overlooked, in grey neither.
 func (d *Document) Caution(text string) {
 	d.font("B", textSize, ink)
-	lines := d.pdf.SplitText("⚠ "+text, fieldWidth-16)
+	lines := d.split("⚠ "+text, fieldWidth-16)
 	high := float64(len(lines))*lineHeight + 8
 	d.room(high + 4)
-	x, y := d.pdf.GetXY()
-	d.pdf.SetDrawColor(ink[0], ink[1], ink[2])
-	d.pdf.SetFillColor(ink[0], ink[1], ink[2])
-	d.pdf.SetLineWidth(0.7)
-	d.pdf.Rect(x, y, fieldWidth, high, "D")
-	d.pdf.Rect(x, y, 4, high, "F")
-	d.font("B", textSize, ink)
+	d.page.Pen(ink, 0.7)
+	d.page.Rectangle(margin, d.y, fieldWidth, high)
+	d.page.Draw()
+	d.page.Fill(ink)
+	d.page.Rectangle(margin, d.y, 4, high)
+	d.page.Paint(false)
 	for i, line := range lines {
-		d.pdf.SetXY(x+11, y+4+float64(i)*lineHeight)
-		d.pdf.CellFormat(fieldWidth-16, lineHeight, line, "", 0, "L", false, 0, "")
+		d.put(margin+11, d.y+4+float64(i)*lineHeight+drop(lineHeight, textSize), line)
 	}
-	d.pdf.SetXY(margin, y+high+5)
+	d.y += high + 5
 }
 
 // Notes writes a list of sentences.
 func (d *Document) Notes(list []string) {
+	const high, size = 10.5, smallSize + 0.5
 	for _, text := range list {
-		d.font("", smallSize+0.5, ink)
-		lines := d.pdf.SplitText(text, fieldWidth-10)
-		for i, line := range lines {
-			d.room(10.5)
-			d.font("", smallSize+0.5, ink)
+		d.font("", size, ink)
+		for i, line := range d.split(text, fieldWidth-10) {
+			d.room(high)
 			if i == 0 {
-				d.pdf.CellFormat(10, 10.5, "•", "", 0, "L", false, 0, "")
-			} else {
-				d.pdf.SetX(margin + 10)
+				d.put(margin, d.y+drop(high, size), "•")
 			}
-			d.pdf.CellFormat(fieldWidth-10, 10.5, line, "", 1, "L", false, 0, "")
+			d.put(margin+10, d.y+drop(high, size), line)
+			d.y += high
 		}
 	}
-	d.pdf.Ln(3)
+	d.y += 3
 }
 
-// fit shortens a text to a width in the font that is set.
+// split breaks a text into lines of a width as it is set, at spaces and, where a word is longer than a
+// line, inside of it. A line end in the text begins a line. There is one line at least.
+func (d *Document) split(text string, width float64) []string {
+	var lines []string
+	for part := range strings.SplitSeq(strings.TrimRight(text, "\n"), "\n") {
+		lines = d.splitLine(lines, part, width)
+	}
+	return lines
+}
+
+func (d *Document) splitLine(lines []string, text string, width float64) []string {
+	if d.width(text) <= width {
+		return append(lines, text)
+	}
+	space := d.width(" ")
+	line, used := "", 0.0
+	for word := range strings.SplitSeq(text, " ") {
+		long := d.width(word)
+		if line != "" && used+space+long <= width {
+			line, used = line+" "+word, used+space+long
+			continue
+		}
+		if line != "" {
+			lines = append(lines, line)
+		}
+		for long > width {
+			n := d.fitting(word, width)
+			lines, word = append(lines, word[:n]), word[n:]
+			long = d.width(word)
+		}
+		line, used = word, long
+	}
+	return append(lines, line)
+}
+
+// fitting returns how many bytes of a word go into a width: one letter at least.
+func (d *Document) fitting(word string, width float64) int {
+	used, n := 0.0, 0
+	for i, r := range word {
+		if used += d.width(string(r)); used > width && i > 0 {
+			return i
+		}
+		n = i + len(string(r))
+	}
+	return min(n, len(word))
+}
+
+// fit shortens a text to a width as it is set.
 func (d *Document) fit(text string, width float64) string {
-	if d.pdf.GetStringWidth(text) <= width {
+	if d.width(text) <= width {
 		return text
 	}
 	runes := []rune(text)
 	for n := len(runes) - 1; n > 0; n-- {
-		if short := string(runes[:n]) + "…"; d.pdf.GetStringWidth(short) <= width {
+		if short := string(runes[:n]) + "…"; d.width(short) <= width {
 			return short
 		}
 	}
 	return "…"
+}
+
+// tellBoxes says which letters stand as boxes.
+func (d *Document) tellBoxes() {
+	if len(d.boxes) == 0 {
+		return
+	}
+	var list []rune
+	for r := range d.boxes {
+		list = append(list, r)
+	}
+	slices.Sort(list)
+	const most = 12
+	text := ""
+	for i, r := range list {
+		if i == most {
+			text += fmt.Sprintf(" and %d more", len(list)-most)
+			break
+		}
+		text += fmt.Sprintf(" U+%04X", r)
+	}
+	d.Small("An empty box stands where the font of this document has no letter; searching and copying give the true one:" + text + ".")
 }

@@ -1,0 +1,155 @@
+package pdf
+
+import (
+	"slices"
+	"strings"
+	"unicode"
+	"unicode/utf8"
+
+	"golang.org/x/text/unicode/bidi"
+)
+
+// Font is a face in one file: the letters that are used there have numbers in the order of their
+// use, so that the same calls make the same bytes.
+type Font struct {
+	face   *Face
+	number map[rune]uint16
+	quick  [256]uint16 // of the first runes, less the map's time
+	runes  []rune      // by number; the first is the empty box
+	object int
+}
+
+func newFont(f *Face) *Font {
+	return &Font{face: f, number: map[rune]uint16{}, runes: []rune{utf8.RuneError}}
+}
+
+// Width returns how wide a text is at a size, in points.
+func (f *Font) Width(text string, size float64) float64 {
+	sum := 0
+	for _, r := range text {
+		if r = Visible(r); r >= 0 {
+			sum += int(at16(f.face.hmtx, 4*min(int(f.face.Glyph(r)), f.face.wide-1)))
+		}
+	}
+	return float64(sum) / f.face.em * size
+}
+
+// Has tells whether the face has a letter for a rune, or the rune needs none.
+func (f *Font) Has(r rune) bool {
+	v := Visible(r)
+	return v < 0 || v == ' ' || f.face.Glyph(v) != 0
+}
+
+// Visible returns the rune that stands for r on paper: a space for white space, the picture of a
+// control character (Unicode 15, block 2400), and -1 for what has no shape of its own: marks of
+// direction, joiners, variation selectors.
+func Visible(r rune) rune {
+	switch {
+	case r >= ' ' && r < 0x7f:
+		return r
+	case r == '\t' || r == '\n' || r == '\r' || r == 0x2028 || r == 0x2029:
+		return ' '
+	case r < ' ':
+		return 0x2400 + r
+	case r == 0x7f:
+		return 0x2421
+	case r < 0xa0:
+		return 0x2426 // the substitute's picture
+	case r >= 0xfe00 && r <= 0xfe0f, r >= 0xe0100 && r <= 0xe01ef, r != 0xad && unicode.Is(unicode.Cf, r):
+		return -1
+	case r == 0xad:
+		return -1 // a soft hyphen
+	}
+	return r
+}
+
+// use returns the number of a rune in this file.
+func (f *Font) use(r rune) uint16 {
+	if r < 256 {
+		if n := f.quick[r]; n != 0 {
+			return n
+		}
+	}
+	n, ok := f.number[r]
+	if !ok {
+		if len(f.runes) == 1<<16-1 {
+			return 0
+		}
+		n = uint16(len(f.runes))
+		f.runes = append(f.runes, r)
+		f.number[r] = n
+		if r < 256 {
+			f.quick[r] = n
+		}
+	}
+	return n
+}
+
+// shown returns the runes of a text that have a shape, in the order in which they are drawn from left
+// to right.
+func shown(text string) string {
+	for i := range len(text) {
+		if text[i] < ' ' || text[i] > '~' {
+			return ordered(strings.Map(Visible, text))
+		}
+	}
+	return text
+}
+
+// ordered returns a text in the order in which it is drawn from left to right: Unicode Standard
+// Annex 9 for a line that runs to the right. Letters are not joined.
+func ordered(text string) string {
+	plain := true
+	for i := 0; i < len(text) && plain; i++ {
+		plain = text[i] < 0xd6 // what is written to the left begins at U+0590
+	}
+	if plain {
+		return text
+	}
+	var p bidi.Paragraph
+	if n, err := p.SetString(text, bidi.DefaultDirection(bidi.LeftToRight)); err != nil || n < len(text) {
+		return text
+	}
+	order, err := p.Order()
+	if err != nil {
+		return text
+	}
+	var out []rune
+	for i := range order.NumRuns() {
+		run := order.Run(i)
+		part := []rune(run.String())
+		if run.Direction() == bidi.RightToLeft {
+			slices.Reverse(part)
+			for k, r := range part {
+				part[k] = mirrored(r)
+			}
+		}
+		out = append(out, part...)
+	}
+	return string(out)
+}
+
+// mirrored turns a bracket round.
+func mirrored(r rune) rune {
+	const pairs = "()[]{}<>«»‹›"
+	list := []rune(pairs)
+	if i := slices.Index(list, r); i >= 0 {
+		return list[i^1]
+	}
+	return r
+}
+
+const hexDigits = "0123456789ABCDEF"
+
+func appendHex(dst []byte, v uint16) []byte {
+	return append(dst, hexDigits[v>>12], hexDigits[v>>8&15], hexDigits[v>>4&15], hexDigits[v&15])
+}
+
+// appendText appends a text as a string of numbers, two bytes each.
+func (f *Font) appendText(dst []byte, text string) []byte {
+	dst = append(dst, '<')
+	for _, r := range shown(text) {
+		dst = appendHex(dst, f.use(r))
+	}
+	return append(dst, '>')
+}
