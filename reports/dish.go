@@ -18,8 +18,8 @@ type Dish struct {
 	Charts       []Curves // each with one chart and an axis of its own
 	Costs        []DishCost
 	Chances      []DishChance
-	ChanceText   string // about the dish that the chances are of; empty: no tolerances are given
-	Limits       []DishLimit
+	ChanceText   string       // about the dish that the chances are of; empty: no tolerances are given
+	Limits       []DishLimits // a dish after the other
 	Files        []DishFile
 	Notes        []Note
 }
@@ -42,7 +42,13 @@ type DishCost struct {
 // DishChance is a diameter with the probability that it meets all.
 type DishChance struct{ Probability, Diameter string }
 
-// DishLimit is what the dish allows.
+// DishLimits is what a dish allows.
+type DishLimits struct {
+	Dish string
+	Rows []DishLimit
+}
+
+// DishLimit is one of its limits.
 type DishLimit struct{ Name, Value, Meaning string }
 
 // DishFile is a file beside the page.

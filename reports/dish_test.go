@@ -19,7 +19,7 @@ func someDish() *Dish {
 		Charts:       []Curves{{X: Axis{Name: "diameter", Unit: "m", Values: []float64{1, 2, 3}, Decimals: 1}, Charts: []CurveChart{chart}}},
 		Costs:        []DishCost{{"1 dB less power", -4e8, "−400 MB", "+22 cm"}, {"1 K more noise", -1e8, "−100 MB", "+4 cm"}},
 		Chances:      []DishChance{{"90 %", "2.90 m"}}, ChanceText: "It meets all with 48 %.",
-		Limits: []DishLimit{{"least transmit power", "3 dBW", "just met"}}, Files: []DishFile{{"trade.csv", "the curve"}},
+		Limits: []DishLimits{{"yours, 3.70 m", []DishLimit{{"least transmit power", "3 dBW", "just met"}}}}, Files: []DishFile{{"trade.csv", "the curve"}},
 		Notes: []Note{{Kind: Assumption, Text: "a kept orbit"}},
 	}
 }
@@ -33,7 +33,7 @@ func TestDishPage(t *testing.T) {
 	at := 0
 	for _, want := range []string{ // in this order
 		"<h1>Which dish for &lt;Wagtail 1&gt;</h1>", "No, the dish does not suffice.", "no rain is stated", "(binds)", "✗ no", "Numbers of this drawing",
-		`style="--share:100.0%">−400 MB`, `style="--share:25.0%">−100 MB`, "It meets all with 48 %.", "2.90 m", "least transmit power", `href="trade.csv"`, "a kept orbit", "Structure.", "Moving mounts.",
+		`style="--share:100.0%">−400 MB`, `style="--share:25.0%">−100 MB`, "It meets all with 48 %.", "2.90 m", "yours, 3.70 m", "least transmit power", `href="trade.csv"`, "a kept orbit", "Structure.", "Moving mounts.",
 	} {
 		i := strings.Index(text[at:], want)
 		if i < 0 {

@@ -2,8 +2,6 @@ package sizing
 
 import (
 	"math"
-
-	"slantwise/orbit/unit"
 )
 
 // Verdict is what one requirement says.
@@ -24,16 +22,6 @@ type Answer struct {
 	Trade     []*Outcome
 	Limit     Limit
 }
-
-// Limit is the diameter beyond which more dish stops helping.
-type Limit struct {
-	Peak      unit.Length // at which gain less pointing and surface loss is greatest; 0: it grows on beyond MostDiameter
-	By        string      // what takes more than the aperture gives beyond: "pointing" or "surface"
-	Saturated unit.Length // the least diameter of the range that brings 99 % of the most bytes; 0: nothing comes down
-}
-
-// MostDiameter is how far the limit is looked for.
-const MostDiameter unit.Length = 200
 
 // Answer evaluates a range of diameters and searches it for every requirement and for
 // all together. Progress is told how much of the work is done; nil: nobody asks.
@@ -103,69 +91,4 @@ func binding(verdicts []Verdict, together Found) int {
 		}
 	}
 	return best
-}
-
-// limit finds where more dish stops helping.
-func (s *Study) limit(trade []*Outcome, r Range) (Limit, error) {
-	var l Limit
-	most := 0.0
-	for _, o := range trade {
-		most = max(most, o.BytesPerDay)
-	}
-	if most > 0 {
-		ask := None()
-		ask.BytesPerDay = 0.99 * most
-		f, err := s.Least(ask.List(), r)
-		if err != nil {
-			return l, err
-		}
-		l.Saturated = f.Diameter
-	}
-	gain := func(d float64) (total, pointing, surface float64, err error) {
-		least := math.Inf(1)
-		for _, i := range s.spec.Sites {
-			a, err := s.antenna(i, Variant{Diameter: unit.Length(d)})
-			if err != nil {
-				return 0, 0, 0, err
-			}
-			p, f := losses(a, s.spec.Places[i].Clear.Transmitter.Frequency)
-			if g := 20*math.Log10(d) - p - f; g < least {
-				least, pointing, surface = g, p, f
-			}
-		}
-		return least, pointing, surface, nil
-	}
-	low, high := math.Log(0.01), math.Log(MostDiameter.Metres())
-	const golden = 0.6180339887498949
-	for high-low > 1e-4 {
-		c, d := high-golden*(high-low), low+golden*(high-low)
-		gc, _, _, err := gain(math.Exp(c))
-		if err != nil {
-			return l, err
-		}
-		gd, _, _, err := gain(math.Exp(d))
-		if err != nil {
-			return l, err
-		}
-		if gc >= gd {
-			high = d
-		} else {
-			low = c
-		}
-	}
-	at := math.Exp((low + high) / 2)
-	if at > 0.99*MostDiameter.Metres() {
-		return l, nil
-	}
-	l.Peak = unit.Length(at)
-	_, p1, s1, err := gain(at)
-	if err != nil {
-		return l, err
-	}
-	_, p2, s2, err := gain(at * 1.01)
-	l.By = "surface"
-	if p2-p1 >= s2-s1 {
-		l.By = "pointing"
-	}
-	return l, err
 }

@@ -38,7 +38,8 @@ type budgetJSON struct {
 	Path         budgetPath       `json:"path"`
 	Samples      []budgetSample   `json:"samples"`
 	Assumptions  []budgetNoteJSON `json:"assumptions"`
-	Radiation    *radiationJSON   `json:"radiation"` // of the station; null in a downlink
+	Radiation    *radiationJSON   `json:"radiation"`       // of the station; null in a downlink
+	Instant      *mountAtJSON     `json:"mount,omitempty"` // at one instant of a pass, where the antenna has a mount
 }
 
 // budgetPath says what the numbers of the path are.
@@ -130,7 +131,7 @@ func budgetOut(r *budgetResult) budgetJSON {
 	out := budgetJSON{
 		Spacecraft: r.spacecraft.Name, Station: r.station.Site.Name, Transmitter: r.transmitter.Name,
 		FrequencyMHz: nano(r.transmitter.Frequency.Megahertz()), Antenna: r.antenna.Name,
-		Samples: []budgetSample{}, Assumptions: []budgetNoteJSON{}, Direction: r.link.Direction().String(),
+		Samples: []budgetSample{}, Assumptions: []budgetNoteJSON{}, Direction: r.link.Direction().String(), Instant: r.instant,
 	}
 	if rad, ok := r.radiation(); ok {
 		out.Radiation = radiationOut(&rad)

@@ -28,6 +28,7 @@ type budgetResult struct {
 	sunInBeam   []downlink.Interval
 	surety      *surety      // of the pass; nil: the position is taken as exact
 	mount       *mountOnPass // nil where nothing is said of the mount
+	instant     *mountAtJSON // likewise, at one instant; nil out of a pass, too
 	samples     []*downlink.Budget
 	notes       []downlink.Note
 }
@@ -114,6 +115,9 @@ func budgetAt(s *scenario.Scenario, c *chosenLink, at time.Time) (*budgetResult,
 		return nil, err
 	}
 	r.notes = append(r.notes, told...)
+	if err := r.followAt(at); err != nil {
+		return nil, err
+	}
 	return r, r.add(g)
 }
 

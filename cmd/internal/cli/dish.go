@@ -44,7 +44,7 @@ the weather.
   --show limits  what the dish allows: power, rate, range, altitude, G/T, least elevation
 
 Sensitivities and chances are of the least dish that meets all, limits of the scenario's
-own dishes; --diameter-m asks about another.`,
+own dishes and of that one; --diameter-m asks about another.`,
 		Example: `  slantwise dish --days 28
   slantwise dish --days 28 --show trade --format csv
   slantwise dish --days 28 --report dish

@@ -60,8 +60,11 @@ func (d *dishStudy) altitudeLimit(ctx context.Context, env *Env, needs []sizing.
 	return low, nil
 }
 
-// atAltitude is the same question for an orbit of another altitude.
+// atAltitude is the same question for an orbit of another altitude, each flown once.
 func (d *dishStudy) atAltitude(ctx context.Context, env *Env, km float64) (*dishStudy, error) {
+	if of := d.altitudes[km]; of != nil {
+		return of, nil
+	}
 	el := d.kept.Elements()
 	o := orbit.SyntheticOrbit{Name: el.Name, CatalogNumber: el.CatalogNumber, Epoch: el.Epoch, Altitude: unit.Length(km) * unit.Kilometre,
 		Eccentricity: el.Eccentricity, RAAN: el.RAAN, ArgPerigee: el.ArgPerigee, MeanAnomaly: el.MeanAnomaly}
@@ -80,5 +83,12 @@ func (d *dishStudy) atAltitude(ctx context.Context, env *Env, km float64) (*dish
 	if err := out.fly(ctx, env, out.kept); err != nil {
 		return nil, err
 	}
-	return &out, out.prepare()
+	if err := out.prepare(); err != nil {
+		return nil, err
+	}
+	if d.altitudes == nil {
+		d.altitudes = map[float64]*dishStudy{}
+	}
+	d.altitudes[km] = &out
+	return &out, nil
 }

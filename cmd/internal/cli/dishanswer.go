@@ -19,7 +19,8 @@ type dishJSON struct {
 	Sentence     string            `json:"answer"`
 	Nearest      *nearestJSON      `json:"nearest"` // where no diameter meets all
 	Peak         number            `json:"gain_peak_diameter_m"`
-	PeakBy       *string           `json:"gain_peak_by"`
+	PeakBy       *string           `json:"gain_peak_by"` // the greatest of the next
+	PeakTakers   []takerJSON       `json:"gain_peak_contributors"`
 	Saturated    number            `json:"bytes_saturated_diameter_m"`
 	Own          []ownJSON         `json:"own_antennas"`
 	Notes        []budgetNoteJSON  `json:"assumptions"`
@@ -41,6 +42,13 @@ type requirementJSON struct {
 type nearestJSON struct {
 	Diameter number `json:"diameter_m"`
 	Misses   string `json:"misses"`
+}
+
+// takerJSON is a loss that ends the growth of the gain.
+type takerJSON struct {
+	Loss  string `json:"loss"`
+	Share number `json:"share_percent"`    // of what all take at the summit from the next bit of diameter
+	Alone number `json:"alone_diameter_m"` // where the summit were by this loss alone
 }
 
 type ownJSON struct {
@@ -110,9 +118,12 @@ func diameterOr(d float64) float64 {
 func (d *dishStudy) answerJSON(a *sizing.Answer) (*dishJSON, error) {
 	out := &dishJSON{Satisfied: a.Satisfied, Least: num(diameterOr(a.Together.Diameter.Metres()), 4), Greatest: num(diameterOr(a.Together.Most.Metres()), 4),
 		Requirements: []requirementJSON{}, Sentence: strings.Join(d.sentences(a), " "), Peak: num(diameterOr(a.Limit.Peak.Metres()), 3),
-		Saturated: num(diameterOr(a.Limit.Saturated.Metres()), 3), Notes: []budgetNoteJSON{}}
-	if a.Limit.Peak > 0 {
-		out.PeakBy = &a.Limit.By
+		Saturated: num(diameterOr(a.Limit.Saturated.Metres()), 3), PeakTakers: []takerJSON{}, Notes: []budgetNoteJSON{}}
+	for i, t := range a.Limit.By {
+		if i == 0 {
+			out.PeakBy = &a.Limit.By[0].Loss
+		}
+		out.PeakTakers = append(out.PeakTakers, takerJSON{t.Loss, num(100*t.Share, 2), num(diameterOr(t.Alone.Metres()), 3)})
 	}
 	var then *sizing.Outcome
 	if a.Together.Diameter > 0 {
@@ -213,7 +224,8 @@ func (d *dishStudy) misses(a *sizing.Answer) string {
 			alone = append(alone, fmt.Sprintf("%s alone needs %s to %s", requirementText(v.Kind), metres(v.Alone.Diameter.Metres()), metres(v.Alone.Most.Metres())))
 		}
 	}
-	text := fmt.Sprintf("%s comes nearest, where %s", metres(n.Variant.Diameter.Metres()), strings.Join(parts, " and "))
+	text := fmt.Sprintf("%s comes nearest, where %s (nearest: the requirement that is missed by the greatest share of what is required is missed by the least; 10 dB count as a whole)",
+		metres(n.Variant.Diameter.Metres()), strings.Join(parts, " and "))
 	if len(alone) > 0 {
 		text += "; " + strings.Join(alone, ", ")
 	}
@@ -227,10 +239,29 @@ func (d *dishStudy) limits(a *sizing.Answer) []string {
 		out = append(out, fmt.Sprintf("%s brings 99 %% of the most bytes of the range.", metres(l.Saturated.Metres())))
 	}
 	if l := a.Limit; l.Peak > 0 {
-		why := map[string]string{"pointing": "the beam grows narrower than the pointing error bears", "surface": "the surface error takes more than the aperture gives"}[l.By]
-		out = append(out, fmt.Sprintf("Beyond %s more dish is no more gain: %s.", metres(l.Peak.Metres()), why))
+		out = append(out, fmt.Sprintf("Beyond %s more dish is no more gain: %s.", metres(l.Peak.Metres()), takersText(l.By)))
 	}
 	return out
+}
+
+// takersText names all that takes more than a greater aperture gives.
+func takersText(by []sizing.Taker) string {
+	var names, alone []string
+	for _, t := range by {
+		name := t.Loss + " error"
+		if len(by) > 1 {
+			names = append(names, fmt.Sprintf("%s (%.0f %%)", name, 100*t.Share))
+		} else {
+			names = append(names, name)
+		}
+		if t.Alone > 0 {
+			alone = append(alone, fmt.Sprintf("by the %s alone %s", name, metres(t.Alone.Metres())))
+		}
+	}
+	if len(by) == 1 {
+		return "the " + names[0] + " takes more than the aperture gives"
+	}
+	return fmt.Sprintf("the %s take more than the aperture gives (%s)", strings.Join(names, " and the "), strings.Join(alone, ", "))
 }
 
 func requirementText(k sizing.Kind) string {

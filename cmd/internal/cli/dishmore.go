@@ -1,7 +1,6 @@
 package cli
 
 import (
-	"context"
 	"fmt"
 	"math"
 
@@ -161,91 +160,4 @@ func chanceSheet(c *sizing.Chance) *sheet {
 	}
 	out.notes = append(out.notes, "every tolerance of the design control, independent of one another; what was bought is one deviation for all links and the whole year")
 	return out
-}
-
-// limitSheet is what a dish allows, everything else as it is.
-func (d *dishStudy) limitSheet(ctx context.Context, env *Env, a *sizing.Answer, asked *float64) (*sheet, error) {
-	v := sizing.Variant{}
-	if asked != nil {
-		v.Diameter = unit.Length(*asked)
-	}
-	out := &sheet{name: "limits", columns: []sheetColumn{wordsAs("limit", "limit"), numbersAs("value", "value", 4), wordsAs("unit", "unit"), wordsAs("meaning", "meaning")}}
-	add := func(name string, value float64, u, meaning string) {
-		out.rows = append(out.rows, []any{name, value, u, meaning})
-	}
-	needs := d.sizing.Needs.List()
-	slack, err := d.study.Slack(needs, v)
-	if err != nil {
-		return nil, &InputError{Err: err}
-	}
-	add("slack", float64(slack), "dB", "so much worse every link may be until a requirement fails; negative: so much is missing")
-	if tx := d.transmitter; tx.EIRP != nil {
-		add("least EIRP", tx.EIRP.DBW()-float64(slack), "dBW", "with which all is just met")
-	} else {
-		add("least transmit power", tx.Power.Minus(slack).DBW(), "dBW", "with which all is just met")
-	}
-	if err := d.rateLimit(add, v); err != nil {
-		return nil, err
-	}
-	at := 30 * unit.Degree
-	if m := d.sizing.Needs.Margin; m != nil {
-		at = m.Elevation
-		d.rangeLimit(add, v, m)
-	}
-	for i := range d.links {
-		g, err := d.study.GOverT(i, v, at)
-		if err != nil {
-			return nil, &InputError{Err: err}
-		}
-		add("worst G/T, "+d.links[i].station.Site.Name, float64(g-slack), "dB/K", fmt.Sprintf("at %g deg under a clear sky, where the dish has %.2f dB/K", at.Degrees(), float64(g)))
-	}
-	raise, ok, err := d.study.HighestRaise(needs, v)
-	if err != nil {
-		return nil, &InputError{Err: err}
-	}
-	if !ok {
-		raise = unit.Angle(none)
-	}
-	add("least elevation raised by", raise.Degrees(), "deg", "at every site, with which all is just met")
-	km, err := d.altitudeLimit(ctx, env, needs, v)
-	if err != nil {
-		return nil, err
-	}
-	add("greatest altitude", km, "km", "of a mean orbit of the same kind, up to which all is met")
-	return out, nil
-}
-
-// rateLimit is the data rate that margin and availability allow the mode.
-func (d *dishStudy) rateLimit(add func(string, float64, string, string), v sizing.Variant) error {
-	radio := sizing.None()
-	radio.Margin, radio.MarginShare, radio.Availability = d.sizing.Needs.Margin, d.sizing.Needs.MarginShare, d.sizing.Needs.Availability
-	list := radio.List()
-	if len(list) == 0 {
-		return nil
-	}
-	slack, err := d.study.Slack(list, v)
-	if err != nil {
-		return &InputError{Err: err}
-	}
-	m, err := d.need(d.mode)
-	if err != nil {
-		return &InputError{Err: err}
-	}
-	add("data rate of mode "+d.mode.Name, m.InformationRate.BitsPerSecond()*slack.Ratio(), "bit/s", "with the same coding, at which margin and availability are just met")
-	return nil
-}
-
-// rangeLimit is the distance at which the margin is just there.
-func (d *dishStudy) rangeLimit(add func(string, float64, string, string), v sizing.Variant, m *sizing.MarginAt) {
-	o, err := d.study.Outcome(v)
-	if err != nil {
-		return // it was evaluated before
-	}
-	over := o.MarginDB - float64(m.Margin)
-	for i := range d.links {
-		if slant, _, ok := d.flight.Sites[i].At(m.Elevation); ok {
-			add("greatest range, "+d.links[i].station.Site.Name, slant.Kilometres()*math.Pow(10, over/20), "km",
-				fmt.Sprintf("at %g deg with the margin just there and the same air, where the orbit has %.0f km", m.Elevation.Degrees(), slant.Kilometres()))
-		}
-	}
 }

@@ -43,8 +43,7 @@ func writeDishReport(ctx context.Context, env *Env, d *dishStudy, a *sizing.Answ
 		return err
 	}
 	if len(a.Verdicts) > 0 {
-		at := d.chosen(a, o.diameter).Metres()
-		if r.limits, err = d.limitSheet(ctx, env, a, &at); err != nil {
+		if r.limits, err = d.limitSheet(ctx, env, a, o.diameter); err != nil {
 			return err
 		}
 	}
@@ -76,6 +75,7 @@ func (r *dishReport) write(env *Env, dir string) error {
 		return err
 	}
 	for _, s := range r.sheets() {
+		r.study.withNotes(s.sheet)
 		for _, f := range []format{formatCSV, formatJSON} {
 			var b bytes.Buffer
 			quiet := *env
@@ -125,7 +125,7 @@ func (r *dishReport) sheets() []namedSheet {
 		out = append(out, namedSheet{"chances", "probabilities with every tolerance", chanceSheet(r.chance)})
 	}
 	if r.limits != nil {
-		out = append(out, namedSheet{"limits", "what the dish allows", r.limits})
+		out = append(out, namedSheet{"limits", "what your dishes and the least one allow", r.limits})
 	}
 	return out
 }
@@ -185,15 +185,22 @@ func (r *dishReport) addLimits(out *reports.Dish) {
 		return
 	}
 	for _, row := range r.limits.rows {
-		v := row[1].(float64)
+		dish, diameter, v := row[0].(string), row[1].(float64), row[3].(float64)
+		if !math.IsNaN(diameter) {
+			dish += ", " + metres(diameter)
+		}
+		if n := len(out.Limits); n == 0 || out.Limits[n-1].Dish != dish {
+			out.Limits = append(out.Limits, reports.DishLimits{Dish: dish})
+		}
 		text := "none"
-		switch u := row[2].(string); {
+		switch u := row[4].(string); {
 		case math.IsNaN(v):
 		case u == "bit/s":
 			text = scaled(v, u)
 		default:
 			text = fmt.Sprintf("%.4g %s", v, u)
 		}
-		out.Limits = append(out.Limits, reports.DishLimit{Name: row[0].(string), Value: text, Meaning: row[3].(string)})
+		of := &out.Limits[len(out.Limits)-1]
+		of.Rows = append(of.Rows, reports.DishLimit{Name: row[2].(string), Value: text, Meaning: row[5].(string)})
 	}
 }

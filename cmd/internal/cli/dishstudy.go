@@ -29,6 +29,7 @@ type dishStudy struct {
 	spec        sizing.Spec
 	study       *sizing.Study
 	notes       []downlink.Note
+	altitudes   map[float64]*dishStudy // the same for other altitudes in km, as far as they were asked for
 }
 
 func (d *dishStudy) note(kind downlink.NoteKind, format string, args ...any) {
