@@ -33,6 +33,9 @@ func checkPass(p *Pass) error {
 			}
 		}
 	}
+	if err := checkMeasured(p.Measured); err != nil {
+		return err
+	}
 	if p.Radio == nil {
 		return nil
 	}

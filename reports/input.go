@@ -49,6 +49,8 @@ type Pass struct {
 	Radio   *Radio // nil without a transmitter or antenna
 	Uplinks []Uplink
 	Notes   []Note // of the page: all that hold for this pass
+
+	Measured []Measured // what was logged during the pass; empty: nothing
 }
 
 // Direction is a point of the sky.

@@ -33,6 +33,7 @@ func passPaper(w *writer, p *Pass) ([]byte, error) {
 	d.Heading("Along the pass")
 	d.Chapter("Along the pass")
 	d.Figures(paperFigures(sketches(p, newFrame(p))))
+	measuredOn(d, p)
 	if v.Link != nil {
 		d.Heading("Link budget")
 		d.Chapter("Link budget")

@@ -33,6 +33,8 @@ type headJSON struct {
 	Notes      []noteJSON   `json:"notes"`
 	Surety     *suretyJSON  `json:"plus_minus"` // one standard deviation each; null: the position is taken as exact
 	Ground     *groundJSON  `json:"ground"`     // at the culmination; null: no map
+
+	Measured []measuredJSON `json:"measured,omitempty"` // left out where nothing was logged
 }
 
 type elementsJSON struct {
@@ -125,6 +127,7 @@ func passHead(p *Pass) headJSON {
 		Uplinks:    uplinkHeads(p),
 		Surety:     suretyHead(p.Surety),
 		Ground:     groundHead(p.Ground),
+		Measured:   measuredHeads(p),
 	}
 	for _, ev := range events(p) {
 		h.Events = append(h.Events, eventJSON{ev.key, utcText(ev.at), number{ev.azimuthDeg, 4}, number{ev.elevationDeg, 4}})

@@ -28,8 +28,9 @@ type passView struct {
 	Budget, Noise          budgetView
 	Surety                 *suretyView // nil: the position is taken as exact
 	Uplinks                []uplinkView
-	Modes                  []modeView // empty where there was nothing to choose
-	Doubts                 []Note     // of single budgets
+	Measured               *measuredView // nil: nothing was logged
+	Modes                  []modeView    // empty where there was nothing to choose
+	Doubts                 []Note        // of single budgets
 	Assumptions, Defaults  []Note
 	CSV, JSON              template.URL
 	PDF                    string // the file beside the page; empty: none
@@ -106,6 +107,7 @@ func passPage(w *writer, i int, p *Pass) ([]byte, error) {
 		v.Data = dataElement(data)
 	}
 	v.CSV, v.JSON = template.URL(v.Stem+".csv"), template.URL(v.Stem+".json")
+	v.Measured = newMeasuredView(w, v.Stem, p, fr)
 	if w.options.PDF {
 		v.PDF = v.Stem + ".pdf"
 	}

@@ -123,6 +123,11 @@ func (w *writer) pass(ctx context.Context, i int, r *row) error {
 	if err := w.put(stem+".csv", *buffer); err != nil {
 		return err
 	}
+	if len(p.Measured) > 0 {
+		if err := w.put(stem+measuredSuffix, measuredCSV(p)); err != nil {
+			return err
+		}
+	}
 	if *buffer, err = appendPassJSON((*buffer)[:0], p); err != nil {
 		return err
 	}

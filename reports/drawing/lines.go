@@ -11,6 +11,7 @@ type Line struct {
 	Tone   Tone
 	Width  float64
 	Right  bool // on the right axis
+	Dots   bool // the symbol at each point, and no line between them
 }
 
 // Span is a stretch of the x axis, with a word over it where it has one.
@@ -36,6 +37,7 @@ const (
 	edgeRight = 12.0
 	edgeBelow = 30.0
 	swatch    = 22.0
+	dotSize   = 1.5 // of a mark among many
 )
 
 // box is the field of a chart inside its axes.
@@ -84,7 +86,9 @@ func (l *Lines) legend(c Canvas, w float64) float64 {
 		if x > 0 && x+long > w {
 			x, y = 0, y+labelSize+4
 		}
-		c.Line([]Point{{x, y - 2.6}, {x + swatch, y - 2.6}}, Stroke{s.Tone, s.Width, s.Dash})
+		if !s.Dots {
+			c.Line([]Point{{x, y - 2.6}, {x + swatch, y - 2.6}}, Stroke{s.Tone, s.Width, s.Dash})
+		}
 		mark(c, s.Symbol, Point{x + swatch/2, y - 2.6}, 2.6, s.Tone)
 		c.Write(Text{At: Point{x + swatch + 4, y}, Text: s.Name, Size: labelSize})
 		x += long + 10
@@ -172,6 +176,10 @@ func (l *Lines) line(c Canvas, b box, i int) {
 		x, y := l.X.place(s.X[k]), axis.place(s.Y[k])
 		if !(x >= -1e-9 && x <= 1+1e-9 && y >= -1e-9 && y <= 1+1e-9) {
 			flush()
+			continue
+		}
+		if s.Dots {
+			mark(c, s.Symbol, b.at(x, y), dotSize, s.Tone)
 			continue
 		}
 		run = append(run, b.at(x, y))

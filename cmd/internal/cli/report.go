@@ -17,7 +17,8 @@ type reportOptions struct {
 	into                 string
 	oneFile, pdf, static bool
 	spacecraft, stations []string
-	mode                 string
+	mode, log            string
+	logNamed             bool // false: log is the default
 	workers              int
 }
 
@@ -49,6 +50,9 @@ words and numbers, charts as vectors, and text that can be searched; no browser 
 for them. With --static the pages have no script: the same charts are drawn into them, for
 mail and closed machines.
 
+What was measured stands on the pages over what was predicted: of the logbook that --log
+names, else of slantwise.logbook in this folder where log add has made it.
+
 The folder appears whole or not at all. In a folder with an earlier report the files
 of that report are replaced, and all others stay; a folder that holds something else
 is refused. Standard output names the file to open.`,
@@ -62,6 +66,7 @@ is refused. Standard output names the file to open.`,
 			if o.into == "" {
 				return inputErrorf("--into: the name of the folder is empty; give one, or leave the flag out for slantwise-report")
 			}
+			o.logNamed = cmd.Flags().Changed("log")
 			return run(cmd.Context(), env, o)
 		},
 	}
@@ -73,6 +78,7 @@ is refused. Standard output names the file to open.`,
 	fs.StringArrayVar(&o.spacecraft, "spacecraft", nil, "only this spacecraft, by `NAME`; may be repeated")
 	fs.StringArrayVar(&o.stations, "station", nil, "only this station, by `NAME`; may be repeated")
 	fs.StringVar(&o.mode, "mode", "", "take the mode of this `NAME` where a transmitter has it")
+	fs.StringVar(&o.log, "log", defaultBook, "put the measurements of this logbook `FILE` onto the pages; an empty name: none")
 	addWorkers(fs, &o.workers, "pages are made")
 	return cmd
 }
@@ -84,6 +90,9 @@ func runReport(ctx context.Context, env *Env, o reportOptions) error {
 	}
 	plan, err := planReport(ctx, s, o)
 	if err != nil {
+		return err
+	}
+	if err := plan.openBook(ctx, env, o.log, o.logNamed); err != nil {
 		return err
 	}
 	for _, w := range plan.warnings {

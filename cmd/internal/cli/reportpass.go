@@ -33,6 +33,7 @@ func (p *reportPlan) load(ctx context.Context, i int) (*reports.Pass, error) {
 	if out.Elements.Source.File != "" {
 		out.Elements.Source.File = filepath.Base(out.Elements.Source.File)
 	}
+	p.addMeasured(out, craft, site, page)
 	step := sampleStep(page.Duration())
 	if page.link == nil {
 		return out, p.addGeometry(out, craft, site, page)

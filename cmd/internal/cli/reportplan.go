@@ -27,6 +27,7 @@ type reportPlan struct {
 	passes   int
 	warnings []string // beside the scenario's own
 	rates    reportRates
+	logged   map[bookKey][]loggedEntry // what the logbook holds of the window; nil: nothing
 }
 
 type reportCraft struct {

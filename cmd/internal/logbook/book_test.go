@@ -14,9 +14,9 @@ import (
 
 func sample(digest string) *Entry {
 	at := time.Date(2026, 9, 15, 0, 50, 0, 500, time.UTC)
-	e := &Entry{Spacecraft: "Wagtail 1", Station: "Skerry Point", First: at, Last: at.Add(200 * time.Second), Source: "log.csv", Elements: "set", Digest: digest, Taken: at}
+	e := &Entry{PredictedBytes: math.NaN(), TakenBytes: 2e6, Spacecraft: "Wagtail 1", Station: "Skerry Point", First: at, Last: at.Add(200 * time.Second), Source: "log.csv", Elements: "set", Digest: digest, Taken: at}
 	for i := range 200 {
-		e.Values = append(e.Values, Value{At: at.Add(time.Duration(i) * time.Second), Quantity: "cn0_dbhz", State: "used", Measured: float64(i), Predicted: math.NaN()})
+		e.Values = append(e.Values, Value{At: at.Add(time.Duration(i) * time.Second), Quantity: "cn0_dbhz", State: "used", Measured: float64(i), Predicted: math.NaN(), AzimuthDeg: 12.5, ElevationDeg: math.NaN()})
 	}
 	return e
 }

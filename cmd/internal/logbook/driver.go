@@ -3,74 +3,134 @@ package logbook
 import (
 	"context"
 	"database/sql"
+	"errors"
 	"fmt"
 	"net/url"
 	"os"
 
-	_ "modernc.org/sqlite" // the database engine, registered as "sqlite"
+	"modernc.org/sqlite"
 )
-
-// steps bring the schema from each version to the next.
-var steps = []string{
-	`CREATE TABLE pass(id INTEGER PRIMARY KEY, spacecraft TEXT NOT NULL, station TEXT NOT NULL, first TEXT NOT NULL, last TEXT NOT NULL,
-		source TEXT NOT NULL, elements TEXT NOT NULL, note TEXT NOT NULL DEFAULT '', taken TEXT NOT NULL);
-	CREATE TABLE sample(pass INTEGER NOT NULL REFERENCES pass(id), at TEXT NOT NULL, quantity TEXT NOT NULL, measured REAL NOT NULL, predicted REAL, state TEXT NOT NULL);
-	CREATE INDEX sample_of_pass ON sample(pass)`,
-	`ALTER TABLE pass ADD COLUMN digest TEXT NOT NULL DEFAULT '';
-	CREATE UNIQUE INDEX pass_once ON pass(spacecraft, station, digest) WHERE digest <> ''`,
-}
 
 // Book is an open logbook.
 type Book struct {
-	db   *sql.DB
-	path string
+	db      *sql.DB
+	path    string
+	version int
 }
 
-// Open opens the file, which is made where it is not there and make is true.
+// Faults of a file, beside those of the machine.
+var (
+	// ErrDamaged says that the file is no whole database; Salvage reads what is left.
+	ErrDamaged = errors.New("the file is damaged or no logbook at all")
+	// ErrLocked says that another process holds the file.
+	ErrLocked = errors.New("another program is writing to it; try again when it is done")
+	// ErrReadOnly says that the file or its folder cannot be written.
+	ErrReadOnly = errors.New("the file or its folder cannot be written; give leave to write, or copy the logbook to where you may")
+
+	errForeign = errors.New("it is a database of another program; name another file")
+	errEmpty   = errors.New("there is no pass in it yet; log add puts one there")
+)
+
+// Primary result codes of the database engine (sqlite.org/rescode.html).
+const (
+	codeBusy, codeLocked, codeReadOnly = 5, 6, 8
+	codeCorrupt, codeFull, codeNotADB  = 11, 13, 26
+)
+
+// Open opens the file to write, which is made where it is not there and make is true. A file of
+// an earlier version is brought up to date.
 func Open(ctx context.Context, path string, make bool) (*Book, error) {
 	if _, err := os.Stat(path); err != nil && !make {
 		return nil, fmt.Errorf("logbook %s: %w; log add makes one", path, err)
 	}
-	from := url.URL{Scheme: "file", Opaque: url.PathEscape(path), RawQuery: "_pragma=journal_mode(WAL)&_pragma=synchronous(FULL)&_pragma=foreign_keys(1)&_pragma=busy_timeout(5000)"}
+	b, err := open(path, "_pragma=busy_timeout(5000)&_pragma=journal_mode(WAL)&_pragma=synchronous(FULL)&_pragma=foreign_keys(1)")
+	if err != nil {
+		return nil, err
+	}
+	if err := b.migrate(ctx); err != nil {
+		b.db.Close()
+		return nil, b.told(err)
+	}
+	return b, nil
+}
+
+// OpenToRead opens a file without changing it: of an earlier version, on a medium that cannot be
+// written, or while another program writes.
+func OpenToRead(ctx context.Context, path string) (*Book, error) {
+	info, err := os.Stat(path)
+	switch {
+	case err != nil:
+		return nil, fmt.Errorf("logbook %s: %w; log add makes one", path, err)
+	case info.IsDir():
+		return nil, fmt.Errorf("logbook %s: it is a folder; name a file", path)
+	case info.Size() == 0:
+		if left, err := os.Stat(path + "-wal"); err != nil || left.Size() == 0 {
+			return nil, fmt.Errorf("logbook %s: the file is empty (0 bytes); log add puts a pass there", path)
+		}
+	}
+	b, err := open(path, "mode=rw&_pragma=busy_timeout(5000)&_pragma=query_only(1)")
+	if err != nil {
+		return nil, err
+	}
+	err = b.readVersion(ctx, b.db)
+	if left, e := os.Stat(path + "-wal"); code(err) == codeReadOnly || code(err) == 14 && (e != nil || left.Size() == 0) {
+		// A folder that cannot be written has no room for what a book written ahead shares between its
+		// readers; a file that nobody can change needs none of it.
+		b.db.Close()
+		if b, err = open(path, "mode=ro&immutable=1"); err != nil {
+			return nil, err
+		}
+		err = b.readVersion(ctx, b.db)
+	}
+	if err == nil {
+		err = ours(ctx, b.db, b.version)
+	}
+	if err == nil && b.version == 0 {
+		err = errEmpty
+	}
+	if err != nil {
+		b.db.Close()
+		return nil, b.told(err)
+	}
+	return b, nil
+}
+
+func open(path, query string) (*Book, error) {
+	from := url.URL{Scheme: "file", Opaque: url.PathEscape(path), RawQuery: query}
 	db, err := sql.Open("sqlite", from.String())
 	if err != nil {
 		return nil, fmt.Errorf("logbook %s: %w", path, err)
 	}
 	db.SetMaxOpenConns(1)
-	b := &Book{db: db, path: path}
-	if err := b.migrate(ctx); err != nil {
-		db.Close()
-		return nil, fmt.Errorf("logbook %s: %w", path, err)
-	}
-	return b, nil
+	return &Book{db: db, path: path}, nil
 }
 
 // Close closes the file.
 func (b *Book) Close() error { return b.db.Close() }
 
-func (b *Book) migrate(ctx context.Context) error {
-	tx, err := b.db.BeginTx(ctx, nil)
-	if err != nil {
-		return err
+// code returns the primary result code of the engine, 0 for other errors.
+func code(err error) int {
+	var e *sqlite.Error
+	if errors.As(err, &e) {
+		return e.Code() & 0xff
 	}
-	defer tx.Rollback() // of no effect after the commit
-	version := 0
-	if err := tx.QueryRowContext(ctx, "PRAGMA user_version").Scan(&version); err != nil {
-		return err
+	return 0
+}
+
+// told names the file, and what to do where the engine's word alone does not say it.
+func (b *Book) told(err error) error {
+	kind := err
+	switch code(err) {
+	case codeBusy, codeLocked:
+		kind = ErrLocked
+	case codeReadOnly:
+		kind = ErrReadOnly
+	case codeCorrupt, codeNotADB:
+		kind = ErrDamaged
+	case codeFull:
+		return fmt.Errorf("logbook %s: the disk is full, and nothing was added: %w; make room and try again", b.path, err)
+	default:
+		return fmt.Errorf("logbook %s: %w", b.path, err)
 	}
-	if version > len(steps) {
-		return fmt.Errorf("it has version %d, and this program knows versions up to %d; use a newer program", version, len(steps))
-	}
-	if version == len(steps) {
-		return nil
-	}
-	for _, s := range steps[version:] {
-		if _, err := tx.ExecContext(ctx, s); err != nil {
-			return fmt.Errorf("bringing it up to date from version %d: %w", version, err)
-		}
-	}
-	if _, err := tx.ExecContext(ctx, fmt.Sprintf("PRAGMA user_version = %d", len(steps))); err != nil {
-		return err
-	}
-	return tx.Commit()
+	return fmt.Errorf("logbook %s: %w (%w)", b.path, kind, err)
 }

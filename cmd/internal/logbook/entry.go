@@ -1,11 +1,13 @@
 package logbook
 
 import (
-	"context"
-	"database/sql"
+	"crypto/sha256"
+	"encoding/hex"
 	"errors"
 	"fmt"
+	"hash"
 	"math"
+	"strconv"
 	"time"
 )
 
@@ -13,134 +15,75 @@ import (
 type Entry struct {
 	ID                             int64
 	Spacecraft, Station            string
+	Transmitter, Antenna, Mode     string    // what was predicted for; empty before version 3
 	First, Last                    time.Time // of the samples
 	Source, Elements, Note, Digest string
 	Taken                          time.Time // into the book
+	PredictedBytes, TakenBytes     float64   // of the pass; NaN: not known
 	Values                         []Value
+
+	Samples int    // values that were written; -1: not known (before version 3)
+	seal    string // of what was written; empty before version 3
 }
 
-// Value is one measured number with what was predicted (NaN: nothing) and how it is used.
+// Value is one measured number with what was predicted (NaN: nothing), where the spacecraft was
+// predicted (NaN: not known) and how it is used.
 type Value struct {
-	At                  time.Time
-	Quantity, State     string
-	Measured, Predicted float64
+	At                       time.Time
+	Quantity, State          string
+	Measured, Predicted      float64
+	AzimuthDeg, ElevationDeg float64
 }
 
 // ErrTaken says that the same measurements are in the book.
 var ErrTaken = errors.New("these measurements are in the logbook already")
 
+// ErrChanged says that an entry is not what was written.
+var ErrChanged = errors.New("it is not what was written")
+
 const layout = "2006-01-02T15:04:05.000000000Z"
 
-// Add adds an entry, whole or not at all, and returns its number.
-func (b *Book) Add(ctx context.Context, e *Entry) (int64, error) {
-	tx, err := b.db.BeginTx(ctx, nil)
-	if err != nil {
-		return 0, fmt.Errorf("logbook %s: %w", b.path, err)
-	}
-	defer tx.Rollback() // of no effect after the commit
-	id, err := add(ctx, tx, e)
-	if err == nil {
-		err = tx.Commit()
-	}
-	if err != nil {
-		return 0, fmt.Errorf("logbook %s: %w", b.path, err)
-	}
-	return id, nil
-}
+func stamp(t time.Time) string { return t.UTC().Format(layout) }
 
-func add(ctx context.Context, tx *sql.Tx, e *Entry) (int64, error) {
-	had := int64(0)
-	err := tx.QueryRowContext(ctx, "SELECT id FROM pass WHERE spacecraft=? AND station=? AND digest=? AND digest<>''", e.Spacecraft, e.Station, e.Digest).Scan(&had)
-	if err == nil {
-		return 0, fmt.Errorf("%w as number %d", ErrTaken, had)
-	}
-	if !errors.Is(err, sql.ErrNoRows) {
-		return 0, err
-	}
-	r, err := tx.ExecContext(ctx, "INSERT INTO pass(spacecraft,station,first,last,source,elements,note,taken,digest) VALUES(?,?,?,?,?,?,?,?,?)",
-		e.Spacecraft, e.Station, e.First.UTC().Format(layout), e.Last.UTC().Format(layout), e.Source, e.Elements, e.Note, e.Taken.UTC().Format(layout), e.Digest)
-	if err != nil {
-		return 0, err
-	}
-	id, err := r.LastInsertId()
-	if err != nil {
-		return 0, err
-	}
-	put, err := tx.PrepareContext(ctx, "INSERT INTO sample(pass,at,quantity,measured,predicted,state) VALUES(?,?,?,?,?,?)")
-	if err != nil {
-		return 0, err
-	}
-	defer put.Close()
-	for i := range e.Values {
-		v := &e.Values[i]
-		predicted := sql.NullFloat64{Float64: v.Predicted, Valid: !math.IsNaN(v.Predicted)}
-		if _, err := put.ExecContext(ctx, id, v.At.UTC().Format(layout), v.Quantity, v.Measured, predicted, v.State); err != nil {
-			return 0, err
-		}
-	}
-	return id, nil
-}
-
-// List returns all entries without their values, in the order in which they were added. Of
-// a broken file it returns what can be read, beside the error.
-func (b *Book) List(ctx context.Context) ([]Entry, error) {
-	rows, err := b.db.QueryContext(ctx, "SELECT id,spacecraft,station,first,last,source,elements,note,digest,taken FROM pass ORDER BY id")
-	if err != nil {
-		return nil, b.broken(err)
-	}
-	defer rows.Close()
-	var out []Entry
-	for rows.Next() {
-		var e Entry
-		var first, last, taken string
-		if err := rows.Scan(&e.ID, &e.Spacecraft, &e.Station, &first, &last, &e.Source, &e.Elements, &e.Note, &e.Digest, &taken); err != nil {
-			return out, b.broken(err)
-		}
-		if e.First, err = time.Parse(layout, first); err == nil {
-			if e.Last, err = time.Parse(layout, last); err == nil {
-				e.Taken, err = time.Parse(layout, taken)
-			}
-		}
-		if err != nil {
-			return out, b.broken(err)
-		}
-		out = append(out, e)
-	}
-	if err := rows.Err(); err != nil {
-		return out, b.broken(err)
-	}
-	return out, nil
-}
-
-// Fill reads the values of an entry; of a broken file what can be read, beside the error.
-func (b *Book) Fill(ctx context.Context, e *Entry) error {
-	rows, err := b.db.QueryContext(ctx, "SELECT at,quantity,measured,predicted,state FROM sample WHERE pass=? ORDER BY at,rowid", e.ID)
-	if err != nil {
-		return b.broken(err)
-	}
-	defer rows.Close()
-	for rows.Next() {
-		var v Value
-		var at string
-		var predicted sql.NullFloat64
-		err := rows.Scan(&at, &v.Quantity, &v.Measured, &predicted, &v.State)
-		if err == nil {
-			v.At, err = time.Parse(layout, at)
-		}
-		if err != nil {
-			return b.broken(err)
-		}
-		if v.Predicted = math.NaN(); predicted.Valid {
-			v.Predicted = predicted.Float64
-		}
-		e.Values = append(e.Values, v)
-	}
-	if err := rows.Err(); err != nil {
-		return b.broken(err)
+// Check compares an entry, filled, with the seal that was written with it: SHA-256 over every
+// text and number. The engine finds broken structure and no changed number; this does. An entry
+// from before version 3 has no seal and passes.
+func (e *Entry) Check() error {
+	switch {
+	case e.Samples >= 0 && len(e.Values) != e.Samples:
+		return fmt.Errorf("entry %d: %w: %d of %d measurements are there", e.ID, ErrChanged, len(e.Values), e.Samples)
+	case e.seal != "" && e.seal != e.sealed():
+		return fmt.Errorf("entry %d: %w: a text or number in it was changed", e.ID, ErrChanged)
 	}
 	return nil
 }
 
-func (b *Book) broken(err error) error {
-	return fmt.Errorf("logbook %s: %w; log show --format csv writes out what can be read", b.path, err)
+// sealed returns the seal of an entry as it stands, its number left out.
+func (e *Entry) sealed() string {
+	h := sha256.New()
+	for _, s := range []string{e.Spacecraft, e.Station, e.Transmitter, e.Antenna, e.Mode, stamp(e.First), stamp(e.Last), e.Source, e.Elements, e.Note, e.Digest, stamp(e.Taken)} {
+		text(h, s)
+	}
+	number(h, e.PredictedBytes)
+	number(h, e.TakenBytes)
+	for i := range e.Values {
+		v := &e.Values[i]
+		text(h, stamp(v.At))
+		text(h, v.Quantity)
+		text(h, v.State)
+		for _, x := range []float64{v.Measured, v.Predicted, v.AzimuthDeg, v.ElevationDeg} {
+			number(h, x)
+		}
+	}
+	return hex.EncodeToString(h.Sum(nil))
+}
+
+func text(h hash.Hash, s string) { fmt.Fprintf(h, "%d:%s", len(s), s) }
+
+func number(h hash.Hash, v float64) {
+	if math.IsNaN(v) {
+		text(h, "")
+		return
+	}
+	text(h, strconv.FormatFloat(v, 'g', -1, 64))
 }
