@@ -13,7 +13,14 @@ import (
 var assets embed.FS
 
 //go:embed pages/page.css
-var styleSheet string
+var sharedStyle string
+
+//go:embed pages/comparison.css
+var comparisonStyle string
+
+// styleSheet is the style of every page: what all share, then what one kind of page has of
+// its own, each rule of that under the class of its body.
+var styleSheet = sharedStyle + comparisonStyle
 
 //go:embed pages/charts.js
 var chartsCode string

@@ -29,6 +29,7 @@ type pageView struct {
 	Public  string // the address that the chart script comes from; empty when it is with the page
 	OneFile bool
 	Static  bool // no script at all
+	Foot    *basisView
 }
 
 // page fills in what every page has; root is the way to the index.
@@ -67,6 +68,11 @@ func (w *writer) page(root, title string) pageView {
 	v.Scripts = template.HTML(scripts.String())
 	v.Policy = policy(sources)
 	return v
+}
+
+// plainPage is what a page without any script has, everything inside it.
+func plainPage(title string) pageView {
+	return pageView{Title: title, OneFile: true, Static: true, Style: template.HTML("<style>" + styleSheet + "</style>"), Policy: policy([]string{"'none'"})}
 }
 
 // policy lets a page run its own scripts and ask for nothing else. Styles may be

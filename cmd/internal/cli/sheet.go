@@ -4,6 +4,7 @@ import (
 	"bytes"
 	"encoding/json"
 	"fmt"
+	"io"
 	"math"
 )
 
@@ -21,6 +22,7 @@ type sheetColumn struct {
 	head     string // in a table
 	text     bool
 	decimals int
+	onlyJSON bool // added after the columns of tables and CSV were promised
 }
 
 func wordsAs(name, head string) sheetColumn { return sheetColumn{name: name, head: head, text: true} }
@@ -38,9 +40,11 @@ func (s *sheet) cell(column int, v any) string {
 }
 
 func (s *sheet) texts(row []any) []string {
-	out := make([]string, len(row))
+	out := make([]string, 0, len(row))
 	for i, v := range row {
-		out[i] = s.cell(i, v)
+		if !s.columns[i].onlyJSON {
+			out = append(out, s.cell(i, v))
+		}
 	}
 	return out
 }
@@ -67,9 +71,11 @@ func (s *sheet) write(env *Env, f format) error {
 }
 
 func (s *sheet) writeTable(env *Env) error {
-	columns := make([]column, len(s.columns))
-	for i, c := range s.columns {
-		columns[i] = column{head: c.head, text: c.text}
+	var columns []column
+	for _, c := range s.columns {
+		if !c.onlyJSON {
+			columns = append(columns, column{head: c.head, text: c.text})
+		}
 	}
 	rows := make([][]string, len(s.rows))
 	for i, r := range s.rows {
@@ -78,12 +84,16 @@ func (s *sheet) writeTable(env *Env) error {
 	return writeTable(env.Out, env.outWidth(), columns, rows)
 }
 
-func (s *sheet) writeCSV(env *Env) error {
-	header := make([]string, len(s.columns))
-	for i, c := range s.columns {
-		header[i] = c.name
+func (s *sheet) writeCSV(env *Env) error { return s.csv(env.Out) }
+
+func (s *sheet) csv(w io.Writer) error {
+	var header []string
+	for _, c := range s.columns {
+		if !c.onlyJSON {
+			header = append(header, c.name)
+		}
 	}
-	return writeCSV(env.Out, header, func(yield func([]string) bool) {
+	return writeCSV(w, header, func(yield func([]string) bool) {
 		for _, r := range s.rows {
 			if !yield(s.texts(r)) {
 				return
@@ -95,8 +105,20 @@ func (s *sheet) writeCSV(env *Env) error {
 // MarshalJSON writes {"NAME": [rows], "notes": [texts]}, keys in the order of the
 // columns.
 func (s *sheet) MarshalJSON() ([]byte, error) {
-	var b bytes.Buffer
-	fmt.Fprintf(&b, "{%q:[", s.name)
+	rows, err := s.jsonRows()
+	if err != nil {
+		return nil, err
+	}
+	notes, err := json.Marshal(append([]string{}, s.notes...))
+	if err != nil {
+		return nil, err
+	}
+	return fmt.Appendf(nil, "{%q:%s,\"notes\":%s}", s.name, rows, notes), nil
+}
+
+// jsonRows is the list of the rows alone.
+func (s *sheet) jsonRows() (json.RawMessage, error) {
+	b := bytes.NewBufferString("[")
 	for i, r := range s.rows {
 		if i > 0 {
 			b.WriteByte(',')
@@ -110,15 +132,11 @@ func (s *sheet) MarshalJSON() ([]byte, error) {
 			if err != nil {
 				return nil, err
 			}
-			fmt.Fprintf(&b, "%q:%s", s.columns[j].name, text)
+			fmt.Fprintf(b, "%q:%s", s.columns[j].name, text)
 		}
 		b.WriteByte('}')
 	}
-	notes, err := json.Marshal(append([]string{}, s.notes...))
-	if err != nil {
-		return nil, err
-	}
-	fmt.Fprintf(&b, "],\"notes\":%s}", notes)
+	b.WriteByte(']')
 	return b.Bytes(), nil
 }
 

@@ -40,7 +40,7 @@ func build(root *tree.Node, src *source, req Request) (*Scenario, error) {
 		return nil, err
 	}
 	s.Label, s.Demo = src.label, src.files != nil
-	s.Assumptions, s.Warnings = r.assumptions, r.warnings
+	s.Assumptions, s.Warnings, s.root = r.assumptions, r.warnings, root
 	return s, nil
 }
 

@@ -3,6 +3,7 @@ package scenario
 import (
 	"time"
 
+	"slantwise/cmd/internal/scenario/tree"
 	"slantwise/downlink"
 	"slantwise/downlink/licence"
 	"slantwise/downlink/measured"
@@ -45,6 +46,8 @@ type Scenario struct {
 
 	Assumptions []Note // every default taken
 	Warnings    []Note // what may make an answer wrong: old elements, …
+
+	root *tree.Node // as it was read, with what replaced keys of the file
 }
 
 // Window is the span of time that a scenario is about.
