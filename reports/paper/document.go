@@ -215,5 +215,5 @@ func (d *Document) Bytes() ([]byte, error) {
 		d.writeList()
 	}
 	d.foot()
-	return d.file.Bytes(), nil
+	return d.file.Bytes()
 }

@@ -6,43 +6,58 @@ import (
 	"unicode"
 	"unicode/utf8"
 
+	"golang.org/x/image/font/sfnt"
 	"golang.org/x/text/unicode/bidi"
 )
 
-// Font is a face in one file: the letters that are used there have numbers in the order of their
-// use, so that the same calls make the same bytes.
+// Font is a face in one file.
 type Font struct {
 	face   *Face
-	number map[rune]uint16
-	quick  [256]uint16 // of the first runes, less the map's time
-	runes  []rune      // by number; the first is the empty box
-	object int
+	buffer sfnt.Buffer
+	widths map[rune]float64 // for a size of 1
+	quick  [256]float64     // of the first runes, less the map's time
 }
 
-func newFont(f *Face) *Font {
-	return &Font{face: f, number: map[rune]uint16{}, runes: []rune{utf8.RuneError}}
-}
+func newFont(f *Face) *Font { return &Font{face: f, widths: map[rune]float64{}} }
 
 // Width returns how wide a text is at a size, in points.
 func (f *Font) Width(text string, size float64) float64 {
-	sum := 0
+	sum := 0.0
 	for _, r := range text {
 		if r = Visible(r); r >= 0 {
-			sum += int(at16(f.face.hmtx, 4*min(int(f.face.Glyph(r)), f.face.wide-1)))
+			sum += f.width(r)
 		}
 	}
-	return float64(sum) / f.face.em * size
+	return sum * size
 }
+
+func (f *Font) width(r rune) float64 {
+	if r < 256 && f.quick[r] != 0 {
+		return f.quick[r]
+	}
+	w, ok := f.widths[r]
+	if !ok {
+		w = f.face.advance(&f.buffer, f.face.glyph(&f.buffer, r))
+		f.widths[r] = w
+		if r < 256 {
+			f.quick[r] = w
+		}
+	}
+	return w
+}
+
+// substitute stands for what a file cannot hold: runes beyond the basic plane, which fpdf does not write.
+const substitute = utf8.RuneError
 
 // Has tells whether the face has a letter for a rune, or the rune needs none.
 func (f *Font) Has(r rune) bool {
 	v := Visible(r)
-	return v < 0 || v == ' ' || f.face.Glyph(v) != 0
+	return v < 0 || v == ' ' || (v != substitute || r == substitute) && f.face.glyph(&f.buffer, v) != 0
 }
 
 // Visible returns the rune that stands for r on paper: a space for white space, the picture of a
 // control character (Unicode 15, block 2400), and -1 for what has no shape of its own: marks of
-// direction, joiners, variation selectors.
+// direction, joiners, variation selectors. For what lies beyond the basic plane stands U+FFFD.
 func Visible(r rune) rune {
 	switch {
 	case r >= ' ' && r < 0x7f:
@@ -59,30 +74,10 @@ func Visible(r rune) rune {
 		return -1
 	case r == 0xad:
 		return -1 // a soft hyphen
+	case r > 0xffff:
+		return substitute
 	}
 	return r
-}
-
-// use returns the number of a rune in this file.
-func (f *Font) use(r rune) uint16 {
-	if r < 256 {
-		if n := f.quick[r]; n != 0 {
-			return n
-		}
-	}
-	n, ok := f.number[r]
-	if !ok {
-		if len(f.runes) == 1<<16-1 {
-			return 0
-		}
-		n = uint16(len(f.runes))
-		f.runes = append(f.runes, r)
-		f.number[r] = n
-		if r < 256 {
-			f.quick[r] = n
-		}
-	}
-	return n
 }
 
 // shown returns the runes of a text that have a shape, in the order in which they are drawn from left
@@ -137,19 +132,4 @@ func mirrored(r rune) rune {
 		return list[i^1]
 	}
 	return r
-}
-
-const hexDigits = "0123456789ABCDEF"
-
-func appendHex(dst []byte, v uint16) []byte {
-	return append(dst, hexDigits[v>>12], hexDigits[v>>8&15], hexDigits[v>>4&15], hexDigits[v&15])
-}
-
-// appendText appends a text as a string of numbers, two bytes each.
-func (f *Font) appendText(dst []byte, text string) []byte {
-	dst = append(dst, '<')
-	for _, r := range shown(text) {
-		dst = appendHex(dst, f.use(r))
-	}
-	return append(dst, '>')
 }
