@@ -1,0 +1,128 @@
+package scenario
+
+import (
+	"os"
+	"path/filepath"
+	"reflect"
+	"strings"
+	"testing"
+
+	"slantwise/cmd/internal/scenario/tree"
+	"slantwise/orbit/unit"
+)
+
+// reload loads a text as if it stood beside a file.
+func reload(t *testing.T, beside string, text []byte) *Scenario {
+	t.Helper()
+	s, err := load(&source{label: beside, dir: filepath.Dir(beside), format: tree.YAML, text: text}, Request{})
+	if err != nil {
+		t.Fatalf("%v in\n%s", err, text)
+	}
+	s.Assumptions, s.Warnings = nil, nil // they tell lines
+	return s
+}
+
+// alike compares all of two scenarios but the functions of their atmospheres, which
+// cannot be compared.
+func alike(a, b *Scenario) bool {
+	for i := range a.Stations {
+		x, y := a.Stations[i].Climate.Atmosphere, b.Stations[i].Climate.Atmosphere
+		if (x == nil) != (y == nil) || x != nil && x.Name() != y.Name() {
+			return false
+		}
+		b.Stations[i].Climate.Atmosphere = x
+	}
+	return reflect.DeepEqual(a, b)
+}
+
+// TestWithChange writes the scenario that has every key, in each notation: unchanged it
+// is the same scenario, changed it differs in what was asked for alone.
+func TestWithChange(t *testing.T) {
+	for _, file := range []string{"testdata/good/everything.yaml", "testdata/good/everything.toml", "testdata/good/everything.json"} {
+		t.Run(filepath.Ext(file), func(t *testing.T) {
+			want, err := Load(Request{Path: file})
+			if err != nil {
+				t.Fatal(err)
+			}
+			want.Assumptions, want.Warnings = nil, nil
+			c := Change{Spacecraft: "Wagtail 1", Transmitter: "X-band", Station: want.Stations[0].Site.Name, Antenna: want.Stations[0].Antennas[0].Name, NameOfFile: file, Remark: "A test."}
+			same, err := WithChange(Request{Path: file}, c)
+			if err != nil {
+				t.Fatal(err)
+			}
+			if got := reload(t, file, same.Text); !alike(got, want) {
+				t.Errorf("unchanged it differs:\n%s", same.Text)
+			}
+			power, dish, pointing, least, exceeded := 3.5, 4.25, 0.125, 12.5, 0.1
+			c.PowerW, c.DiameterM, c.PointingErrorDeg, c.LeastElevationDeg, c.ExceededPercent, c.Mode = &power, &dish, &pointing, &least, &exceeded, "safe"
+			other, err := WithChange(Request{Path: file}, c)
+			if err != nil {
+				t.Fatal(err)
+			}
+			x := &want.Spacecraft[0].Transmitters[0]
+			if x.Power, err = unit.LevelWatts(power); err != nil {
+				t.Fatal(err)
+			}
+			x.Modes = x.Modes[:1]
+			a := &want.Stations[0].Antennas[0]
+			a.Diameter, a.PointingRMS = unit.Length(dish), unit.Angle(pointing)*unit.Degree
+			want.Stations[0].Site.MinimumElevation = unit.Angle(least) * unit.Degree
+			want.Path.Exceedance = 0.001
+			if got := reload(t, file, other.Text); !alike(got, want) {
+				t.Errorf("changed it differs in more, or in less:\n%s", other.Text)
+			}
+			if len(other.Told) != 6 || !strings.HasPrefix(string(other.Text), "# A test. It was made from "+filepath.Base(file)+":\n# ") {
+				t.Errorf("told %q in\n%s", other.Told, other.Text[:300])
+			}
+		})
+	}
+}
+
+// TestWithChangeRefuses asks for what the scenario does not have, or may not have.
+func TestWithChangeRefuses(t *testing.T) {
+	const file = "testdata/good/everything.yaml"
+	high := 95.0
+	for _, row := range []struct{ what, want string }{
+		{"antenna", "dish 9"}, {"mode", "warp"}, {"elevation", "minimum_elevation_deg"},
+	} {
+		c := Change{Spacecraft: "Wagtail 1", Transmitter: "X-band", Station: "Skerry Point", Antenna: "dish", NameOfFile: "new.yaml"}
+		switch row.what {
+		case "antenna":
+			c.Antenna = row.want
+		case "mode":
+			c.Mode = row.want
+		case "elevation":
+			c.LeastElevationDeg = &high
+		}
+		if _, err := WithChange(Request{Path: file}, c); err == nil || !strings.Contains(err.Error(), row.want) {
+			t.Errorf("%s: %v", row.what, err)
+		}
+	}
+}
+
+// TestWithChangeKeepsWhatReplaces has a variable of the environment in place of the
+// file's value, and anchors in the file.
+func TestWithChangeKeepsWhatReplaces(t *testing.T) {
+	dir := t.TempDir()
+	file := filepath.Join(dir, "s.yaml")
+	body, sets, err := Start("s.tle")
+	if err != nil {
+		t.Fatal(err)
+	}
+	body = strings.Replace(body, "length_h: 24", "end_utc: 2026-09-15T06:00:00Z", 1)
+	body = strings.Replace(body, "kind: dish #", "kind: &kind dish #", 1)
+	for name, text := range map[string]string{file: body, filepath.Join(dir, "s.tle"): sets} {
+		if err := os.WriteFile(name, []byte(text), 0o600); err != nil {
+			t.Fatal(err)
+		}
+	}
+	t.Setenv("SLANTWISE_WINDOW_LENGTH_H", "7.5")
+	got, err := WithChange(Request{Path: file}, Change{Spacecraft: "My spacecraft", Transmitter: "downlink", Station: "My station", Antenna: "dish", NameOfFile: "n.yaml"})
+	if err != nil {
+		t.Fatal(err)
+	}
+	os.Unsetenv("SLANTWISE_WINDOW_LENGTH_H") // Setenv above brings it back to what it was
+	if s := reload(t, file, got.Text); s.Window.Length().Hours() != 7.5 {
+		t.Errorf("the window is %v long", s.Window.Length())
+	}
+}
