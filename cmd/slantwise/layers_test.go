@@ -56,6 +56,7 @@ var layers = []struct {
 	{"slantwise/cmd/internal/logbook", 13},
 	{"slantwise/cmd/internal/scenario", 14},
 	{"slantwise/cmd/internal/web", 15},
+	{"slantwise/cmd/internal/web/schematest", 0}, // for tests alone
 	{"slantwise/cmd/internal/cli", 16},
 	{"slantwise/cmd/slantwise", 17},
 }

@@ -69,14 +69,16 @@ func groundPlace(q station.Place) reports.Place {
 // the geodetic latitude.
 func nightEdge(sun orbit.Vec3) (under reports.Place, edge []reports.Place) {
 	s := sun.Unit()
-	degrees := func(v orbit.Vec3) reports.Place {
-		return reports.Place{LatitudeDeg: math.Asin(max(-1, min(v.Z, 1))) * 180 / math.Pi, LongitudeDeg: math.Atan2(v.Y, v.X) * 180 / math.Pi}
-	}
 	across := orbit.Vec3{Z: 1}.Cross(s).Unit()
 	up := s.Cross(across)
 	for k := range 120 {
 		sin, cos := math.Sincos(2 * math.Pi * float64(k) / 120)
-		edge = append(edge, degrees(across.Scale(cos).Add(up.Scale(sin))))
+		edge = append(edge, directionPlace(across.Scale(cos).Add(up.Scale(sin))))
 	}
-	return degrees(s), edge
+	return directionPlace(s), edge
+}
+
+// directionPlace is where a unit vector stands in the zenith, geodetic.
+func directionPlace(v orbit.Vec3) reports.Place {
+	return reports.Place{LatitudeDeg: math.Asin(max(-1, min(v.Z, 1))) * 180 / math.Pi, LongitudeDeg: math.Atan2(v.Y, v.X) * 180 / math.Pi}
 }

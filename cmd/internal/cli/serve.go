@@ -36,11 +36,14 @@ func newServe(env *Env) *cobra.Command {
 		Long: `Serve one page for the browser: the next contacts counting down, where the spacecraft
 stand over the Earth and in the sky, the signal to expect now, charts of a contact with
 the present instant in them, and what a change of dish, power, mode, least elevation,
-pointing error or weather would bring. The same values come as JSON: /api/state,
-/api/contacts, /api/contacts/ID and, posted, /api/what-if; /api/schema describes them.
+pointing error or weather would bring, which can be kept: as a link, as a file for the
+browser to store, or written as a new scenario beside the one that is served. The same
+values come as JSON: /api/state, /api/contacts, /api/contacts/ID and, posted,
+/api/what-if; /api/schema describes them, and /api/csv has those of the charts.
 
-The scenario and its files are read again when they change. While they are wrong the
-page goes on with the last good ones and shows the faults.
+The scenario and all files that it is read from, in whatever folder, are read again when
+they change. While they are wrong the page goes on with the last good ones and shows
+the faults.
 
 --clock and --speed rehearse: the page begins at that instant and runs so many times as
 fast as the clock on the wall, 0 standing still. The embedded demo begins at the start
@@ -48,8 +51,9 @@ of its window unless --clock says otherwise.
 
 The page is served to this machine alone. With --listen it may be another address of
 the machine; a token is then made, stands in the address that is printed, and must come with each
-request. There is no encryption: keep to a network that you trust. No request names a
-file, and nothing is written. Standard output gives the address to open; an interrupt
+request. There is no encryption: keep to a network that you trust. No request has a file
+read, and nothing is written but the scenario that someone asks for on the page, into
+the scenario's folder and never over another file. Standard output gives the address to open; an interrupt
 ends the command.`,
 		Example: `  slantwise serve --listen 127.0.0.1:0 --stop-after 200ms
   slantwise serve --listen 127.0.0.1:0 --clock 2026-09-15T00:50:00Z --speed 60 --stop-after 200ms   # a rehearsal`,
@@ -87,12 +91,14 @@ func runServe(ctx context.Context, env *Env, o *serveOptions) error {
 	}
 	var files watchedFiles
 	env.opened = files.opened
+	// To write a changed scenario it is read again, and that is not watched.
+	request := scenario.Request{Path: env.Scenario, Flags: env.overrides, Need: needOrbits}
 	files.restart()
 	s, err := env.load(needOrbits)
 	if err != nil {
 		return err
 	}
-	model, err := newLiveModel(ctx, s)
+	model, err := newLiveModel(ctx, request, s)
 	if err != nil {
 		return err
 	}
@@ -104,11 +110,11 @@ func runServe(ctx context.Context, env *Env, o *serveOptions) error {
 			if err != nil {
 				return nil, err
 			}
-			return newLiveModel(ctx, s)
+			return newLiveModel(ctx, request, s)
 		},
 	}
 	c := web.Config{
-		Source: source, First: model, Style: reports.StyleSheet(), Host: host,
+		Source: source, First: model, Style: reports.StyleSheet(), Land: reports.LandPath(), Host: host, Keep: keepIn(env.Scenario),
 		Clock: web.Clock{Wall: env.Now, Began: env.Now(), Start: o.clock, Speed: o.speed},
 	}
 	env.startClock(s, &c.Clock)

@@ -6,6 +6,7 @@ import (
 
 	"slantwise/cmd/internal/web"
 	"slantwise/downlink"
+	"slantwise/reports"
 )
 
 // mostDrawn is how many samples a chart of the live page has, about.
@@ -43,7 +44,35 @@ func (m *liveModel) Detail(ctx context.Context, id string) (*web.Detail, error) 
 	} {
 		*c.into = thinned(c.from, every)
 	}
+	m.mapOf(out, page, f, every)
 	return out, nil
+}
+
+// mapOf adds what the map and the sky show beside the samples.
+func (m *liveModel) mapOf(out *web.Detail, page *reportPage, f *downlink.Profile, every int) {
+	craft, site := &m.plan.craft[page.Spacecraft], &m.plan.sites[page.Site]
+	g := m.plan.ground(&reports.Pass{Profile: f, Horizon: site.horizon}, craft, site, page)
+	track := outline(g.Track)
+	out.LatitudeDeg, out.LongitudeDeg = thinned(track.LatitudeDeg, every), thinned(track.LongitudeDeg, every)
+	out.Circle, out.Before, out.After = outline(g.Circle), outline(g.Before), outline(g.After)
+	out.Horizon = web.Rim{AzimuthDeg: []web.Number{}, ElevationDeg: []web.Number{}}
+	for _, d := range site.horizon {
+		out.Horizon.AzimuthDeg = append(out.Horizon.AzimuthDeg, web.Number(d.AzimuthDeg))
+		out.Horizon.ElevationDeg = append(out.Horizon.ElevationDeg, web.Number(d.ElevationDeg))
+	}
+	out.Sky = []web.Body{}
+	for _, b := range g.Sky {
+		out.Sky = append(out.Sky, web.Body{Name: b.Name, AzimuthDeg: web.Number(b.AzimuthDeg), ElevationDeg: web.Number(b.ElevationDeg)})
+	}
+}
+
+func outline(list []reports.Place) web.Outline {
+	out := web.Outline{LatitudeDeg: []web.Number{}, LongitudeDeg: []web.Number{}}
+	for _, q := range list {
+		out.LatitudeDeg = append(out.LatitudeDeg, web.Number(q.LatitudeDeg))
+		out.LongitudeDeg = append(out.LongitudeDeg, web.Number(q.LongitudeDeg))
+	}
+	return out
 }
 
 // describe adds what is known of the link.
@@ -70,7 +99,7 @@ func (m *liveModel) describe(out *web.Detail, page *reportPage, best *modeOnPass
 }
 
 // thinned keeps every so manyth value, and the last.
-func thinned(from []float64, every int) []web.Number {
+func thinned[T ~float64](from []T, every int) []web.Number {
 	out := []web.Number{}
 	for i := 0; i < len(from); i += every {
 		out = append(out, web.Number(from[i]))

@@ -10,7 +10,9 @@ import (
 
 	"slantwise/cmd/internal/scenario"
 	"slantwise/cmd/internal/web"
+	"slantwise/orbit"
 	"slantwise/orbit/unit"
+	"slantwise/station"
 )
 
 // mostNext is how many contacts to come the page shows.
@@ -18,6 +20,7 @@ const mostNext = 12
 
 // liveModel answers the live page for one reading of the scenario.
 type liveModel struct {
+	request  scenario.Request // that the scenario was read by
 	plan     *reportPlan
 	contacts []web.Contact // as plan.pages
 	places   map[string]int
@@ -31,12 +34,12 @@ type liveFlight struct {
 	err  error
 }
 
-func newLiveModel(ctx context.Context, s *scenario.Scenario) (*liveModel, error) {
+func newLiveModel(ctx context.Context, request scenario.Request, s *scenario.Scenario) (*liveModel, error) {
 	plan, err := planReport(ctx, s, reportOptions{})
 	if err != nil {
 		return nil, err
 	}
-	m := &liveModel{plan: plan, contacts: []web.Contact{}, places: map[string]int{}, flights: make([]liveFlight, len(plan.pages))}
+	m := &liveModel{request: request, plan: plan, contacts: []web.Contact{}, places: map[string]int{}, flights: make([]liveFlight, len(plan.pages))}
 	for i := range plan.pages {
 		p := &plan.pages[i]
 		c := web.Contact{
@@ -69,9 +72,11 @@ func (m *liveModel) Contacts() []web.Contact { return m.contacts }
 func (m *liveModel) At(t time.Time) (*web.State, error) {
 	s := m.plan.scenario
 	out := &web.State{
-		Scenario: filepath.Base(s.Label), WindowFrom: s.Window.Start, WindowTo: s.Window.End,
+		Scenario: filepath.Base(s.Label), WindowFrom: s.Window.Start, WindowTo: s.Window.End, CanSave: !s.Demo,
 		Spacecraft: []web.Craft{}, Stations: []web.Place{}, Next: []web.Contact{}, Signals: []web.Signal{},
 	}
+	sun := directionPlace(orbit.SunPosition(t, s.Earth).Unit())
+	out.SunLatitudeDeg, out.SunLongitudeDeg = web.Number(sun.LatitudeDeg), web.Number(sun.LongitudeDeg)
 	for i := range m.plan.craft {
 		out.Spacecraft = append(out.Spacecraft, craftAt(&m.plan.craft[i], t))
 	}
@@ -114,10 +119,9 @@ func craftAt(c *reportCraft, t time.Time) web.Craft {
 	if err != nil { // the orbit is not known then
 		return out
 	}
-	p := state.Position
-	out.LatitudeDeg = web.Number(unit.Angle(math.Atan2(p.Z, math.Hypot(p.X, p.Y))).Degrees())
-	out.LongitudeDeg = web.Number(unit.Angle(math.Atan2(p.Y, p.X)).Degrees())
-	out.RadiusKm = web.Number(unit.Length(p.Norm()).Kilometres())
+	below := station.PlaceBelow(state.Position)
+	out.LatitudeDeg, out.LongitudeDeg = web.Number(below.Latitude.Degrees()), web.Number(below.Longitude.Degrees())
+	out.RadiusKm = web.Number(unit.Length(state.Position.Norm()).Kilometres())
 	out.Light = c.ephemeris.LightAt(c.ephemeris.Seconds(t)).String()
 	return out
 }

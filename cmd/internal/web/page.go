@@ -14,6 +14,9 @@ var pageText string
 //go:embed page/live.js
 var pageScript string
 
+//go:embed page/drawing.js
+var drawingScript string
+
 //go:embed page/live.css
 var pageStyle string
 
@@ -24,10 +27,12 @@ func (s *Server) page(w http.ResponseWriter, _ *http.Request) {
 	nonce := rand.Text()
 	var b bytes.Buffer
 	err := pageTemplate.Execute(&b, struct {
-		Nonce  string
-		Style  template.CSS
-		Script template.JS
-	}{nonce, template.CSS(s.config.Style + pageStyle), template.JS(pageScript)})
+		Nonce   string
+		Style   template.CSS
+		Script  template.JS
+		SaveKey string
+		Land    string
+	}{nonce, template.CSS(s.config.Style + pageStyle), template.JS(drawingScript + pageScript), s.saveKey, s.config.Land})
 	if err != nil {
 		fail(w, err)
 		return

@@ -38,12 +38,18 @@ type Config struct {
 	Style  string // the style sheet of the pages
 	Host   string // that it listens on, without the port
 	Token  string // empty: none is asked for
+	Land   string // the coastline as a path over longitude and minus latitude in degrees; empty: none was brought
+
+	// Keep writes a file that is not there yet into the folder of the scenario. The error
+	// wraps fs.ErrExist where the name is taken.
+	Keep func(name string, body []byte) error
 }
 
 // Server serves the live page.
 type Server struct {
 	config    Config
 	limits    limits
+	saveKey   string
 	keeper    keeper
 	hub       hub
 	questions chan struct{}
@@ -55,7 +61,7 @@ func New(c Config) *Server { return newServer(c, usualLimits()) }
 
 func newServer(c Config, l limits) *Server {
 	return &Server{
-		config: c, limits: l, keeper: keeper{source: c.Source, model: c.First, generation: 1},
+		config: c, limits: l, saveKey: NewToken(), keeper: keeper{source: c.Source, model: c.First, generation: 1},
 		hub: hub{most: l.listeners, listeners: map[chan []byte]struct{}{}}, questions: make(chan struct{}, l.questions), closing: make(chan struct{}),
 	}
 }
@@ -68,6 +74,12 @@ func (s *Server) Handler(port string) http.Handler {
 	mux.HandleFunc("GET /api/contacts", s.getContacts)
 	mux.HandleFunc("GET /api/contacts/{id}", s.getDetail)
 	mux.HandleFunc("POST /api/what-if", s.whatIf)
+	mux.HandleFunc("GET /api/scenario", s.getScenario)
+	mux.HandleFunc("POST /api/scenarios", s.saveScenario)
+	mux.HandleFunc("GET /api/csv/contacts", s.getContactsCSV)
+	mux.HandleFunc("GET /api/csv/contacts/{id}", s.getDetailCSV)
+	mux.HandleFunc("GET /api/csv/contacts/{id}/lines", s.getLinesCSV)
+	mux.HandleFunc("GET /api/csv/map", s.getCraftCSV)
 	mux.HandleFunc("GET /api/schema", getSchema)
 	mux.HandleFunc("GET /events", s.events)
 	g := &guard{hosts: hostsOf(s.config.Host, port), token: s.config.Token}

@@ -38,12 +38,19 @@ func (m *fakeModel) WhatIf(_ context.Context, q *Question) (*Answer, error) {
 	return &Answer{Contact: q.Contact}, nil
 }
 
+func (m *fakeModel) Scenario(_ context.Context, w *Wish) (*File, error) {
+	if w.Question.Contact != "a" {
+		return nil, nil
+	}
+	return &File{Name: w.Name, Kind: "application/yaml; charset=utf-8", Body: []byte("text: 1\n")}, nil
+}
+
 var start = time.Date(2026, 9, 15, 0, 50, 0, 0, time.UTC)
 
 func config() Config {
 	return Config{
 		Source: Source{Load: func(context.Context) (Model, error) { return &fakeModel{}, nil }, Changed: func() bool { return false }},
-		First:  &fakeModel{name: "first"}, Host: "127.0.0.1",
+		First:  &fakeModel{name: "first"}, Keep: func(string, []byte) error { return nil }, Host: "127.0.0.1",
 		Clock: Clock{Wall: func() time.Time { return start }, Began: start, Start: start, Speed: 1},
 	}
 }

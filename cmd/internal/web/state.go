@@ -13,6 +13,7 @@ type Model interface {
 	Contacts() []Contact                                      // of the whole window, by AOS
 	Detail(ctx context.Context, id string) (*Detail, error)   // nil without an error: no such contact
 	WhatIf(ctx context.Context, q *Question) (*Answer, error) // nil without an error: no such contact
+	Scenario(ctx context.Context, w *Wish) (*File, error)     // nil without an error: no such contact
 }
 
 // Number is a number that may not exist: NaN and infinities are null in JSON.
@@ -35,12 +36,16 @@ type State struct {
 	Stations   []Place   `json:"stations"`
 	Next       []Contact `json:"next"` // under way and to come
 	Signals    []Signal  `json:"signals"`
+	CanSave    bool      `json:"can_save"` // there is a folder to write a scenario into
+
+	SunLatitudeDeg  Number `json:"sun_latitude_deg"` // of the point under the Sun, geodetic
+	SunLongitudeDeg Number `json:"sun_longitude_deg"`
 }
 
 // Craft is a spacecraft over the Earth; the figures are null where it has no state.
 type Craft struct {
 	Name         string    `json:"name"`
-	LatitudeDeg  Number    `json:"latitude_deg"` // geocentric
+	LatitudeDeg  Number    `json:"latitude_deg"` // of the point under it, geodetic
 	LongitudeDeg Number    `json:"longitude_deg"`
 	RadiusKm     Number    `json:"radius_km"` // from the Earth's centre
 	Light        string    `json:"light"`     // empty where it has no state
@@ -103,10 +108,36 @@ type Detail struct {
 	DopplerHz        []Number `json:"doppler_hz"`
 	MarginDB         []Number `json:"margin_db"`
 	ReceivedPowerDBm []Number `json:"received_power_dbm"`
-	DishM            Number   `json:"dish_m"` // as the scenario has it
+	LatitudeDeg      []Number `json:"latitude_deg"` // of the point under the spacecraft, geodetic
+	LongitudeDeg     []Number `json:"longitude_deg"`
+	Circle           Outline  `json:"circle"`  // where the spacecraft stands, at its height of the culmination, when it is seen at the least elevation
+	Before           Outline  `json:"before"`  // the track that leads to AOS
+	After            Outline  `json:"after"`   // the track that leads on from LOS
+	Horizon          Rim      `json:"horizon"` // the least elevation that sees the sky, all around
+	Sky              []Body   `json:"sky"`     // Sun and Moon at the culmination
+	DishM            Number   `json:"dish_m"`  // as the scenario has it
 	PowerW           Number   `json:"power_w"`
 	PointingErrorDeg Number   `json:"pointing_error_deg"`
 	ExceededPercent  Number   `json:"exceeded_percent"`
+}
+
+// Outline is a line on the ground, geodetic.
+type Outline struct {
+	LatitudeDeg  []Number `json:"latitude_deg"`
+	LongitudeDeg []Number `json:"longitude_deg"`
+}
+
+// Rim is a line in the sky.
+type Rim struct {
+	AzimuthDeg   []Number `json:"azimuth_deg"`
+	ElevationDeg []Number `json:"elevation_deg"`
+}
+
+// Body is the Sun or the Moon in the sky.
+type Body struct {
+	Name         string `json:"name"`
+	AzimuthDeg   Number `json:"azimuth_deg"`
+	ElevationDeg Number `json:"elevation_deg"`
 }
 
 // Question changes a contact; nil and empty keep what the scenario has.

@@ -1,6 +1,6 @@
-"use strict";
 const $ = id => document.getElementById(id);
 const numbers = ["dish_m", "power_w", "least_elevation_deg", "pointing_error_deg", "exceeded_percent"];
+const saveKey = document.querySelector("meta[name=save-key]").content;
 let state = null, heard = 0, detail = null, chosen = "", changes = {};
 
 // Texts of the scenario come in as text alone, never as markup.
@@ -76,83 +76,6 @@ function fill() {
   if (!chosen && state.next.length) choose((state.next.find(c => c.transmitter) || state.next[0]).id);
 }
 
-function map() {
-  const m = $("map");
-  m.replaceChildren();
-  for (let lon = -180; lon <= 180; lon += 30) draw(m, "line", {class: "grid", x1: lon, x2: lon, y1: -90, y2: 90});
-  for (let lat = -90; lat <= 90; lat += 30) draw(m, "line", {class: "grid", x1: -180, x2: 180, y1: -lat, y2: -lat});
-  const mark = (lon, lat, name) => draw(m, "text", {x: lon > 110 ? lon - 5 : lon + 5, y: 2.5 - lat, "text-anchor": lon > 110 ? "end" : "start"}, name);
-  for (const s of state.stations) {
-    draw(m, "path", {class: "site", d: `M${s.longitude_deg - 3} ${2.5 - s.latitude_deg}h6l-3-5z`});
-    mark(s.longitude_deg, s.latitude_deg, s.name);
-  }
-  for (const c of state.spacecraft) {
-    if (c.latitude_deg === null) continue;
-    draw(m, "circle", {class: "dot" + (c.light === "sun" ? " lit" : ""), cx: c.longitude_deg, cy: -c.latitude_deg, r: 3});
-    mark(c.longitude_deg, c.latitude_deg, c.name);
-  }
-}
-
-// at finds a column's value at so many seconds after AOS.
-function at(column, s) {
-  const t = detail.seconds;
-  let i = t.findIndex(v => v >= s);
-  if (i < 1) i = i === 0 ? 1 : t.length - 1;
-  if (column[i] === null || column[i - 1] === null) return null;
-  let d = column[i] - column[i - 1];
-  if (column === detail.azimuth_deg) d = ((d + 540) % 360) - 180;
-  return column[i - 1] + d * (s - t[i - 1]) / (t[i] - t[i - 1]);
-}
-const polar = (az, el) => [(90 - el) / 90 * 100 * Math.sin(az * Math.PI / 180), -(90 - el) / 90 * 100 * Math.cos(az * Math.PI / 180)];
-const path = points => points.map((p, i) => (i ? "L" : "M") + p[0].toFixed(1) + " " + p[1].toFixed(1)).join("");
-
-function charts() {
-  const sky = $("sky"), s = (now() - Date.parse(detail.aos_utc)) / 1000, last = detail.seconds.at(-1), under = s >= 0 && s <= last;
-  sky.replaceChildren();
-  for (const el of [0, 30, 60]) {
-    draw(sky, "circle", {class: "grid", r: (90 - el) / 90 * 100});
-    draw(sky, "text", {x: 2, y: -(90 - el) / 90 * 100 + 11}, el + "°");
-  }
-  for (const [az, word] of [[0, "N"], [90, "E"], [180, "S"], [270, "W"]]) {
-    const [x, y] = polar(az, -8);
-    draw(sky, "text", {x: x, y: y + 4, "text-anchor": "middle"}, word);
-  }
-  draw(sky, "path", {class: "track", d: path(detail.azimuth_deg.map((az, i) => polar(az, detail.elevation_deg[i])))});
-  if (under) {
-    const [x, y] = polar(at(detail.azimuth_deg, s), at(detail.elevation_deg, s));
-    draw(sky, "circle", {class: "dot lit", cx: x, cy: y, r: 5});
-  }
-  $("sky-text").textContent = `North up, east to the right, horizon at the rim. From azimuth ${show(detail.aos_azimuth_deg, 0)}° up to ${show(detail.max_elevation_deg)}° and down at ${show(detail.los_azimuth_deg, 0)}°.` + (under ? " The dot is where it stands now." : "");
-  lines("elevation", detail.elevation_deg, null, s, "°");
-  lines("margin", detail.margin_db, detail.required_margin_db, s, " dB");
-}
-
-function lines(id, column, limit, s, unit) {
-  const g = $(id), left = 40, right = 470, top = 10, bottom = 190, last = detail.seconds.at(-1);
-  g.replaceChildren();
-  const known = column.filter(v => v !== null);
-  if (!known.length) {
-    draw(g, "text", {x: 240, y: 110, "text-anchor": "middle"}, "not known");
-    $(id + "-text").textContent = "Not known for this contact.";
-    return;
-  }
-  const low = Math.floor(Math.min(0, ...known, limit ?? 0) / 10) * 10, high = Math.ceil(Math.max(10, ...known) / 10) * 10;
-  const x = v => left + (right - left) * v / last, y = v => bottom - (bottom - top) * (v - low) / (high - low);
-  const step = (high - low) / 10 > 5 ? 20 : 10;
-  for (let v = low; v <= high; v += step) {
-    draw(g, "line", {class: "grid", x1: left, x2: right, y1: y(v), y2: y(v)});
-    draw(g, "text", {x: left - 5, y: y(v) + 4, "text-anchor": "end"}, String(v));
-  }
-  for (const part of [0, .25, .5, .75, 1])
-    draw(g, "text", {x: x(last * part), y: bottom + 18, "text-anchor": part === 1 ? "end" : part ? "middle" : "start"}, hour(Date.parse(detail.aos_utc) + last * part * 1000));
-  draw(g, "path", {class: "track", d: path(column.map((v, i) => [x(detail.seconds[i]), v]).filter(p => p[1] !== null).map(p => [p[0], y(p[1])]))});
-  if (limit !== null) draw(g, "line", {class: "limit", x1: left, x2: right, y1: y(limit), y2: y(limit)});
-  const under = s >= 0 && s <= last;
-  if (under) draw(g, "line", {class: "now", x1: x(s), x2: x(s), y1: top, y2: bottom});
-  $(id + "-text").textContent = `UTC to the right. From ${show(Math.min(...known))} to ${show(Math.max(...known))}${unit}` +
-    (limit !== null ? `; dashed: ${show(limit)} dB required` : "") + (under ? `; now ${show(at(column, s))}${unit} (dotted)` : "") + ".";
-}
-
 async function ask(address, options) {
   const r = await fetch(address, options), answer = await r.json();
   if (!r.ok) throw new Error(answer.error);
@@ -177,10 +100,15 @@ async function choose(id) {
       $(n).value = changes[n] ?? "";
     }
     $("mode").value = d.modes.includes(changes.mode) ? changes.mode : "";
+    $("chosen-csv").href = "/api/csv/contacts/" + encodeURIComponent(d.id);
+    $("chosen-lines").href = $("chosen-csv").href + "/lines";
+    $("chosen-json").href = "/api/contacts/" + encodeURIComponent(d.id);
     shownNext = "";
     fill();
+    still();
+    map();
     second();
-    $("answer").hidden = true;
+    $("answer").hidden = $("keep").hidden = true;
     if (Object.keys(changes).length) work();
   } catch (e) {
     $("refused").textContent = $("link").textContent = e.message;
@@ -192,12 +120,16 @@ async function work() {
   const q = {contact: chosen, ...changes};
   try {
     const a = await ask("/api/what-if", {method: "POST", headers: {"Content-Type": "application/json"}, body: JSON.stringify(q)});
-    $("answer").hidden = false;
+    $("answer").hidden = $("keep").hidden = false;
+    $("save").hidden = !state.can_save;
+    $("kept").textContent = "";
+    $("take").href = "/api/scenario?" + new URLSearchParams({contact: chosen, ...changes});
+    $("share").href = location.href;
     $("outcomes").replaceChildren();
     for (const [head, o] of [["as in the scenario", a.before], ["with the changes", a.after]])
       row($("outcomes"), head, o.used ? [o.mode || "–", show(o.seconds, 0), show(o.least_margin_db), show(o.greatest_margin_db), show(o.bytes === null ? null : o.bytes / 1e6)] : ["never that high", "0", "–", "–", "0.0"]);
   } catch (e) {
-    $("answer").hidden = true;
+    $("answer").hidden = $("keep").hidden = true;
     $("refused").textContent = e.message;
   }
 }
@@ -219,7 +151,18 @@ $("what-if").addEventListener("submit", e => {
   remember();
   work();
 });
-$("what-if").addEventListener("reset", () => { changes = {}; $("answer").hidden = true; $("refused").textContent = ""; remember(); });
+$("save").addEventListener("submit", async e => {
+  e.preventDefault();
+  try {
+    const a = await ask("/api/scenarios", {method: "POST", headers: {"Content-Type": "application/json", "Slantwise-Save-Key": saveKey},
+      body: JSON.stringify({name: $("save-name").value, question: {contact: chosen, ...changes}})});
+    $("kept").textContent = `Written as ${a.file} in the folder of the scenario; slantwise check --scenario lists what it assumes.`;
+  } catch (e) {
+    $("kept").textContent = "Not written: " + e.message + ".";
+  }
+});
+addEventListener("hashchange", recall);
+$("what-if").addEventListener("reset", () => { changes = {}; $("answer").hidden = $("keep").hidden = true; $("refused").textContent = ""; remember(); });
 
 function second() {
   if (!state) return;
