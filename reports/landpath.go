@@ -44,11 +44,11 @@ func landRing(b *strings.Builder, list []Place, along []float64, shift float64) 
 	letter := byte('M')
 	for i, q := range list {
 		number(letter, along[i]+shift)
-		number(' ', -q.LatitudeDeg)
+		number(' ', 0-q.LatitudeDeg) // no -0
 		letter = 'L'
 	}
 	if last := along[len(list)]; math.Abs(last-along[0]) > 180 {
-		for _, corner := range [][2]float64{{last, -list[0].LatitudeDeg}, {last, 90}, {along[0], 90}} {
+		for _, corner := range [][2]float64{{last, 0 - list[0].LatitudeDeg}, {last, 90}, {along[0], 90}} {
 			number('L', corner[0]+shift)
 			number(' ', corner[1])
 		}
