@@ -31,3 +31,16 @@ func places(ring []int) []Place {
 	}
 	return list
 }
+
+// coastPlaces returns the rings of the land as places; nil where there are none.
+var coastPlaces = sync.OnceValue(func() [][]Place {
+	rings := coast()
+	if rings == nil {
+		return nil
+	}
+	land := make([][]Place, len(rings))
+	for i := range rings {
+		land[i] = places(rings[i])
+	}
+	return land
+})

@@ -5,6 +5,8 @@ import (
 	"html/template"
 	"math"
 	"strings"
+
+	vector "slantwise/reports/drawing"
 )
 
 // The map's radius in its own units, and the room around it for the names of the sky's
@@ -23,11 +25,7 @@ func groundDrawing(p *Pass) template.HTML {
 	put(`<defs><clipPath id="map-rim"><circle cx="%g" cy="%g" r="%g"/></clipPath>`, mapRadius, mapRadius, mapRadius)
 	put(`<pattern id="map-night" width="5" height="5" patternUnits="userSpaceOnUse" patternTransform="rotate(45)"><path d="M0 0V5"/></pattern></defs>`)
 	put(`<circle class="sea" cx="%g" cy="%g" r="%g"/><g clip-path="url(#map-rim)">`, mapRadius, mapRadius, mapRadius)
-	if rings := coast(); rings != nil {
-		land := make([][]Place, len(rings))
-		for i := range rings {
-			land[i] = places(rings[i])
-		}
+	if land := coastPlaces(); land != nil {
 		put(`<path class="land" d="%s"/>`, m.area(land, holds(land, g.Station)))
 	}
 	put(`<path class="grid" d="%s"/>`, graticule(m, g.Station))
@@ -99,27 +97,29 @@ func trackMarks(p *Pass, m *plane) string {
 }
 
 // graticule draws meridians and parallels, at steps that fit the map.
-func graticule(m *plane, middle Place) string {
+func graticule(m *plane, middle Place) string { return svgPath(graticuleLines(m, middle), false) }
+
+func graticuleLines(m *plane, middle Place) [][]vector.Point {
 	step := 10.0
 	for _, s := range []float64{20, 30} {
 		if m.reach*180/math.Pi > 2*s {
 			step = s
 		}
 	}
-	var b strings.Builder
+	var lines [][]vector.Point
 	for lat := -90 + step; lat < 90; lat += step {
 		var line []Place
 		for lon := -180.0; lon <= 180; lon += 3 {
 			line = append(line, Place{lat, middle.LongitudeDeg + lon})
 		}
-		b.WriteString(m.path(line))
+		lines = append(lines, m.lines(line)...)
 	}
 	for lon := -180.0; lon < 180; lon += step {
 		var line []Place
 		for lat := -90 + step; lat <= 90-step; lat += 3 {
 			line = append(line, Place{lat, lon})
 		}
-		b.WriteString(m.path(append(line, Place{90 - step, lon})))
+		lines = append(lines, m.lines(append(line, Place{90 - step, lon}))...)
 	}
-	return b.String()
+	return lines
 }

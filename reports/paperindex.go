@@ -2,6 +2,7 @@ package reports
 
 import (
 	"strconv"
+	"time"
 
 	vector "slantwise/reports/drawing"
 	"slantwise/reports/paper"
@@ -19,6 +20,7 @@ func indexPaper(w *writer, v *indexView, rows []row) ([]byte, error) {
 	if len(v.Rows) >= longPaper {
 		info.Contents = len(days) + 3
 	}
+	info.Foot = agesText(rows)
 	d := paper.New(info)
 	d.Page()
 	d.Title("Passes and downlinks", v.From+" to "+v.To+" UTC · scenario "+r.Title+" · "+v.Horizon+" horizon")
@@ -74,6 +76,28 @@ func (v *indexView) countText() string {
 	}
 	return text + ": " + strconv.Itoa(c.Throughout) + " close throughout, " + strconv.Itoa(c.Partly) + " in part, " +
 		strconv.Itoa(c.Never) + " do not close, " + strconv.Itoa(c.Without) + " have no data link."
+}
+
+// agesText says how old the element sets are at the passes; empty where there are none.
+func agesText(rows []row) string {
+	least, most, seen := time.Duration(0), time.Duration(0), false
+	for i := range rows {
+		r := &rows[i]
+		if r.inPlace {
+			continue
+		}
+		if !seen {
+			least, most, seen = r.age, r.age, true
+		}
+		least, most = min(least, r.age), max(most, r.age)
+	}
+	switch {
+	case !seen:
+		return ""
+	case least == most:
+		return "element sets " + age(least) + " old at AOS"
+	}
+	return "element sets " + age(least) + " to " + age(most) + " old at AOS"
 }
 
 // dayRows are the passes of a day in UTC.

@@ -11,15 +11,20 @@ import (
 // info is what the PDF files of a report say about themselves. Their date is the window's start:
 // files carry no clock, and the same input gives the same bytes.
 func (w *writer) info(title string) paper.Info {
-	return paper.Info{Title: title, Subject: "scenario " + w.report.Title, Creator: strings.TrimSpace("slantwise " + w.options.Version), Date: w.report.From}
+	return paper.Info{Title: title, Subject: "scenario " + w.report.Title, Creator: program(w.options.Version), Date: w.report.From}
 }
+
+// program names the program with its version where that is known.
+func program(version string) string { return strings.TrimSpace("slantwise " + version) }
 
 // passPaper returns the PDF of a pass: the answer first, then when and where, charts, budgets,
 // assumptions and cautions, with the words and numbers of its page.
 func passPaper(w *writer, p *Pass) ([]byte, error) {
 	v := newPassView(p)
 	v.addNotes(p.Notes)
-	d := paper.New(w.info(v.Spacecraft + " over " + v.Station + ", " + v.Begin + " UTC"))
+	info := w.info(v.Spacecraft + " over " + v.Station + ", " + v.Begin + " UTC")
+	info.Foot = v.orbitText()
+	d := paper.New(info)
 	d.Page()
 	d.Title(v.Spacecraft+" over "+v.Station, "scenario "+w.report.Title)
 	d.Chapter("Answer")
@@ -30,10 +35,15 @@ func passPaper(w *writer, p *Pass) ([]byte, error) {
 	d.Heading("When and where")
 	d.Table(paperTable(v.Events))
 	v.linkOn(d)
+	if v.Link != nil && v.Link.Mount != nil {
+		v.Link.Mount.on(d)
+	}
 	d.Heading("Along the pass")
 	d.Chapter("Along the pass")
 	d.Figures(paperFigures(sketches(p, newFrame(p))))
 	measuredOn(d, p)
+	groundOn(d, p)
+	sightsOn(d, p)
 	if v.Link != nil {
 		d.Heading("Link budget")
 		d.Chapter("Link budget")
@@ -49,6 +59,14 @@ func passPaper(w *writer, p *Pass) ([]byte, error) {
 	v.assumptionsOn(d)
 	cautionsOn(d)
 	return d.Bytes()
+}
+
+// orbitText names the orbit that the numbers come from, with its age.
+func (v *passView) orbitText() string {
+	if v.Element.InPlace != "" {
+		return "orbit: " + v.Element.InPlace
+	}
+	return "element set of " + v.Element.Epoch + " UTC, " + v.Element.Age + " old at AOS"
 }
 
 // answerOn writes what is asked first.
@@ -97,6 +115,7 @@ func (v *passView) answerOn(d *paper.Document) {
 	d.Table(paper.Table{Corner: "In short", Heads: []string{""}, Rows: rows, Left: true, First: 0.35})
 	if l := v.Link; l != nil {
 		l.Sky.on(d)
+		l.Sky.bodiesOn(d)
 	}
 }
 

@@ -3,6 +3,8 @@ package reports
 import (
 	"math"
 	"strconv"
+
+	vector "slantwise/reports/drawing"
 )
 
 // plane is a map around a place: distance and direction from the middle are true
@@ -40,83 +42,95 @@ func (m *plane) at(angle, azimuth float64) (x, y float64) {
 func (m *plane) point(q Place) (x, y float64) { return m.at(m.polar(q)) }
 
 // path draws a line through places, left out where it runs outside of the rim.
-func (m *plane) path(list []Place) string {
-	var b []byte
+func (m *plane) path(list []Place) string { return svgPath(m.lines(list), false) }
+
+// lines is a line through places in pieces, left out where it runs outside of the rim.
+func (m *plane) lines(list []Place) [][]vector.Point {
+	var pieces [][]vector.Point
+	var piece []vector.Point
 	down := false
 	for i, q := range list {
 		angle, azimuth := m.polar(q)
 		inside := angle <= m.reach*1.05
 		if inside && !down && i > 0 {
-			b = appendPoint(b, 'M', m, list[i-1])
+			piece = append(piece, m.spot(m.polar(list[i-1])))
 			down = true
 		}
 		if inside || down {
-			b = appendXY(b, penLetter(down), m, angle, azimuth)
+			piece = append(piece, m.spot(angle, azimuth))
 		}
-		down = inside
+		if down = inside; !down && piece != nil {
+			pieces, piece = append(pieces, piece), nil
+		}
+	}
+	if piece != nil {
+		pieces = append(pieces, piece)
+	}
+	return pieces
+}
+
+func (m *plane) spot(angle, azimuth float64) vector.Point {
+	x, y := m.at(angle, azimuth)
+	return vector.Point{X: x, Y: y}
+}
+
+// svgPath writes lines as the path of a drawing.
+func svgPath(lines [][]vector.Point, closed bool) string {
+	var b []byte
+	for _, line := range lines {
+		letter := byte('M')
+		for _, q := range line {
+			b = strconv.AppendFloat(append(b, letter), q.X, 'f', 1, 64)
+			b = strconv.AppendFloat(append(b, ' '), q.Y, 'f', 1, 64)
+			letter = 'L'
+		}
+		if closed {
+			b = append(b, 'z')
+		}
 	}
 	return string(b)
-}
-
-func penLetter(down bool) byte {
-	if down {
-		return 'L'
-	}
-	return 'M'
-}
-
-func appendPoint(b []byte, command byte, m *plane, q Place) []byte {
-	angle, azimuth := m.polar(q)
-	return appendXY(b, command, m, angle, azimuth)
-}
-
-func appendXY(b []byte, command byte, m *plane, angle, azimuth float64) []byte {
-	x, y := m.at(angle, azimuth)
-	b = strconv.AppendFloat(append(b, command), x, 'f', 1, 64)
-	return strconv.AppendFloat(append(b, ' '), y, 'f', 1, 64)
 }
 
 // beyond is how far out, in reaches, everything farther is drawn: chords of turn rad
 // between points there do not come into the map.
 const beyond, turn = 1.6, 0.35
 
-// area draws the inside of rings, of which an odd number goes around what is inside;
-// hit tells whether the middle is. What lies beyond the map is drawn together outside
-// the rim. A ring around the antipode comes out as its complement: then a frame around
-// all turns inside and outside.
-func (m *plane) area(rings [][]Place, hit bool) string {
-	var b []byte
+// area draws the inside of rings, as rings says.
+func (m *plane) area(rings [][]Place, hit bool) string { return svgPath(m.rings(rings, hit), true) }
+
+// rings returns rings of the map, of which an odd number goes around what is inside; hit tells whether
+// the middle is. What lies beyond the map is drawn together outside the rim. A ring around the antipode
+// comes out as its complement: then a frame around all turns inside and outside.
+func (m *plane) rings(rings [][]Place, hit bool) [][]vector.Point {
+	var out [][]vector.Point
 	odd := false
 	for _, ring := range rings {
-		d, winds := m.ring(ring)
-		b = append(b, d...)
+		drawn, winds := m.ring(ring)
+		if drawn != nil {
+			out = append(out, drawn)
+		}
 		odd = odd != winds
 	}
 	if odd != hit {
 		far := m.radius * 2 * beyond
-		for i, corner := range [][2]float64{{-far, -far}, {far, -far}, {far, far}, {-far, far}} {
-			b = append(b, penLetter(i > 0))
-			b = strconv.AppendFloat(b, m.x+corner[0], 'f', 0, 64)
-			b = strconv.AppendFloat(append(b, ' '), m.y+corner[1], 'f', 0, 64)
-		}
-		b = append(b, 'z')
+		out = append(out, []vector.Point{{X: m.x - far, Y: m.y - far}, {X: m.x + far, Y: m.y - far}, {X: m.x + far, Y: m.y + far}, {X: m.x - far, Y: m.y + far}})
 	}
-	return string(b)
+	return out
 }
 
 // ring draws one ring and tells whether it goes around the middle on the map. One that
 // lies wholly outside and does not is left out.
-func (m *plane) ring(ring []Place) (d []byte, winds bool) {
+func (m *plane) ring(ring []Place) (drawn []vector.Point, winds bool) {
 	seen, total := false, 0.0
 	var kept float64 // azimuth of the last point drawn beyond
 	was := false     // the last point lies beyond
 	put := func(angle, azimuth float64) {
 		far := angle > m.reach*beyond
-		if far && was && len(d) > 0 && math.Abs(math.Remainder(azimuth-kept, 2*math.Pi)) < turn/3 {
+		if far && was && len(drawn) > 0 && math.Abs(math.Remainder(azimuth-kept, 2*math.Pi)) < turn/3 {
 			return
 		}
 		seen = seen || angle <= m.reach
-		d = appendXY(d, penLetter(len(d) > 0), m, min(angle, m.reach*beyond), azimuth)
+		drawn = append(drawn, m.spot(min(angle, m.reach*beyond), azimuth))
 		was, kept = far, azimuth
 	}
 	for i := range ring {
@@ -127,7 +141,7 @@ func (m *plane) ring(ring []Place) (d []byte, winds bool) {
 	if !seen && !winds {
 		return nil, false
 	}
-	return append(d, 'z'), winds
+	return drawn, winds
 }
 
 // longest is the longest piece of a ring that is drawn straight, in degrees of latitude

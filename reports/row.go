@@ -27,6 +27,8 @@ type row struct {
 	surety                     *Surety
 	beamUnsure                 float64 // seconds; NaN where it has no meaning
 	plan                       *Plan
+	age                        time.Duration // of the element set at AOS
+	inPlace                    bool          // no element set is flown
 }
 
 func newRow(page string, p *Pass) row {
@@ -38,6 +40,7 @@ func newRow(page string, p *Pass) row {
 		maxElevationDeg: q.MaxElevation.Degrees(), cut: q.Cut.String(), verdict: verdictOf(p),
 		least: none, greatest: none, required: none, modeBytes: none, achievableBytes: none,
 		clearLeast: none, clearModeBytes: none, sunInBeam: none, surety: p.Surety, beamUnsure: none,
+		age: p.Elements.Age, inPlace: p.Elements.InPlace != "",
 	}
 	if p.Surety != nil && p.Surety.Led {
 		r.beamUnsure = 0

@@ -55,21 +55,29 @@ const (
 	sightArc, sightReach                 = 42.0, 74.0
 )
 
-// sightDrawing draws the plane of spacecraft, station and boresight to scale: the Earth's
-// limb, a solid line to the station, a dashed one along the boresight and the angle
-// between them. Nothing in it is text of the scenario.
-func sightDrawing(s *Sight) template.HTML {
+// sightPlan is where things stand in the drawing.
+type sightPlan struct{ ox, oy, sx, sy, scale float64 } // spacecraft, station; units a kilometre
+
+// plan leaves room for the station, and for the arrow on whichever side it points to.
+func (s *Sight) plan() sightPlan {
 	x, y := s.StationX.Kilometres(), s.StationY.Kilometres()
-	// Room for the station, and for the arrow on whichever side it points to.
 	left, top := sightMargin+sightReach*max(0, -s.BoresightX), sightMargin+sightReach*max(0, -s.BoresightY)
 	scale := min((sightWidth-left-sightMargin)/max(x, 1), (sightHeight-top-sightMargin)/max(y, 1))
 	spare := sightWidth - left - sightMargin - max(x*scale, sightReach*s.BoresightX)
 	ox, oy := left+max(0, spare)/2, top
-	sx, sy := ox+x*scale, oy+y*scale
+	return sightPlan{ox, oy, ox + x*scale, oy + y*scale, scale}
+}
+
+// sightDrawing draws the plane of spacecraft, station and boresight to scale: the Earth's
+// limb, a solid line to the station, a dashed one along the boresight and the angle
+// between them. Nothing in it is text of the scenario.
+func sightDrawing(s *Sight) template.HTML {
+	l := s.plan()
+	ox, oy, sx, sy := l.ox, l.oy, l.sx, l.sy
 	var b strings.Builder
 	put := func(format string, args ...any) { fmt.Fprintf(&b, format, args...) }
 	put(`<svg class="sight" viewBox="0 0 %g %g" aria-hidden="true" focusable="false">`, sightWidth, sightHeight)
-	put(`<circle class="earth" cx="%.1f" cy="%.1f" r="%.1f"/>`, ox, oy+s.EarthY.Kilometres()*scale, s.EarthRadius.Kilometres()*scale)
+	put(`<circle class="earth" cx="%.1f" cy="%.1f" r="%.1f"/>`, ox, oy+s.EarthY.Kilometres()*l.scale, s.EarthRadius.Kilometres()*l.scale)
 	put(`<line class="tosite" x1="%.1f" y1="%.1f" x2="%.1f" y2="%.1f"/>`, ox, oy, sx, sy)
 	bx, by := ox+sightReach*s.BoresightX, oy+sightReach*s.BoresightY
 	put(`<line class="axis" x1="%.1f" y1="%.1f" x2="%.1f" y2="%.1f"/>`, ox, oy, bx, by)

@@ -45,7 +45,7 @@ var strokes = map[string][]float64{solid: nil, dashed: vector.Dashed, dotted: ve
 
 var sketchSymbols = map[string]vector.Symbol{
 	"circle": vector.Circle, "triangle": vector.Triangle, "rect": vector.Square, "diamond": vector.Diamond,
-	"emptyCircle": vector.Ring, "emptyTriangle": vector.OpenTriangle, "emptyRect": vector.Square, "emptyDiamond": vector.Diamond,
+	"emptyCircle": vector.Ring, "emptyTriangle": vector.OpenTriangle, "emptyRect": vector.OpenSquare, "emptyDiamond": vector.OpenDiamond,
 }
 
 // toneOf gives lines the colours that the page's script gives them.
@@ -140,7 +140,7 @@ func skySketch(p *Pass, fr *frame) *vector.Sky {
 	}
 	all := events(p)
 	for i, e := range all {
-		one := vector.Event{At: vector.Place{Azimuth: e.azimuthDeg, Elevation: e.elevationDeg}, Symbol: [...]vector.Symbol{vector.Triangle, vector.Circle, vector.Square}[i]}
+		one := vector.Event{At: vector.Place{Azimuth: e.azimuthDeg, Elevation: e.elevationDeg}, Symbol: eventSymbols[i]}
 		if i == 1 || !together(e, all[1]) {
 			one.Lines = []string{e.short, clock(e.at)}
 		}

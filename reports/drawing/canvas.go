@@ -15,6 +15,7 @@ const (
 	Second             // the second line
 	Hatch              // spans that are struck out
 	Paper              // the ground
+	Land               // the land of a map
 )
 
 // Stroke is how a line is drawn.
@@ -55,6 +56,7 @@ type Canvas interface {
 	Line(points []Point, s Stroke)             // open, two points or more
 	Area(points []Point, fill Tone, s *Stroke) // closed; s nil: no edge
 	Disc(at Point, r float64, fill Tone, s *Stroke)
+	Inside(rings [][]Point, draw func()) // what draw draws, kept inside an odd number of closed rings
 	Write(t Text)
 	Width(text string, size float64) float64 // how long a text is, points
 }
@@ -71,13 +73,17 @@ const (
 	Diamond
 	Ring         // an empty circle
 	OpenTriangle // an empty one
+	OpenSquare
+	OpenDiamond
+	Upright // a plus sign
 )
 
-// mark draws a symbol of the given radius.
-func mark(c Canvas, kind Symbol, at Point, r float64, tone Tone) {
+// Mark draws a symbol of the given radius.
+func Mark(c Canvas, kind Symbol, at Point, r float64, tone Tone) {
 	edge := &Stroke{Tone: tone, Width: 0.9}
 	fill := tone
-	if kind == Ring || kind == OpenTriangle {
+	switch kind {
+	case Ring, OpenTriangle, OpenSquare, OpenDiamond:
 		fill = Paper
 	}
 	corners := func(list ...float64) {
@@ -92,9 +98,12 @@ func mark(c Canvas, kind Symbol, at Point, r float64, tone Tone) {
 		c.Disc(at, r, fill, edge)
 	case Triangle, OpenTriangle:
 		corners(0, -1, 0.95, 0.8, -0.95, 0.8)
-	case Square:
+	case Square, OpenSquare:
 		corners(-0.85, -0.85, 0.85, -0.85, 0.85, 0.85, -0.85, 0.85)
-	case Diamond:
+	case Diamond, OpenDiamond:
 		corners(0, -1.2, 1, 0, 0, 1.2, -1, 0)
+	case Upright:
+		c.Line([]Point{{at.X - r, at.Y}, {at.X + r, at.Y}}, *edge)
+		c.Line([]Point{{at.X, at.Y - r}, {at.X, at.Y + r}}, *edge)
 	}
 }

@@ -89,7 +89,7 @@ func (l *Lines) legend(c Canvas, w float64) float64 {
 		if !s.Dots {
 			c.Line([]Point{{x, y - 2.6}, {x + swatch, y - 2.6}}, Stroke{s.Tone, s.Width, s.Dash})
 		}
-		mark(c, s.Symbol, Point{x + swatch/2, y - 2.6}, 2.6, s.Tone)
+		Mark(c, s.Symbol, Point{x + swatch/2, y - 2.6}, 2.6, s.Tone)
 		c.Write(Text{At: Point{x + swatch + 4, y}, Text: s.Name, Size: labelSize})
 		x += long + 10
 	}
@@ -179,12 +179,12 @@ func (l *Lines) line(c Canvas, b box, i int) {
 			continue
 		}
 		if s.Dots {
-			mark(c, s.Symbol, b.at(x, y), dotSize, s.Tone)
+			Mark(c, s.Symbol, b.at(x, y), dotSize, s.Tone)
 			continue
 		}
 		run = append(run, b.at(x, y))
 		if s.Symbol != NoSymbol && (k+2*i)%step == step/2 {
-			mark(c, s.Symbol, b.at(x, y), 2.6, s.Tone)
+			Mark(c, s.Symbol, b.at(x, y), 2.6, s.Tone)
 		}
 	}
 	flush()

@@ -36,7 +36,7 @@ func (o *Overview) Draw(c Canvas, w, h float64) {
 	b := box{left: left + 8, right: w - edgeRight, top: 20, bottom: h - edgeBelow}
 	x := 0.0
 	for _, k := range o.Kinds {
-		mark(c, k.Symbol, Point{x + 4, labelSize - 2.6}, 3, k.Tone)
+		Mark(c, k.Symbol, Point{x + 4, labelSize - 2.6}, 3, k.Tone)
 		c.Write(Text{At: Point{x + 11, labelSize}, Text: k.Name, Size: labelSize})
 		x += 25 + c.Width(k.Name, labelSize)
 	}
@@ -48,7 +48,7 @@ func (o *Overview) Draw(c Canvas, w, h float64) {
 	}
 	upright(c, b, &o.X)
 	for _, d := range o.Dots {
-		mark(c, d.Symbol, b.at(o.X.place(d.At), row(d.Row)), 3, d.Tone)
+		Mark(c, d.Symbol, b.at(o.X.place(d.At), row(d.Row)), 3, d.Tone)
 	}
 }
 

@@ -33,13 +33,6 @@ func (s *Sky) Draw(c Canvas, w, h float64) {
 	for az := 0.0; az < 180; az += 30 {
 		c.Line([]Point{at(Place{az, 0}), at(Place{az + 180, 0})}, Stroke{Tone: Rule, Width: 0.4})
 	}
-	for az := 0.0; az < 360; az += 30 {
-		s.rim(c, at, az)
-	}
-	for _, el := range []float64{30, 60} {
-		p := at(Place{15, el})
-		c.Write(Text{At: p, Text: label(el, 0) + "°", Size: labelSize - 0.5, Tone: Soft})
-	}
 	s.mask(c, at)
 	track := make([]Point, len(s.Track))
 	for i, p := range s.Track {
@@ -48,10 +41,33 @@ func (s *Sky) Draw(c Canvas, w, h float64) {
 	if len(track) > 1 {
 		c.Line(track, Stroke{Tone: First, Width: 1.6})
 	}
+	l := &labels{c: c, w: w, h: h}
+	l.follow(track)
+	l.follow(ring(at, 0))
+	for az := 0.0; az < 360; az += 90 {
+		s.rim(l, at, az)
+	}
 	for _, e := range s.Events {
-		s.event(c, at(e.At), centre, e)
+		p := at(e.At)
+		Mark(c, e.Symbol, p, symbolRadius, First)
+		l.take(around(p, symbolRadius+0.5))
+	}
+	for _, e := range s.Events {
+		p := at(e.At)
+		l.put(p, symbolRadius, e.Lines, labelSize, p.X < centre.X)
+	}
+	for az := 30.0; az < 360; az += 30 {
+		if math.Mod(az, 90) != 0 {
+			s.rim(l, at, az)
+		}
+	}
+	for _, el := range []float64{30, 60} {
+		s.height(l, at, el)
 	}
 }
+
+// symbolRadius is that of an event's mark.
+const symbolRadius = 3.6
 
 // ring is a circle of equal elevation.
 func ring(at func(Place) Point, elevation float64) []Point {
@@ -62,20 +78,38 @@ func ring(at func(Place) Point, elevation float64) []Point {
 	return list
 }
 
-// rim writes the azimuth at the rim, but for those beside the label of an event there.
-func (s *Sky) rim(c Canvas, at func(Place) Point, az float64) {
+// rim writes the azimuth at the rim: the four directions always, the others where there is room.
+func (s *Sky) rim(l *labels, at func(Place) Point, az float64) {
 	text, bold := map[float64]string{0: "N", 90: "E", 180: "S", 270: "W"}[az], true
 	if text == "" {
 		text, bold = label(az, 0)+"°", false
-		for _, e := range s.Events {
-			if turn := math.Abs(math.Mod(e.At.Azimuth-az+540, 360) - 180); turn < 20 && e.At.Elevation < 30 {
-				return
-			}
-		}
 	}
 	p := at(Place{az, 0})
 	sin, cos := math.Sincos(az * math.Pi / 180)
-	c.Write(Text{At: Point{p.X + 11*sin, p.Y - 10*cos + 2.6}, Text: text, Size: labelSize, Align: Middle, Bold: bold})
+	p = Point{p.X + 11*sin, p.Y - 10*cos}
+	half := l.c.Width(text, labelSize) / 2
+	f := field{p.X - half, p.Y - labelSize/2, p.X + half, p.Y + labelSize/2}
+	if !bold && !l.free(f) {
+		return
+	}
+	l.take(f)
+	l.c.Write(Text{At: Point{p.X, p.Y + 2.6}, Text: text, Size: labelSize, Align: Middle, Bold: bold})
+}
+
+// height writes the elevation of a circle where there is room, beginning in the north-east.
+func (s *Sky) height(l *labels, at func(Place) Point, el float64) {
+	text := label(el, 0) + "°"
+	wide := l.c.Width(text, labelSize-0.5)
+	for _, az := range []float64{15, 345, 165, 195, 75, 285, 105, 255} {
+		p := at(Place{az, el})
+		f := field{p.X, p.Y - labelSize, p.X + wide, p.Y + 1}
+		if l.cost(f) > 0 {
+			continue
+		}
+		l.take(f)
+		l.c.Write(Text{At: p, Text: text, Size: labelSize - 0.5, Tone: Soft})
+		return
+	}
 }
 
 // mask shades what lies under the least elevation with spokes and bounds it with dashes.
@@ -111,16 +145,4 @@ func (s *Sky) least(az float64) float64 {
 		}
 	}
 	return s.Mask[0].Elevation
-}
-
-// event marks a place; its label stands on the side away from the middle.
-func (s *Sky) event(c Canvas, p, centre Point, e Event) {
-	mark(c, e.Symbol, p, 3.6, First)
-	dx, align := 7.0, Start
-	if p.X < centre.X {
-		dx, align = -7, End
-	}
-	for i, text := range e.Lines {
-		c.Write(Text{At: Point{p.X + dx, p.Y + 2 + float64(i)*(labelSize+1)}, Text: text, Size: labelSize, Align: align, Bold: i == 0})
-	}
 }

@@ -18,7 +18,7 @@ type SVG struct {
 func NewSVG(w, h float64) *SVG { return &SVG{width: w, height: h} }
 
 // variables are the names in the page's style sheet, by tone.
-var variables = [...]string{Ink: "ink", Soft: "soft", Rule: "rule", First: "line-1", Second: "line-2", Hatch: "hatch", Paper: "paper"}
+var variables = [...]string{Ink: "ink", Soft: "soft", Rule: "rule", First: "line-1", Second: "line-2", Hatch: "hatch", Paper: "paper", Land: "land"}
 
 // Bytes returns the drawing with a name for readers that do not see it.
 func (s *SVG) Bytes(name string) []byte {
@@ -96,6 +96,24 @@ func (s *SVG) Disc(at Point, r float64, fill Tone, k *Stroke) {
 	s.fill(fill)
 	s.stroke(k)
 	s.body = append(s.body, "/>"...)
+}
+
+// Inside implements Canvas, with a basic shape in place of an element of a name: CSS Masking 1,
+// section 5.
+func (s *SVG) Inside(rings [][]Point, draw func()) {
+	s.body = append(s.body, `<g clip-path="path(evenodd,'`...)
+	for _, ring := range rings {
+		letter := byte('M')
+		for _, p := range ring {
+			s.body = append(number(append(s.body, letter), p.X), ' ')
+			s.body = number(s.body, p.Y)
+			letter = 'L'
+		}
+		s.body = append(s.body, 'Z')
+	}
+	s.body = append(s.body, `') view-box">`...)
+	draw()
+	s.body = append(s.body, "</g>"...)
 }
 
 // Write implements Canvas.

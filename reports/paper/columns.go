@@ -61,8 +61,8 @@ func (d *Document) needs(t *Table, n int) (whole, words []float64) {
 	return whole, words
 }
 
-// between gives each column a width from least to most so that they fill the field: what is over goes
-// to the first, what is short is taken from those that can break their lines.
+// between gives each column a width from least to most so that they fill the field: what is over is
+// shared out, what is short is taken from those that can break their lines.
 func between(least, most []float64, field float64) []float64 {
 	low, high := 0.0, 0.0
 	for k := range least {
@@ -72,8 +72,9 @@ func between(least, most []float64, field float64) []float64 {
 	out := make([]float64, len(least))
 	switch {
 	case high <= field:
-		copy(out, most)
-		out[0] += field - high
+		for k := range out {
+			out[k] = most[k] + (field-high)/float64(len(out))
+		}
 	case low >= field:
 		for k := range out {
 			out[k] = least[k] * field / low

@@ -103,7 +103,7 @@ func (d *Document) width(text string) float64 { return d.set.font.Width(text, d.
 // put writes a line on its base line.
 func (d *Document) put(x, y float64, text string) {
 	for _, r := range text {
-		if r >= 0x7f && !d.set.font.Has(r) {
+		if (r < ' ' || r > '~') && !d.set.font.Has(r) {
 			d.boxes[r] = true
 		}
 	}

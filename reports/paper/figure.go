@@ -69,7 +69,7 @@ type canvas struct {
 // tones are the colours of the pages in print; they differ in grey too.
 var tones = [...]pdf.Colour{
 	drawing.Ink: ink, drawing.Soft: soft, drawing.Rule: rule, drawing.First: {0x0a, 0x4a, 0x86},
-	drawing.Second: {0xb6, 0x5a, 0x00}, drawing.Hatch: {0x7a, 0x82, 0x8b}, drawing.Paper: {255, 255, 255},
+	drawing.Second: {0xb6, 0x5a, 0x00}, drawing.Hatch: {0x7a, 0x82, 0x8b}, drawing.Paper: {255, 255, 255}, drawing.Land: {0xe3, 0xe6, 0xe0},
 }
 
 func (c canvas) pen(s *drawing.Stroke) { c.d.page.Pen(tones[s.Tone], s.Width, s.Dash...) }
@@ -111,6 +111,19 @@ func (c canvas) Disc(at drawing.Point, r float64, fill drawing.Tone, s *drawing.
 	edge := c.colours(fill, s)
 	c.d.page.Circle(c.x+at.X, c.y+at.Y, r)
 	c.d.page.Paint(edge)
+}
+
+// Inside implements drawing.Canvas.
+func (c canvas) Inside(rings [][]drawing.Point, draw func()) {
+	p := c.d.page
+	p.Save()
+	for _, ring := range rings {
+		c.path(ring)
+		p.Close()
+	}
+	p.Clip()
+	draw()
+	p.Restore()
 }
 
 // Write implements drawing.Canvas.

@@ -103,8 +103,8 @@ func (p *Page) Paint(edge bool) {
 	p.out().DrawPath("f*")
 }
 
-// Clip keeps all that follows inside the path, until Restore.
-func (p *Page) Clip() { p.out().RawWriteStr("W n") }
+// Clip keeps all that follows inside the path, until Restore; parts within others are holes.
+func (p *Page) Clip() { p.out().RawWriteStr("W* n") }
 
 // Save keeps the state until Restore; calls come in pairs.
 func (p *Page) Save() {
