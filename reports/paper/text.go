@@ -112,8 +112,11 @@ func (d *Document) splitLine(lines []string, text string, width float64) []strin
 		}
 		for long > width {
 			n := d.fitting(word, width)
+			if n == len(word) {
+				break
+			}
+			long -= d.width(word[:n])
 			lines, word = append(lines, word[:n]), word[n:]
-			long = d.width(word)
 		}
 		line, used = word, long
 	}
@@ -122,14 +125,13 @@ func (d *Document) splitLine(lines []string, text string, width float64) []strin
 
 // fitting returns how many bytes of a word go into a width: one letter at least.
 func (d *Document) fitting(word string, width float64) int {
-	used, n := 0.0, 0
+	used := 0.0
 	for i, r := range word {
-		if used += d.width(string(r)); used > width && i > 0 {
+		if used += d.set.font.Letter(r, d.set.size); used > width && i > 0 {
 			return i
 		}
-		n = i + len(string(r))
 	}
-	return min(n, len(word))
+	return len(word)
 }
 
 // fit shortens a text to a width as it is set.

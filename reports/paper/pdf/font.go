@@ -49,6 +49,14 @@ func (f *Font) width(r rune) float64 {
 // substitute stands for what a file cannot hold: runes beyond the basic plane, which fpdf does not write.
 const substitute = utf8.RuneError
 
+// Letter returns how wide a letter is at a size, in points; 0 for one without a shape.
+func (f *Font) Letter(r rune, size float64) float64 {
+	if r = Visible(r); r < 0 {
+		return 0
+	}
+	return f.width(r) * size
+}
+
 // Has tells whether the face has a letter for a rune, or the rune needs none.
 func (f *Font) Has(r rune) bool {
 	v := Visible(r)
