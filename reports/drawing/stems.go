@@ -63,7 +63,7 @@ func (s *Stems) stem(c Canvas, b box, set *StemSet, v Stem, zero, aside float64)
 		}
 		c.Line([]Point{low, high}, Stroke{Tone: Ink, Width: 0.8})
 	}
-	mark(c, set.Symbol, top, 2.8, set.Tone)
+	Mark(c, set.Symbol, top, 2.8, set.Tone)
 }
 
 // legend writes the names of the sets with their symbols and returns where the field begins.
@@ -75,7 +75,7 @@ func (s *Stems) legend(c Canvas, w float64) float64 {
 			x, y = 0, y+labelSize+4
 		}
 		c.Line([]Point{{x, y - 2.6}, {x + swatch, y - 2.6}}, Stroke{Tone: set.Tone, Width: 1, Dash: set.Dash})
-		mark(c, set.Symbol, Point{x + swatch/2, y - 2.6}, 2.8, set.Tone)
+		Mark(c, set.Symbol, Point{x + swatch/2, y - 2.6}, 2.8, set.Tone)
 		c.Write(Text{At: Point{x + swatch + 4, y}, Text: set.Name, Size: labelSize})
 		x += long + 10
 	}
