@@ -43,6 +43,7 @@ type Document struct {
 	listAt []place   // where its parts stand; empty: no list
 	set    setting
 	boxes  map[rune]bool // letters that the font lacks
+	whole  bool          // the last page is drawn from edge to edge
 }
 
 // setting is how text is set.

@@ -167,5 +167,11 @@ func (d *Document) tellBoxes() {
 		}
 		text += fmt.Sprintf(" U+%04X", r)
 	}
-	d.Small("An empty box stands where the font of this document has no letter; searching and copying give the true one:" + text + ".")
+	text = "An empty box stands where the font of this document has no letter; searching and copying give the true one:" + text + "."
+	if d.whole { // there is room for this line alone
+		d.font("", smallSize-1, soft)
+		d.put(WholeMargin, bottom+8, d.fit(text, WholeWidth))
+		return
+	}
+	d.Small(text)
 }

@@ -54,6 +54,7 @@ Results go to stdout, words for people to stderr. Exit codes:
 		newPath(env),
 		newReport(env),
 		newServe(env),
+		newShift(env),
 		newModes(env),
 		newTuning(env),
 		newFlux(env),

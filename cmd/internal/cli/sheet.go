@@ -123,20 +123,31 @@ func (s *sheet) jsonRows() (json.RawMessage, error) {
 		if i > 0 {
 			b.WriteByte(',')
 		}
-		b.WriteByte('{')
-		for j, v := range r {
-			if j > 0 {
-				b.WriteByte(',')
-			}
-			text, err := s.jsonCell(j, v)
-			if err != nil {
-				return nil, err
-			}
-			fmt.Fprintf(b, "%q:%s", s.columns[j].name, text)
+		row, err := s.rowJSON(r)
+		if err != nil {
+			return nil, err
 		}
-		b.WriteByte('}')
+		b.Write(row)
 	}
 	b.WriteByte(']')
+	return b.Bytes(), nil
+}
+
+// rowJSON writes a row as an object.
+func (s *sheet) rowJSON(row []any) ([]byte, error) {
+	var b bytes.Buffer
+	b.WriteByte('{')
+	for j, v := range row {
+		if j > 0 {
+			b.WriteByte(',')
+		}
+		text, err := s.jsonCell(j, v)
+		if err != nil {
+			return nil, err
+		}
+		fmt.Fprintf(&b, "%q:%s", s.columns[j].name, text)
+	}
+	b.WriteByte('}')
 	return b.Bytes(), nil
 }
 

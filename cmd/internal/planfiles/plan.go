@@ -21,6 +21,7 @@ var planMust = []string{"station", "antenna", "spacecraft", "start_utc", "end_ut
 // volume and value.
 type PlanRow struct {
 	contacts.PlanRow
+	Transmitter             string    // empty where it says nothing
 	SetUpStart, TearDownEnd time.Time // zero where it says nothing
 	VolumeBytes, Value      float64
 }
@@ -35,7 +36,7 @@ func Plan(file string, r io.Reader, clock Clock) ([]PlanRow, error) {
 	}
 	out := make([]PlanRow, 0, len(rows))
 	for _, r := range rows {
-		p := PlanRow{VolumeBytes: r.numberOrNaN("volume_bytes"), Value: r.numberOrNaN("value"),
+		p := PlanRow{Transmitter: r.text("transmitter"), VolumeBytes: r.numberOrNaN("volume_bytes"), Value: r.numberOrNaN("value"),
 			SetUpStart: r.instantOrZero("setup_start_utc"), TearDownEnd: r.instantOrZero("teardown_end_utc")}
 		p.PlanRow = contacts.PlanRow{
 			Place: r.place(), Contact: r.text("contact"), Request: r.text("request"), Station: r.text("station"), Antenna: r.text("antenna"),
