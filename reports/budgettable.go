@@ -10,6 +10,7 @@ import (
 
 // budgetView is a table with a column for each instant.
 type budgetView struct {
+	Name   string // what the table holds, for those who hear it
 	Corner string // heading of the first column
 	Heads  []string
 	Parts  []budgetPart
@@ -35,7 +36,7 @@ type budgetRow struct {
 // margin and the rate.
 func budgetTable(p *Pass) budgetView {
 	all := budgetsOf(p)
-	view := budgetView{Corner: "term"}
+	view := budgetView{Name: "Link budget", Corner: "term"}
 	for _, b := range all {
 		view.Heads = append(view.Heads, b.name)
 	}
@@ -171,7 +172,7 @@ func noiseTable(p *Pass) budgetView {
 	}
 	rows = append(rows, budgetRow{Name: "system noise", Unit: "K", Source: "sum, at the input of the first amplifier", Result: true,
 		Cells: value(all, 1, func(b *downlink.Budget) float64 { return b.SystemNoise.Kelvins() })})
-	view := budgetView{Corner: "part", Parts: []budgetPart{{Rows: rows}}}
+	view := budgetView{Name: "System noise", Corner: "part", Parts: []budgetPart{{Rows: rows}}}
 	for _, b := range all {
 		view.Heads = append(view.Heads, b.name)
 	}

@@ -5,7 +5,7 @@ import "time"
 // eventTable lays AOS, culmination and LOS side by side.
 func eventTable(p *Pass) budgetView {
 	f, ev, layout := p.Profile, events(p), layoutOf(p)
-	view := budgetView{Corner: "event"}
+	view := budgetView{Name: "Begin, culmination and end", Corner: "event"}
 	line := func(name, unit string, write func(event) string) budgetRow {
 		r := budgetRow{Name: name, Unit: unit}
 		for _, e := range ev {

@@ -121,7 +121,7 @@ func TimelinePage(t *Timeline) ([]byte, error) {
 		return nil, fmt.Errorf("report: a plan from %s to %s has no length", t.From, t.To)
 	}
 	v := timelineView{Timeline: t}
-	v.Title, v.Policy = t.Head, "default-src 'none'; style-src 'unsafe-inline'; base-uri 'none'; form-action 'none'"
+	v.Title, v.Policy = t.Head, "default-src 'none'; style-src 'unsafe-inline'; img-src data:; base-uri 'none'; form-action 'none'"
 	v.Style = template.HTML("<style>" + styleSheet + timelineStyle + "</style>")
 	for i, name := range t.Spacecraft {
 		v.Legend = append(v.Legend, letter(i)+" "+name)

@@ -72,7 +72,7 @@ func uplinkViews(p *Pass) []uplinkView {
 			v.Works = append(v.Works, utcClock(c.From, layoutOf(p))+" to "+utcClock(c.To, layoutOf(p)))
 		}
 		if r := u.Radiation; r != nil {
-			v.Radiation = &radiationView{budgetView{Corner: "figure", Heads: []string{"value"}, Parts: []budgetPart{{Rows: radiationRows(r)}}}, r.Caution}
+			v.Radiation = &radiationView{budgetView{Name: "Radiation of the station", Corner: "figure", Heads: []string{"value"}, Parts: []budgetPart{{Rows: radiationRows(r)}}}, r.Caution}
 		}
 		list = append(list, v)
 	}
@@ -99,7 +99,7 @@ func (u *Uplink) budgets(p *Pass) []namedBudget {
 // uplinkTable lays the budgets of an uplink side by side.
 func uplinkTable(p *Pass, u *Uplink) budgetView {
 	all := u.budgets(p)
-	view := budgetView{Corner: "term"}
+	view := budgetView{Name: "Uplink budget", Corner: "term"}
 	for _, b := range all {
 		view.Heads = append(view.Heads, b.name)
 	}

@@ -111,7 +111,7 @@
       var colour = k ? p.lines[k % 2] : p.ink;
       s.lineStyle.color = colour;
       s.lineStyle.width = k ? 1.5 : 2.5;
-      s.itemStyle = { color: colour };
+      s.itemStyle = hollow(s, colour, p) || { color: colour };
       if (s.symbol === 'none') { return; }
       s.symbolSize = 8;
       var step = Math.max(1, Math.round(s.data.length / 9));
@@ -122,6 +122,13 @@
     o.legend.itemGap = 10;
     o.legend.itemStyle = {};
     o.legend.data = o.series.map(function (s) { return s.symbol === 'none' ? { name: s.name, itemStyle: { opacity: 0 } } : s.name; });
+  }
+
+  // hollow makes an open symbol of the page's colour inside, which the library has white.
+  function hollow(s, colour, p) {
+    if (!s.symbol || s.symbol.indexOf('empty') !== 0) { return null; }
+    s.symbol = s.symbol.charAt(5).toLowerCase() + s.symbol.slice(6);
+    return { color: p.paper, borderColor: colour, borderWidth: 2 };
   }
 
   // positive leaves gaps where a logarithmic scale has no place.
@@ -148,7 +155,7 @@
   function marked(o, spec, p) {
     var s = o.series[o.series.length - 1];
     s.markArea = {
-      silent: true, itemStyle: { color: spec.bare ? 'transparent' : tile(6, p.soft, dots), borderColor: p.soft, borderWidth: 1 }, label: { color: p.ink, fontSize: 11, position: 'top', distance: 1 },
+      silent: true, itemStyle: { color: spec.bare ? 'transparent' : tile(6, p.soft, dots), borderColor: p.soft, borderWidth: 1 }, label: { color: p.ink, fontSize: 11, position: 'top', distance: 3 },
       data: spec.marks.map(function (m) { return [{ xAxis: m.from, name: m.label }, { xAxis: m.to }]; })
     };
   }
@@ -198,6 +205,10 @@
       if (s.areaStyle) { s.areaStyle.color = p.soft; s.areaStyle.opacity = 0.18; s.lineStyle.width = 1; }
       if (s.type === 'scatter') {
         s.itemStyle = { color: p.lines[0], borderColor: p.paper, borderWidth: 1 };
+        s.data.forEach(function (q) {
+          var open = hollow(q, p.lines[0], p);
+          if (open) { q.itemStyle = open; }
+        });
         s.label.color = p.ink;
         s.label.fontSize = 11;
         s.label.textBorderColor = p.paper;
@@ -367,7 +378,7 @@
     });
     window.addEventListener('beforeprint', function () {
       page.classList.add('printing');
-      draw({ width: 336, height: 205, many: 285, sky: 410, wide: 690 });
+      draw({ width: 336, height: 205, many: 285, sky: 310, wide: 690 });
     });
     window.addEventListener('afterprint', function () {
       page.classList.remove('printing');

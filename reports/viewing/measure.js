@@ -50,7 +50,8 @@
     let c = ground(root);
     for (const e of root.querySelectorAll('path, rect, circle, ellipse, polygon')) {
       if (!(e.compareDocumentPosition(text) & Node.DOCUMENT_POSITION_FOLLOWING)) { break; }
-      if (e.closest('defs, clipPath, pattern, mask, symbol') || !e.checkVisibility()) { continue; }
+      const b = e.getBoundingClientRect();
+      if (b.left > box.right || b.right < box.left || b.top > box.bottom || b.bottom < box.top || e.closest('defs, clipPath, pattern, mask, symbol') || !e.checkVisibility()) { continue; }
       const s = getComputedStyle(e), fill = colour(s.fill), matrix = e.getScreenCTM();
       if (!fill || !matrix) { continue; }
       const at = new DOMPoint(box.x + box.width / 2, box.y + box.height / 2).matrixTransform(matrix.inverse());
@@ -88,7 +89,8 @@
   function overflow() {
     const wide = document.documentElement.scrollWidth, have = document.documentElement.clientWidth;
     if (wide <= have) { return []; }
-    const who = [...document.body.querySelectorAll('*')].filter(e => shown(e) && e.getBoundingClientRect().right > have + 0.5 && !e.parentElement.closest('.scroll, svg')).slice(0, 4).map(called);
+    const out = e => Math.max(e.getBoundingClientRect().right, e.getBoundingClientRect().left + e.scrollWidth) > have + 0.5;
+    const who = [...document.body.querySelectorAll('*')].filter(e => shown(e) && out(e) && !e.parentElement.closest('.scroll, svg') && ![...e.children].some(out)).slice(0, 4).map(called);
     return [`the page is ${wide} px wide on ${have} px: ${who.join(', ')}`];
   }
 
@@ -156,7 +158,8 @@
         return b.width + b.height > 0 && shown(e);
       });
       const ink = [...c.querySelectorAll('canvas')].some(k => k.getContext('2d').getImageData(0, 0, k.width, k.height).data.some(v => v > 0));
-      if (marks.length < 3 && !ink) { faults.push(`${called(c)}: ${marks.length} marks`); }
+      const line = [...c.querySelectorAll('polyline')].some(l => l.points.numberOfItems > 2);
+      if (marks.length < 3 && !line && !ink) { faults.push(`${called(c)}: ${marks.length} marks`); }
     }
     return faults;
   }

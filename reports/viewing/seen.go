@@ -16,14 +16,14 @@ import (
 type Seen struct {
 	mutex       sync.Mutex
 	said, asked []string
-	bytes       map[string]float64 // by address, as they came last
+	bytes       map[string]int // by address, as they came last
 	address     map[network.RequestID]string
 }
 
 // Observe records console messages, faults and requests of the pages shown in ctx.
 func Observe(t *testing.T, ctx context.Context) *Seen {
 	t.Helper()
-	s := &Seen{bytes: map[string]float64{}, address: map[network.RequestID]string{}}
+	s := &Seen{bytes: map[string]int{}, address: map[network.RequestID]string{}}
 	if err := chromedp.Listen(ctx, s.hear); err != nil {
 		t.Fatal(err)
 	}
@@ -45,8 +45,9 @@ func (s *Seen) hear(ev any) {
 	case *network.EventRequestWillBeSent:
 		s.asked = append(s.asked, e.Request.URL)
 		s.address[e.RequestID] = e.Request.URL
+		s.bytes[e.Request.URL] = 0
 	case *network.EventDataReceived:
-		s.bytes[s.address[e.RequestID]] += float64(e.DataLength)
+		s.bytes[s.address[e.RequestID]] += int(e.DataLength)
 	}
 }
 
