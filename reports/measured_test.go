@@ -158,5 +158,5 @@ func TestMeasuredInTheBrowser(t *testing.T) {
 			t.Errorf("%d px wide on a screen of %d", wide, s.width)
 		}
 	}
-	said.Quiet(t)
+	said.Quiet(t, "file://")
 }
