@@ -16,9 +16,10 @@ type Verdict struct {
 type Answer struct {
 	Now       *Outcome // the scenario's own antennas
 	Verdicts  []Verdict
-	Satisfied bool  // by the scenario's own
-	Together  Found // the least diameter that meets all
-	Binding   int   // among the verdicts: the one that asks for the most, or cannot be met; -1 where nothing is required
+	Satisfied bool     // by the scenario's own
+	Together  Found    // the least diameter that meets all
+	Then      *Outcome // what that diameter brings; nil where none meets all
+	Binding   int      // among the verdicts: the one that asks for the most, or cannot be met; -1 where nothing is required
 	Trade     []*Outcome
 	Limit     Limit
 }
@@ -65,6 +66,11 @@ func (s *Study) Answer(r Range, progress func(done, total int)) (*Answer, error)
 			return nil, err
 		}
 		a.Binding = binding(a.Verdicts, a.Together)
+		if d := a.Together.Diameter; d > 0 {
+			if a.Then, err = s.Outcome(Variant{Diameter: d}); err != nil {
+				return nil, err
+			}
+		}
 	}
 	a.Limit, err = s.limit(a.Trade, r)
 	tell(total)

@@ -76,6 +76,9 @@ func (f *Family) Antenna(template *station.Antenna, d unit.Length) (*station.Ant
 		return nil, fmt.Errorf("antenna %q: a diameter can only be sought of a dish with diameter, efficiency and noise; gain, beamwidth and G/T as measured do not follow the diameter", template.Name)
 	}
 	a := *template
+	if d != template.Diameter {
+		a.Mount, _ = template.MountFor(d)
+	}
 	a.Diameter = d
 	if f.SurfaceShare > 0 {
 		a.SurfaceRMS = unit.Length(f.SurfaceShare * d.Metres())

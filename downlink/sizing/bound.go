@@ -4,6 +4,7 @@ import (
 	"math"
 
 	"slantwise/orbit/unit"
+	"slantwise/station"
 )
 
 // possible tells whether any diameter between two that do not meet all could.
@@ -14,8 +15,12 @@ func (q *search) possible(a, b unit.Length) (bool, error) {
 		return false, err
 	}
 	more += still
+	moved, _ := q.study.Moved()
 	for _, d := range q.grid { // one that has as much more, and does not meet either, excludes it for nothing
 		o := q.study.known[q.at(d)]
+		if moved > 0 { // a greater dish may fail by its mount
+			break
+		}
 		if d <= b || o == nil || q.parts&^o.done != 0 {
 			continue
 		}
@@ -34,7 +39,39 @@ func (q *search) possible(a, b unit.Length) (bool, error) {
 	}
 	v := q.at(a)
 	v.Power += unit.DB(more)
+	v.follows = !q.study.slowing(a, b)
 	return q.met(v)
+}
+
+// slowing tells that no mount follows more with any diameter up to b than with a: beams and
+// tolerances narrow, and the rates do not rise.
+func (s *Study) slowing(a, b unit.Length) bool {
+	for _, i := range s.spec.Sites {
+		m := s.spec.Places[i].Clear.Antenna.Mount
+		if m == nil {
+			continue
+		}
+		before, _ := m.ForDiameter(a)
+		for _, d := range append(rowsWithin(m, a, b), b) {
+			now, _ := m.ForDiameter(d)
+			if now.Lower.Rate > before.Lower.Rate || now.Upper.Rate > before.Upper.Rate {
+				return false
+			}
+			before = now
+		}
+	}
+	return true
+}
+
+// rowsWithin lists the diameters between two at which the change of a mount's rates changes.
+func rowsWithin(m *station.Mount, a, b unit.Length) []unit.Length {
+	var out []unit.Length
+	for _, r := range m.ByDiameter {
+		if r.Diameter > a && r.Diameter < b {
+			out = append(out, r.Diameter)
+		}
+	}
+	return out
 }
 
 // stiller returns how much less the weather takes with the aperture of b than with that

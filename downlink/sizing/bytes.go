@@ -12,41 +12,56 @@ func (w *work) bytes() error {
 	s := w.study
 	w.days = make([]float64, int(math.Ceil(s.spec.Flight.Days)))
 	turns, weight := s.sampled(w.variant.thin)
-	tracks := make([]rateplan.Track, len(turns))
-	clear := make([][]float64, len(turns))
+	tracks := make([]passTrack, len(turns))
 	for k, t := range turns {
-		tracks[k], clear[k] = w.track(t)
+		tracks[k] = w.track(t)
 	}
 	if s.spec.Settles {
-		if err := s.spec.Rates.Settle(tracks); err != nil {
+		all := make([]rateplan.Track, len(tracks))
+		for k := range tracks {
+			all[k] = tracks[k].Track
+		}
+		if err := s.spec.Rates.Settle(all); err != nil {
 			return err
 		}
 	}
 	w.out.ClearBytesPerDay, w.out.WorstMonthBytesPerDay = 0, 0
+	w.out.MountLostBytesPerDay, w.out.NotFollowedSPerDay = 0, 0
 	for k := range tracks {
-		plan, modes, err := s.spec.Rates.Plan(tracks[k])
+		plan, modes, err := s.spec.Rates.Plan(tracks[k].Track)
 		if err != nil {
 			return err
 		}
-		w.count(turns[k], &tracks[k], clear[k], &plan, modes, weight[turns[k].Site])
+		many := weight[turns[k].Site]
+		mean := w.count(turns[k].Site, &tracks[k], &plan, modes, many)
 		if s.spec.Latency != nil && !math.IsNaN(s.spec.Needs.Latency) {
-			w.contacts = append(w.contacts, contactOf(&s.spec, turns[k], &tracks[k], &plan))
+			w.contacts = append(w.contacts, contactOf(&s.spec, turns[k], &tracks[k].Track, &plan))
+		}
+		if err := w.miss(turns[k], &tracks[k], mean, many); err != nil {
+			return err
 		}
 	}
 	w.total()
 	return w.latency()
 }
 
-// track returns the samples of a turn, and C/N0 under a clear sky beside that under the
-// planned weather.
-func (w *work) track(t Turn) (track rateplan.Track, clear []float64) {
-	flight := w.study.spec.Flight
-	y := &flight.Sites[t.Site]
-	_, to := y.Samples(t.Pass)
-	n := to - t.From
-	both := make([]float64, 2*n)
-	w.levels(t.Site, t.From, to, both[:n], both[n:])
-	return rateplan.Track{Start: flight.Start, Seconds: y.Seconds[t.From:to], CN0DBHz: both[:n]}, both[n:]
+// miss counts what the mount takes of a turn of which so many bytes come down with it.
+func (w *work) miss(t Turn, track *passTrack, mean, weight float64) error {
+	whole := track.whole
+	if whole == nil {
+		return nil
+	}
+	s := w.study
+	plan, modes, err := s.spec.Rates.Plan(whole.Track)
+	if err != nil {
+		return err
+	}
+	all := 0.0
+	w.sent(t.Site, whole, &plan, modes, func(_ int, bytes, year, _ float64) { all += bytes * (1 - year) })
+	w.out.MountLostBytesPerDay += weight * all
+	w.out.MountLostBytesPerDay -= mean
+	w.out.NotFollowedSPerDay += weight * lostOf(w.outages[t.Site].of(t.Pass), whole.Seconds[0], whole.Seconds[len(whole.Seconds)-1])
+	return nil
 }
 
 // gaps finds the longest time between two contacts in which anything closes under the
@@ -54,8 +69,8 @@ func (w *work) track(t Turn) (track rateplan.Track, clear []float64) {
 func (w *work) gaps() error {
 	last, gap := 0.0, 0.0
 	for _, t := range w.study.turns {
-		track, _ := w.track(t)
-		if from, until, ok := closing(&track, w.study.need); ok {
+		track := w.track(t)
+		if from, until, ok := closing(&track.Track, w.study.need); ok {
 			gap, last = max(gap, from-last), until
 		}
 	}
@@ -96,32 +111,36 @@ func (w *work) total() {
 	w.out.BytesPerDay = sum / days
 	w.out.ClearBytesPerDay /= days
 	w.out.WorstMonthBytesPerDay /= days
+	w.out.MountLostBytesPerDay /= days
+	w.out.NotFollowedSPerDay /= days
 	w.out.WorstWeekBytesPerDay = worst / 7
 }
 
 // count adds the bytes of a plan: each stretch between two samples at its rate, by the
 // share of the year in which the weather leaves the mode what it needs, as many times as
-// the pass stands for.
-func (w *work) count(t Turn, track *rateplan.Track, clear []float64, plan *rateplan.Plan, modes []rateplan.Mode, weight float64) {
-	day := &w.days[min(int(track.Seconds[0]/86400), len(w.days)-1)]
-	w.sent(t, track, clear, plan, modes, func(_ int, bytes, year, month float64) {
+// the pass stands for. It returns the mean bytes that it has added.
+func (w *work) count(site int, track *passTrack, plan *rateplan.Plan, modes []rateplan.Mode, weight float64) float64 {
+	mean := 0.0
+	w.sent(site, track, plan, modes, func(_ int, bytes, year, month float64) {
 		bytes *= weight
-		*day += bytes * (1 - year)
+		mean += bytes * (1 - year)
 		w.out.ClearBytesPerDay += bytes
 		w.out.WorstMonthBytesPerDay += bytes * (1 - month)
 	})
+	w.days[min(int(track.Seconds[0]/86400), len(w.days)-1)] += mean
+	return mean
 }
 
 // sent calls add for each stretch of a plan in which data are sent: the sample of the
 // track at its end, the bytes, and the shares of the average year and of its worst month in which
 // the weather takes them.
-func (w *work) sent(t Turn, track *rateplan.Track, clear []float64, plan *rateplan.Plan, modes []rateplan.Mode, add func(i int, bytes, year, month float64)) {
+func (w *work) sent(site int, track *passTrack, plan *rateplan.Plan, modes []rateplan.Mode, add func(i int, bytes, year, month float64)) {
 	if len(plan.Steps) == 0 {
 		return
 	}
-	st, f := &w.study.sites[t.Site], w.fronts[t.Site]
+	st, f, clear := &w.study.sites[site], w.fronts[site], track.clear
 	relock := w.study.spec.Rates.Rules().Relock.Seconds()
-	starts := stepStarts(track, plan)
+	starts := stepStarts(&track.Track, plan)
 	step, locked, running := -1, math.Inf(-1), false
 	for i := 1; i < len(track.Seconds); i++ {
 		a, b := track.Seconds[i-1], track.Seconds[i]
@@ -147,7 +166,7 @@ func (w *work) sent(t Turn, track *rateplan.Track, clear []float64, plan *ratepl
 			continue
 		}
 		bytes := seconds * mode.NetRate.BitsPerSecond() / 8
-		year, month := f.under(st.air, st.place[t.From+i], slack)
+		year, month := f.under(st.air, track.at[i], slack)
 		add(i, bytes, year, month)
 	}
 }

@@ -49,6 +49,8 @@ type Flight struct {
 	Days  float64
 	Step  time.Duration
 	Sites []SiteYear // as in the spec
+
+	ephemeris *orbit.Ephemeris
 }
 
 // SiteYear holds the passes over one site and, in columns, their samples.
@@ -96,7 +98,7 @@ func Fly(ctx context.Context, spec FlightSpec) (*Flight, error) {
 	if err != nil {
 		return nil, err
 	}
-	f := &Flight{Orbit: spec.Orbit, Start: spec.Start, Days: spec.Days, Step: spec.Step, Sites: make([]SiteYear, len(spec.Sites))}
+	f := &Flight{Orbit: spec.Orbit, Start: spec.Start, Days: spec.Days, Step: spec.Step, Sites: make([]SiteYear, len(spec.Sites)), ephemeris: eph}
 	total := 0
 	for i, s := range spec.Sites {
 		if f.Sites[i].Passes, err = pass.Search(eph, s.Site, pass.Window{From: spec.Start, To: end}, spec.Horizon); err != nil {

@@ -3,6 +3,7 @@ package sizing
 import (
 	"errors"
 	"math"
+	"slices"
 
 	"slantwise/orbit/unit"
 )
@@ -58,7 +59,8 @@ type Found struct {
 // errors take more than the aperture gives. But over a stretch of diameters from a to b
 // the gain rises by no more than 20 log(b/a), and scintillation falls by no more than
 // it does between the ends; what does not meet with that much more power does not meet
-// anywhere in the stretch. Stretches that this does not exclude are halved down to the
+// anywhere in the stretch; what a mount does not follow grows over it, or is left out of that
+// where the mount's rates rise. Stretches that this does not exclude are halved down to the
 // resolution. It holds for requirements that more power never makes worse, which margin,
 // availability and gaps are exactly; bytes and latency are but for the plans being made
 // for one weather and counted in all.
@@ -74,11 +76,24 @@ func (s *Study) LeastOf(needs []Need, r Range, base Variant) (Found, error) {
 	if err := r.Check(); err != nil {
 		return Found{}, err
 	}
-	q := search{study: s, needs: needs, grid: r.Grid(), base: base}
+	q := search{study: s, needs: needs, grid: s.grid(r), base: base}
 	for _, n := range needs {
 		q.parts |= n.part
 	}
 	return q.run()
+}
+
+// grid is that of a range with the diameters at which the rates of a mount change
+// otherwise: between two of its diameters bytes have one summit, like margins.
+func (s *Study) grid(r Range) []unit.Length {
+	out := r.Grid()
+	for _, i := range s.spec.Sites {
+		if m := s.spec.Places[i].Clear.Antenna.Mount; m != nil {
+			out = append(out, rowsWithin(m, r.Low, r.High)...)
+		}
+	}
+	slices.Sort(out)
+	return slices.Compact(out)
 }
 
 type search struct {

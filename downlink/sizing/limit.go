@@ -13,6 +13,9 @@ type Limit struct {
 	Peak      unit.Length // at which gain less pointing and surface loss is greatest; 0: it grows on beyond MostDiameter
 	By        []Taker     // what takes more than the aperture gives beyond, the greatest first
 	Saturated unit.Length // the least diameter of the range that brings 99 % of the most bytes; 0: nothing comes down
+	// Turning is the diameter of the range beyond which what the mounts do not follow, by the
+	// keyhole and their rates, grows by more than a greater dish brings; 0: it does not.
+	Turning unit.Length
 }
 
 // Taker is one of the losses that end the growth of the gain at its summit.
@@ -44,8 +47,11 @@ func (s *Study) limit(trade []*Outcome, r Range) (Limit, error) {
 		}
 		l.Saturated = f.Diameter
 	}
-	both := func(pointing, surface float64) float64 { return pointing + surface }
 	var err error
+	if l.Turning, err = s.turningLimit(trade); err != nil {
+		return l, err
+	}
+	both := func(pointing, surface float64) float64 { return pointing + surface }
 	if l.Peak, err = s.summit(both); err != nil || l.Peak == 0 {
 		return l, err
 	}
@@ -78,6 +84,56 @@ func (s *Study) limit(trade []*Outcome, r Range) (Limit, error) {
 	}
 	slices.SortStableFunc(l.By, func(a, b Taker) int { return cmp.Compare(b.Share, a.Share) })
 	return l, nil
+}
+
+// turningShare is the share of the bytes a day by which more dish must bring less before
+// the mount is said to end the growth: plans are made of samples, and bytes waver by less.
+const turningShare = 1e-4
+
+// turningLimit finds where mounts make the bytes a day fall with the diameter that would have grown
+// on without them; 0 where they do not.
+func (s *Study) turningLimit(trade []*Outcome) (unit.Length, error) {
+	top := 0
+	for i, o := range trade {
+		if o.BytesPerDay > trade[top].BytesPerDay {
+			top = i
+		}
+	}
+	if top+1 >= len(trade) {
+		return 0, nil
+	}
+	at, end := trade[top], trade[len(trade)-1]
+	falls := at.BytesPerDay - end.BytesPerDay
+	free := at.BytesPerDay + at.MountLostBytesPerDay - end.BytesPerDay - end.MountLostBytesPerDay
+	if falls < turningShare*at.BytesPerDay || free > falls/2 { // it falls as much with no mount
+		return 0, nil
+	}
+	low, high := trade[max(0, top-1)].Variant.Diameter.Metres(), trade[top+1].Variant.Diameter.Metres()
+	bytes := func(d float64) (float64, error) {
+		o, err := s.outcome(Variant{Diameter: unit.Length(d)}, planned)
+		if err != nil {
+			return 0, err
+		}
+		return o.BytesPerDay, nil
+	}
+	const golden = 0.6180339887498949
+	for high-low > 0.01*high {
+		c, d := high-golden*(high-low), low+golden*(high-low)
+		bc, err := bytes(c)
+		if err != nil {
+			return 0, err
+		}
+		bd, err := bytes(d)
+		if err != nil {
+			return 0, err
+		}
+		if bc >= bd {
+			high = d
+		} else {
+			low = c
+		}
+	}
+	return unit.Length((low + high) / 2), nil
 }
 
 // summit returns the diameter at which the gain less some of the losses is greatest, at

@@ -25,6 +25,9 @@ type Outcome struct {
 	LongestGapH float64 // the year's edges bound gaps, too
 	LatencyH    float64
 
+	MountLostBytesPerDay float64 // what would come down beside BytesPerDay if mounts followed everything; 0 without mounts
+	NotFollowedSPerDay   float64 // of the passes that count
+
 	Price float64 // of one antenna; NaN without a law or a diameter
 
 	done part
@@ -50,7 +53,7 @@ func (s *Study) outcome(v Variant, parts part) (*Outcome, error) {
 	if o == nil {
 		nan := math.NaN()
 		o = &Outcome{Variant: v, BytesPerDay: nan, ClearBytesPerDay: nan, WorstWeekBytesPerDay: nan, WorstMonthBytesPerDay: nan,
-			MarginDB: nan, ShareMarginDB: nan, AvailabilityPercent: nan, WorstMonthAvailabilityPercent: nan, LongestGapH: nan, LatencyH: nan, Price: nan}
+			MarginDB: nan, ShareMarginDB: nan, AvailabilityPercent: nan, WorstMonthAvailabilityPercent: nan, LongestGapH: nan, LatencyH: nan, MountLostBytesPerDay: nan, NotFollowedSPerDay: nan, Price: nan}
 		if p := s.spec.Family.Price; p != nil && v.Diameter > 0 {
 			o.Price = p.At(v.Diameter)
 		}
@@ -59,13 +62,9 @@ func (s *Study) outcome(v Variant, parts part) (*Outcome, error) {
 	if parts == 0 {
 		return o, nil
 	}
-	w := work{study: s, variant: v, fronts: make([]*front, len(s.sites)), out: o}
-	for _, i := range s.spec.Sites {
-		f, err := s.front(i, v)
-		if err != nil {
-			return nil, fmt.Errorf("station %s: %w", s.spec.Flight.Sites[i].Site.Name, err)
-		}
-		w.fronts[i] = f
+	w := work{study: s, variant: v, out: o}
+	if err := w.prepare(); err != nil {
+		return nil, err
 	}
 	for _, step := range []struct {
 		part part
@@ -90,11 +89,30 @@ func (s *Study) outcome(v Variant, parts part) (*Outcome, error) {
 type work struct {
 	study   *Study
 	variant Variant
-	fronts  []*front
+	fronts  []*front  // by site
+	outages []*outage // by site; nil: the antenna follows everything
 	out     *Outcome
 
 	days     []float64 // bytes by day of the year
 	contacts []recorder.Contact
+}
+
+// prepare makes the links of the sites, and finds what their antennas do not follow.
+func (w *work) prepare() error {
+	s := w.study
+	w.fronts, w.outages = make([]*front, len(s.sites)), make([]*outage, len(s.sites))
+	for _, i := range s.spec.Sites {
+		f, err := s.front(i, w.variant)
+		if err == nil && !w.variant.follows {
+			template := s.spec.Places[i].Clear.Antenna
+			w.outages[i], err = s.turning.outage(i, template, f.antenna, s.spec.Places[i].Clear.Transmitter.Frequency)
+		}
+		if err != nil {
+			return fmt.Errorf("station %s: %w", s.spec.Flight.Sites[i].Site.Name, err)
+		}
+		w.fronts[i] = f
+	}
+	return nil
 }
 
 // shift is what a variant adds to every C/N0, in dB.
@@ -163,12 +181,17 @@ func (w *work) under(m float64) (year, month float64) {
 				continue
 			}
 			from, to := at.Samples(p)
+			lost := w.outages[site].of(p)
 			for i := from + 1; i < to; i++ {
 				if !w.usable(at, i-1) || !w.usable(at, i) {
 					continue
 				}
 				dt := at.Seconds[i] - at.Seconds[i-1]
 				total += dt
+				if lost != nil { // is contact, and has no margin
+					gone := lostOf(lost, at.Seconds[i-1], at.Seconds[i])
+					dt, year, month = dt-gone, year+gone, month+gone
+				}
 				if !f.usable {
 					year, month = year+dt, month+dt
 					continue

@@ -113,7 +113,11 @@ func (s *Study) alongAxis(axis Axis, value float64, refit Refit) (*Study, Varian
 	spec := s.spec
 	spec.Places = places
 	of, err := NewStudy(spec)
-	return of, Variant{}, err
+	if err != nil {
+		return nil, Variant{}, err
+	}
+	of.turning = s.turning // the courses are the same
+	return of, Variant{}, nil
 }
 
 // row evaluates the diameters of one value, and where all needs are just met.

@@ -49,6 +49,8 @@ type Study struct {
 	sites []siteStudy // by the flight's sites; those that take no part stay empty
 	need  float64     // least C/N0 with which anything closes, guard included
 
+	turning *turning
+
 	known map[Variant]*Outcome
 	plans int // how often the year was planned
 }
@@ -87,7 +89,7 @@ func NewStudy(spec Spec) (*Study, error) {
 	if err := errors.Join(faults...); err != nil {
 		return nil, err
 	}
-	s.turns = spec.Flight.Turns(spec.Sites)
+	s.turns, s.turning = spec.Flight.Turns(spec.Sites), newTurning(spec.Flight)
 	return s, nil
 }
 
@@ -158,11 +160,22 @@ type Variant struct {
 	Pointing unit.DB          // added to the loss of pointing
 	Noise    unit.Temperature // added to the system noise
 	Raise    unit.Angle       // added to every site's least elevation
+	follows  bool             // mounts follow everything
 	thin     int              // every so many passes are planned, and stand for the others; 0: all
 }
 
 // Plans returns how often the passes of the year were planned.
 func (s *Study) Plans() int { return s.plans }
+
+// Moved tells how many of the sites' antennas have a mount to reckon with, of how many.
+func (s *Study) Moved() (with, of int) {
+	for _, i := range s.spec.Sites {
+		if s.spec.Places[i].Clear.Antenna.Mount != nil {
+			with++
+		}
+	}
+	return with, len(s.spec.Sites)
+}
 
 // Own returns the diameter of the scenario's antennas where all have the same; ok is
 // false otherwise.

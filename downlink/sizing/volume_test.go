@@ -25,20 +25,20 @@ func TestExpectedBytesAgainstDistribution(t *testing.T) {
 		}
 		expected, mean := 0.0, 0.0
 		for _, turn := range s.turns {
-			w := work{study: s, variant: v, fronts: []*front{f}, out: &Outcome{}, days: make([]float64, 8)}
-			track, clear := w.track(turn)
-			plan, modes, err := s.spec.Rates.Plan(track)
+			w := work{study: s, variant: v, fronts: []*front{f}, outages: make([]*outage, 1), out: &Outcome{}, days: make([]float64, 8)}
+			track := w.track(turn)
+			plan, modes, err := s.spec.Rates.Plan(track.Track)
 			if err != nil {
 				t.Fatal(err)
 			}
 			if len(plan.Steps) == 0 {
 				continue
 			}
-			w.count(turn, &track, clear, &plan, modes, 1)
+			w.count(turn.Site, &track, &plan, modes, 1)
 			for _, b := range w.days {
 				expected += b
 			}
-			mean += distributed(t, s, f, turn, &track, clear, &plan)
+			mean += distributed(t, s, f, turn, &track.Track, track.clear, &plan)
 		}
 		if math.Abs(expected/mean-1) > 5e-3 {
 			t.Errorf("%g m: expected %.6g bytes, the distributions' means add up to %.6g", d.Metres(), expected, mean)

@@ -28,12 +28,12 @@ type cellGain struct {
 func (s *Study) Yield(v Variant) (*Yield, error) {
 	f := s.spec.Flight
 	y := &Yield{Days: f.Days, cell: f.Step.Seconds(), sites: make([][]cellGain, len(f.Sites))}
-	w := work{study: s, variant: v, fronts: make([]*front, len(s.sites))}
+	w := work{study: s, variant: v}
+	if err := w.prepare(); err != nil {
+		return nil, err
+	}
 	for _, i := range s.spec.Sites {
 		var err error
-		if w.fronts[i], err = s.front(i, v); err != nil {
-			return nil, err
-		}
 		if y.sites[i], err = w.yield(i, y.cell); err != nil {
 			return nil, err
 		}
@@ -52,27 +52,27 @@ func (w *work) yield(site int, cell float64) ([]cellGain, error) {
 			continue
 		}
 		t := Turn{Site: site, Pass: p, From: from}
-		track, clear := w.track(t)
-		plan, modes, err := s.spec.Rates.Plan(track)
+		track := w.track(t)
+		plan, modes, err := s.spec.Rates.Plan(track.Track)
 		if err != nil {
 			return nil, err
 		}
-		bytes := make([]float64, to-from)
-		w.sent(t, &track, clear, &plan, modes, func(i int, b, taken, _ float64) { bytes[i] += b * (1 - taken) })
-		out = w.cells(out, t, clear, bytes, cell)
+		bytes := make([]float64, len(track.Seconds))
+		w.sent(site, &track, &plan, modes, func(i int, b, taken, _ float64) { bytes[i] += b * (1 - taken) })
+		out = w.cells(out, site, &track, bytes, cell)
 	}
 	return out, nil
 }
 
 // cells spreads a pass over the cells that it touches.
-func (w *work) cells(out []cellGain, t Turn, clear, bytes []float64, cell float64) []cellGain {
-	st, f := &w.study.sites[t.Site], w.fronts[t.Site]
+func (w *work) cells(out []cellGain, site int, track *passTrack, bytes []float64, cell float64) []cellGain {
+	st, f, clear := &w.study.sites[site], w.fronts[site], track.clear
 	first := len(out)
 	for i := 1; i < len(clear); i++ {
-		a, b := st.year.Seconds[t.From+i-1], st.year.Seconds[t.From+i]
+		a, b := track.Seconds[i-1], track.Seconds[i]
 		up := 0.0
 		if c := (clear[i-1] + clear[i]) / 2; !math.IsNaN(c) {
-			taken, _ := f.under(st.air, st.place[t.From+i], c-w.study.spec.Mode.NeedDBHz)
+			taken, _ := f.under(st.air, track.at[i], c-w.study.spec.Mode.NeedDBHz)
 			up = 1 - taken
 		}
 		for k := int32(a / cell); float64(k)*cell < b; k++ {

@@ -63,6 +63,11 @@ func (p *Plan) LostSeconds() float64 {
 	return sum
 }
 
+// Over returns the spans in which the error on the sky is greater than a tolerance, as Lost
+// is for that of the plan. A plan for no tolerance so serves every other: it follows at
+// least as much exactly, and loses a little more than one that is planned for the tolerance.
+func (p *Plan) Over(tolerance unit.Angle) []Span { return p.lost(max(tolerance, exact)) }
+
 // OffTrackSeconds returns how long the mount is not exactly on track, within the
 // tolerance or not. It never grows with the rates and accelerations of the axes.
 func (p *Plan) OffTrackSeconds() float64 {

@@ -189,6 +189,7 @@ func (d *dishStudy) tradeSheet(a *sizing.Answer) *sheet {
 		numbersAs("margin_at_elevation_db", "margin dB", 3), numbersAs("margin_for_contact_share_db", "margin for share dB", 3),
 		numbersAs("availability_percent", "available %", 4), numbersAs("worst_month_availability_percent", "worst month %", 4),
 		numbersAs("longest_gap_h", "longest gap h", 3), numbersAs("latency_p95_h", "95 % age h", 3), numbersAs("price", "price", 2), wordsAs("satisfies", "all met"),
+		numbersAs("mount_lost_bytes_per_day", "mount takes", 0), numbersAs("not_followed_s_per_day", "not followed s", 1),
 	}}
 	for _, o := range a.Trade {
 		met := "yes"
@@ -201,7 +202,7 @@ func (d *dishStudy) tradeSheet(a *sizing.Answer) *sheet {
 			met = ""
 		}
 		out.rows = append(out.rows, []any{o.Variant.Diameter.Metres(), o.BytesPerDay, o.ClearBytesPerDay, o.WorstWeekBytesPerDay, o.WorstMonthBytesPerDay,
-			o.MarginDB, o.ShareMarginDB, o.AvailabilityPercent, o.WorstMonthAvailabilityPercent, o.LongestGapH, o.LatencyH, o.Price, met})
+			o.MarginDB, o.ShareMarginDB, o.AvailabilityPercent, o.WorstMonthAvailabilityPercent, o.LongestGapH, o.LatencyH, o.Price, met, o.MountLostBytesPerDay, o.NotFollowedSPerDay})
 	}
 	return out
 }

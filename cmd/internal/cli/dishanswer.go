@@ -22,6 +22,7 @@ type dishJSON struct {
 	PeakBy       *string           `json:"gain_peak_by"` // the greatest of the next
 	PeakTakers   []takerJSON       `json:"gain_peak_contributors"`
 	Saturated    number            `json:"bytes_saturated_diameter_m"`
+	Mounts       *dishMountJSON    `json:"mounts"` // null where no antenna has one
 	Own          []ownJSON         `json:"own_antennas"`
 	Notes        []budgetNoteJSON  `json:"assumptions"`
 }
@@ -51,6 +52,15 @@ type takerJSON struct {
 	Alone number `json:"alone_diameter_m"` // where the summit were by this loss alone
 }
 
+// dishMountJSON is what mounts do not follow; Then is at the least diameter that meets all.
+type dishMountJSON struct {
+	Limit           number `json:"limit_diameter_m"` // beyond which they take more than a larger dish brings; null: not within the range
+	Lost            number `json:"lost_bytes_per_day"`
+	NotFollowed     number `json:"not_followed_s_per_day"`
+	LostThen        number `json:"lost_bytes_per_day_at_the_least"`
+	NotFollowedThen number `json:"not_followed_s_per_day_at_the_least"`
+}
+
 type ownJSON struct {
 	Station  string `json:"station"`
 	Antenna  string `json:"antenna"`
@@ -60,11 +70,7 @@ type ownJSON struct {
 func (d *dishStudy) writeAnswer(env *Env, a *sizing.Answer, f format) error {
 	switch f {
 	case formatJSON:
-		out, err := d.answerJSON(a)
-		if err != nil {
-			return err
-		}
-		return writeJSON(env.Out, out)
+		return writeJSON(env.Out, d.answerJSON(a))
 	case formatCSV:
 		for _, l := range d.sentences(a) {
 			env.note("%s", printable(l))
@@ -115,7 +121,7 @@ func diameterOr(d float64) float64 {
 	return d
 }
 
-func (d *dishStudy) answerJSON(a *sizing.Answer) (*dishJSON, error) {
+func (d *dishStudy) answerJSON(a *sizing.Answer) *dishJSON {
 	out := &dishJSON{Satisfied: a.Satisfied, Least: num(diameterOr(a.Together.Diameter.Metres()), 4), Greatest: num(diameterOr(a.Together.Most.Metres()), 4),
 		Requirements: []requirementJSON{}, Sentence: strings.Join(d.sentences(a), " "), Peak: num(diameterOr(a.Limit.Peak.Metres()), 3),
 		Saturated: num(diameterOr(a.Limit.Saturated.Metres()), 3), PeakTakers: []takerJSON{}, Notes: []budgetNoteJSON{}}
@@ -125,13 +131,7 @@ func (d *dishStudy) answerJSON(a *sizing.Answer) (*dishJSON, error) {
 		}
 		out.PeakTakers = append(out.PeakTakers, takerJSON{t.Loss, num(100*t.Share, 2), num(diameterOr(t.Alone.Metres()), 3)})
 	}
-	var then *sizing.Outcome
-	if a.Together.Diameter > 0 {
-		var err error
-		if then, err = d.study.Outcome(sizing.Variant{Diameter: a.Together.Diameter}); err != nil {
-			return nil, err
-		}
-	}
+	then := a.Then
 	for i := range a.Verdicts {
 		v := &a.Verdicts[i]
 		name := string(v.Kind)
@@ -149,6 +149,13 @@ func (d *dishStudy) answerJSON(a *sizing.Answer) (*dishJSON, error) {
 	if n := a.Together.Nearest; n != nil {
 		out.Nearest = &nearestJSON{num(n.Variant.Diameter.Metres(), 4), d.misses(a)}
 	}
+	if with, _ := d.study.Moved(); with > 0 {
+		out.Mounts = &dishMountJSON{Limit: num(diameterOr(a.Limit.Turning.Metres()), 3), Lost: num(a.Now.MountLostBytesPerDay, 0), NotFollowed: num(a.Now.NotFollowedSPerDay, 3),
+			LostThen: num(none, 0), NotFollowedThen: num(none, 3)}
+		if then != nil {
+			out.Mounts.LostThen, out.Mounts.NotFollowedThen = num(then.MountLostBytesPerDay, 0), num(then.NotFollowedSPerDay, 3)
+		}
+	}
 	for i := range d.links {
 		c := &d.links[i]
 		out.Own = append(out.Own, ownJSON{c.station.Site.Name, c.antenna.Name, num(diameterOr(c.antenna.Diameter.Metres()), 4)})
@@ -156,7 +163,7 @@ func (d *dishStudy) answerJSON(a *sizing.Answer) (*dishJSON, error) {
 	for _, n := range d.notes {
 		out.Notes = append(out.Notes, budgetNoteJSON{n.Kind.String(), n.Text})
 	}
-	return out, nil
+	return out
 }
 
 // sentences says the answer, the first sentence first.
@@ -230,38 +237,6 @@ func (d *dishStudy) misses(a *sizing.Answer) string {
 		text += "; " + strings.Join(alone, ", ")
 	}
 	return text + "."
-}
-
-// limits tells where more dish stops helping.
-func (d *dishStudy) limits(a *sizing.Answer) []string {
-	var out []string
-	if l := a.Limit; l.Saturated > 0 {
-		out = append(out, fmt.Sprintf("%s brings 99 %% of the most bytes of the range.", metres(l.Saturated.Metres())))
-	}
-	if l := a.Limit; l.Peak > 0 {
-		out = append(out, fmt.Sprintf("Beyond %s more dish is no more gain: %s.", metres(l.Peak.Metres()), takersText(l.By)))
-	}
-	return out
-}
-
-// takersText names all that takes more than a greater aperture gives.
-func takersText(by []sizing.Taker) string {
-	var names, alone []string
-	for _, t := range by {
-		name := t.Loss + " error"
-		if len(by) > 1 {
-			names = append(names, fmt.Sprintf("%s (%.0f %%)", name, 100*t.Share))
-		} else {
-			names = append(names, name)
-		}
-		if t.Alone > 0 {
-			alone = append(alone, fmt.Sprintf("by the %s alone %s", name, metres(t.Alone.Metres())))
-		}
-	}
-	if len(by) == 1 {
-		return "the " + names[0] + " takes more than the aperture gives"
-	}
-	return fmt.Sprintf("the %s take more than the aperture gives (%s)", strings.Join(names, " and the "), strings.Join(alone, ", "))
 }
 
 func requirementText(k sizing.Kind) string {

@@ -63,12 +63,8 @@ func (r *dishReport) write(env *Env, dir string) error {
 		files = append(files, reports.DishFile{Name: name, What: what})
 		return writeWhole(filepath.Join(dir, name), content)
 	}
-	answer, err := r.study.answerJSON(r.answer)
-	if err != nil {
-		return err
-	}
 	var b bytes.Buffer
-	if err := writeJSON(&b, answer); err != nil {
+	if err := writeJSON(&b, r.study.answerJSON(r.answer)); err != nil {
 		return err
 	}
 	if err := put("answer.json", "the whole answer", b.Bytes()); err != nil {

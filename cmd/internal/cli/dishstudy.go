@@ -212,7 +212,7 @@ func (d *dishStudy) fly(ctx context.Context, env *Env, kept *orbit.KeptOrbit) er
 		}
 		c.link = link
 		spec.Sites = append(spec.Sites, sizing.FlightSite{Site: &c.station.Site, Link: link, Keep: func(p *downlink.Profile) error {
-			_, _, err := keepToLimits(s, c, p)
+			_, err := keepToLicences(s, c, p)
 			return err
 		}})
 	}

@@ -2,7 +2,7 @@ package cli
 
 import (
 	"fmt"
-	"slices"
+	"strings"
 	"time"
 
 	"slantwise/downlink"
@@ -62,10 +62,8 @@ func (d *dishStudy) tell() {
 	for _, text := range rulesNotes(&d.spacecraft.RatePlan, d.transmitter) {
 		d.note(downlink.Assumption, "%s", text)
 	}
-	d.note(downlink.Assumption, "the Sun and the Moon in the beam, interference, outages of the station and what a mount cannot follow are left out (slantwise follow --help tells the last)")
-	if slices.ContainsFunc(d.links, func(c chosenLink) bool { return c.antenna.Mount != nil }) {
-		d.note(downlink.Assumption, "contacts leave out what the mounts cannot follow, with the rates and the beam of the scenario's own diameters")
-	}
+	d.note(downlink.Assumption, "the Sun and the Moon in the beam, interference and outages of the station are left out")
+	d.tellMounts()
 	for i := range d.links {
 		c := &d.links[i]
 		if len(c.sky.missing) > 0 {
@@ -77,5 +75,28 @@ func (d *dishStudy) tell() {
 	}
 	if f := d.transmitter.Frequency; s.Path.Ionosphere && f <= unit.Gigahertz {
 		d.note(downlink.Warning, "the ionosphere's fades are not in the statistics of the year")
+	}
+}
+
+// tellMounts notes how the mounts enter the year, or that none is stated.
+func (d *dishStudy) tellMounts() {
+	with, of := d.study.Moved()
+	if with < of {
+		var names []string
+		for i := range d.links {
+			if d.links[i].antenna.Mount == nil {
+				names = append(names, d.links[i].station.Site.Name)
+			}
+		}
+		d.note(downlink.Assumption, "no mount is stated at %s: what it cannot follow, by slewing and the keyhole, is not counted there; give the antenna the key mount", strings.Join(names, ", "))
+	}
+	if with == 0 {
+		return
+	}
+	d.note(downlink.Assumption, "what a mount does not follow, with an error over following_error_deg or a tenth of the beam of each diameter, brings nothing and is contact time without margin; every pass has all the time that the mount needs beforehand")
+	for i := range d.links {
+		if m := d.links[i].antenna.Mount; m != nil && len(m.ByDiameter) == 0 {
+			d.note(downlink.Assumption, "rates_by_diameter left out at %s: mounts of other diameters turn as the scenario's", d.links[i].station.Site.Name)
+		}
 	}
 }

@@ -165,7 +165,7 @@ func (j *followJob) take(a *station.Antenna, m *station.Mount, chasing bool) (fo
 	of.Mount = m
 	var out followed
 	for _, c := range j.courses {
-		_, tolerance := followingTolerance(&of, c.frequency)
+		_, tolerance := of.FollowingError(c.frequency)
 		p := drive.Plan(c.course, mount.Options{Tolerance: tolerance})
 		if chasing {
 			p = p.Chase(tolerance)
@@ -208,8 +208,8 @@ func (j *followJob) sheet(env *Env, o *followOptions) (*sheet, error) {
 	for _, d := range o.diametersM {
 		a := *j.antenna
 		a.Diameter, a.Beamwidth = unit.Length(d), 0
-		m, beyond := j.antenna.Mount.ForDiameter(a.Diameter)
-		f, err := j.take(&a, &m, false)
+		m, beyond := j.antenna.MountFor(a.Diameter)
+		f, err := j.take(&a, m, false)
 		if err != nil {
 			return nil, err
 		}

@@ -48,7 +48,7 @@ func keepToMount(c *chosenLink, f *downlink.Profile) (*mountOnPass, error) {
 		return nil, err
 	}
 	m := &mountOnPass{}
-	m.beamwidth, m.tolerance = followingTolerance(c.antenna, c.link.Frequency())
+	m.beamwidth, m.tolerance = c.antenna.FollowingError(c.link.Frequency())
 	drive, err := mount.New(c.antenna.Mount)
 	if err != nil {
 		return nil, err
@@ -84,26 +84,6 @@ func profileDirections(f *downlink.Profile) []station.Direction {
 		out[i] = station.Direction{Azimuth: unit.Angle(f.AzimuthDeg[i]) * unit.Degree, Elevation: unit.Angle(elevation[i]) * unit.Degree}
 	}
 	return out
-}
-
-// toleranceWithoutBeam is the error that counts as followed where no beamwidth is known.
-const toleranceWithoutBeam = 0.1 * unit.Degree
-
-// followingTolerance returns the half-power beamwidth and the error on the sky up to
-// which a pass counts as followed: the mount's own, else a tenth of the beam (12 (1/10)² =
-// 0.12 dB).
-func followingTolerance(a *station.Antenna, f unit.Frequency) (beam, tolerance unit.Angle) {
-	beam, known := a.BeamwidthAt(f)
-	if !known {
-		beam = 0
-	}
-	switch {
-	case a.Mount.Tolerance > 0:
-		return beam, a.Mount.Tolerance
-	case known:
-		return beam, beam / 10
-	}
-	return beam, toleranceWithoutBeam
 }
 
 // worthOf is the achievable rate at an instant of a pass; nil where there is none.

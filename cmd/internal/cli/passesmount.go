@@ -108,7 +108,7 @@ func moverFor(antennas []station.Antenna, frequencies []unit.Frequency) (*passMo
 		if err != nil {
 			return nil, err
 		}
-		_, tolerance := followingTolerance(a, f)
+		_, tolerance := a.FollowingError(f)
 		return &passMover{a.Name, drive, tolerance}, nil
 	}
 	return nil, nil

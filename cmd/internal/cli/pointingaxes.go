@@ -61,7 +61,7 @@ func (p *pointing) axesOf(env *Env, o *pointingOptions) error {
 	if p.transmitter != nil {
 		f = p.transmitter.Frequency
 	}
-	_, tolerance := followingTolerance(a, f)
+	_, tolerance := a.FollowingError(f)
 	p.axes = &pointingAxes{plan: drive.Plan(course, mount.Options{Tolerance: tolerance}), from: o.from}
 	p.axes.tell(env, a, tolerance)
 	return nil
