@@ -1,20 +1,11 @@
 package propagation
 
-import (
-	"math"
+import "math"
 
-	"slantwise/orbit/unit"
-)
-
-// RainProbability returns the fraction of an average year during which there is rain
-// anywhere on a path, from the fraction during which it rains at the station and the
-// path's length below the rain height. elevation 0° to 90°. Source: Rec. ITU-R
+// rainProbability returns the fraction of an average year during which there is rain
+// anywhere on a path, from the fraction p0 during which it rains at the station and the
+// path's length below the rain height; elevation 0° to 90°. Source: Rec. ITU-R
 // P.618-14 §2.2.1.2.
-func RainProbability(atStation Exceedance, elevation unit.Angle, slantBelowRain unit.Length) (Exceedance, error) {
-	p, err := rainProbability(float64(atStation), elevation.Degrees(), slantBelowRain.Kilometres())
-	return Exceedance(p), err
-}
-
 func rainProbability(p0, elDeg, slantKm float64) (float64, error) {
 	err := firstError(within("probability of rain", p0, "", 0, 1, "give a fraction"),
 		within("elevation", elDeg, "deg", 0, 90, ""), notNegative("path below the rain height", slantKm, "km"))

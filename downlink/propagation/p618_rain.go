@@ -1,35 +1,13 @@
 package propagation
 
-import (
-	"math"
-
-	"slantwise/orbit/unit"
-)
+import "math"
 
 // effectiveEarthKm is the effective radius of the Earth in P.618-14 §2.2.1.1.
 const effectiveEarthKm = 8500
 
-// RainSite is what the rain attenuation of a site depends on.
-type RainSite struct {
-	Latitude   unit.Angle
-	Height     unit.Length // of the station above mean sea level
-	RainHeight unit.Length // above mean sea level, P.839-4
-	Rate001    RainRate    // exceeded for 0.01 % of an average year
-}
-
-// RainAttenuation returns the attenuation of rain exceeded for p of an average year
-// on a path at an elevation of 0° to 90°, and warnings outside 0.001 % to 5 % and
-// above 55 GHz. It rises and falls with elevation and with p where the
-// Recommendation makes it do so. Source: Rec. ITU-R P.618-14 §2.2.1.1 (the same in
-// P.618-13).
-func RainAttenuation(s RainSite, f unit.Frequency, elevation, tilt unit.Angle, p Exceedance) (unit.DB, []Note, error) {
-	var n notes
-	a, err := rainAttenuationChecked(rainSite{s.Latitude.Degrees(), s.Height.Kilometres(), s.RainHeight.Kilometres(),
-		s.Rate001.MillimetresPerHour()}, f.Gigahertz(), elevation.Degrees(), tilt.Degrees(), p.Percents(), &n)
-	return unit.DB(a), n, err
-}
-
-// rainSite is RainSite in the units of the printed equations.
+// rainSite is what the rain attenuation of a site depends on, in the units of the printed equations:
+// the station's height and the rain height (P.839-4) above mean sea level, the rain rate exceeded for
+// 0.01 % of an average year.
 type rainSite struct{ latDeg, stationKm, rainKm, rateMmH float64 }
 
 func (s rainSite) check() error {
@@ -38,6 +16,10 @@ func (s rainSite) check() error {
 		within("rain rate exceeded for 0.01 %", s.rateMmH, "mm/h", 0, 1000, ""))
 }
 
+// rainAttenuationChecked returns the attenuation of rain in dB exceeded for p of an average
+// year at an elevation of 0° to 90°, and notes outside 0.001 % to 5 % and above 55 GHz. It
+// rises and falls with elevation and with p where the Recommendation makes it do so.
+// Source: Rec. ITU-R P.618-14 §2.2.1.1 (the same in P.618-13).
 func rainAttenuationChecked(s rainSite, fGHz, elDeg, tiltDeg, pPct float64, n *notes) (float64, error) {
 	err := firstError(s.check(), checkRainFrequency(fGHz), within("elevation", elDeg, "deg", 0, 90, "rain has no model under the horizon"),
 		checkTilt(tiltDeg), checkPercent(pPct))

@@ -30,13 +30,9 @@ func combined(gas, cloud, rain, scintillationSquared float64) float64 {
 	return gas + math.Sqrt(w*w+scintillationSquared)
 }
 
-// CombinationPercentage returns the percentage at which gas and cloud enter the total
+// combinationPercent returns the percentage at which gas and cloud enter the total
 // of percentage p: not under 5 %, P.618-14 equations (67) and (68), or not under 1 %
 // in P.618-13. Rain enters at p up to 5 % and not at all above.
-func CombinationPercentage(p Exceedance, e Editions) Exceedance {
-	return Exceedance(combinationPercent(p.Percents(), e.P618)) * Percent
-}
-
 func combinationPercent(pPct float64, edition int) float64 {
 	if edition == 13 {
 		return math.Max(pPct, 1)

@@ -1,21 +1,10 @@
 package propagation
 
-import (
-	"math"
+import "math"
 
-	"slantwise/orbit/unit"
-)
-
-// GasAnnex2v12 returns the approximate attenuation of gases by the superseded
+// gasAnnex2v12 returns the approximate attenuation of gases in dB by the superseded
 // P.676-12 (08/2019) Annex 2, with the vapour as an integrated column; kept for
-// figures that were published with it. height is the station's above mean sea level.
-func GasAnnex2v12(f unit.Frequency, elevation unit.Angle, surface Air, vapour Column, height unit.Length) (unit.DB, []Note, error) {
-	var n notes
-	a, err := gasAnnex2v12(f.Gigahertz(), elevation.Degrees(), surface.DryPressure.Hectopascals(), surface.Temperature.Kelvins(),
-		surface.Vapour.GramsPerCubicMetre(), vapour.KilogramsPerSquareMetre(), height.Kilometres(), &n)
-	return unit.DB(a), n, err
-}
-
+// figures that were published with it. The height is the station's above mean sea level.
 func gasAnnex2v12(fGHz, elDeg, dryHPa, tK, rho, vapourKgM2, heightKm float64, n *notes) (float64, error) {
 	g, err := gasSpecificChecked(fGHz, dryHPa, tK, rho, n)
 	if err := firstError(err, checkElevationAbove0(elDeg)); err != nil {

@@ -1,10 +1,6 @@
 package propagation
 
-import (
-	"math"
-
-	"slantwise/orbit/unit"
-)
+import "math"
 
 // OxygenHeight holds the coefficients of the equivalent height of oxygen at one
 // frequency, from the table that belongs to P.676-13 Annex 2 ("Part 1"): the height
@@ -16,17 +12,10 @@ func (h OxygenHeight) km(tK, totalHPa, rho float64) float64 {
 	return h.A0 + h.B0*tK + h.C0*totalHPa + h.D0*rho
 }
 
-// GasAnnex2 returns the approximate attenuation of gases from the air at the
-// surface, and warnings; the elevation must lie in (0°, 90°], 5° and up and 1 to
+// gasAnnex2 returns the approximate attenuation of gases in dB from the air at the
+// surface, and notes; the elevation must lie in (0°, 90°], 5° and up and 1 to
 // 350 GHz is what the Recommendation covers. Source: Rec. ITU-R P.676-13 Annex 2
 // §1.1 and §2.1 (method 1, Table 4).
-func GasAnnex2(f unit.Frequency, elevation unit.Angle, surface Air, oxygen OxygenHeight) (unit.DB, []Note, error) {
-	var n notes
-	a, err := gasAnnex2(f.Gigahertz(), elevation.Degrees(), surface.DryPressure.Hectopascals(),
-		surface.Temperature.Kelvins(), surface.Vapour.GramsPerCubicMetre(), oxygen, &n)
-	return unit.DB(a), n, err
-}
-
 func gasAnnex2(fGHz, elDeg, dryHPa, tK, rho float64, oxygen OxygenHeight, n *notes) (float64, error) {
 	g, err := gasSpecificChecked(fGHz, dryHPa, tK, rho, n)
 	if err := firstError(err, checkElevationAbove0(elDeg)); err != nil {

@@ -16,19 +16,10 @@ type CloudLogNormal struct {
 	Probability Exceedance // of cloud liquid water at all
 }
 
-// CloudAttenuation returns the attenuation of the cloud liquid water that is
-// exceeded at the percentage sought, and warnings. The elevation must lie in (0°,
+// cloudDirect returns the attenuation in dB of the cloud liquid water that is
+// exceeded at the percentage sought, and notes. The elevation must lie in (0°,
 // 90°]; 5° and up, and 1 to 200 GHz, is what the Recommendation covers. Source: Rec.
 // ITU-R P.840-9 §3.1 and §3.2, or P.840-8 §3 (edition 8).
-func CloudAttenuation(f unit.Frequency, elevation unit.Angle, liquid Column, e Editions) (unit.DB, []Note, error) {
-	if err := e.check(); err != nil {
-		return 0, nil, err
-	}
-	var n notes
-	a, err := cloudDirect(f.Gigahertz(), elevation.Degrees(), liquid.KilogramsPerSquareMetre(), e.P840, &n)
-	return unit.DB(a), n, err
-}
-
 func cloudDirect(fGHz, elDeg, liquidKgM2 float64, edition int, n *notes) (float64, error) {
 	err := firstError(checkCloud(fGHz, elDeg, edition, n), notNegative("cloud liquid water", liquidKgM2, "kg/m2"))
 	if err != nil {
@@ -37,18 +28,9 @@ func cloudDirect(fGHz, elDeg, liquidKgM2 float64, edition int, n *notes) (float6
 	return cloudMassAbsorption(fGHz, edition) * liquidKgM2 / math.Sin(radians(elDeg)), nil
 }
 
-// CloudAttenuationLogNormal returns the attenuation of cloud exceeded at p by the
+// cloudLogNormal returns the attenuation in dB of cloud exceeded at p by the
 // log-normal approximation; 0 where cloud is rarer than p. Source: Rec. ITU-R
 // P.840-9 §3.3.
-func CloudAttenuationLogNormal(f unit.Frequency, elevation unit.Angle, p Exceedance, c CloudLogNormal, e Editions) (unit.DB, []Note, error) {
-	if err := e.check(); err != nil {
-		return 0, nil, err
-	}
-	var n notes
-	a, err := cloudLogNormal(f.Gigahertz(), elevation.Degrees(), p.Percents(), c.Mean, c.Sigma, c.Probability.Percents(), e.P840, &n)
-	return unit.DB(a), n, err
-}
-
 func cloudLogNormal(fGHz, elDeg, pPct, mean, sigma, probabilityPct float64, edition int, n *notes) (float64, error) {
 	err := firstError(checkCloud(fGHz, elDeg, edition, n), checkPercent(pPct),
 		within("mean of ln of the cloud liquid water", mean, "", -30, 10, ""),

@@ -41,19 +41,6 @@ func brightness(attenuationDB, mediumK, backgroundK float64) float64 {
 	return mediumK*(1-passed) + backgroundK*passed
 }
 
-// WeatherIncrease returns how much brighter the sky is through the attenuation of the
-// weather than through that of the clear air; negative where the medium is colder
-// than the background, as at VHF. An antenna temperature that was stated for the clear
-// sky rises by it, at the antenna's flange.
-func WeatherIncrease(weather, clear unit.DB, medium, background unit.Temperature) (unit.Temperature, error) {
-	w, err := SkyBrightness(weather, medium, background)
-	if err != nil {
-		return 0, err
-	}
-	c, err := SkyBrightness(clear, medium, background)
-	return w - c, err
-}
-
 func checkMedium(t unit.Temperature) error {
 	return within("temperature of the medium", t.Kelvins(), "K", 100, 400, "see MeanRadiatingTemperature")
 }
