@@ -5,7 +5,6 @@ import (
 	"fmt"
 	"math"
 	"path/filepath"
-	"sync"
 	"time"
 
 	"slantwise/cmd/internal/scenario"
@@ -24,14 +23,7 @@ type liveModel struct {
 	plan     *reportPlan
 	contacts []web.Contact // as plan.pages
 	places   map[string]int
-	flights  []liveFlight // as plan.pages
-}
-
-// liveFlight is a contact flown when it is first asked for.
-type liveFlight struct {
-	once sync.Once
-	best *modeOnPass // nil: there is no budget, err may say why
-	err  error
+	flights  liveFlights
 }
 
 func newLiveModel(ctx context.Context, request scenario.Request, s *scenario.Scenario) (*liveModel, error) {
@@ -39,7 +31,7 @@ func newLiveModel(ctx context.Context, request scenario.Request, s *scenario.Sce
 	if err != nil {
 		return nil, err
 	}
-	m := &liveModel{request: request, plan: plan, contacts: []web.Contact{}, places: map[string]int{}, flights: make([]liveFlight, len(plan.pages))}
+	m := &liveModel{request: request, plan: plan, contacts: []web.Contact{}, places: map[string]int{}}
 	for i := range plan.pages {
 		p := &plan.pages[i]
 		c := web.Contact{
@@ -128,11 +120,13 @@ func craftAt(c *reportCraft, t time.Time) web.Craft {
 
 // flight flies a contact by the mode that brings the most.
 func (m *liveModel) flight(i int) (*modeOnPass, error) {
-	f, page := &m.flights[i], &m.plan.pages[i]
+	page := &m.plan.pages[i]
+	if page.link == nil {
+		return nil, nil
+	}
+	f := m.flights.of(i)
 	f.once.Do(func() {
-		if page.link != nil {
-			f.best, f.err = page.bestMode(m.plan.scenario, &m.plan.craft[page.Spacecraft], sampleStep(page.Duration()))
-		}
+		f.best, f.err = page.bestMode(m.plan.scenario, &m.plan.craft[page.Spacecraft], sampleStep(page.Duration()))
 	})
 	return f.best, f.err
 }

@@ -5,7 +5,6 @@ import (
 	"context"
 	"encoding/json"
 	"errors"
-	"io"
 	"net"
 	"net/http"
 	"net/http/httptest"
@@ -68,127 +67,6 @@ func send(h http.Handler, method, address, body string, head ...string) *http.Re
 	w := httptest.NewRecorder()
 	h.ServeHTTP(w, r)
 	return w.Result()
-}
-
-// TestAttacks sends what another site, another name of the host and a clumsy or hostile
-// client would send.
-func TestAttacks(t *testing.T) {
-	h := New(config()).Handler("8460")
-	question := `{"contact":"a"}`
-	js := []string{"Content-Type", "application/json"}
-	with := func(more ...string) []string { return append(append([]string{}, js...), more...) }
-	for _, row := range []struct {
-		name, method, address, body string
-		head                        []string
-		want                        int
-	}{
-		{"the page", "GET", "/", "", nil, 200},
-		{"by another of its names", "GET", "/api/state", "", []string{"Host", "LOCALHOST:8460"}, 200},
-		{"rebound name", "GET", "/api/state", "", []string{"Host", "evil.example:8460"}, 421},
-		{"another port", "GET", "/api/state", "", []string{"Host", "127.0.0.1:80"}, 421},
-		{"no port", "GET", "/", "", []string{"Host", "127.0.0.1"}, 421},
-		{"own origin", "POST", "/api/what-if", question, with("Origin", "http://127.0.0.1:8460"), 200},
-		{"no origin", "POST", "/api/what-if", question, js, 200},
-		{"other origin", "POST", "/api/what-if", question, with("Origin", "http://evil.example"), 403},
-		{"origin of a sandbox", "POST", "/api/what-if", question, with("Origin", "null"), 403},
-		{"origin with more behind", "POST", "/api/what-if", question, with("Origin", "http://127.0.0.1:8460.evil.example"), 403},
-		{"second origin", "POST", "/api/what-if", question, with("Origin", "http://127.0.0.1:8460", "Origin", "http://evil.example"), 403},
-		{"other scheme", "GET", "/api/state", "", []string{"Origin", "https://127.0.0.1:8460"}, 403},
-		{"fetched by another site", "GET", "/api/state", "", []string{"Sec-Fetch-Site", "cross-site"}, 403},
-		{"stream by another site", "GET", "/events", "", []string{"Sec-Fetch-Site", "same-site"}, 403},
-		{"link on another site", "GET", "/", "", []string{"Sec-Fetch-Site", "cross-site", "Sec-Fetch-Mode", "navigate"}, 200},
-		{"page as a script", "GET", "/", "", []string{"Sec-Fetch-Site", "cross-site", "Sec-Fetch-Mode", "no-cors"}, 403},
-		{"simple form", "POST", "/api/what-if", question, []string{"Content-Type", "text/plain"}, 415},
-		{"no kind", "POST", "/api/what-if", question, nil, 415},
-		{"unknown key", "POST", "/api/what-if", `{"contact":"a","file":"/etc/passwd"}`, js, 400},
-		{"two questions", "POST", "/api/what-if", question + question, js, 400},
-		{"no JSON", "POST", "/api/what-if", "{", js, 400},
-		{"out of the numbers", "POST", "/api/what-if", `{"contact":"a","dish_m":1e999}`, js, 400},
-		{"too long", "POST", "/api/what-if", `{"contact":"` + strings.Repeat("a", maxBody) + `"}`, js, 413},
-		{"refused", "POST", "/api/what-if", `{"contact":"a","dish_m":-1}`, js, 422},
-		{"no such contact", "POST", "/api/what-if", `{"contact":"b"}`, js, 404},
-		{"asked by GET", "GET", "/api/what-if", "", nil, 405},
-		{"a file", "GET", "/slantwise.yaml", "", nil, 404},
-		{"a way up", "GET", "/api/contacts/..%2f..%2f..%2fetc%2fpasswd", "", nil, 404},
-		{"a way up, plain", "GET", "/api/contacts/../../etc/passwd", "", nil, 307},
-		{"writing", "PUT", "/", "", nil, 405},
-	} {
-		t.Run(row.name, func(t *testing.T) {
-			got := send(h, row.method, row.address, row.body, row.head...)
-			if got.StatusCode != row.want {
-				b, _ := io.ReadAll(got.Body)
-				t.Errorf("status %d, want %d: %s", got.StatusCode, row.want, b)
-			}
-			if p := got.Header.Get("Content-Security-Policy"); !strings.HasPrefix(p, "default-src 'none'") || strings.Contains(p, "unsafe") {
-				t.Errorf("policy %q", p)
-			}
-			for _, key := range []string{"Access-Control-Allow-Origin", "Set-Cookie"} {
-				if v := got.Header.Get(key); v != "" {
-					t.Errorf("%s: %s", key, v)
-				}
-			}
-		})
-	}
-}
-
-func TestNonces(t *testing.T) {
-	h := New(config()).Handler("8460")
-	seen := map[string]bool{}
-	for range 3 {
-		got := send(h, "GET", "/", "")
-		b, _ := io.ReadAll(got.Body)
-		_, rest, _ := strings.Cut(got.Header.Get("Content-Security-Policy"), "script-src 'nonce-")
-		nonce, _, _ := strings.Cut(rest, "'")
-		if len(nonce) < 20 || seen[nonce] {
-			t.Fatalf("nonce %q; it must be long and new each time", nonce)
-		}
-		seen[nonce] = true
-		page := string(b)
-		for _, bare := range []string{"<script>", "<style>", " onclick=", " style=", "https://"} {
-			if strings.Contains(page, bare) {
-				t.Errorf("the page holds %q", bare)
-			}
-		}
-		if n := strings.Count(page, `nonce="`+nonce+`"`); n != 2 {
-			t.Errorf("%d elements carry the nonce, want 2", n)
-		}
-	}
-}
-
-func TestToken(t *testing.T) {
-	c := config()
-	c.Host, c.Token = "192.0.2.7", NewToken()
-	if c.Token == NewToken() || len(c.Token) < 40 {
-		t.Fatalf("token %q", c.Token)
-	}
-	h := New(c).Handler("8460")
-	host := []string{"Host", "192.0.2.7:8460"}
-	for _, row := range []struct {
-		name, address string
-		head          []string
-		want          int
-	}{
-		{"none", "/", nil, 401},
-		{"none, data", "/api/state", nil, 401},
-		{"wrong", "/?token=x", nil, 401},
-		{"in the address of the page", "/?token=" + c.Token, nil, 303},
-		{"in the address of data", "/api/state?token=" + c.Token, nil, 401},
-		{"cookie", "/api/state", []string{"Cookie", tokenCookie + "=" + c.Token}, 200},
-		{"wrong cookie", "/api/state", []string{"Cookie", tokenCookie + "=" + c.Token[1:]}, 401},
-		{"bearer", "/api/state", []string{"Authorization", "Bearer " + c.Token}, 200},
-		{"empty bearer", "/api/state", []string{"Authorization", "Bearer "}, 401},
-		{"by the loopback's name", "/api/state", []string{"Host", "127.0.0.1:8460", "Authorization", "Bearer " + c.Token}, 421},
-	} {
-		t.Run(row.name, func(t *testing.T) {
-			got := send(h, "GET", row.address, "", append(append([]string{}, host...), row.head...)...)
-			if got.StatusCode != row.want {
-				t.Errorf("status %d, want %d", got.StatusCode, row.want)
-			}
-			if cookie := got.Header.Get("Set-Cookie"); row.want == 303 && (!strings.Contains(cookie, "HttpOnly") || !strings.Contains(cookie, "SameSite=Strict")) {
-				t.Errorf("cookie %q", cookie)
-			}
-		})
-	}
 }
 
 // TestReload turns the scenario wrong and right again while it is served.
