@@ -53,6 +53,7 @@ var layers = []struct {
 	{"slantwise/cmd/internal/atomicfile", 12},
 	{"slantwise/cmd/internal/nearest", 12},
 	{"slantwise/cmd/internal/planfiles", 13},
+	{"slantwise/cmd/internal/logbook/record", 12},
 	{"slantwise/cmd/internal/logbook", 13},
 	{"slantwise/cmd/internal/scenario", 14},
 	{"slantwise/cmd/internal/web", 15},

@@ -68,15 +68,20 @@ func prepareExample(t *testing.T, command string) {
 		if code, _, errOut := invoke(t, "contacts", "--iterations", "1", "--save", "plan.csv"); code != ExitAnswer {
 			t.Fatal(errOut)
 		}
-	case "add", "show", "fit", "whose":
+	case "add", "show", "fit", "whose", "export", "import":
 		if code, _, errOut := invoke(t, "log", "rehearse", "--spacecraft", "Wagtail 1", "--station", "Skerry Point", "--mode", "safe", "--into", "rehearsal.csv"); code != ExitAnswer {
 			t.Fatal(errOut)
 		}
-		if command != "show" {
+		if command != "show" && command != "export" && command != "import" {
 			break
 		}
 		if code, _, errOut := invoke(t, "log", "add", "rehearsal.csv", "--spacecraft", "Wagtail 1", "--station", "Skerry Point", "--mode", "safe"); code != ExitAnswer {
 			t.Fatal(errOut)
+		}
+		if command == "import" {
+			if code, _, errOut := invoke(t, "log", "export", "--into", "logbook.csv"); code != ExitAnswer {
+				t.Fatal(errOut)
+			}
 		}
 	case "compare":
 		if err := os.WriteFile("plan.csv", []byte(samplePlan), 0o600); err != nil {

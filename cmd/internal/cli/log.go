@@ -31,7 +31,7 @@ quantity in two units is refused.`,
 		Args:    noArgs,
 		RunE:    func(cmd *cobra.Command, _ []string) error { return cmd.Help() },
 	}
-	cmd.AddCommand(newLogAdd(env), newLogShow(env), newLogFit(env), newLogWhose(env), newLogRehearse(env))
+	cmd.AddCommand(newLogAdd(env), newLogShow(env), newLogExport(env), newLogImport(env), newLogFit(env), newLogWhose(env), newLogRehearse(env))
 	return cmd
 }
 

@@ -5,6 +5,7 @@ import (
 	"errors"
 	"math"
 	"path/filepath"
+	"strings"
 	"time"
 
 	"github.com/spf13/cobra"
@@ -54,7 +55,7 @@ func runLogAdd(ctx context.Context, env *Env, in *logInput, kept *logRemarks, f 
 		return err
 	}
 	e := o.entry()
-	e.Source, e.Note, e.Taken = filepath.Base(in.file), kept.remark, env.Now()
+	e.Source, e.Note, e.Taken = tidyText(filepath.Base(in.file)), tidyText(kept.remark), env.Now()
 	if kept.takenBytes != nil {
 		e.TakenBytes = *kept.takenBytes
 	}
@@ -95,6 +96,11 @@ func (o *overLog) entry() *logbook.Entry {
 		}
 	}
 	return e
+}
+
+// tidyText makes a text fit for every format that the logbook is written in.
+func tidyText(s string) string {
+	return strings.ReplaceAll(strings.ToValidUTF8(s, "\uFFFD"), "\r\n", "\n")
 }
 
 // longestAround is how far beyond a log its pass is looked for.

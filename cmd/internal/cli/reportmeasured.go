@@ -30,9 +30,6 @@ func (p *reportPlan) openBook(ctx context.Context, env *Env, name string, named 
 		return nil
 	}
 	defer book.close()
-	if book.fault != nil {
-		p.warnings = append(p.warnings, book.fault.Error())
-	}
 	for i := range book.entries {
 		e := &book.entries[i]
 		if e.Last.Before(p.scenario.Window.Start) || e.First.After(p.scenario.Window.End) {
@@ -47,6 +44,9 @@ func (p *reportPlan) openBook(ctx context.Context, env *Env, name string, named 
 			one.fault = err.Error()
 		}
 		p.logged[k] = append(p.logged[k], one)
+	}
+	if book.fault != nil {
+		p.warnings = append(p.warnings, book.fault.Error())
 	}
 	if !named && len(p.logged) > 0 {
 		env.note("with the measurements of %s (--log \"\" leaves them out)", name)
@@ -77,7 +77,7 @@ func (p *reportPlan) addMeasured(out *reports.Pass, craft *reportCraft, site *re
 			continue
 		}
 		fillDirections(points, craft, site)
-		m := reports.Measured{Number: e.ID, Source: e.Source, Note: e.Note, Elements: e.Elements, Link: e.link(), Added: e.Taken,
+		m := reports.Measured{Number: e.ID, Source: e.Source, Note: e.Note, Elements: e.Elements, Link: linkOf(e.Entry), Added: e.Taken,
 			PredictedBytes: e.PredictedBytes, TakenBytes: e.TakenBytes}
 		m.Locked, m.HasLock = lockTimes(points)
 		for _, q := range measured.Compared() {
@@ -98,17 +98,6 @@ func (p *reportPlan) addMeasured(out *reports.Pass, craft *reportCraft, site *re
 // madeFor tells whether an entry was predicted for a link; an entry that does not say is for any.
 func (e *loggedEntry) madeFor(l *reportLink) bool {
 	return e.Transmitter == "" || l != nil && l.transmitter.Name == e.Transmitter && l.antenna.Name == e.Antenna
-}
-
-func (e *loggedEntry) link() string {
-	if e.Transmitter == "" {
-		return ""
-	}
-	text := e.Transmitter + " to " + e.Antenna
-	if e.Mode != "" {
-		text += ", mode " + e.Mode
-	}
-	return text
 }
 
 // carrierOf returns the nominal frequency of the transmitter that an entry names, else of the
@@ -214,37 +203,4 @@ func lockTimes(points []measured.Point) (spans []downlink.Interval, logged bool)
 		}
 	}
 	return spans, logged
-}
-
-// readableBook is a logbook open to read, or what could be saved of a damaged one.
-type readableBook struct {
-	book    *logbook.Book // nil: entries are full
-	entries []logbook.Entry
-	fault   error // what is wrong with the file, though there is something to read
-}
-
-func readBook(ctx context.Context, path string) (*readableBook, error) {
-	b, err := logbook.OpenToRead(ctx, path)
-	if err != nil {
-		return nil, err
-	}
-	out := &readableBook{book: b}
-	if out.entries, err = b.List(ctx); err != nil {
-		b.Close()
-		return nil, err
-	}
-	return out, nil
-}
-
-func (r *readableBook) fill(ctx context.Context, e *logbook.Entry) error {
-	if r.book == nil {
-		return e.Check()
-	}
-	return r.book.Fill(ctx, e)
-}
-
-func (r *readableBook) close() {
-	if r.book != nil {
-		r.book.Close()
-	}
 }

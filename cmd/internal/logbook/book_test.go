@@ -3,13 +3,17 @@ package logbook
 import (
 	"database/sql"
 	"errors"
+	"fmt"
 	"math"
 	"os"
 	"os/exec"
 	"path/filepath"
+	"slices"
 	"strings"
 	"testing"
 	"time"
+
+	"slantwise/cmd/internal/logbook/record"
 )
 
 func sample(digest string) *Entry {
@@ -50,35 +54,90 @@ func TestRoundTrip(t *testing.T) {
 	}
 }
 
-func TestMigration(t *testing.T) {
+// oldBook writes a file of an earlier version with an entry of one value.
+func oldBook(t *testing.T, version int) string {
+	t.Helper()
 	path := filepath.Join(t.TempDir(), "old.logbook")
 	db, err := sql.Open("sqlite", path)
 	if err != nil {
 		t.Fatal(err)
 	}
-	for _, s := range []string{steps[0], "PRAGMA user_version = 1",
-		"INSERT INTO pass(spacecraft,station,first,last,source,elements,taken) VALUES('W','S','2026-09-15T00:50:00.000000000Z','2026-09-15T00:50:00.000000000Z','f','e','2026-09-15T00:50:00.000000000Z')"} {
+	defer db.Close()
+	for _, s := range append(slices.Clone(steps[:version]), fmt.Sprintf("PRAGMA user_version = %d", version),
+		"INSERT INTO pass(spacecraft,station,first,last,source,elements,note,taken) VALUES('W','S','2026-09-15T00:50:00.000000000Z','2026-09-15T00:50:01.000000000Z','f','e','windy','2026-09-15T01:50:00.000000000Z')",
+		"INSERT INTO sample(pass,at,quantity,measured,predicted,state) VALUES(1,'2026-09-15T00:50:00.000000000Z','cn0_dbhz',60,61.5,'used')") {
 		if _, err := db.Exec(s); err != nil {
 			t.Fatal(err)
 		}
 	}
-	db.Close()
-	b, err := Open(t.Context(), path, false)
+	return path
+}
+
+// TestMigration opens a file of every earlier version: to read it stays as it is, to write it
+// is brought up to date, and what was in it is the same each time, by the engine and without.
+func TestMigration(t *testing.T) {
+	for version := 1; version < len(steps); version++ {
+		path := oldBook(t, version)
+		check := func(how string, list []Entry, err error) {
+			t.Helper()
+			if err != nil || len(list) < 1 || len(list[0].Values) != 1 {
+				t.Fatalf("version %d, %s: %v, %v", version, how, list, err)
+			}
+			e, v := list[0], list[0].Values[0]
+			if e.Spacecraft != "W" || e.Note != "windy" || e.Samples != -1 || !math.IsNaN(e.TakenBytes) || e.Transmitter != "" || v.Predicted != 61.5 || !math.IsNaN(v.ElevationDeg) {
+				t.Errorf("version %d, %s: %+v", version, how, e)
+			}
+		}
+		list, err := everything(t, path)
+		check("read", list, err)
+		saved, err := record.Salvage(path)
+		check("salvaged", saved.Entries, err)
+		if got := versionOf(t, path); got != version {
+			t.Errorf("reading made version %d of version %d", got, version)
+		}
+		b, err := Open(t.Context(), path, false)
+		if err != nil {
+			t.Fatal(err)
+		}
+		if _, err := b.Add(t.Context(), sample("new")); err != nil {
+			t.Fatal(err)
+		}
+		b.Close()
+		list, err = everything(t, path)
+		check("migrated", list, err)
+		if got := versionOf(t, path); got != len(steps) || len(list) != 2 {
+			t.Errorf("version %d became %d with %d entries", version, got, len(list))
+		}
+		saved, err = record.Salvage(path)
+		check("migrated and salvaged", saved.Entries, err)
+	}
+}
+
+func versionOf(t *testing.T, path string) (version int) {
+	t.Helper()
+	b, err := OpenToRead(t.Context(), path)
 	if err != nil {
 		t.Fatal(err)
 	}
-	if _, err := b.Add(t.Context(), sample("new")); err != nil {
+	defer b.Close()
+	return b.version
+}
+
+func TestNewerVersion(t *testing.T) {
+	path := bookOf(t, 1)
+	b, err := Open(t.Context(), path, false)
+	if err != nil {
 		t.Fatal(err)
-	}
-	if list, err := b.List(t.Context()); err != nil || len(list) != 2 {
-		t.Errorf("%v, %v", list, err)
 	}
 	if _, err := b.db.Exec("PRAGMA user_version = 99"); err != nil {
 		t.Fatal(err)
 	}
 	b.Close()
 	if _, err := Open(t.Context(), path, false); err == nil || !strings.Contains(err.Error(), "newer program") {
-		t.Errorf("a newer file: %v", err)
+		t.Errorf("to write: %v", err)
+	}
+	if _, err := OpenToRead(t.Context(), path); err == nil || !strings.Contains(err.Error(), "newer program") {
+		t.Errorf("to read: %v", err)
 	}
 }
 

@@ -31,10 +31,13 @@ var (
 	errEmpty   = errors.New("there is no pass in it yet; log add puts one there")
 )
 
+// patience is how long the engine waits for another program, ms.
+var patience = 5000
+
 // Primary result codes of the database engine (sqlite.org/rescode.html).
 const (
-	codeBusy, codeLocked, codeReadOnly = 5, 6, 8
-	codeCorrupt, codeFull, codeNotADB  = 11, 13, 26
+	codeBusy, codeLocked, codeReadOnly                = 5, 6, 8
+	codeCorrupt, codeFull, codeCannotOpen, codeNotADB = 11, 13, 14, 26
 )
 
 // Open opens the file to write, which is made where it is not there and make is true. A file of
@@ -43,7 +46,7 @@ func Open(ctx context.Context, path string, make bool) (*Book, error) {
 	if _, err := os.Stat(path); err != nil && !make {
 		return nil, fmt.Errorf("logbook %s: %w; log add makes one", path, err)
 	}
-	b, err := open(path, "_pragma=busy_timeout(5000)&_pragma=journal_mode(WAL)&_pragma=synchronous(FULL)&_pragma=foreign_keys(1)")
+	b, err := open(path, "_txlock=immediate&_pragma=journal_mode(WAL)&_pragma=synchronous(FULL)&_pragma=foreign_keys(1)")
 	if err != nil {
 		return nil, err
 	}
@@ -68,12 +71,12 @@ func OpenToRead(ctx context.Context, path string) (*Book, error) {
 			return nil, fmt.Errorf("logbook %s: the file is empty (0 bytes); log add puts a pass there", path)
 		}
 	}
-	b, err := open(path, "mode=rw&_pragma=busy_timeout(5000)&_pragma=query_only(1)")
+	b, err := open(path, "mode=rw&_pragma=query_only(1)")
 	if err != nil {
 		return nil, err
 	}
 	err = b.readVersion(ctx, b.db)
-	if left, e := os.Stat(path + "-wal"); code(err) == codeReadOnly || code(err) == 14 && (e != nil || left.Size() == 0) {
+	if left, e := os.Stat(path + "-wal"); code(err) == codeReadOnly || code(err) == codeCannotOpen && (e != nil || left.Size() == 0) {
 		// A folder that cannot be written has no room for what a book written ahead shares between its
 		// readers; a file that nobody can change needs none of it.
 		b.db.Close()
@@ -96,7 +99,7 @@ func OpenToRead(ctx context.Context, path string) (*Book, error) {
 }
 
 func open(path, query string) (*Book, error) {
-	from := url.URL{Scheme: "file", Opaque: url.PathEscape(path), RawQuery: query}
+	from := url.URL{Scheme: "file", Opaque: url.PathEscape(path), RawQuery: fmt.Sprintf("_pragma=busy_timeout(%d)&%s", patience, query)}
 	db, err := sql.Open("sqlite", from.String())
 	if err != nil {
 		return nil, fmt.Errorf("logbook %s: %w", path, err)

@@ -7,6 +7,8 @@ import (
 	"fmt"
 	"math"
 	"time"
+
+	"slantwise/cmd/internal/logbook/record"
 )
 
 // Add adds an entry, whole or not at all, and returns its number.
@@ -36,8 +38,8 @@ func add(ctx context.Context, tx *sql.Tx, e *Entry) (int64, error) {
 		return 0, err
 	}
 	r, err := tx.ExecContext(ctx, `INSERT INTO pass(spacecraft,station,first,last,source,elements,note,taken,digest,transmitter,antenna,mode,predicted_bytes,taken_bytes,samples,seal)
-		VALUES(?,?,?,?,?,?,?,?,?,?,?,?,?,?,?,?)`, e.Spacecraft, e.Station, stamp(e.First), stamp(e.Last), e.Source, e.Elements, e.Note, stamp(e.Taken), e.Digest,
-		e.Transmitter, e.Antenna, e.Mode, nullable(e.PredictedBytes), nullable(e.TakenBytes), len(e.Values), e.sealed())
+		VALUES(?,?,?,?,?,?,?,?,?,?,?,?,?,?,?,?)`, e.Spacecraft, e.Station, record.Stamp(e.First), record.Stamp(e.Last), e.Source, e.Elements, e.Note, record.Stamp(e.Taken), e.Digest,
+		e.Transmitter, e.Antenna, e.Mode, nullable(e.PredictedBytes), nullable(e.TakenBytes), len(e.Values), e.Sealed())
 	if err != nil {
 		return 0, err
 	}
@@ -52,7 +54,7 @@ func add(ctx context.Context, tx *sql.Tx, e *Entry) (int64, error) {
 	defer put.Close()
 	for i := range e.Values {
 		v := &e.Values[i]
-		if _, err := put.ExecContext(ctx, id, stamp(v.At), v.Quantity, v.Measured, nullable(v.Predicted), v.State, nullable(v.AzimuthDeg), nullable(v.ElevationDeg)); err != nil {
+		if _, err := put.ExecContext(ctx, id, record.Stamp(v.At), v.Quantity, v.Measured, nullable(v.Predicted), v.State, nullable(v.AzimuthDeg), nullable(v.ElevationDeg)); err != nil {
 			return 0, err
 		}
 	}
@@ -85,14 +87,14 @@ func (b *Book) List(ctx context.Context) ([]Entry, error) {
 		var predicted, bytes sql.NullFloat64
 		var samples sql.NullInt64
 		if err := rows.Scan(&e.ID, &e.Spacecraft, &e.Station, &first, &last, &e.Source, &e.Elements, &e.Note, &taken, &e.Digest,
-			&e.Transmitter, &e.Antenna, &e.Mode, &predicted, &bytes, &samples, &e.seal); err != nil {
+			&e.Transmitter, &e.Antenna, &e.Mode, &predicted, &bytes, &samples, &e.Seal); err != nil {
 			return out, b.unreadable(err)
 		}
 		e.PredictedBytes, e.TakenBytes, e.Samples = plain(predicted), plain(bytes), -1
 		if samples.Valid {
 			e.Samples = int(samples.Int64)
 		}
-		if err := e.times(first, last, taken); err != nil {
+		if err := e.ReadTimes(first, last, taken); err != nil {
 			return out, b.unreadable(err)
 		}
 		out = append(out, e)
@@ -101,15 +103,6 @@ func (b *Book) List(ctx context.Context) ([]Entry, error) {
 		return out, b.unreadable(err)
 	}
 	return out, nil
-}
-
-func (e *Entry) times(first, last, taken string) (err error) {
-	if e.First, err = time.Parse(layout, first); err == nil {
-		if e.Last, err = time.Parse(layout, last); err == nil {
-			e.Taken, err = time.Parse(layout, taken)
-		}
-	}
-	return err
 }
 
 // Fill reads the values of an entry; of a broken file what can be read, beside the error, which
@@ -126,7 +119,7 @@ func (b *Book) Fill(ctx context.Context, e *Entry) error {
 		var predicted, azimuth, elevation sql.NullFloat64
 		err := rows.Scan(&at, &v.Quantity, &v.Measured, &predicted, &v.State, &azimuth, &elevation)
 		if err == nil {
-			v.At, err = time.Parse(layout, at)
+			v.At, err = time.Parse(record.Layout, at)
 		}
 		if err != nil {
 			return b.unreadable(err)

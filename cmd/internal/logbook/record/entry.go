@@ -1,4 +1,4 @@
-package logbook
+package record
 
 import (
 	"crypto/sha256"
@@ -23,7 +23,7 @@ type Entry struct {
 	Values                         []Value
 
 	Samples int    // values that were written; -1: not known (before version 3)
-	seal    string // of what was written; empty before version 3
+	Seal    string // of what was written; empty before version 3
 }
 
 // Value is one measured number with what was predicted (NaN: nothing), where the spacecraft was
@@ -35,15 +35,14 @@ type Value struct {
 	AzimuthDeg, ElevationDeg float64
 }
 
-// ErrTaken says that the same measurements are in the book.
-var ErrTaken = errors.New("these measurements are in the logbook already")
-
 // ErrChanged says that an entry is not what was written.
 var ErrChanged = errors.New("it is not what was written")
 
-const layout = "2006-01-02T15:04:05.000000000Z"
+// Layout is how the times are written.
+const Layout = "2006-01-02T15:04:05.000000000Z"
 
-func stamp(t time.Time) string { return t.UTC().Format(layout) }
+// Stamp writes a time.
+func Stamp(t time.Time) string { return t.UTC().Format(Layout) }
 
 // Check compares an entry, filled, with the seal that was written with it: SHA-256 over every
 // text and number. The engine finds broken structure and no changed number; this does. An entry
@@ -52,23 +51,23 @@ func (e *Entry) Check() error {
 	switch {
 	case e.Samples >= 0 && len(e.Values) != e.Samples:
 		return fmt.Errorf("entry %d: %w: %d of %d measurements are there", e.ID, ErrChanged, len(e.Values), e.Samples)
-	case e.seal != "" && e.seal != e.sealed():
+	case e.Seal != "" && e.Seal != e.Sealed():
 		return fmt.Errorf("entry %d: %w: a text or number in it was changed", e.ID, ErrChanged)
 	}
 	return nil
 }
 
-// sealed returns the seal of an entry as it stands, its number left out.
-func (e *Entry) sealed() string {
+// Sealed returns the seal of an entry as it stands, its number left out.
+func (e *Entry) Sealed() string {
 	h := sha256.New()
-	for _, s := range []string{e.Spacecraft, e.Station, e.Transmitter, e.Antenna, e.Mode, stamp(e.First), stamp(e.Last), e.Source, e.Elements, e.Note, e.Digest, stamp(e.Taken)} {
+	for _, s := range []string{e.Spacecraft, e.Station, e.Transmitter, e.Antenna, e.Mode, Stamp(e.First), Stamp(e.Last), e.Source, e.Elements, e.Note, e.Digest, Stamp(e.Taken)} {
 		text(h, s)
 	}
 	number(h, e.PredictedBytes)
 	number(h, e.TakenBytes)
 	for i := range e.Values {
 		v := &e.Values[i]
-		text(h, stamp(v.At))
+		text(h, Stamp(v.At))
 		text(h, v.Quantity)
 		text(h, v.State)
 		for _, x := range []float64{v.Measured, v.Predicted, v.AzimuthDeg, v.ElevationDeg} {
@@ -78,6 +77,16 @@ func (e *Entry) sealed() string {
 	return hex.EncodeToString(h.Sum(nil))
 }
 
+// ReadTimes sets the times of an entry from their texts.
+func (e *Entry) ReadTimes(first, last, taken string) (err error) {
+	if e.First, err = time.Parse(Layout, first); err == nil {
+		if e.Last, err = time.Parse(Layout, last); err == nil {
+			e.Taken, err = time.Parse(Layout, taken)
+		}
+	}
+	return err
+}
+
 func text(h hash.Hash, s string) { fmt.Fprintf(h, "%d:%s", len(s), s) }
 
 func number(h hash.Hash, v float64) {
@@ -85,5 +94,6 @@ func number(h hash.Hash, v float64) {
 		text(h, "")
 		return
 	}
+	v += 0 // the engine does not keep the sign of nought
 	text(h, strconv.FormatFloat(v, 'g', -1, 64))
 }
