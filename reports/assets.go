@@ -18,9 +18,12 @@ var sharedStyle string
 //go:embed pages/comparison.css
 var comparisonStyle string
 
+//go:embed pages/timeline.css
+var timelineStyle string
+
 // styleSheet is the style of every page: what all share, then what one kind of page has of
 // its own, each rule of that under the class of its body.
-var styleSheet = sharedStyle + comparisonStyle
+var styleSheet = sharedStyle + timelineStyle + comparisonStyle
 
 //go:embed pages/charts.js
 var chartsCode string

@@ -1,6 +1,9 @@
 package reports
 
 import (
+	"bytes"
+	"fmt"
+	"html/template"
 	"strconv"
 	"strings"
 	"time"
@@ -103,4 +106,65 @@ func (b *Basis) view(above string) basisView {
 		v.Models = append(v.Models, namedText{m.Of, m.Name})
 	}
 	return v
+}
+
+// Lines are the basis as plain sentences, for paper.
+func (b *Basis) Lines() []string {
+	v := b.view("")
+	lines := []string{"Scenario " + v.Scenario + "; " + v.Program + "."}
+	for _, o := range v.Orbits {
+		lines = append(lines, o.Name+": "+o.Text+".")
+	}
+	var models []string
+	for _, m := range v.Models {
+		models = append(models, m.Name+" ("+m.Text+")")
+	}
+	if len(models) > 0 {
+		lines = append(lines, "Models: "+strings.Join(models, "; ")+".")
+	}
+	return append(lines, "Defaults taken: "+v.Count+".", v.Caution)
+}
+
+// ofPass is the basis of a pass's page: its own orbit at AOS, and the defaults among the
+// notes that the page lists.
+func (b *Basis) ofPass(p *Pass) Basis {
+	out := *b
+	out.Orbits, out.Defaults = nil, defaultsIn(p.Notes)
+	for _, o := range b.Orbits {
+		if o.Spacecraft != p.Spacecraft {
+			continue
+		}
+		if e := &p.Elements; !e.NoEpoch {
+			o.Epoch, o.AgeFrom, o.AgeTo = e.Epoch, e.Age, e.Age
+		}
+		out.Orbits = append(out.Orbits, o)
+		break
+	}
+	return out
+}
+
+func defaultsIn(notes []Note) []Note {
+	var out []Note
+	for _, n := range notes {
+		if n.Kind == Default {
+			out = append(out, n)
+		}
+	}
+	return out
+}
+
+// foot puts a basis under a page; above is the id of the heading under which the page
+// lists the defaults, empty where it does not.
+func (v *pageView) foot(b *Basis, above string) {
+	view := b.view(above)
+	v.Foot = &view
+}
+
+// FootHTML is the basis as it stands under a page, for a page that is made elsewhere.
+func FootHTML(b *Basis) (template.HTML, error) {
+	var out bytes.Buffer
+	if err := pageTemplates().ExecuteTemplate(&out, "basis", b.view("")); err != nil {
+		return "", fmt.Errorf("report: %w", err)
+	}
+	return template.HTML(out.String()), nil
 }

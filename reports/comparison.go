@@ -95,9 +95,8 @@ func ComparisonPage(c *Comparison) ([]byte, error) {
 	}
 	v.Orbits = c.orbits()
 	v.Both, v.Alone[0], v.Alone[1] = sharedNotes(c.Basis[0].Defaults, c.Basis[1].Defaults)
-	foot := c.foot()
-	view := foot.view("granted-title")
-	v.Foot = &view
+	basis := c.bothBases()
+	v.foot(&basis, "granted-title")
 	var out bytes.Buffer
 	if err := pageTemplates().ExecuteTemplate(&out, "comparison.html", v); err != nil {
 		return nil, fmt.Errorf("report: %w", err)
@@ -105,8 +104,8 @@ func ComparisonPage(c *Comparison) ([]byte, error) {
 	return out.Bytes(), nil
 }
 
-// foot is the basis of both sides.
-func (c *Comparison) foot() Basis {
+// bothBases is the basis of both sides.
+func (c *Comparison) bothBases() Basis {
 	b := Basis{Scenario: c.Names[0] + " before, " + c.Names[1] + " after", Program: c.Basis[0].Program, Caution: CautionCompare}
 	seen := map[BasisModel]bool{}
 	for i, side := range c.Basis {

@@ -19,6 +19,7 @@ type Curves struct {
 	X        Axis
 	Charts   []CurveChart
 	Notes    []Note
+	Basis    Basis
 }
 
 // Axis is the quantity along the charts.
@@ -62,6 +63,7 @@ type curveView struct {
 func CurvesPage(c *Curves) ([]byte, error) {
 	w := newWriter(&Report{}, Options{OneFile: true}, chartScript(), nil)
 	v := curveView{pageView: w.page("", c.Title), Lines: c.Lines, Warnings: c.Warnings, Notes: c.Notes}
+	v.foot(&c.Basis, "")
 	var drawings []drawing
 	for i := range c.Charts {
 		one := &c.Charts[i]

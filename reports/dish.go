@@ -22,6 +22,7 @@ type Dish struct {
 	Limits       []DishLimits // a dish after the other
 	Files        []DishFile
 	Notes        []Note
+	Basis        Basis
 }
 
 // DishRequirement is a row of what is required; texts as they are to be read.
@@ -73,6 +74,7 @@ type costBar struct {
 func DishPage(d *Dish) ([]byte, error) {
 	w := newWriter(&Report{}, Options{OneFile: true}, chartScript(), nil)
 	v := dishView{pageView: w.page("", d.Title), Dish: d, Title: d.Title}
+	v.foot(&d.Basis, "")
 	var drawings []drawing
 	for i := range d.Charts {
 		c := &d.Charts[i]

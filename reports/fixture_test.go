@@ -222,7 +222,7 @@ func fixtureBudget(f *downlink.Profile, s shape, i int) downlink.Budget {
 // fixtureReport makes a report of n passes with every kind of answer in it.
 func fixtureReport(n int) *Report {
 	r := &Report{
-		Title: "Field trial", From: firstAOS.Truncate(time.Hour), To: firstAOS.Truncate(time.Hour).Add(72 * time.Hour),
+		Title: "Field trial", Basis: basisFixture(), From: firstAOS.Truncate(time.Hour), To: firstAOS.Truncate(time.Hour).Add(72 * time.Hour),
 		Notes: []Note{
 			{Kind: Warning, About: "Wagtail 1", Text: "The element set is 4.2 days old in the middle of the window; order a fresh one."},
 			{Kind: Assumption, Text: "Azimuth counts clockwise from true north."},

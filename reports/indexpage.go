@@ -72,6 +72,7 @@ func newIndexView(w *writer, rows []row) *indexView {
 	if w.options.PDF {
 		v.PDF = paperFile
 	}
+	v.foot(w.indexBasis(), "assumptions-title")
 	v.addRows(rows)
 	v.addSky(rows)
 	for _, n := range r.Notes {
@@ -85,6 +86,13 @@ func newIndexView(w *writer, rows []row) *indexView {
 		}
 	}
 	return v
+}
+
+// indexBasis is what all passes stand on, with the defaults that hold for all of them.
+func (w *writer) indexBasis() *Basis {
+	b := w.report.Basis
+	b.Defaults = defaultsIn(w.report.Notes)
+	return &b
 }
 
 func indexPage(w *writer, v *indexView, rows []row) ([]byte, error) {

@@ -17,6 +17,7 @@ type Report struct {
 	From, To time.Time // the window that was searched
 	Horizon  station.ElevationKind
 	Notes    []Note // of the index
+	Basis    Basis  // of all passes
 
 	// Keys names the passes in the order of the index. Load returns pass i in full;
 	// workers call it at the same time, each i once, and drop the pass when its page

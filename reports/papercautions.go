@@ -10,9 +10,11 @@ var paperCautions = []string{
 	"Rules. Transmitting needs a licence for the frequency and the site, and in many countries so does receiving; the national rules decide. Local electrical and building codes come before this page, and so does the judgement of a licensed engineer.",
 }
 
-// cautionsOn ends a document.
-func cautionsOn(d *paper.Document) {
+// cautionsOn ends a document, with what its numbers stand on.
+func cautionsOn(d *paper.Document, b *Basis) {
 	d.Heading("Cautions")
 	d.Chapter("Cautions")
 	d.Notes(paperCautions)
+	d.Heading("What these numbers stand on")
+	d.Notes(b.Lines())
 }

@@ -57,7 +57,7 @@ func indexPaper(w *writer, v *indexView, rows []row) ([]byte, error) {
 		d.Heading("Left out in the scenario, and taken as")
 		d.Notes(noteTexts(v.Defaults))
 	}
-	cautionsOn(d)
+	cautionsOn(d, w.indexBasis())
 	return d.Bytes()
 }
 

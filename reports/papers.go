@@ -57,7 +57,8 @@ func passPaper(w *writer, p *Pass) ([]byte, error) {
 		v.Uplinks[i].on(d)
 	}
 	v.assumptionsOn(d)
-	cautionsOn(d)
+	basis := w.report.Basis.ofPass(p)
+	cautionsOn(d, &basis)
 	return d.Bytes()
 }
 

@@ -88,6 +88,8 @@ func passPage(w *writer, i int, p *Pass) ([]byte, error) {
 		v.Next = w.names[i+1]
 	}
 	v.addNotes(p.Notes)
+	basis := w.report.Basis.ofPass(p)
+	v.foot(&basis, "assumptions-title")
 	fr := newFrame(p)
 	drawings, views := figures(p, fr)
 	v.Figures, v.Ground, v.Sights = views, newGroundView(p), sightViews(p)

@@ -2,16 +2,11 @@ package reports
 
 import (
 	"bytes"
-	_ "embed"
 	"fmt"
-	"html/template"
 	"math"
 	"slices"
 	"time"
 )
-
-//go:embed pages/timeline.css
-var timelineStyle string
 
 // Timeline is a contact plan as a page: antennas as rows over time, the recorders below
 // on the same axis, and what is said of each contact and of each window not taken.
@@ -32,6 +27,7 @@ type Timeline struct {
 	Changes    []string // against the plan in force
 	Limits     []string // what more of each limit is worth
 	Notes      []string
+	Basis      Basis
 }
 
 // TimelineContact is a contact of the plan.
@@ -120,9 +116,8 @@ func TimelinePage(t *Timeline) ([]byte, error) {
 	if !t.To.After(t.From) {
 		return nil, fmt.Errorf("report: a plan from %s to %s has no length", t.From, t.To)
 	}
-	v := timelineView{Timeline: t}
-	v.Title, v.Policy = t.Head, "default-src 'none'; style-src 'unsafe-inline'; img-src data:; base-uri 'none'; form-action 'none'"
-	v.Style = template.HTML("<style>" + styleSheet + timelineStyle + "</style>")
+	v := timelineView{Timeline: t, pageView: plainPage(t.Head)}
+	v.foot(&t.Basis, "")
 	for i, name := range t.Spacecraft {
 		v.Legend = append(v.Legend, letter(i)+" "+name)
 	}

@@ -3,6 +3,7 @@ package cli
 import (
 	"fmt"
 	"path/filepath"
+	"slices"
 	"strings"
 
 	"slantwise/cmd/internal/scenario"
@@ -12,7 +13,7 @@ import (
 )
 
 // basisOf tells what the numbers of a page from a scenario stand on, for the spacecraft
-// that it is about.
+// that it is about; none for a path alone.
 func basisOf(s *scenario.Scenario, craft []*scenario.Spacecraft, caution reports.Caution) reports.Basis {
 	b := reports.Basis{Scenario: filepath.Base(s.Label), Program: version(), Caution: caution, Models: modelsOf(s, craft)}
 	for _, c := range craft {
@@ -21,6 +22,19 @@ func basisOf(s *scenario.Scenario, craft []*scenario.Spacecraft, caution reports
 	for _, a := range s.Assumptions {
 		b.Defaults = append(b.Defaults, reports.Note{Kind: reports.Default, About: a.About, Text: a.Text})
 	}
+	return b
+}
+
+// about keeps the defaults that hold for all and those about what is named, such as
+// "station Skerry Point", and its parts.
+func about(b reports.Basis, names ...string) reports.Basis {
+	var kept []reports.Note
+	for _, n := range b.Defaults {
+		if general(scenario.Note{About: n.About}) || slices.ContainsFunc(names, func(name string) bool { return n.About == name || strings.HasPrefix(n.About, name+", ") }) {
+			kept = append(kept, n)
+		}
+	}
+	b.Defaults = kept
 	return b
 }
 
@@ -83,10 +97,13 @@ func modelsOf(s *scenario.Scenario, craft []*scenario.Spacecraft) []reports.Basi
 	if tabulated {
 		out = append(out, reports.BasisModel{Of: "orbit", Name: "tabulated states between their points as their OEM asks, CCSDS 502.0-B"})
 	}
-	if !radioIn(craft) {
+	switch {
+	case craft == nil: // the air alone
+	case !radioIn(craft):
 		return out
+	default:
+		out = append(out, reports.BasisModel{Of: "free space", Name: "Rec. ITU-R P.525"})
 	}
-	out = append(out, reports.BasisModel{Of: "free space", Name: "Rec. ITU-R P.525"})
 	p, e := &s.Path, propagation.Newest
 	add := func(is bool, of string, names ...string) {
 		if is {

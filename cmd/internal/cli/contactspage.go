@@ -104,6 +104,10 @@ func (a *planAnswer) timeline(ctx context.Context) (*reports.Timeline, *planPage
 			fmt.Sprintf("Planned at %s for %s to %s.", utc(p.At(p.Now)), utc(p.At(0)), utc(p.At(p.Length))),
 		}, Notes: p.notes,
 	}
+	t.Basis = reports.Basis{Scenario: "none: windows and requests from files", Program: version(), Caution: reports.CautionPlan}
+	if p.scenario != nil {
+		t.Basis = basisOf(p.scenario, allCraft(p.scenario), reports.CautionPlan)
+	}
 	if !r.Proven && len(r.Left) > 0 {
 		t.Lines = append(t.Lines, "The bound does not know of some rules that the plan keeps, and may be loose by them: "+strings.Join(r.Left, ", ")+".")
 	}

@@ -10,6 +10,7 @@ import (
 	"path/filepath"
 
 	"slantwise/cmd/internal/atomicfile"
+	"slantwise/cmd/internal/scenario"
 	"slantwise/downlink"
 	"slantwise/downlink/sizing"
 	"slantwise/reports"
@@ -131,6 +132,11 @@ func (r *dishReport) page(files []reports.DishFile) *reports.Dish {
 	d, a := r.study, r.answer
 	lines := d.sentences(a)
 	out := &reports.Dish{Title: "Which dish for " + d.spacecraft.Name, Answer: lines[0], Lines: lines[1:], Files: files}
+	out.Basis = about(basisOf(d.scenario, []*scenario.Spacecraft{d.spacecraft}, reports.CautionSizing), d.names()...)
+	for i := range out.Basis.Orbits {
+		o := &out.Basis.Orbits[i] // its age is that of the statistics' start
+		o.Orbit, o.AgeTo = "kept orbit made of "+o.Orbit, o.AgeFrom
+	}
 	for i := range a.Verdicts {
 		v := &a.Verdicts[i]
 		q := reports.DishRequirement{Name: requirementText(v.Kind), Required: valueText(v.Required, v.Unit), Reached: valueText(v.ReachedNow, v.Unit), Met: v.MetNow,
@@ -156,6 +162,15 @@ func (r *dishReport) page(files []reports.DishFile) *reports.Dish {
 		} else {
 			out.Notes = append(out.Notes, reports.Note{Kind: noteKinds[n.Kind], Text: n.Text})
 		}
+	}
+	return out
+}
+
+// names are what the study is about, as notes of the scenario name it.
+func (d *dishStudy) names() []string {
+	out := []string{"spacecraft " + d.spacecraft.Name}
+	for i := range d.links {
+		out = append(out, "station "+d.links[i].station.Site.Name)
 	}
 	return out
 }

@@ -45,6 +45,7 @@ func (a *pathAnswer) curves(axis *sweepAxis) *reports.Curves {
 	head := a.head()
 	c := &reports.Curves{Title: "Path to " + a.target.station.Site.Name, Lines: head[:1], Warnings: head[1:],
 		X: reports.Axis{Name: axis.name, Unit: axis.unit, Values: a.column(x), Logarithmic: axis.logarithmic, Decimals: 3}}
+	c.Basis = about(basisOf(a.target.scenario, nil, reports.CautionPath), "station "+a.target.station.Site.Name)
 	if axis.name != "elevation" {
 		c.Lines = append(c.Lines, fmt.Sprintf("at an elevation of %g deg", a.points[0].elevation.Degrees()))
 	}

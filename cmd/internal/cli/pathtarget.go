@@ -10,11 +10,12 @@ import (
 
 // pathTarget is the path that a command asks about.
 type pathTarget struct {
-	station *scenario.Station
-	choice  *scenario.PathChoice
-	spec    propagation.PathSpec
-	linear  bool // both antennas, with a known angle between them
-	notes   []downlink.Note
+	scenario *scenario.Scenario
+	station  *scenario.Station
+	choice   *scenario.PathChoice
+	spec     propagation.PathSpec
+	linear   bool // both antennas, with a known angle between them
+	notes    []downlink.Note
 }
 
 // target finds station, frequency, polarisation and antenna of the path.
@@ -29,7 +30,7 @@ func (o *pathOptions) target(s *scenario.Scenario) (*pathTarget, error) {
 	}
 	sky := &skyLink{}
 	k := newSkies(s)
-	out := &pathTarget{station: st, choice: &s.Path, spec: k.spec(st, t.Frequency)}
+	out := &pathTarget{scenario: s, station: st, choice: &s.Path, spec: k.spec(st, t.Frequency)}
 	if o.tiltDeg != nil {
 		out.spec.Tilt = unit.Angle(*o.tiltDeg) * unit.Degree
 	} else {

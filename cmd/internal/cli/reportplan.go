@@ -245,7 +245,7 @@ func (p *reportPlan) report() *reports.Report {
 	s := p.scenario
 	r := &reports.Report{
 		Title: filepath.Base(s.Label), From: s.Window.Start, To: s.Window.End, Horizon: s.Horizon,
-		Notes: p.generalNotes(), Load: p.load,
+		Notes: p.generalNotes(), Basis: basisOf(s, p.flown(), reports.CautionPass), Load: p.load,
 	}
 	for _, page := range p.pages {
 		k := reports.Key{Spacecraft: p.craft[page.Spacecraft].Name, Station: p.sites[page.Site].Site.Name, AOS: page.AOS}
@@ -255,6 +255,15 @@ func (p *reportPlan) report() *reports.Report {
 		r.Keys = append(r.Keys, k)
 	}
 	return r
+}
+
+// flown are the spacecraft of the report.
+func (p *reportPlan) flown() []*scenario.Spacecraft {
+	var out []*scenario.Spacecraft
+	for i := range p.craft {
+		out = append(out, p.craft[i].Spacecraft)
+	}
+	return out
 }
 
 // noteKinds maps the kinds of a link's notes to those of a report.

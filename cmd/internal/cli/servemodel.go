@@ -3,6 +3,7 @@ package cli
 import (
 	"context"
 	"fmt"
+	"html/template"
 	"math"
 	"path/filepath"
 	"time"
@@ -24,6 +25,7 @@ type liveModel struct {
 	contacts []web.Contact // as plan.pages
 	places   map[string]int
 	flights  liveFlights
+	foot     template.HTML
 }
 
 func newLiveModel(ctx context.Context, request scenario.Request, s *scenario.Scenario) (*liveModel, error) {
@@ -32,6 +34,9 @@ func newLiveModel(ctx context.Context, request scenario.Request, s *scenario.Sce
 		return nil, err
 	}
 	m := &liveModel{request: request, plan: plan, contacts: []web.Contact{}, places: map[string]int{}}
+	if m.foot, err = liveFoot(plan); err != nil {
+		return nil, err
+	}
 	for i := range plan.pages {
 		p := &plan.pages[i]
 		c := web.Contact{

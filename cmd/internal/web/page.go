@@ -25,6 +25,7 @@ var pageTemplate = template.Must(template.New("live").Parse(pageText))
 // page writes the page, its script and style inside under a nonce of its own.
 func (s *Server) page(w http.ResponseWriter, _ *http.Request) {
 	nonce := rand.Text()
+	model, _, _ := s.keeper.now()
 	var b bytes.Buffer
 	err := pageTemplate.Execute(&b, struct {
 		Nonce   string
@@ -32,7 +33,8 @@ func (s *Server) page(w http.ResponseWriter, _ *http.Request) {
 		Script  template.JS
 		SaveKey string
 		Land    string
-	}{nonce, template.CSS(s.config.Style + pageStyle), template.JS(drawingScript + pageScript), s.saveKey, s.config.Land})
+		Foot    template.HTML
+	}{nonce, template.CSS(s.config.Style + pageStyle), template.JS(drawingScript + pageScript), s.saveKey, s.config.Land, model.Foot()})
 	if err != nil {
 		fail(w, err)
 		return

@@ -5,6 +5,7 @@ import (
 	"context"
 	"encoding/json"
 	"errors"
+	"html/template"
 	"net"
 	"net/http"
 	"net/http/httptest"
@@ -27,6 +28,8 @@ func (m *fakeModel) Detail(_ context.Context, id string) (*Detail, error) {
 	}
 	return &Detail{}, nil
 }
+func (m *fakeModel) Foot() template.HTML { return "<p>stands on nothing</p>" }
+
 func (m *fakeModel) WhatIf(_ context.Context, q *Question) (*Answer, error) {
 	if q.Contact != "a" {
 		return nil, nil

@@ -2,6 +2,7 @@ package web
 
 import (
 	"context"
+	"html/template"
 	"math"
 	"strconv"
 	"time"
@@ -14,6 +15,7 @@ type Model interface {
 	Detail(ctx context.Context, id string) (*Detail, error)   // nil without an error: no such contact
 	WhatIf(ctx context.Context, q *Question) (*Answer, error) // nil without an error: no such contact
 	Scenario(ctx context.Context, w *Wish) (*File, error)     // nil without an error: no such contact
+	Foot() template.HTML                                      // what the numbers stand on, for the page
 }
 
 // Number is a number that may not exist: NaN and infinities are null in JSON.
