@@ -60,9 +60,9 @@ func goldenReport() *Report {
 
 // withoutCoast makes pages that do not depend on whether the coastline was brought.
 func withoutCoast(t *testing.T) {
-	brought := coast
-	coast = func() [][]int { return nil }
-	t.Cleanup(func() { coast = brought })
+	brought, turned := coast, coastPlaces
+	coast, coastPlaces = func() [][]int { return nil }, func() [][]Place { return nil }
+	t.Cleanup(func() { coast, coastPlaces = brought, turned })
 }
 
 func TestGolden(t *testing.T) {
