@@ -84,3 +84,34 @@ func fail(w http.ResponseWriter, err error) {
 	}
 	refuse(w, http.StatusInternalServerError, err.Error())
 }
+
+// toldInJSON has the refusals of a router told as all others are: that there is no such
+// page, or that it takes no such method.
+func toldInJSON(mux *http.ServeMux) http.Handler {
+	return http.HandlerFunc(func(w http.ResponseWriter, r *http.Request) {
+		h, pattern := mux.Handler(r)
+		if pattern != "" {
+			mux.ServeHTTP(w, r)
+			return
+		}
+		only := &statusOnly{ResponseWriter: w, code: http.StatusOK}
+		h.ServeHTTP(only, r)
+		text := "there is no such page; / is the page itself, /api/schema describes the rest"
+		if only.code == http.StatusMethodNotAllowed {
+			text = "the page takes " + w.Header().Get("Allow") + " alone"
+		}
+		refuse(w, only.code, text)
+	})
+}
+
+// statusOnly takes the status of an answer and drops the rest.
+type statusOnly struct {
+	http.ResponseWriter
+	code int
+}
+
+// WriteHeader keeps the status.
+func (s *statusOnly) WriteHeader(code int) { s.code = code }
+
+// Write drops the text.
+func (s *statusOnly) Write(b []byte) (int, error) { return len(b), nil }

@@ -6,7 +6,18 @@ import (
 	"net/http"
 	"strings"
 	"testing"
+
+	"slantwise/cmd/internal/web/schematest"
 )
+
+func schemaOf(t *testing.T) *schematest.Schema {
+	t.Helper()
+	s, err := schematest.New(schema)
+	if err != nil {
+		t.Fatal(err)
+	}
+	return s
+}
 
 // TestAttacks sends what another site, another name of the host and a clumsy or hostile
 // client would send.
@@ -68,12 +79,20 @@ func TestAttacks(t *testing.T) {
 	} {
 		t.Run(row.name, func(t *testing.T) {
 			got := send(h, row.method, row.address, row.body, row.head...)
+			body, err := io.ReadAll(got.Body)
+			if err != nil {
+				t.Fatal(err)
+			}
 			if got.StatusCode != row.want {
-				b, _ := io.ReadAll(got.Body)
-				t.Errorf("status %d, want %d: %s", got.StatusCode, row.want, b)
+				t.Errorf("status %d, want %d: %s", got.StatusCode, row.want, body)
 			}
 			if p := got.Header.Get("Content-Security-Policy"); !strings.HasPrefix(p, "default-src 'none'") || strings.Contains(p, "unsafe") {
 				t.Errorf("policy %q", p)
+			}
+			if row.want >= 400 && row.method != "HEAD" {
+				if err := schemaOf(t).Check("refusal", body); err != nil {
+					t.Error(err)
+				}
 			}
 			for key, want := range map[string]string{
 				"X-Content-Type-Options": "nosniff", "Referrer-Policy": "no-referrer", "Cross-Origin-Resource-Policy": "same-origin",

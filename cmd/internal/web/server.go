@@ -83,7 +83,7 @@ func (s *Server) Handler(port string) http.Handler {
 	mux.HandleFunc("GET /api/schema", getSchema)
 	mux.HandleFunc("GET /events", s.events)
 	g := &guard{hosts: hostsOf(s.config.Host, port), token: s.config.Token}
-	return g.wrap(mux)
+	return g.wrap(toldInJSON(mux))
 }
 
 // Serve answers on l until ctx ends, and closes it. It serves once.

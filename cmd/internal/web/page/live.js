@@ -176,8 +176,8 @@ function second() {
   if (detail) charts();
 }
 let generation = 0;
-const source = new EventSource("/events");
-source.addEventListener("state", e => {
+let source = null;
+function heardState(e) {
   const first = !state;
   state = JSON.parse(e.data);
   heard = performance.now();
@@ -185,9 +185,31 @@ source.addEventListener("state", e => {
   if (first) recall(); // before the first contact is chosen, which takes the address
   fill();
   map();
-  if (!first && generation !== state.generation && chosen) { shownNext = ""; choose(chosen); }
+  if (!first && generation !== state.generation) {
+    shownNext = "";
+    if (chosen) choose(chosen);
+  }
   generation = state.generation;
   second();
-});
-source.addEventListener("error", () => { $("link").textContent = "The program does not answer; what stands here grows old. Trying again."; });
+}
+// A browser has few connections to one program: a page that nobody looks at gives its own back.
+function listen() {
+  if (document.hidden) {
+    source?.close();
+    source = null;
+    return;
+  }
+  if (source) return;
+  source = new EventSource("/events");
+  source.addEventListener("state", heardState);
+  source.addEventListener("error", () => {
+    $("link").textContent = "The program does not answer; what stands here grows old. Trying again.";
+    if (source?.readyState === EventSource.CLOSED) { // it was refused, which the browser does not try again
+      source = null;
+      setTimeout(listen, 5000);
+    }
+  });
+}
+document.addEventListener("visibilitychange", listen);
+listen();
 setInterval(second, 500);
