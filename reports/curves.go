@@ -13,13 +13,14 @@ import (
 
 // Curves is a page of charts over one quantity that is not time.
 type Curves struct {
-	Title    string
-	Lines    []string // what the page is about, a sentence each
-	Warnings []string // shown at the head
-	X        Axis
-	Charts   []CurveChart
-	Notes    []Note
-	Basis    Basis
+	Title      string
+	Lines      []string // what the page is about, a sentence each
+	Warnings   []string // shown at the head
+	X          Axis
+	Charts     []CurveChart
+	Notes      []Note
+	Basis      Basis
+	Scriptless bool // the charts are drawn in the page
 }
 
 // Axis is the quantity along the charts.
@@ -61,28 +62,64 @@ type curveView struct {
 
 // CurvesPage returns the page as one file of HTML that holds everything inside.
 func CurvesPage(c *Curves) ([]byte, error) {
-	w := newWriter(&Report{}, Options{OneFile: true}, chartScript(), nil)
+	if err := c.check(); err != nil {
+		return nil, err
+	}
+	w := newWriter(&Report{}, Options{OneFile: true, Static: c.Scriptless}, chartScript(), nil)
 	v := curveView{pageView: w.page("", c.Title), Lines: c.Lines, Warnings: c.Warnings, Notes: c.Notes}
 	v.foot(&c.Basis, "")
 	var drawings []drawing
 	for i := range c.Charts {
 		one := &c.Charts[i]
-		for _, k := range one.Curves {
-			if len(k.Values) != len(c.X.Values) {
-				return nil, fmt.Errorf("report: chart %q: %q has %d values for %d points", one.ID, k.Name, len(k.Values), len(c.X.Values))
-			}
+		if !c.Scriptless {
+			drawings = append(drawings, c.draw(one))
 		}
-		drawings = append(drawings, c.draw(one))
-		v.Figures = append(v.Figures, figureView{ID: one.ID, Title: one.Title, Caption: one.Caption, Table: c.table(one), Many: len(one.Curves) > len(fewDashes)})
+		v.Figures = append(v.Figures, c.view(one, c.Scriptless))
 	}
-	data, err := marshalDrawings(map[string]any{"drawings": drawings})
-	if err != nil {
+	var err error
+	if v.Data, err = w.drawn(drawings); err != nil {
 		return nil, err
 	}
-	v.Data = dataElement(data)
 	var out bytes.Buffer
 	err = pageTemplates().ExecuteTemplate(&out, "curves.html", v)
 	return out.Bytes(), err
+}
+
+// check refuses charts that cannot be drawn.
+func (c *Curves) check() error {
+	if len(c.X.Values) == 0 {
+		return fmt.Errorf("report: an axis of %s without points", c.X.Name)
+	}
+	for i := range c.Charts {
+		for _, k := range c.Charts[i].Curves {
+			if len(k.Values) != len(c.X.Values) {
+				return fmt.Errorf("report: chart %q: %q has %d values for %d points", c.Charts[i].ID, k.Name, len(k.Values), len(c.X.Values))
+			}
+		}
+	}
+	return nil
+}
+
+// view is a chart as the template shows it, drawn where the page has no script.
+func (c *Curves) view(one *CurveChart, static bool) figureView {
+	v := figureView{ID: one.ID, Title: one.Title, Caption: one.Caption, Table: c.table(one), Many: len(one.Curves) > len(fewDashes)}
+	if static {
+		s := c.sketch(one)
+		v.Drawing = s.markup(one.Title + ". " + one.Caption)
+	}
+	return v
+}
+
+// drawn holds the charts for the page's script; nothing where there is none.
+func (w *writer) drawn(drawings []drawing) (template.HTML, error) {
+	if w.options.Static {
+		return "", nil
+	}
+	data, err := marshalDrawings(map[string]any{"drawings": drawings})
+	if err != nil {
+		return "", err
+	}
+	return dataElement(data), nil
 }
 
 // fewDashes tell up to three lines apart; more of them need symbols.

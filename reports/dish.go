@@ -23,6 +23,7 @@ type Dish struct {
 	Files        []DishFile
 	Notes        []Note
 	Basis        Basis
+	Scriptless   bool // the charts are drawn in the page
 }
 
 // DishRequirement is a row of what is required; texts as they are to be read.
@@ -72,7 +73,10 @@ type costBar struct {
 
 // DishPage returns the page as one file of HTML that holds everything inside.
 func DishPage(d *Dish) ([]byte, error) {
-	w := newWriter(&Report{}, Options{OneFile: true}, chartScript(), nil)
+	if err := d.check(); err != nil {
+		return nil, err
+	}
+	w := newWriter(&Report{}, Options{OneFile: true, Static: d.Scriptless}, chartScript(), nil)
 	v := dishView{pageView: w.page("", d.Title), Dish: d, Title: d.Title}
 	v.foot(&d.Basis, "")
 	var drawings []drawing
@@ -80,13 +84,10 @@ func DishPage(d *Dish) ([]byte, error) {
 		c := &d.Charts[i]
 		for k := range c.Charts {
 			one := &c.Charts[k]
-			for _, line := range one.Curves {
-				if len(line.Values) != len(c.X.Values) {
-					return nil, fmt.Errorf("report: chart %q: %q has %d values for %d points", one.ID, line.Name, len(line.Values), len(c.X.Values))
-				}
+			if !d.Scriptless {
+				drawings = append(drawings, c.draw(one))
 			}
-			drawings = append(drawings, c.draw(one))
-			v.Figures = append(v.Figures, figureView{ID: one.ID, Title: one.Title, Caption: one.Caption, Table: c.table(one), Many: len(one.Curves) > len(fewDashes)})
+			v.Figures = append(v.Figures, c.view(one, d.Scriptless))
 		}
 	}
 	dearest := 0.0
@@ -100,12 +101,21 @@ func DishPage(d *Dish) ([]byte, error) {
 		}
 		v.Bars = append(v.Bars, costBar{c, template.CSS(fmt.Sprintf("--share:%.1f%%", share))})
 	}
-	data, err := marshalDrawings(map[string]any{"drawings": drawings})
-	if err != nil {
+	var err error
+	if v.Data, err = w.drawn(drawings); err != nil {
 		return nil, err
 	}
-	v.Data = dataElement(data)
 	var out bytes.Buffer
 	err = pageTemplates().ExecuteTemplate(&out, "dish.html", v)
 	return out.Bytes(), err
+}
+
+// check refuses charts that cannot be drawn.
+func (d *Dish) check() error {
+	for i := range d.Charts {
+		if err := d.Charts[i].check(); err != nil {
+			return err
+		}
+	}
+	return nil
 }

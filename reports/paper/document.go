@@ -43,6 +43,7 @@ type Document struct {
 	listAt []place   // where its parts stand; empty: no list
 	set    setting
 	boxes  map[rune]bool // letters that the font lacks
+	heads  []head        // that wait for what comes under them
 	whole  bool          // the last page is drawn from edge to edge
 }
 
@@ -119,10 +120,20 @@ func (d *Document) Page() {
 	d.y = margin
 }
 
-// room begins a page where less than h points are left on this one.
+// room begins a page where less than h points are left on this one, with the headings that wait.
 func (d *Document) room(h float64) {
-	if d.page == nil || d.y+h > bottom {
+	heads := 0.0
+	for _, one := range d.heads {
+		heads += d.headHeight(one)
+	}
+	if heads > 0 {
+		h = heads + max(h, leastUnder)
+	}
+	if d.page == nil || d.y+h > bottom && d.y > margin {
 		d.Page()
+	}
+	if heads > 0 {
+		d.writeHeads()
 	}
 }
 
@@ -157,9 +168,18 @@ func (d *Document) List() {
 	d.Page()
 }
 
-// Chapter puts a line into the list of contents and the bookmarks, at this place.
+// Chapter puts a line into the list of contents and the bookmarks, at this place: at the heading where
+// one was just told.
 func (d *Document) Chapter(text string) {
+	if n := len(d.heads); n > 0 {
+		d.heads[n-1].chapter = text
+		return
+	}
 	d.room(0)
+	d.chapter(text)
+}
+
+func (d *Document) chapter(text string) {
 	to := d.page.Target(d.y)
 	d.file.Bookmark(text, to)
 	d.listed = append(d.listed, entry{text, len(d.pages), to})
@@ -208,6 +228,7 @@ func (d *Document) foot() {
 // Bytes ends the document and returns the file. It fails where the list of contents has more lines
 // than were told.
 func (d *Document) Bytes() ([]byte, error) {
+	d.room(0)
 	d.tellBoxes()
 	if len(d.listAt) > 0 {
 		if len(d.listed) > d.info.Contents {

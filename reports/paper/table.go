@@ -14,6 +14,8 @@ type Table struct {
 	Rows   []Row
 	First  float64 // share of the width that the names have where all fits; 0: 0.4
 	Left   bool    // texts, set at the left of their columns
+	// Numbers is how many of the last columns of a table of texts hold numbers, set at their right.
+	Numbers int
 }
 
 // Heights of the lines of a table, and its sizes of text.
@@ -103,7 +105,7 @@ func (d *Document) row(t *Table, r Row, columns []float64) {
 	for k, lines := range l.cells {
 		for i, line := range lines {
 			base := y + 8.5 + float64(i)*cellLine
-			if t.Left {
+			if t.Left && k < len(l.cells)-t.Numbers {
 				d.put(x, base, line)
 			} else {
 				d.right(x+columns[k+1]-1, base, line)

@@ -6,13 +6,40 @@ import (
 	"strings"
 )
 
-// Heading writes the head of a section, with room for what comes under it.
-func (d *Document) Heading(text string) {
-	d.room(60)
-	d.y += 6
+// Heading writes the head of a section, on the page on which what comes under it begins.
+func (d *Document) Heading(text string) { d.heads = append(d.heads, head{text: text}) }
+
+// head is a heading that waits for what comes under it.
+type head struct {
+	text    string
+	chapter string // of the list of contents that begins here; empty: none
+}
+
+// leastUnder is how much of what comes under a heading stands on its page at least.
+const leastUnder = 40.0
+
+// headHeight is how high a heading is.
+func (d *Document) headHeight(h head) float64 {
 	d.font("B", 11.5, ink)
-	d.block(text, 15)
-	d.y += 2
+	return 8 + 15*float64(len(d.split(h.text, fieldWidth)))
+}
+
+// writeHeads writes the headings that wait.
+func (d *Document) writeHeads() {
+	heads := d.heads
+	d.heads = nil
+	for _, h := range heads {
+		d.y += 6
+		if h.chapter != "" {
+			d.chapter(h.chapter)
+		}
+		d.font("B", 11.5, ink)
+		for _, line := range d.split(h.text, fieldWidth) {
+			d.put(margin, d.y+drop(15, 11.5), line)
+			d.y += 15
+		}
+		d.y += 2
+	}
 }
 
 // Paragraph writes text over the whole width.
@@ -44,7 +71,7 @@ func (d *Document) block(text string, high float64) {
 	set := d.set
 	for _, line := range d.split(text, fieldWidth) {
 		d.room(high)
-		d.set = set
+		d.set = set // a heading may have come before
 		d.put(margin, d.y+drop(high, set.size), line)
 		d.y += high
 	}
@@ -56,6 +83,7 @@ func (d *Document) Caution(text string) {
 	lines := d.split("⚠ "+text, fieldWidth-16)
 	high := float64(len(lines))*lineHeight + 8
 	d.room(high + 4)
+	d.font("B", textSize, ink)
 	d.page.Pen(ink, 0.7)
 	d.page.Rectangle(margin, d.y, fieldWidth, high)
 	d.page.Draw()
@@ -75,6 +103,7 @@ func (d *Document) Notes(list []string) {
 		d.font("", size, ink)
 		for i, line := range d.split(text, fieldWidth-10) {
 			d.room(high)
+			d.font("", size, ink)
 			if i == 0 {
 				d.put(margin, d.y+drop(high, size), "•")
 			}

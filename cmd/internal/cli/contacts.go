@@ -59,7 +59,7 @@ changes cost what the scenario's weights say, and the changes are listed.
 Exit codes beside those of slantwise --help: contacts verify gives 1 where the plan breaks
 a rule.`,
 		Example: `  slantwise contacts --iterations 10
-  slantwise contacts --iterations 10 --save plan.csv --calendar plan.ics --page plan.html
+  slantwise contacts --iterations 10 --save plan.csv --calendar plan.ics --page plan.html --pdf plan.pdf
   slantwise contacts --iterations 10 --now 2026-09-15T12:00:00Z --in-force plan.csv --save later.csv`,
 		Args: noArgs,
 		RunE: func(cmd *cobra.Command, _ []string) error { return runContacts(cmd.Context(), env, &o) },

@@ -16,7 +16,7 @@ import (
 
 // planOutputs are the files that a plan is written to beside standard output.
 type planOutputs struct {
-	save, calendar, calendars, pointing, page string
+	save, calendar, calendars, pointing, page, pdf string
 }
 
 func (f *planOutputs) add(fs *pflag.FlagSet) {
@@ -24,6 +24,7 @@ func (f *planOutputs) add(fs *pflag.FlagSet) {
 	fs.StringVar(&f.calendar, "calendar", "", "iCalendar `FILE` to write; one that is there is revised: events keep their UID, dropped ones are cancelled")
 	fs.StringVar(&f.calendars, "calendars", "", "`FOLDER` of calendars to write or revise, one for each station and spacecraft")
 	fs.StringVar(&f.page, "page", "", "HTML `FILE` to write the plan to over time, with a CSV and a JSON file of its numbers beside it")
+	fs.StringVar(&f.pdf, "pdf", "", "PDF `FILE` to write the plan to for print, its charts as vectors")
 	fs.StringVar(&f.pointing, "pointing", "", "`FOLDER` to write a pointing file for each contact to, a row a second")
 }
 
@@ -46,8 +47,8 @@ func (a *planAnswer) writeFiles(ctx context.Context, f *planOutputs) error {
 			return err
 		}
 	}
-	if f.page != "" {
-		if err := a.writePage(ctx, f.page); err != nil {
+	if f.page != "" || f.pdf != "" {
+		if err := a.writeDrawn(ctx, f); err != nil {
 			return err
 		}
 	}

@@ -56,16 +56,47 @@ type pageVolume struct {
 	Bytes      number `json:"bytes"`
 }
 
-// writePage writes the page, and the plan as CSV and all numbers as JSON beside it.
-func (a *planAnswer) writePage(ctx context.Context, file string) error {
-	base := strings.TrimSuffix(file, filepath.Ext(file))
-	if base == file {
-		return inputErrorf("--page: %q has no ending; let it end in .html", file)
+// writeDrawn writes the page and the paper, of the same content.
+func (a *planAnswer) writeDrawn(ctx context.Context, f *planOutputs) error {
+	base := strings.TrimSuffix(f.page, filepath.Ext(f.page))
+	if f.page != "" && base == f.page {
+		return inputErrorf("--page: %q has no ending; let it end in .html", f.page)
 	}
 	t, data, err := a.timeline(ctx)
 	if err != nil {
 		return err
 	}
+	if f.pdf != "" {
+		content, err := reports.TimelinePaper(t)
+		if err != nil {
+			return err
+		}
+		if err := writeWhole(f.pdf, content); err != nil {
+			return err
+		}
+	}
+	if f.page == "" {
+		return nil
+	}
+	return a.writePage(t, data, f.page, base)
+}
+
+// basis is what the plan stands on. Windows from outside fly nothing.
+func (a *planAnswer) basis() reports.Basis {
+	s := a.p.scenario
+	if len(a.p.flown) > 0 {
+		return basisOf(s, allCraft(s), reports.CautionPlan)
+	}
+	b := basisOf(s, nil, reports.CautionPlan)
+	b.Models = nil
+	if s.Demo {
+		b.Scenario, b.Defaults = "none: windows and requests from files", nil
+	}
+	return b
+}
+
+// writePage writes the page, and the plan as CSV and all numbers as JSON beside it.
+func (a *planAnswer) writePage(t *reports.Timeline, data *planPage, file, base string) error {
 	t.Files = []string{filepath.Base(base) + ".csv", filepath.Base(base) + ".json"}
 	page, err := reports.TimelinePage(t)
 	if err != nil {
@@ -102,11 +133,7 @@ func (a *planAnswer) timeline(ctx context.Context) (*reports.Timeline, *planPage
 		Lines: []string{
 			fmt.Sprintf("Value %.6g, and no plan is worth more than %.6g.", r.Value, r.Bound),
 			fmt.Sprintf("Planned at %s for %s to %s.", utc(p.At(p.Now)), utc(p.At(0)), utc(p.At(p.Length))),
-		}, Notes: p.notes,
-	}
-	t.Basis = reports.Basis{Scenario: "none: windows and requests from files", Program: version(), Caution: reports.CautionPlan}
-	if p.scenario != nil {
-		t.Basis = basisOf(p.scenario, allCraft(p.scenario), reports.CautionPlan)
+		}, Notes: p.notes, Basis: a.basis(),
 	}
 	if !r.Proven && len(r.Left) > 0 {
 		t.Lines = append(t.Lines, "The bound does not know of some rules that the plan keeps, and may be loose by them: "+strings.Join(r.Left, ", ")+".")

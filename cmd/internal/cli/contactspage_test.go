@@ -11,7 +11,7 @@ import (
 func TestContactsPage(t *testing.T) {
 	writeInto(t, nil)
 	for _, name := range []string{"a.html", "b.html"} {
-		if code, _, errOut := invoke(t, "contacts", "--iterations", "3", "--page", name, "--pointing", "pointing"); code != ExitAnswer {
+		if code, _, errOut := invoke(t, "contacts", "--iterations", "3", "--page", name, "--pdf", name+".pdf", "--pointing", "pointing"); code != ExitAnswer {
 			t.Fatal(errOut)
 		}
 	}
@@ -23,6 +23,9 @@ func TestContactsPage(t *testing.T) {
 		return string(text)
 	}
 	same := strings.NewReplacer("a.csv", "b.csv", "a.json", "b.json").Replace(read("a.html")) == read("b.html")
+	if paper := read("a.html.pdf"); !strings.HasPrefix(paper, "%PDF-1.") || paper != read("b.html.pdf") {
+		t.Error("the papers of two runs differ, or are none")
+	}
 	if !same || read("a.json") != read("b.json") {
 		t.Error("two runs differ")
 	}

@@ -19,6 +19,8 @@ type dishOptions struct {
 	elementSet string   // file; empty: none
 	days       *float64 // nil: the scenario's
 	diameter   *float64 // nil: see dishStudy.chosen
+	pdf        string
+	static     bool
 	format     format
 }
 
@@ -47,7 +49,7 @@ Sensitivities and chances are of the least dish that meets all, limits of the sc
 own dishes and of that one; --diameter-m asks about another.`,
 		Example: `  slantwise dish --days 28
   slantwise dish --days 28 --show trade --format csv
-  slantwise dish --days 28 --report dish
+  slantwise dish --days 28 --report dish --pdf dish.pdf
   slantwise dish --days 28 --show map --axis noise
   slantwise dish --days 28 --show sensitivities --diameter-m 9`,
 		Args: noArgs,
@@ -58,6 +60,8 @@ own dishes and of that one; --diameter-m asks about another.`,
 	addNumber(cmd.Flags(), &o.diameter, "diameter-m", "ask about a dish of so many `METRES`")
 	addNumber(cmd.Flags(), &o.days, "days", "how many `DAYS` are flown, in place of the scenario's")
 	cmd.Flags().StringVar(&o.report, "report", "", "write a page with charts, and its numbers as CSV and JSON, into the folder `DIR`")
+	cmd.Flags().BoolVar(&o.static, "static", false, "write the page of --report without script, its charts drawn in it")
+	cmd.Flags().StringVar(&o.pdf, "pdf", "", "write the answer with its charts into the PDF `FILE`, for print")
 	cmd.Flags().StringVar(&o.elementSet, "element-set", "", "write the element set of the orbit that is flown, without drag, into `FILE` as two lines, for anyone to check")
 	addFormat(cmd, &o.format)
 	return cmd
@@ -91,7 +95,7 @@ func runDish(ctx context.Context, env *Env, o *dishOptions) error {
 	if err != nil {
 		return err
 	}
-	if o.report != "" {
+	if o.report != "" || o.pdf != "" {
 		if err := writeDishReport(ctx, env, d, a, o); err != nil {
 			return err
 		}
@@ -110,6 +114,9 @@ func runDish(ctx context.Context, env *Env, o *dishOptions) error {
 func (o *dishOptions) check() error {
 	if !slices.Contains(sizing.Axes, sizing.Axis(o.axis)) {
 		return inputErrorf("--axis: %q is not allowed; it must be power, elevation, noise or frequency", o.axis)
+	}
+	if o.static && o.report == "" {
+		return inputErrorf("--static goes with --report")
 	}
 	if m := o.diameter; m != nil && !(*m > 0 && *m <= 1000) {
 		return inputErrorf("--diameter-m: %g m is not allowed; it must be greater than 0 and at most 1000 m", *m)

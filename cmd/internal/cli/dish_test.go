@@ -164,12 +164,12 @@ func TestDishReport(t *testing.T) {
 	file := dishScenario(t, dishBlock+"    bytes_per_day: 2.0e9\n    margin_at_elevation: {elevation_deg: 20, margin_db: 3}\n")
 	dir := filepath.Join(t.TempDir(), "dish")
 	write := func() map[string]string {
-		code, _, errOut := invoke(t, "dish", "--scenario", file, "--report", dir)
+		code, _, errOut := invoke(t, "dish", "--scenario", file, "--report", dir, "--static", "--pdf", filepath.Join(dir, "dish.pdf"))
 		if code != 0 {
 			t.Fatalf("exit code %d: %s", code, errOut)
 		}
 		out := map[string]string{}
-		for _, name := range []string{"index.html", "answer.json", "trade.csv", "trade.json", "map-power.csv", "map-frequency.json", "sensitivities.csv", "chances.json", "limits.csv", "requirements.json"} {
+		for _, name := range []string{"index.html", "answer.json", "trade.csv", "trade.json", "map-power.csv", "map-frequency.json", "sensitivities.csv", "chances.json", "limits.csv", "requirements.json", "dish.pdf"} {
 			text, err := os.ReadFile(filepath.Join(dir, name))
 			if err != nil {
 				t.Fatal(err)
@@ -187,10 +187,16 @@ func TestDishReport(t *testing.T) {
 			t.Errorf("%s lacks %q", name, want)
 		}
 	}
+	if strings.Contains(first["index.html"], "<script") || !strings.HasPrefix(first["dish.pdf"], "%PDF-1.") {
+		t.Error("a script in the page without one, or no paper")
+	}
 	for name, text := range write() {
 		if text != first[name] {
 			t.Errorf("%s differs the second time", name)
 		}
+	}
+	if code, _, errOut := invoke(t, "dish", "--scenario", file, "--static"); code != 2 || !strings.Contains(errOut, "--static goes with --report") {
+		t.Errorf("--static alone: exit code %d, %s", code, errOut)
 	}
 	if code, _, errOut := invoke(t, "dish", "--scenario", file, "--report", file); code != 2 || !strings.Contains(errOut, "name a folder") {
 		t.Errorf("a file for a folder: exit code %d, %s", code, errOut)

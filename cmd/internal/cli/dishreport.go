@@ -48,11 +48,28 @@ func writeDishReport(ctx context.Context, env *Env, d *dishStudy, a *sizing.Answ
 			return err
 		}
 	}
-	return r.write(env, o.report)
+	if o.report != "" { // first, since the paper may go into its folder
+		if err := r.write(env, o.report, o.static); err != nil {
+			return err
+		}
+	}
+	if o.pdf == "" {
+		return nil
+	}
+	return r.writePaper(o.pdf)
+}
+
+// writePaper writes the page's content for print.
+func (r *dishReport) writePaper(file string) error {
+	content, err := reports.DishPaper(r.page(nil), r.study.scenario.Window.Start)
+	if err != nil {
+		return err
+	}
+	return writeWhole(file, content)
 }
 
 // write writes every file, the page last.
-func (r *dishReport) write(env *Env, dir string) error {
+func (r *dishReport) write(env *Env, dir string, static bool) error {
 	if info, err := os.Stat(dir); err == nil && !info.IsDir() {
 		return inputErrorf("--report: %s is a file; name a folder", dir)
 	}
@@ -85,7 +102,9 @@ func (r *dishReport) write(env *Env, dir string) error {
 			}
 		}
 	}
-	page, err := reports.DishPage(r.page(files))
+	content := r.page(files)
+	content.Scriptless = static
+	page, err := reports.DishPage(content)
 	if err != nil {
 		return err
 	}

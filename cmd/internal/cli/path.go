@@ -102,6 +102,8 @@ func (o *pathOptions) check() error {
 		return inputErrorf("--edition, --lognormal and --keep-going go with --model and --batch")
 	case o.sweep.over == "" && !o.sweep.alone():
 		return inputErrorf("--from, --to, --points and --into go with --sweep")
+	case o.sweep.static && o.sweep.into == "":
+		return inputErrorf("--static goes with --into")
 	case !o.year.year && o.year.more():
 		return inputErrorf("--days, --mode and --step go with --year")
 	case o.efficiency != nil && o.diameterM == nil:

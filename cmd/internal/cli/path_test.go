@@ -180,6 +180,10 @@ func TestPathSweeps(t *testing.T) {
 	if code != ExitAnswer || err != nil || !strings.Contains(string(page), `id="attenuation"`) {
 		t.Errorf("page: code %d, %v, stderr %s", code, err, errOut)
 	}
+	code, _, errOut = invoke(t, "path", "--frequency-mhz", "26000", "--sweep", "elevation", "--into", "page.html", "--static")
+	if page, err = os.ReadFile("page.html"); code != ExitAnswer || err != nil || strings.Contains(string(page), "<script") || !strings.Contains(string(page), `<svg xmlns=`) {
+		t.Errorf("page without script: code %d, %v, stderr %s", code, err, errOut)
+	}
 }
 
 func TestPathRefuses(t *testing.T) {

@@ -10,8 +10,10 @@ import (
 )
 
 // writePage writes the sweep as a page with charts.
-func (a *pathAnswer) writePage(env *Env, file string, axis *sweepAxis) error {
-	page, err := reports.CurvesPage(a.curves(axis))
+func (a *pathAnswer) writePage(env *Env, o *sweepOptions, axis *sweepAxis) error {
+	file, content := o.into, a.curves(axis)
+	content.Scriptless = o.static
+	page, err := reports.CurvesPage(content)
 	if err != nil {
 		return err
 	}

@@ -18,11 +18,13 @@ type sweepOptions struct {
 	over             string
 	from, to, points *float64
 	into             string
+	static           bool
 }
 
 func (o *sweepOptions) flags(fs *pflag.FlagSet) []optional {
 	fs.StringVar(&o.over, "sweep", "", "over `elevation`, frequency or percentage")
 	fs.StringVar(&o.into, "into", "", "write a chart page into this `FILE` of HTML, too")
+	fs.BoolVar(&o.static, "static", false, "write that page without script, its charts drawn in it")
 	return []optional{
 		{"from", "begin of a sweep: `VALUE` in deg, MHz or % (left out: 5 deg, 1000 MHz, 0.01 %)", &o.from},
 		{"to", "end of a sweep: `VALUE` in deg, MHz or % (left out: 90 deg, 50000 MHz, 50 %)", &o.to},
@@ -121,7 +123,7 @@ func runPathSweep(env *Env, o *pathOptions) error {
 		return err
 	}
 	if o.sweep.into != "" {
-		if err := a.writePage(env, o.sweep.into, axis); err != nil {
+		if err := a.writePage(env, &o.sweep, axis); err != nil {
 			return err
 		}
 	}

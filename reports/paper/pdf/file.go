@@ -53,7 +53,8 @@ func New(info Info, faces ...*Face) (*File, []*Font) {
 // Page adds a page.
 func (f *File) Page(width, height float64) *Page {
 	f.out.AddPageFormat("P", fpdf.SizeType{Wd: width, Ht: height})
-	f.out.RawWriteStr("1 j") // lines join round
+	f.out.RawWriteStr("1 j")     // lines join round
+	f.out.SetDashPattern(nil, 0) // else that of the page before goes on
 	p := &Page{file: f, number: len(f.pages) + 1}
 	f.pages = append(f.pages, p)
 	f.on, f.font = p, nil
