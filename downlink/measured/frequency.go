@@ -36,7 +36,7 @@ func FitFrequency(points []Point, drift bool) (*Fit, error) {
 			x[i] = append(x[i], t[i]-middle)
 		}
 	}
-	f, err := solve(t, y, x, names)
+	f, err := (&series{t: t, y: y, x: x}).solve(names)
 	if err != nil {
 		return nil, fmt.Errorf("fit of the frequency: %w", err)
 	}

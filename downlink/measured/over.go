@@ -22,11 +22,12 @@ const (
 	Saturated       // the receiver shows its greatest value though the signal changes
 	Wet             // it rained, or the samples look like rain
 	Outlier         // farther from the fit than the noise explains
+	Astray          // the antenna looks elsewhere
 )
 
 // String returns the state in a word.
 func (s State) String() string {
-	return [...]string{"used", "outside any pass", "dropout", "saturated", "wet", "outlier"}[s]
+	return [...]string{"used", "outside any pass", "dropout", "saturated", "wet", "outlier", "antenna elsewhere"}[s]
 }
 
 // Point is a sample over what was predicted for its instant.
@@ -37,8 +38,12 @@ type Point struct {
 	ElevationDeg         float64
 	PredictedFrequencyHz float64
 	FrequencyRateHzS     float64 // of the predicted frequency
-	PowerDBm, CN0DBHz    float64 // predicted; NaN outside
-	EbN0DB               float64
+	// AzimuthRateDegS and ElevationRateDegS are of the prediction; NaN at the ends of the orbit.
+	AzimuthRateDegS, ElevationRateDegS float64
+	PowerDBm, CN0DBHz                  float64 // predicted; NaN outside
+	EbN0DB                             float64
+	NoiseK                             float64 // predicted system noise; NaN where a measured G/T without the gain stands in its place
+	MarginDB                           float64 // predicted, over the code's threshold; NaN without a mode
 }
 
 // Predicted returns what was predicted for a quantity, NaN where nothing was; for
@@ -87,7 +92,7 @@ func (p *Prediction) Over(samples []Sample) ([]Point, error) {
 	for i := range samples {
 		pt := &out[i]
 		*pt = Point{Sample: samples[i], AzimuthDeg: math.NaN(), ElevationDeg: math.NaN(), PredictedFrequencyHz: math.NaN(),
-			FrequencyRateHzS: math.NaN(), PowerDBm: math.NaN(), CN0DBHz: math.NaN(), EbN0DB: math.NaN()}
+			FrequencyRateHzS: math.NaN(), AzimuthRateDegS: math.NaN(), ElevationRateDegS: math.NaN(), NoiseK: math.NaN(), MarginDB: math.NaN(), PowerDBm: math.NaN(), CN0DBHz: math.NaN(), EbN0DB: math.NaN()}
 		state, err := p.Orbit.At(pt.At)
 		if err != nil {
 			pt.State = Outside
@@ -101,7 +106,7 @@ func (p *Prediction) Over(samples []Sample) ([]Point, error) {
 			}
 		}
 		pt.AzimuthDeg, pt.ElevationDeg = look.Azimuth.Degrees(), elevation.Degrees()
-		pt.PredictedFrequencyHz, pt.FrequencyRateHzS = p.frequency(pt.At)
+		p.rates(pt)
 		least := unit.Angle(0)
 		if p.Least != nil {
 			least = p.Least(look.Azimuth)
@@ -122,20 +127,29 @@ func (p *Prediction) Over(samples []Sample) ([]Point, error) {
 			return nil, fmt.Errorf("prediction for %s: %w", pt.At.Format(time.RFC3339), err)
 		}
 		pt.PowerDBm, pt.CN0DBHz, pt.EbN0DB = b.ReceivedPowerDBm, float64(b.CN0), float64(b.EbN0)
+		pt.NoiseK, pt.MarginDB = float64(b.SystemNoise), float64(b.Margin)
 	}
 	return out, nil
 }
 
-// frequency returns what is received to first order, f (1 - ṙ/c), and how fast it changes;
-// the rate is NaN at the ends of the orbit.
-func (p *Prediction) frequency(t time.Time) (f, rate float64) {
-	at := func(t time.Time) float64 {
+// rates fills in what is received to first order, f (1 - ṙ/c), and how fast it and the
+// direction change; rates are NaN at the ends of the orbit.
+func (p *Prediction) rates(pt *Point) {
+	at := func(t time.Time) (f float64, look station.Look) {
 		s, err := p.Orbit.At(t)
 		if err != nil {
-			return math.NaN()
+			return math.NaN(), look
 		}
-		return p.Carrier(t).Hertz() * (1 - float64(p.Frame.Look(s).RangeRate)/unit.SpeedOfLight)
+		look = p.Frame.Look(s)
+		return p.Carrier(t).Hertz() * (1 - float64(look.RangeRate)/unit.SpeedOfLight), look
 	}
 	const half = 500 * time.Millisecond
-	return at(t), at(t.Add(half)) - at(t.Add(-half))
+	pt.PredictedFrequencyHz, _ = at(pt.At)
+	f0, before := at(pt.At.Add(-half))
+	f1, after := at(pt.At.Add(half))
+	pt.FrequencyRateHzS = f1 - f0
+	if !math.IsNaN(pt.FrequencyRateHzS) {
+		pt.ElevationRateDegS = (after.Elevation - before.Elevation).Degrees()
+		pt.AzimuthRateDegS = math.Remainder((after.Azimuth - before.Azimuth).Degrees(), 360)
+	}
 }

@@ -23,16 +23,18 @@ type Parameter struct {
 type Fit struct {
 	Parameters  []Parameter
 	Correlation [][]float64 // between parameters
-	Scale       float64     // standard deviation of a sample, in its unit
-	PerSecond   float64     // correlation of the noise over one second
-	Used        int
-	Middle      time.Time // of a fit of the frequency: when the offset holds
-	Outliers    []int     // rows, not used
-	Advice      []string  // what the data cannot tell apart
+	// Singular are the singular values of the design, its columns of unit length, greatest first; a small one
+	// says that the parameters of its direction are known only together.
+	Singular   []float64
+	directions *mat.Dense
+	design     [][]float64 // of the rows used, freed of their correlation
+	Scale      float64     // standard deviation of a sample, in its unit
+	PerSecond  float64     // correlation of the noise over one second
+	Used       int
+	Middle     time.Time // of a fit of the frequency: when the offset holds
+	Outliers   []int     // rows, not used
+	Advice     []string  // what the data cannot tell apart
 }
-
-// tooAlike is the correlation above which two parameters are said to be one.
-const tooAlike = 0.95
 
 // errTooFew says that there are not enough samples.
 var errTooFew = errors.New("too few samples")
@@ -41,14 +43,35 @@ var errTooFew = errors.New("too few samples")
 // (Huber 1981), and rejectAt is from where on a sample is an outlier.
 const huber, rejectAt = 1.345, 4.5
 
-// solve fits y = X b + noise, whose correlation falls exponentially with time. Rows are by
-// time. First come Huber's weights on a scale by the median deviation, and rows beyond
-// rejectAt are listed as outliers; then the rows left are freed of their correlation, row
-// by row over the gap in time, and fitted again.
-func solve(t, y []float64, x [][]float64, names []Parameter) (*Fit, error) {
-	n, k := len(y), len(names)
-	if n < 3*k+4 {
-		return nil, fmt.Errorf("%w: %d of %d that %d parameters need", errTooFew, n, 3*k+4, k)
+// series is what a fit is made of. Rows are by time.
+type series struct {
+	t, y []float64
+	x    [][]float64
+	// independent says that neighbours in time have nothing in common.
+	independent bool
+}
+
+// least is how many samples a fit of k parameters needs.
+func least(k int) int { return 3*k + 4 }
+
+// solve fits y = X b + noise, whose correlation falls exponentially with time. First come
+// Huber's weights on a scale by the median deviation, and rows beyond rejectAt are listed
+// as outliers; then the rows left are freed of their correlation, row by row over the gap
+// in time, and fitted again.
+func (d *series) solve(names []Parameter) (*Fit, error) {
+	out, err := d.search(names)
+	if err != nil {
+		return nil, err
+	}
+	out.advise()
+	return out, nil
+}
+
+// search is solve without the advice.
+func (d *series) search(names []Parameter) (*Fit, error) {
+	n, k := len(d.y), len(names)
+	if n < least(k) {
+		return nil, fmt.Errorf("%w: %d of %d that %d parameters need", errTooFew, n, least(k), k)
 	}
 	keep := make([]int, n)
 	for i := range keep {
@@ -58,30 +81,40 @@ func solve(t, y []float64, x [][]float64, names []Parameter) (*Fit, error) {
 	out := &Fit{}
 	for range 20 {
 		var err error
-		if b, err = irls(y, x, keep); err != nil {
+		if b, err = irls(d.y, d.x, keep); err != nil {
 			return nil, err
 		}
-		r := residuals(y, x, b)
-		scale := spread(r, keep)
-		var next []int
+		r := residuals(d.y, d.x, b)
+		scale := spread(r, keep, k)
+		next := make([]int, 0, n)
 		for i := range r {
 			if math.Abs(r[i]) <= rejectAt*scale {
 				next = append(next, i)
 			}
 		}
-		if len(next) < 3*k+4 || slices.Equal(next, keep) {
+		if len(next) < least(k) || slices.Equal(next, keep) {
 			break
 		}
 		keep = next
 	}
-	for i := range n {
-		if !slices.Contains(keep, i) {
-			out.Outliers = append(out.Outliers, i)
+	for i, j := 0, 0; i < n; i++ {
+		if j < len(keep) && keep[j] == i {
+			j++
+			continue
 		}
+		out.Outliers = append(out.Outliers, i)
 	}
-	for range 4 {
-		out.PerSecond = memory(t, residuals(y, x, b), keep, k)
-		if err := out.whitened(t, y, x, keep, names); err != nil {
+	out.Parameters = slices.Clone(names)
+	white := newWhite(n, k)
+	for turn := range 4 {
+		before := out.PerSecond
+		if !d.independent {
+			out.PerSecond = memory(d.t, residuals(d.y, d.x, b), keep, k)
+		}
+		if turn > 0 && math.Abs(out.PerSecond-before) < 1e-4 {
+			break
+		}
+		if err := out.whitened(d, keep, white); err != nil {
 			return nil, err
 		}
 		for j := range b {
@@ -89,7 +122,10 @@ func solve(t, y []float64, x [][]float64, names []Parameter) (*Fit, error) {
 		}
 	}
 	out.Used = len(keep)
-	out.advise()
+	quantile := distuv.StudentsT{Mu: 0, Sigma: 1, Nu: out.effective(d.t, keep, k)}.Quantile(0.975)
+	for j := range out.Parameters {
+		out.Parameters[j].Span = quantile * out.Parameters[j].Sigma
+	}
 	return out, nil
 }
 
@@ -104,14 +140,16 @@ func residuals(y []float64, x [][]float64, b []float64) []float64 {
 	return r
 }
 
-// spread is the standard deviation by the median of absolute deviations from 0.
-func spread(r []float64, keep []int) float64 {
+// spread is the standard deviation by the median of absolute deviations from 0, raised by
+// what the fit of k parameters took.
+func spread(r []float64, keep []int, k int) float64 {
 	a := make([]float64, len(keep))
 	for i, k := range keep {
 		a[i] = math.Abs(r[k])
 	}
 	slices.Sort(a)
-	return max(1.4826*a[len(a)/2], 1e-9)
+	n := float64(len(keep))
+	return max(1.4826*a[len(a)/2]*math.Sqrt(n/(n-float64(k))), 1e-9)
 }
 
 func irls(y []float64, x [][]float64, keep []int) ([]float64, error) {
@@ -121,12 +159,20 @@ func irls(y []float64, x [][]float64, keep []int) ([]float64, error) {
 	}
 	var b []float64
 	for range 15 {
-		var err error
-		if b, _, err = weighted(y, x, w, keep); err != nil {
+		next, inv, err := weighted(y, x, w, keep)
+		if err != nil {
 			return nil, err
 		}
-		r := residuals(y, x, b)
-		s := spread(r, keep)
+		r := residuals(y, x, next)
+		s := spread(r, keep, len(next))
+		moved := b == nil
+		for j := range b {
+			moved = moved || math.Abs(next[j]-b[j]) > 1e-3*s*math.Sqrt(inv.At(j, j))
+		}
+		b = next
+		if !moved {
+			break
+		}
 		for _, i := range keep {
 			w[i] = min(1, huber*s/max(math.Abs(r[i]), 1e-300))
 		}
@@ -147,13 +193,21 @@ func weighted(y []float64, x [][]float64, w []float64, keep []int) ([]float64, *
 			return nil, nil, errors.New("a parameter has no effect on the samples")
 		}
 	}
-	normal, right := mat.NewSymDense(k, nil), mat.NewVecDense(k, nil)
+	sums, right := make([]float64, k*k), mat.NewVecDense(k, nil)
 	for _, i := range keep {
-		for a := range k {
-			right.SetVec(a, right.AtVec(a)+w[i]*x[i][a]/size[a]*y[i])
+		for a, xa := range x[i] {
+			xa *= w[i]
+			right.SetVec(a, right.AtVec(a)+xa*y[i])
 			for c := a; c < k; c++ {
-				normal.SetSym(a, c, normal.At(a, c)+w[i]*x[i][a]/size[a]*x[i][c]/size[c])
+				sums[a*k+c] += xa * x[i][c]
 			}
+		}
+	}
+	normal := mat.NewSymDense(k, sums)
+	for a := range k {
+		right.SetVec(a, right.AtVec(a)/size[a])
+		for c := a; c < k; c++ {
+			normal.SetSym(a, c, normal.At(a, c)/size[a]/size[c])
 		}
 	}
 	var chol mat.Cholesky
@@ -205,40 +259,54 @@ func memory(t, r []float64, keep []int, k int) float64 {
 	return math.Pow(rho, 1/max(usual, 1e-3))
 }
 
+// white is room for rows freed of their correlation.
+type white struct {
+	y, w []float64
+	x    [][]float64
+	all  []int
+}
+
+func newWhite(n, k int) *white {
+	out := &white{y: make([]float64, n), w: make([]float64, n), x: make([][]float64, n), all: make([]int, n)}
+	room := make([]float64, n*k)
+	for i := range n {
+		out.all[i], out.w[i], out.x[i] = i, 1, room[i*k:(i+1)*k]
+	}
+	return out
+}
+
 // whitened fits rows freed of their correlation.
-func (f *Fit) whitened(t, y []float64, x [][]float64, keep []int, names []Parameter) error {
-	n, k := len(keep), len(names)
-	yw, xw, all, w := make([]float64, n), make([][]float64, n), make([]int, n), make([]float64, n)
+func (f *Fit) whitened(d *series, keep []int, to *white) error {
+	n, k := len(keep), len(f.Parameters)
+	t, y, x := d.t, d.y, d.x
 	for i, at := range keep {
-		all[i], w[i] = i, 1
-		xw[i] = slices.Clone(x[at])
-		yw[i] = y[at]
+		copy(to.x[i], x[at])
+		to.y[i] = y[at]
 		if i == 0 {
 			continue
 		}
 		last := keep[i-1]
 		rho := math.Pow(f.PerSecond, t[at]-t[last])
 		s := 1 / math.Sqrt(1-min(rho*rho, 0.9999))
-		yw[i] = (y[at] - rho*y[last]) * s
+		to.y[i] = (y[at] - rho*y[last]) * s
 		for j := range k {
-			xw[i][j] = (x[at][j] - rho*x[last][j]) * s
+			to.x[i][j] = (x[at][j] - rho*x[last][j]) * s
 		}
 	}
-	b, inv, err := weighted(yw, xw, w, all)
+	b, inv, err := weighted(to.y, to.x, to.w, to.all[:n])
 	if err != nil {
 		return err
 	}
 	sum := 0.0
-	for _, r := range residuals(yw, xw, b) {
+	for _, r := range residuals(to.y[:n], to.x, b) {
 		sum += r * r
 	}
 	f.Scale = math.Sqrt(sum / float64(n-k))
-	quantile := distuv.StudentsT{Mu: 0, Sigma: 1, Nu: f.effective(t, keep, k)}.Quantile(0.975)
-	f.Parameters, f.Correlation = slices.Clone(names), make([][]float64, k)
+	f.design = to.x[:n]
+	f.Correlation = make([][]float64, k)
 	for j := range k {
 		p := &f.Parameters[j]
 		p.Value, p.Sigma = b[j], f.Scale*math.Sqrt(inv.At(j, j))
-		p.Span = quantile * p.Sigma
 		f.Correlation[j] = make([]float64, k)
 		for c := range k {
 			f.Correlation[j][c] = inv.At(j, c) / math.Sqrt(inv.At(j, j)*inv.At(c, c))
@@ -252,14 +320,4 @@ func (f *Fit) effective(t []float64, keep []int, k int) float64 {
 	n := float64(len(keep))
 	rho := math.Pow(f.PerSecond, (t[keep[len(keep)-1]]-t[keep[0]])/max(n-1, 1))
 	return max(n*(1-rho)/(1+rho)-float64(k), 2)
-}
-
-func (f *Fit) advise() {
-	for a := range f.Parameters {
-		for c := range a {
-			if r := f.Correlation[a][c]; math.Abs(r) > tooAlike {
-				f.Advice = append(f.Advice, fmt.Sprintf("the data hardly tell %s and %s apart (correlation %.2f): only together are they known well", f.Parameters[c].Name, f.Parameters[a].Name, r))
-			}
-		}
-	}
 }

@@ -43,7 +43,7 @@ func Trends(points []Point, q Quantity) []Trend {
 		for i := range used {
 			x[i] = c.row(used[i], t[i])
 		}
-		f, err := solve(t, y, x, c.names)
+		f, err := (&series{t: t, y: y, x: x}).solve(c.names)
 		if err != nil {
 			f = nil
 		}
