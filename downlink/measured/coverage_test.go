@@ -206,7 +206,7 @@ func skylineTrial(rng *rand.Rand) (map[string]float64, *Fit, error) {
 	}
 	truth := map[string]float64{"time to lock": 4}
 	for _, k := range h.Knots {
-		truth[fmt.Sprintf("skyline at %.0f deg", k.Azimuth.Degrees())] = skylineAt(k.Azimuth.Degrees())
+		truth[fmt.Sprintf("skyline over the known one at %.0f deg", k.Azimuth.Degrees())] = skylineAt(k.Azimuth.Degrees())
 	}
 	return truth, h.Fit, nil
 }

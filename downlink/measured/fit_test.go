@@ -119,3 +119,99 @@ func TestRankCannotTell(t *testing.T) {
 		t.Errorf("the only candidate explains nothing and is taken: %+v", ranked)
 	}
 }
+
+func TestMixedUnitsAreTold(t *testing.T) {
+	points := synthetic(rand.New(rand.NewPCG(8, 1)), 0, func(*Point) (float64, float64) { return 0, 0 })
+	for i := range points {
+		points[i].Values[PowerDBm] = points[i].PowerDBm
+	}
+	if notes := append(MixedUnits(points, PowerDBm), MixedUnits(points, FrequencyHz)...); len(notes) != 0 {
+		t.Errorf("of one unit: %q", notes)
+	}
+	for i := 20; i < 25; i++ {
+		points[i].Values[PowerDBm] -= 30
+		points[i+50].Values[FrequencyHz] /= 1e3
+	}
+	for q, line := range map[Quantity]string{PowerDBm: "5 rows, the first in line 22", FrequencyHz: "5 rows, the first in line 72"} {
+		if notes := MixedUnits(points, q); len(notes) != 1 || !strings.Contains(notes[0], line) {
+			t.Errorf("%v: %q, want %q in it", q, notes, line)
+		}
+	}
+}
+
+// TestBeaconTellsOfRain keeps out what was sent while the beacon faded, whatever the level looks like.
+func TestBeaconTellsOfRain(t *testing.T) {
+	points := synthetic(rand.New(rand.NewPCG(9, 1)), 0, func(*Point) (float64, float64) { return 0, 0 })
+	for i := range points {
+		points[i].Values[BeaconDB] = -40
+		if i >= 100 && i < 180 {
+			points[i].Values[BeaconDB] = -43
+			points[i].Values[CN0DBHz] -= 1.2
+		}
+	}
+	f, err := FitLevel(points, LevelOptions{Quantity: CN0DBHz})
+	if err != nil {
+		t.Fatal(err)
+	}
+	if n := Count(points)[Wet]; n < 70 || n > 80 || math.Abs(f.Parameters[0].Value) > 3*f.Parameters[0].Sigma {
+		t.Errorf("%d of 80 wet, offset %+v", n, f.Parameters[0])
+	}
+	if trends := Trends(points, CN0DBHz); len(trends) != 5 || trends[4].By != "beacon" || trends[4].Fit != nil {
+		t.Errorf("of dry samples the beacon does not vary: %+v", trends)
+	}
+}
+
+// TestWhatCannotBeToldApartIsLeftOut has a sky of one noise, under which noise is a level.
+func TestWhatCannotBeToldApartIsLeftOut(t *testing.T) {
+	points := synthetic(rand.New(rand.NewPCG(10, 1)), 0, func(*Point) (float64, float64) { return -1, 0 })
+	for i := range points {
+		points[i].NoiseK = 120
+	}
+	f, err := FitLevel(points, LevelOptions{Quantity: CN0DBHz, Noise: true})
+	if err != nil {
+		t.Fatal(err)
+	}
+	if len(f.Parameters) != 1 || !strings.Contains(strings.Join(f.Advice, ";"), "cannot tell added noise temperature from offset") {
+		t.Errorf("%+v, %q", f.Parameters, f.Advice)
+	}
+	if _, err := FitNoise(points); err == nil {
+		t.Error("noise is told without a received power")
+	}
+}
+
+// TestThreeThatAreOne names three parameters of which no two are alike, but which are known only together.
+func TestThreeThatAreOne(t *testing.T) {
+	d := &series{}
+	rng := rand.New(rand.NewPCG(11, 1))
+	for i := range 200 {
+		a, b := rng.NormFloat64(), rng.NormFloat64()
+		d.t, d.y, d.x = append(d.t, float64(i)), append(d.y, rng.NormFloat64()), append(d.x, []float64{a, b, a + b + 0.05*rng.NormFloat64()})
+	}
+	f, err := d.solve([]Parameter{{Name: "one"}, {Name: "two"}, {Name: "three"}})
+	if err != nil {
+		t.Fatal(err)
+	}
+	if len(f.Advice) != 1 || !strings.Contains(f.Advice[0], "one, two and three apart (singular value 0.0") {
+		t.Errorf("%q, singular values %v", f.Advice, f.Singular)
+	}
+}
+
+func TestAntennaElsewhereIsLeftOut(t *testing.T) {
+	points := synthetic(rand.New(rand.NewPCG(12, 1)), 0, func(*Point) (float64, float64) { return 0, 0 })
+	for i := range points {
+		points[i].Values[AzimuthDeg] = points[i].AzimuthDeg
+		points[i].Values[ElevationDeg] = points[i].ElevationDeg + 0.3*math.Sin(float64(i)/5)
+		if i < 30 {
+			points[i].Values[ElevationDeg] += 4
+		} else {
+			points[i].Values[CN0DBHz] -= 12 * math.Pow(0.3*math.Sin(float64(i)/5)/1.5, 2)
+		}
+	}
+	f, err := FitLevel(points, LevelOptions{Quantity: CN0DBHz, BeamDeg: 1.5})
+	if err != nil {
+		t.Fatal(err)
+	}
+	if n := Count(points)[Astray]; n != 30 || math.Abs(f.Parameters[0].Value) > 4*f.Parameters[0].Sigma {
+		t.Errorf("%d points of an antenna that looks elsewhere, want 30; %+v", n, f.Parameters)
+	}
+}

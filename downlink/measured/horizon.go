@@ -13,25 +13,28 @@ import (
 
 // Horizon is what the instants at which signals appear and vanish tell of a station's skyline.
 type Horizon struct {
-	// Fit has the skyline's elevation at each knot in deg, then the delay of the lock in s.
+	// Fit has the skyline's elevation over Had at each knot in deg, then the delay of the lock in s.
 	Fit   *Fit
 	Knots []Knot
 	Step  unit.Angle // between neighbours
+	had   func(azimuth unit.Angle) unit.Angle
 	// Seen counts the instants that were used or are outliers. Left out are Weak ones, whose
 	// predicted margin was too low to say that the skyline hid the signal, and those Alone, with too few near them.
 	Seen, Weak, Alone int
 }
 
-// Knot is a point of a skyline, linear between its neighbours.
+// Knot is by how much a skyline stands over the one that was had, linear between neighbours.
 type Knot struct {
-	Azimuth         unit.Angle
-	Elevation, Span unit.Angle // apparent where the prediction has refraction; half the 95 % interval
+	Azimuth    unit.Angle
+	Over, Span unit.Angle // half the 95 % interval
 }
 
 // HorizonOptions say what is known of the link.
 type HorizonOptions struct {
 	// LevelDB is how much stronger than predicted the signal is, as it was fitted.
 	LevelDB float64
+	// Had is the skyline as it is known, apparent where the prediction has refraction; nil: a bare horizon.
+	Had func(azimuth unit.Angle) unit.Angle
 	// Knots is how many there are around; 0: as many of 1 to 36 as the edges carry.
 	Knots int
 }
@@ -64,7 +67,10 @@ var errNoEdges = errors.New("too few signals appear or vanish in the log to tell
 // the receiver's time to lock, which is fitted with it. Knots are evenly spaced, as many as
 // the edges carry; where there are no edges there are no knots.
 func FitHorizon(groups [][]Point, o HorizonOptions) (*Horizon, error) {
-	out := &Horizon{}
+	out := &Horizon{had: o.Had}
+	if out.had == nil {
+		out.had = func(unit.Angle) unit.Angle { return 0 }
+	}
 	var edges []edge
 	for _, g := range groups {
 		for _, e := range edgesOf(g) {
@@ -83,7 +89,7 @@ func FitHorizon(groups [][]Point, o HorizonOptions) (*Horizon, error) {
 	for _, n := range tried {
 		knots, near := knotsOf(edges, n)
 		if k := len(knots); k > 0 && len(near) >= max(least(k+1), 4*k) {
-			out.Seen, out.Alone, out.Step = len(near), len(edges)-len(near), unit.Angle(360/n)*unit.Degree
+			out.Seen, out.Alone, out.Step = len(near), len(edges)-len(near), unit.Angle(360/float64(n))*unit.Degree
 			return out, out.fit(near, knots)
 		}
 	}
@@ -153,7 +159,7 @@ func (h *Horizon) fit(edges []edge, knots []float64) error {
 	k := len(knots)
 	var names []Parameter
 	for _, a := range knots {
-		names = append(names, Parameter{Name: fmt.Sprintf("skyline at %.0f deg", a), Unit: "deg"})
+		names = append(names, Parameter{Name: fmt.Sprintf("skyline over the known one at %.0f deg", a), Unit: "deg"})
 	}
 	names = append(names, Parameter{Name: "time to lock", Unit: "s"})
 	lock, rough := 0.0, math.Inf(1)
@@ -167,11 +173,12 @@ func (h *Horizon) fit(edges []edge, knots []float64) error {
 				azimuth = math.Mod(azimuth-e.turn*lock+720, 360)
 			}
 			hats(knots, azimuth, row[:k])
+			over := e.elevation - h.had(unit.Angle(azimuth)*unit.Degree).Degrees()
 			weight := 1 / math.Hypot(1, e.blur/rough)
 			for j := range row {
 				row[j] *= weight
 			}
-			d.t, d.y, d.x = append(d.t, e.at.Sub(edges[0].at).Seconds()), append(d.y, e.elevation*weight), append(d.x, row)
+			d.t, d.y, d.x = append(d.t, e.at.Sub(edges[0].at).Seconds()), append(d.y, over*weight), append(d.x, row)
 		}
 		stay, told := leaveOut(d.x, names)
 		var left []Parameter
@@ -255,19 +262,37 @@ func edgeBetween(a, b *Point) edge {
 // wellKnown is how well a knot must be known to be offered.
 const wellKnown = 3 * unit.Degree
 
-// Mask is the skyline as points of a mask: knots known to within 3 deg, and between them,
-// where none is, every Step what had says.
-func (h *Horizon) Mask(had func(azimuth unit.Angle) unit.Angle) (points []station.MaskPoint, kept int) {
-	for i := range int(math.Round(360 * unit.Degree.Radians() / h.Step.Radians())) {
-		p := station.MaskPoint{Azimuth: unit.Angle(i) * h.Step}
-		at := slices.IndexFunc(h.Knots, func(k Knot) bool { return math.Abs((k.Azimuth - p.Azimuth).Degrees()) < 1e-6 })
-		if at >= 0 && h.Knots[at].Span <= wellKnown && h.Knots[at].Elevation > -10*unit.Degree {
-			p.Elevation = h.Knots[at].Elevation
-		} else {
-			p.Elevation = had(p.Azimuth)
-			kept++
+// Mask is the skyline at the azimuths of more and of the knots, for a mask of a station: what was had
+// with the knots over it that are known to within 3 deg; toward the others, of which kept counts, that fades.
+func (h *Horizon) Mask(more []unit.Angle) (points []station.MaskPoint, kept int) {
+	n := int(math.Round(360 / h.Step.Degrees()))
+	over := make([]float64, n)
+	kept = n
+	azimuths := slices.Clone(more)
+	for _, k := range h.Knots {
+		if k.Span <= wellKnown {
+			over[int(math.Round(k.Azimuth.Degrees()/h.Step.Degrees()))%n] = k.Over.Degrees()
+			kept--
 		}
-		points = append(points, p)
+	}
+	every := make([]float64, n)
+	for i := range n {
+		every[i] = float64(i) * 360 / float64(n)
+		azimuths = append(azimuths, unit.Angle(every[i])*unit.Degree)
+	}
+	slices.Sort(azimuths)
+	azimuths = slices.CompactFunc(azimuths, func(a, b unit.Angle) bool { return math.Abs((b - a).Degrees()) < leastApart })
+	for _, a := range azimuths {
+		weight := make([]float64, n)
+		hats(every, a.Degrees(), weight)
+		el := h.had(a).Degrees()
+		for i, w := range weight {
+			el += w * over[i]
+		}
+		points = append(points, station.MaskPoint{Azimuth: a, Elevation: unit.Angle(min(max(el, -10), 89)) * unit.Degree})
 	}
 	return points, kept
 }
+
+// leastApart is how far apart points of a mask are, deg.
+const leastApart = 1e-4

@@ -41,7 +41,7 @@ var errNoPair = errors.New("noise cannot be told from level without received pow
 // G/T in place of noise, the result is in dB.
 func FitNoise(points []Point) (*Fit, error) {
 	power, ratio := pairOf(points, PowerDBm, RelativePowerDB), pairOf(points, CN0DBHz, EbN0DB)
-	if power < 0 || ratio < 0 || !knowsNoise(points) {
+	if power == noQuantity || ratio == noQuantity || !knowsNoise(points) {
 		return nil, errNoPair
 	}
 	m := &levelModel{o: LevelOptions{Quantity: ratio}, points: points, known: func(*Point) float64 { return 0 }}
@@ -73,7 +73,7 @@ func FitNoise(points []Point) (*Fit, error) {
 	return f, nil
 }
 
-// pairOf returns the first of the quantities that the points hold, -1 for none.
+// pairOf returns the first of the quantities that the points hold, noQuantity for none.
 func pairOf(points []Point, quantities ...Quantity) Quantity {
 	for _, q := range quantities {
 		for i := range points {
@@ -82,5 +82,5 @@ func pairOf(points []Point, quantities ...Quantity) Quantity {
 			}
 		}
 	}
-	return -1
+	return noQuantity
 }

@@ -153,3 +153,6 @@ func (p *Prediction) rates(pt *Point) {
 		pt.AzimuthRateDegS = math.Remainder((after.Azimuth - before.Azimuth).Degrees(), 360)
 	}
 }
+
+// LeftOut lists the states of samples that are not used for a fit, outliers apart.
+func LeftOut() []State { return []State{Outside, Dropout, Saturated, Wet, Astray} }

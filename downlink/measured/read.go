@@ -27,7 +27,11 @@ func (f *faults) add(line int, format string, args ...any) {
 		f.more++
 		return
 	}
-	f.list = append(f.list, fmt.Errorf("%s: line %d: %w", f.name, line, fmt.Errorf(format, args...)))
+	place := f.name
+	if line > 0 {
+		place = fmt.Sprintf("%s: line %d", f.name, line)
+	}
+	f.list = append(f.list, fmt.Errorf("%s: %w", place, fmt.Errorf(format, args...)))
 }
 
 func (f *faults) err() error {

@@ -4,6 +4,7 @@ import (
 	"fmt"
 	"iter"
 	"math"
+	"slices"
 	"sort"
 	"time"
 )
@@ -91,7 +92,10 @@ func (l *Log) tidy(f *faults) {
 	out := l.Samples[:0]
 	for _, s := range l.Samples {
 		if n := len(out); n > 0 && out[n-1].At.Equal(s.At) {
-			same := true
+			same, where := true, ""
+			if l := out[n-1].Line; l > 0 {
+				where = fmt.Sprintf(" in line %d", l)
+			}
 			for q, v := range s.Values {
 				had := out[n-1].Values[q]
 				switch {
@@ -100,7 +104,7 @@ func (l *Log) tidy(f *faults) {
 					out[n-1].Values[q], same = v, false
 				case had != v:
 					same = false
-					f.add(s.Line, "%s at %s is %g, and %g in line %d; leave one of the two out", Quantity(q), s.At.Format(time.RFC3339Nano), v, had, out[n-1].Line)
+					f.add(s.Line, "%s at %s is %g, and %g%s; leave one of the two out", Quantity(q), s.At.Format(time.RFC3339Nano), v, had, where)
 				}
 			}
 			if same {
@@ -125,4 +129,35 @@ func All() iter.Seq[Quantity] {
 			}
 		}
 	}
+}
+
+// Reading is one measured number with the name of its quantity.
+type Reading struct {
+	At       time.Time
+	Quantity string
+	Value    float64
+}
+
+// Gather makes a log of readings, as Read does of a file.
+func Gather(name string, readings []Reading) (*Log, error) {
+	f := &faults{name: name}
+	l := &Log{Name: name}
+	for _, r := range readings {
+		q := Quantity(slices.Index(quantityNames[:], r.Quantity))
+		s := newSample(r.At, 0)
+		if q < 0 {
+			f.add(0, "quantity %q is not known", r.Quantity)
+		} else if err := s.set(q, r.Value); err != nil {
+			f.add(0, "%s: %w", r.At.Format(time.RFC3339Nano), err)
+		}
+		l.Samples = append(l.Samples, s)
+	}
+	l.tidy(f)
+	if len(l.Samples) == 0 {
+		f.add(0, "there is no measurement in it")
+	}
+	if err := f.err(); err != nil {
+		return nil, err
+	}
+	return l, nil
 }

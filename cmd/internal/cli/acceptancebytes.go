@@ -4,6 +4,7 @@ import (
 	"fmt"
 	"math"
 
+	"slantwise/cmd/internal/scenario"
 	"slantwise/downlink"
 	"slantwise/orbit/unit"
 	"slantwise/station"
@@ -44,31 +45,37 @@ func (j *acceptanceJob) bytesWith(better unit.DB) (float64, error) {
 	}
 	st := *j.link.station
 	st.Antennas = []station.Antenna{*j.link.antenna}
-	craft := *j.link.spacecraft
-	craft.Transmitters = []downlink.Transmitter{tx}
 	s := *j.scenario
 	s.Licences = nil // the power is changed to stand for the station's
-	planner, err := newRatePlanner(&tx, &craft.RatePlan, nil)
+	sum, passes, err := bytesOfWindow(&s, j.link.spacecraft, &tx, &st)
+	j.passes = passes
+	return sum, err
+}
+
+// bytesOfWindow plans the passes of the window over one station by the spacecraft's rate rules,
+// with tx in place of its transmitters, and returns the sum of their bytes.
+func bytesOfWindow(s *scenario.Scenario, of *scenario.Spacecraft, tx *downlink.Transmitter, st *scenario.Station) (sum float64, passes int, err error) {
+	craft := *of
+	craft.Transmitters = []downlink.Transmitter{*tx}
+	planner, err := newRatePlanner(tx, &craft.RatePlan, nil)
 	if err != nil {
-		return 0, err
+		return 0, 0, err
 	}
-	flights, _, err := rateFlights(&s, &craft, &tx, append(s.Stations[:0:0], st))
+	flights, _, err := rateFlights(s, &craft, tx, []scenario.Station{*st})
 	if err != nil {
-		return 0, err
+		return 0, 0, err
 	}
 	if err := planner.settle(tracksOf(flights)); err != nil {
-		return 0, &InputError{Err: err}
+		return 0, 0, &InputError{Err: err}
 	}
 	plans, err := planAll(planner, flights)
 	if err != nil {
-		return 0, err
+		return 0, 0, err
 	}
-	sum := 0.0
 	for _, p := range plans {
 		sum += p.plan.Bytes
 	}
-	j.passes = len(plans)
-	return sum, nil
+	return sum, len(plans), nil
 }
 
 // sheet lays out the uncertainty budget, then the answers.

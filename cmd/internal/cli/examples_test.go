@@ -72,7 +72,7 @@ func prepareExample(t *testing.T, command string) {
 		if code, _, errOut := invoke(t, "log", "rehearse", "--spacecraft", "Wagtail 1", "--station", "Skerry Point", "--mode", "safe", "--into", "rehearsal.csv"); code != ExitAnswer {
 			t.Fatal(errOut)
 		}
-		if command != "show" && command != "export" && command != "import" {
+		if command != "show" && command != "fit" && command != "export" && command != "import" {
 			break
 		}
 		if code, _, errOut := invoke(t, "log", "add", "rehearsal.csv", "--spacecraft", "Wagtail 1", "--station", "Skerry Point", "--mode", "safe"); code != ExitAnswer {

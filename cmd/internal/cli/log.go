@@ -75,9 +75,21 @@ func (in *logInput) over(env *Env) (*overLog, error) {
 	if err != nil {
 		return nil, err
 	}
+	o, err := overSamples(env, s, in.who, l, false)
+	if err != nil {
+		return nil, err
+	}
+	o.digest = digest
+	return o, nil
+}
+
+// overSamples puts a log over the prediction for the link that is named, with clear under a
+// clear sky whatever the scenario asks for.
+func overSamples(env *Env, s *scenario.Scenario, who linkNames, l *measured.Log, clear bool) (*overLog, error) {
 	first, last := l.Samples[0].At, l.Samples[len(l.Samples)-1].At
-	o := &overLog{scenario: s, log: l, digest: digest}
-	if o.chosenLink, err = chooseLink(s, in.who, pass.Window{From: first, To: last.Add(time.Second)}); err != nil {
+	o := &overLog{scenario: s, log: l}
+	var err error
+	if o.chosenLink, err = chooseLink(s, who, pass.Window{From: first, To: last.Add(time.Second)}); err != nil {
 		return nil, err
 	}
 	if o.uplink != nil {
@@ -89,7 +101,11 @@ func (in *logInput) over(env *Env) (*overLog, error) {
 	}
 	flown := s.ElementsOver(o.spacecraft, first, last.Add(time.Second))
 	o.elements = newOrbitHead(o.spacecraft, flown, first.Add(last.Sub(first)/2)).String()
-	if o.points, err = o.prediction(eph).Over(l.Samples); err != nil {
+	by := o.prediction(eph)
+	if clear && o.clear != nil {
+		by.Link = o.clear
+	}
+	if o.points, err = by.Over(l.Samples); err != nil {
 		return nil, &InputError{Err: err}
 	}
 	if n := measured.Count(o.points)[measured.Outside]; n > 0 {

@@ -1,6 +1,7 @@
 package cli
 
 import (
+	"context"
 	"errors"
 	"fmt"
 	"math"
@@ -13,94 +14,93 @@ import (
 	"slantwise/orbit/unit"
 )
 
+type logFitOptions struct {
+	in      logInput
+	book    string
+	entries []string
+	points  *float64 // of the mask
+	offers  bool
+	format  format
+}
+
 func newLogFit(env *Env) *cobra.Command {
-	var in logInput
-	var f format
+	var o logFitOptions
 	cmd := &cobra.Command{
-		Use:   "fit FILE",
+		Use:   "fit [FILE]",
 		Short: "Fit what explains the difference between measurements and prediction",
-		Long: `Fit, robustly and with the interval that holds the truth in 95 % of logs like this one:
-of levels an offset and, where the antenna's beamwidth is known, the square of its
-azimuth error; of the frequency the transmitter's offset and drift and the time offset
-of the elements (greater than 0: the spacecraft is late). The noise is taken as
-correlated from sample to sample. What is left out (outliers, dropouts, a saturated
-receiver, rain) is counted, and it is said what the data cannot tell apart.`,
-		Example: `  slantwise log fit rehearsal.csv --spacecraft "Wagtail 1" --station "Skerry Point" --mode safe`,
-		RunE:    func(*cobra.Command, []string) error { return runLogFit(env, &in, f) },
+		Long: `Fit, robustly and with the interval that holds the truth in 95 % of logs like this one,
+FILE or passes of the logbook (those of one link together):
+
+  level       an offset; the antenna's error where its beamwidth is known (with its angles
+              logged while it scans, both axes with their signs); of relative power
+              the slope of its scale, too
+  noise       the noise temperature over the predicted one: from received power and C/N0
+              in the same samples, or from C/N0 alone where the warm sky tells it
+  frequency   the transmitter's offset and drift, and the time offset of the elements
+              (greater than 0: the spacecraft is late)
+  skyline     a horizon mask, from where signals appear and vanish (locked), and how long
+              the receiver takes to lock
+
+The noise of samples is taken as correlated from one to the next, and levels are
+predicted under a clear sky. What is left out (outliers, dropouts, a saturated receiver,
+rain by what was logged or by the look of it) is counted, and it is said what the data
+cannot tell apart. What stands out is offered as values for the scenario, each with the
+margin in the middle of the log and the bytes of the window's passes before and after.`,
+		Example: `  slantwise log fit rehearsal.csv --spacecraft "Wagtail 1" --station "Skerry Point" --mode safe
+  slantwise log fit --entry all`,
+		RunE: func(cmd *cobra.Command, _ []string) error { return runLogFit(cmd.Context(), env, &o) },
 	}
-	in.addTo(cmd)
-	addFormat(cmd, &f)
+	o.in.addTo(cmd)
+	cmd.Args = func(cmd *cobra.Command, args []string) error {
+		switch {
+		case len(args) == 1 && len(o.entries) == 0:
+			o.in.file = args[0]
+			return nil
+		case len(args) == 0 && len(o.entries) > 0:
+			return nil
+		}
+		return inputErrorf("%s takes one FILE of measurements or, with --entry, passes of the logbook", cmd.CommandPath())
+	}
+	fs := cmd.Flags()
+	fs.StringSliceVar(&o.entries, "entry", nil, "`NUMBER` of a pass of the logbook, or all; may be repeated")
+	fs.StringVar(&o.book, "book", defaultBook, "`FILE` of the logbook")
+	addNumber(fs, &o.points, "mask-points", "how many points the mask has, `N` evenly around (left out: as many of 36 as the log carries)")
+	fs.BoolVar(&o.offers, "offers", false, "with --format csv: the offered values in place of the fits")
+	addFormat(cmd, &o.format)
 	return cmd
 }
 
-func runLogFit(env *Env, in *logInput, f format) error {
-	o, err := in.over(env)
+func runLogFit(ctx context.Context, env *Env, o *logFitOptions) error {
+	knots := 0
+	if o.points != nil {
+		if knots = int(*o.points); float64(knots) != *o.points || knots < 1 || knots > 72 {
+			return inputErrorf("--mask-points: %g is not allowed; it must be a whole number from 1 to 72", *o.points)
+		}
+	}
+	s, err := env.load(needOrbits)
 	if err != nil {
 		return err
 	}
-	out := &sheet{name: "fits", columns: []sheetColumn{wordsAs("quantity", "quantity"), wordsAs("parameter", "parameter"), numbersAs("value", "value", 4),
-		numbersAs("plus_minus", "± (95 %)", 4), wordsAs("unit", "unit"), numbersAs("samples", "samples", 0), numbersAs("outliers", "outliers", 0),
-		numbersAs("noise", "noise of a sample", 3)}, rows: [][]any{}}
-	add := func(q measured.Quantity, fit *measured.Fit, err error) {
-		if err != nil {
-			out.notes = append(out.notes, err.Error())
-			return
-		}
-		for _, p := range fit.Parameters {
-			out.rows = append(out.rows, []any{q.String(), p.Name, p.Value, p.Span, p.Unit, float64(fit.Used), float64(len(fit.Outliers)), fit.Scale})
-		}
-		for _, a := range fit.Advice {
-			out.notes = append(out.notes, q.String()+": "+a)
-		}
+	groups, err := o.groups(ctx, env, s)
+	if err != nil {
+		return err
 	}
-	for _, q := range []measured.Quantity{measured.PowerDBm, measured.RelativePowerDB, measured.CN0DBHz, measured.EbN0DB} {
-		if !o.log.Has(q) {
-			continue
-		}
-		points := append([]measured.Point(nil), o.points...)
-		how := measured.LevelOptions{Quantity: q}
-		if w, ok := o.antenna.BeamwidthAt(o.transmitter.Frequency); ok {
-			how.BeamDeg = w.Degrees()
-		}
-		fit, err := measured.FitLevel(points, how)
-		add(q, fit, err)
-		out.notes = append(out.notes, leftOut(q, points)...)
+	answer := newLogFitAnswer()
+	var fitted []*groupFit
+	for _, g := range groups {
+		f := newGroupFit(g)
+		f.fit()
+		f.rows(answer.fits)
+		fitted = append(fitted, f)
 	}
-	if o.log.Has(measured.FrequencyHz) {
-		points := append([]measured.Point(nil), o.points...)
-		fit, err := measured.FitFrequency(points, true)
-		add(measured.FrequencyHz, fit, err)
-		if err == nil {
-			out.notes = append(out.notes, o.oscillatorOffer(fit))
-		}
-		out.notes = append(out.notes, leftOut(measured.FrequencyHz, points)...)
+	skylines := fitSkylines(fitted, knots)
+	for _, h := range skylines {
+		h.rows(answer.fits)
 	}
-	return out.write(env, f)
-}
-
-// oscillatorOffer says what the scenario would state for the transmitter by the fit.
-func (o *overLog) oscillatorOffer(fit *measured.Fit) string {
-	at := fit.Middle
-	had := o.transmitter.Oscillator.OffsetAt(at).Hertz()
-	return fmt.Sprintf("offered for transmitter %s: oscillator: {measured: [{at_utc: %s, offset_hz: %s}]}, a row a log; the scenario has %s Hz then", o.transmitter.Name,
-		utc(at), fixed(had+fit.Parameters[0].Value, 1), fixed(had, 1))
-}
-
-// leftOut counts and names the samples that a fit did not use.
-func leftOut(q measured.Quantity, points []measured.Point) []string {
-	var out []string
-	count := measured.Count(points)
-	for s := measured.Outside; s <= measured.Wet; s++ {
-		if n := count[s]; n > 0 {
-			out = append(out, fmt.Sprintf("%s: %d samples left out: %s", q, n, s))
-		}
+	if err := answer.offer(s, fitted, skylines); err != nil {
+		return err
 	}
-	for i := range points {
-		if p := &points[i]; p.State == measured.Outlier {
-			out = append(out, fmt.Sprintf("%s: outlier in line %d, %s: %s off the prediction", q, p.Line, utc(p.At), fixed(p.Residual(q), 2)))
-		}
-	}
-	return out
+	return answer.write(env, o.format, o.offers)
 }
 
 type whoseOptions struct {

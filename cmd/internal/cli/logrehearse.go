@@ -10,7 +10,12 @@ import (
 	"github.com/spf13/cobra"
 
 	"slantwise/cmd/internal/atomicfile"
+	"slantwise/cmd/internal/scenario"
+	"slantwise/downlink"
 	"slantwise/orbit"
+	"slantwise/orbit/unit"
+	"slantwise/station"
+	"slantwise/station/pass"
 )
 
 func newEphemerisOf(set orbit.Elements, first, last time.Time, earth orbit.EarthOrientation) (*orbit.Ephemeris, error) {
@@ -20,74 +25,89 @@ func newEphemerisOf(set orbit.Elements, first, last time.Time, earth orbit.Earth
 // rehearsal is what an invented log differs from the prediction by.
 const (
 	rehearsalLevelDB, rehearsalOffsetHz, rehearsalLate = -1.5, 400.0, 500 * time.Millisecond
-	rehearsalNoiseDB, rehearsalNoiseHz                 = 0.3, 30.0
+	rehearsalAddedK, rehearsalHorizonDeg               = 25.0, 1.5
+	rehearsalNoiseDB, rehearsalMeterDB                 = 0.3, 0.1
+	rehearsalNoiseHz                                   = 30.0
+	rehearsalStep, rehearsalLock                       = 2 * time.Second, 4 * time.Second
+	rehearsalAround                                    = 100 * time.Second
+	mostRehearsed                                      = 100
 )
 
+type rehearseOptions struct {
+	who    linkNames
+	at     time.Time
+	passes *float64
+	into   string
+}
+
 func newLogRehearse(env *Env) *cobra.Command {
-	var who linkNames
-	var at time.Time
-	var into string
+	var o rehearseOptions
 	cmd := &cobra.Command{
 		Use:   "rehearse",
 		Short: "Write an invented log of a pass, to practise with",
 		Long: fmt.Sprintf(`Write a log of one pass (the first of the window, or with --pass the one under way then
-or next) as a receiver might have kept it. Nothing in it was measured: it is the
-prediction, %g dB off, the transmitter %g Hz high and the spacecraft %v late, with noise
-of %g dB and %g Hz, always the same.`, rehearsalLevelDB, rehearsalOffsetHz, rehearsalLate, rehearsalNoiseDB, rehearsalNoiseHz),
+or next; with --passes those after it, too) as a receiver might have kept it. Nothing in
+it was measured: it is the prediction under a clear sky, %g dB off, with %g K more noise,
+the transmitter %g Hz high and the spacecraft %v late, heard from %g deg above the
+scenario's horizon on and locked %v after that, with noise of %g dB (%g dB between power
+and C/N0) and %g Hz, always the same.`, rehearsalLevelDB, rehearsalAddedK, rehearsalOffsetHz, rehearsalLate, rehearsalHorizonDeg, rehearsalLock, rehearsalNoiseDB, rehearsalMeterDB, rehearsalNoiseHz),
 		Example: `  slantwise log rehearse --spacecraft "Wagtail 1" --station "Skerry Point" --mode safe --into practice.csv`,
 		Args:    noArgs,
-		RunE:    func(*cobra.Command, []string) error { return runLogRehearse(env, who, at, into) },
+		RunE:    func(*cobra.Command, []string) error { return runLogRehearse(env, &o) },
 	}
-	addLinkNames(cmd, &who)
-	addTime(cmd.Flags(), &at, "pass", "the pass under way then, or the next one of the window")
-	cmd.Flags().StringVar(&into, "into", "", "write into this `FILE`, which must not be there")
+	addLinkNames(cmd, &o.who)
+	addTime(cmd.Flags(), &o.at, "pass", "the pass under way then, or the next one of the window")
+	addNumber(cmd.Flags(), &o.passes, "passes", "`HOW MANY` passes of the window from that on (left out: 1)")
+	cmd.Flags().StringVar(&o.into, "into", "", "write into this `FILE`, which must not be there")
 	return cmd
 }
 
-func runLogRehearse(env *Env, who linkNames, at time.Time, into string) error {
-	if into == "" {
+func runLogRehearse(env *Env, o *rehearseOptions) error {
+	if o.into == "" {
 		return inputErrorf("--into: left out; name the file to write")
 	}
-	if exists(into) {
-		return taken(into)
+	if exists(o.into) {
+		return taken(o.into)
+	}
+	count := 1
+	if o.passes != nil {
+		if count = int(*o.passes); float64(count) != *o.passes || count < 1 || count > mostRehearsed {
+			return inputErrorf("--passes: %g is not allowed; it must be a whole number from 1 to %d", *o.passes, mostRehearsed)
+		}
 	}
 	s, err := env.load(needOrbits)
 	if err != nil {
 		return err
 	}
-	o := budgetOptions{pass: at}
-	c, err := chooseLink(s, who, o.flight(s))
+	budget := budgetOptions{pass: o.at}
+	c, err := chooseLink(s, o.who, budget.flight(s))
 	if err != nil {
 		return err
 	}
 	if c.uplink != nil {
 		return inputErrorf("--uplink: a log is of what the station receives; leave it out")
 	}
-	r, err := budgetOfPass(s, c, at, 2*time.Second)
+	_, found, err := passesOver(s, c.spacecraft, c.station)
 	if err != nil {
 		return err
 	}
-	if r.pass == nil {
+	for len(found) > 0 && found[0].LOS.Before(o.at) {
+		found = found[1:]
+	}
+	if found = found[:min(count, len(found))]; len(found) == 0 {
 		return inputErrorf("there is no such pass in the window %s to %s", utc(s.Window.Start), utc(s.Window.End))
 	}
-	eph, err := s.EphemerisAt(c.spacecraft, r.pass.AOS.Add(-2*time.Second), r.pass.LOS.Add(2*time.Second))
-	if err != nil {
-		return &InputError{Err: err}
+	h := &rehearsal{chosenLink: c, link: c.link, rng: rand.New(rand.NewPCG(2026, 9))}
+	if c.clear != nil {
+		h.link = c.clear
 	}
-	rng := rand.New(rand.NewPCG(2026, 9))
-	err = atomicfile.Write(into, 0o644, func(w io.Writer) error {
-		if _, err := fmt.Fprintf(w, "# An invented log to practise with, not a measurement: the prediction with known differences.\nutc,cn0_dbhz,frequency_hz\n"); err != nil {
+	err = atomicfile.Write(o.into, 0o644, func(w io.Writer) error {
+		if _, err := fmt.Fprintf(w, "# An invented log to practise with, not a measurement: the prediction with known differences.\nutc,received_power_dbm,cn0_dbhz,frequency_hz,locked\n"); err != nil {
 			return err
 		}
-		for _, b := range r.samples {
-			_, rate := c.link.GeometryOf(b.Time, eph.StateAt(eph.Seconds(b.Time.Add(-rehearsalLate))))
-			f := c.transmitter.Frequency + c.transmitter.Oscillator.OffsetAt(b.Time) + c.link.Doppler(rate)
-			level := math.NaN()
-			if b.Usable {
-				level = float64(b.CN0) + rehearsalLevelDB + rehearsalNoiseDB*rng.NormFloat64()
-			}
-			if _, err := fmt.Fprintf(w, "%s,%s,%s\n", utc(b.Time), fixed(level, 2), fixed(f.Hertz()+rehearsalOffsetHz+rehearsalNoiseHz*rng.NormFloat64(), 1)); err != nil {
-				return err
+		for i := range found {
+			if err := h.pass(s, &found[i], w); err != nil {
+				return &InputError{Err: err}
 			}
 		}
 		return nil
@@ -95,6 +115,92 @@ func runLogRehearse(env *Env, who linkNames, at time.Time, into string) error {
 	if err != nil {
 		return err
 	}
-	env.note("an invented log of the pass from %s to %s is in %s", utc(r.pass.AOS), utc(r.pass.LOS), printable(into))
+	what := "the pass"
+	if len(found) > 1 {
+		what = fmt.Sprintf("%d passes", len(found))
+	}
+	env.note("an invented log of %s from %s to %s is in %s", what, utc(found[0].AOS), utc(found[len(found)-1].LOS), printable(o.into))
 	return nil
+}
+
+// rehearsal invents what a receiver logs.
+type rehearsal struct {
+	*chosenLink
+	link *downlink.Link
+	rng  *rand.Rand
+}
+
+// pass writes the rows of a pass, from before it to after it.
+func (h *rehearsal) pass(s *scenario.Scenario, p *pass.Pass, w io.Writer) error {
+	from, to := p.AOS.Add(-rehearsalAround), p.LOS.Add(rehearsalAround)
+	eph, err := s.EphemerisAt(h.spacecraft, from.Add(-time.Second), to.Add(time.Second))
+	if err != nil {
+		return err
+	}
+	const lowest = 0.2 * unit.Degree
+	var heard time.Time // since when; zero: not
+	for t := from; !t.After(to); t = t.Add(rehearsalStep) {
+		g, _ := h.link.GeometryOf(t, eph.StateAt(eph.Seconds(t)))
+		seen := apparentElevation(h.refraction, g.Elevation)
+		if g.Elevation < lowest {
+			continue
+		}
+		if seen < horizonSeen(&h.station.Site, h.refraction, g.Azimuth)+rehearsalHorizonDeg*unit.Degree {
+			heard = time.Time{}
+		} else if heard.IsZero() {
+			heard = t
+		}
+		if heard.IsZero() || t.Sub(heard) < rehearsalLock {
+			if _, err := fmt.Fprintf(w, "%s,,,,0\n", utc(t)); err != nil {
+				return err
+			}
+			continue
+		}
+		if err := h.row(g, eph, w); err != nil {
+			return err
+		}
+	}
+	return nil
+}
+
+// row writes what is heard at a geometry.
+func (h *rehearsal) row(g downlink.Geometry, eph *orbit.Ephemeris, w io.Writer) error {
+	b, err := h.link.At(g)
+	if err != nil {
+		return err
+	}
+	_, rate := h.link.GeometryOf(g.Time, eph.StateAt(eph.Seconds(g.Time.Add(-rehearsalLate))))
+	f := h.transmitter.Frequency + h.transmitter.Oscillator.OffsetAt(g.Time) + h.link.Doppler(rate)
+	off, meter, tone := rehearsalLevelDB+rehearsalNoiseDB*h.rng.NormFloat64(), rehearsalMeterDB*h.rng.NormFloat64(), rehearsalNoiseHz*h.rng.NormFloat64()
+	noise := 0.0
+	if k := b.SystemNoise.Kelvins(); k > 0 {
+		noise = 10 * math.Log10(1+rehearsalAddedK/k)
+	}
+	power, ratio := b.ReceivedPowerDBm+off, float64(b.CN0)+off-noise+meter
+	if !b.Usable {
+		power, ratio = none, none
+	}
+	_, err = fmt.Fprintf(w, "%s,%s,%s,%s,1\n", utc(g.Time), fixed(power, 2), fixed(ratio, 2), fixed(f.Hertz()+rehearsalOffsetHz+tone, 1))
+	return err
+}
+
+// apparentElevation is how high something is seen; geometric where refraction has no value.
+func apparentElevation(r *station.Refraction, elevation unit.Angle) unit.Angle {
+	if r != nil {
+		if seen, ok := r.Apparent(elevation); ok {
+			return seen
+		}
+	}
+	return elevation
+}
+
+// horizonSeen is the apparent elevation of a site's mask, of a bare horizon without one.
+func horizonSeen(site *station.Site, r *station.Refraction, azimuth unit.Angle) unit.Angle {
+	switch {
+	case site.Mask == nil:
+		return 0
+	case site.Mask.Kind() == station.Geometric:
+		return apparentElevation(r, site.Mask.At(azimuth))
+	}
+	return site.Mask.At(azimuth)
 }
