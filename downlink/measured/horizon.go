@@ -54,7 +54,7 @@ type edge struct {
 // How edges are judged: two samples may be so far apart for the change to lie between
 // them, a pass ends with so long a pause, and with less margin than this the signal may
 // have been too weak.
-const between, pause, weakMargin = 30 * time.Second, 20 * time.Minute, 1.0
+const adjacent, pause, weakMargin = 30 * time.Second, 20 * time.Minute, 1.0
 
 // leastWeight is how many edges a knot needs, each by how near it is.
 const leastWeight = 1.5
@@ -247,7 +247,7 @@ func edgesOf(points []Point) []edge {
 // edgeBetween is where the lock changed: between two samples near in time, else at the second.
 func edgeBetween(a, b *Point) edge {
 	e := edge{at: b.At, azimuth: b.AzimuthDeg, elevation: b.ElevationDeg, rate: b.ElevationRateDegS, turn: b.AzimuthRateDegS, margin: b.MarginDB, appeared: b.Get(Locked) == 1}
-	if gap := b.At.Sub(a.At); gap <= between {
+	if gap := b.At.Sub(a.At); gap <= adjacent {
 		e.at = a.At.Add(gap / 2)
 		e.azimuth = math.Mod(a.AzimuthDeg+math.Remainder(b.AzimuthDeg-a.AzimuthDeg, 360)/2+360, 360)
 		e.elevation = (a.ElevationDeg + b.ElevationDeg) / 2

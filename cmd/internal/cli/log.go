@@ -75,7 +75,7 @@ func (in *logInput) over(env *Env) (*overLog, error) {
 	if err != nil {
 		return nil, err
 	}
-	o, err := overSamples(env, s, in.who, l, false)
+	o, err := overSamples(env, s, in.who, l)
 	if err != nil {
 		return nil, err
 	}
@@ -83,9 +83,9 @@ func (in *logInput) over(env *Env) (*overLog, error) {
 	return o, nil
 }
 
-// overSamples puts a log over the prediction for the link that is named, with clear under a
-// clear sky whatever the scenario asks for.
-func overSamples(env *Env, s *scenario.Scenario, who linkNames, l *measured.Log, clear bool) (*overLog, error) {
+// overSamples puts a log over the prediction for the link that is named, under a clear sky
+// whatever the scenario asks for: what rain takes is a matter of the day.
+func overSamples(env *Env, s *scenario.Scenario, who linkNames, l *measured.Log) (*overLog, error) {
 	first, last := l.Samples[0].At, l.Samples[len(l.Samples)-1].At
 	o := &overLog{scenario: s, log: l}
 	var err error
@@ -102,7 +102,7 @@ func overSamples(env *Env, s *scenario.Scenario, who linkNames, l *measured.Log,
 	flown := s.ElementsOver(o.spacecraft, first, last.Add(time.Second))
 	o.elements = newOrbitHead(o.spacecraft, flown, first.Add(last.Sub(first)/2)).String()
 	by := o.prediction(eph)
-	if clear && o.clear != nil {
+	if o.clear != nil {
 		by.Link = o.clear
 	}
 	if o.points, err = by.Over(l.Samples); err != nil {

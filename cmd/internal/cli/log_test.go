@@ -12,7 +12,7 @@ import (
 func TestLogFitFindsWhatWasPutIn(t *testing.T) {
 	t.Chdir(t.TempDir())
 	who := []string{"--spacecraft", "Wagtail 1", "--station", "Skerry Point", "--mode", "safe"}
-	if code, _, errOut := invoke(t, append([]string{"log", "rehearse", "--into", "r.csv"}, who...)...); code != ExitAnswer {
+	if code, _, errOut := invoke(t, append([]string{"log", "rehearse", "--full", "--into", "r.csv"}, who...)...); code != ExitAnswer {
 		t.Fatal(errOut)
 	}
 	got := fitOf(t, append([]string{"r.csv"}, who...)...)
@@ -91,7 +91,7 @@ func (f *logFit) holds(t *testing.T, want map[string]float64) {
 func TestLogFitOfTheLogbook(t *testing.T) {
 	t.Chdir(t.TempDir())
 	who := []string{"--spacecraft", "Wagtail 1", "--station", "Skerry Point", "--mode", "safe"}
-	for _, call := range [][]string{{"rehearse", "--into", "one.csv"}, {"rehearse", "--passes", "5", "--pass", "2026-09-15T01:30:00Z", "--into", "more.csv"}, {"add", "one.csv"}, {"add", "more.csv"}} {
+	for _, call := range [][]string{{"rehearse", "--full", "--into", "one.csv"}, {"rehearse", "--full", "--passes", "5", "--pass", "2026-09-15T01:30:00Z", "--into", "more.csv"}, {"add", "one.csv"}, {"add", "more.csv"}} {
 		if code, _, errOut := invoke(t, append(append([]string{"log"}, call...), who...)...); code != ExitAnswer {
 			t.Fatalf("%v: %s", call, errOut)
 		}
@@ -147,7 +147,7 @@ measurements:
 	if err != nil {
 		t.Fatal(err)
 	}
-	other := strings.NewReplacer(",", ";", "utc,received_power_dbm,cn0_dbhz,frequency_hz,locked", "When;received_power_dbm;Ratio;Tone;locked").Replace(string(made))
+	other := strings.NewReplacer(",", ";", "utc,cn0_dbhz,frequency_hz", "When;Ratio;Tone").Replace(string(made))
 	for name, data := range map[string][]byte{"slantwise.yaml": text, "m.csv": []byte(other)} {
 		if err := os.WriteFile(name, data, 0o600); err != nil {
 			t.Fatal(err)
@@ -161,7 +161,7 @@ measurements:
 		t.Fatal(err)
 	}
 	code, out, errOut := invoke(t, append([]string{"log", "fit", "m.csv", "--format", "csv"}, who...)...)
-	if code != ExitAnswer || !strings.Contains(errOut, "m.csv is read as modem") || !strings.Contains(out, "cn0_dbhz,offset,-1.5") {
+	if code != ExitAnswer || !strings.Contains(errOut, "m.csv is read as modem") || !strings.Contains(out, "cn0_dbhz,offset,-0.5") {
 		t.Errorf("exit code %d, %s\n%s", code, errOut, out)
 	}
 	if code, _, errOut = invoke(t, append([]string{"log", "fit", "m.csv", "--table", "moden"}, who...)...); code != ExitInput || !strings.Contains(errOut, "modem") {

@@ -21,7 +21,7 @@ func (o *logFitOptions) groups(ctx context.Context, env *Env, s *scenario.Scenar
 	if err != nil {
 		return nil, err
 	}
-	g, err := overSamples(env, s, o.in.who, l, true)
+	g, err := overSamples(env, s, o.in.who, l)
 	return []*overLog{g}, err
 }
 
@@ -61,7 +61,7 @@ func (o *logFitOptions) fromBook(ctx context.Context, env *Env, s *scenario.Scen
 		if err != nil {
 			return nil, &InputError{Err: err}
 		}
-		g, err := overSamples(env, s, who, l, true)
+		g, err := overSamples(env, s, who, l)
 		if err != nil {
 			return nil, fmt.Errorf("passes %v of %s: %w", numbers[who], printable(o.book), err)
 		}

@@ -30,6 +30,7 @@ const (
 	rehearsalNoiseHz                                   = 30.0
 	rehearsalStep, rehearsalLock                       = 2 * time.Second, 4 * time.Second
 	rehearsalAround                                    = 100 * time.Second
+	rehearsalLowest                                    = 0.2 * unit.Degree
 	mostRehearsed                                      = 100
 )
 
@@ -37,6 +38,7 @@ type rehearseOptions struct {
 	who    linkNames
 	at     time.Time
 	passes *float64
+	full   bool
 	into   string
 }
 
@@ -47,17 +49,21 @@ func newLogRehearse(env *Env) *cobra.Command {
 		Short: "Write an invented log of a pass, to practise with",
 		Long: fmt.Sprintf(`Write a log of one pass (the first of the window, or with --pass the one under way then
 or next; with --passes those after it, too) as a receiver might have kept it. Nothing in
-it was measured: it is the prediction under a clear sky, %g dB off, with %g K more noise,
-the transmitter %g Hz high and the spacecraft %v late, heard from %g deg above the
-scenario's horizon on and locked %v after that, with noise of %g dB (%g dB between power
-and C/N0) and %g Hz, always the same.`, rehearsalLevelDB, rehearsalAddedK, rehearsalOffsetHz, rehearsalLate, rehearsalHorizonDeg, rehearsalLock, rehearsalNoiseDB, rehearsalMeterDB, rehearsalNoiseHz),
-		Example: `  slantwise log rehearse --spacecraft "Wagtail 1" --station "Skerry Point" --mode safe --into practice.csv`,
-		Args:    noArgs,
-		RunE:    func(*cobra.Command, []string) error { return runLogRehearse(env, &o) },
+it was measured: it is the prediction under a clear sky, %g dB off, the transmitter %g Hz
+high and the spacecraft %v late, with noise of %g dB and %g Hz, always the same.
+
+With --full it holds the received power and the lock, too, from before the pass to after
+it: %g K more noise, signals heard from %g deg above the scenario's horizon on and locked
+%v after that.`, rehearsalLevelDB, rehearsalOffsetHz, rehearsalLate, rehearsalNoiseDB, rehearsalNoiseHz, rehearsalAddedK, rehearsalHorizonDeg, rehearsalLock),
+		Example: `  slantwise log rehearse --spacecraft "Wagtail 1" --station "Skerry Point" --mode safe --into practice.csv
+  slantwise log rehearse --spacecraft "Wagtail 1" --station "Skerry Point" --mode safe --full --passes 6 --into more.csv`,
+		Args: noArgs,
+		RunE: func(*cobra.Command, []string) error { return runLogRehearse(env, &o) },
 	}
 	addLinkNames(cmd, &o.who)
 	addTime(cmd.Flags(), &o.at, "pass", "the pass under way then, or the next one of the window")
 	addNumber(cmd.Flags(), &o.passes, "passes", "`HOW MANY` passes of the window from that on (left out: 1)")
+	cmd.Flags().BoolVar(&o.full, "full", false, "with received power and lock")
 	cmd.Flags().StringVar(&o.into, "into", "", "write into this `FILE`, which must not be there")
 	return cmd
 }
@@ -97,12 +103,16 @@ func runLogRehearse(env *Env, o *rehearseOptions) error {
 	if found = found[:min(count, len(found))]; len(found) == 0 {
 		return inputErrorf("there is no such pass in the window %s to %s", utc(s.Window.Start), utc(s.Window.End))
 	}
-	h := &rehearsal{chosenLink: c, link: c.link, rng: rand.New(rand.NewPCG(2026, 9))}
+	h := &rehearsal{chosenLink: c, link: c.link, full: o.full, rng: rand.New(rand.NewPCG(2026, 9))}
 	if c.clear != nil {
 		h.link = c.clear
 	}
 	err = atomicfile.Write(o.into, 0o644, func(w io.Writer) error {
-		if _, err := fmt.Fprintf(w, "# An invented log to practise with, not a measurement: the prediction with known differences.\nutc,received_power_dbm,cn0_dbhz,frequency_hz,locked\n"); err != nil {
+		columns := "utc,cn0_dbhz,frequency_hz"
+		if h.full {
+			columns = "utc,received_power_dbm,cn0_dbhz,frequency_hz,locked"
+		}
+		if _, err := fmt.Fprintf(w, "# An invented log to practise with, not a measurement: the prediction with known differences.\n%s\n", columns); err != nil {
 			return err
 		}
 		for i := range found {
@@ -127,30 +137,32 @@ func runLogRehearse(env *Env, o *rehearseOptions) error {
 type rehearsal struct {
 	*chosenLink
 	link *downlink.Link
+	full bool
 	rng  *rand.Rand
 }
 
-// pass writes the rows of a pass, from before it to after it.
+// pass writes the rows of a pass, with full from before it to after it.
 func (h *rehearsal) pass(s *scenario.Scenario, p *pass.Pass, w io.Writer) error {
-	from, to := p.AOS.Add(-rehearsalAround), p.LOS.Add(rehearsalAround)
+	from, to := p.AOS, p.LOS
+	if h.full {
+		from, to = from.Add(-rehearsalAround), to.Add(rehearsalAround)
+	}
 	eph, err := s.EphemerisAt(h.spacecraft, from.Add(-time.Second), to.Add(time.Second))
 	if err != nil {
 		return err
 	}
-	const lowest = 0.2 * unit.Degree
 	var heard time.Time // since when; zero: not
 	for t := from; !t.After(to); t = t.Add(rehearsalStep) {
 		g, _ := h.link.GeometryOf(t, eph.StateAt(eph.Seconds(t)))
-		seen := apparentElevation(h.refraction, g.Elevation)
-		if g.Elevation < lowest {
+		switch high := apparentElevation(h.refraction, g.Elevation) - horizonSeen(&h.station.Site, h.refraction, g.Azimuth); {
+		case h.full && g.Elevation < rehearsalLowest:
 			continue
-		}
-		if seen < horizonSeen(&h.station.Site, h.refraction, g.Azimuth)+rehearsalHorizonDeg*unit.Degree {
+		case h.full && high < rehearsalHorizonDeg*unit.Degree:
 			heard = time.Time{}
-		} else if heard.IsZero() {
+		case heard.IsZero():
 			heard = t
 		}
-		if heard.IsZero() || t.Sub(heard) < rehearsalLock {
+		if h.full && (heard.IsZero() || t.Sub(heard) < rehearsalLock) {
 			if _, err := fmt.Fprintf(w, "%s,,,,0\n", utc(t)); err != nil {
 				return err
 			}
@@ -171,16 +183,25 @@ func (h *rehearsal) row(g downlink.Geometry, eph *orbit.Ephemeris, w io.Writer) 
 	}
 	_, rate := h.link.GeometryOf(g.Time, eph.StateAt(eph.Seconds(g.Time.Add(-rehearsalLate))))
 	f := h.transmitter.Frequency + h.transmitter.Oscillator.OffsetAt(g.Time) + h.link.Doppler(rate)
-	off, meter, tone := rehearsalLevelDB+rehearsalNoiseDB*h.rng.NormFloat64(), rehearsalMeterDB*h.rng.NormFloat64(), rehearsalNoiseHz*h.rng.NormFloat64()
+	off, tone := rehearsalLevelDB+rehearsalNoiseDB*h.rng.NormFloat64(), rehearsalNoiseHz*h.rng.NormFloat64()
+	hertz := fixed(f.Hertz()+rehearsalOffsetHz+tone, 1)
+	if !h.full {
+		ratio := float64(b.CN0) + off
+		if !b.Usable {
+			ratio = none
+		}
+		_, err = fmt.Fprintf(w, "%s,%s,%s\n", utc(g.Time), fixed(ratio, 2), hertz)
+		return err
+	}
 	noise := 0.0
 	if k := b.SystemNoise.Kelvins(); k > 0 {
 		noise = 10 * math.Log10(1+rehearsalAddedK/k)
 	}
-	power, ratio := b.ReceivedPowerDBm+off, float64(b.CN0)+off-noise+meter
+	power, ratio := b.ReceivedPowerDBm+off, float64(b.CN0)+off-noise+rehearsalMeterDB*h.rng.NormFloat64()
 	if !b.Usable {
 		power, ratio = none, none
 	}
-	_, err = fmt.Fprintf(w, "%s,%s,%s,%s,1\n", utc(g.Time), fixed(power, 2), fixed(ratio, 2), fixed(f.Hertz()+rehearsalOffsetHz+tone, 1))
+	_, err = fmt.Fprintf(w, "%s,%s,%s,%s,1\n", utc(g.Time), fixed(power, 2), fixed(ratio, 2), hertz)
 	return err
 }
 
