@@ -57,6 +57,7 @@ func TestAttacks(t *testing.T) {
 		{"refused", "POST", "/api/what-if", `{"contact":"a","dish_m":-1}`, js, 422},
 		{"no such contact", "POST", "/api/what-if", `{"contact":"b"}`, js, 404},
 		{"asked by GET", "GET", "/api/what-if", "", nil, 405},
+		{"the foot alone", "GET", "/foot", "", nil, 200},
 		{"a file", "GET", "/slantwise.yaml", "", nil, 404},
 		{"a way up", "GET", "/api/contacts/..%2f..%2f..%2fetc%2fpasswd", "", nil, 404},
 		{"a way up, plain", "GET", "/api/contacts/../../etc/passwd", "", nil, 307},

@@ -5,6 +5,7 @@ import (
 	"crypto/rand"
 	_ "embed"
 	"html/template"
+	"io"
 	"net/http"
 )
 
@@ -44,4 +45,12 @@ func (s *Server) page(w http.ResponseWriter, _ *http.Request) {
 		"'; connect-src 'self'; img-src data:; base-uri 'none'; form-action 'none'; frame-ancestors 'none'")
 	h.Set("Content-Type", "text/html; charset=utf-8")
 	w.Write(b.Bytes()) // a client that has gone gets nothing
+}
+
+// getFoot gives what the numbers stand on by itself, for a page that was opened before
+// the files changed.
+func (s *Server) getFoot(w http.ResponseWriter, _ *http.Request) {
+	m, _, _ := s.keeper.now()
+	w.Header().Set("Content-Type", "text/html; charset=utf-8")
+	io.WriteString(w, string(m.Foot())) // a client that has gone gets nothing
 }

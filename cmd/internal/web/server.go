@@ -70,6 +70,7 @@ func newServer(c Config, l limits) *Server {
 func (s *Server) Handler(port string) http.Handler {
 	mux := http.NewServeMux()
 	mux.HandleFunc("GET /{$}", s.page)
+	mux.HandleFunc("GET /foot", s.getFoot)
 	mux.HandleFunc("GET /api/state", s.getState)
 	mux.HandleFunc("GET /api/contacts", s.getContacts)
 	mux.HandleFunc("GET /api/contacts/{id}", s.getDetail)

@@ -51,10 +51,11 @@ function fill() {
   const byID = Object.fromEntries(state.next.map(c => [c.id, c]));
   for (const s of state.signals) {
     const c = byID[s.id];
-    row($("signals"), called(c) + (s.mode ? ", " + s.mode : ""), [{text: "", until: c.los_utc}, show(s.azimuth_deg), show(s.elevation_deg), show(s.range_km, 0),
-      show(s.doppler_hz === null ? null : s.doppler_hz / 1000, 2), show(s.received_power_dbm), show(s.c_n0_dbhz), show(s.eb_n0_db), show(s.margin_db)]);
+    row($("signals"), called(c) + (s.mode ? ", " + s.mode : ""), [{text: "", until: c.los_utc}, show(s.margin_db), show(s.elevation_deg), show(s.azimuth_deg),
+      show(s.doppler_hz === null ? null : s.doppler_hz / 1000, 2), show(s.received_power_dbm), show(s.eb_n0_db), show(s.c_n0_dbhz), show(s.range_km, 0)]);
     for (const n of s.notes) $("signal-notes").append(make("li", called(c) + ": " + n));
   }
+  headline(byID);
   if (!state.signals.length) row($("signals"), "no contact is under way", []);
   const list = state.next.map(c => c.id).join() + state.generation + chosen;
   if (list !== shownNext) {
@@ -164,6 +165,27 @@ $("save").addEventListener("submit", async e => {
 addEventListener("hashchange", recall);
 $("what-if").addEventListener("reset", () => { changes = {}; $("answer").hidden = $("keep").hidden = true; $("refused").textContent = ""; remember(); });
 
+// headline says first what matters first: what is under way, or what comes next.
+function headline(byID) {
+  const line = $("headline"), parts = [];
+  const until = t => { const e = make("b", ""); e.dataset.until = t; return e; };
+  for (const s of state.signals) {
+    const c = byID[s.id];
+    parts.push([make("b", called(c)), `: azimuth ${show(s.azimuth_deg)}°, elevation ${show(s.elevation_deg)}°` + (s.margin_db === null ? "" : `, margin ${show(s.margin_db)} dB`) + ", ends in ", until(c.los_utc), ". "]);
+  }
+  const next = state.next.find(c => !state.signals.some(s => s.id === c.id));
+  if (next) parts.push(["Next: ", make("b", called(next)), " in ", until(next.aos_utc), "."]);
+  line.replaceChildren(...parts.flat());
+}
+
+// refoot brings what the numbers stand on after the files have changed.
+async function refoot() {
+  try {
+    const r = await fetch("/foot");
+    if (r.ok) $("foot").replaceChildren(...new DOMParser().parseFromString(await r.text(), "text/html").body.childNodes);
+  } catch { /* the stream tells that the program does not answer */ }
+}
+
 function second() {
   if (!state) return;
   const t = now();
@@ -188,6 +210,7 @@ function heardState(e) {
   if (!first && generation !== state.generation) {
     shownNext = "";
     if (chosen) choose(chosen);
+    refoot();
   }
   generation = state.generation;
   second();
