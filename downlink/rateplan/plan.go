@@ -47,7 +47,8 @@ func share(part, whole float64) float64 {
 }
 
 func (p *Planner) report(t *Track, spans []span) Plan {
-	plan := Plan{Steps: make([]Step, len(spans)), SoFar: make([]float64, len(t.Seconds)), FreeBytes: p.free(t) / 8, ShannonBytes: shannon(t, p.rules.Band.Hertz()) / 8}
+	plan := Plan{Steps: make([]Step, len(spans)), SoFar: make([]float64, len(t.Seconds))}
+	plan.FreeBytes, plan.ShannonBytes = p.bounds(t)
 	for i, s := range spans {
 		step := Step{From: t.at(t.Seconds[s.from]), To: t.at(t.Seconds[s.to]), Mode: s.mode, Name: "silent", LeastMargin: unit.DB(math.NaN()), Bytes: s.bits / 8}
 		if s.mode != silence {

@@ -10,6 +10,7 @@ import (
 type Planner struct {
 	modes []Mode
 	rules Rules
+	bare  bool // no bounds
 
 	seconds  []float64 // of the track at hand
 	guarded  []float64 // C/N0, the least within the guard in time

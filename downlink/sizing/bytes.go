@@ -2,6 +2,7 @@ package sizing
 
 import (
 	"math"
+	"slices"
 
 	"slantwise/downlink/rateplan"
 	"slantwise/downlink/recorder"
@@ -12,37 +13,41 @@ func (w *work) bytes() error {
 	s := w.study
 	w.days = make([]float64, int(math.Ceil(s.spec.Flight.Days)))
 	turns, weight := s.sampled(w.variant.thin)
-	tracks := make([]passTrack, len(turns))
-	for k, t := range turns {
-		tracks[k] = w.track(t)
-	}
-	if s.spec.Settles {
-		all := make([]rateplan.Track, len(tracks))
-		for k := range tracks {
-			all[k] = tracks[k].Track
-		}
-		if err := s.spec.Rates.Settle(all); err != nil {
-			return err
-		}
+	if err := w.settle(turns); err != nil {
+		return err
 	}
 	w.out.ClearBytesPerDay, w.out.WorstMonthBytesPerDay = 0, 0
 	w.out.MountLostBytesPerDay, w.out.NotFollowedSPerDay = 0, 0
-	for k := range tracks {
-		plan, modes, err := s.spec.Rates.Plan(tracks[k].Track)
+	for _, t := range turns {
+		track := w.track(t)
+		plan, err := s.schedule(track.turn, &track.Track)
 		if err != nil {
 			return err
 		}
-		many := weight[turns[k].Site]
-		mean := w.count(turns[k].Site, &tracks[k], &plan, modes, many)
-		if s.spec.Latency != nil && !math.IsNaN(s.spec.Needs.Latency) {
-			w.contacts = append(w.contacts, contactOf(&s.spec, turns[k], &tracks[k].Track, &plan))
+		many := weight[t.Site]
+		mean := w.count(t.Site, &track, plan, many)
+		if s.asksLatency() {
+			w.contacts = append(w.contacts, contactOf(s.spec.Flight.Sites[t.Site].Site.Name, &track.Track, plan))
 		}
-		if err := w.miss(turns[k], &tracks[k], mean, many); err != nil {
+		if err := w.miss(t, &track, mean, many); err != nil {
 			return err
 		}
 	}
 	w.total()
 	return w.latency()
+}
+
+// settle chooses what holds for all passes together, where there is such a thing.
+func (w *work) settle(turns []Turn) error {
+	if !w.study.spec.Settles {
+		return nil
+	}
+	all := make([]rateplan.Track, len(turns))
+	for k, t := range turns {
+		all[k] = w.track(t).Track
+		all[k].CN0DBHz = slices.Clone(all[k].CN0DBHz)
+	}
+	return w.study.spec.Rates.Settle(all)
 }
 
 // miss counts what the mount takes of a turn of which so many bytes come down with it.
@@ -52,12 +57,12 @@ func (w *work) miss(t Turn, track *passTrack, mean, weight float64) error {
 		return nil
 	}
 	s := w.study
-	plan, modes, err := s.spec.Rates.Plan(whole.Track)
+	plan, err := s.schedule(t.number, &whole.Track)
 	if err != nil {
 		return err
 	}
 	all := 0.0
-	w.sent(t.Site, whole, &plan, modes, func(_ int, bytes, year, _ float64) { all += bytes * (1 - year) })
+	w.sent(t.Site, whole, plan, func(_ int, bytes, year, _ float64) { all += bytes * (1 - year) })
 	w.out.MountLostBytesPerDay += weight * all
 	w.out.MountLostBytesPerDay -= mean
 	w.out.NotFollowedSPerDay += weight * lostOf(w.outages[t.Site].of(t.Pass), whole.Seconds[0], whole.Seconds[len(whole.Seconds)-1])
@@ -119,9 +124,9 @@ func (w *work) total() {
 // count adds the bytes of a plan: each stretch between two samples at its rate, by the
 // share of the year in which the weather leaves the mode what it needs, as many times as
 // the pass stands for. It returns the mean bytes that it has added.
-func (w *work) count(site int, track *passTrack, plan *rateplan.Plan, modes []rateplan.Mode, weight float64) float64 {
+func (w *work) count(site int, track *passTrack, plan *schedule, weight float64) float64 {
 	mean := 0.0
-	w.sent(site, track, plan, modes, func(_ int, bytes, year, month float64) {
+	w.sent(site, track, plan, func(_ int, bytes, year, month float64) {
 		bytes *= weight
 		mean += bytes * (1 - year)
 		w.out.ClearBytesPerDay += bytes
@@ -134,26 +139,26 @@ func (w *work) count(site int, track *passTrack, plan *rateplan.Plan, modes []ra
 // sent calls add for each stretch of a plan in which data are sent: the sample of the
 // track at its end, the bytes, and the shares of the average year and of its worst month in which
 // the weather takes them.
-func (w *work) sent(site int, track *passTrack, plan *rateplan.Plan, modes []rateplan.Mode, add func(i int, bytes, year, month float64)) {
-	if len(plan.Steps) == 0 {
+func (w *work) sent(site int, track *passTrack, plan *schedule, add func(i int, bytes, year, month float64)) {
+	if len(plan.steps) == 0 {
 		return
 	}
 	st, f, clear := &w.study.sites[site], w.fronts[site], track.clear
 	relock := w.study.spec.Rates.Rules().Relock.Seconds()
-	starts := stepStarts(&track.Track, plan)
+	end := plan.steps[len(plan.steps)-1].to
 	step, locked, running := -1, math.Inf(-1), false
 	for i := 1; i < len(track.Seconds); i++ {
 		a, b := track.Seconds[i-1], track.Seconds[i]
-		for step+1 < len(starts) && a >= starts[step+1]-1e-6 {
+		for step+1 < len(plan.steps) && a >= plan.steps[step+1].from-1e-6 {
 			step++
 			running = false
 		}
-		if step < 0 || step == len(starts)-1 || plan.Steps[step].Mode < 0 {
+		if step < 0 || a >= end-1e-6 || plan.steps[step].mode < 0 {
 			running = false
 			continue
 		}
-		mode := &modes[plan.Steps[step].Mode]
-		slack := (clear[i-1]+clear[i])/2 - mode.NeedDBHz
+		mode := &plan.steps[step]
+		slack := (clear[i-1]+clear[i])/2 - mode.need
 		if !(slack >= 0) {
 			running = false
 			continue
@@ -165,31 +170,15 @@ func (w *work) sent(site int, track *passTrack, plan *rateplan.Plan, modes []rat
 		if !(seconds > 0) {
 			continue
 		}
-		bytes := seconds * mode.NetRate.BitsPerSecond() / 8
+		bytes := seconds * mode.rate / 8
 		year, month := f.under(st.air, track.at[i], slack)
 		add(i, bytes, year, month)
 	}
 }
 
-// stepStarts returns when each step of a plan begins, in seconds of the track, and when
-// the last one ends.
-func stepStarts(t *rateplan.Track, p *rateplan.Plan) []float64 {
-	out := make([]float64, len(p.Steps)+1)
-	for i := range p.Steps {
-		out[i] = p.Steps[i].From.Sub(t.Start).Seconds()
-	}
-	out[len(p.Steps)] = p.Steps[len(p.Steps)-1].To.Sub(t.Start).Seconds()
-	return out
-}
-
 // contactOf makes the contact of a plan as a recorder takes it.
-func contactOf(spec *Spec, t Turn, track *rateplan.Track, plan *rateplan.Plan) recorder.Contact {
-	y := &spec.Flight.Sites[t.Site]
-	c := recorder.Contact{Station: y.Site.Name, From: track.Seconds[0], To: track.Seconds[len(track.Seconds)-1]}
-	for _, r := range plan.Receptions(*track) {
-		c.Steps = append(c.Steps, recorder.Step{From: r.From, To: r.To, BytesPerSecond: plan.Steps[r.Step].NetRate.BitsPerSecond() / 8})
-	}
-	return c
+func contactOf(station string, track *rateplan.Track, plan *schedule) recorder.Contact {
+	return recorder.Contact{Station: station, From: track.Seconds[0], To: track.Seconds[len(track.Seconds)-1], Steps: slices.Clone(plan.received)}
 }
 
 func (w *work) latency() error {

@@ -91,6 +91,11 @@ func (p planner) Plan(t rateplan.Track) (rateplan.Plan, []rateplan.Mode, error) 
 	return out, caseModes, err
 }
 
+func (p planner) Pattern(t *rateplan.Track, b []byte) ([]byte, bool, error) {
+	b, err := p.Planner.Pattern(t, b)
+	return b, true, err
+}
+
 var caseRules = rateplan.Rules{Changes: 4, LeastStay: 20 * time.Second, Relock: 4 * time.Second}
 
 func caseSpec(t testing.TB, site *station.Site, a station.Antenna) propagation.PathSpec {

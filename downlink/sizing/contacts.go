@@ -11,6 +11,7 @@ import (
 type Turn struct {
 	Site, Pass int // of the flight
 	From       int // the first sample of the pass that counts
+	number     int // among the turns of its sites, from 1; 0: none of them
 }
 
 // Turns returns the passes over some of the flight's sites in turn. A pass that lies
@@ -20,7 +21,7 @@ func (f *Flight) Turns(sites []int) []Turn {
 	for _, s := range sites {
 		for p := range f.Sites[s].Passes {
 			from, _ := f.Sites[s].Samples(p)
-			all = append(all, Turn{s, p, from})
+			all = append(all, Turn{Site: s, Pass: p, From: from})
 		}
 	}
 	begin := func(t Turn) float64 { return f.Sites[t.Site].Seconds[t.From] }
@@ -37,6 +38,7 @@ func (f *Flight) Turns(sites []int) []Turn {
 			continue
 		}
 		until = y.Seconds[to-1]
+		t.number = len(out) + 1
 		out = append(out, t)
 	}
 	return out

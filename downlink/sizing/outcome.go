@@ -93,6 +93,7 @@ type work struct {
 	outages []*outage // by site; nil: the antenna follows everything
 	out     *Outcome
 
+	levelsOf []float64 // of the track at hand
 	days     []float64 // bytes by day of the year
 	contacts []recorder.Contact
 }

@@ -4,6 +4,7 @@ import (
 	"errors"
 	"fmt"
 	"math"
+	"slices"
 
 	"slantwise/downlink"
 	"slantwise/downlink/propagation"
@@ -165,6 +166,7 @@ type front struct {
 	planned []float64   // under the planned weather
 	noise   []float64   // K, clear sky
 	losses  [][]float64 // by rung, then by percentage: dB lost to the weather
+	most    []float64   // by rung: the most of them
 	usable  bool        // the pointing error stays in the main lobe
 }
 
@@ -237,6 +239,9 @@ func (f *front) weather(a *air, share []float64) error {
 			f.losses[i][k] = v
 		}
 	}
+	for i := range loss {
+		f.most = append(f.most, slices.Max(f.losses[i]))
+	}
 	return nil
 }
 
@@ -250,6 +255,8 @@ func (f *front) under(a *air, at place, slack float64) (year, month float64) {
 		return 1, 1
 	case len(a.percent) == 0:
 		return 0, 0
+	case slack >= f.most[at.rung] && slack >= f.most[at.rung+1]: // as most samples do
+		return a.least, a.leastMonth
 	}
 	low, high, w := f.losses[at.rung], f.losses[at.rung+1], float64(at.part)
 	last := len(a.percent) - 1

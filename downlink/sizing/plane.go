@@ -116,7 +116,7 @@ func (s *Study) alongAxis(axis Axis, value float64, refit Refit) (*Study, Varian
 	if err != nil {
 		return nil, Variant{}, err
 	}
-	of.turning = s.turning // the courses are the same
+	of.turning, of.shared = s.turning, s.shared // the passes are the same
 	return of, Variant{}, nil
 }
 

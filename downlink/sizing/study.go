@@ -22,6 +22,9 @@ type Scheduler interface {
 	Settle(tracks []rateplan.Track) error
 	// Plan plans a pass; the modes are those that the plan's steps count in.
 	Plan(t rateplan.Track) (rateplan.Plan, []rateplan.Mode, error)
+	// Pattern appends to b what the plan of a track hangs on beside its instants, so that one
+	// plan serves all tracks that are alike in it; ok is false where there is no such thing.
+	Pattern(t *rateplan.Track, b []byte) (pattern []byte, ok bool, err error)
 }
 
 // Spec is everything that a study is made of.
@@ -50,6 +53,7 @@ type Study struct {
 	need  float64     // least C/N0 with which anything closes, guard included
 
 	turning *turning
+	shared  *schedules
 
 	known map[Variant]*Outcome
 	plans int // how often the year was planned
@@ -90,6 +94,7 @@ func NewStudy(spec Spec) (*Study, error) {
 		return nil, err
 	}
 	s.turns, s.turning = spec.Flight.Turns(spec.Sites), newTurning(spec.Flight)
+	s.shared = newSchedules()
 	return s, nil
 }
 

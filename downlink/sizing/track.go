@@ -12,19 +12,23 @@ type passTrack struct {
 	rateplan.Track           // under the planned weather
 	clear          []float64 // under a clear sky
 	at             []place   // of each sample
+	turn           int       // the number of the turn whose instants these are; 0: they are its own
 	whole          *passTrack
 }
 
 // track returns the samples of a turn. What the mount does not follow is not usable in
-// it; whole is then the turn as if it did.
+// it; whole is then the turn as if it did. The track lasts until the next one is asked for.
 func (w *work) track(t Turn) passTrack {
 	flight := w.study.spec.Flight
 	y := &flight.Sites[t.Site]
 	_, to := y.Samples(t.Pass)
 	n := to - t.From
-	both := make([]float64, 2*n)
+	if len(w.levelsOf) < 2*n {
+		w.levelsOf = make([]float64, 2*n)
+	}
+	both := w.levelsOf[:2*n]
 	w.levels(t.Site, t.From, to, both[:n], both[n:])
-	out := passTrack{Track: rateplan.Track{Start: flight.Start, Seconds: y.Seconds[t.From:to], CN0DBHz: both[:n]}, clear: both[n:], at: w.study.sites[t.Site].place[t.From:to]}
+	out := passTrack{Track: rateplan.Track{Start: flight.Start, Seconds: y.Seconds[t.From:to], CN0DBHz: both[:n]}, clear: both[n:], turn: t.number, at: w.study.sites[t.Site].place[t.From:to]}
 	lost := w.outages[t.Site].of(t.Pass)
 	if len(lost) == 0 {
 		return out

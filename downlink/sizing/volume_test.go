@@ -27,18 +27,18 @@ func TestExpectedBytesAgainstDistribution(t *testing.T) {
 		for _, turn := range s.turns {
 			w := work{study: s, variant: v, fronts: []*front{f}, outages: make([]*outage, 1), out: &Outcome{}, days: make([]float64, 8)}
 			track := w.track(turn)
-			plan, modes, err := s.spec.Rates.Plan(track.Track)
+			plan, err := s.schedule(track.turn, &track.Track)
 			if err != nil {
 				t.Fatal(err)
 			}
-			if len(plan.Steps) == 0 {
+			if len(plan.steps) == 0 {
 				continue
 			}
-			w.count(turn.Site, &track, &plan, modes, 1)
+			w.count(turn.Site, &track, plan, 1)
 			for _, b := range w.days {
 				expected += b
 			}
-			mean += distributed(t, s, f, turn, &track.Track, track.clear, &plan)
+			mean += distributed(t, s, f, turn, &track.Track, track.clear, plan)
 		}
 		if math.Abs(expected/mean-1) > 5e-3 {
 			t.Errorf("%g m: expected %.6g bytes, the distributions' means add up to %.6g", d.Metres(), expected, mean)
@@ -47,17 +47,18 @@ func TestExpectedBytesAgainstDistribution(t *testing.T) {
 }
 
 // distributed is the mean volume of a plan by the package that distributes volumes.
-func distributed(t *testing.T, s *Study, f *front, turn Turn, track *rateplan.Track, clear []float64, plan *rateplan.Plan) float64 {
+func distributed(t *testing.T, s *Study, f *front, turn Turn, track *rateplan.Track, clear []float64, plan *schedule) float64 {
 	n := len(track.Seconds)
 	p := passvolume.Pass{Seconds: track.Seconds, CN0DBHz: clear, NeedDBHz: make([]float64, n), RateBps: make([]float64, n), Lock: 4, Changes: make([]bool, n)}
-	starts, step := stepStarts(track, plan), -1
+	step, end := -1, plan.steps[len(plan.steps)-1].to
 	for i, sec := range track.Seconds {
-		for step+1 < len(starts) && sec >= starts[step+1]-1e-6 {
+		for step+1 < len(plan.steps) && sec >= plan.steps[step+1].from-1e-6 {
 			step++
 			p.Changes[i] = true
 		}
-		if step >= 0 && step < len(plan.Steps) && plan.Steps[step].Mode >= 0 {
-			m := caseModes[plan.Steps[step].Mode]
+		p.Changes[i] = p.Changes[i] || math.Abs(sec-end) < 1e-6
+		if step >= 0 && sec < end-1e-6 && plan.steps[step].mode >= 0 {
+			m := caseModes[plan.steps[step].mode]
 			p.NeedDBHz[i], p.RateBps[i] = m.NeedDBHz, m.NetRate.BitsPerSecond()
 		}
 	}

@@ -53,12 +53,12 @@ func (w *work) yield(site int, cell float64) ([]cellGain, error) {
 		}
 		t := Turn{Site: site, Pass: p, From: from}
 		track := w.track(t)
-		plan, modes, err := s.spec.Rates.Plan(track.Track)
+		plan, err := s.schedule(0, &track.Track)
 		if err != nil {
 			return nil, err
 		}
 		bytes := make([]float64, len(track.Seconds))
-		w.sent(site, &track, &plan, modes, func(i int, b, taken, _ float64) { bytes[i] += b * (1 - taken) })
+		w.sent(site, &track, plan, func(i int, b, taken, _ float64) { bytes[i] += b * (1 - taken) })
 		out = w.cells(out, site, &track, bytes, cell)
 	}
 	return out, nil

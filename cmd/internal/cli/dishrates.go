@@ -17,6 +17,7 @@ func newYearRates(tx *downlink.Transmitter, plan *scenario.RatePlan) (*yearRates
 	if err != nil {
 		return nil, err
 	}
+	p.all = p.all.WithoutBounds()
 	return &yearRates{p, p.all.Modes()}, nil
 }
 
@@ -31,6 +32,17 @@ func (y *yearRates) Settle(tracks []rateplan.Track) error { return y.planner.set
 
 // settles tells whether Settle has anything to choose.
 func (y *yearRates) settles() bool { return y.planner.choice == scenario.OneForAll }
+
+// Pattern tells what the plan of a pass hangs on; ok is false where that is more than which
+// samples close in which mode.
+func (y *yearRates) Pattern(t *rateplan.Track, b []byte) (pattern []byte, ok bool, err error) {
+	p := y.planner
+	if y.settles() || p.family != nil && p.choice == scenario.OneAPass {
+		return nil, false, nil
+	}
+	b, err = p.all.Pattern(t, b)
+	return b, true, err
+}
 
 // Plan plans a pass.
 func (y *yearRates) Plan(t rateplan.Track) (rateplan.Plan, []rateplan.Mode, error) {
