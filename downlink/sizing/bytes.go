@@ -25,9 +25,9 @@ func (w *work) bytes() error {
 			return err
 		}
 		many := weight[t.Site]
-		mean := w.count(t.Site, &track, plan, many)
+		mean := w.count(t.Site, &track, &plan, many)
 		if s.asksLatency() {
-			w.contacts = append(w.contacts, contactOf(s.spec.Flight.Sites[t.Site].Site.Name, &track.Track, plan))
+			w.contacts = append(w.contacts, contactOf(s.spec.Flight.Sites[t.Site].Site.Name, &track.Track, &plan))
 		}
 		if err := w.miss(t, &track, mean, many); err != nil {
 			return err
@@ -62,7 +62,7 @@ func (w *work) miss(t Turn, track *passTrack, mean, weight float64) error {
 		return err
 	}
 	all := 0.0
-	w.sent(t.Site, whole, plan, func(_ int, bytes, year, _ float64) { all += bytes * (1 - year) })
+	w.sent(t.Site, whole, &plan, func(_ int, bytes, year, _ float64) { all += bytes * (1 - year) })
 	w.out.MountLostBytesPerDay += weight * all
 	w.out.MountLostBytesPerDay -= mean
 	w.out.NotFollowedSPerDay += weight * lostOf(w.outages[t.Site].of(t.Pass), whole.Seconds[0], whole.Seconds[len(whole.Seconds)-1])
@@ -116,6 +116,9 @@ func (w *work) total() {
 	w.out.BytesPerDay = sum / days
 	w.out.ClearBytesPerDay /= days
 	w.out.WorstMonthBytesPerDay /= days
+	if !w.months {
+		w.out.WorstMonthBytesPerDay = math.NaN()
+	}
 	w.out.MountLostBytesPerDay /= days
 	w.out.NotFollowedSPerDay /= days
 	w.out.WorstWeekBytesPerDay = worst / 7
@@ -171,7 +174,7 @@ func (w *work) sent(site int, track *passTrack, plan *schedule, add func(i int, 
 			continue
 		}
 		bytes := seconds * mode.rate / 8
-		year, month := f.under(st.air, track.at[i], slack)
+		year, month := f.under(st.air, track.at[i], slack, w.months)
 		add(i, bytes, year, month)
 	}
 }

@@ -41,7 +41,8 @@ const (
 	margins                       // the margins that are asked for
 	availability                  // shares of contact time
 	gaps
-	everything = planned | margins | availability | gaps
+	months     // bytes in the worst month of weather; goes with planned
+	everything = planned | margins | availability | gaps | months
 )
 
 // Outcome evaluates a variant, each once.
@@ -58,11 +59,15 @@ func (s *Study) outcome(v Variant, parts part) (*Outcome, error) {
 			o.Price = p.At(v.Diameter)
 		}
 	}
+	if parts&months&^o.done != 0 { // the plans are counted again
+		o.done &^= planned
+		parts |= planned
+	}
 	parts &^= o.done
 	if parts == 0 {
 		return o, nil
 	}
-	w := work{study: s, variant: v, out: o}
+	w := work{study: s, variant: v, out: o, months: parts&months != 0}
 	if err := w.prepare(); err != nil {
 		return nil, err
 	}
@@ -93,6 +98,7 @@ type work struct {
 	outages []*outage // by site; nil: the antenna follows everything
 	out     *Outcome
 
+	months   bool      // those of the worst month are asked for
 	levelsOf []float64 // of the track at hand
 	days     []float64 // bytes by day of the year
 	contacts []recorder.Contact
@@ -164,14 +170,14 @@ func (w *work) margins() error {
 // availability fills in the share of contact time in which the mode's margin over the
 // required one is 0 or more.
 func (w *work) availability() error {
-	year, month := w.under(0)
+	year, month := w.under(0, true)
 	w.out.AvailabilityPercent, w.out.WorstMonthAvailabilityPercent = 100*(1-year), 100*(1-month)
 	return nil
 }
 
 // under returns the share of contact time in which the margin over the required one is
-// less than m dB.
-func (w *work) under(m float64) (year, month float64) {
+// less than m dB; that of the worst month with months, else NaN.
+func (w *work) under(m float64, months bool) (year, month float64) {
 	total, need := 0.0, w.study.spec.Mode.NeedDBHz+m
 	shift := w.variant.shift()
 	for _, site := range w.study.spec.Sites {
@@ -198,7 +204,7 @@ func (w *work) under(m float64) (year, month float64) {
 					continue
 				}
 				clear := (at.FluxDB[i-1]+st.place[i-1].at(f.clear)+at.FluxDB[i]+st.place[i].at(f.clear))/2 + shift
-				y, m := f.under(st.air, st.place[i], clear-need)
+				y, m := f.under(st.air, st.place[i], clear-need, months)
 				year += dt * y
 				month += dt * m
 			}
@@ -216,7 +222,7 @@ func (w *work) marginDuring(share float64) float64 {
 	low, high := -100.0, 156.0
 	for high-low > 1e-3 {
 		mid := (low + high) / 2
-		if year, _ := w.under(mid); year > 1-share {
+		if year, _ := w.under(mid, false); year > 1-share {
 			high = mid
 		} else {
 			low = mid

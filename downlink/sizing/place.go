@@ -245,11 +245,11 @@ func (f *front) weather(a *air, share []float64) error {
 	return nil
 }
 
-// under returns the shares of the average year and of its worst month (P.841) in which
-// the weather at a place of the ladder takes more than slack dB. Where the percentages
-// leave it open, the greater share: as in downlink.Year, the last percentage counts to
-// the end, and the first from the start.
-func (f *front) under(a *air, at place, slack float64) (year, month float64) {
+// under returns the share of the average year in which the weather at a place of the
+// ladder takes more than slack dB, and with months that of its worst month (P.841), else
+// NaN. Where the percentages leave it open, the greater share: as in downlink.Year, the last
+// percentage counts to the end, and the first from the start.
+func (f *front) under(a *air, at place, slack float64, months bool) (year, month float64) {
 	switch {
 	case slack < 0:
 		return 1, 1
@@ -268,7 +268,11 @@ func (f *front) under(a *air, at place, slack float64) (year, month float64) {
 				return 1, 1
 			}
 			part := e / (e - after) // straight in the logarithm of the percentage
-			return math.Exp(a.logs[k] + (a.logs[k+1]-a.logs[k])*part), math.Exp(a.months[k] + (a.months[k+1]-a.months[k])*part)
+			month = math.NaN()
+			if months {
+				month = math.Exp(a.months[k] + (a.months[k+1]-a.months[k])*part)
+			}
+			return math.Exp(a.logs[k] + (a.logs[k+1]-a.logs[k])*part), month
 		}
 		after = e
 	}

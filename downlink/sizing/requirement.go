@@ -118,7 +118,7 @@ func (r *Requirements) List() []Need {
 	}
 	add(Bytes, "B/d", planned, r.BytesPerDay, false, func(o *Outcome) float64 { return o.BytesPerDay })
 	add(WorstWeekBytes, "B/d", planned, r.WorstWeekBytesPerDay, false, func(o *Outcome) float64 { return o.WorstWeekBytesPerDay })
-	add(WorstMonthBytes, "B/d", planned, r.WorstMonthBytesPerDay, false, func(o *Outcome) float64 { return o.WorstMonthBytesPerDay })
+	add(WorstMonthBytes, "B/d", planned|months, r.WorstMonthBytesPerDay, false, func(o *Outcome) float64 { return o.WorstMonthBytesPerDay })
 	if r.Margin != nil {
 		add(MarginThere, "dB", margins, float64(r.Margin.Margin), false, func(o *Outcome) float64 { return o.MarginDB })
 	}

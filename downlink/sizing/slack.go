@@ -16,6 +16,20 @@ func (s *Study) Meets(needs []Need, v Variant) (bool, error) {
 	return q.met(v)
 }
 
+// Worst returns the least share by which any of the needs is surpassed, negative where one is
+// missed, tenths of 10 dB for decibels; -Inf where one has no value.
+func (s *Study) Worst(needs []Need, v Variant) (float64, error) {
+	q := search{study: s, needs: needs}
+	for _, n := range needs {
+		q.parts |= n.part
+	}
+	o, err := s.outcome(v, q.parts)
+	if err != nil {
+		return 0, err
+	}
+	return q.worst(o), nil
+}
+
 // mostSlack bounds what is looked for in decibels.
 const mostSlack = 60.0
 

@@ -34,11 +34,11 @@ func TestExpectedBytesAgainstDistribution(t *testing.T) {
 			if len(plan.steps) == 0 {
 				continue
 			}
-			w.count(turn.Site, &track, plan, 1)
+			w.count(turn.Site, &track, &plan, 1)
 			for _, b := range w.days {
 				expected += b
 			}
-			mean += distributed(t, s, f, turn, &track.Track, track.clear, plan)
+			mean += distributed(t, s, f, turn, &track.Track, track.clear, &plan)
 		}
 		if math.Abs(expected/mean-1) > 5e-3 {
 			t.Errorf("%g m: expected %.6g bytes, the distributions' means add up to %.6g", d.Metres(), expected, mean)

@@ -58,7 +58,7 @@ func (w *work) yield(site int, cell float64) ([]cellGain, error) {
 			return nil, err
 		}
 		bytes := make([]float64, len(track.Seconds))
-		w.sent(site, &track, plan, func(i int, b, taken, _ float64) { bytes[i] += b * (1 - taken) })
+		w.sent(site, &track, &plan, func(i int, b, taken, _ float64) { bytes[i] += b * (1 - taken) })
 		out = w.cells(out, site, &track, bytes, cell)
 	}
 	return out, nil
@@ -72,7 +72,7 @@ func (w *work) cells(out []cellGain, site int, track *passTrack, bytes []float64
 		a, b := track.Seconds[i-1], track.Seconds[i]
 		up := 0.0
 		if c := (clear[i-1] + clear[i]) / 2; !math.IsNaN(c) {
-			taken, _ := f.under(st.air, track.at[i], c-w.study.spec.Mode.NeedDBHz)
+			taken, _ := f.under(st.air, track.at[i], c-w.study.spec.Mode.NeedDBHz, false)
 			up = 1 - taken
 		}
 		for k := int32(a / cell); float64(k)*cell < b; k++ {

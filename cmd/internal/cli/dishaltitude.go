@@ -2,6 +2,8 @@ package cli
 
 import (
 	"context"
+	"math"
+	"time"
 
 	"slantwise/downlink/sizing"
 	"slantwise/orbit"
@@ -10,6 +12,9 @@ import (
 
 // greatestAltitudeKm bounds the search for an altitude.
 const greatestAltitudeKm = 3000.0
+
+// altitudeShare is how closely an altitude is found.
+const altitudeShare = 0.02
 
 // altitudeLimit returns the altitude in km up to which a dish meets all, the orbit of
 // the same inclination (or Sun-synchronous at the same local time) and eccentricity, to
@@ -20,41 +25,55 @@ func (d *dishStudy) altitudeLimit(ctx context.Context, env *Env, needs []sizing.
 	if err != nil {
 		return 0, &InputError{Err: err}
 	}
-	own := (f.SemiMajorAxis - orbit.EquatorialRadius).Kilometres()
-	meets := func(km float64) (bool, error) {
-		of, err := d.atAltitude(ctx, env, km)
+	over := func(of *dishStudy) (float64, error) {
+		x, err := of.study.Worst(needs, v)
 		if err != nil {
-			return false, err
+			return 0, &InputError{Err: err}
 		}
-		ok, err := of.study.Meets(needs, v)
-		if err != nil {
-			return false, &InputError{Err: err}
-		}
-		return ok, nil
+		return x, nil
 	}
-	ok, err := meets(own)
-	if err != nil || !ok {
+	low := (f.SemiMajorAxis - orbit.EquatorialRadius).Kilometres()
+	atLow, err := over(d)
+	if err != nil || !(atLow >= 0) {
 		return none, err
 	}
-	low, high := own, own
-	for ok && high < greatestAltitudeKm {
-		low, high = high, min(1.3*high, greatestAltitudeKm)
-		if ok, err = meets(high); err != nil {
+	at := func(km float64) (float64, error) {
+		of, err := d.atAltitude(ctx, env, km)
+		if err != nil {
+			return 0, err
+		}
+		return over(of)
+	}
+	high, atHigh := low, atLow
+	for atHigh >= 0 {
+		if low, atLow = high, atHigh; low >= greatestAltitudeKm {
+			return low, nil
+		}
+		high = min(1.3*low, max(greatestAltitudeKm, low))
+		if atHigh, err = at(high); err != nil {
 			return 0, err
 		}
 	}
-	if ok {
-		return high, nil
-	}
-	for high-low > 0.02*low {
-		mid := (low + high) / 2
-		if ok, err = meets(mid); err != nil {
+	for i := 0; high-low > altitudeShare*low; i++ {
+		// Where the straight line between the two crosses 0, a little to one side of it in turn, so
+		// that both ends close in; the middle where the values are of no use.
+		share := atLow / (atLow - atHigh)
+		share += []float64{-0.4, 0.4}[i%2] * altitudeShare * low / (high - low)
+		if i > 4 || !(share > 0.1 && share < 0.9) {
+			share = max(0.1, min(0.9, share))
+			if i > 4 || math.IsNaN(share) {
+				share = 0.5
+			}
+		}
+		mid := low + share*(high-low)
+		x, err := at(mid)
+		if err != nil {
 			return 0, err
 		}
-		if ok {
-			low = mid
+		if x >= 0 {
+			low, atLow = mid, x
 		} else {
-			high = mid
+			high, atHigh = mid, x
 		}
 	}
 	return low, nil
@@ -77,6 +96,7 @@ func (d *dishStudy) atAltitude(ctx context.Context, env *Env, km float64) (*dish
 	}
 	out := *d
 	out.notes = nil
+	out.step = stepAt(km)
 	if out.kept, err = orbit.KeepOrbit(moved); err != nil {
 		return nil, &InputError{Err: err}
 	}
@@ -91,4 +111,11 @@ func (d *dishStudy) atAltitude(ctx context.Context, env *Env, km float64) (*dish
 	}
 	d.altitudes[km] = &out
 	return &out, nil
+}
+
+// stepAt is the step between the samples of an orbit at an altitude in km: a higher one crosses
+// the sky more slowly: about as many degrees a sample as at 500 km in 10 s, up to 40 s.
+func stepAt(km float64) time.Duration {
+	slower := max(1, min(4, km/500))
+	return time.Duration(slower * float64(sizing.DefaultStep)).Round(time.Second)
 }

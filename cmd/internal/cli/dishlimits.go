@@ -55,6 +55,7 @@ func (d *dishStudy) limitSheet(ctx context.Context, env *Env, a *sizing.Answer, 
 			return nil, err
 		}
 	}
+	d.altitudes = nil // years of other orbits
 	return out, nil
 }
 

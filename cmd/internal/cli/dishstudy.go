@@ -5,6 +5,7 @@ import (
 	"fmt"
 	"math"
 	"slices"
+	"time"
 
 	"slantwise/cmd/internal/scenario"
 	"slantwise/downlink"
@@ -29,6 +30,7 @@ type dishStudy struct {
 	spec        sizing.Spec
 	study       *sizing.Study
 	notes       []downlink.Note
+	step        time.Duration          // between samples; 0: the usual
 	altitudes   map[float64]*dishStudy // the same for other altitudes in km, as far as they were asked for
 }
 
@@ -203,7 +205,7 @@ func (d *dishStudy) place(sky *skies, c *chosenLink, tx *downlink.Transmitter) (
 // fly flies the year on a kept orbit.
 func (d *dishStudy) fly(ctx context.Context, env *Env, kept *orbit.KeptOrbit) error {
 	s := d.scenario
-	spec := sizing.FlightSpec{Orbit: kept, Earth: s.Earth, Start: s.Window.Start, Days: d.sizing.Days, Horizon: s.Horizon}
+	spec := sizing.FlightSpec{Orbit: kept, Earth: s.Earth, Start: s.Window.Start, Days: d.sizing.Days, Horizon: s.Horizon, Step: d.step}
 	for i := range d.links {
 		c := &d.links[i]
 		link, err := downlink.NewLink(d.places[i].Clear)
