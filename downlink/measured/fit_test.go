@@ -111,11 +111,11 @@ func TestRank(t *testing.T) {
 
 func TestRankCannotTell(t *testing.T) {
 	points := synthetic(rand.New(rand.NewPCG(1, 9)), 0, func(*Point) (float64, float64) { return 0, 0 })
-	if _, answer := Rank([]Candidate{{"A", points}, {"B", points}}, RankOptions{NoiseHz: 20, OffsetHz: 1000}); answer {
+	if _, answer := Rank([]Candidate{{Name: "A", Points: points}, {Name: "B", Points: points}}, RankOptions{NoiseHz: 20, OffsetHz: 1000}); answer {
 		t.Error("two equal candidates are told apart")
 	}
 	other := synthetic(rand.New(rand.NewPCG(1, 9)), 0, func(p *Point) (float64, float64) { return 0, -30 * p.FrequencyRateHzS })
-	if ranked, answer := Rank([]Candidate{{"A", other}}, RankOptions{NoiseHz: 20, OffsetHz: 1000}); answer {
+	if ranked, answer := Rank([]Candidate{{Name: "A", Points: other}}, RankOptions{NoiseHz: 20, OffsetHz: 1000}); answer {
 		t.Errorf("the only candidate explains nothing and is taken: %+v", ranked)
 	}
 }

@@ -20,7 +20,7 @@ func quantityNamed(name string) (measured.Quantity, bool) {
 // sampleStates are the states of samples by their word.
 var sampleStates = func() map[string]measured.State {
 	out := map[string]measured.State{}
-	for s := measured.Used; s <= measured.Outlier; s++ {
+	for _, s := range append(measured.LeftOut(), measured.Used, measured.Outlier) {
 		out[s.String()] = s
 	}
 	return out
@@ -64,7 +64,8 @@ func pointsOf(e *logbook.Entry) []measured.Point {
 func emptyPoint(v *logbook.Value) measured.Point {
 	none := math.NaN()
 	p := measured.Point{State: sampleStates[v.State], AzimuthDeg: v.AzimuthDeg, ElevationDeg: v.ElevationDeg,
-		PredictedFrequencyHz: none, FrequencyRateHzS: none, PowerDBm: none, CN0DBHz: none, EbN0DB: none}
+		PredictedFrequencyHz: none, FrequencyRateHzS: none, AzimuthRateDegS: none, ElevationRateDegS: none,
+		PowerDBm: none, CN0DBHz: none, EbN0DB: none, NoiseK: none, MarginDB: none}
 	p.At = v.At
 	for q := range measured.All() {
 		p.Values[q] = none

@@ -18,10 +18,6 @@ import (
 	"slantwise/station/pass"
 )
 
-func newEphemerisOf(set orbit.Elements, first, last time.Time, earth orbit.EarthOrientation) (*orbit.Ephemeris, error) {
-	return orbit.NewEphemeris(set, first.Add(-2*time.Second), last.Add(2*time.Second), earth)
-}
-
 // rehearsal is what an invented log differs from the prediction by.
 const (
 	rehearsalLevelDB, rehearsalOffsetHz, rehearsalLate = -1.5, 400.0, 500 * time.Millisecond
