@@ -41,6 +41,10 @@ func WithChange(req Request, c Change) (*Changed, error) {
 	if err != nil {
 		return nil, err
 	}
+	return withChange(src, req, c)
+}
+
+func withChange(src *source, req Request, c Change) (*Changed, error) {
 	root, err := tree.Parse(src.text, src.format)
 	if err != nil {
 		_, err = load(src, req) // tells it with its place
@@ -70,7 +74,7 @@ func WithChange(req Request, c Change) (*Changed, error) {
 	if _, err := load(&next, Request{Need: req.Need}); err != nil {
 		return nil, err
 	}
-	if src.files != nil {
+	if src.dir == demoFolder && src.files != nil {
 		out.Files, err = src.embedded()
 	}
 	return out, err

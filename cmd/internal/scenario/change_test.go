@@ -1,9 +1,12 @@
 package scenario
 
 import (
+	"maps"
 	"os"
+	"path"
 	"path/filepath"
 	"reflect"
+	"regexp"
 	"strings"
 	"testing"
 
@@ -23,8 +26,9 @@ func reload(t *testing.T, beside string, text []byte) *Scenario {
 }
 
 // alike compares all of two scenarios but the functions of their atmospheres, which
-// cannot be compared.
+// cannot be compared, and the trees, which tell lines.
 func alike(a, b *Scenario) bool {
+	b.root = a.root
 	for i := range a.Stations {
 		x, y := a.Stations[i].Climate.Atmosphere, b.Stations[i].Climate.Atmosphere
 		if (x == nil) != (y == nil) || x != nil && x.Name() != y.Name() {
@@ -125,4 +129,96 @@ func TestWithChangeKeepsWhatReplaces(t *testing.T) {
 	if s := reload(t, file, got.Text); s.Window.Length().Hours() != 7.5 {
 		t.Errorf("the window is %v long", s.Window.Length())
 	}
+}
+
+// TestOpenedTellsEveryFile reads the scenario that has every key: each file that it
+// names, and itself, is told of before it is read, one that is missing too.
+func TestOpenedTellsEveryFile(t *testing.T) {
+	const file = "testdata/good/everything.yaml"
+	text, err := os.ReadFile(file)
+	if err != nil {
+		t.Fatal(err)
+	}
+	told := map[string]bool{}
+	opened := func(file string) { told[filepath.ToSlash(filepath.Clean(file))] = true }
+	if _, err := Load(Request{Path: file, Opened: opened}); err != nil {
+		t.Fatal(err)
+	}
+	want := map[string]bool{file: true}
+	for _, name := range regexp.MustCompile(`\.\./[a-z0-9-]+\.[a-z]+`).FindAllString(string(text), -1) {
+		want[path.Join("testdata/good", name)] = true
+	}
+	if len(want) < 5 || !maps.Equal(told, want) {
+		t.Errorf("told of %v, want %v", told, want)
+	}
+	clear(told)
+	if _, err := Load(Request{Path: "testdata/none.yaml", Opened: opened}); err == nil || !told["testdata/none.yaml"] {
+		t.Errorf("%v; told of %v", err, told)
+	}
+}
+
+// FuzzChange writes whatever scenario is accepted, unchanged and with another power: what
+// is written is the same scenario, but for that.
+func FuzzChange(f *testing.F) {
+	for _, file := range []string{"testdata/good/everything.yaml", "testdata/good/everything.toml", "testdata/good/everything.json", "demo/slantwise.yaml"} {
+		text, err := os.ReadFile(file)
+		if err != nil {
+			f.Fatal(err)
+		}
+		format, err := formatOf(file)
+		if err != nil {
+			f.Fatal(err)
+		}
+		f.Add(text, byte(format))
+	}
+	files := os.DirFS("testdata")
+	f.Fuzz(func(t *testing.T, text []byte, format byte) {
+		src := &source{label: "fuzz", dir: "good", files: files, format: tree.Format(format % 3), text: text}
+		want, err := load(src, Request{Need: NeedRadio})
+		if err != nil {
+			return
+		}
+		c := Change{NameOfFile: "fuzz", Remark: "A test."}
+		for i := range want.Spacecraft {
+			for k := range want.Spacecraft[i].Transmitters {
+				if x := &want.Spacecraft[i].Transmitters[k]; x.EIRP == nil {
+					c.Spacecraft, c.Transmitter = want.Spacecraft[i].Name, x.Name
+				}
+			}
+		}
+		for i := range want.Stations {
+			for k := range want.Stations[i].Antennas {
+				c.Station, c.Antenna = want.Stations[i].Site.Name, want.Stations[i].Antennas[k].Name
+			}
+		}
+		if c.Transmitter == "" || c.Antenna == "" {
+			return
+		}
+		power := 3.5
+		for _, c.PowerW = range []*float64{nil, &power} {
+			out, err := withChange(src, Request{Need: NeedRadio}, c)
+			if err != nil {
+				t.Fatalf("%v\n%s", err, text)
+			}
+			next := *src
+			next.format, next.text = tree.YAML, out.Text
+			got, err := load(&next, Request{Need: NeedRadio})
+			if err != nil {
+				t.Fatalf("%v\n%s", err, out.Text)
+			}
+			got.Assumptions, got.Warnings, want.Assumptions, want.Warnings = nil, nil, nil, nil
+			if c.PowerW != nil {
+				for i := range want.Spacecraft {
+					for k := range want.Spacecraft[i].Transmitters {
+						if x := &want.Spacecraft[i].Transmitters[k]; want.Spacecraft[i].Name == c.Spacecraft && x.Name == c.Transmitter {
+							x.Power, err = unit.LevelWatts(power)
+						}
+					}
+				}
+			}
+			if err != nil || !alike(got, want) {
+				t.Fatalf("%v\n%s\nbecomes\n%s", err, text, out.Text)
+			}
+		}
+	})
 }

@@ -10,12 +10,15 @@ import (
 //go:embed demo
 var demoFiles embed.FS
 
+// demoFolder is where the demo lies among its files.
+const demoFolder = "demo"
+
 // demo returns the embedded demo.
 func demo() (*source, error) {
-	const dir, file = "demo", "demo/slantwise.yaml"
+	const file = demoFolder + "/" + DefaultFile
 	text, err := demoFiles.ReadFile(file)
 	if err != nil {
 		return nil, fmt.Errorf("embedded demo: %w", err)
 	}
-	return &source{label: "embedded demo", dir: dir, files: demoFiles, format: tree.YAML, text: text}, nil
+	return &source{label: "embedded demo", dir: demoFolder, files: demoFiles, format: tree.YAML, text: text}, nil
 }
