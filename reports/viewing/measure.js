@@ -90,7 +90,7 @@
     const wide = document.documentElement.scrollWidth, have = document.documentElement.clientWidth;
     if (wide <= have) { return []; }
     const out = e => Math.max(e.getBoundingClientRect().right, e.getBoundingClientRect().left + e.scrollWidth) > have + 0.5;
-    const who = [...document.body.querySelectorAll('*')].filter(e => shown(e) && out(e) && !e.parentElement.closest('.scroll, svg') && ![...e.children].some(out)).slice(0, 4).map(called);
+    const who = [...document.body.querySelectorAll('*')].filter(e => shown(e) && out(e) && !e.parentElement.closest('.scroll, svg') && (e.localName === 'svg' || ![...e.children].some(out))).slice(0, 4).map(called);
     return [`the page is ${wide} px wide on ${have} px: ${who.join(', ')}`];
   }
 
@@ -192,6 +192,7 @@
     const faults = [], want = stops(), got = way.filter(w => want.includes(w.e));
     want.forEach((e, i) => { if (!got.some(w => w.e === e)) { faults.push(`${called(e)}, stop ${i + 1} of ${want.length}, was not reached`); } });
     const order = got.map(w => want.indexOf(w.e));
+    if (got.length && order[0] !== 0) { faults.push(`the way begins at ${called(got[0].e)}`); }
     order.forEach((v, i) => { if (i && v < order[i - 1] && v !== 0) { faults.push(`${called(got[i].e)} comes after ${called(got[i - 1].e)}`); } });
     got.forEach((w, i) => {
       if (!w.visible) { faults.push(`${called(w.e)}: its focus cannot be seen`); }
