@@ -14,7 +14,7 @@ var shiftStyle string
 // the sheet may have; on a screen it shows all contacts.
 func ShiftPage(s *Shift) ([]byte, error) {
 	v := newShiftView(s)
-	v.Policy = "default-src 'none'; style-src 'unsafe-inline'; base-uri 'none'; form-action 'none'"
+	v.Policy = "default-src 'none'; style-src 'unsafe-inline'; img-src data:; base-uri 'none'; form-action 'none'"
 	v.Style = template.HTML("<style>" + styleSheet + shiftStyle + "</style>")
 	var out bytes.Buffer
 	if err := pageTemplates().ExecuteTemplate(&out, "shift.html", v); err != nil {

@@ -63,14 +63,15 @@
     return halo && s.paintOrder.startsWith('stroke') && parseFloat(s.strokeWidth) >= 2 ? over(halo, c) : c;
   }
 
-  // Text has 4.5 to 1 on what it stands on (1.4.3), whatever its size.
+  // Text has 4.5 to 1 on what it stands on (1.4.3), whatever its size. The first rows
+  // stand for the others of a table that is folded away.
   function contrast() {
     const faults = new Map(), done = new Set();
     let measured = 0;
     const walk = document.createTreeWalker(document.body, NodeFilter.SHOW_TEXT);
     while (walk.nextNode()) {
       const e = walk.currentNode.parentElement;
-      if (!walk.currentNode.data.trim() || done.has(e) || /^(script|style|title|desc|option)$/.test(e.localName) || !shown(e) || beside(e)) { continue; }
+      if (!walk.currentNode.data.trim() || done.has(e) || /^(script|style|title|desc|option)$/.test(e.localName) || !shown(e) || beside(e) || e.closest('details tr:nth-child(n+4)')) { continue; }
       done.add(e);
       const drawn = e instanceof SVGElement, s = getComputedStyle(e);
       let ink = colour(drawn ? s.fill : s.color);

@@ -2,8 +2,10 @@ package viewing
 
 import (
 	"context"
+	"fmt"
 	"regexp"
 	"testing"
+	"time"
 
 	"github.com/chromedp/cdproto/cdp"
 	"github.com/chromedp/cdproto/emulation"
@@ -17,26 +19,25 @@ type Screen struct {
 	Scheme string // light or dark
 }
 
-// Set gives the tab another screen. A page that is open is laid out anew.
+// Set gives the tab another screen and waits until the open page is drawn on it.
 func Set(t *testing.T, ctx context.Context, s Screen) {
 	t.Helper()
-	if err := chromedp.Do(ctx, setting(s, "")); err != nil {
+	if err := chromedp.Do(ctx, setting(s)); err != nil {
 		t.Fatal(err)
 	}
-}
-
-// SetPaper lays the open page out as print does, on the width between the margins of
-// A4 at 96 pixels an inch.
-func SetPaper(t *testing.T, ctx context.Context, width int64) {
-	t.Helper()
-	if err := chromedp.Do(ctx, setting(Screen{Width: width, Scheme: "light"}, "print")); err != nil {
-		t.Fatal(err)
+	Ask[int](t, ctx, `requestAnimationFrame(() => requestAnimationFrame(() => { window.drawnOn = innerWidth }))`)
+	for range 200 {
+		if Ask[bool](t, ctx, fmt.Sprintf(`window.drawnOn >= %d`, s.Width)) {
+			return
+		}
+		time.Sleep(20 * time.Millisecond)
 	}
+	t.Fatalf("not drawn on %d px within 4 s", s.Width)
 }
 
-func setting(s Screen, medium string) chromedp.Action[chromedp.Void] {
+func setting(s Screen) chromedp.Action[chromedp.Void] {
 	size := emulation.SetDeviceMetricsOverrideParams{Width: s.Width, Height: 900, DeviceScaleFactor: 1, Mobile: s.Width < 500}
-	media := emulation.SetEmulatedMediaParams{Media: medium, Features: []*emulation.MediaFeature{{Name: "prefers-color-scheme", Value: s.Scheme}}}
+	media := emulation.SetEmulatedMediaParams{Features: []*emulation.MediaFeature{{Name: "prefers-color-scheme", Value: s.Scheme}}}
 	return chromedp.Func(func(ctx context.Context, target *chromedp.Target) error {
 		if _, err := cdp.Call(ctx, target, emulation.SetDeviceMetricsOverride, size); err != nil {
 			return err
@@ -49,7 +50,7 @@ func setting(s Screen, medium string) chromedp.Action[chromedp.Void] {
 // Show opens a page on a screen and waits until it has loaded.
 func Show(t *testing.T, ctx context.Context, url string, s Screen) {
 	t.Helper()
-	if err := chromedp.Do(ctx, setting(s, ""), chromedp.Navigate(url)); err != nil {
+	if err := chromedp.Do(ctx, setting(s), chromedp.Navigate(url)); err != nil {
 		t.Fatalf("opening %s: %v", url, err)
 	}
 }

@@ -17,6 +17,7 @@ type looked struct {
 	page   func(t *testing.T, folder string) string // makes it and returns its address
 	charts int                                      // at least so many
 	sheets [2]int                                   // A4 sheets in print, from and to: fonts differ between machines
+	quick  bool                                     // looked at in a short test, too
 	wait   string                                   // an expression that becomes true when it is drawn; empty: when it has loaded
 }
 
@@ -25,15 +26,16 @@ var lookedPages = []looked{
 	{name: "index", page: written("report", "--into", "out"), charts: 1, sheets: [2]int{2, 5}},
 	{name: "pass", page: passOf("report", "--into", "out", "--station", "Skerry Point", "--spacecraft", "Wagtail 1"), charts: 12, sheets: [2]int{5, 9}},
 	{name: "pass without radio", page: passOf("report", "--into", "out", "--station", "Acacia Ridge", "--spacecraft", "Wagtail 1"), charts: 3, sheets: [2]int{2, 5}},
-	{name: "index without script", page: written("report", "--static", "--into", "out", "--spacecraft", "Wagtail 1"), charts: 1, sheets: [2]int{2, 4}},
+	{name: "index without script", page: written("report", "--static", "--into", "out", "--spacecraft", "Wagtail 1"), charts: 1, sheets: [2]int{2, 4}, quick: true},
 	{name: "pass without script", page: passOf("report", "--static", "--into", "out", "--station", "Skerry Point", "--spacecraft", "Wagtail 1"), charts: 12, sheets: [2]int{5, 9}},
-	{name: "plan", page: beside("plan.html", "contacts", "--iterations", "3", "--page", "plan.html"), charts: 7, sheets: [2]int{2, 6}},
+	{name: "plan", page: beside("plan.html", "contacts", "--iterations", "3", "--page", "plan.html"), charts: 7, sheets: [2]int{2, 6}, quick: true},
 	{name: "path", page: beside("path.html", "path", "--station", "Tussock Bay", "--frequency-mhz", "26250", "--sweep", "elevation", "--points", "20", "--into", "path.html"), charts: 2, sheets: [2]int{1, 3}},
-	{name: "comparison", page: launchDays, charts: 1, sheets: [2]int{1, 4}},
+	{name: "comparison", page: launchDays, charts: 1, sheets: [2]int{1, 4}, quick: true},
+	{name: "shift", page: beside("shift.html", "shift", "--station", "Skerry Point", "--from", "2026-09-15T00:00:00Z", "--into", "shift.html"), sheets: [2]int{1, 1}, quick: true},
 	{name: "dish", page: written("dish", "--days", "7", "--report", "out"), charts: 4, sheets: [2]int{4, 9}},
 	{name: "live", page: func(t *testing.T, _ string) string {
 		return serve(t, "--clock", "2026-09-15T00:55:00Z", "--speed", "0")
-	}, charts: 4, sheets: [2]int{2, 5}, wait: `!document.getElementById('chosen').hidden && document.querySelectorAll('#margin path, #map circle').length > 2`},
+	}, charts: 4, sheets: [2]int{2, 5}, quick: true, wait: `!document.getElementById('chosen').hidden && document.querySelectorAll('#margin path, #map circle').length > 2`},
 }
 
 // written runs a command that makes a folder out with an index, in a window of half a day.
@@ -84,8 +86,8 @@ func passOf(args ...string) func(*testing.T, string) string {
 	}
 }
 
-// TestPagesInTheBrowser looks at every page as a reader does: on three screens, in light
-// and dark, on paper, and by keyboard alone.
+// TestPagesInTheBrowser looks at every page as a reader does: on a phone, a tablet in the
+// dark and a wide screen, by keyboard alone, and on paper.
 func TestPagesInTheBrowser(t *testing.T) {
 	path := viewing.Path(t)
 	b, err := viewing.Start(path)
@@ -99,41 +101,29 @@ func TestPagesInTheBrowser(t *testing.T) {
 }
 
 func (p *looked) look(t *testing.T, b *viewing.Browser) {
+	if testing.Short() && !p.quick {
+		t.Skip("short: only pages that are soon made and drawn")
+	}
 	address := p.page(t, t.TempDir())
 	ctx := b.Tab(t, 2*time.Minute)
 	seen := viewing.Observe(t, ctx)
-	screens := []viewing.Screen{{Width: 1440, Scheme: "light"}, {Width: 375, Scheme: "light"}, {Width: 768, Scheme: "dark"}}
-	if testing.Short() {
-		screens = screens[1:2]
-	}
-	for i, s := range screens {
-		if i == 0 {
-			p.cost(t, b, address, viewing.ShowFirst(t, ctx, address, s), seen.Bytes())
-		} else {
-			viewing.Show(t, ctx, address, s)
-		}
-		p.await(t, ctx)
-		p.judge(t, ctx, s, viewing.Drawn)
-		if got := viewing.Charts(t, ctx); got < p.charts {
-			t.Errorf("%d px: %d charts, want %d at least", s.Width, got, p.charts)
-		}
-		if i == 0 {
-			p.judge(t, ctx, s, viewing.Overflow, viewing.Outline, viewing.Names)
-			for _, f := range viewing.Walk(t, ctx) {
-				t.Errorf("%d px, by keyboard: %s", s.Width, f)
-			}
-		}
-		viewing.OpenDetails(t, ctx)
-		p.judge(t, ctx, s, viewing.Overflow)
-		if i != 1 || len(screens) == 1 { // light and dark once each
-			p.judge(t, ctx, s, viewing.Contrast)
-		}
-	}
+	s := viewing.Screen{Width: 375, Scheme: "light"}
+	p.cost(t, b, address, viewing.ShowFirst(t, ctx, address, s), seen.Bytes())
+	p.await(t, ctx)
+	p.judge(t, ctx, s, viewing.Drawn, viewing.Overflow)
+	viewing.OpenDetails(t, ctx)
+	p.judge(t, ctx, s, viewing.Overflow, viewing.Contrast)
 	if !testing.Short() {
-		viewing.Show(t, ctx, address, screens[0])
-		p.await(t, ctx)
-		_, sheets := viewing.Print(t, ctx)
-		if sheets < p.sheets[0] || sheets > p.sheets[1] {
+		s = viewing.Screen{Width: 768, Scheme: "dark"}
+		viewing.Set(t, ctx, s)
+		p.judge(t, ctx, s, viewing.Drawn, viewing.Overflow, viewing.Contrast)
+		s = viewing.Screen{Width: 1440, Scheme: "light"}
+		viewing.Set(t, ctx, s)
+		p.judge(t, ctx, s, viewing.Drawn, viewing.Overflow, viewing.Outline, viewing.Names)
+		for _, f := range viewing.Walk(t, ctx) {
+			t.Errorf("by keyboard: %s", f)
+		}
+		if _, sheets := viewing.Print(t, ctx); sheets < p.sheets[0] || sheets > p.sheets[1] {
 			t.Errorf("it prints on %d sheets, want %d to %d", sheets, p.sheets[0], p.sheets[1])
 		}
 	}
@@ -161,8 +151,12 @@ func (p *looked) cost(t *testing.T, b *viewing.Browser, address string, c viewin
 	}
 }
 
+// judge counts the charts, and tells every fault of what is measured.
 func (p *looked) judge(t *testing.T, ctx context.Context, s viewing.Screen, what ...string) {
 	t.Helper()
+	if got := viewing.Charts(t, ctx); got < p.charts {
+		t.Errorf("%d px: %d charts, want %d at least", s.Width, got, p.charts)
+	}
 	for _, w := range what {
 		for _, f := range viewing.Faults(t, ctx, w) {
 			t.Errorf("%d px, %s, %s: %s", s.Width, s.Scheme, w, f)
