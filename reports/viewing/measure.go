@@ -3,6 +3,7 @@ package viewing
 import (
 	"context"
 	_ "embed"
+	"fmt"
 	"testing"
 
 	"github.com/chromedp/cdproto/cdp"
@@ -34,10 +35,10 @@ func Charts(t *testing.T, ctx context.Context) int {
 	return Ask[int](t, ctx, measure+".charts()")
 }
 
-// OpenDetails opens what the page has folded away.
-func OpenDetails(t *testing.T, ctx context.Context) {
+// Fold opens what the page has folded away, or folds it again.
+func Fold(t *testing.T, ctx context.Context, open bool) {
 	t.Helper()
-	Ask[bool](t, ctx, "("+measure+".open(), true)")
+	Ask[bool](t, ctx, fmt.Sprintf("(%s.fold(%t), true)", measure, open))
 }
 
 // Walk goes through the page with the Tab key until it is through, and returns what is

@@ -205,7 +205,7 @@
     return faults;
   }
 
-  const open = () => document.querySelectorAll('details').forEach(d => { d.open = true; });
+  const fold = open => document.querySelectorAll('details').forEach(d => { d.open = open; });
 
-  return window.measures || (window.measures = { contrast, overflow, outline, names, drawn, watch, walked, open, charts: () => charts().length });
+  return window.measures || (window.measures = { contrast, overflow, outline, names, drawn, watch, walked, fold, charts: () => charts().length });
 })()

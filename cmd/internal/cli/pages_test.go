@@ -111,7 +111,7 @@ func (p *looked) look(t *testing.T, b *viewing.Browser) {
 	p.cost(t, b, address, viewing.ShowFirst(t, ctx, address, s), seen.Bytes())
 	p.await(t, ctx)
 	p.judge(t, ctx, s, viewing.Drawn, viewing.Overflow)
-	viewing.OpenDetails(t, ctx)
+	viewing.Fold(t, ctx, true)
 	p.judge(t, ctx, s, viewing.Overflow, viewing.Contrast)
 	if !testing.Short() {
 		s = viewing.Screen{Width: 768, Scheme: "dark"}
@@ -119,13 +119,15 @@ func (p *looked) look(t *testing.T, b *viewing.Browser) {
 		p.judge(t, ctx, s, viewing.Drawn, viewing.Overflow, viewing.Contrast)
 		s = viewing.Screen{Width: 1440, Scheme: "light"}
 		viewing.Set(t, ctx, s)
-		p.judge(t, ctx, s, viewing.Drawn, viewing.Overflow, viewing.Outline, viewing.Names)
+		p.judge(t, ctx, s, viewing.Drawn, viewing.Overflow, viewing.Outline)
+		viewing.Fold(t, ctx, false)
 		for _, f := range viewing.Walk(t, ctx) {
 			t.Errorf("by keyboard: %s", f)
 		}
 		if _, sheets := viewing.Print(t, ctx); sheets < p.sheets[0] || sheets > p.sheets[1] {
 			t.Errorf("it prints on %d sheets, want %d to %d", sheets, p.sheets[0], p.sheets[1])
 		}
+		p.judge(t, ctx, s, viewing.Names) // last: from here on the browser keeps a tree of names
 	}
 	seen.Quiet(t, address[:strings.LastIndex(address, "/")+1], "file://"+os.TempDir())
 }
