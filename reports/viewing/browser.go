@@ -17,6 +17,11 @@ type Browser struct {
 	stop []func()
 }
 
+// ownFrame is what Chromium draws of its own frame by pages, in a process that works as
+// much as the page that is looked at.
+const ownFrame = "InitialWebUI,WebUIReloadButton,PreloadTopChromeWebUI,WebUIToolbar,WebUILocationBar,WebUIHomeButton," +
+	"WebUISplitTabsButton,WebUIOmniboxPopup,WebUIOmniboxFullPopup,WebUIOmniboxAimPopup"
+
 // Path returns where Chromium is. Without one the test is skipped, but not on the
 // machine that decides about a change (CI=true).
 func Path(t *testing.T) string {
@@ -40,7 +45,8 @@ func Start(path string) (*Browser, error) {
 	alloc, stop := chromedp.NewExecAllocator(context.Background(),
 		chromedp.ExecPath(path), chromedp.NoFirstRun, chromedp.NoSandbox, chromedp.Headless, chromedp.DisableGPU,
 		chromedp.Flag("disable-quic", true), chromedp.Flag("disable-background-networking", true),
-		chromedp.Flag("disable-component-update", true), chromedp.Flag("disable-sync", true),
+		chromedp.Flag("disable-features", ownFrame),
+		chromedp.Flag("disable-extensions", true), chromedp.Flag("disable-component-update", true), chromedp.Flag("disable-sync", true),
 		chromedp.Flag("host-resolver-rules", "MAP * ~NOTFOUND, EXCLUDE 127.0.0.1"), // nothing may leave the machine
 		chromedp.Flag("enable-blink-features", "ComputedAccessibilityInfo"),        // computedName and computedRole
 		chromedp.UserDataDir(profile))
