@@ -48,6 +48,7 @@ func (f *Fit) singular(x [][]float64) {
 func (f *Fit) advise() {
 	f.singular(f.design)
 	f.design = nil
+	f.advisePasses()
 	for c, value := range f.Singular {
 		if value >= tooAlike {
 			continue

@@ -82,6 +82,13 @@ func TestCoverage(t *testing.T) {
 			coveredBy(t, "relative power", 200, relativeTrial(rho))
 		})
 	}
+	t.Run("passes", func(t *testing.T) {
+		t.Parallel()
+		for _, spread := range []float64{0, 1} {
+			coveredBy(t, fmt.Sprintf("level of 7 passes, spread %g", spread), 200, passesTrial(spread, true))
+			coveredBy(t, fmt.Sprintf("frequency of 7 passes, spread %g", spread), 200, passesTrial(spread, false))
+		}
+	})
 	t.Run("skyline", func(t *testing.T) {
 		t.Parallel()
 		coveredBy(t, "skyline", 500, skylineTrial)
@@ -167,6 +174,33 @@ func relativeTrial(rho float64) trial {
 		}
 		f, err := FitLevel(points, LevelOptions{Quantity: RelativePowerDB})
 		return map[string]float64{"slope of the receiver's scale less 1": 1.2}, f, err
+	}
+}
+
+// passesTrial has seven passes that differ by what stays the same through each.
+func passesTrial(spread float64, level bool) trial {
+	return func(rng *rand.Rand) (map[string]float64, *Fit, error) {
+		var all []Point
+		for k := range 7 {
+			off, tone, late := 0.4*spread*rng.NormFloat64(), 60*spread*rng.NormFloat64(), 0.2*spread*rng.NormFloat64()
+			points := synthetic(rng, 0.6, func(p *Point) (float64, float64) {
+				c := math.Cos(p.ElevationDeg*math.Pi/180) / 1.5
+				return -1.7 + off - 12*0.09*c*c, -320 + tone - (1.4+late)*p.FrequencyRateHzS
+			})
+			for i := range points {
+				if i%3 != 0 {
+					continue
+				}
+				points[i].At = points[i].At.Add(time.Duration(k) * 95 * time.Minute)
+				all = append(all, points[i])
+			}
+		}
+		if level {
+			f, err := FitLevel(all, LevelOptions{Quantity: CN0DBHz, BeamDeg: 1.5})
+			return map[string]float64{"offset": -1.7, "square of the azimuth error": 0.09}, f, err
+		}
+		f, err := FitFrequency(all, true)
+		return map[string]float64{"transmitter offset": -320, "time offset of the elements": 1.4, "transmitter drift": 0}, f, err
 	}
 }
 

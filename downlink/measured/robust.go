@@ -31,6 +31,7 @@ type Fit struct {
 	Scale      float64     // standard deviation of a sample, in its unit
 	PerSecond  float64     // correlation of the noise over one second
 	Used       int
+	Passes     int       // that the samples are of
 	Middle     time.Time // of a fit of the frequency: when the offset holds
 	Outliers   []int     // rows, not used
 	Advice     []string  // what the data cannot tell apart
@@ -109,7 +110,8 @@ func (d *series) search(names []Parameter) (*Fit, error) {
 	for turn := range 4 {
 		before := out.PerSecond
 		if !d.independent {
-			out.PerSecond = memory(d.t, residuals(d.y, d.x, b), keep, k)
+			within, taken := withinPasses(d.t, residuals(d.y, d.x, b), keep)
+			out.PerSecond = memory(d.t, within, keep, k+taken)
 		}
 		if turn > 0 && math.Abs(out.PerSecond-before) < 1e-4 {
 			break
@@ -126,6 +128,7 @@ func (d *series) search(names []Parameter) (*Fit, error) {
 	for j := range out.Parameters {
 		out.Parameters[j].Span = quantile * out.Parameters[j].Sigma
 	}
+	out.judgeByPasses(d, keep, white)
 	return out, nil
 }
 

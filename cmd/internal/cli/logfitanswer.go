@@ -49,6 +49,9 @@ func (a *logFitAnswer) offerOf(s *scenario.Scenario, f *groupFit, list []offer) 
 	var before effect
 	for i := range list {
 		o := &list[i]
+		if o.caution != "" {
+			a.offers.notes = append(a.offers.notes, o.caution)
+		}
 		if o.apply == nil {
 			row(o, nothing, nothing)
 			continue

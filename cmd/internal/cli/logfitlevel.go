@@ -103,14 +103,17 @@ func (f *groupFit) fitNoise(beam float64) {
 		case p.Span > usual/2 || p.Value < -usual/2:
 			f.notes = append(f.notes, fmt.Sprintf("%s alone does not tell noise (so G/T) from level here: a noise temperature of %s ± %s K over the predicted %s K would do; log received power in the same samples, or more of the low elevations",
 				ratio, fixed(p.Value, 0), fixed(p.Span, 0), fixed(usual, 0)))
-		case math.Abs(p.Value) > p.Span:
-			f.level, f.levelOf, f.noise = fit, ratio, fit
-			fallthrough
 		default:
 			f.add(ratio.String()+", noise apart", fit, nil)
+			if math.Abs(p.Value) > standsOut*p.Span { // level and noise lean on each other: one in twenty is too often to move both
+				f.level, f.levelOf, f.noise = fit, ratio, fit
+			}
 		}
 	}
 }
+
+// standsOut is how many times its interval a noise must be to be taken apart from the level by C/N0 alone.
+const standsOut = 2
 
 // usualNoise is the predicted noise in the middle of the samples, K.
 func (f *groupFit) usualNoise() float64 {
@@ -134,6 +137,9 @@ func (f *groupFit) rows(out *sheet) {
 	}
 	if f.clear != nil {
 		out.notes = append(out.notes, "levels are predicted under a clear sky; the scenario's weather is left out of it")
+	}
+	if len(f.found) > 0 && !slices.ContainsFunc(f.found, func(q foundFit) bool { return q.fit.Passes > 1 }) {
+		out.notes = append(out.notes, "one pass does not tell how passes differ: the intervals hold for what was so in it; --entry takes several together")
 	}
 	out.notes = append(out.notes, f.notes...)
 }

@@ -7,6 +7,7 @@ import (
 
 	"slantwise/cmd/internal/scenario"
 	"slantwise/downlink"
+	"slantwise/downlink/measured"
 	"slantwise/orbit/unit"
 	"slantwise/station"
 )
@@ -14,6 +15,7 @@ import (
 // offer is a value that a fit offers the scenario.
 type offer struct {
 	place, key, value, had string
+	caution                string
 	apply                  func(to *offered) // nil: it changes no margin and no byte
 }
 
@@ -37,7 +39,11 @@ func (f *groupFit) offers() []offer {
 	if f.level != nil {
 		p := f.level.Parameters[0]
 		if math.Abs(p.Value) > p.Span {
-			out = append(out, f.levelOffer(tx, p.Value))
+			o := f.levelOffer(tx, p.Value)
+			if f.noise == nil && f.levelOf != measured.PowerDBm {
+				o.caution = fmt.Sprintf("%s of %s: from %s alone, so that the receiving system's noise may be it in place of what is sent", o.key, tx, f.levelOf)
+			}
+			out = append(out, o)
 		}
 		for _, p := range f.level.Parameters {
 			if p.Unit == "deg2" && p.Value > p.Span {
