@@ -60,9 +60,9 @@ func goldenReport() *Report {
 
 // withoutCoast makes pages that do not depend on whether the coastline was brought.
 func withoutCoast(t *testing.T) {
-	brought, turned := coast, coastPlaces
-	coast, coastPlaces = func() [][]int { return nil }, func() [][]Place { return nil }
-	t.Cleanup(func() { coast, coastPlaces = brought, turned })
+	brought, turned := coast, coastOutlines
+	coast, coastOutlines = func() [][]int { return nil }, func() []outline { return nil }
+	t.Cleanup(func() { coast, coastOutlines = brought, turned })
 }
 
 func TestGolden(t *testing.T) {

@@ -169,3 +169,32 @@ func TestGroundInWordsAndNumbers(t *testing.T) {
 		t.Errorf("the JSON has %+v", got.Ground)
 	}
 }
+
+// Rings that are left out unseen would have drawn nothing: the map is the same with all of them.
+func TestFarRingsDrawNothing(t *testing.T) {
+	rings := [][]Place{
+		{{-60, -180}, {-60, -90}, {-60, 0}, {-60, 90}, {-60, 180}, {-90, 180}, {-90, -180}},
+		{{10, -120}, {60, -140}, {70, -60}, {20, -70}}, {{-10, 150}, {40, 140}, {40, 180}, {-10, 180}}, {{60, 150}, {75, 160}, {70, -170}, {65, -175}},
+	}
+	for _, r := range coast() {
+		rings = append(rings, places(r))
+	}
+	land := make([]outline, len(rings))
+	for i, r := range rings {
+		land[i] = outlineOf(r)
+	}
+	dropped := 0
+	for _, middle := range []Place{{58, -6}, {-23, 17}, {45, -105}, {89, 0}, {-89.5, 40}, {0, 179.5}, {-10, 75}, {50, 85}, {-33, 151}} {
+		for _, reach := range []float64{3, 15, 40, 80, 180} {
+			m := newPlane(middle, reach, 200)
+			near := m.near(land)
+			dropped += len(land) - len(near)
+			if m.area(near, holds(near, middle)) != m.area(rings, holds(rings, middle)) {
+				t.Errorf("around %v, reach %g: another map", middle, reach)
+			}
+		}
+	}
+	if dropped == 0 {
+		t.Error("no ring is ever left out")
+	}
+}

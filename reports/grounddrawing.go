@@ -25,7 +25,7 @@ func groundDrawing(p *Pass) template.HTML {
 	put(`<defs><clipPath id="map-rim"><circle cx="%g" cy="%g" r="%g"/></clipPath>`, mapRadius, mapRadius, mapRadius)
 	put(`<pattern id="map-night" width="5" height="5" patternUnits="userSpaceOnUse" patternTransform="rotate(45)"><path d="M0 0V5"/></pattern></defs>`)
 	put(`<circle class="sea" cx="%g" cy="%g" r="%g"/><g clip-path="url(#map-rim)">`, mapRadius, mapRadius, mapRadius)
-	if land := coastPlaces(); land != nil {
+	if land := m.near(coastOutlines()); land != nil {
 		put(`<path class="land" d="%s"/>`, m.area(land, holds(land, g.Station)))
 	}
 	put(`<path class="grid" d="%s"/>`, graticule(m, g.Station))

@@ -15,7 +15,7 @@ func groundSketch(p *Pass) *vector.Map {
 	m := newPlane(g.Station, mapReach(g), 1)
 	m.x, m.y = 0, 0
 	out := &vector.Map{Grid: graticuleLines(m, g.Station), Night: m.rings([][]Place{g.Night}, g.NightHere), Track: m.lines(mapTrack(p))}
-	if land := coastPlaces(); land != nil {
+	if land := m.near(coastOutlines()); land != nil {
 		out.Land = m.rings(land, holds(land, g.Station))
 	}
 	if len(g.Circle) > 0 {

@@ -2,6 +2,7 @@ package drawing
 
 import (
 	"math"
+	"strings"
 	"testing"
 )
 
@@ -35,5 +36,21 @@ func TestLogAxis(t *testing.T) {
 	a := NewLogAxis("x", 20, 4000)
 	if a.From != 10 || a.To != 10000 || math.Abs(a.place(100)-1.0/3) > 1e-12 || !math.IsInf(a.place(0), -1) {
 		t.Errorf("axis %v, place of 100 %g, of 0 %g", a, a.place(100), a.place(0))
+	}
+}
+
+// TestALonePointIsSeen: a value between gaps has no line, and is drawn as a dot.
+func TestALonePointIsSeen(t *testing.T) {
+	none := math.NaN()
+	for _, r := range []struct {
+		values []float64
+		dots   int
+	}{{[]float64{1, none, 2, none, 3}, 3}, {[]float64{1, 2, none, 3}, 1}, {[]float64{1, 2, 3}, 0}, {[]float64{none, none}, 0}} {
+		l := Lines{X: NewAxis("x", 0, 4, true), Left: NewAxis("y", 0, 4, true), Lines: []Line{{X: []float64{0, 1, 2, 3, 4}[:len(r.values)], Y: r.values, Width: 1}}}
+		c := NewSVG(200, 100)
+		l.Draw(c, 200, 100)
+		if got := strings.Count(string(c.Bytes("")), "<circle"); got != r.dots {
+			t.Errorf("%v: %d dots, want %d", r.values, got, r.dots)
+		}
 	}
 }

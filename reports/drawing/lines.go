@@ -168,6 +168,8 @@ func (l *Lines) line(c Canvas, b box, i int) {
 	flush := func() {
 		if len(run) > 1 {
 			c.Line(run, Stroke{s.Tone, s.Width, s.Dash})
+		} else if len(run) == 1 && s.Symbol == NoSymbol { // between gaps
+			c.Disc(run[0], s.Width, s.Tone, nil)
 		}
 		run = run[:0]
 	}

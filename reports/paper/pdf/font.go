@@ -16,6 +16,7 @@ type Font struct {
 	buffer sfnt.Buffer
 	widths map[rune]float64 // for a size of 1
 	quick  [256]float64     // of the first runes, less the map's time
+	whole  bool             // the file has the whole face too
 }
 
 func newFont(f *Face) *Font { return &Font{face: f, widths: map[rune]float64{}} }

@@ -117,7 +117,7 @@ func (p *Page) Restore() {
 	last := len(p.depth) - 1
 	p.state, p.depth = p.depth[last], p.depth[:last]
 	p.out().RawWriteStr("Q")
-	p.file.font = nil // the page's is that of Save
+	p.file.font = "" // the page's is that of Save
 }
 
 // Text writes a line of text on its base line, in the colour of Fill.
@@ -125,12 +125,12 @@ func (p *Page) Text(x, y float64, f *Font, size float64, text string) {
 	if text == "" {
 		return
 	}
-	out, file := p.out(), p.file
-	if file.font != f || file.size != size {
-		file.font, file.size = f, size
-		out.SetFont(f.face.name, "", size)
+	out := p.out()
+	for _, one := range f.pieces(shown(text)) {
+		p.file.family(f, one.whole, size)
+		out.Text(x, y, one.text)
+		x += f.Width(one.text, size)
 	}
-	out.Text(x, y, shown(text))
 }
 
 // Link makes a field lead to a place.
