@@ -71,6 +71,7 @@ func TestGolden(t *testing.T) {
 	const first, second = "passes/wagtail-1-skerry-point-20260310t104231z", "passes/wagtail-1-high-plateau-20260310t121731z"
 	for name, golden := range map[string]string{
 		"index.html": "index.html", "passes.csv": "passes.csv", "passes.json": "passes.json",
+		"week.html": "week.html", "week.csv": "week.csv", "week.json": "week.json",
 		first + ".html": "pass.html", first + ".csv": "pass.csv", first + ".json": "pass.json",
 		second + ".html": "geometry.html", second + ".csv": "geometry.csv",
 	} {

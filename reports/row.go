@@ -27,6 +27,8 @@ type row struct {
 	surety                     *Surety
 	beamUnsure                 float64 // seconds; NaN where it has no meaning
 	plan                       *Plan
+	logged                     bool          // in the logbook
+	takenBytes, predictedBytes float64       // of its logbook entry; NaN: not known
 	age                        time.Duration // of the element set at AOS
 	inPlace                    bool          // no element set is flown
 }
@@ -39,8 +41,13 @@ func newRow(page string, p *Pass) row {
 		aos: q.AOS, culmination: q.Culmination, los: q.LOS,
 		maxElevationDeg: q.MaxElevation.Degrees(), cut: q.Cut.String(), verdict: verdictOf(p),
 		least: none, greatest: none, required: none, modeBytes: none, achievableBytes: none,
-		clearLeast: none, clearModeBytes: none, sunInBeam: none, surety: p.Surety, beamUnsure: none,
+		clearLeast: none, clearModeBytes: none, sunInBeam: none, surety: p.Surety, beamUnsure: none, logged: len(p.Measured) > 0, takenBytes: none, predictedBytes: none,
 		age: p.Elements.Age, inPlace: p.Elements.InPlace != "",
+	}
+	for i := range p.Measured { // the last word on what was taken
+		if m := &p.Measured[i]; finite(m.TakenBytes) {
+			r.takenBytes, r.predictedBytes = m.TakenBytes, m.PredictedBytes
+		}
 	}
 	if p.Surety != nil && p.Surety.Led {
 		r.beamUnsure = 0

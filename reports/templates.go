@@ -34,15 +34,10 @@ type pageView struct {
 
 // page fills in what every page has; root is the way to the index.
 func (w *writer) page(root, title string) pageView {
-	v := pageView{Title: title, Root: root, OneFile: w.options.OneFile, Static: w.options.Static}
-	if v.Static {
-		v.Style = template.HTML(`<link rel="stylesheet" href="` + root + styleFile + `">`)
-		if v.OneFile {
-			v.Style = template.HTML("<style>" + styleSheet + "</style>")
-		}
-		v.Policy = policy([]string{"'none'"})
-		return v
+	if w.options.Static {
+		return w.stillPage(root, title)
 	}
+	v := pageView{Title: title, Root: root, OneFile: w.options.OneFile}
 	var scripts strings.Builder
 	var sources []string
 	switch {
@@ -68,6 +63,15 @@ func (w *writer) page(root, title string) pageView {
 	v.Scripts = template.HTML(scripts.String())
 	v.Policy = policy(sources)
 	return v
+}
+
+// stillPage is page without any script.
+func (w *writer) stillPage(root, title string) pageView {
+	if w.options.OneFile {
+		return plainPage(title)
+	}
+	return pageView{Title: title, Root: root, Static: true, Policy: policy([]string{"'none'"}),
+		Style: template.HTML(`<link rel="stylesheet" href="` + root + styleFile + `">`)}
 }
 
 // plainPage is what a page without any script has, everything inside it.

@@ -149,7 +149,22 @@ func (w *writer) shared(rows []row) error {
 			return err
 		}
 	}
+	summary := summarise(w.report.From, w.report.To, rows)
+	if files[weekFile], err = weekPage(w, summary); err != nil {
+		return err
+	}
+	if w.options.PDF {
+		if files[weekPaperFile], err = weekPaper(w, summary); err != nil {
+			return err
+		}
+	}
 	if !w.options.OneFile {
+		if files[weekCSVFile], err = summary.csv(); err != nil {
+			return err
+		}
+		if files[weekJSONFile], err = summary.json(); err != nil {
+			return err
+		}
 		if files[indexCSVFile], err = indexCSV(rows); err != nil {
 			return err
 		}

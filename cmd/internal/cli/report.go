@@ -39,7 +39,9 @@ when, how high, how strong, whether the link closes and from when to when, how m
 bytes; charts along the pass; the link budget at AOS, at culmination and at the least
 margin; for each uplink that the station can send when commanding works, its margin, the
 frequency to send and how much the antenna radiates; assumptions and cautions. The numbers of each page lie beside it as CSV and
-JSON.
+JSON. A summary of the window adds up volume, contact time and passes worth taking by day
+(and by week, where it is longer), by spacecraft and by station, says how the days differ
+and how old the element sets are, and names the passes that bring most and least, and why.
 
 A pass gets a page for each transmitter of the spacecraft that an antenna of the
 station takes, and a page of geometry where there is none. Volumes and margins are
