@@ -16,7 +16,7 @@ import (
 )
 
 func newNew(env *Env) *cobra.Command {
-	launchDay, planningDay := false, false
+	launchDay, planningDay, teamWeek := false, false, false
 	cmd := &cobra.Command{
 		Use:   "new [FILE]",
 		Short: "Write a commented scenario to start from",
@@ -28,11 +28,13 @@ With --launch-day FILE is a folder: it gets the first day of an invented satelli
 four scenarios that differ in the orbit alone (the separation state as planned, after a
 late launch, an ephemeris from tracking, the first element set). With --planning-day it
 gets a day of contact planning on the demo's spacecraft: yesterday's and today's element
-sets, rules of the plan, and an outage as a calendar.`,
+sets, rules of the plan, and an outage as a calendar. With --team-week it gets the week of
+a team with one satellite and one station, and three invented tables of measurements.`,
 		Example: `  slantwise new
   slantwise new plans/summer.yaml
   slantwise new --launch-day first-day
-  slantwise new --planning-day day`,
+  slantwise new --planning-day day
+  slantwise new --team-week week`,
 		Args: func(cmd *cobra.Command, args []string) error {
 			if len(args) > 1 {
 				return inputErrorf("new takes one FILE, not %d; see slantwise new --help", len(args))
@@ -40,14 +42,17 @@ sets, rules of the plan, and an outage as a calendar.`,
 			return nil
 		},
 		RunE: func(_ *cobra.Command, args []string) error {
-			file := scenario.DefaultFile
-			switch {
-			case launchDay && planningDay:
-				return inputErrorf("--launch-day and --planning-day write a folder each; give one of them")
-			case launchDay:
-				file = "launch-day"
-			case planningDay:
-				file = "planning-day"
+			file, many := scenario.DefaultFile, 0
+			for _, f := range []struct {
+				asked  bool
+				folder string
+			}{{launchDay, "launch-day"}, {planningDay, "planning-day"}, {teamWeek, "team-week"}} {
+				if f.asked {
+					file, many = f.folder, many+1
+				}
+			}
+			if many > 1 {
+				return inputErrorf("--launch-day, --planning-day and --team-week write a folder each; give one of them")
 			}
 			if len(args) == 1 {
 				file = args[0]
@@ -57,12 +62,15 @@ sets, rules of the plan, and an outage as a calendar.`,
 				return writeDay(env, file, scenario.LaunchDay, "passes --plus-minus")
 			case planningDay:
 				return writeDay(env, file, scenario.PlanningDay, "contacts --iterations 10")
+			case teamWeek:
+				return writeDay(env, file, scenario.TeamWeek, "contacts --iterations 3")
 			}
 			return runNew(env, file)
 		},
 	}
 	cmd.Flags().BoolVar(&launchDay, "launch-day", false, "write the scenarios of a launch day into a folder (launch-day where none is named)")
 	cmd.Flags().BoolVar(&planningDay, "planning-day", false, "write the files of a day of contact planning into a folder (planning-day where none is named)")
+	cmd.Flags().BoolVar(&teamWeek, "team-week", false, "write the files of a team's week into a folder (team-week where none is named)")
 	return cmd
 }
 
