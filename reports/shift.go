@@ -23,7 +23,7 @@ type Shift struct {
 	Notes    []Note
 	Pages    int // how many pages of paper may be filled, 1 or more
 
-	RainPercent      float64 // of an average year, of the cause ShiftRain
+	RainPercent      float64 // of an average year, of the causes ShiftRain and ShiftIonosphere
 	RadiationCaution string
 }
 
@@ -109,6 +109,7 @@ const (
 	ShiftPointing
 	ShiftAttitude
 	ShiftKeyhole
+	ShiftIonosphere
 	ShiftWrongMode
 	ShiftPolarisation
 )
@@ -122,5 +123,5 @@ type ShiftCause struct {
 
 // Name is what the sheet calls the cause.
 func (k ShiftCauseKind) Name() string {
-	return [...]string{"rain", "pointing", "attitude", "keyhole", "wrong mode", "polarisation"}[k]
+	return [...]string{"rain", "pointing", "attitude", "keyhole", "ionosphere", "wrong mode", "polarisation"}[k]
 }

@@ -24,7 +24,7 @@ const (
 type atBoth struct {
 	time   [2]time.Time
 	budget [2]*downlink.Budget
-	total  [2]unit.Angle // the orbit's error on the sky, one standard deviation; NaN: not known
+	spread [2]station.LookSpread // the orbit's error on the sky; zero: not known
 }
 
 // causes tells how much each cause could take off what is expected of the main link.
@@ -35,7 +35,7 @@ func (j *shiftJob) causes(c *shiftChoice, l *shiftLink, events *[3]reports.Shift
 		if err != nil {
 			return nil, err
 		}
-		at.budget[i], at.total[i] = b, j.totalAt(c, t)
+		at.budget[i], at.spread[i] = b, j.spreadAt(c, t)
 	}
 	var list []reports.ShiftCause
 	add := func(kind reports.ShiftCauseKind, detail string, db [2]float64) {
@@ -47,8 +47,16 @@ func (j *shiftJob) causes(c *shiftChoice, l *shiftLink, events *[3]reports.Shift
 	if err != nil {
 		return nil, err
 	}
-	add(reports.ShiftRain, fmt.Sprintf("exceeded %g %% of an average year", shiftRainPercent), rain)
-	add(reports.ShiftPointing, "three times the error of orbit and antenna", l.offPoint(&at))
+	path := reports.ShiftRain
+	if l.link.link.Frequency() < unit.Gigahertz { // rain takes nothing there, and scintillation of the ionosphere does
+		path = reports.ShiftIonosphere
+	}
+	add(path, fmt.Sprintf("exceeded %g %% of an average year", shiftRainPercent), rain)
+	off, err := l.offPoint(&at)
+	if err != nil {
+		return nil, err
+	}
+	add(reports.ShiftPointing, fmt.Sprintf("error of orbit and antenna, not exceeded with %g %%", 100*downlink.SureProbability), off)
 	detail, db := l.offAttitude(&at)
 	add(reports.ShiftAttitude, detail, db)
 	if lost := lostWithin(c); len(lost) > 0 {
@@ -76,19 +84,19 @@ func (j *shiftJob) causes(c *shiftChoice, l *shiftLink, events *[3]reports.Shift
 	return list, nil
 }
 
-// totalAt is the orbit's error on the sky.
-func (j *shiftJob) totalAt(c *shiftChoice, t time.Time) unit.Angle {
+// spreadAt is the orbit's error on the sky; zero where it is not known.
+func (j *shiftJob) spreadAt(c *shiftChoice, t time.Time) (none station.LookSpread) {
 	w, craft := j.scenario.Window, c.craft(j)
 	u, _, err := j.scenario.AssumedUncertainty(craft.Spacecraft, w.Start, w.End)
 	if err != nil {
-		return unit.Angle(math.NaN())
+		return none
 	}
 	spread, err := u.At(t)
 	if err != nil {
-		return unit.Angle(math.NaN())
+		return none
 	}
 	e := craft.ephemeris
-	return j.report.sites[c.page.Site].frame.LookSpread(e.StateAt(max(0, min(e.Seconds(t), e.Span()))), spread).Total()
+	return j.report.sites[c.page.Site].frame.LookSpread(e.StateAt(max(0, min(e.Seconds(t), e.Span()))), spread)
 }
 
 // rain is how much less C/N0 there is in the weather of shiftRainPercent; nothing where the
@@ -107,7 +115,7 @@ func (j *shiftJob) rain(c *shiftChoice, l *shiftLink, at *atBoth) (db [2]float64
 		j.rained[l.link] = wet
 	}
 	if slices.Contains(wet.sky.missing, "rain") {
-		return db, nil
+		return db, nil // what else the path takes would pass for rain
 	}
 	for i, t := range at.time {
 		b, err := wet.budgetAt(c.craft(j), t)
@@ -121,27 +129,32 @@ func (j *shiftJob) rain(c *shiftChoice, l *shiftLink, at *atBoth) (db [2]float64
 	return db, nil
 }
 
-// offPoint is the loss of pointing at three times the error of orbit and antenna, beside what the
-// budget holds of it already.
-func (l *shiftLink) offPoint(at *atBoth) (db [2]float64) {
+// offPoint is the loss of pointing at the error of orbit and antenna that is not exceeded with
+// downlink.SureProbability, beside what the budget holds of it already.
+func (l *shiftLink) offPoint(at *atBoth) (db [2]float64, err error) {
 	a := l.link.antenna
 	beam := 2 * unit.Angle(l.profile.HalfBeamDeg) * unit.Degree
 	if !(beam > 0) || a.Kind == station.Fixed {
-		return db
+		return db, nil
 	}
+	quantile, err := station.NewErrorQuantile(downlink.SureProbability)
+	if err != nil {
+		return db, err
+	}
+	own := a.PointingRMS.Radians() / math.Sqrt2 // alike along both axes
 	for i, b := range at.budget {
-		orbit := at.total[i].Radians()
-		if math.IsNaN(orbit) || a.Follows == station.FollowsSignal {
-			orbit = 0
+		orbit := at.spread[i]
+		if a.Follows == station.FollowsSignal {
+			orbit = station.LookSpread{}
 		}
-		e := unit.Angle(shiftSigmas * math.Hypot(orbit, a.PointingRMS.Radians()))
+		e := quantile.Of(unit.Angle(math.Hypot(orbit.Major.Radians(), own)), unit.Angle(math.Hypot(orbit.Minor.Radians(), own)))
 		if !station.InMainLobe(e, beam) {
 			db[i] = math.Inf(1)
 			continue
 		}
-		db[i] = float64(station.PointingLoss(e, beam)) - termOf(b, "pointing loss", "orbit pointing loss")
+		db[i] = math.Max(0, float64(station.PointingLoss(e, beam))-termOf(b, "pointing loss", "orbit pointing loss"))
 	}
-	return db
+	return db, nil
 }
 
 // offAttitude is what half of all directions of a spacecraft that turns about freely take.

@@ -10,6 +10,7 @@ import (
 	"slantwise/orbit/unit"
 	"slantwise/reports"
 	"slantwise/station"
+	"slantwise/station/pass"
 )
 
 // contact works the numbers of a contact out.
@@ -21,6 +22,9 @@ func (j *shiftJob) contact(c *shiftChoice) (*reports.ShiftContact, error) {
 	}
 	if c.antenna != nil {
 		out.Antenna = c.antenna.Name
+	}
+	if c.page.Cut != 0 {
+		out.Cautions = append(out.Cautions, "The window cuts this pass: it is longer than what stands here.")
 	}
 	out.Events = j.events(c)
 	for i := range c.links {
@@ -70,10 +74,10 @@ func (j *shiftJob) look(c *shiftChoice, t time.Time) station.Look {
 // events are the start, the highest point and the end.
 func (j *shiftJob) events(c *shiftChoice) [3]reports.ShiftEvent {
 	names, at := [3]string{"AOS", "culmination", "LOS"}, [3]time.Time{c.start, c.page.Culmination, c.end}
-	if !c.start.Equal(c.page.AOS) {
+	if !c.start.Equal(c.page.AOS) || c.page.Cut&pass.CutAOS != 0 {
 		names[0] = "start"
 	}
-	if !c.end.Equal(c.page.LOS) {
+	if !c.end.Equal(c.page.LOS) || c.page.Cut&pass.CutLOS != 0 {
 		names[2] = "end"
 	}
 	if at[1].Before(c.start) || at[1].After(c.end) {
@@ -150,56 +154,6 @@ func lostWithin(c *shiftChoice) []downlink.Interval {
 		}
 	}
 	return out
-}
-
-// minutes are the whole minutes of UTC in a contact, and its ends, with the budget of each.
-func (j *shiftJob) minutes(c *shiftChoice) ([]reports.ShiftMinute, error) {
-	at := []time.Time{c.start}
-	for t := c.start.Truncate(time.Minute).Add(time.Minute); t.Before(c.end); t = t.Add(time.Minute) {
-		at = append(at, t)
-	}
-	at = append(at, c.end)
-	out := make([]reports.ShiftMinute, len(at))
-	for i, t := range at {
-		l := j.look(c, t)
-		m := reports.ShiftMinute{Time: t, AzimuthDeg: l.Azimuth.Degrees(), ElevationDeg: l.Elevation.Degrees(), ReceivedDBm: math.NaN(), CN0DBHz: math.NaN(), MarginDB: math.NaN()}
-		if len(c.links) > 0 {
-			first := &c.links[0]
-			b, err := first.link.budgetAt(c.craft(j), t)
-			if err != nil {
-				return nil, err
-			}
-			m.ReceivedDBm, m.CN0DBHz = b.ReceivedPowerDBm, float64(b.CN0)
-			m.Mode, m.MarginDB = first.marginAt(t, b)
-		}
-		out[i] = m
-	}
-	return out, nil
-}
-
-// marginAt is the margin of the mode that the rate plan sends at an instant.
-func (l *shiftLink) marginAt(t time.Time, b *downlink.Budget) (string, float64) {
-	need, name := l.needAt(t)
-	if name == "" || !b.Usable {
-		return name, math.NaN()
-	}
-	return name, float64(b.CN0) - need + l.profile.RequiredMarginDB
-}
-
-// needAt is the C/N0 that the mode of an instant needs, and its name; empty where none is sent.
-func (l *shiftLink) needAt(t time.Time) (float64, string) {
-	if l.rated == nil {
-		return math.NaN(), ""
-	}
-	steps := l.rated.plan.Steps
-	for i := range steps {
-		s := &steps[i]
-		// The last instant belongs to the step that ends with it.
-		if last := i == len(steps)-1 && t.Equal(s.To); s.Mode >= 0 && !t.Before(s.From) && (t.Before(s.To) || last) {
-			return l.rated.needAt(s), s.Name
-		}
-	}
-	return math.NaN(), ""
 }
 
 // beamOf is the half-power width of the main link's beam, NaN where it is not known.

@@ -189,7 +189,8 @@ func (j *shiftJob) clashes() {
 
 // nothing says that there is no contact, and when the next is.
 func (j *shiftJob) nothing() string {
-	text := fmt.Sprintf("No contact from %s to %s", utc(j.from), utc(j.to))
+	const layout = "2006-01-02 15:04:05 UTC"
+	text := fmt.Sprintf("No contact from %s to %s", j.from.Format(layout), j.to.Format(layout))
 	if j.planned {
 		return text + " at this station in the plan."
 	}
@@ -200,11 +201,11 @@ func (j *shiftJob) nothing() string {
 		}
 		one, err := j.weigh([]*reportPage{page})
 		if err == nil && one.why == "" {
-			return text + fmt.Sprintf("; the next is %s, AOS %s.", j.report.craft[page.Spacecraft].Name, utc(page.AOS))
+			return text + fmt.Sprintf("; the next is %s, AOS %s.", j.report.craft[page.Spacecraft].Name, page.AOS.Format(layout))
 		}
 		if err != nil && !errors.As(err, new(*InputError)) {
 			break
 		}
 	}
-	return text + fmt.Sprintf(", and none to the end of the window, %s.", utc(j.scenario.Window.End))
+	return text + fmt.Sprintf(", and none to the end of the window, %s.", j.scenario.Window.End.Format(layout))
 }
