@@ -25,6 +25,7 @@ type Shift struct {
 
 	RainPercent      float64 // of an average year, of the causes ShiftRain and ShiftIonosphere
 	RadiationCaution string
+	Basis            Basis
 }
 
 // ShiftContact is one contact.

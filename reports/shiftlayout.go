@@ -115,7 +115,7 @@ type sheetFoot struct {
 	tall, frame, total float64
 }
 
-func (v *shiftView) foot(beyond string) sheetFoot {
+func (v *shiftView) footLines(beyond string) sheetFoot {
 	var f sheetFoot
 	half := (paper.WholeWidth - sheetGutter) / 2
 	var list []told
@@ -165,7 +165,7 @@ func (v *shiftView) layOut(most int) {
 		heights[i] = v.Blocks[i].inLines().height
 	}
 	for pages := 1; ; pages++ {
-		placed := v.place(heights, pages, v.foot("").total)
+		placed := v.place(heights, pages, v.footLines("").total)
 		v.Pages = pages
 		if placed == len(heights) {
 			return
@@ -174,7 +174,7 @@ func (v *shiftView) layOut(most int) {
 			continue
 		}
 		// The line that names the others takes room itself.
-		placed = v.place(heights, pages, v.foot(v.beyond(placed)).total)
+		placed = v.place(heights, pages, v.footLines(v.beyond(placed)).total)
 		v.Beyond = v.beyond(placed)
 		return
 	}

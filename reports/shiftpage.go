@@ -14,8 +14,9 @@ var shiftStyle string
 // the sheet may have; on a screen it shows all contacts.
 func ShiftPage(s *Shift) ([]byte, error) {
 	v := newShiftView(s)
-	v.Policy = "default-src 'none'; style-src 'unsafe-inline'; img-src data:; base-uri 'none'; form-action 'none'"
+	v.pageView = plainPage(v.Title)
 	v.Style = template.HTML("<style>" + styleSheet + shiftStyle + "</style>")
+	v.foot(&s.Basis, "")
 	var out bytes.Buffer
 	if err := pageTemplates().ExecuteTemplate(&out, "shift.html", v); err != nil {
 		return nil, fmt.Errorf("report: %w", err)

@@ -189,7 +189,7 @@ func (p *sheetPen) signal(b *shiftBlock, y float64) float64 {
 
 // foot paints what holds for all contacts at the end of the page.
 func (p *sheetPen) foot(v *shiftView) {
-	f := v.foot(v.Beyond)
+	f := v.footLines(v.Beyond)
 	y := p.h - f.total
 	p.rule(0, p.w, y, 1.2, vector.Ink)
 	y += 4

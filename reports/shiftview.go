@@ -74,7 +74,7 @@ func newShiftView(s *Shift) *shiftView {
 			basis = " (by the age of the elements, common practice and no measurement, where the scenario states nothing)"
 		}
 	}
-	v.Signs = "Elevations are geometric. ± is one standard deviation" + basis + ", and the search goes to three. A time offset of + takes the spacecraft as late: the antenna runs behind on its track, toward the azimuth of AOS. Low: dB that a cause could take, at the lower end/at the highest point."
+	v.Signs = "Elevations are geometric. ± is one standard deviation" + basis + ", and the search goes to three. A time offset of + takes the spacecraft as late: the antenna runs behind on its track, toward the azimuth of AOS. Low: dB that a cause could take, at the lower end/at the highest point. Models and defaults: slantwise check."
 	v.addTell(s)
 	v.Cautions = shiftCautions(s)
 	v.layOut(s.Pages)

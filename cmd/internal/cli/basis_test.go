@@ -34,6 +34,7 @@ func TestEveryPageSaysWhatItStandsOn(t *testing.T) {
 		{"plain", []string{"report", "--static", "--one-file", "--scenario", "before.yaml", "--into", "plain"}, "before.yaml", true},
 		{"compare.html", []string{"compare", "before.yaml", "after.yaml", "--page", "compare.html"}, "before.yaml before, after.yaml after", true},
 		{"plan.html", []string{"contacts", "--scenario", "before.yaml", "--iterations", "1", "--page", "plan.html"}, "before.yaml", true},
+		{"shift.html", []string{"shift", "--scenario", "before.yaml", "--into", "shift.html"}, "before.yaml", true},
 		{"path.html", []string{"path", "--station", "Skerry Point", "--frequency-mhz", "8180", "--sweep", "elevation", "--into", "path.html"}, "embedded demo", false},
 		{"dish", []string{"dish", "--scenario", sized, "--report", "dish"}, "s.yaml", true},
 	} {

@@ -153,12 +153,31 @@ func (j *shiftJob) sheet(ctx context.Context) (*reports.Shift, error) {
 	if len(list) == 0 {
 		out.None = j.nothing()
 	}
+	out.Basis = j.basis()
 	for _, w := range append(append([]scenario.Note{}, j.scenario.Warnings...), warningNotes(j.report.warnings)...) {
 		if w.About == "" || general(w) || w.About == "station "+out.Station || j.flies(w.About) {
 			out.Notes = append(out.Notes, reports.Note{Kind: reports.Warning, About: w.About, Text: w.Text})
 		}
 	}
 	return out, nil
+}
+
+// basis is what the sheet's numbers stand on: the orbits of its contacts, aged over its hours.
+func (j *shiftJob) basis() reports.Basis {
+	hours := *j.scenario
+	hours.Window.Start, hours.Window.End = j.from, j.to
+	var craft []*scenario.Spacecraft
+	names := []string{"station " + j.station.Site.Name}
+	for i := range j.scenario.Spacecraft {
+		c := &j.scenario.Spacecraft[i]
+		if slices.ContainsFunc(j.sheetOut.Contacts, func(k reports.ShiftContact) bool { return k.Spacecraft == c.Name }) {
+			craft, names = append(craft, c), append(names, "spacecraft "+c.Name)
+		}
+	}
+	if len(craft) == 0 {
+		craft = allCraft(j.scenario) // that there is no contact is said of all of them
+	}
+	return about(basisOf(&hours, craft, reports.CautionPass), names...)
 }
 
 func warningNotes(list []string) (out []scenario.Note) {
