@@ -42,8 +42,8 @@ type axisRates struct{ lower, upper unit.AngularRate }
 // slewing is how a mount with given rates takes the passes that it does not follow
 // exactly.
 type slewing struct {
-	passes []int // rising
-	plans  []*mount.Plan
+	passes []int              // rising
+	errors [][]mount.ErrorRun // while it does not follow them
 }
 
 // outage is what an antenna does not follow of the passes of a site, in seconds after the
@@ -97,25 +97,33 @@ func (t *turning) outage(site int, template, a *station.Antenna, f unit.Frequenc
 	return between(ends[0], ends[1], share), nil
 }
 
-// rungRatio is how far apart, as a share, the diameters are at which plans are made where the rates
-// change with the diameter.
-const rungRatio = 1.12
+// rungRatio is how far apart the rates are, at most, at which plans are made where they change with the
+// diameter.
+const rungRatio = 1.25
 
 // rungs returns the diameters around another between whose mounts its own is taken, and its
-// share of the way; both the same where the rates do not change there.
+// share of the way, by the inverse of the rate: the time that a slew takes. Both are the same
+// where the rates do not change there.
 func rungs(m *station.Mount, d unit.Length) (low, high unit.Length, share float64) {
 	rows := m.ByDiameter
 	i := sort.Search(len(rows), func(i int) bool { return rows[i].Diameter >= d })
 	if i == 0 || i == len(rows) || rows[i-1].Lower == rows[i].Lower && rows[i-1].Upper == rows[i].Upper {
 		return d, d, 0
 	}
-	a, b := rows[i-1].Diameter.Metres(), rows[i].Diameter.Metres()
-	n := math.Ceil(math.Log(b/a) / math.Log(rungRatio))
+	from, to := rows[i-1], rows[i]
+	a, b := float64(from.Lower), float64(to.Lower)
+	if math.Abs(math.Log(float64(to.Upper/from.Upper))) > math.Abs(math.Log(b/a)) { // the axis that changes more
+		a, b = float64(from.Upper), float64(to.Upper)
+	}
+	rate := a + (b-a)*float64((d-from.Diameter)/(to.Diameter-from.Diameter))
+	n := math.Ceil(math.Abs(math.Log(b/a)) / math.Log(rungRatio))
 	at := func(k float64) float64 { return a * math.Pow(b/a, k/n) }
-	k := math.Floor(n * math.Log(d.Metres()/a) / math.Log(b/a))
-	k = max(0, min(n-1, k))
-	low, high = unit.Length(at(k)), unit.Length(at(k+1))
-	return low, high, max(0, min(1, float64((d-low)/(high-low))))
+	k := max(0, min(n-1, math.Floor(n*math.Log(rate/a)/math.Log(b/a))))
+	where := func(rate float64) unit.Length {
+		return from.Diameter + (to.Diameter-from.Diameter)*unit.Length((rate-a)/(b-a))
+	}
+	share = (1/rate - 1/at(k)) / (1/at(k+1) - 1/at(k))
+	return where(at(k)), where(at(k + 1)), max(0, min(1, share))
 }
 
 func (t *turning) site(site int, of *station.Mount) (*siteTurning, error) {
@@ -141,6 +149,9 @@ func (t *turning) site(site int, of *station.Mount) (*siteTurning, error) {
 	t.sites[key] = s
 	return s, nil
 }
+
+// planStep is the step of the plans near the limits of a mount, s.
+const planStep = 0.5
 
 // courseStep is how far apart the rows of a course's table are, s.
 const courseStep = 4
@@ -182,8 +193,8 @@ func (s *siteTurning) slewing(f *Flight, m *station.Mount) (*slewing, error) {
 		if err != nil {
 			return nil, err
 		}
-		if plan := d.Plan(c, mount.Options{}); len(plan.Lost) > 0 {
-			k.passes, k.plans = append(k.passes, p), append(k.plans, plan)
+		if plan := d.Plan(c, mount.Options{Fine: planStep}); len(plan.Lost) > 0 {
+			k.passes, k.errors = append(k.passes, p), append(k.errors, plan.Errors())
 		}
 	}
 	s.known[key] = k
@@ -194,7 +205,7 @@ func (s *siteTurning) slewing(f *Flight, m *station.Mount) (*slewing, error) {
 func (k *slewing) outage(y *SiteYear, tolerance unit.Angle) *outage {
 	out := &outage{}
 	for i, p := range k.passes {
-		lost := k.plans[i].Over(tolerance)
+		lost := mount.Over(k.errors[i], tolerance)
 		if len(lost) == 0 {
 			continue
 		}

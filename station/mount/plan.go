@@ -1,6 +1,7 @@
 package mount
 
 import (
+	"math"
 	"time"
 
 	"slantwise/orbit/unit"
@@ -18,6 +19,9 @@ type Options struct {
 	Worth func(seconds float64) float64
 	// Tolerance is the error on the sky up to which the pass counts as followed; 0: none.
 	Tolerance unit.Angle
+	// Fine is the step in seconds of the search near the limits of the mount, between whose
+	// samples only the ends of slews are sought; 0: a tenth of a second.
+	Fine float64
 }
 
 // Span is a time of a course, in seconds after its beginning.
@@ -63,10 +67,60 @@ func (p *Plan) LostSeconds() float64 {
 	return sum
 }
 
-// Over returns the spans in which the error on the sky is greater than a tolerance, as Lost
-// is for that of the plan. A plan for no tolerance so serves every other: it follows at
-// least as much exactly, and loses a little more than one that is planned for the tolerance.
-func (p *Plan) Over(tolerance unit.Angle) []Span { return p.lost(max(tolerance, exact)) }
+// ErrorRun is the error on the sky over a part of a plan in which the mount is not on track
+// by following, at rising instants.
+type ErrorRun struct {
+	Seconds []float64
+	Error   []unit.Angle
+}
+
+// Errors returns the error wherever the mount does not follow exactly, every tenth of a second, in order. A
+// plan for no tolerance so serves every other: it follows at least as much exactly, and
+// loses a little more than one that is planned for the tolerance.
+func (p *Plan) Errors() []ErrorRun {
+	var out []ErrorRun
+	for i := range p.pieces {
+		part := &p.pieces[i]
+		if part.follows() {
+			continue
+		}
+		n := min(max(1, int(math.Ceil(part.Seconds()/fineStep))), 4*mostSamples)
+		var run ErrorRun
+		for k := 0; k <= n; k++ {
+			t := part.From + part.Seconds()*float64(k)/float64(n)
+			if k == n {
+				t = math.Nextafter(part.To, part.From) // this piece's own end
+			}
+			run.Seconds, run.Error = append(run.Seconds, t), append(run.Error, p.ErrorAt(t))
+		}
+		out = append(out, run)
+	}
+	return out
+}
+
+// Over returns the spans in which an error is greater than a tolerance, straight between its
+// instants.
+func Over(runs []ErrorRun, tolerance unit.Angle) []Span {
+	var out []Span
+	tolerance = max(tolerance, exact)
+	for r := range runs {
+		t, e := runs[r].Seconds, runs[r].Error
+		for i := 1; i < len(t); i++ {
+			a, b := float64(e[i-1]-tolerance), float64(e[i]-tolerance)
+			from, to := t[i-1], t[i]
+			switch {
+			case a <= 0 && b <= 0:
+				continue
+			case a <= 0:
+				from += (to - from) * -a / (b - a)
+			case b <= 0:
+				to -= (to - from) * -b / (a - b)
+			}
+			out = append(out, Span{from, to})
+		}
+	}
+	return joined(out)
+}
 
 // OffTrackSeconds returns how long the mount is not exactly on track, within the
 // tolerance or not. It never grows with the rates and accelerations of the axes.

@@ -27,9 +27,11 @@ const (
 	closeToRate = 0.3
 )
 
-func (d *Drive) sample(c *Course) *samples {
+func (d *Drive) sample(c *Course, fine float64) *samples {
 	step := max(coarseStep, c.length/mostSamples*2)
-	fine := fineStep
+	if !(fine > 0) {
+		fine = fineStep
+	}
 	for {
 		at := d.times(c, step, fine)
 		if len(at) <= mostSamples {

@@ -44,7 +44,7 @@ const (
 
 // prepare lays out a search over all ways, all worth the same where worth is nil.
 func (d *Drive) prepare(c *Course, o Options) *search {
-	s := &search{drive: d, course: c, samples: d.sample(c), from: o.From, lead: o.Lead}
+	s := &search{drive: d, course: c, samples: d.sample(c, o.Fine), from: o.From, lead: o.Lead}
 	n := len(s.at)
 	least, most := s.lower[0], s.lower[0]
 	for _, v := range s.lower {
@@ -187,9 +187,13 @@ func (s *search) begins(w, i int) bool {
 // slewInto looks for a better state from which the mount slews into this one. The later
 // ones come first: a slew from further back can only win with more followed by then.
 func (s *search) slewInto(w, i int) {
+	rate := float64(s.drive.mount.Lower.Rate) * (1 + 1e-9)
+	at := s.place(w, i).lower
 	for v := range s.ways {
+		turn := s.ways[v].of(0, 0).lower
 		for k := i - 1; k >= 0 && s.best[v][k] > s.most[w][i]; k-- {
-			if s.most[v][k] > s.most[w][i] && s.slews(v, k, w, i) {
+			// What is too far for the lower axis goes first: most of all.
+			if math.Abs(at-turn-s.lower[k]) <= rate*(s.at[i]-s.at[k]) && s.most[v][k] > s.most[w][i] && s.slews(v, k, w, i) {
 				s.most[w][i], s.origin[w][i] = s.most[v][k], origin{kind: slewed, way: v, at: k}
 			}
 		}
@@ -202,9 +206,6 @@ func (s *search) slews(v, k, w, i int) bool {
 	time := s.at[i] - s.at[k]
 	lowerFrom, upperFrom := s.motions(v, k)
 	lowerTo, upperTo := s.motions(w, i)
-	if math.Abs(lowerTo.at-lowerFrom.at) > float64(s.drive.mount.Lower.Rate)*time*(1+1e-9) {
-		return false
-	}
 	if !s.lowerFollows(v, k, w, i) && !makes(s.drive.mount.Lower, lowerFrom, lowerTo, time) {
 		return false
 	}
