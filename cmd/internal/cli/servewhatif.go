@@ -17,9 +17,24 @@ import (
 // aroundPass is how far before AOS and after LOS a pass may grow by a lower least elevation.
 const aroundPass = 30 * time.Minute
 
-// longestAsked is the longest contact that a question may be about: with one sample a
-// second it bounds what an answer costs.
-const longestAsked = 2 * time.Hour
+// longestAsked is the longest contact that a question may be about, and mostAsked how
+// many samples, one a second for each mode, an answer may cost: some 7 us each on one
+// core of 2 GHz, so at the most about a second.
+const (
+	longestAsked = 2 * time.Hour
+	mostAsked    = 150_000
+)
+
+// affordable refuses a question that would cost too much.
+func affordable(length time.Duration, modes int, q *web.Question) error {
+	if length > longestAsked {
+		return &web.RefusedError{Text: fmt.Sprintf("the contact lasts longer than %v, too long for an answer at once; change a copy of the scenario and compare the two", longestAsked)}
+	}
+	if q.Mode == "" && length.Seconds()*float64(modes) > mostAsked {
+		return &web.RefusedError{Text: fmt.Sprintf("%d modes over %v are too much for an answer at once; name a mode", modes, length.Round(time.Second))}
+	}
+	return nil
+}
 
 // asked are the numbers of a question with their ranges, those of the scenario's keys
 // or narrower.
@@ -53,8 +68,12 @@ func (m *liveModel) WhatIf(ctx context.Context, q *web.Question) (*web.Answer, e
 		return nil, err
 	}
 	page := &m.plan.pages[i]
-	if page.Duration() > longestAsked {
-		return nil, &web.RefusedError{Text: fmt.Sprintf("the contact lasts longer than %v, too long for an answer at once; change a copy of the scenario and compare the two", longestAsked)}
+	modes := 0
+	if page.link != nil {
+		modes = len(page.link.modes)
+	}
+	if err := affordable(page.Duration(), modes, q); err != nil {
+		return nil, err
 	}
 	best, err := m.flight(i)
 	if untold(err) {
@@ -79,6 +98,9 @@ func (m *liveModel) WhatIf(ctx context.Context, q *web.Question) (*web.Answer, e
 		nan := web.Number(math.NaN())
 		out.After = web.Outcome{LeastMarginDB: nan, GreatestMarginDB: nan}
 		return out, nil
+	}
+	if err := affordable(span.Duration(), modes, q); err != nil { // a lower least elevation may have made it longer
+		return nil, err
 	}
 	if err := ctx.Err(); err != nil {
 		return nil, err

@@ -171,6 +171,12 @@ func FuzzChange(f *testing.F) {
 		}
 		f.Add(text, byte(format))
 	}
+	start, _, err := Start("../elements.tle")
+	if err != nil {
+		f.Fatal(err)
+	}
+	f.Add([]byte(start), byte(tree.YAML))
+	f.Add([]byte(strings.Replace(start, "diameter_m: 3.0", "diameter_m: &d 3.0 # anchor", 1)), byte(tree.YAML))
 	files := os.DirFS("testdata")
 	f.Fuzz(func(t *testing.T, text []byte, format byte) {
 		src := &source{label: "fuzz", dir: "good", files: files, format: tree.Format(format % 3), text: text}
