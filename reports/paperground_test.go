@@ -83,8 +83,11 @@ func TestOddNamesOnPaper(t *testing.T) {
 		if !strings.Contains(text, "Link budget") || !strings.Contains(text, "page 1 of ") {
 			t.Errorf("%q: the paper is not whole", name)
 		}
-		if lacks := strings.ContainsAny(name, "🛰क\x07"); lacks != strings.Contains(text, "An empty box stands") {
+		if lacks := strings.ContainsAny(name, "क\x07"); lacks != strings.Contains(text, "An empty box stands") {
 			t.Errorf("%q: boxes are told: %v", name, !lacks)
+		}
+		if lacks := strings.Contains(name, "🛰"); lacks != strings.Contains(text, "stands for a letter that this document cannot hold: U+1F6F0.") {
+			t.Errorf("%q: the sign for other letters is told: %v", name, !lacks)
 		}
 	}
 }

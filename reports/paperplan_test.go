@@ -105,6 +105,20 @@ func TestStripsAreTrue(t *testing.T) {
 	}
 }
 
+func TestShortPlanIsDrawnOverItsOwnTime(t *testing.T) {
+	day := time.Date(2026, 3, 10, 0, 0, 0, 0, time.UTC)
+	for _, r := range []struct {
+		from, to float64 // of the plan, hours
+		want     string
+	}{{12.1, 12.4, "12 to 13, 5 ticks, last 13:00"}, {20.5, 26, "20 to 24, 9 ticks, last 24:00"}, {1, 12.5, "1 to 13, 13 ticks, last 13:00"}, {0, 24, "0 to 24, 9 ticks, last 24:00"}} {
+		v := Timeline{From: day.Add(time.Duration(r.from * float64(time.Hour))), To: day.Add(time.Duration(r.to * float64(time.Hour)))}
+		a := v.hours(day)
+		if got := fmt.Sprintf("%g to %g, %d ticks, last %s", a.From, a.To, len(a.Ticks), a.Ticks[len(a.Ticks)-1].Label); got != r.want {
+			t.Errorf("a plan from %g to %g h: %s, want %s", r.from, r.to, got, r.want)
+		}
+	}
+}
+
 func sized() *Dish {
 	d := someDish()
 	d.Basis = someBasis(CautionSizing)

@@ -2,6 +2,7 @@ package reports
 
 import (
 	"fmt"
+	"math"
 	"strings"
 	"time"
 
@@ -62,24 +63,39 @@ func (t *Timeline) stripsOn(d *paper.Document) {
 	for i, name := range t.Spacecraft {
 		names[i] = letter(i) + " " + name
 	}
-	d.Small(strings.Join(names, ", ") + ". Full: contact; with a frame inside: fixed. Slanted strokes: set-up and tear-down. Low and empty: a window that is not taken. Crossed: closed. Hours in UTC.")
+	d.Small(strings.Join(names, ", ") + ". Full: contact; with a frame inside: fixed. Slanted strokes: set-up and tear-down. Low and empty: a window that is not taken. Crossed: closed.")
 	for day := t.From.UTC().Truncate(24 * time.Hour); day.Before(t.To); day = day.Add(24 * time.Hour) {
 		rows := t.strips(day)
 		for len(rows) > 0 {
 			n := min(len(rows), stripsOfDrawing)
-			s := &vector.Strips{X: vector.Axis{Name: "hours UTC", To: 24, Ticks: hourTicks()}, Rows: rows[:n]}
+			s := &vector.Strips{X: t.hours(day), Rows: rows[:n]}
 			d.Figures([]paper.Figure{{Title: day.Format("Monday, 2006-01-02"), Height: s.Height(), Wide: true, Draw: s.Draw}})
 			rows = rows[n:]
 		}
 	}
 }
 
-func hourTicks() []vector.Tick {
-	var list []vector.Tick
-	for h := 0; h <= 24; h += 3 {
-		list = append(list, vector.Tick{At: float64(h), Label: fmt.Sprintf("%02d", h)})
+// shortPlan is up to how many hours a plan is drawn over its own time alone.
+const shortPlan = 12
+
+// hours is the axis of a day: the whole of it, but for a short plan.
+func (t *Timeline) hours(day time.Time) vector.Axis {
+	a, step := vector.Axis{Name: "UTC", To: 24}, 3.0
+	if t.To.Sub(t.From) <= shortPlan*time.Hour {
+		a.From, a.To = math.Floor(max(0, t.From.Sub(day).Hours())), math.Ceil(min(24, t.To.Sub(day).Hours()))
+		switch span := a.To - a.From; {
+		case span <= 2:
+			step = 0.25
+		case span <= 4:
+			step = 0.5
+		default:
+			step = 1
+		}
 	}
-	return list
+	for h := a.From; h <= a.To; h += step {
+		a.Ticks = append(a.Ticks, vector.Tick{At: h, Label: fmt.Sprintf("%02d:%02.0f", int(h), 60*(h-math.Floor(h)))})
+	}
+	return a
 }
 
 // strips are the antennas on a day, in hours.

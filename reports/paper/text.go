@@ -177,30 +177,45 @@ func (d *Document) fit(text string, width float64) string {
 	return "…"
 }
 
-// tellBoxes says which letters stand as boxes.
+// tellBoxes says which letters stand as boxes, and which as the sign for a letter that cannot be shown.
 func (d *Document) tellBoxes() {
 	if len(d.boxes) == 0 {
 		return
 	}
-	var list []rune
+	var boxes, beyond []rune
 	for r := range d.boxes {
-		list = append(list, r)
-	}
-	slices.Sort(list)
-	const most = 12
-	text := ""
-	for i, r := range list {
-		if i == most {
-			text += fmt.Sprintf(" and %d more", len(list)-most)
-			break
+		if r < 1<<16 {
+			boxes = append(boxes, r)
+		} else {
+			beyond = append(beyond, r)
 		}
-		text += fmt.Sprintf(" U+%04X", r)
 	}
-	text = "An empty box stands where the font of this document has no letter; searching and copying give the true one:" + text + "."
+	text := ""
+	if len(boxes) > 0 {
+		text = "An empty box stands where the font of this document has no letter; searching and copying give the true one:" + codes(boxes) + ". "
+	}
+	if len(beyond) > 0 {
+		text += "The sign \ufffd stands for a letter that this document cannot hold:" + codes(beyond) + "."
+	}
+	text = strings.TrimSpace(text)
 	if d.whole { // there is room for this line alone
 		d.font("", smallSize-1, soft)
 		d.put(WholeMargin, bottom+8, d.fit(text, WholeWidth))
 		return
 	}
 	d.Small(text)
+}
+
+// codes lists runes by their numbers, the first ones where they are many.
+func codes(list []rune) string {
+	slices.Sort(list)
+	const most = 12
+	text := ""
+	for i, r := range list {
+		if i == most {
+			return text + fmt.Sprintf(" and %d more", len(list)-most)
+		}
+		text += fmt.Sprintf(" U+%04X", r)
+	}
+	return text
 }
