@@ -3,7 +3,9 @@ package cli
 import (
 	"fmt"
 	"math"
+	"strconv"
 	"strings"
+	"unicode"
 
 	"slantwise/cmd/internal/scenario"
 	"slantwise/downlink"
@@ -77,7 +79,7 @@ func (f *groupFit) levelOffer(place string, db float64) offer {
 	}
 	var had []string
 	for _, l := range t.ExtraLosses {
-		had = append(had, fmt.Sprintf("{name: %s, loss_db: %g}", l.Name, float64(l.Loss)))
+		had = append(had, fmt.Sprintf("{name: %s, loss_db: %g}", plainOrQuoted(l.Name), float64(l.Loss)))
 	}
 	return offer{place: place, key: "extra_losses", value: "[" + strings.Join(append(had, fmt.Sprintf("{name: as measured, loss_db: %s}", fixed(-db, 2))), ", ") + "]", had: "[" + strings.Join(had, ", ") + "]",
 		apply: func(to *offered) {
@@ -223,3 +225,11 @@ func (f *groupFit) middleMargin(c *chosenLink) (float64, error) {
 
 // mostMargins is on how many samples of a log the margin is looked at.
 const mostMargins = 500
+
+// plainOrQuoted is a name as a scenario in YAML takes it.
+func plainOrQuoted(name string) string {
+	if strings.IndexFunc(name, func(r rune) bool { return !unicode.IsLetter(r) && r != ' ' && r != '-' }) < 0 && name != "" && unicode.IsLetter([]rune(name)[0]) {
+		return name
+	}
+	return strconv.Quote(name)
+}
