@@ -131,6 +131,9 @@ func TestShiftKeepsToItsPages(t *testing.T) {
 			if n == 0 {
 				s.None = "No contact; the next is tomorrow."
 			}
+			for range 10 * (n % 2) {
+				s.Notes = append(s.Notes, Note{Kind: Warning, About: "spacecraft Wagtail 1", Text: strings.Repeat("its element set is old, ", 6)})
+			}
 			v := newShiftView(s)
 			last, placed := 0, 0
 			for i, b := range v.Blocks {
@@ -145,7 +148,7 @@ func TestShiftKeepsToItsPages(t *testing.T) {
 			if beyond := n - placed; (beyond > 0) != (v.Beyond != "") || beyond > 0 && !strings.HasPrefix(v.Beyond, fmt.Sprintf("%d contact", beyond)) {
 				t.Errorf("%d contacts, %d pages: %d found room, and the sheet says %q", n, pages, placed, v.Beyond)
 			}
-			if n >= 4 && placed < 4 {
+			if n >= 4 && placed < 4-n%2 {
 				t.Errorf("%d contacts, %d pages: only %d found room", n, pages, placed)
 			}
 			if v.Pages > pages || v.Pages != max(1, last) {

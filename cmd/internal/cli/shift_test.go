@@ -317,6 +317,18 @@ func TestShiftWithoutContacts(t *testing.T) {
 	}
 }
 
+// A pass that is under way when the window begins says so, and its start is not called AOS.
+func TestShiftOfACutPass(t *testing.T) {
+	args := []string{"shift", "--station", "Skerry Point", "--window-start", "2026-09-15T00:53:00Z", "--hours", "0.5"}
+	code, out, errOut := invoke(t, args...)
+	if code != ExitAnswer || !strings.Contains(out, "The window cuts this pass") || !strings.Contains(strings.Join(strings.Fields(out), " "), "start culmination LOS") {
+		t.Errorf("%d %s\n%s", code, errOut, out)
+	}
+	if strings.Contains(out, "AOS ±") {
+		t.Error("the window's edge has a plus-minus")
+	}
+}
+
 // The sheet for a terminal, and each of its lists.
 func TestShiftGolden(t *testing.T) {
 	args := []string{"shift", "--station", "Skerry Point", "--hours", "3"}
