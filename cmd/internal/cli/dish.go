@@ -118,8 +118,19 @@ func (o *dishOptions) check() error {
 	if o.static && o.report == "" {
 		return inputErrorf("--static goes with --report")
 	}
+	if err := checkDays(o.days); err != nil {
+		return err
+	}
 	if m := o.diameter; m != nil && !(*m > 0 && *m <= 1000) {
 		return inputErrorf("--diameter-m: %g m is not allowed; it must be greater than 0 and at most 1000 m", *m)
+	}
+	return nil
+}
+
+// checkDays says what is wrong with --days.
+func checkDays(days *float64) error {
+	if d := days; d != nil && !(*d >= sizing.LeastDays && *d <= sizing.MostDays) {
+		return inputErrorf("--days: %g d is not allowed; it must be %g to %g d", *d, sizing.LeastDays, sizing.MostDays)
 	}
 	return nil
 }

@@ -255,6 +255,8 @@ func valueText(v float64, u string) string {
 		return bytesText(v)
 	case u == "%":
 		return fmt.Sprintf("%.2f %%", v)
+	case v != 0 && math.Abs(v) < 0.01:
+		return fmt.Sprintf("%.2g %s", v, u)
 	}
 	return fmt.Sprintf("%.2f %s", v, u)
 }

@@ -58,6 +58,9 @@ func runSites(ctx context.Context, env *Env, o *sitesOptions) error {
 	if o.most < 1 || o.most > mostSetSize {
 		return inputErrorf("--most: %d is not allowed; it must be 1 to %d", o.most, mostSetSize)
 	}
+	if err := checkDays(o.days); err != nil {
+		return err
+	}
 	s, err := env.load(needOrbits)
 	if err != nil {
 		return err
