@@ -46,10 +46,11 @@ type Pass struct {
 
 	// Profile holds the samples, from AOS to LOS. Without a radio only the columns of
 	// geometry are filled and the others are nil.
-	Profile *downlink.Profile
-	Radio   *Radio // nil without a transmitter or antenna
-	Uplinks []Uplink
-	Notes   []Note // of the page: all that hold for this pass
+	Profile  *downlink.Profile
+	Radio    *Radio // nil without a transmitter or antenna
+	Uplinks  []Uplink
+	LinkSets []LinkSet
+	Notes    []Note // of the page: all that hold for this pass
 
 	Measured []Measured // what was logged during the pass; empty: nothing
 }

@@ -53,6 +53,9 @@ func passPaper(w *writer, p *Pass) ([]byte, error) {
 		d.Heading("System noise")
 		d.Table(paperTable(v.Noise))
 	}
+	for i := range v.LinkSets {
+		v.LinkSets[i].on(d)
+	}
 	for i := range v.Uplinks {
 		v.Uplinks[i].on(d)
 	}

@@ -22,17 +22,18 @@ func (n number) MarshalJSON() ([]byte, error) {
 // headJSON is what stands in a pass's JSON file before the samples. Fields get
 // added, not renamed.
 type headJSON struct {
-	Spacecraft string       `json:"spacecraft"`
-	Station    string       `json:"station"`
-	Elements   elementsJSON `json:"element_set"`
-	Cut        string       `json:"cut"`
-	Events     []eventJSON  `json:"events"`
-	DurationS  number       `json:"duration_s"`
-	Radio      *radioJSON   `json:"radio"`
-	Uplinks    []uplinkJSON `json:"uplinks"`
-	Notes      []noteJSON   `json:"notes"`
-	Surety     *suretyJSON  `json:"plus_minus"` // one standard deviation each; null: the position is taken as exact
-	Ground     *groundJSON  `json:"ground"`     // at the culmination; null: no map
+	Spacecraft string        `json:"spacecraft"`
+	Station    string        `json:"station"`
+	Elements   elementsJSON  `json:"element_set"`
+	Cut        string        `json:"cut"`
+	Events     []eventJSON   `json:"events"`
+	DurationS  number        `json:"duration_s"`
+	Radio      *radioJSON    `json:"radio"`
+	Uplinks    []uplinkJSON  `json:"uplinks"`
+	LinkSets   []linkSetJSON `json:"link_sets"`
+	Notes      []noteJSON    `json:"notes"`
+	Surety     *suretyJSON   `json:"plus_minus"` // one standard deviation each; null: the position is taken as exact
+	Ground     *groundJSON   `json:"ground"`     // at the culmination; null: no map
 
 	Measured []measuredJSON `json:"measured,omitempty"` // left out where nothing was logged
 }
@@ -125,6 +126,7 @@ func passHead(p *Pass) headJSON {
 		Events:     []eventJSON{},
 		Notes:      []noteJSON{},
 		Uplinks:    uplinkHeads(p),
+		LinkSets:   linkSetsOf(p.LinkSets),
 		Surety:     suretyHead(p.Surety),
 		Ground:     groundHead(p.Ground),
 		Measured:   measuredHeads(p),

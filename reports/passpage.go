@@ -28,6 +28,7 @@ type passView struct {
 	Budget, Noise          budgetView
 	Surety                 *suretyView // nil: the position is taken as exact
 	Uplinks                []uplinkView
+	LinkSets               []linkSetView
 	Measured               *measuredView // nil: nothing was logged
 	Modes                  []modeView    // empty where there was nothing to choose
 	Doubts                 []Note        // of single budgets
@@ -157,7 +158,7 @@ func newPassView(p *Pass) *passView {
 		"both": "Up during the whole window: the pass begins earlier and ends later than shown.",
 	}[q.Cut.String()]
 	v.Events, v.Surety = eventTable(p), newSuretyView(p)
-	v.Uplinks = uplinkViews(p)
+	v.Uplinks, v.LinkSets = uplinkViews(p), linkSetViews(p.LinkSets)
 	if p.Radio != nil {
 		v.Link = newLinkView(p)
 		v.Budget, v.Noise, v.Modes = budgetTable(p), noiseTable(p), modeViews(p.Radio.Modes)

@@ -250,6 +250,12 @@ func setFrom(flights []setFlight, at time.Time) []setFlight {
 
 // setNotes says how a set shares a pass.
 func setNotes(l *scenario.LinkSet) []string {
+	return []string{fmt.Sprintf("set %s: %s", l.Name, ruleText(l)),
+		"each downlink follows the schedule that it would have alone; a receiver that locks anew after each change loses that time on top"}
+}
+
+// ruleText is the rule of a set in words.
+func ruleText(l *scenario.LinkSet) string {
 	r := &l.Rule
 	how := "all links at once; what one takes from the other in power or by interference is not counted"
 	switch r.Order {
@@ -262,6 +268,5 @@ func setNotes(l *scenario.LinkSet) []string {
 		}
 		how = fmt.Sprintf("up first: the downlink begins %g s after the uplink %s", r.Change, until)
 	}
-	return []string{fmt.Sprintf("set %s: %s", l.Name, how),
-		"each downlink follows the schedule that it would have alone; a receiver that locks anew after each change loses that time on top"}
+	return how
 }

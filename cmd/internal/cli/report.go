@@ -102,6 +102,9 @@ func runReport(ctx context.Context, env *Env, o reportOptions) error {
 	if err := plan.openBook(ctx, env, o.log, o.logNamed); err != nil {
 		return err
 	}
+	if err := plan.addSets(); err != nil {
+		return err
+	}
 	for _, w := range plan.warnings {
 		env.note("warning: %s", w)
 	}

@@ -34,6 +34,7 @@ func (p *reportPlan) load(ctx context.Context, i int) (*reports.Pass, error) {
 		out.Elements.Source.File = filepath.Base(out.Elements.Source.File)
 	}
 	p.addMeasured(out, craft, site, page)
+	out.LinkSets = p.linkSets(page)
 	step := sampleStep(page.Duration())
 	if page.link == nil {
 		return out, p.addGeometry(out, craft, site, page)

@@ -27,6 +27,8 @@ type reportPlan struct {
 	passes   int
 	warnings []string // beside the scenario's own
 	rates    reportRates
+	sets     [][]setFlight             // by spacecraft: its passes, divided by each of its link sets; nil: not asked for
+	setOf    [][]*scenario.LinkSet     // of each of them
 	logged   map[bookKey][]loggedEntry // what the logbook holds of the window; nil: nothing
 }
 
