@@ -1,5 +1,6 @@
 // Package drawing draws the charts of reports without a browser and without a script: lines
-// over time or over another quantity, the track on the sky, and the overview of a window. It
+// over time or over another quantity, the track on the sky, a round map, antennas over time as strips,
+// and the overview of a window. Words keep off each other where they can. It
 // takes finished numbers in the units that are shown, lays axes, labels and legend out by the
 // advances of a font, and draws onto a Canvas: SVG here, paper in reports/paper. All lengths
 // are points of 1/72 inch, x to the right and y down.
