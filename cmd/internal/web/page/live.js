@@ -204,6 +204,7 @@ function heardState(e) {
   state = JSON.parse(e.data);
   heard = performance.now();
   if ($("link").textContent) $("link").textContent = "";
+  if (first) still();
   if (first) recall(); // before the first contact is chosen, which takes the address
   fill();
   map();
