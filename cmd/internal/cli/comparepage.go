@@ -144,6 +144,15 @@ func (c *comparison) totals() []reports.ComparedTotal {
 	return out
 }
 
+// moveText writes a difference with two decimals and its sign, what rounds to nothing without.
+func moveText(dB float64) string {
+	s := fmt.Sprintf("%+.2f", dB)
+	if s == "+0.00" || s == "-0.00" {
+		return "0.00"
+	}
+	return s
+}
+
 // medianOf is the middle value, of two the mean; it does not exist for none.
 func medianOf(values []float64) float64 {
 	if len(values) == 0 {
@@ -181,14 +190,14 @@ func (c *comparison) answer(all *reports.ComparedTotal) (string, []string) {
 		}
 	}
 	if len(margins) > 0 {
-		s += fmt.Sprintf("; the greatest margin changes by %+.2f dB (median)", medianOf(margins))
+		s += fmt.Sprintf("; the greatest margin changes by %s dB (median)", moveText(medianOf(margins)))
 	}
 	lines := []string{fmt.Sprintf("%d stay as they were in time, %d moved, %d are gone, %d are new.", count["same"], count["moved"], count["gone"], count["new"])}
 	if most != 0 {
 		lines = append(lines, fmt.Sprintf("AOS moves by %+.3f s at most.", most))
 	}
 	if n := len(margins); n > 0 {
-		lines = append(lines, fmt.Sprintf("Margins change by %+.2f to %+.2f dB over the %s that both have.", slices.Min(margins), slices.Max(margins), counted(n, "pass", "passes")))
+		lines = append(lines, fmt.Sprintf("Margins change by %s to %s dB over the %s that both have.", moveText(slices.Min(margins)), moveText(slices.Max(margins)), counted(n, "pass", "passes")))
 	}
 	return s + ".", lines
 }
