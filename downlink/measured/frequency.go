@@ -6,8 +6,11 @@ import (
 	"time"
 )
 
+// HertzPerDay is the unit of a drift over a log longer than longLog; it is Hz/s of a shorter one.
+const HertzPerDay, longLog = "Hz/d", 6 * time.Hour
+
 // FitFrequency fits measured less predicted frequency: an offset of the transmitter at
-// the middle of the samples, with drift its change a second, and how much later than the
+// the middle of the samples, with drift its change with time, and how much later than the
 // elements say the spacecraft flies (greater than 0: late). The time offset is taken to
 // first order in the rate of the frequency, which holds for some seconds.
 func FitFrequency(points []Point, drift bool) (*Fit, error) {
@@ -26,14 +29,22 @@ func FitFrequency(points []Point, drift bool) (*Fit, error) {
 	}
 	middle := (t[0] + t[len(t)-1]) / 2
 	names := []Parameter{{Name: "transmitter offset", Unit: "Hz"}, {Name: "time offset of the elements", Unit: "s"}}
+	perDay, scale := t[len(t)-1]-t[0] > longLog.Seconds(), 1.0
+	if perDay {
+		scale = 86400
+	}
 	if drift {
-		names = append(names, Parameter{Name: "transmitter drift", Unit: "Hz/s"})
+		p := Parameter{Name: "transmitter drift", Unit: "Hz/s"}
+		if perDay {
+			p.Unit = HertzPerDay
+		}
+		names = append(names, p)
 	}
 	x := make([][]float64, len(t))
 	for i := range t {
 		x[i] = []float64{1, -rate[i]}
 		if drift {
-			x[i] = append(x[i], t[i]-middle)
+			x[i] = append(x[i], (t[i]-middle)/scale)
 		}
 	}
 	f, err := (&series{t: t, y: y, x: x}).solve(names)

@@ -5,6 +5,7 @@ import (
 	"math"
 	"strconv"
 	"strings"
+	"time"
 	"unicode"
 
 	"slantwise/cmd/internal/scenario"
@@ -34,9 +35,7 @@ func (f *groupFit) offers() []offer {
 	tx := "spacecraft " + f.spacecraft.Name + ", transmitter " + f.transmitter.Name
 	dish := "station " + f.station.Site.Name + ", antenna " + f.antenna.Name
 	if f.frequency != nil {
-		at := f.frequency.Middle
-		had := f.transmitter.Oscillator.OffsetAt(at).Hertz()
-		out = append(out, offer{place: tx, key: "oscillator", value: fmt.Sprintf("{measured: [{at_utc: %s, offset_hz: %s}]}", utc(at), fixed(had+f.frequency.Parameters[0].Value, 1)), had: fixed(had, 1) + " Hz then"})
+		out = append(out, f.oscillatorOffer(tx))
 	}
 	if f.level != nil {
 		p := f.level.Parameters[0]
@@ -63,6 +62,21 @@ func (f *groupFit) offers() []offer {
 		}
 	}
 	return out
+}
+
+// oscillatorOffer states the transmitter's offset, with its drift where a log of hours tells one.
+func (f *groupFit) oscillatorOffer(place string) offer {
+	at := f.frequency.Middle
+	had := f.transmitter.Oscillator.OffsetAt(at).Hertz()
+	now := fixed(had+f.frequency.Parameters[0].Value, 1)
+	o := offer{place: place, key: "oscillator", value: fmt.Sprintf("{measured: [{at_utc: %s, offset_hz: %s}]}", utc(at), now), had: fixed(had, 1) + " Hz then"}
+	for _, p := range f.frequency.Parameters {
+		if p.Unit == measured.HertzPerDay && math.Abs(p.Value) > p.Span {
+			before := f.transmitter.Oscillator.OffsetAt(at.Add(24*time.Hour)).Hertz() - had
+			o.value = fmt.Sprintf("{offset_hz: %s, drift_hz_per_day: %s, at_utc: %s}", now, fixed(before+p.Value, 2), utc(at))
+		}
+	}
+	return o
 }
 
 // levelOffer moves what is sent; a level that is lower goes into a loss with a name.

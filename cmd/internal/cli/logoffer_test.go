@@ -5,6 +5,7 @@ import (
 	"os"
 	"strings"
 	"testing"
+	"time"
 
 	"slantwise/downlink"
 	"slantwise/downlink/measured"
@@ -132,6 +133,26 @@ func TestLevelOffers(t *testing.T) {
 		f := newGroupFit(&overLog{chosenLink: &chosenLink{transmitter: &c.tx}})
 		if o := f.levelOffer("here", c.db); o.key != c.key || o.value != c.value {
 			t.Errorf("%g dB: %s: %s, want %s: %s", c.db, o.key, o.value, c.key, c.value)
+		}
+	}
+}
+
+// TestOscillatorOffers states a drift where a log of hours tells one.
+func TestOscillatorOffers(t *testing.T) {
+	at := time.Date(2026, 9, 15, 12, 0, 0, 0, time.UTC)
+	tx := &downlink.Transmitter{Oscillator: &downlink.Oscillator{Offset: 100, Drift: 2.0 / 86400, Epoch: at}}
+	for _, c := range []struct {
+		drift measured.Parameter
+		want  string
+	}{
+		{measured.Parameter{Unit: "Hz/s", Value: 0.3, Span: 0.1}, "{measured: [{at_utc: 2026-09-15T12:00:00.000Z, offset_hz: 150.0}]}"},
+		{measured.Parameter{Unit: measured.HertzPerDay, Value: 3, Span: 4}, "{measured: [{at_utc: 2026-09-15T12:00:00.000Z, offset_hz: 150.0}]}"},
+		{measured.Parameter{Unit: measured.HertzPerDay, Value: -7.5, Span: 4}, "{offset_hz: 150.0, drift_hz_per_day: -5.50, at_utc: 2026-09-15T12:00:00.000Z}"},
+	} {
+		f := newGroupFit(&overLog{chosenLink: &chosenLink{transmitter: tx}})
+		f.frequency = &measured.Fit{Middle: at, Parameters: []measured.Parameter{{Value: 50}, {}, c.drift}}
+		if o := f.oscillatorOffer("here"); o.value != c.want || o.had != "100.0 Hz then" {
+			t.Errorf("%+v: %s, as it is %s; want %s", c.drift, o.value, o.had, c.want)
 		}
 	}
 }
