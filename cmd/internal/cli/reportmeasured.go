@@ -65,6 +65,9 @@ type loggedEntry struct {
 // around is how far outside a pass a sample is still shown with it.
 const around = time.Minute
 
+// lead is how long before and after a pass a receiver may log on without its log being of more.
+const lead = 10 * time.Minute
+
 // addMeasured puts what was logged during the pass onto its page.
 func (p *reportPlan) addMeasured(out *reports.Pass, craft *reportCraft, site *reportSite, page *reportPage) {
 	from, to := page.AOS.Add(-around), page.LOS.Add(around)
@@ -88,7 +91,7 @@ func (p *reportPlan) addMeasured(out *reports.Pass, craft *reportCraft, site *re
 		if e.fault != "" {
 			m.Faults = append(m.Faults, e.fault)
 		}
-		if e.First.Before(from) || e.Last.After(to) {
+		if e.First.Before(page.AOS.Add(-lead)) || e.Last.After(page.LOS.Add(lead)) {
 			m.Faults = append(m.Faults, fmt.Sprintf("the log covers %s to %s, more than this pass: its bytes are of all of it", utc(e.First), utc(e.Last)))
 		}
 		out.Measured = append(out.Measured, m)
