@@ -134,3 +134,12 @@ func TestLimits(t *testing.T) {
 		t.Errorf("without limits: worths %+v; a second antenna takes a as well", list)
 	}
 }
+
+// TestRoundingIsNoCost: bytes of a day in another order of summing differ in the last digits.
+func TestRoundingIsNoCost(t *testing.T) {
+	for _, row := range []struct{ value, other, want float64 }{{2e10, 2e10 - 3.05176e-05, 0}, {2e10, 2e10 - 1, 1}, {0, 0, 0}, {5, 7, -2}} {
+		if got := lost(row.value, row.other); got != row.want {
+			t.Errorf("%g against %g: cost %g, want %g", row.value, row.other, got, row.want)
+		}
+	}
+}

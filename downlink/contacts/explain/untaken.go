@@ -3,6 +3,7 @@ package explain
 import (
 	"context"
 	"fmt"
+	"math"
 	"slices"
 	"strings"
 
@@ -74,7 +75,7 @@ func window(p *contacts.Problem, plan contacts.Plan, t *solve.Trials, i int) Unt
 		u.Text = u.reason() + "; no way was found to take it even without what can be taken off"
 		return u
 	}
-	u.Possible, u.Priced, u.Cost = true, true, t.Value()-trial.Value
+	u.Possible, u.Priced, u.Cost = true, true, lost(t.Value(), trial.Value)
 	switch {
 	case u.Cost > 0:
 		u.Text = fmt.Sprintf("%s; taking it would cost at most %.6g", u.reason(), u.Cost)
@@ -84,6 +85,15 @@ func window(p *contacts.Problem, plan contacts.Plan, t *solve.Trials, i int) Unt
 		u.Text = u.reason() + "; taking it would cost nothing"
 	}
 	return u
+}
+
+// lost returns how much less a plan is worth than another. Sums of the same terms in another order
+// differ by some 1e-15 of themselves, which is no cost.
+func lost(value, other float64) float64 {
+	if d := value - other; math.Abs(d) > 1e-12*math.Abs(value) {
+		return d
+	}
+	return 0
 }
 
 // against lists what the contact breaks beside the plan.
