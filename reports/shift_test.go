@@ -165,6 +165,40 @@ func TestShiftKeepsToItsPages(t *testing.T) {
 	}
 }
 
+// The clock alone would be ambiguous on a sheet through midnight.
+func TestShiftThroughMidnight(t *testing.T) {
+	v := newShiftView(fixtureShift(10))
+	first, last := v.Blocks[0].Begin, v.Blocks[9].Begin
+	if first != "10:42:31" || last != "2026-03-11 00:57:31" {
+		t.Errorf("contacts begin at %s and %s", first, last)
+	}
+}
+
+func TestLocalSpan(t *testing.T) {
+	zone, err := time.LoadLocation("Europe/London")
+	if err != nil {
+		t.Fatal(err)
+	}
+	at := func(text string) time.Time {
+		v, err := time.Parse(time.RFC3339, text)
+		if err != nil {
+			t.Fatal(err)
+		}
+		return v
+	}
+	for _, c := range []struct{ from, to, want string }{
+		{"2026-07-01T10:00:00Z", "2026-07-01T10:10:00Z", "11:00:00 to 11:10:00 BST"},
+		{"2026-07-01T23:10:00Z", "2026-07-01T23:20:00Z", "2026-07-02 00:10:00 to 00:20:00 BST"},
+		{"2026-07-01T22:55:00Z", "2026-07-01T23:05:00Z", "23:55:00 to 2026-07-02 00:05:00 BST"},
+		// The tz database: Europe/London goes back to GMT on 25 October 2026, 01:00 UTC.
+		{"2026-10-25T00:55:00Z", "2026-10-25T01:05:00Z", "01:55:00 BST to 01:05:00 GMT"},
+	} {
+		if got := localSpan(at(c.from), at(c.to), zone); got != c.want {
+			t.Errorf("%s to %s: %s, want %s", c.from, c.to, got, c.want)
+		}
+	}
+}
+
 func TestShiftOddNames(t *testing.T) {
 	s := fixtureShift(2)
 	long := strings.Repeat("Wagtail-with-a-very-long-name", 8)

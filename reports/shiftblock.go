@@ -10,8 +10,11 @@ func newShiftBlock(s *Shift, i int) shiftBlock {
 	c := &s.Contacts[i]
 	b := shiftBlock{Number: i + 1, ID: "contact-" + fixed(float64(i+1), 0), Begin: clock(c.Start), End: clock(c.End), Spacecraft: c.Spacecraft,
 		Length: span(c.End.Sub(c.Start)) + ", " + fixed(c.Events[1].ElevationDeg, 1) + "° high"}
+	if !midnight(c.Start).Equal(midnight(s.From)) {
+		b.Begin = dayClock(c.Start) // a sheet through midnight
+	}
 	if s.Zone != nil {
-		b.Local = localText(c.Start, s.Zone, clockLayout) + " to " + localText(c.End, s.Zone, clockLayout)
+		b.Local = localSpan(c.Start, c.End, s.Zone)
 	}
 	b.Facts = c.facts()
 	for _, e := range c.Events {
@@ -79,6 +82,20 @@ func (c *ShiftContact) points(s *Shift) []shiftRow {
 	return list
 }
 
+// localSpan writes a span by the clock of a zone: with the date where it is another than in UTC, and
+// the zone's name once where the clock is not changed within it.
+func localSpan(from, to time.Time, zone *time.Location) string {
+	first, last := localText(from, zone, clockLayout), localText(to, zone, clockLayout)
+	name, _ := from.In(zone).Zone()
+	if after, _ := to.In(zone).Zone(); after == name {
+		first = strings.TrimSuffix(first, " "+name)
+	}
+	if date, _, ok := strings.Cut(first, " "); ok && strings.HasPrefix(last, date+" ") {
+		last = strings.TrimPrefix(last, date+" ")
+	}
+	return first + " to " + last
+}
+
 // shiftLocalRow has the zone's name once where the clock is not changed within the contact.
 func shiftLocalRow(c *ShiftContact, zone *time.Location) shiftRow {
 	r := shiftRow{Name: "local"}
@@ -87,7 +104,7 @@ func shiftLocalRow(c *ShiftContact, zone *time.Location) shiftRow {
 	for _, e := range c.Events {
 		name, _ := e.Time.In(zone).Zone()
 		one = one && name == first
-		r.Cells = append(r.Cells, localText(e.Time, zone, clockLayout))
+		r.Cells = append(r.Cells, e.Time.Round(time.Second).In(zone).Format(clockLayout+" MST")) // the date stands at the head
 	}
 	if one {
 		r.Name += ", " + first
