@@ -33,6 +33,12 @@ func (d *dishStudy) mountText(a *sizing.Answer) []string {
 		}
 		return fmt.Sprintf("%s a day (%.2f %%, %.0f s a day)", bytesText(o.MountLostBytesPerDay), share, o.NotFollowedSPerDay)
 	}
+	if a.Now.NotFollowedSPerDay == 0 && (a.Then == nil || a.Then.NotFollowedSPerDay == 0) && a.Limit.Turning == 0 {
+		if a.Then == nil {
+			return []string{"The mounts follow all of every pass with your dishes."}
+		}
+		return []string{"The mounts follow all of every pass, with your dishes and with the least that meets all."}
+	}
 	text := "What the mounts do not follow, by slewing and the keyhole, takes " + lost(a.Now) + " with your dishes"
 	if with < of {
 		text = fmt.Sprintf("What the mounts of %d of %d sites do not follow, by slewing and the keyhole, takes %s with your dishes", with, of, lost(a.Now))
