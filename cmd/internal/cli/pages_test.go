@@ -24,6 +24,7 @@ type looked struct {
 // The window is short, so that making the pages takes less time than looking at them.
 var lookedPages = []looked{
 	{name: "index", page: written("report", "--into", "out"), charts: 1, sheets: [2]int{2, 5}},
+	{name: "summary", page: beside(filepath.Join("out", "week.html"), "report", "--static", "--into", "out"), charts: 1, sheets: [2]int{1, 8}, quick: true},
 	{name: "pass", page: passOf("report", "--into", "out", "--station", "Skerry Point", "--spacecraft", "Wagtail 1"), charts: 12, sheets: [2]int{5, 9}},
 	{name: "pass without radio", page: passOf("report", "--into", "out", "--station", "Acacia Ridge", "--spacecraft", "Wagtail 1"), charts: 3, sheets: [2]int{2, 5}},
 	{name: "index without script", page: written("report", "--static", "--into", "out", "--spacecraft", "Wagtail 1"), charts: 1, sheets: [2]int{2, 4}, quick: true},
