@@ -21,6 +21,7 @@ type pending struct {
 type simulation struct {
 	plan    *Plan
 	queues  []queue
+	makings []making
 	pending []pending // in the order of sending, from waits on
 	waits   int
 	held    float64 // bytes of pending
@@ -54,10 +55,12 @@ func Simulate(p *Plan) (*Result, error) {
 		s.lines[l.Station] = &lineState{rate: l.BytesPerSecond}
 	}
 	for i, c := range p.Classes {
+		s.makings = append(s.makings, newMaking(c.Made))
 		s.queues[i].add(parcel{-c.OnBoardAge, -c.OnBoardAge, c.OnBoard})
 	}
 	s.ack = p.acks()
 	events := s.events()
+	s.arrivals = make([]arrival, 0, 2*len(events)) // grown arrivals of a year cost more than the simulation
 	s.point(0)
 	for i := 1; i < len(events); i++ {
 		s.acknowledge(events[i-1])
@@ -181,13 +184,8 @@ func (s *simulation) stepAt(t float64) *Step {
 // madeRates fills in what is made between two events.
 func (s *simulation) madeRates(from, to float64) {
 	middle := (from + to) / 2
-	for i := range s.plan.Classes {
-		s.flow.made[i] = 0
-		for _, m := range s.plan.Classes[i].Made {
-			if m.From < middle && middle < m.To {
-				s.flow.made[i] += m.BytesPerSecond
-			}
-		}
+	for i := range s.makings {
+		s.flow.made[i] = s.makings[i].rate(middle)
 	}
 }
 
