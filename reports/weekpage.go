@@ -30,6 +30,12 @@ type weekTable struct {
 	Rows             []periodView
 }
 
+// Unbroken returns a text of two quantities that a narrow column breaks between them alone.
+func (weekTable) Unbroken(s string) string {
+	const hard = "\u00a0"
+	return strings.NewReplacer(" of ", " of"+hard, " to ", " to"+hard, ", ", ", ", " ", hard).Replace(s)
+}
+
 // periodView is a line of it; texts as they are to be read.
 type periodView struct {
 	Name, Note            string

@@ -227,6 +227,8 @@ func (r *dishReport) addLimits(out *reports.Dish) {
 		case math.IsNaN(v):
 		case u == "bit/s":
 			text = scaled(v, u)
+		case v < 0:
+			text = fmt.Sprintf("−%.4g %s", -v, u)
 		default:
 			text = fmt.Sprintf("%.4g %s", v, u)
 		}

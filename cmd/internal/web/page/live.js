@@ -17,9 +17,18 @@ function draw(into, kind, attributes, text) {
   into.append(e);
   return e;
 }
-const show = (v, digits = 1) => v === null || v === undefined ? "–" : v.toFixed(digits).replace(/^-(0(\.0*)?)$/, "$1");
+const show = (v, digits = 1) => v === null || v === undefined ? "–" : v.toFixed(digits).replace(/^-(0(\.0*)?)$/, "$1").replace(/^-/, "−");
+// volume has the digits that the report's pages have.
+function volume(bytes) {
+  if (bytes === null || bytes === undefined) return "–";
+  const [unit, divisor] = [["TB", 1e12], ["GB", 1e9], ["MB", 1e6], ["kB", 1e3]].find(s => bytes >= s[1]) || ["B", 1];
+  const x = bytes / divisor;
+  return x.toFixed(divisor === 1 || x >= 100 ? 0 : x >= 10 ? 1 : 2) + " " + unit;
+}
 const stamp = t => new Date(t).toISOString().slice(0, 19).replace("T", " ");
 const hour = t => new Date(t).toISOString().slice(11, 19);
+const day = t => new Date(t).toISOString().slice(5, 10);
+const dated = t => (day(t) === day(state.now_utc) ? "" : day(t) + " ") + hour(t);
 const now = () => Date.parse(state.now_utc) + (performance.now() - heard) * state.speed;
 const called = c => c.spacecraft + " over " + c.station + (c.transmitter ? ", " + c.transmitter : "");
 function span(ms) {
@@ -57,7 +66,7 @@ function fill() {
   }
   headline(byID);
   if (!state.signals.length) row($("signals"), "no contact is under way", []);
-  const list = state.next.map(c => c.id).join() + state.generation + chosen;
+  const list = state.next.map(c => c.id).join() + state.generation + chosen + day(state.now_utc);
   if (list !== shownNext) {
     const had = document.activeElement?.dataset?.contact;
     shownNext = list;
@@ -66,7 +75,7 @@ function fill() {
     for (const c of state.next) {
       const b = make("button", called(c), {type: "button", "data-contact": c.id, "aria-pressed": c.id === chosen});
       b.addEventListener("click", () => choose(c.id));
-      const tr = row($("next"), b, [{text: "", until: c.aos_utc}, hour(c.aos_utc), hour(c.los_utc), show(c.max_elevation_deg), show(c.aos_azimuth_deg, 0) + ", " + show(c.los_azimuth_deg, 0)]);
+      const tr = row($("next"), b, [{text: "", until: c.aos_utc}, dated(c.aos_utc), dated(c.los_utc), show(c.max_elevation_deg), show(c.aos_azimuth_deg, 0) + ", " + show(c.los_azimuth_deg, 0)]);
       if (c.id === chosen) tr.className = "chosen";
       if (c.id === had) b.focus();
     }
@@ -92,7 +101,7 @@ async function choose(id) {
     $("chosen").hidden = false;
     $("refused").textContent = "";
     $("chosen-title").textContent = called(d);
-    $("chosen-facts").textContent = `${stamp(d.aos_utc)} to ${hour(d.los_utc)} UTC` + (d.mode ? `, mode ${d.mode}, ${show(d.bytes === null ? null : d.bytes / 1e6)} MB` : "") + ".";
+    $("chosen-facts").textContent = `${stamp(d.aos_utc)} to ${hour(d.los_utc)} UTC` + (d.mode ? `, mode ${d.mode}, ${volume(d.bytes)}` : "") + ".";
     $("mode").replaceChildren(make("option", "the one that brings most", {value: ""}), ...d.modes.map(m => make("option", m, {value: m})));
     const has = {dish_m: d.dish_m, power_w: d.power_w, least_elevation_deg: d.minimum_elevation_deg, pointing_error_deg: d.pointing_error_deg, exceeded_percent: d.exceeded_percent};
     for (const n of numbers) {
@@ -128,7 +137,7 @@ async function work() {
     $("share").href = location.href;
     $("outcomes").replaceChildren();
     for (const [head, o] of [["as in the scenario", a.before], ["with the changes", a.after]])
-      row($("outcomes"), head, o.used ? [o.mode || "–", show(o.seconds, 0), show(o.least_margin_db), show(o.greatest_margin_db), show(o.bytes === null ? null : o.bytes / 1e6)] : ["never that high", "0", "–", "–", "0.0"]);
+      row($("outcomes"), head, o.used ? [o.mode || "–", show(o.seconds, 0), show(o.least_margin_db), show(o.greatest_margin_db), volume(o.bytes)] : ["never that high", "0", "–", "–", "0 B"]);
   } catch (e) {
     $("answer").hidden = $("keep").hidden = true;
     $("refused").textContent = e.message;
