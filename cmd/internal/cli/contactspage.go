@@ -131,7 +131,7 @@ func (a *planAnswer) timeline(ctx context.Context) (*reports.Timeline, *planPage
 	t := &reports.Timeline{
 		Head: "Contact plan", From: p.At(0), To: p.At(p.Length), Answer: a.gain() + "; " + gapText(r) + ".",
 		Lines: []string{
-			fmt.Sprintf("Value %.6g, and no plan is worth more than %.6g.", r.Value, r.Bound),
+			"Value " + fixed(r.Value, 0) + ", and no plan is worth more than " + fixed(r.Bound, 0) + ".",
 			fmt.Sprintf("Planned at %s for %s to %s.", utc(p.At(p.Now)), utc(p.At(0)), utc(p.At(p.Length))),
 		}, Notes: p.notes, Basis: a.basis(),
 	}
