@@ -121,7 +121,9 @@ func TestStreamOutlivesTheTimeToAsk(t *testing.T) {
 func TestReaderWhoTakesNothing(t *testing.T) {
 	c := config()
 	c.First = &fakeModel{name: strings.Repeat("long ", 100_000)} // fills any buffer on the way
-	s := newServer(c, hasty())
+	l := hasty()
+	l.slowest = time.Second // long enough for the one who reads on a busy machine
+	s := newServer(c, l)
 	address := startServer(t, s)
 	idle := dialServer(t, address)
 	fmt.Fprintf(idle, "GET /events HTTP/1.1\r\nHost: %s\r\n\r\n", address)
@@ -202,7 +204,9 @@ func TestCostlyQuestions(t *testing.T) {
 	m := &heavyModel{}
 	c := config()
 	c.First = m
-	address := startServer(t, newServer(c, hasty()))
+	l := hasty()
+	l.slowest = usualLimits().slowest // a busy machine must not cut off those that are told to come back
+	address := startServer(t, newServer(c, l))
 	var wg sync.WaitGroup
 	var late, failed atomic.Int32
 	for range 12 {
