@@ -124,6 +124,9 @@ func (o *dishOptions) check() error {
 	if m := o.diameter; m != nil && !(*m > 0 && *m <= 1000) {
 		return inputErrorf("--diameter-m: %g m is not allowed; it must be greater than 0 and at most 1000 m", *m)
 	}
+	if used := []string{"sensitivities", "chances", "limits"}; o.diameter != nil && o.report == "" && o.pdf == "" && !slices.Contains(used, o.show) {
+		return inputErrorf("--diameter-m goes with --show sensitivities, chances or limits, --report or --pdf; --show %s is about all diameters", o.show)
+	}
 	return nil
 }
 

@@ -255,6 +255,8 @@ func TestDishFlagsRefuse(t *testing.T) {
 		{"--show maps", "it must be \"answer\", \"trade\""},
 		{"--axis colour", "it must be power, elevation, noise or frequency"},
 		{"--diameter-m 0", "it must be greater than 0"},
+		{"--diameter-m 5", "--diameter-m goes with --show sensitivities"},
+		{"--show trade --diameter-m 5", "--diameter-m goes with --show sensitivities"},
 		{"--days 3", "days: 3 d"},
 	} {
 		code, _, errOut := invoke(t, append([]string{"dish", "--scenario", file}, strings.Fields(c.args)...)...)
