@@ -11,8 +11,8 @@ const HertzPerDay, longLog = "Hz/d", 6 * time.Hour
 
 // FitFrequency fits measured less predicted frequency: an offset of the transmitter at
 // the middle of the samples, with drift its change with time, and how much later than the
-// elements say the spacecraft flies (greater than 0: late). The time offset is taken to
-// first order in the rate of the frequency, which holds for some seconds.
+// elements say the spacecraft comes by on its own orbit, at rest in space (greater than 0: late).
+// The time offset is taken to first order, which holds for some seconds.
 func FitFrequency(points []Point, drift bool) (*Fit, error) {
 	var t, y, rate []float64
 	var rows []int

@@ -42,13 +42,13 @@ func (p *Prediction) lateAt(t time.Time, late float64) (f float64, up, ok bool) 
 	if err != nil {
 		return 0, false, false
 	}
-	look := p.Frame.Look(turned(s, late))
+	look := p.Frame.Look(Turned(s, late))
 	return p.Carrier(t).Hertz() * (1 - float64(look.RangeRate)/unit.SpeedOfLight), look.Elevation >= 0, true
 }
 
-// turned is a state in Earth-fixed axes as it stands in those of so many seconds later, the orbit
-// at rest in space.
-func turned(s orbit.State, seconds float64) orbit.State {
+// Turned returns a state in Earth-fixed axes as it stands in those of so many seconds later (less
+// than 0: earlier), the orbit at rest in space. Velocities stay relative to the turning Earth.
+func Turned(s orbit.State, seconds float64) orbit.State {
 	sin, cos := math.Sincos(earthRate * seconds)
 	turn := func(v orbit.Vec3) orbit.Vec3 { return orbit.Vec3{X: v.X*cos + v.Y*sin, Y: v.Y*cos - v.X*sin, Z: v.Z} }
 	return orbit.State{Position: turn(s.Position), Velocity: turn(s.Velocity)}

@@ -37,7 +37,7 @@ type Point struct {
 	AzimuthDeg           float64
 	ElevationDeg         float64
 	PredictedFrequencyHz float64
-	FrequencyRateHzS     float64 // of the predicted frequency
+	FrequencyRateHzS     float64 // of the predicted frequency along the orbit, the Earth held
 	// AzimuthRateDegS and ElevationRateDegS are of the prediction; NaN at the ends of the orbit.
 	AzimuthRateDegS, ElevationRateDegS float64
 	PowerDBm, CN0DBHz                  float64 // predicted; NaN outside
@@ -132,25 +132,33 @@ func (p *Prediction) Over(samples []Sample) ([]Point, error) {
 	return out, nil
 }
 
-// rates fills in what is received to first order, f (1 - ṙ/c), and how fast it and the
-// direction change; rates are NaN at the ends of the orbit.
+// rates fills in what is received to first order, f (1 - ṙ/c), how fast it changes along the orbit
+// with the Earth held, which is what a late spacecraft shifts, and how fast the direction changes;
+// rates are NaN at the ends of the orbit.
 func (p *Prediction) rates(pt *Point) {
-	at := func(t time.Time) (f float64, look station.Look) {
+	at := func(t time.Time) (look station.Look, ok bool) {
 		s, err := p.Orbit.At(t)
 		if err != nil {
-			return math.NaN(), look
+			return look, false
 		}
-		look = p.Frame.Look(s)
-		return p.Carrier(t).Hertz() * (1 - float64(look.RangeRate)/unit.SpeedOfLight), look
+		return p.Frame.Look(s), true
+	}
+	pt.PredictedFrequencyHz, pt.FrequencyRateHzS = math.NaN(), math.NaN()
+	if f, _, ok := p.lateAt(pt.At, 0); ok {
+		pt.PredictedFrequencyHz = f
 	}
 	const half = 500 * time.Millisecond
-	pt.PredictedFrequencyHz, _ = at(pt.At)
-	f0, before := at(pt.At.Add(-half))
-	f1, after := at(pt.At.Add(half))
-	pt.FrequencyRateHzS = f1 - f0
-	if !math.IsNaN(pt.FrequencyRateHzS) {
-		pt.ElevationRateDegS = (after.Elevation - before.Elevation).Degrees()
-		pt.AzimuthRateDegS = math.Remainder((after.Azimuth - before.Azimuth).Degrees(), 360)
+	before, ok0 := at(pt.At.Add(-half))
+	after, ok1 := at(pt.At.Add(half))
+	if !ok0 || !ok1 {
+		return
+	}
+	pt.ElevationRateDegS = (after.Elevation - before.Elevation).Degrees()
+	pt.AzimuthRateDegS = math.Remainder((after.Azimuth - before.Azimuth).Degrees(), 360)
+	f0, _, ok0 := p.lateAt(pt.At, half.Seconds())
+	f1, _, ok1 := p.lateAt(pt.At, -half.Seconds())
+	if ok0 && ok1 {
+		pt.FrequencyRateHzS = f1 - f0
 	}
 }
 

@@ -12,6 +12,7 @@ import (
 	"slantwise/cmd/internal/atomicfile"
 	"slantwise/cmd/internal/scenario"
 	"slantwise/downlink"
+	"slantwise/downlink/measured"
 	"slantwise/orbit"
 	"slantwise/orbit/unit"
 	"slantwise/station"
@@ -177,7 +178,7 @@ func (h *rehearsal) row(g downlink.Geometry, eph *orbit.Ephemeris, w io.Writer) 
 	if err != nil {
 		return err
 	}
-	_, rate := h.link.GeometryOf(g.Time, eph.StateAt(eph.Seconds(g.Time.Add(-rehearsalLate))))
+	_, rate := h.link.GeometryOf(g.Time, measured.Turned(eph.StateAt(eph.Seconds(g.Time.Add(-rehearsalLate))), rehearsalLate.Seconds()))
 	f := h.transmitter.Frequency + h.transmitter.Oscillator.OffsetAt(g.Time) + h.link.Doppler(rate)
 	off, tone := rehearsalLevelDB+rehearsalNoiseDB*h.rng.NormFloat64(), rehearsalNoiseHz*h.rng.NormFloat64()
 	hertz := fixed(f.Hertz()+rehearsalOffsetHz+tone, 1)
