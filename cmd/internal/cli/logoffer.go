@@ -36,6 +36,11 @@ func (f *groupFit) offers() []offer {
 	dish := "station " + f.station.Site.Name + ", antenna " + f.antenna.Name
 	if f.frequency != nil {
 		out = append(out, f.oscillatorOffer(tx))
+		for _, p := range f.frequency.Parameters {
+			if p.Unit == "s" && math.Abs(p.Value) > p.Span {
+				out = append(out, f.latenessOffer(p.Value))
+			}
+		}
 	}
 	if f.level != nil {
 		p := f.level.Parameters[0]
@@ -77,6 +82,12 @@ func (f *groupFit) oscillatorOffer(place string) offer {
 		}
 	}
 	return o
+}
+
+// latenessOffer adds to how late the spacecraft flies along its orbit; the passes move with it.
+func (f *groupFit) latenessOffer(s float64) offer {
+	had := f.spacecraft.Shift.Late.Seconds()
+	return offer{place: "spacecraft " + f.spacecraft.Name, key: "time_offset_s", value: fixed(had+s, 3), had: fixed(had, 3)}
 }
 
 // levelOffer moves what is sent; a level that is lower goes into a loss with a name.
