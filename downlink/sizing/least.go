@@ -50,7 +50,7 @@ const resolution = 5e-4
 type Found struct {
 	Diameter unit.Length // the least that meets all; 0: none does
 	Most     unit.Length // the greatest of the stretch that begins there, at most the range's end
-	Nearest  *Outcome    // where none does, what comes nearest: the worst requirement missed by the least share
+	Nearest  *Outcome    // where none does, what comes nearest: the worst requirement missed by the least share, then the next
 }
 
 // Least returns the least diameter of a range that meets some requirements together.
@@ -229,65 +229,4 @@ func (q *search) last(d unit.Length) (unit.Length, error) {
 		return d, nil
 	}
 	return d, nil
-}
-
-// nearest returns the outcome whose worst requirement is missed by the least share, by
-// the grid and a search around its best.
-func (q *search) nearest() (*Outcome, error) {
-	var best *Outcome
-	at := 0
-	look := func(d unit.Length) (float64, error) {
-		o, err := q.study.outcome(q.at(d), q.parts)
-		if err != nil {
-			return 0, err
-		}
-		v := q.worst(o)
-		if best == nil || v > q.worst(best) {
-			best = o
-		}
-		return v, nil
-	}
-	for i, d := range q.grid {
-		before := best
-		if _, err := look(d); err != nil {
-			return nil, err
-		}
-		if best != before {
-			at = i
-		}
-	}
-	low, high := q.grid[max(at-1, 0)].Metres(), q.grid[min(at+1, len(q.grid)-1)].Metres()
-	const golden = 0.6180339887498949
-	for high-low > 0.01*high {
-		c, d := high-golden*(high-low), low+golden*(high-low)
-		vc, err := look(unit.Length(c))
-		if err != nil {
-			return nil, err
-		}
-		vd, err := look(unit.Length(d))
-		if err != nil {
-			return nil, err
-		}
-		if vc >= vd {
-			high = d
-		} else {
-			low = c
-		}
-	}
-	return best, nil
-}
-
-// worst returns the greatest miss of an outcome as a negative share of what is
-// required; decibels as tenths of ten.
-func (q *search) worst(o *Outcome) float64 {
-	worst := math.Inf(1)
-	for i := range q.needs {
-		n := &q.needs[i]
-		scale := math.Abs(n.Required)
-		if n.Unit == "dB" || scale == 0 {
-			scale = 10
-		}
-		worst = min(worst, n.Over(o)/scale)
-	}
-	return worst
 }

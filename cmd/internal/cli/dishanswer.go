@@ -231,7 +231,7 @@ func (d *dishStudy) misses(a *sizing.Answer) string {
 			alone = append(alone, fmt.Sprintf("%s alone needs %s to %s", requirementText(v.Kind), metres(v.Alone.Diameter.Metres()), metres(v.Alone.Most.Metres())))
 		}
 	}
-	text := fmt.Sprintf("%s comes nearest, where %s (nearest: the requirement that is missed by the greatest share of what is required is missed by the least; 10 dB count as a whole)",
+	text := fmt.Sprintf("%s comes nearest, where %s (nearest: the requirement that is missed by the greatest share of what is required is missed by the least, then the next; 10 dB count as a whole)",
 		metres(n.Variant.Diameter.Metres()), strings.Join(parts, " and "))
 	if len(alone) > 0 {
 		text += "; " + strings.Join(alone, ", ")
