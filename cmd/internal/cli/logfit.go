@@ -36,8 +36,9 @@ FILE or passes of the logbook (those of one link together):
 The noise of samples is taken as correlated from one to the next, and levels are
 predicted under a clear sky. What is left out (outliers, dropouts, a saturated receiver,
 rain by what was logged or by the look of it) is counted, and it is said what the data
-cannot tell apart. What stands out is offered as values for the scenario, each with the
-margin in the middle of the log and the bytes of the window's passes before and after.`,
+cannot tell apart. What stands out is offered as values for the scenario, with the
+margin in the middle of the log and the bytes of the window's passes before and after
+where they change them.`,
 		Example: `  slantwise log fit rehearsal.csv --spacecraft "Wagtail 1" --station "Skerry Point" --mode safe
   slantwise log fit --entry all`,
 		RunE: func(cmd *cobra.Command, _ []string) error { return runLogFit(cmd.Context(), env, &o) },

@@ -1,6 +1,7 @@
 package web
 
 import (
+	"bytes"
 	"context"
 	"encoding/json"
 	"errors"
@@ -17,12 +18,17 @@ func decode(w http.ResponseWriter, r *http.Request, into any) bool {
 		refuse(w, http.StatusUnsupportedMediaType, "the question must be application/json")
 		return false
 	}
-	d := json.NewDecoder(http.MaxBytesReader(w, r.Body, maxBody))
-	d.DisallowUnknownFields()
-	err := d.Decode(into)
+	body, err := io.ReadAll(http.MaxBytesReader(w, r.Body, maxBody))
 	if err == nil {
-		if _, more := d.Token(); more != io.EOF {
-			err = errors.New("something follows the question")
+		err = exactKeys(body, into)
+	}
+	if err == nil {
+		d := json.NewDecoder(bytes.NewReader(body))
+		d.DisallowUnknownFields()
+		if err = d.Decode(into); err == nil {
+			if _, more := d.Token(); more != io.EOF {
+				err = errors.New("something follows the question")
+			}
 		}
 	}
 	switch {

@@ -146,6 +146,9 @@ func questionOf(query string) (*Question, error) {
 		return nil, fmt.Errorf("the question cannot be read: %w", err)
 	}
 	var q Question
+	if err := exactKeys(body, &q); err != nil {
+		return nil, fmt.Errorf("the question cannot be read: %w", err)
+	}
 	d := json.NewDecoder(strings.NewReader(string(body)))
 	d.DisallowUnknownFields()
 	if err := d.Decode(&q); err != nil {
