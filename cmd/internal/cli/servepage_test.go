@@ -68,7 +68,7 @@ func TestLivePage(t *testing.T) {
 	viewing.Show(t, ctx, link, viewing.Screen{Width: 1440, Scheme: "light"})
 	until(t, ctx, `document.querySelectorAll("#outcomes tr").length === 2 && document.querySelectorAll("#map-moving text").length > 3`)
 	got := viewing.Ask[[]string](t, ctx, `[...document.querySelectorAll("#outcomes tr:last-child td")].map(e => e.textContent)`)
-	if len(got) != 5 || got[0] != "middle" || got[4] != fmt.Sprintf("%.1f", float64(want.After.Bytes)/1e6) || got[2] != fmt.Sprintf("%.1f", float64(want.After.LeastMarginDB)) {
+	if len(got) != 5 || got[0] != "middle" || got[4] != fmt.Sprintf("%.3g MB", float64(want.After.Bytes)/1e6) || got[2] != fmt.Sprintf("%.1f", float64(want.After.LeastMarginDB)) {
 		t.Errorf("the page answers %q, the JSON %+v", got, want.After)
 	}
 
