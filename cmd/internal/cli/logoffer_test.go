@@ -46,6 +46,7 @@ func TestOffersCloseTheLoop(t *testing.T) {
 		return o.Value
 	}
 	replace("extra_losses: [{name: spacecraft pointing, loss_db: 0.5}]", "extra_losses: "+offered("extra_losses")+"\n        oscillator: "+offered("oscillator"))
+	replace("- name: Wagtail 1\n", "- name: Wagtail 1\n    time_offset_s: "+offered("time_offset_s")+"\n")
 	replace("noise_temperature_k: 55", "noise_temperature_k: "+offered("noise.receiver_chain, low-noise amplifier, noise_temperature_k"))
 	mask, _, _ := strings.Cut(offered("horizon_mask"), ", horizon_mask_kind")
 	replace("horizon_mask_file: skyline.csv", "horizon_mask: "+mask)
@@ -54,9 +55,9 @@ func TestOffersCloseTheLoop(t *testing.T) {
 		t.Fatal(err)
 	}
 	again := fitOf(t, append([]string{"r.csv"}, who...)...)
-	again.holds(t, map[string]float64{"offset": 0, "added noise temperature": 0, "transmitter offset": 0, "skyline over the known one at 0 deg": 0})
+	again.holds(t, map[string]float64{"offset": 0, "added noise temperature": 0, "transmitter offset": 0, "time offset of the elements": 0, "skyline over the known one at 0 deg": 0})
 	for _, o := range again.Offers {
-		if o.Key != "oscillator" && o.Key != "horizon_mask" && o.Key != "time_offset_s" { // the lateness is taken in a test of its own
+		if o.Key != "oscillator" && o.Key != "horizon_mask" {
 			t.Errorf("after all was taken, %s: %s is offered", o.Key, o.Value)
 		}
 	}
@@ -66,42 +67,6 @@ func TestOffersCloseTheLoop(t *testing.T) {
 	}
 	if math.Abs(*all.MarginAfter-*mended.MarginBefore) > 0.02 || math.Abs(*all.BytesAfter / *mended.BytesBefore - 1) > 2e-3 {
 		t.Errorf("promised %.2f dB and %.0f B, then %.2f dB and %.0f B", *all.MarginAfter, *all.BytesAfter, *mended.MarginBefore, *mended.BytesBefore)
-	}
-}
-
-// TestLatenessOfferClosesTheLoop flies the elements as late as is offered: nothing is left to offer.
-func TestLatenessOfferClosesTheLoop(t *testing.T) {
-	dir := t.TempDir()
-	if err := os.CopyFS(dir, os.DirFS("../scenario/demo")); err != nil {
-		t.Fatal(err)
-	}
-	t.Chdir(dir)
-	who := []string{"--spacecraft", "Wagtail 1", "--station", "Skerry Point", "--mode", "safe"}
-	if code, _, errOut := invoke(t, append([]string{"log", "rehearse", "--full", "--passes", "6", "--into", "r.csv"}, who...)...); code != ExitAnswer {
-		t.Fatal(errOut)
-	}
-	o := fitOf(t, append([]string{"r.csv"}, who...)...).offer("time_offset_s")
-	if o == nil {
-		t.Fatal("no lateness is offered")
-	}
-	text, err := os.ReadFile("slantwise.yaml")
-	if err != nil {
-		t.Fatal(err)
-	}
-	name := "- name: Wagtail 1\n"
-	i := strings.Index(string(text), name)
-	if i < 0 {
-		t.Fatalf("%q is not in the demo", name)
-	}
-	i += len(name)
-	text = []byte(string(text[:i]) + "    time_offset_s: " + o.Value + "\n" + string(text[i:]))
-	if err := os.WriteFile("slantwise.yaml", text, 0o600); err != nil {
-		t.Fatal(err)
-	}
-	again := fitOf(t, append([]string{"r.csv"}, who...)...)
-	again.holds(t, map[string]float64{"time offset of the elements": 0})
-	if o := again.offer("time_offset_s"); o != nil {
-		t.Errorf("after it was taken, %s is offered", o.Value)
 	}
 }
 
