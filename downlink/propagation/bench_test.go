@@ -65,9 +65,9 @@ func BenchmarkNewPath(b *testing.B) {
 
 func BenchmarkGasSpecificAttenuation(b *testing.B) {
 	b.ReportAllocs()
-	a := Air{DryPressure: 1013.25 * Hectopascal, Temperature: 288.15, Vapour: 7.5 * GramPerCubicMetre}
+	var n notes
 	for b.Loop() {
-		if _, _, err := GasSpecificAttenuation(26.25*unit.Gigahertz, a); err != nil {
+		if _, err := gasSpecificChecked(26.25, 1013.25, 288.15, 7.5, &n); err != nil {
 			b.Fatal(err)
 		}
 	}

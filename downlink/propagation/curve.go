@@ -66,13 +66,3 @@ func (c Curve) At(p Exceedance) (float64, error) {
 	w := math.Log(float64(p/a.P)) / math.Log(float64(b.P/a.P))
 	return a.Value + w*(b.Value-a.Value), nil
 }
-
-// MeanTemperature returns the annual mean of twelve monthly mean temperatures,
-// weighted by the days of the months (February 28.25).
-func MeanTemperature(months [12]unit.Temperature) unit.Temperature {
-	var sum float64
-	for i, t := range months {
-		sum += daysOfMonth[i] * t.Kelvins()
-	}
-	return unit.Temperature(sum / 365.25)
-}

@@ -107,6 +107,12 @@ func AntennaRise(d Disc, gain unit.DB, beamwidth, offAxis unit.Angle) (unit.Temp
 	return d.Brightness * unit.Temperature(gain.Ratio()*sum/(4*math.Pi)), nil
 }
 
+// Gauss-Legendre nodes and weights of order 4 (Abramowitz and Stegun, table 25.4).
+var (
+	gaussNodes   = [4]float64{-0.861136311594053, -0.339981043584856, 0.339981043584856, 0.861136311594053}
+	gaussWeights = [4]float64{0.347854845137454, 0.652145154862546, 0.652145154862546, 0.347854845137454}
+)
+
 // halfCircle holds the cosines of the middles of sixteen equal arcs of half a circle.
 var halfCircle = func() (c [16]float64) {
 	for i := range c {

@@ -2,20 +2,14 @@ package propagation
 
 import (
 	"math"
-
-	"slantwise/orbit/unit"
 )
 
-// WetRefractivity returns the wet term of the radio refractivity in N-units from a
+// wetRefractivity returns the wet term of the radio refractivity in N-units from a
 // temperature and a density of water vapour. Source: Rec. ITU-R P.453-14, equations
 // (2) and (10), e = rho T/216.7.
 //
 // From the surface's annual figures it only estimates the median that the
 // Recommendation's map holds: within 5 % at sea level, 18 % low at a site 2.5 km high.
-func WetRefractivity(t unit.Temperature, rho VapourDensity) (float64, error) {
-	return wetRefractivity(t.Kelvins(), rho.GramsPerCubicMetre())
-}
-
 func wetRefractivity(tK, rhoGM3 float64) (float64, error) {
 	if err := firstError(checkAirTemperature(tK), notNegative("water vapour density", rhoGM3, "g/m3")); err != nil {
 		return 0, err
@@ -32,14 +26,10 @@ func refractivity(dryHPa, eHPa, tK float64) float64 { return 77.6*dryHPa/tK + we
 // equation (10).
 func vapourPressure(rhoGM3, tK float64) float64 { return rhoGM3 * tK / 216.7 }
 
-// WetRefractivityOfHumidity returns the wet term in N-units from a temperature of
+// wetOfHumidity returns the wet term in N-units from a temperature of
 // -40 °C to 50 °C, a relative humidity over liquid water as a fraction, and the total
 // pressure: P.618-14 §2.4.1 steps 1 and 2. Source: Rec. ITU-R P.453-14, equations (8)
 // and (9) with the coefficients for water.
-func WetRefractivityOfHumidity(t unit.Temperature, relativeHumidity float64, total Pressure) (float64, error) {
-	return wetOfHumidity(t.Kelvins(), relativeHumidity, total.Hectopascals())
-}
-
 func wetOfHumidity(tK, relativeHumidity, totalHPa float64) (float64, error) {
 	err := firstError(within("temperature", tK, "K", 233.15, 323.15, "give it in kelvin"),
 		within("relative humidity", relativeHumidity, "", 0, 1, "give a fraction"), within("pressure", totalHPa, "hPa", 1, 1200, "give it in hPa"))

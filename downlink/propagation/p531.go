@@ -3,8 +3,6 @@ package propagation
 import (
 	"math"
 
-	"gonum.org/v1/gonum/mathext"
-
 	"slantwise/orbit/unit"
 )
 
@@ -89,22 +87,4 @@ func place(nodes []float64, v float64) (w float64, i int) {
 		i++
 	}
 	return math.Log(v/nodes[i]) / math.Log(nodes[i+1]/nodes[i]), i
-}
-
-// ScintillationOfIndex returns the fade exceeded for a share q of the time during
-// which scintillation of index S4 at a frequency lasts, at frequency f. The index
-// falls with f^-1.5; it must come out in (0, 1]: above, scattering is full. The power
-// follows Nakagami's distribution with m = 1/S4². Source: Rec. ITU-R P.531-14 §4.
-func ScintillationOfIndex(s4 float64, at, f unit.Frequency, q float64) (unit.DB, error) {
-	err := firstError(positive("frequency", at.Gigahertz(), "GHz"), positive("frequency", f.Gigahertz(), "GHz"),
-		within("scintillation index", s4, "", 1e-3, 1, ""), within("share of the time", q, "", 1e-6, 0.5, ""))
-	if err != nil {
-		return 0, err
-	}
-	scaled := s4 * math.Pow(float64(f/at), -1.5)
-	if err := within("scintillation index at the frequency", scaled, "", 1e-3, 1, "it scales with f^-1.5"); err != nil {
-		return 0, err
-	}
-	m := 1 / (scaled * scaled)
-	return unit.DB(math.Max(0, -10*math.Log10(mathext.GammaIncRegInv(m, q)/m))), nil
 }

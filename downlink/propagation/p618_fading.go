@@ -3,8 +3,6 @@ package propagation
 import (
 	"fmt"
 	"math"
-
-	"slantwise/orbit/unit"
 )
 
 // LowPath says where a path under 5° runs, for the coefficient C0 of P.618-14 Table 3.
@@ -12,28 +10,6 @@ type LowPath struct {
 	GradientExceeded Exceedance // of the worst month in which refractivity falls by more than 100 N/km in the lowest 100 m (P.453's pL)
 	WaterFraction    float64    // share of the path over water or its coast, 0 to 1
 	WorstMonth       bool       // the average worst month in place of the average year
-}
-
-// LowAngleFade returns the fade of scintillation, beam spreading and multipath
-// together that is exceeded for p, at a geometric elevation of 0.5° to 5°, and
-// warnings: the deep part from 25 dB up by P.618-14 §2.4.2, the shallow part by the
-// transition of §2.4.3 to ScintillationFade at 5°. latitude and height are the
-// station's; 1 to 45 GHz. A *unit.RangeError where the transition does not exist, as
-// for an aperture that averages scintillation out.
-func LowAngleFade(f unit.Frequency, geometric unit.Angle, latitude unit.Angle, height unit.Length, a Aperture,
-	wetRefractivity float64, path LowPath, p Exceedance) (unit.DB, []Note, error) {
-	var n notes
-	l, err := newLowAngle(scintillation{f.Gigahertz(), a.Diameter.Metres(), a.Efficiency, wetRefractivity},
-		latitude.Degrees(), height.Kilometres(), p.Percents(), path, &n)
-	if err != nil {
-		return 0, nil, err
-	}
-	el := geometric.Degrees()
-	if err := within("elevation", el, "deg", 0, 5, "use ScintillationFade above"); err != nil {
-		return 0, nil, err
-	}
-	n.beyond("P.618-14 §2.4.2", "elevation", el, "deg", 0.5, 5)
-	return unit.DB(l.fade(el)), n, nil
 }
 
 // lowAngle is the prepared transition: the point where the deep part has 25 dB and
@@ -48,6 +24,11 @@ type lowAngle struct {
 // deepDB is A1 of §2.4.3.
 const deepDB = 25
 
+// newLowAngle prepares the fade of scintillation, beam spreading and multipath together
+// that is exceeded for a percentage, at geometric elevations of 0.5° to 5°: the deep part
+// from 25 dB up by P.618-14 §2.4.2, the shallow part by the transition of §2.4.3 to
+// scintillation at 5°. Latitude and height are the station's; 1 to 45 GHz. A *unit.RangeError
+// where the transition does not exist, as for an aperture that averages scintillation out.
 func newLowAngle(s scintillation, latDeg, heightKm, pPct float64, path LowPath, n *notes) (*lowAngle, error) {
 	err := firstError(s.check(n), checkLatitude(latDeg), checkStationHeight(heightKm), checkPercent(pPct),
 		within("fraction of the path over water", path.WaterFraction, "", 0, 1, ""),

@@ -78,31 +78,35 @@ func TestAveragingSlopeIsEquation61(t *testing.T) {
 // by hand at latitude 45°, 40 GHz, pL = 50 %, p = 0.001 %, 5.17° apparent (90.2 mrad):
 // 101.48 + 2.03 + 14.42 - 116.60 + 30 = 31.3 dB.
 func TestDeepFadingReachesOver5Degrees(t *testing.T) {
-	got, _, err := LowAngleFade(40*unit.Gigahertz, 5*unit.Degree, 45*unit.Degree, 0, *dish(1), 60, LowPath{GradientExceeded: 50 * Percent}, 0.001*Percent)
-	if err != nil || math.Abs(float64(got)-31.3) > 0.1 {
-		t.Errorf("got %.3f dB, %v, want 31.3 dB", got, err)
+	var n notes
+	l, err := newLowAngle(scintillation{40, 1, 0.6, 60}, 45, 0, 0.001, LowPath{GradientExceeded: 50 * Percent}, &n)
+	if err != nil {
+		t.Fatal(err)
+	}
+	if got := l.fade(5); math.Abs(got-31.3) > 0.1 {
+		t.Errorf("got %.3f dB, want 31.3 dB", got)
 	}
 }
 
 func TestLowAngleFadeRefuses(t *testing.T) {
 	ok := LowPath{GradientExceeded: 10 * Percent}
 	for name, c := range map[string]struct {
-		el   unit.Angle
 		dish float64
 		path LowPath
 	}{
-		"above 5 deg":        {6 * unit.Degree, 1, ok},
-		"gradient left out":  {2 * unit.Degree, 1, LowPath{}},
-		"averaged out":       {2 * unit.Degree, 70, ok},
-		"water out of range": {2 * unit.Degree, 1, LowPath{GradientExceeded: 10 * Percent, WaterFraction: 2}},
+		"gradient left out":  {1, LowPath{}},
+		"averaged out":       {70, ok},
+		"water out of range": {1, LowPath{GradientExceeded: 10 * Percent, WaterFraction: 2}},
 	} {
 		var re *unit.RangeError
-		_, _, err := LowAngleFade(30*unit.Gigahertz, c.el, 50*unit.Degree, 0, *dish(c.dish), 60, c.path, 1*Percent)
+		var n notes
+		_, err := newLowAngle(scintillation{30, c.dish, 0.6, 60}, 50, 0, 1, c.path, &n)
 		if !errors.As(err, &re) {
 			t.Errorf("%s: got %v, want a *RangeError", name, err)
 		}
 	}
-	if _, n, err := LowAngleFade(30*unit.Gigahertz, 0.2*unit.Degree, 50*unit.Degree, 0, *dish(1), 60, ok, 1*Percent); err != nil || len(n) == 0 {
-		t.Errorf("at 0.2 deg, under the stated 0.5 deg: error %v, notes %v, want a warning", err, n)
+	var n notes
+	if _, err := newLowAngle(scintillation{46, 1, 0.6, 60}, 50, 0, 1, ok, &n); err != nil || len(n) == 0 {
+		t.Errorf("at 46 GHz, over the stated 45 GHz: error %v, notes %v, want a warning", err, n)
 	}
 }

@@ -14,42 +14,6 @@ type ElevationShare struct {
 	Share     float64
 }
 
-// ElevationShares sorts samples of a geometric elevation, taken evenly over contact
-// time, into intervals of a width from 0° up, and returns the occupied ones in rising
-// order with the mean elevation of their samples: P.618-14 §8 steps a) to c). It
-// fails without samples and for a width outside (0°, 90°].
-func ElevationShares(samples []unit.Angle, width unit.Angle) ([]ElevationShare, error) {
-	w := width.Degrees()
-	if !(w > 0 && w <= 90) {
-		return nil, &unit.RangeError{Quantity: "width of the elevation intervals", Value: w, Unit: "deg", Allowed: "above 0 to 90 deg"}
-	}
-	if len(samples) == 0 {
-		return nil, fmt.Errorf("elevation intervals: no samples; there is no contact to make statistics of")
-	}
-	const below = 1 // an interval for elevations under 0°, where the ray is bent over the horizon
-	count := int(math.Ceil(90/w)) + below
-	sums, counts := make([]float64, count), make([]int, count)
-	for _, s := range samples {
-		el := s.Degrees()
-		if err := within("elevation", el, "deg", -5, 90+roundOffDeg, ""); err != nil {
-			return nil, err
-		}
-		i := 0
-		if el >= 0 {
-			i = min(below+int(el/w), count-1)
-		}
-		sums[i] += el
-		counts[i]++
-	}
-	var shares []ElevationShare
-	for i, n := range counts {
-		if n > 0 {
-			shares = append(shares, ElevationShare{unit.Angle(sums[i]/float64(n)) * unit.Degree, float64(n) / float64(len(samples))})
-		}
-	}
-	return shares, nil
-}
-
 // Moving holds what a path takes over the elevations of a moving satellite and over
 // the percentages of an average year, for the statistics of Rec. ITU-R P.618-14 §8.
 // They are marginals: how often in all, not when, and not together with what.
@@ -108,7 +72,7 @@ func checkShares(shares []ElevationShare) error {
 		}
 		sum += s.Share
 	}
-	return within("sum of the shares of contact time", sum, "", 1-1e-9, 1+1e-9, "see ElevationShares")
+	return within("sum of the shares of contact time", sum, "", 1-1e-9, 1+1e-9, "give shares that make up the whole")
 }
 
 func (m *Moving) evaluate(s PathSpec, model *pathModel) error {

@@ -7,32 +7,6 @@ import (
 	"slantwise/orbit/unit"
 )
 
-func TestElevationShares(t *testing.T) {
-	var samples []unit.Angle
-	for _, deg := range []float64{-0.3, 1, 2, 6, 12, 12, 13, 90} {
-		samples = append(samples, unit.Angle(deg)*unit.Degree)
-	}
-	shares, err := ElevationShares(samples, 5*unit.Degree)
-	if err != nil {
-		t.Fatal(err)
-	}
-	want := []ElevationShare{{-0.3, 1.0 / 8}, {1.5, 2.0 / 8}, {6, 1.0 / 8}, {37.0 / 3, 3.0 / 8}, {90, 1.0 / 8}}
-	if len(shares) != len(want) {
-		t.Fatalf("got %v, want %v", shares, want)
-	}
-	for i, w := range want {
-		if math.Abs(shares[i].Elevation.Degrees()-float64(w.Elevation)) > 1e-9 || shares[i].Share != w.Share {
-			t.Errorf("interval %d: got %.4f deg, %g, want %v", i, shares[i].Elevation.Degrees(), shares[i].Share, w)
-		}
-	}
-	if _, err := ElevationShares(nil, 5*unit.Degree); err == nil {
-		t.Error("no samples: no error")
-	}
-	if _, err := ElevationShares(samples, 0); err == nil {
-		t.Error("no width: no error")
-	}
-}
-
 // A satellite that stands still has the path's own statistics: what P.618 gives for
 // p is exceeded for p of the time.
 func TestMovingAtOneElevationIsThePath(t *testing.T) {

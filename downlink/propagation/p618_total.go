@@ -12,19 +12,9 @@ type Contributions struct{ Gas, Cloud, Rain, Scintillation unit.DB }
 // Sum returns the plain sum of the four.
 func (c Contributions) Sum() unit.DB { return c.Gas + c.Cloud + c.Rain + c.Scintillation }
 
-// TotalAttenuation combines contributions that were taken at the percentages of
-// CombinationPercentage: gas, and the root of the squares of rain with cloud and of
-// scintillation. Each must be 0 or greater and finite. Source: Rec. ITU-R P.618-14
-// §2.5, equations (65) and (66).
-func TotalAttenuation(c Contributions) (unit.DB, error) {
-	err := firstError(notNegative("gas attenuation", float64(c.Gas), "dB"), notNegative("cloud attenuation", float64(c.Cloud), "dB"),
-		notNegative("rain attenuation", float64(c.Rain), "dB"), notNegative("scintillation fade", float64(c.Scintillation), "dB"))
-	if err != nil {
-		return 0, err
-	}
-	return unit.DB(combined(float64(c.Gas), float64(c.Cloud), float64(c.Rain), float64(c.Scintillation*c.Scintillation))), nil
-}
-
+// combined combines contributions in dB that were taken at the percentages of
+// combinationPercent: gas, and the root of the squares of rain with cloud and of
+// scintillation. Source: Rec. ITU-R P.618-14 §2.5, equations (65) and (66).
 func combined(gas, cloud, rain, scintillationSquared float64) float64 {
 	w := rain + cloud
 	return gas + math.Sqrt(w*w+scintillationSquared)

@@ -2,16 +2,7 @@ package propagation
 
 import (
 	"math"
-
-	"slantwise/orbit/unit"
 )
-
-// Air is the state of the air at a point.
-type Air struct {
-	DryPressure Pressure // of the air without its vapour
-	Temperature unit.Temperature
-	Vapour      VapourDensity
-}
 
 // GasAttenuation is the specific attenuation of gases in dB/km.
 type GasAttenuation struct {
@@ -22,15 +13,9 @@ type GasAttenuation struct {
 // Total returns the sum of both parts.
 func (g GasAttenuation) Total() float64 { return g.Oxygen + g.WaterVapour }
 
-// GasSpecificAttenuation returns the specific attenuation line by line, and warnings.
-// The stated range is 1 to 1000 GHz. Source: Rec. ITU-R P.676-13 Annex 1 §1 (the
-// lines of P.676-12 are the same).
-func GasSpecificAttenuation(f unit.Frequency, a Air) (GasAttenuation, []Note, error) {
-	var n notes
-	g, err := gasSpecificChecked(f.Gigahertz(), a.DryPressure.Hectopascals(), a.Temperature.Kelvins(), a.Vapour.GramsPerCubicMetre(), &n)
-	return g, n, err
-}
-
+// gasSpecificChecked returns the specific attenuation line by line, and warns; the dry
+// pressure is that of the air without its vapour. The stated range is 1 to 1000 GHz. Source:
+// Rec. ITU-R P.676-13 Annex 1 §1 (the lines of P.676-12 are the same).
 func gasSpecificChecked(fGHz, dryHPa, tK, rho float64, n *notes) (GasAttenuation, error) {
 	err := firstError(checkGasFrequency(fGHz, n), within("dry-air pressure", dryHPa, "hPa", 0, 1200, "give it in hPa, without the vapour's"),
 		checkAirTemperature(tK), within("water vapour density", rho, "g/m3", 0, 100, ""))

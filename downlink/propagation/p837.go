@@ -60,9 +60,6 @@ func newRain(celsius, rainfallMm [12]float64) (*Rain, error) {
 	return &rain, nil
 }
 
-// Probability returns the fraction of an average year in which it rains.
-func (r *Rain) Probability() Exceedance { return Exceedance(r.probability) * Percent }
-
 // exceeded returns the percentage of the year in which the rate is exceeded,
 // equations (4) and (5).
 func (r *Rain) exceeded(lnRate float64) float64 {

@@ -2,8 +2,6 @@ package propagation
 
 import (
 	"math"
-
-	"slantwise/orbit/unit"
 )
 
 // bump is a Gaussian in log10 of the frequency: a exp(-((x-b)/c)²).
@@ -58,15 +56,10 @@ func rainWeight(elDeg, tiltDeg float64) float64 {
 	return c * c * math.Cos(radians(2*tiltDeg))
 }
 
-// RainCoefficients returns k and alpha of the law gamma = k R^alpha, gamma in dB/km
+// rainCoefficients returns k and alpha of the law gamma = k R^alpha, gamma in dB/km
 // and R in mm/h, for a path at an elevation and a tilt of the polarisation against
 // the horizontal (45° for circular). The frequency must lie in 1 to 1000 GHz: the
 // curves are fits, and mean nothing outside it. Source: Rec. ITU-R P.838-3.
-func RainCoefficients(f unit.Frequency, elevation, tilt unit.Angle) (k, alpha float64, err error) {
-	k, alpha, err = rainCoefficients(f.Gigahertz(), elevation.Degrees(), tilt.Degrees())
-	return k, alpha, err
-}
-
 func rainCoefficients(fGHz, elDeg, tiltDeg float64) (k, alpha float64, err error) {
 	err = firstError(checkRainFrequency(fGHz),
 		within("elevation", elDeg, "deg", -90, 90, ""), checkTilt(tiltDeg))
@@ -77,12 +70,8 @@ func rainCoefficients(fGHz, elDeg, tiltDeg float64) (k, alpha float64, err error
 	return k, alpha, nil
 }
 
-// RainSpecificAttenuation returns the attenuation of rain in dB/km; the rain rate
+// rainSpecific returns the attenuation of rain in dB/km; the rain rate
 // must be 0 or greater. Source: Rec. ITU-R P.838-3, equation (1).
-func RainSpecificAttenuation(rate RainRate, f unit.Frequency, elevation, tilt unit.Angle) (dbPerKm float64, err error) {
-	return rainSpecific(rate.MillimetresPerHour(), f.Gigahertz(), elevation.Degrees(), tilt.Degrees())
-}
-
 func rainSpecific(rateMmH, fGHz, elDeg, tiltDeg float64) (float64, error) {
 	k, alpha, err := rainCoefficients(fGHz, elDeg, tiltDeg)
 	if err := firstError(err, notNegative("rain rate", rateMmH, "mm/h")); err != nil {

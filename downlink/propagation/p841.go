@@ -30,21 +30,3 @@ func worstMonth(pPct float64) float64 {
 	}
 	return q3 * math.Pow(pPct/30, math.Log10(q3)/math.Log10(0.3)) * pPct
 }
-
-// YearOfWorstMonth returns the percentage of the average year that belongs to a
-// percentage of the average worst month, the inverse of WorstMonth.
-func YearOfWorstMonth(month Exceedance) (Exceedance, error) {
-	want := month.Percents()
-	if err := checkPercent(want); err != nil {
-		return 0, err
-	}
-	low, high := 0.0, 100.0
-	for range 80 { // worstMonth rises
-		if mid := (low + high) / 2; worstMonth(mid) < want {
-			low = mid
-		} else {
-			high = mid
-		}
-	}
-	return Exceedance((low+high)/2) * Percent, nil
-}

@@ -10,9 +10,8 @@ import (
 func TestP676SpecificPublished(t *testing.T) {
 	w := worst{rel: 1e-6}
 	openSheet(t, "p676_13_specific_attenuation.csv").each(func(r sheetRow) {
-		g, _, err := GasSpecificAttenuation(unit.Frequency(r.number("frequency_ghz"))*unit.Gigahertz, Air{
-			DryPressure: Pressure(r.number("dry_pressure_hpa")) * Hectopascal, Temperature: unit.Temperature(r.number("temperature_k")),
-			Vapour: VapourDensity(r.number("water_vapour_density_g_m3")) * GramPerCubicMetre})
+		var n notes
+		g, err := gasSpecificChecked(r.number("frequency_ghz"), r.number("dry_pressure_hpa"), r.number("temperature_k"), r.number("water_vapour_density_g_m3"), &n)
 		noError(r, err)
 		w.check(r, "oxygen", g.Oxygen, r.number("oxygen_specific_attenuation_db_km"))
 		w.check(r, "water vapour", g.WaterVapour, r.number("water_vapour_specific_attenuation_db_km"))
@@ -106,16 +105,16 @@ func TestWetRefractivityOfHumidity(t *testing.T) {
 	if got := saturationPressure(20, 1013.25); math.Abs(got/enhancement-23.37) > 0.023 { // equation (9) is a fit, within 0.1 % of the tables
 		t.Errorf("saturation at 20 deg C: %.4f hPa, %.4f hPa in pure vapour", got, got/enhancement)
 	}
-	half, err := WetRefractivityOfHumidity(293.15, 0.5, 1013.25*Hectopascal)
+	half, err := wetOfHumidity(293.15, 0.5, 1013.25)
 	if err != nil {
 		t.Fatal(err)
 	}
 	e := 0.5 * saturationPressure(20, 1013.25)
-	same, err := WetRefractivity(293.15, VapourDensity(e*216.7/293.15)*GramPerCubicMetre)
+	same, err := wetRefractivity(293.15, e*216.7/293.15)
 	if err != nil || math.Abs(half-same) > 1e-9 {
 		t.Errorf("half of saturation: %g N-units by humidity, %g by density, %v", half, same, err)
 	}
-	if _, err := WetRefractivityOfHumidity(293.15, 50, 1013.25*Hectopascal); err == nil {
+	if _, err := wetOfHumidity(293.15, 50, 1013.25); err == nil {
 		t.Error("humidity in percent: no error")
 	}
 }

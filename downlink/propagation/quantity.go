@@ -28,9 +28,6 @@ type Column float64
 // KilogramPerSquareMetre is the unit of Column.
 const KilogramPerSquareMetre Column = 1
 
-// KilogramsPerSquareMetre returns the column in kg/m².
-func (c Column) KilogramsPerSquareMetre() float64 { return float64(c) }
-
 // RainRate is a rain rate in mm/h, over an integration time of one minute.
 type RainRate float64
 
