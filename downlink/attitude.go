@@ -33,9 +33,6 @@ func (a Attitude) String() string {
 	return [...]string{"unstated", "nadir", "station", "tumbling", "sun", "spin", "yaw_steering", "history"}[a]
 }
 
-// NeedsSun tells whether the attitude follows the Sun.
-func (a Attitude) NeedsSun() bool { return a == AttitudeSun || a == AttitudeYawSteering }
-
 // HasBody tells whether the attitude knows the body's axes, but for a spin's phase.
 func (a Attitude) HasBody() bool {
 	switch a {

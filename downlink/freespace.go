@@ -15,12 +15,3 @@ func FreeSpaceLoss(d unit.Length, f unit.Frequency) unit.DB {
 	}
 	return unit.DB(20 * math.Log10(4*math.Pi*d.Metres()*f.Hertz()/unit.SpeedOfLight))
 }
-
-// SpreadingLoss returns 10 log10(4π d²) dB(m²): what turns an EIRP in dBW into a
-// power flux density in dB(W/m²); d greater than 0, else it is NaN.
-func SpreadingLoss(d unit.Length) unit.DB {
-	if !(d > 0) {
-		return unit.DB(math.NaN())
-	}
-	return unit.DB(sphereDB + 20*math.Log10(d.Metres()))
-}

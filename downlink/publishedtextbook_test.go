@@ -150,7 +150,7 @@ func near(t *testing.T, what string, got, want, tol float64) {
 }
 
 // testdata/link/free_space_loss.csv (computed to four decimals), the published losses,
-// and the spreading losses.
+// and the spreading losses: what the flux density of a budget is under its EIRP.
 func TestFreeSpaceTables(t *testing.T) {
 	for _, r := range readRows(t, "free_space_loss.csv") {
 		got := float64(FreeSpaceLoss(unit.Length(number(r["distance_km"]))*unit.Kilometre, unit.Frequency(number(r["frequency_mhz"]))*unit.Megahertz))
@@ -163,10 +163,11 @@ func TestFreeSpaceTables(t *testing.T) {
 		near(t, r["source"]+", printed", got, number(r["published_fsl_db"]), max(0.1, halfDigit(r["published_fsl_db"])))
 	}
 	for _, r := range readRows(t, "spreading_loss.csv") {
-		got := float64(SpreadingLoss(unit.Length(number(r["slant_range_km"])) * unit.Kilometre))
+		b := budgetOf(t, LinkSpec{Transmitter: radio(4000, 0), Antenna: ratioListener(0)}, unit.Length(number(r["slant_range_km"]))*unit.Kilometre)
+		got := -b.PowerFluxDensity
 		near(t, r["slant_range_km"]+" km", got, number(r["spreading_loss_10log_4_pi_d2_db_m2"]), 5.1e-5)
 	}
-	for _, v := range []unit.DB{FreeSpaceLoss(0, 1), FreeSpaceLoss(1, 0), SpreadingLoss(-1), FreeSpaceLoss(unit.Length(math.NaN()), 1)} {
+	for _, v := range []unit.DB{FreeSpaceLoss(0, 1), FreeSpaceLoss(1, 0), FreeSpaceLoss(-1, 1), FreeSpaceLoss(unit.Length(math.NaN()), 1)} {
 		if !math.IsNaN(float64(v)) {
 			t.Errorf("no distance has the loss %g dB", float64(v))
 		}

@@ -42,10 +42,6 @@ func (y *Year) Notes() []Note {
 	return append(out, Note{Assumption, "the margin falls by the attenuation beyond the clear sky's and by the noise of the weather, both at the same percentage"})
 }
 
-// ExceedingAttenuation returns the fraction of contact time during which the total
-// attenuation exceeds a.
-func (y *Year) ExceedingAttenuation(a unit.DB) propagation.Span { return y.moving.ExceedingTotal(a) }
-
 // Attenuation returns the total attenuation that is exceeded during a fraction of
 // contact time; a *unit.RangeError for fractions that the percentages cannot tell.
 func (y *Year) Attenuation(fraction float64) (unit.DB, error) { return y.moving.Total(fraction) }

@@ -156,7 +156,7 @@ func TestYearPlainly(t *testing.T) {
 		near("under a margin", math.Max(span.Low, math.Min(span.High, under[j]/total)), under[j]/total, 0.05)
 	}
 	for j, a := range attenuations {
-		span := year.ExceedingAttenuation(a)
+		span := year.moving.ExceedingTotal(a)
 		t.Logf("above %g dB: %.5f to %.5f, plainly %.5f", a, span.Low, span.High, exceeding[j]/total)
 		near("above an attenuation", math.Max(span.Low, math.Min(span.High, exceeding[j]/total)), exceeding[j]/total, 0.05)
 	}

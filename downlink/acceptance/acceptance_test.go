@@ -115,15 +115,6 @@ func TestKeptWith(t *testing.T) {
 	}
 }
 
-// TestFluxBetween: straight in the logarithms, and none outside.
-func TestFluxBetween(t *testing.T) {
-	near(t, "middle", FluxBetween(4*unit.Gigahertz, 2*unit.Gigahertz, 100, 8*unit.Gigahertz, 400), 200, 1e-9)
-	near(t, "other order", FluxBetween(4*unit.Gigahertz, 8*unit.Gigahertz, 400, 2*unit.Gigahertz, 100), 200, 1e-9)
-	if !math.IsNaN(FluxBetween(9*unit.Gigahertz, 2*unit.Gigahertz, 100, 8*unit.Gigahertz, 400)) {
-		t.Error("a flux outside the two frequencies")
-	}
-}
-
 // TestFaults come all at once.
 func TestFaults(t *testing.T) {
 	m := Readings{Frequency: -1, YDB: []float64{0}, YSigmaDB: -1, Flux: Quantity{0, 1}, DiameterDeg: Quantity{9, 0}, Attenuation: Quantity{-1, math.NaN()}, PointingDB: Quantity{0, -1}}

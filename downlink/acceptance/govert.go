@@ -137,15 +137,3 @@ func (r *Result) KeptWith(promisedDBK float64) float64 {
 	}
 	return 0.5 * math.Erfc((promisedDBK-r.DBK)/(r.Sigma*math.Sqrt2))
 }
-
-// FluxBetween returns the flux density at a frequency between two at which it is known:
-// straight in the logarithms (common practice for the Sun's daily values). Frequencies
-// and fluxes greater than 0, the two frequencies apart, f between them; else NaN.
-func FluxBetween(f, f1 unit.Frequency, flux1 float64, f2 unit.Frequency, flux2 float64) float64 {
-	low, high := min(f1, f2), max(f1, f2)
-	if !(flux1 > 0 && flux2 > 0 && low > 0 && high > low && f >= low && f <= high) {
-		return math.NaN()
-	}
-	share := math.Log(float64(f/f1)) / math.Log(float64(f2/f1))
-	return flux1 * math.Pow(flux2/flux1, share)
-}

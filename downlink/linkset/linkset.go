@@ -3,7 +3,6 @@ package linkset
 import (
 	"errors"
 	"fmt"
-	"math"
 
 	"slantwise/orbit/unit"
 )
@@ -218,14 +217,4 @@ func total(spans []Span) (seconds, bytes float64) {
 		bytes += float64((s.To - s.From) * s.BytesPerSecond)
 	}
 	return seconds, bytes
-}
-
-// Valid tells whether spans are in order, apart, finite and of a rate of 0 or more.
-func Valid(spans []Span) bool {
-	for i, s := range spans {
-		if !(s.From < s.To && s.BytesPerSecond >= 0) || math.IsInf(s.To, 0) || math.IsInf(s.BytesPerSecond, 0) || i > 0 && s.From < spans[i-1].To {
-			return false
-		}
-	}
-	return true
 }

@@ -121,38 +121,25 @@ func (f *Family) steps(n int) []float64 {
 // symbol rate of the list, or at steps rates from the lowest to the highest of the
 // range. Modes that another surpasses are left out.
 func (f *Family) Modes(steps int) ([]Mode, error) {
-	members, err := f.membersFor(steps)
+	members, err := f.members()
+	if len(f.Rates) == 0 && (steps < 2 || steps > mostModes) {
+		err = errors.Join(err, &unit.RangeError{Quantity: "steps of the symbol rate", Value: float64(steps), Allowed: fmt.Sprintf("2 to %d", mostModes)})
+	}
 	if err != nil {
 		return nil, err
 	}
 	var out []Mode
 	for _, rate := range f.steps(steps) {
-		out = append(out, modesAt(members, rate)...)
+		for i := range members {
+			if rate <= members[i].high*(1+1e-12) {
+				out = append(out, members[i].mode(rate))
+			}
+		}
 	}
 	if len(out) == 0 {
 		return nil, fmt.Errorf("no symbol rate of the plan fits into the band of %g MHz; give lower ones", f.Band.Hertz()/1e6)
 	}
 	return Unsurpassed(out), nil
-}
-
-// membersFor is members with a check of the steps.
-func (f *Family) membersFor(steps int) ([]member, error) {
-	members, err := f.members()
-	if len(f.Rates) == 0 && (steps < 2 || steps > mostModes) {
-		err = errors.Join(err, &unit.RangeError{Quantity: "steps of the symbol rate", Value: float64(steps), Allowed: fmt.Sprintf("2 to %d", mostModes)})
-	}
-	return members, err
-}
-
-// modesAt returns the modes at a symbol rate that fit into the band.
-func modesAt(members []member, rate float64) []Mode {
-	var out []Mode
-	for i := range members {
-		if rate <= members[i].high*(1+1e-12) {
-			out = append(out, members[i].mode(rate))
-		}
-	}
-	return out
 }
 
 // Unsurpassed returns the modes, by rising C/N0 that they need, without those for which

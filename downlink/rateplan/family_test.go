@@ -100,35 +100,6 @@ func TestBestOfAList(t *testing.T) {
 	}
 }
 
-// At one symbol rate the coding follows the pass: no rate of the list does better, and
-// all modes have that rate.
-func TestPlanOneRate(t *testing.T) {
-	f := Family{
-		Rows:  rowsOf(t, [2]string{"qpsk", "dvb-s2-1-4"}, [2]string{"qpsk", "dvb-s2-1-2"}, [2]string{"qpsk", "dvb-s2-3-4"}, [2]string{"8psk", "dvb-s2-3-4"}, [2]string{"16apsk", "dvb-s2-3-4"}),
-		Rates: []unit.Frequency{1e6, 5e6, 20e6, 80e6}, RollOff: 0.2, Pilots: true, Band: 30e6,
-	}
-	rules := Rules{Changes: 4, LeastStay: 20 * time.Second, Relock: time.Second, Guard: 0.5, Band: f.Band}
-	best, err := f.PlanOneRate(overhead(721), rules, 0)
-	if err != nil || best.Plan.Bytes == 0 || best.Plan.Changes() == 0 {
-		t.Fatalf("%+v, %v", best, err)
-	}
-	for _, m := range best.Modes {
-		if m.SymbolRate != best.SymbolRate || m.Bandwidth > f.Band {
-			t.Errorf("mode %+v at %g baud", m, float64(best.SymbolRate))
-		}
-	}
-	for _, rate := range f.Rates {
-		f.Rates = []unit.Frequency{rate}
-		other, err := f.PlanOneRate(overhead(721), rules, 0)
-		if err != nil || other.Plan.Bytes > best.Plan.Bytes {
-			t.Errorf("%g baud: %g bytes, the best has %g (%v)", float64(rate), other.Plan.Bytes, best.Plan.Bytes, err)
-		}
-	}
-	if best.Plan.ShareOfShannon() >= 1 || best.Plan.ShareOfShannon() < 0.3 {
-		t.Errorf("%.2f of Shannon's limit", best.Plan.ShareOfShannon())
-	}
-}
-
 // Dropping what another mode surpasses changes no plan.
 func TestUnsurpassedLosesNothing(t *testing.T) {
 	r := rand.New(rand.NewPCG(5, 6))

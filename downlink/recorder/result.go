@@ -69,13 +69,6 @@ func newResult(p *Plan) *Result {
 	return r
 }
 
-// MostStored returns the greatest filling and when it is first reached.
-func (r *Result) MostStored() Point {
-	return slices.MaxFunc(r.Course, func(a, b Point) int {
-		return cmp.Or(cmp.Compare(a.Stored, b.Stored), cmp.Compare(b.Seconds, a.Seconds))
-	})
-}
-
 func (s *simulation) point(t float64) {
 	unsent := 0.0
 	for i := range s.queues {
